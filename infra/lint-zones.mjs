@@ -1,0 +1,52 @@
+import { existsSync, readdirSync } from "node:fs";
+
+/**
+ * Who may import whom, as zones of import-x/no-restricted-paths, generated from the folders that exist.
+ * A zone reads: files under `target` may not import files under `from`, `except` aside.
+ */
+const folders = (path) => (existsSync(path) ? readdirSync(path, { withFileTypes: true }).filter((entry) => entry.isDirectory()).map((entry) => entry.name) : []);
+
+const sides = [
+  { target: "./src", from: "./server", message: "The client never imports the server: share by shared/." },
+  { target: "./server", from: "./src", message: "The server never imports the client: share by shared/." },
+  { target: "./shared", from: ["./src", "./server", "./tests", "./demo", "./infra"], message: "shared/ is imported by both sides and imports neither." },
+  { target: "./shared/engine", from: ["./shared/contract", "./shared/planning", "./shared/calendar"], message: "The engine imports nothing of ours outside itself." },
+  { target: "./shared/calendar", from: ["./shared/contract", "./shared/planning", "./shared/engine"], message: "The calendar stands alone." },
+  { target: "./shared/planning", from: "./shared/contract", message: "Planning may import engine and calendar only." },
+  { target: "./shared/contract", from: ["./shared/planning", "./shared/calendar"], message: "The contract imports engine types only." },
+  { target: "./shared/contract", from: "./shared/engine", except: ["./types.ts"], message: "The contract imports engine types only." },
+];
+
+/** Inside the engine each folder imports only those before it. */
+const engineOrder = ["linalg", "basis", "penalty", "family", "fit", "inference", "predict"];
+const engine = engineOrder.slice(0, -1).map((name, index) => ({
+  target: `./shared/engine/${name}`,
+  from: engineOrder.slice(index + 1).map((later) => `./shared/engine/${later}`),
+  message: "Engine folders import only earlier ones: linalg, basis, penalty, family, fit, inference, predict.",
+}));
+
+const client = [
+  ...folders("src/features").map((name) => ({
+    target: `./src/features/${name}`, from: "./src/features", except: [`./${name}`],
+    message: "A client feature never imports another feature: the route composes them.",
+  })),
+  { target: "./src/features", from: "./src/app", message: "Features do not know the routes that compose them." },
+  { target: ["./src/components", "./src/lib"], from: ["./src/features", "./src/app"], message: "Components and lib know no feature." },
+  { target: "./src/components/charts", from: "./src/lib/api-client.ts", message: "Charts: data in, events out, no fetching." },
+];
+
+const server = folders("server/features").flatMap((name) => {
+  const others = folders("server/features").filter((other) => other !== name);
+  const own = `./server/features/${name}`;
+  return [
+    ...others.map((other) => ({
+      target: own, from: `./server/features/${other}`, except: ["./index.ts"],
+      message: "A server feature reaches another only through its index.ts.",
+    })),
+    { target: `${own}/**/!(*routes|index).ts`, from: `${own}/**/*routes.ts`, message: "Only index.ts imports routes." },
+    { target: `${own}/**/*repository.ts`, from: `${own}/**/*(*service|*presenter).ts`, message: "Repositories know no service or presenter." },
+    { target: `${own}/**/*routes.ts`, from: `${own}/**/*repository.ts`, message: "routes -> service -> repository." },
+  ];
+});
+
+export const zones = [...sides, ...engine, ...client, ...server];
