@@ -1,0 +1,142 @@
+import { z } from "zod";
+import { codeSchema, idParams, idSchema, levelSchema, timestampSchema, weekSchema } from "./common";
+import { defineEndpoint } from "./endpoint";
+
+const id = z.string().min(1).max(120).optional();
+const column = z.string().min(1).max(60);
+const smoothness = z.union([
+  z.literal("auto"),
+  z.strictObject({ df: z.number().positive() }),
+  z.strictObject({ penalty: z.number().positive() }),
+]).optional();
+const size = z.number().int().min(4).max(40).optional();
+
+/** One additive term; the engine's `TermSpec` says what each means. */
+export const termSpecSchema = z.discriminatedUnion("kind", [
+  z.strictObject({ kind: z.literal("linear"), id, column, log: z.boolean().optional() }),
+  z.strictObject({ kind: z.literal("factor"), id, column, reference: z.string().max(60).optional() }),
+  z.strictObject({ kind: z.literal("smooth"), id, column, log: z.boolean().optional(), size, smoothness }),
+  z.strictObject({ kind: z.literal("cyclic-smooth"), id, column, period: z.tuple([z.number(), z.number()]), size, smoothness }),
+]);
+
+export const modelSpecSchema = z.strictObject({
+  response: column,
+  family: z.enum(["gaussian", "log-gaussian", "quasi-poisson"]),
+  offset: column.optional(),
+  weights: column.optional(),
+  terms: z.array(termSpecSchema).max(20),
+});
+
+export const modelStateSchema = z.enum(["candidate", "in-use", "retired"]);
+
+/** What can be said of a fit without its coefficients. */
+export const fitSummarySchema = z.object({
+  store: codeSchema,
+  rows: z.number().int(),
+  firstWeek: weekSchema,
+  lastWeek: weekSchema,
+  devianceExplained: z.number().nullable(),
+  dispersion: z.number(),
+  edf: z.number(),
+  converged: z.boolean(),
+  warnings: z.array(z.string()),
+  /** Sold-out weeks left out, and partly sold-out weeks that count in part. */
+  stockOuts: z.object({ leftOut: z.number().int(), partly: z.number().int() }),
+  /** Drivers that could not be learnt here, each with the reason. */
+  leftOut: z.array(z.object({ driver: z.string(), reason: z.string() })),
+});
+export type FitSummary = z.infer<typeof fitSummarySchema>;
+
+export const modelSchema = z.object({
+  id: idSchema,
+  product: codeSchema,
+  state: modelStateSchema,
+  /** Null where each store has the default specification that its data allow. */
+  spec: modelSpecSchema.nullable(),
+  createdAt: timestampSchema,
+  createdBy: z.string(),
+  jobId: idSchema.nullable(),
+  fits: z.array(fitSummarySchema),
+});
+export type Model = z.infer<typeof modelSchema>;
+
+const weeks = z.object({ first: weekSchema, last: weekSchema });
+
+export const createModel = defineEndpoint({
+  method: "POST", path: "/api/models",
+  summary: "Fit a product's model: for one store at once (201), for several in the background (202, Location of the job)",
+  permission: "models:fit",
+  body: z.object({
+    product: codeSchema,
+    /** Store codes; all stores that sold the product when absent. */
+    stores: z.array(codeSchema).min(1).max(10_000).optional(),
+    weeks: weeks.optional(),
+    /** The default specification when absent. */
+    spec: modelSpecSchema.optional(),
+  }),
+  response: z.object({
+    id: idSchema,
+    coefficients: z.array(z.object({ name: z.string(), value: z.number(), standardError: z.number() })),
+    edf: z.number(),
+    terms: z.array(z.object({ id: z.string(), edf: z.number() })),
+    fitted: z.array(z.object({ store: codeSchema, week: weekSchema, value: z.number() })),
+    warnings: z.array(z.string()),
+  }),
+  status: 201,
+});
+
+export const listModels = defineEndpoint({
+  method: "GET", path: "/api/models", summary: "A product's models, newest first", permission: "read",
+  query: z.object({ product: codeSchema, state: modelStateSchema.optional() }), response: z.object({ items: z.array(modelSchema) }),
+});
+export const getModel = defineEndpoint({
+  method: "GET", path: "/api/models/:id", summary: "One model and its fits", permission: "read", params: idParams, response: modelSchema,
+});
+export const getModelFits = defineEndpoint({
+  method: "GET", path: "/api/models/:id/fits", summary: "The fitted models themselves, one text per store as the engine serialises it",
+  permission: "read", params: idParams, query: z.object({ stores: z.string().max(20_000).optional() }),
+  response: z.object({ items: z.array(z.object({ store: codeSchema, fit: z.string() })) }),
+});
+export const useModel = defineEndpoint({
+  method: "PUT", path: "/api/models/:id/use", summary: "Put a model in use in place of the one before", permission: "models:use",
+  params: idParams, response: modelSchema,
+});
+
+/** A driver's curve on the link scale, centred; exp() of it is the multiplier. */
+export const curveSchema = z.object({
+  term: z.string(),
+  kind: z.enum(["linear", "factor", "smooth", "cyclic-smooth"]),
+  column: z.string(),
+  /** Numbers, or the levels of a factor. */
+  x: z.union([z.array(z.number()), z.array(z.string())]),
+  estimate: z.array(z.number()),
+  standardError: z.array(z.number()),
+  lower: z.array(z.number()),
+  upper: z.array(z.number()),
+  observedRange: z.tuple([z.number(), z.number()]).nullable(),
+  /** Weeks seen near each x. */
+  supportCount: z.array(z.number()),
+  /** Every value seen, for the rug. */
+  seen: z.array(z.number()),
+});
+export type Curve = z.infer<typeof curveSchema>;
+
+export const getModelCurves = defineEndpoint({
+  method: "GET", path: "/api/models/:id/curves", summary: "Every driver's curve of one store with its band", permission: "read",
+  params: idParams, query: z.object({ store: codeSchema, level: levelSchema, points: z.coerce.number().int().min(10).max(500).default(101) }),
+  response: z.object({ store: codeSchema, level: z.number(), intercept: z.number(), curves: z.array(curveSchema) }),
+});
+
+/** One store-week as the model reads it. */
+export const salesWeekSchema = z.object({
+  week: weekSchema, units: z.number(), netSales: z.number(), price: z.number().nullable(), priceSource: z.string(),
+  regularPrice: z.number().nullable(), promotion: z.enum(["none", "feature", "display", "both"]), mechanic: z.string(),
+  temperatureC: z.number().nullable(), event: z.string().nullable(), openDays: z.number().nullable(), stockOutDays: z.number().nullable(),
+});
+export type SalesWeek = z.infer<typeof salesWeekSchema>;
+
+export const getSalesWeeks = defineEndpoint({
+  method: "GET", path: "/api/sales", summary: "A product's weeks in one store", permission: "read",
+  query: z.object({ product: codeSchema, store: codeSchema, first: weekSchema.optional(), last: weekSchema.optional() }),
+  response: z.object({ items: z.array(salesWeekSchema) }),
+});

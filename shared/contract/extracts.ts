@@ -1,0 +1,93 @@
+import { z } from "zod";
+import { idParams, idSchema, pageOf, pageQuery, personReferenceSchema, timestampSchema, weekSchema } from "./common";
+import { defineEndpoint } from "./endpoint";
+import { acceptedSchema } from "./jobs";
+
+export const extractKindSchema = z.enum(["sales", "stores", "products", "events", "temperatures"]);
+export type ExtractKind = z.infer<typeof extractKindSchema>;
+
+/**
+ * received -> checking -> checked | unusable; checked -> loading -> loaded -> withdrawn.
+ * A check or load that broke down returns to the state before it, with the reason in `failure`.
+ */
+export const extractStateSchema = z.enum(["received", "checking", "checked", "unusable", "loading", "loaded", "withdrawn"]);
+
+export const extractSchema = z.object({
+  id: idSchema,
+  kind: extractKindSchema,
+  fileName: z.string(),
+  sizeBytes: z.number(),
+  /** SHA-256 of the file as it arrived, in hexadecimal. */
+  sha256: z.string(),
+  state: extractStateSchema,
+  rows: z.object({ read: z.number(), usable: z.number(), errors: z.number(), warnings: z.number() }).nullable(),
+  firstWeek: weekSchema.nullable(),
+  lastWeek: weekSchema.nullable(),
+  uploadedBy: personReferenceSchema,
+  uploadedAt: timestampSchema,
+  checkedAt: timestampSchema.nullable(),
+  loadedAt: timestampSchema.nullable(),
+  withdrawnAt: timestampSchema.nullable(),
+  /** The job that works on it now, or worked on it last. */
+  jobId: idSchema.nullable(),
+  /** Why the file cannot be used at all, or why the last job broke down. */
+  failure: z.object({ code: z.string(), detail: z.string() }).nullable(),
+  /** What the reader may do next. */
+  may: z.object({ load: z.boolean(), withdraw: z.boolean() }),
+});
+export type Extract = z.infer<typeof extractSchema>;
+
+export const extractIssueSchema = z.object({
+  /** Line in the file, the header being line 1. */
+  line: z.number().int(),
+  column: z.string(),
+  value: z.string(),
+  severity: z.enum(["error", "warning"]),
+  /** Stable name of the rule, for example "unknown-store". */
+  rule: z.string(),
+  reason: z.string(),
+  remedy: z.string(),
+});
+export type ExtractIssue = z.infer<typeof extractIssueSchema>;
+
+export const extractChangesSchema = z.object({
+  totals: z.object({ new: z.number(), changed: z.number(), same: z.number() }),
+  weeks: z.array(z.object({
+    week: weekSchema, new: z.number(), changed: z.number(), same: z.number(),
+    unitsBefore: z.number(), unitsAfter: z.number(),
+  })),
+});
+export type ExtractChanges = z.infer<typeof extractChangesSchema>;
+
+export const listExtracts = defineEndpoint({
+  method: "GET", path: "/api/extracts", summary: "Extracts, newest first", permission: "read", query: pageQuery, response: pageOf(extractSchema),
+});
+export const uploadExtract = defineEndpoint({
+  method: "POST", path: "/api/extracts", summary: "Upload a file; it is kept unchanged and checked in the background", permission: "extracts:write",
+  multipart: true, body: z.object({ kind: extractKindSchema, layout: z.string().max(80).optional() }),
+  response: extractSchema, status: 202,
+});
+export const getExtract = defineEndpoint({
+  method: "GET", path: "/api/extracts/:id", summary: "One extract", permission: "read", params: idParams, response: extractSchema,
+});
+export const listExtractIssues = defineEndpoint({
+  method: "GET", path: "/api/extracts/:id/issues", summary: "Rows that cannot be used, or look odd", permission: "read",
+  params: idParams, query: pageQuery.extend({ severity: z.enum(["error", "warning"]).optional(), rule: z.string().max(60).optional() }),
+  response: pageOf(extractIssueSchema).extend({ byRule: z.array(z.object({ rule: z.string(), severity: z.string(), reason: z.string(), count: z.number() })) }),
+});
+export const getExtractChanges = defineEndpoint({
+  method: "GET", path: "/api/extracts/:id/changes", summary: "What loading would change, or changed", permission: "read",
+  params: idParams, response: extractChangesSchema,
+});
+export const getExtractOriginal = defineEndpoint({
+  method: "GET", path: "/api/extracts/:id/original", summary: "The file as it arrived, byte for byte", permission: "read",
+  params: idParams, produces: "application/octet-stream",
+});
+export const loadExtract = defineEndpoint({
+  method: "POST", path: "/api/extracts/:id/load", summary: "Load all usable rows, or none", permission: "extracts:write",
+  params: idParams, response: acceptedSchema, status: 202,
+});
+export const withdrawExtract = defineEndpoint({
+  method: "POST", path: "/api/extracts/:id/withdraw", summary: "Put back what was there before this extract was loaded", permission: "extracts:write",
+  params: idParams, response: acceptedSchema, status: 202,
+});
