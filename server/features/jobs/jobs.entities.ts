@@ -1,0 +1,32 @@
+import { defineEntity, p, type InferEntity } from "@mikro-orm/core";
+import { randomUUID } from "node:crypto";
+import { PersonEntity } from "../accounts";
+
+export type JobState = "queued" | "running" | "succeeded" | "failed" | "cancelled";
+
+/** What people see of a job; the queue itself keeps its own tables. */
+export const JobEntity = defineEntity({
+  name: "Job",
+  tableName: "jobs",
+  indexes: [{ properties: ["state", "createdAt"] }, { properties: ["subject"] }],
+  properties: {
+    id: p.uuid().primary().onCreate(() => randomUUID()),
+    kind: p.string().length(60),
+    state: p.string().length(12).$type<JobState>().default("queued"),
+    payload: p.json<Record<string, unknown>>(),
+    done: p.double().default(0),
+    total: p.double().nullable(),
+    message: p.string().length(200).default(""),
+    /** Path where the outcome can be read. */
+    subject: p.string().length(120).nullable(),
+    result: p.json<Record<string, unknown>>().nullable(),
+    error: p.json<{ code: string; detail: string }>().nullable(),
+    attempt: p.smallint().default(0),
+    cancelRequested: p.boolean().default(false),
+    createdBy: () => p.manyToOne(PersonEntity).nullable(),
+    createdAt: p.datetime().onCreate(() => new Date()),
+    startedAt: p.datetime().nullable(),
+    finishedAt: p.datetime().nullable(),
+  },
+});
+export type JobRow = InferEntity<typeof JobEntity>;
