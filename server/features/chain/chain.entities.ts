@@ -5,7 +5,7 @@ export const ChainEntity = defineEntity({
   name: "Chain",
   tableName: "chain",
   properties: {
-    id: p.integer().primary().default(1),
+    id: p.integer().primary().autoincrement(false),
     name: p.string().length(120),
     currency: p.string().length(3),
     locale: p.string().length(35),

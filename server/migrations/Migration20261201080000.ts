@@ -1,12 +1,12 @@
-import { Migration } from '@mikro-orm/migrations';
+import { Migration } from "@mikro-orm/migrations";
 
-export class Migration20261201084425 extends Migration {
+export class Migration20261201080000 extends Migration {
 
   override async up(): Promise<void> {
     this.addSql(`create table "categories" ("id" serial primary key, "code" varchar(64) not null, "name" varchar(120) not null);`);
     this.addSql(`alter table "categories" add constraint "categories_code_unique" unique ("code");`);
 
-    this.addSql(`create table "chain" ("id" serial primary key, "name" varchar(120) not null, "currency" varchar(3) not null, "locale" varchar(35) not null, "time_zone" varchar(64) not null, "calendar" varchar(10) not null, "week_start" smallint not null, "temperature_unit" varchar(12) not null, "interval_level" double precision not null default 0.8, "upload_limit_bytes" bigint not null);`);
+    this.addSql(`create table "chain" ("id" int not null, "name" varchar(120) not null, "currency" varchar(3) not null, "locale" varchar(35) not null, "time_zone" varchar(64) not null, "calendar" varchar(10) not null, "week_start" smallint not null, "temperature_unit" varchar(12) not null, "interval_level" double precision not null default 0.8, "upload_limit_bytes" bigint not null, constraint "chain_pkey" primary key ("id"));`);
 
     this.addSql(`create table "events" ("id" serial primary key, "code" varchar(64) not null, "name" varchar(120) not null, "first_day" date not null, "last_day" date not null, "region" varchar(80) not null default '');`);
     this.addSql(`alter table "events" add constraint "events_code_first_day_region_unique" unique ("code", "first_day", "region");`);
@@ -89,6 +89,86 @@ export class Migration20261201084425 extends Migration {
 
     this.addSql(`alter table "listings" add constraint "listings_product_id_foreign" foreign key ("product_id") references "products" ("id") on update cascade on delete cascade;`);
     this.addSql(`alter table "listings" add constraint "listings_store_id_foreign" foreign key ("store_id") references "stores" ("id") on update cascade on delete cascade;`);
+  }
+
+  override async down(): Promise<void> {
+    this.addSql(`alter table "products" drop constraint "products_category_id_foreign";`);
+
+    this.addSql(`alter table "jobs" drop constraint "jobs_created_by_id_foreign";`);
+
+    this.addSql(`alter table "extracts" drop constraint "extracts_uploaded_by_id_foreign";`);
+
+    this.addSql(`alter table "audit_entries" drop constraint "audit_entries_person_id_foreign";`);
+
+    this.addSql(`alter table "access_tokens" drop constraint "access_tokens_person_id_foreign";`);
+
+    this.addSql(`alter table "models" drop constraint "models_created_by_id_foreign";`);
+
+    this.addSql(`alter table "models" drop constraint "models_used_by_id_foreign";`);
+
+    this.addSql(`alter table "scenarios" drop constraint "scenarios_created_by_id_foreign";`);
+
+    this.addSql(`alter table "scenarios" drop constraint "scenarios_updated_by_id_foreign";`);
+
+    this.addSql(`alter table "extract_issues" drop constraint "extract_issues_extract_id_foreign";`);
+
+    this.addSql(`alter table "products" drop constraint "products_replaces_id_foreign";`);
+
+    this.addSql(`alter table "models" drop constraint "models_product_id_foreign";`);
+
+    this.addSql(`alter table "product_funding" drop constraint "product_funding_product_id_foreign";`);
+
+    this.addSql(`alter table "product_terms" drop constraint "product_terms_product_id_foreign";`);
+
+    this.addSql(`alter table "scenarios" drop constraint "scenarios_product_id_foreign";`);
+
+    this.addSql(`alter table "listings" drop constraint "listings_product_id_foreign";`);
+
+    this.addSql(`alter table "scenarios" drop constraint "scenarios_model_id_foreign";`);
+
+    this.addSql(`alter table "model_fits" drop constraint "model_fits_model_id_foreign";`);
+
+    this.addSql(`alter table "model_fits" drop constraint "model_fits_store_id_foreign";`);
+
+    this.addSql(`alter table "listings" drop constraint "listings_store_id_foreign";`);
+
+    this.addSql(`drop table if exists "categories" cascade;`);
+
+    this.addSql(`drop table if exists "chain" cascade;`);
+
+    this.addSql(`drop table if exists "events" cascade;`);
+
+    this.addSql(`drop table if exists "outbox_messages" cascade;`);
+
+    this.addSql(`drop table if exists "people" cascade;`);
+
+    this.addSql(`drop table if exists "jobs" cascade;`);
+
+    this.addSql(`drop table if exists "extracts" cascade;`);
+
+    this.addSql(`drop table if exists "extract_issues" cascade;`);
+
+    this.addSql(`drop table if exists "audit_entries" cascade;`);
+
+    this.addSql(`drop table if exists "access_tokens" cascade;`);
+
+    this.addSql(`drop table if exists "products" cascade;`);
+
+    this.addSql(`drop table if exists "models" cascade;`);
+
+    this.addSql(`drop table if exists "product_funding" cascade;`);
+
+    this.addSql(`drop table if exists "product_terms" cascade;`);
+
+    this.addSql(`drop table if exists "scenarios" cascade;`);
+
+    this.addSql(`drop table if exists "stores" cascade;`);
+
+    this.addSql(`drop table if exists "model_fits" cascade;`);
+
+    this.addSql(`drop table if exists "listings" cascade;`);
+
+    this.addSql(`drop table if exists "temperatures" cascade;`);
   }
 
 }
