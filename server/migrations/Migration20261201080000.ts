@@ -17,9 +17,10 @@ export class Migration20261201080000 extends Migration {
     this.addSql(`create table "people" ("id" uuid not null, "email" varchar(254) not null, "name" varchar(120) not null, "password_hash" varchar(255) not null, "roles" text[] not null, "categories" text[] not null default '{}', "must_change_password" boolean not null default false, "disabled_at" timestamptz null, "created_at" timestamptz not null, constraint "people_pkey" primary key ("id"));`);
     this.addSql(`alter table "people" add constraint "people_email_unique" unique ("email");`);
 
-    this.addSql(`create table "jobs" ("id" uuid not null, "kind" varchar(60) not null, "state" varchar(12) not null default 'queued', "payload" jsonb not null, "done" double precision not null default 0, "total" double precision null, "message" varchar(200) not null default '', "subject" varchar(120) null, "result" jsonb null, "error" jsonb null, "attempt" smallint not null default 0, "cancel_requested" boolean not null default false, "created_by_id" uuid null, "created_at" timestamptz not null, "started_at" timestamptz null, "finished_at" timestamptz null, constraint "jobs_pkey" primary key ("id"));`);
+    this.addSql(`create table "jobs" ("id" uuid not null, "kind" varchar(60) not null, "state" varchar(12) not null default 'queued', "payload" jsonb not null, "done" double precision not null default 0, "total" double precision null, "message" varchar(200) not null default '', "subject" varchar(120) null, "result" jsonb null, "error" jsonb null, "attempt" smallint not null default 0, "heartbeat_at" timestamptz null, "singleton_key" varchar(120) null, "cancel_requested" boolean not null default false, "created_by_id" uuid null, "created_at" timestamptz not null, "started_at" timestamptz null, "finished_at" timestamptz null, constraint "jobs_pkey" primary key ("id"));`);
     this.addSql(`create index "jobs_state_created_at_index" on "jobs" ("state", "created_at");`);
     this.addSql(`create index "jobs_subject_index" on "jobs" ("subject");`);
+    this.addSql(`create index "jobs_singleton_key_index" on "jobs" ("singleton_key");`);
 
     this.addSql(`create table "extracts" ("id" uuid not null, "kind" varchar(20) not null, "file_name" varchar(255) not null, "size_bytes" bigint not null, "sha256" varchar(64) not null, "storage_key" varchar(200) not null, "layout" varchar(80) null, "state" varchar(12) not null default 'received', "rows_read" int null, "rows_usable" int null, "error_count" int null, "warning_count" int null, "first_week" date null, "last_week" date null, "changes" jsonb null, "failure" jsonb null, "job_id" uuid null, "uploaded_by_id" uuid not null, "uploaded_at" timestamptz not null, "checked_at" timestamptz null, "loaded_at" timestamptz null, "withdrawn_at" timestamptz null, constraint "extracts_pkey" primary key ("id"));`);
     this.addSql(`create index "extracts_uploaded_at_index" on "extracts" ("uploaded_at");`);
@@ -89,86 +90,6 @@ export class Migration20261201080000 extends Migration {
 
     this.addSql(`alter table "listings" add constraint "listings_product_id_foreign" foreign key ("product_id") references "products" ("id") on update cascade on delete cascade;`);
     this.addSql(`alter table "listings" add constraint "listings_store_id_foreign" foreign key ("store_id") references "stores" ("id") on update cascade on delete cascade;`);
-  }
-
-  override async down(): Promise<void> {
-    this.addSql(`alter table "products" drop constraint "products_category_id_foreign";`);
-
-    this.addSql(`alter table "jobs" drop constraint "jobs_created_by_id_foreign";`);
-
-    this.addSql(`alter table "extracts" drop constraint "extracts_uploaded_by_id_foreign";`);
-
-    this.addSql(`alter table "audit_entries" drop constraint "audit_entries_person_id_foreign";`);
-
-    this.addSql(`alter table "access_tokens" drop constraint "access_tokens_person_id_foreign";`);
-
-    this.addSql(`alter table "models" drop constraint "models_created_by_id_foreign";`);
-
-    this.addSql(`alter table "models" drop constraint "models_used_by_id_foreign";`);
-
-    this.addSql(`alter table "scenarios" drop constraint "scenarios_created_by_id_foreign";`);
-
-    this.addSql(`alter table "scenarios" drop constraint "scenarios_updated_by_id_foreign";`);
-
-    this.addSql(`alter table "extract_issues" drop constraint "extract_issues_extract_id_foreign";`);
-
-    this.addSql(`alter table "products" drop constraint "products_replaces_id_foreign";`);
-
-    this.addSql(`alter table "models" drop constraint "models_product_id_foreign";`);
-
-    this.addSql(`alter table "product_funding" drop constraint "product_funding_product_id_foreign";`);
-
-    this.addSql(`alter table "product_terms" drop constraint "product_terms_product_id_foreign";`);
-
-    this.addSql(`alter table "scenarios" drop constraint "scenarios_product_id_foreign";`);
-
-    this.addSql(`alter table "listings" drop constraint "listings_product_id_foreign";`);
-
-    this.addSql(`alter table "scenarios" drop constraint "scenarios_model_id_foreign";`);
-
-    this.addSql(`alter table "model_fits" drop constraint "model_fits_model_id_foreign";`);
-
-    this.addSql(`alter table "model_fits" drop constraint "model_fits_store_id_foreign";`);
-
-    this.addSql(`alter table "listings" drop constraint "listings_store_id_foreign";`);
-
-    this.addSql(`drop table if exists "categories" cascade;`);
-
-    this.addSql(`drop table if exists "chain" cascade;`);
-
-    this.addSql(`drop table if exists "events" cascade;`);
-
-    this.addSql(`drop table if exists "outbox_messages" cascade;`);
-
-    this.addSql(`drop table if exists "people" cascade;`);
-
-    this.addSql(`drop table if exists "jobs" cascade;`);
-
-    this.addSql(`drop table if exists "extracts" cascade;`);
-
-    this.addSql(`drop table if exists "extract_issues" cascade;`);
-
-    this.addSql(`drop table if exists "audit_entries" cascade;`);
-
-    this.addSql(`drop table if exists "access_tokens" cascade;`);
-
-    this.addSql(`drop table if exists "products" cascade;`);
-
-    this.addSql(`drop table if exists "models" cascade;`);
-
-    this.addSql(`drop table if exists "product_funding" cascade;`);
-
-    this.addSql(`drop table if exists "product_terms" cascade;`);
-
-    this.addSql(`drop table if exists "scenarios" cascade;`);
-
-    this.addSql(`drop table if exists "stores" cascade;`);
-
-    this.addSql(`drop table if exists "model_fits" cascade;`);
-
-    this.addSql(`drop table if exists "listings" cascade;`);
-
-    this.addSql(`drop table if exists "temperatures" cascade;`);
   }
 
 }

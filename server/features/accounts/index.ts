@@ -1,1 +1,2 @@
 export * from "./accounts.entities";
+export { accountsRoutes } from "./accounts.routes";

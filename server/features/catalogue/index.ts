@@ -1,1 +1,2 @@
 export * from "./catalogue.entities";
+export { catalogueRoutes } from "./catalogue.routes";

@@ -1,1 +1,2 @@
 export * from "./chain.entities";
+export { chainRoutes } from "./chain.routes";

@@ -1,1 +1,3 @@
 export * from "./drivers.entities";
+export { driversRoutes } from "./drivers.routes";
+export { driversJobs } from "./drivers.jobs";

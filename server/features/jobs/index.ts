@@ -1,1 +1,2 @@
 export * from "./jobs.entities";
+export { jobsRoutes } from "./jobs.routes";

@@ -8,7 +8,7 @@ export type JobState = "queued" | "running" | "succeeded" | "failed" | "cancelle
 export const JobEntity = defineEntity({
   name: "Job",
   tableName: "jobs",
-  indexes: [{ properties: ["state", "createdAt"] }, { properties: ["subject"] }],
+  indexes: [{ properties: ["state", "createdAt"] }, { properties: ["subject"] }, { properties: ["singletonKey"] }],
   properties: {
     id: p.uuid().primary().onCreate(() => randomUUID()),
     kind: p.string().length(60),
@@ -21,7 +21,12 @@ export const JobEntity = defineEntity({
     subject: p.string().length(120).nullable(),
     result: p.json<Record<string, unknown>>().nullable(),
     error: p.json<{ code: string; detail: string }>().nullable(),
+    /** Goes up each time a worker takes it; a worker whose number is no longer the row's has lost the job. */
     attempt: p.smallint().default(0),
+    /** A running job without a fresh sign of life is given to another worker. */
+    heartbeatAt: p.datetime().nullable(),
+    /** At most one job with this key waits or runs at a time. */
+    singletonKey: p.string().length(120).nullable(),
     cancelRequested: p.boolean().default(false),
     createdBy: () => p.manyToOne(PersonEntity).nullable(),
     createdAt: p.datetime().onCreate(() => new Date()),

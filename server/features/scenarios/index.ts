@@ -1,1 +1,2 @@
 export * from "./scenarios.entities";
+export { scenariosRoutes } from "./scenarios.routes";

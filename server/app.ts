@@ -1,0 +1,32 @@
+import express, { type Express } from "express";
+import helmet from "helmet";
+import { randomUUID } from "node:crypto";
+import { pinoHttp } from "pino-http";
+import { mount } from "./http/mount";
+import { problemHandler, unknownPath } from "./http/problem-handler";
+import { sameOrigin } from "./http/same-origin";
+import { securityHeaders } from "./http/security-headers";
+import { serveClient } from "./http/serve-client";
+import { routes } from "./routes";
+import type { Services } from "./services";
+import { sessions } from "./features/accounts";
+
+/** The whole application over given services; it listens nowhere yet. */
+export function createApp(services: Services): Express {
+  const app = express();
+  app.set("trust proxy", services.environment.TRUST_PROXY);
+  app.set("query parser", "simple");
+  app.disable("etag");
+  app.use(pinoHttp({ logger: services.logger, genReqId: () => randomUUID(), autoLogging: services.environment.NODE_ENV !== "test" }));
+  app.use((request, response, next) => {
+    response.set("X-Request-Id", String(request.id));
+    next();
+  });
+  app.use(helmet(securityHeaders(services.environment)));
+  app.use("/api", sameOrigin, express.json({ limit: "16mb" }), sessions(services));
+  mount(app, routes, services);
+  app.use("/api", unknownPath);
+  serveClient(app, services.environment);
+  app.use(problemHandler);
+  return app;
+}

@@ -1,0 +1,25 @@
+import pg from "pg";
+import { createOrm } from "./database/orm";
+import type { Environment } from "./environment";
+import { createPgBossQueue } from "./jobs/pg-boss-queue";
+import { createLogger } from "./logger";
+import type { Services } from "./services";
+import { createFileStore } from "./storage/file-store";
+
+/** Connects everything a process needs; `closeServices` lets go of it again. */
+export async function createServices(environment: Environment, options: { now?: () => Date } = {}): Promise<Services> {
+  const logger = createLogger(environment.LOG_LEVEL);
+  const orm = await createOrm(environment);
+  const pool = new pg.Pool({ connectionString: environment.DATABASE_URL, max: environment.DATABASE_POOL_SIZE });
+  // A connection that breaks while idle is replaced at the next use.
+  pool.on("error", (error) => logger.warn({ err: error }, "database connection lost"));
+  const queue = await createPgBossQueue({ pool, logger });
+  return { environment, logger, orm, pool, files: createFileStore(environment), queue, now: options.now ?? (() => new Date()) };
+}
+
+export async function closeServices(services: Services): Promise<void> {
+  await services.queue.stop();
+  services.files.close();
+  await services.orm.close();
+  await services.pool.end();
+}

@@ -1,0 +1,3 @@
+import type { JobDefinition } from "../../jobs/job-queue";
+
+export const extractsJobs: readonly JobDefinition[] = [];

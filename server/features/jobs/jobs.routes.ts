@@ -1,0 +1,3 @@
+import type { Route } from "../../http/route";
+
+export const jobsRoutes: readonly Route[] = [];

@@ -1,0 +1,3 @@
+import type { Route } from "../../http/route";
+
+export const scenariosRoutes: readonly Route[] = [];

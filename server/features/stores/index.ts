@@ -1,0 +1,1 @@
+export { storesRoutes } from "./stores.routes";

@@ -1,0 +1,76 @@
+import type { EntityManager } from "@mikro-orm/postgresql";
+import PgBoss from "pg-boss";
+import type { Pool, PoolClient } from "pg";
+import { JobEntity } from "../features/jobs";
+import type { Logger } from "../logger";
+import type { JobQueue } from "./job-queue";
+import { JobRunner } from "./job-runner";
+
+/** What travels through the queue; everything else is in our own table. */
+export type QueuedJob = { jobId: string; attempt: number };
+
+/** Puts a job into the queue by the connection of the context's open transaction. */
+export type SendInTransaction = (em: EntityManager, kind: string, job: QueuedJob, delaySeconds?: number) => Promise<void>;
+
+/**
+ * The queue over pg-boss: it hands jobs to workers, and our `jobs` table says how they stand. Retries and the rescue
+ * of killed workers' jobs are ours (see JobRunner), because pg-boss knows no sign of life and would either wait for
+ * its expiry or give a long job away while it still runs.
+ */
+export async function createPgBossQueue({ pool, logger }: { pool: Pool; logger: Logger }): Promise<JobQueue> {
+  const boss = new PgBoss({
+    db: { executeSql: (text, values) => pool.query(text, values) },
+    schedule: false,
+    monitorStateIntervalSeconds: 60,
+  });
+  boss.on("error", (error) => logger.error({ err: error }, "queue error"));
+  await boss.start();
+  const known = new Set<string>();
+
+  const ensureQueue = async (kind: string) => {
+    if (known.has(kind)) return;
+    await boss.createQueue(kind);
+    known.add(kind);
+  };
+
+  const send: SendInTransaction = async (em, kind, job, delaySeconds = 0) => {
+    await ensureQueue(kind);
+    const client = await connectionOf(em);
+    const db = { executeSql: (text: string, values: unknown[]) => client.query(text, values) };
+    await boss.send(kind, job, { db, retryLimit: 0, expireInHours: 23, startAfter: delaySeconds });
+  };
+
+  const runner = new JobRunner({ boss, send, ensureQueue });
+
+  return {
+    async enqueue(em, definition, payload, options = {}) {
+      if (options.singletonKey) {
+        await em.execute("select pg_advisory_xact_lock(hashtext(?))", [options.singletonKey]);
+        const waiting = await em.findOne(JobEntity, { singletonKey: options.singletonKey, state: { $in: ["queued", "running"] } });
+        if (waiting) return waiting.id;
+      }
+      const parsed = definition.payload.parse(payload) as Record<string, unknown>;
+      const job = em.create(JobEntity, {
+        kind: definition.kind,
+        payload: parsed,
+        subject: options.subject ?? null,
+        createdBy: options.personId ?? null,
+        singletonKey: options.singletonKey ?? null,
+      });
+      await em.persist(job).flush();
+      await send(em, definition.kind, { jobId: job.id, attempt: 0 });
+      return job.id;
+    },
+    work: (definitions, services) => runner.start(definitions, services),
+    async stop() {
+      await runner.stop();
+      await boss.stop({ graceful: false, wait: true });
+    },
+  };
+}
+
+async function connectionOf(em: EntityManager): Promise<PoolClient> {
+  const transaction = em.getTransactionContext<{ client: { acquireConnection: () => Promise<PoolClient> } }>();
+  if (!transaction) throw new Error("A job is put into the queue inside a transaction only: wrap it in em.transactional.");
+  return transaction.client.acquireConnection();
+}

@@ -1,0 +1,2 @@
+export * from "./outbox.entity";
+export { mailJobs } from "./mail.jobs";

@@ -1,0 +1,49 @@
+import { DeleteObjectCommand, GetObjectCommand, HeadBucketCommand, S3Client } from "@aws-sdk/client-s3";
+import { Upload } from "@aws-sdk/lib-storage";
+import type { Readable } from "node:stream";
+import type { Environment } from "../environment";
+
+/** Keeps files unchanged under a key. */
+export type FileStore = {
+  /** Streams a body of unknown length; nothing is stored when the stream breaks or `abort` fires. */
+  put: (file: { key: string; body: Readable; contentType: string; abort?: AbortSignal }) => Promise<void>;
+  /** The bytes as they were stored. */
+  get: (key: string) => Promise<Readable>;
+  remove: (key: string) => Promise<void>;
+  /** Throws where the store cannot be reached. */
+  check: () => Promise<void>;
+  close: () => void;
+};
+
+/** A file store in an S3 bucket, which exists already. */
+export function createFileStore(environment: Environment): FileStore {
+  const bucket = environment.S3_BUCKET;
+  const client = new S3Client({
+    endpoint: environment.S3_ENDPOINT,
+    region: environment.S3_REGION,
+    forcePathStyle: environment.S3_ENDPOINT !== undefined,
+    credentials: { accessKeyId: environment.S3_ACCESS_KEY_ID, secretAccessKey: environment.S3_SECRET_ACCESS_KEY },
+    // Otherwise a streamed body is stored wrapped in checksum chunks by stores that do not know them.
+    requestChecksumCalculation: "WHEN_REQUIRED",
+    responseChecksumValidation: "WHEN_REQUIRED",
+  });
+  return {
+    async put({ key, body, contentType, abort }) {
+      const upload = new Upload({ client, params: { Bucket: bucket, Key: key, Body: body, ContentType: contentType } });
+      abort?.addEventListener("abort", () => void upload.abort(), { once: true });
+      await upload.done();
+    },
+    async get(key) {
+      const { Body } = await client.send(new GetObjectCommand({ Bucket: bucket, Key: key }));
+      if (!Body) throw new Error(`The file store has no body for ${key}.`);
+      return Body as Readable;
+    },
+    async remove(key) {
+      await client.send(new DeleteObjectCommand({ Bucket: bucket, Key: key }));
+    },
+    async check() {
+      await client.send(new HeadBucketCommand({ Bucket: bucket }));
+    },
+    close: () => client.destroy(),
+  };
+}
