@@ -4,7 +4,7 @@ import { existsSync, readdirSync } from "node:fs";
  * Who may import whom, as zones of import-x/no-restricted-paths, generated from the folders that exist.
  * A zone reads: files under `target` may not import files under `from`, `except` aside.
  */
-const folders = (path) => (existsSync(path) ? readdirSync(path, { withFileTypes: true }).filter((entry) => entry.isDirectory()).map((entry) => entry.name) : []);
+const folders = (/** @type {string} */ path) => (existsSync(path) ? readdirSync(path, { withFileTypes: true }).filter((entry) => entry.isDirectory()).map((entry) => entry.name) : []);
 
 const sides = [
   { target: "./src", from: "./server", message: "The client never imports the server: share by shared/." },

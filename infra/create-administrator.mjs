@@ -1,0 +1,26 @@
+import { applicationEnvironment } from "./lib/application-environment.mjs";
+import { runCommand } from "./lib/command.mjs";
+import { useDatabase } from "./lib/use-database.mjs";
+import { ensurePackages } from "./lib/packages.mjs";
+import { migrate } from "./lib/prepare.mjs";
+import { Problem } from "./lib/problem.mjs";
+import { runScript } from "./lib/script.mjs";
+
+// npm run create-administrator -- EMAIL: prints a one-time password, whether or not the application runs.
+const say = (/** @type {string} */ line) => console.error(line);
+
+await runCommand(async (context) => {
+  const [email, ...more] = process.argv.slice(2);
+  if (!email || more.length > 0 || !/^\S+@\S+$/.test(email)) {
+    throw new Problem("Give one e-mail address: npm run create-administrator -- EMAIL");
+  }
+  const { stopping } = context;
+  await ensurePackages({ say, stopping });
+  const { settings, state, isRunning } = await useDatabase({ context, command: "npm run create-administrator", say });
+  const env = applicationEnvironment({ settings, state, hasDemo: state.demo === "loaded" && settings.embedsDatabase });
+  if (!isRunning) await migrate(env, stopping);
+  await runScript({
+    script: "server/features/accounts/create-administrator.ts", args: [email], env, stopping, show: true,
+    failure: `No administrator was made for ${email}`,
+  });
+});

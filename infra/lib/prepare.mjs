@@ -1,0 +1,40 @@
+import { applicationEnvironment } from "./application-environment.mjs";
+import { runScript } from "./script.mjs";
+import { planDemo } from "./settings.mjs";
+import { writeState } from "./state.mjs";
+
+/**
+ * Brings a started installation's database to the present: migrations, then the demo where it belongs.
+ * @param {import("./services.mjs").Installation} installation
+ * @param {{ mode?: string, publicUrl?: string }} [options]
+ * @returns {Promise<{ env: NodeJS.ProcessEnv, hasDemo: boolean }>} the environment of the application's processes
+ */
+export async function prepareDatabase(installation, { mode, publicUrl } = {}) {
+  const { settings, state, folder, context, say } = installation;
+  const demo = planDemo({ ...settings, remembered: state.demo });
+  const hasDemo = demo !== "none";
+  const env = applicationEnvironment({ settings, state, hasDemo, mode, publicUrl });
+  await migrate(env, context.stopping);
+  if (demo === "load") {
+    say("Loading the demo chain (up to a minute) …");
+    await runScript({
+      script: "demo/load.ts", env, stopping: context.stopping, failure: "The demo chain could not be loaded",
+    });
+  }
+  if (settings.embedsDatabase && state.demo === null) {
+    state.demo = hasDemo ? "loaded" : "empty";
+    writeState(folder, state);
+  }
+  return { env, hasDemo };
+}
+
+/**
+ * @param {NodeJS.ProcessEnv} env
+ * @param {AbortSignal} stopping
+ */
+export function migrate(env, stopping) {
+  return runScript({
+    script: "server/database/migrate.ts", env, stopping,
+    failure: "The database could not be brought up to date",
+  });
+}
