@@ -1,0 +1,45 @@
+import type { QueryClient } from "@tanstack/react-query";
+import { createBrowserRouter } from "react-router-dom";
+import { paths } from "@/lib/paths";
+import { requireSession } from "./require-session";
+import { RouteError } from "./route-error";
+import { Shell } from "./shell/shell";
+import { Starting } from "./starting";
+
+/** Every page, loaded when first visited. A route module exports `Component` and, where it preloads, `loaderFor`. */
+export const createRouter = (queryClient: QueryClient) =>
+  createBrowserRouter([
+    {
+      path: paths.signIn.path,
+      HydrateFallback: Starting,
+      errorElement: <RouteError />,
+      lazy: async () => ({ Component: (await import("./routes/sign-in")).SignInRoute }),
+    },
+    {
+      element: <Shell />,
+      HydrateFallback: Starting,
+      errorElement: <RouteError />,
+      loader: requireSession(queryClient),
+      // The session is known once; pages that need it fresh invalidate its query.
+      shouldRevalidate: () => false,
+      children: [
+        {
+          errorElement: <RouteError inShell />,
+          children: [
+            {
+              path: paths.home.path,
+              lazy: async () => ({ loader: (await import("./routes/home")).loaderFor(queryClient), element: null }),
+            },
+            {
+              path: paths.password.path,
+              lazy: async () => ({ Component: (await import("./routes/password")).PasswordRoute }),
+            },
+            {
+              path: "*",
+              lazy: async () => ({ Component: (await import("./routes/not-found")).NotFoundRoute }),
+            },
+          ],
+        },
+      ],
+    },
+  ]);

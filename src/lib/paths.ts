@@ -1,0 +1,28 @@
+import { addressOf } from "./address";
+
+type DriversView = { product?: string; store?: string; weeks?: string };
+type StoresView = { product?: string; driver?: string; store?: string; anchor?: number };
+
+/** Each page's path, and the one way to build a link to it. The address holds all that a colleague needs to see the same. */
+export const paths = {
+  home: { path: "/", href: () => "/" },
+  signIn: {
+    path: "/sign-in",
+    href: (returnTo?: string) => addressOf("/sign-in", { returnTo: returnTo === "/" ? undefined : returnTo }),
+  },
+  password: { path: "/password", href: () => "/password" },
+  extracts: { path: "/extracts", href: () => "/extracts" },
+  extract: { path: "/extracts/:extractId", href: (extractId: string) => `/extracts/${encodeURIComponent(extractId)}` },
+  drivers: { path: "/drivers", href: (view: DriversView = {}) => addressOf("/drivers", view) },
+  stores: { path: "/stores", href: (view: StoresView = {}) => addressOf("/stores", view) },
+  scenarios: { path: "/scenarios", href: () => "/scenarios" },
+  newScenario: {
+    path: "/scenarios/new",
+    href: (view: { product?: string; store?: string } = {}) => addressOf("/scenarios/new", view),
+  },
+  scenario: { path: "/scenarios/:scenarioId", href: (scenarioId: string) => `/scenarios/${encodeURIComponent(scenarioId)}` },
+} as const;
+
+/** A return address is followed only within this site. */
+export const safeReturn = (address: string | null): string =>
+  address && /^\/(?![/\\])/.test(address) ? address : paths.home.href();
