@@ -1,0 +1,41 @@
+import type { Random } from "../random";
+import type { PromotionLevel, Region } from "../types";
+
+/** A promotion of one product: some weeks in some regions, with or without a price cut, with or without support. */
+export type Promotion = {
+  firstWeek: number;
+  lastWeek: number;
+  regions: readonly Region[];
+  /** Price cut as a share of the regular price; 0 where only feature or display supports it. */
+  depth: number;
+  support: PromotionLevel;
+};
+
+const everywhere: readonly Region[] = ["coast", "town", "moor"];
+
+const lengths = [[1, 3], [2, 5], [3, 2]] as const;
+/** Dealt like cards, shuffled anew when used up, so that every kind of support comes round for every product. */
+const supportDeck = ["none", "none", "feature", "feature", "display", "display", "both", "both"] as const;
+const depths = [[0.08, 2], [0.12, 3], [0.16, 3], [0.2, 4], [0.25, 3], [0.3, 2]] as const;
+const scopes = [
+  [everywhere, 65], [["coast", "town"], 12], [["town", "moor"], 12], [["coast", "moor"], 11],
+] as const satisfies readonly (readonly [readonly Region[], number])[];
+const supportOnlyShare = 0.16;
+
+/** Plans one product's promotions. Depth does not depend on support, so what each does can be learnt apart. */
+export function planPromotions({ weekCount, random }: { weekCount: number; random: Random }): Promotion[] {
+  const promotions: Promotion[] = [];
+  const deck: PromotionLevel[] = [];
+  let week = random.between(1, 7);
+  while (week < weekCount) {
+    const lastWeek = Math.min(week + random.choose(lengths) - 1, weekCount - 1);
+    if (deck.length === 0) deck.push(...supportDeck);
+    const [support] = deck.splice(random.between(0, deck.length - 1), 1);
+    const drawnDepth = random.choose(depths);
+    const supportOnly = random.uniform() < supportOnlyShare;
+    const depth = supportOnly && support !== "none" ? 0 : drawnDepth;
+    promotions.push({ firstWeek: week, lastWeek, regions: random.choose<readonly Region[]>(scopes), depth, support });
+    week = lastWeek + random.between(4, 9);
+  }
+  return promotions;
+}

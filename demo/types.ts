@@ -1,0 +1,48 @@
+export type Region = "coast" | "town" | "moor";
+export type PromotionLevel = "none" | "feature" | "display" | "both";
+
+/** A row of `stores.csv`; days are written 2024-06-03, `null` means not (yet). */
+export type StoreRow = { store: string; name: string; region: Region; opened: string; closed: string | null };
+
+/** A row of `products.csv`: the product, and one of its price terms. Prices include tax, costs do not. */
+export type ProductRow = {
+  product: string;
+  name: string;
+  gtin: string;
+  brand: string;
+  category: string;
+  soldByWeight: boolean;
+  validFrom: string;
+  unitCost: number;
+  regularPrice: number;
+  taxRate: number;
+};
+
+/** A row of `events.csv`; `region` is null for an event of the whole chain. */
+export type EventRow = { event: string; name: string; firstDay: string; lastDay: string; region: Region | null };
+
+/** A row of `temperatures.csv`: the week's mean temperature in a region, in degrees Celsius. */
+export type TemperatureRow = { week: string; region: Region; temperatureC: number };
+
+/** A row of `sales.csv`: what one store sold of one product in one week. */
+export type SalesRow = {
+  week: string;
+  store: string;
+  product: string;
+  units: number;
+  netSales: number;
+  regularPrice: number;
+  shelfPrice: number;
+  feature: boolean;
+  display: boolean;
+  mechanic: "none" | "price_cut";
+};
+
+/** The chain's files, as rows. */
+export type Demo = {
+  stores: StoreRow[];
+  products: ProductRow[];
+  events: EventRow[];
+  temperatures: TemperatureRow[];
+  sales: SalesRow[];
+};
