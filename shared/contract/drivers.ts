@@ -1,6 +1,7 @@
 import { z } from "zod";
 import { codeSchema, idParams, idSchema, levelSchema, timestampSchema, weekSchema } from "./common";
 import { defineEndpoint } from "./endpoint";
+import { acceptedSchema } from "./jobs";
 
 const id = z.string().min(1).max(120).optional();
 const column = z.string().min(1).max(60);
@@ -44,6 +45,13 @@ export const fitSummarySchema = z.object({
   stockOuts: z.object({ leftOut: z.number().int(), partly: z.number().int() }),
   /** Drivers that could not be learnt here, each with the reason. */
   leftOut: z.array(z.object({ driver: z.string(), reason: z.string() })),
+  /** Drivers that the default specification kept to a straight line, each with the reason. */
+  straightLines: z.array(z.object({ driver: z.string(), reason: z.string() })),
+  /** How much there was to learn a price effect from; not `enough`: show elasticities greyed. */
+  priceLearning: z.object({ weeksMoved: z.number().int(), regularPrices: z.number().int(), enough: z.boolean() }),
+  meanWeeklyUnits: z.number(),
+  /** Mean of what the fitted weeks would have sold at regular price without promotion; null where it cannot be said. */
+  meanBaseUnits: z.number().nullable(),
 });
 export type FitSummary = z.infer<typeof fitSummarySchema>;
 
@@ -56,11 +64,22 @@ export const modelSchema = z.object({
   createdAt: timestampSchema,
   createdBy: z.string(),
   jobId: idSchema.nullable(),
+  usedFrom: timestampSchema.nullable(),
+  usedUntil: timestampSchema.nullable(),
   fits: z.array(fitSummarySchema),
+  /** Stores that could not be fitted, each with the reason. */
+  skipped: z.array(z.object({ store: codeSchema, reason: z.string() })),
+  /** Why plans cannot use it, in a sentence; null where they can. */
+  notForPlans: z.string().nullable(),
+  /** What the reader may do with it. */
+  may: z.object({ use: z.boolean() }),
 });
 export type Model = z.infer<typeof modelSchema>;
 
 const weeks = z.object({ first: weekSchema, last: weekSchema });
+
+/** Answer where several stores are fitted in the background: 202, with Location of the job. */
+export const modelAcceptedSchema = acceptedSchema.extend({ id: idSchema });
 
 export const createModel = defineEndpoint({
   method: "POST", path: "/api/models",
@@ -105,6 +124,8 @@ export const useModel = defineEndpoint({
 /** A driver's curve on the link scale, centred; exp() of it is the multiplier. */
 export const curveSchema = z.object({
   term: z.string(),
+  /** What it stands for on screens: price, season, temperature, promotion, mechanic, event, trend … */
+  driver: z.string(),
   kind: z.enum(["linear", "factor", "smooth", "cyclic-smooth"]),
   column: z.string(),
   /** Numbers, or the levels of a factor. */
@@ -116,8 +137,10 @@ export const curveSchema = z.object({
   observedRange: z.tuple([z.number(), z.number()]).nullable(),
   /** Weeks seen near each x. */
   supportCount: z.array(z.number()),
-  /** Every value seen, for the rug. */
+  /** Every value seen, one entry a week, for the rug; empty for levels. */
   seen: z.array(z.number()),
+  /** d ln(units) / d ln(price) at each x with its interval, for the price driver; null for others. */
+  elasticity: z.object({ estimate: z.array(z.number()), lower: z.array(z.number()), upper: z.array(z.number()) }).nullable(),
 });
 export type Curve = z.infer<typeof curveSchema>;
 

@@ -4,6 +4,7 @@ import { defineEndpoint } from "./endpoint";
 import { salesWeekSchema } from "./drivers";
 
 export const promotionSchema = z.enum(["none", "feature", "display", "both"]);
+export const mechanicSchema = z.enum(["none", "multi_buy", "coupon", "other"]);
 
 /** What the plan changes in one store-week; what is absent stays as in the base. */
 export const planCellSchema = z.strictObject({
@@ -11,7 +12,7 @@ export const planCellSchema = z.strictObject({
   week: weekSchema,
   price: z.number().positive("A price is above zero.").max(1e9).optional(),
   promotion: promotionSchema.optional(),
-  mechanic: z.string().max(30).optional(),
+  mechanic: mechanicSchema.optional(),
   temperatureC: z.number().min(-60).max(60).optional(),
 });
 export type PlanCell = z.infer<typeof planCellSchema>;
@@ -23,7 +24,9 @@ export const scenarioDraftSchema = z.object({
   weeks: z.object({ first: weekSchema, last: weekSchema }),
   cells: z.array(planCellSchema).max(60_000),
   /** Cost of the feature or display for the whole plan, net of tax. */
-  fixedCost: z.number().min(0).max(1e12).default(0),
+  fixedCost: z.number().min(0).max(1e9).default(0),
+  /** Model to predict with: absent, a new scenario takes the product's model in use and a saved one keeps its own. */
+  modelId: idSchema.optional(),
 });
 export type ScenarioDraft = z.infer<typeof scenarioDraftSchema>;
 
