@@ -7,6 +7,9 @@ import { ProductEntity, StoreEntity } from "../catalogue";
 
 export type ModelState = "candidate" | "in-use" | "retired";
 
+/** A store that could not be fitted, and why, in a sentence. */
+export type SkippedStore = { store: string; reason: string };
+
 /** A product's model: one specification over some stores and weeks. At most one a product is in use. */
 export const ModelEntity = defineEntity({
   name: "Model",
@@ -23,6 +26,9 @@ export const ModelEntity = defineEntity({
     jobId: p.uuid().nullable(),
     createdBy: () => p.manyToOne(PersonEntity),
     createdAt: p.datetime().onCreate(() => new Date()),
+    /** When the last of its stores was done; null while it is being fitted. */
+    fittedAt: p.datetime().nullable(),
+    skipped: p.json<SkippedStore[]>().default([]),
     usedFrom: p.datetime().nullable(),
     usedUntil: p.datetime().nullable(),
     /** Who put it in use; null where a rule of the chain did. */
