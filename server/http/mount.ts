@@ -1,5 +1,5 @@
 import type { Express, NextFunction, Request, RequestHandler, Response } from "express";
-import { z } from "zod";
+import type { z } from "zod";
 import type { Endpoint } from "@shared/contract/endpoint";
 import { ProblemError } from "../errors";
 import type { Services } from "../services";
@@ -29,6 +29,10 @@ function requirePermission(endpoint: Endpoint, services: Services): RequestHandl
   return (request: Request, response: Response, next: NextFunction) => {
     authenticate(request, services)
       .then((caller) => {
+        if (caller.mustChangePassword && !endpoint.beforePasswordChange) {
+          const detail = "You signed in with a one-time password. Choose a password of your own first.";
+          throw new ProblemError({ status: 403, code: "password-change-needed", detail });
+        }
         if (endpoint.permission !== "public" && !caller.permissions.has(endpoint.permission)) {
           const detail = "Your roles do not allow this. Ask an administrator of the chain if you need it.";
           throw new ProblemError({ status: 403, code: "not-allowed", detail });

@@ -1,6 +1,6 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
 import type { Request, RequestHandler, Response } from "express";
-import type { Endpoint, Parsed, ResponseOf } from "@shared/contract/endpoint";
+import type { Endpoint, ParsedBody, ParsedParams, ParsedQuery, ResponseOf } from "@shared/contract/endpoint";
 import type { Permission } from "@shared/contract/permissions";
 import type { Services } from "../services";
 
@@ -13,13 +13,15 @@ export type Caller = {
   /** Codes of the categories this person decides on. */
   categories: readonly string[];
   tokenId: string | null;
+  /** Signed in with a one-time password: nothing but a new password is allowed. */
+  mustChangePassword: boolean;
 };
 
 /** One request after every check: everything is parsed, and the caller may do this. */
 export type Call<E extends Endpoint> = {
-  params: Parsed<E["params"]>;
-  query: Parsed<E["query"]>;
-  body: Parsed<E["body"]>;
+  params: ParsedParams<E>;
+  query: ParsedQuery<E>;
+  body: ParsedBody<E>;
   /** The request's own unit of work; services flush it once. */
   em: EntityManager;
   services: Services;
@@ -56,15 +58,17 @@ export function route<E extends Endpoint>(
   handle: (call: SignedInCall<E>) => Promise<ResponseOf<E> | undefined>,
   options: Options = {},
 ): Route {
+  if (endpoint.permission === "public") throw new Error(`${endpoint.method} ${endpoint.path} is public: use publicRoute.`);
   // The table of routes is of mixed endpoints; `mount` calls each handler with what its own endpoint parsed.
   return { endpoint, throttle: throttleOf(endpoint, options), before: options.before, handle: handle as Route["handle"] };
 }
 
 /** The same for an endpoint that needs no sign-in: there is no caller. */
 export function publicRoute<E extends Endpoint>(
-  endpoint: E & { permission: "public" },
+  endpoint: E,
   handle: (call: Call<E>) => Promise<ResponseOf<E> | undefined>,
   options: Options = {},
 ): Route {
+  if (endpoint.permission !== "public") throw new Error(`${endpoint.method} ${endpoint.path} is not public: use route.`);
   return { endpoint, throttle: throttleOf(endpoint, options), before: options.before, handle: handle as Route["handle"] };
 }

@@ -32,13 +32,14 @@ export const signIn = defineEndpoint({
 });
 export const getSession = defineEndpoint({
   method: "GET", path: "/api/session", summary: "Who is signed in", permission: "read", response: sessionSchema,
+  beforePasswordChange: true,
 });
 export const signOut = defineEndpoint({
   method: "DELETE", path: "/api/session", summary: "Sign out", permission: "public",
 });
 export const changePassword = defineEndpoint({
   method: "PUT", path: "/api/session/password", summary: "Change one's own password", permission: "read",
-  body: z.object({ current: z.string().min(1).max(200), next: passwordSchema }),
+  body: z.object({ current: z.string().min(1).max(200), next: passwordSchema }), beforePasswordChange: true,
 });
 
 export const tokenSchema = z.object({

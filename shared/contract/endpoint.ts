@@ -32,6 +32,8 @@ export type Endpoint<
   multipart?: boolean;
   /** Media type of a success when it is no JSON. */
   produces?: string;
+  /** Allowed to a person who still has to replace a one-time password. */
+  beforePasswordChange?: boolean;
 };
 
 /** Names an endpoint and keeps its exact types. */
@@ -50,6 +52,11 @@ export type Parsed<S extends Shape> = S extends z.ZodType ? z.output<S> : undefi
 export type Sent<S extends Shape> = S extends z.ZodType ? z.input<S> : undefined;
 
 export type ResponseOf<E> = E extends Endpoint<Shape, Shape, Shape, infer R> ? Parsed<R> : never;
+/** What the server hands to a handler, parsed. */
+export type ParsedParams<E> = E extends Endpoint<infer P, Shape, Shape, Shape> ? Parsed<P> : never;
+export type ParsedQuery<E> = E extends Endpoint<Shape, infer Q, Shape, Shape> ? Parsed<Q> : never;
+export type ParsedBody<E> = E extends Endpoint<Shape, Shape, infer B, Shape> ? Parsed<B> : never;
+/** What a caller sends. */
 export type BodyOf<E> = E extends Endpoint<Shape, Shape, infer B, Shape> ? Sent<B> : never;
 export type QueryOf<E> = E extends Endpoint<Shape, infer Q, Shape, Shape> ? Sent<Q> : never;
 export type ParamsOf<E> = E extends Endpoint<infer P, Shape, Shape, Shape> ? Sent<P> : never;

@@ -15,6 +15,8 @@ export const PersonEntity = defineEntity({
     /** Codes of the categories a category manager decides on. */
     categories: p.array().$type<string[]>().default([]),
     mustChangePassword: p.boolean().default(false),
+    /** Goes up with every new password; a session made under an earlier one has ended. */
+    passwordVersion: p.integer().default(1),
     disabledAt: p.datetime().nullable(),
     createdAt: p.datetime().onCreate(() => new Date()),
   },
@@ -24,6 +26,7 @@ export type Person = InferEntity<typeof PersonEntity>;
 export const AccessTokenEntity = defineEntity({
   name: "AccessToken",
   tableName: "access_tokens",
+  indexes: [{ properties: ["person"] }],
   properties: {
     id: p.uuid().primary().onCreate(() => randomUUID()),
     person: () => p.manyToOne(PersonEntity).deleteRule("cascade"),

@@ -13,7 +13,7 @@ export const ChainEntity = defineEntity({
     calendar: p.string().length(10).$type<"iso" | "4-5-4">(),
     weekStart: p.smallint(),
     temperatureUnit: p.string().length(12).$type<"celsius" | "fahrenheit">(),
-    intervalLevel: p.double().default(0.8),
+    intervalLevel: p.double().$type<number>().default(0.8),
     uploadLimitBytes: p.bigint("number"),
   },
 });

@@ -1,2 +1,3 @@
 export * from "./chain.entities";
 export { chainRoutes } from "./chain.routes";
+export { defaultChain, ensureChain, getChain } from "./chain.service";

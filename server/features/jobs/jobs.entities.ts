@@ -14,8 +14,8 @@ export const JobEntity = defineEntity({
     kind: p.string().length(60),
     state: p.string().length(12).$type<JobState>().default("queued"),
     payload: p.json<Record<string, unknown>>(),
-    done: p.double().default(0),
-    total: p.double().nullable(),
+    done: p.double().$type<number>().default(0),
+    total: p.double().$type<number>().nullable(),
     message: p.string().length(200).default(""),
     /** Path where the outcome can be read. */
     subject: p.string().length(120).nullable(),

@@ -1,0 +1,39 @@
+import { randomBytes } from "node:crypto";
+import { createOrm } from "../../database/orm";
+import { readEnvironment } from "../../environment";
+import { ProblemError } from "../../errors";
+import { ensureChain } from "../chain";
+import { audit } from "./audit";
+import { createPerson } from "./people.service";
+
+/** Command: creates an administrator (and the chain where there is none) and prints a one-time password. */
+async function createAdministrator(email: string): Promise<string> {
+  const orm = await createOrm(readEnvironment());
+  try {
+    const password = randomBytes(12).toString("base64url");
+    await orm.em.fork().transactional(async (em) => {
+      await ensureChain(em);
+      const name = email.split("@")[0] ?? email;
+      const person = await createPerson(em, { email, name, roles: ["administrator"], password, mustChangePassword: true });
+      audit(em, { personId: null, action: "person.created", subject: { kind: "person", id: person.id }, detail: { roles: person.roles } });
+    });
+    return password;
+  } finally {
+    await orm.close();
+  }
+}
+
+const email = process.argv[2];
+if (!email) {
+  process.stderr.write("Give the administrator's e-mail address: npm run create-administrator -- ada@chain.example\n");
+  process.exitCode = 1;
+} else {
+  try {
+    const password = await createAdministrator(email);
+    process.stdout.write(`Created ${email}. Password for the first sign-in, which asks for a new one:\n${password}\n`);
+  } catch (error) {
+    if (!(error instanceof ProblemError)) throw error;
+    process.stderr.write(`${error.message}\n`);
+    process.exitCode = 1;
+  }
+}
