@@ -1,0 +1,33 @@
+import { EngineError } from "../errors";
+import { exponential } from "./exponential";
+import type { ExactRules } from "./family-rules";
+
+/**
+ * Lognormal response: ln(response) is normal. Median exp(eta), mean exp(eta + dispersion / 2).
+ * Source: Johnson, Kotz & Balakrishnan (1994), Continuous Univariate Distributions 1, ch. 14.
+ */
+export const logGaussian: ExactRules = {
+  fitting: "exact",
+  check(response, column) {
+    for (let row = 0; row < response.length; row++) {
+      if (!(response[row] > 0)) {
+        throw new EngineError(
+          "response-invalid",
+          `Response "${column}" must be above 0 for log-gaussian; row ${row + 1} is ${response[row]}.`,
+        );
+      }
+    }
+  },
+  transform: (response) => response.map(Math.log),
+  mean: (linearPredictor, dispersion) => exponential(linearPredictor + dispersion / 2),
+  median: exponential,
+  meanInterval({ linearPredictor, standardError, quantile, dispersion }) {
+    const middle = linearPredictor + dispersion / 2;
+    const half = quantile * standardError;
+    return { lower: exponential(middle - half), upper: exponential(middle + half) };
+  },
+  observationInterval({ linearPredictor, standardError, quantile, dispersion }) {
+    const half = quantile * Math.hypot(standardError, Math.sqrt(dispersion));
+    return { lower: exponential(linearPredictor - half), upper: exponential(linearPredictor + half) };
+  },
+};

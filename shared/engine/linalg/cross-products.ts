@@ -1,0 +1,148 @@
+import { paddedWidth } from "./sparse-rows";
+import type { SparseRows } from "./sparse-rows";
+
+type Single = Extract<SparseRows, { storage: "single" }>;
+type Index = Extract<SparseRows, { storage: "index" }>;
+type Spline = Extract<SparseRows, { storage: "spline" }>;
+
+/** Order in which pairs are written, so that six kernels serve all nine combinations. */
+const rank = { single: 0, index: 1, spline: 2 } as const;
+
+/** Whether `crossProduct` wants its two terms the other way round. */
+export const isSwapped = (left: SparseRows, right: SparseRows): boolean => rank[left.storage] > rank[right.storage];
+
+/**
+ * Weighted cross-product X_left' diag(weights) X_right of two terms, by a kernel for the pair of storages: n x 16
+ * additions for two splines, 4 for a spline and an index, 1 for two indices.
+ *
+ * @param left must not rank after `right` in the order single, index, spline (see `isSwapped`).
+ * @param out receives left.width x right.width values, row-major, at its start; must hold the padded widths. Overwritten.
+ * @example crossProduct(ones, spline, weights, out); // out: sums of weights under each spline
+ */
+export function crossProduct(left: SparseRows, right: SparseRows, weights: Float64Array, out: Float64Array): void {
+  const rows = paddedWidth(left);
+  const columns = paddedWidth(right);
+  out.fill(0, 0, rows * columns);
+  if (left.storage === "single") crossSingle(left, right, weights, out);
+  else if (left.storage === "index") crossIndex(left, right, weights, out);
+  else if (right.storage === "spline") {
+    if (left === right) squareSpline(left, weights, out);
+    else crossSplines(left, right, weights, out);
+  }
+  closeCircles(left, right, out);
+}
+
+function crossSingle(left: Single, right: SparseRows, weights: Float64Array, out: Float64Array): void {
+  const count = weights.length;
+  const own = left.values;
+  if (right.storage === "single") {
+    let sum = 0;
+    for (let row = 0; row < count; row++) sum += weights[row] * own[row] * right.values[row];
+    out[0] = sum;
+  } else if (right.storage === "index") {
+    for (let row = 0; row < count; row++) out[right.index[row]] += weights[row] * own[row];
+  } else {
+    const { first, values } = right;
+    for (let row = 0; row < count; row++) {
+      const scaled = weights[row] * own[row];
+      const at = 4 * row;
+      const from = first[row];
+      out[from] += scaled * values[at];
+      out[from + 1] += scaled * values[at + 1];
+      out[from + 2] += scaled * values[at + 2];
+      out[from + 3] += scaled * values[at + 3];
+    }
+  }
+}
+
+function crossIndex(left: Index, right: SparseRows, weights: Float64Array, out: Float64Array): void {
+  const count = weights.length;
+  const own = left.index;
+  if (right.storage === "index") {
+    for (let row = 0; row < count; row++) out[own[row] * right.width + right.index[row]] += weights[row];
+  } else if (right.storage === "spline") {
+    const { first, values } = right;
+    const stride = paddedWidth(right);
+    for (let row = 0; row < count; row++) {
+      const weight = weights[row];
+      const at = 4 * row;
+      const from = own[row] * stride + first[row];
+      out[from] += weight * values[at];
+      out[from + 1] += weight * values[at + 1];
+      out[from + 2] += weight * values[at + 2];
+      out[from + 3] += weight * values[at + 3];
+    }
+  }
+}
+
+function crossSplines(left: Spline, right: Spline, weights: Float64Array, out: Float64Array): void {
+  const stride = paddedWidth(right);
+  const own = left.values;
+  const other = right.values;
+  for (let row = 0; row < weights.length; row++) {
+    const at = 4 * row;
+    const r0 = other[at];
+    const r1 = other[at + 1];
+    const r2 = other[at + 2];
+    const r3 = other[at + 3];
+    let to = left.first[row] * stride + right.first[row];
+    for (let k = 0; k < 4; k++, to += stride) {
+      const scaled = weights[row] * own[at + k];
+      out[to] += scaled * r0;
+      out[to + 1] += scaled * r1;
+      out[to + 2] += scaled * r2;
+      out[to + 3] += scaled * r3;
+    }
+  }
+}
+
+/** A spline with itself: the upper triangle only, mirrored at the end. */
+function squareSpline(rows: Spline, weights: Float64Array, out: Float64Array): void {
+  const stride = paddedWidth(rows);
+  const { first, values } = rows;
+  for (let row = 0; row < weights.length; row++) {
+    const weight = weights[row];
+    const at = 4 * row;
+    const v0 = values[at];
+    const v1 = values[at + 1];
+    const v2 = values[at + 2];
+    const v3 = values[at + 3];
+    const to = first[row] * (stride + 1);
+    const w0 = weight * v0;
+    const w1 = weight * v1;
+    const w2 = weight * v2;
+    out[to] += w0 * v0;
+    out[to + 1] += w0 * v1;
+    out[to + 2] += w0 * v2;
+    out[to + 3] += w0 * v3;
+    out[to + stride + 1] += w1 * v1;
+    out[to + stride + 2] += w1 * v2;
+    out[to + stride + 3] += w1 * v3;
+    out[to + 2 * stride + 2] += w2 * v2;
+    out[to + 2 * stride + 3] += w2 * v3;
+    out[to + 3 * stride + 3] += weight * v3 * v3;
+  }
+  for (let row = 0; row < stride; row++) {
+    for (let column = 0; column < row; column++) out[row * stride + column] = out[column * stride + row];
+  }
+}
+
+/** Adds the three padded rows and columns of a circle to the ones they stand for, and closes the gaps in `out`. */
+function closeCircles(left: SparseRows, right: SparseRows, out: Float64Array): void {
+  const stride = paddedWidth(right);
+  const leftPadded = paddedWidth(left);
+  for (let row = left.width; row < leftPadded; row++) {
+    const to = (row - left.width) * stride;
+    for (let column = 0; column < stride; column++) out[to + column] += out[row * stride + column];
+  }
+  if (stride === right.width) return;
+  const { width } = right;
+  for (let row = 0; row < left.width; row++) {
+    const from = row * stride;
+    const to = row * width;
+    for (let column = 0; column < width; column++) {
+      const value = out[from + column];
+      out[to + column] = column < 3 ? value + out[from + width + column] : value;
+    }
+  }
+}

@@ -1,0 +1,64 @@
+import { outsideRows } from "../basis/term-basis";
+import { EngineError } from "../errors";
+import { familyRules } from "../family/family";
+import { addRowsTimes } from "../linalg/sparse-rows";
+import type { FittedModel, ModelData, PredictOptions, Prediction } from "../types";
+import { designRows, rowStandardErrors } from "./design-rows";
+import { normalQuantile } from "./level";
+
+const defaultLevel = 0.95;
+
+/**
+ * Predicts rows: expected value with an interval, and the parts of the linear predictor. Curves go on as straight lines
+ * beyond the range they were fitted to, flagged in `outside`; nothing is clamped or capped.
+ * Interval "mean": of the expected value, coefficients' uncertainty only. "observation": of a new row's value, noise and
+ * coefficients' uncertainty together (quasi-poisson: negative binomial of size mu / (dispersion - 1), Poisson where the
+ * dispersion is 1 or less, gamma for fractional units; log-gaussian: lognormal).
+ *
+ * @param data the columns of the terms and the offset, n rows; the response is not needed.
+ * @returns arrays of length n; contributions per term id, "intercept" and "offset" sum to `linearPredictor`.
+ * @throws EngineError as `designRows`; option-invalid.
+ * @example predict(model, { price: [1.49], promotion: ["feature"] }, { level: 0.8 }).mean[0];
+ */
+export function predict(model: FittedModel, data: ModelData, options: PredictOptions = {}): Prediction {
+  const level = options.level ?? defaultLevel;
+  const quantile = normalQuantile(level);
+  const kind = checkInterval(options.interval ?? "mean");
+  const family = familyRules(model.spec.family);
+  const rows = designRows(model, data);
+  const contributions: Record<string, Float64Array> = {};
+  const linearPredictor = rows.offset.slice();
+  for (const part of rows.parts) {
+    const own = new Float64Array(rows.count);
+    addRowsTimes(part.rows, model.coefficients, part.first, own);
+    contributions[part.id] = own;
+    for (let row = 0; row < rows.count; row++) linearPredictor[row] += own[row];
+  }
+  contributions.offset = rows.offset.slice();
+  const standardError = rowStandardErrors(model, rows.parts, rows.count);
+  const { dispersion } = model;
+  const lower = new Float64Array(rows.count);
+  const upper = new Float64Array(rows.count);
+  const intervalOf = kind === "mean" ? family.meanInterval : family.observationInterval;
+  for (let row = 0; row < rows.count; row++) {
+    const interval = intervalOf({
+      linearPredictor: linearPredictor[row],
+      standardError: standardError[row],
+      dispersion, level, quantile,
+      fractional: model.fractionalResponse,
+    });
+    lower[row] = interval.lower;
+    upper[row] = interval.upper;
+  }
+  return {
+    mean: linearPredictor.map((value) => family.mean(value, dispersion)),
+    median: family.median === null ? null : linearPredictor.map(family.median),
+    lower, upper, linearPredictor, standardError, contributions,
+    outside: Object.fromEntries(model.terms.map((term) => [term.id, outsideRows(term, data)])),
+  };
+}
+
+function checkInterval(interval: string): "mean" | "observation" {
+  if (interval === "mean" || interval === "observation") return interval;
+  throw new EngineError("option-invalid", `interval is ${JSON.stringify(interval)}; it must be "mean" or "observation".`);
+}
