@@ -1,10 +1,11 @@
 import { existsSync, readdirSync } from "node:fs";
+import { join } from "node:path";
 
-/**
- * Who may import whom, as zones of import-x/no-restricted-paths, generated from the folders that exist.
- * A zone reads: files under `target` may not import files under `from`, `except` aside.
- */
-const folders = (/** @type {string} */ path) => (existsSync(path) ? readdirSync(path, { withFileTypes: true }).filter((entry) => entry.isDirectory()).map((entry) => entry.name) : []);
+/** @param {string} path */
+function foldersIn(path) {
+  if (!existsSync(path)) return [];
+  return readdirSync(path, { withFileTypes: true }).filter((entry) => entry.isDirectory()).map((entry) => entry.name);
+}
 
 const sides = [
   { target: "./src", from: "./server", message: "The client never imports the server: share by shared/." },
@@ -25,28 +26,54 @@ const engine = engineOrder.slice(0, -1).map((name, index) => ({
   message: "Engine folders import only earlier ones: linalg, basis, penalty, family, fit, inference, predict.",
 }));
 
-const client = [
-  ...folders("src/features").map((name) => ({
+/** @param {string[]} features the client's */
+const clientZones = (features) => [
+  ...features.map((name) => ({
     target: `./src/features/${name}`, from: "./src/features", except: [`./${name}`],
     message: "A client feature never imports another feature: the route composes them.",
   })),
   { target: "./src/features", from: "./src/app", message: "Features do not know the routes that compose them." },
-  { target: ["./src/components", "./src/lib"], from: ["./src/features", "./src/app"], message: "Components and lib know no feature." },
-  { target: "./src/components/charts", from: "./src/lib/api-client.ts", message: "Charts: data in, events out, no fetching." },
+  {
+    target: ["./src/components", "./src/lib"], from: ["./src/features", "./src/app"],
+    message: "Components and lib know no feature.",
+  },
+  {
+    target: "./src/components/charts", from: "./src/lib/api-client.ts",
+    message: "Charts: data in, events out, no fetching.",
+  },
 ];
 
-const server = folders("server/features").flatMap((name) => {
-  const others = folders("server/features").filter((other) => other !== name);
-  const own = `./server/features/${name}`;
-  return [
-    ...others.map((other) => ({
-      target: own, from: `./server/features/${other}`, except: ["./index.ts"],
-      message: "A server feature reaches another only through its index.ts.",
-    })),
-    { target: `${own}/**/!(*routes|index).ts`, from: `${own}/**/*routes.ts`, message: "Only index.ts imports routes." },
-    { target: `${own}/**/*repository.ts`, from: `${own}/**/*(*service|*presenter).ts`, message: "Repositories know no service or presenter." },
-    { target: `${own}/**/*routes.ts`, from: `${own}/**/*repository.ts`, message: "routes -> service -> repository." },
-  ];
-});
+/** @param {string[]} features the server's */
+const serverZones = (features) =>
+  features.flatMap((name) => {
+    const own = `./server/features/${name}`;
+    return [
+      ...features.filter((other) => other !== name).map((other) => ({
+        target: own, from: `./server/features/${other}`, except: ["./index.ts"],
+        message: "A server feature reaches another only through its index.ts.",
+      })),
+      { target: `${own}/**/!(*routes|index).ts`, from: `${own}/**/*routes.ts`, message: "Only index.ts imports routes." },
+      {
+        target: `${own}/**/*repository.ts`, from: `${own}/**/*(*service|*presenter).ts`,
+        message: "Repositories know no service or presenter.",
+      },
+      {
+        target: `${own}/**/*routes.ts`, from: `${own}/**/*repository.ts`,
+        message: "routes -> service -> repository.",
+      },
+    ];
+  });
 
-export const zones = [...sides, ...engine, ...client, ...server];
+/**
+ * Who may import whom, as zones of import-x/no-restricted-paths, generated from the folders that exist.
+ * A zone reads: files under `target` may not import files under `from`, `except` aside.
+ * @param {string} root the folder that holds src/, server/ and shared/
+ */
+export const zonesFor = (root) => [
+  ...sides,
+  ...engine,
+  ...clientZones(foldersIn(join(root, "src/features"))),
+  ...serverZones(foldersIn(join(root, "server/features"))),
+];
+
+export const zones = zonesFor(".");

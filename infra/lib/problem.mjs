@@ -26,6 +26,7 @@ const systemSentences = {
   EROFS: (path) => `${path} lies on a read-only disk: move the checkout to one that can be written.`,
   ENOSPC: (path) => `The disk that holds ${path} is full: free some space, then start again.`,
   EDQUOT: (path) => `The disk quota for ${path} is used up: free some space, then start again.`,
+  EEXIST: (path) => `${path} is a file where a folder is needed: move it away, then start again.`,
   ENOTDIR: (path) => `${path} runs through a file where a folder is needed: move that file away, then start again.`,
   EMFILE: () => "Too many open files: raise the limit (ulimit -n 4096), then start again.",
 };

@@ -25,15 +25,15 @@ function debianVersions() {
 
 /**
  * Finds PostgreSQL's programs; installs Debian's when there are none and this is root.
- * @param {{ say: (line: string) => void, stopping: AbortSignal }} options
+ * @param {{ say: (line: string) => void, stopping: AbortSignal, env?: NodeJS.ProcessEnv }} options
  * @returns {Promise<string[]>} folders, newest version first; at least one
  */
-export async function ensurePostgres({ say, stopping }) {
-  const present = postgresFolders();
+export async function ensurePostgres({ say, stopping, env = process.env }) {
+  const present = postgresFolders(env);
   if (present.length > 0) return present;
-  if (process.env.POSTGRES_BIN) {
+  if (env.POSTGRES_BIN) {
     throw new Problem(
-      `POSTGRES_BIN=${process.env.POSTGRES_BIN} holds no PostgreSQL (initdb, pg_ctl): ` +
+      `POSTGRES_BIN=${env.POSTGRES_BIN} holds no PostgreSQL (initdb, pg_ctl): ` +
         "give the folder that does, or unset it, then try again.",
     );
   }
