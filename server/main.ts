@@ -13,12 +13,16 @@ const server = createApp(services).listen(environment.PORT, environment.HOST, (e
   services.logger.info(`listening on http://${environment.HOST}:${environment.PORT}`);
 });
 
+// A file of 2 GB on a slow line takes longer than Node's default of five minutes; slow headers are still cut off.
+server.requestTimeout = 4 * 3_600_000;
+
 let stopping = false;
 function stop() {
   if (stopping) return;
   stopping = true;
-  // Open event streams would keep the process alive.
-  setTimeout(() => server.closeAllConnections(), 1_000).unref();
+  // Ends open event streams, which would otherwise keep the process alive.
+  services.stopping.abort();
+  setTimeout(() => server.closeAllConnections(), 5_000).unref();
   server.close(() => void closeServices(services).then(() => process.exit(0)));
 }
 process.on("SIGTERM", stop);
