@@ -21,7 +21,7 @@ export function mount(app: Express, routes: readonly Route[], services: Services
 function stepsOf(route: Route, services: Services): RequestHandler[] {
   const steps: RequestHandler[] = [throttle(route.throttle, services)];
   if (route.endpoint.permission !== "public") steps.push(requirePermission(route.endpoint, services));
-  steps.push(...(route.before ?? []), (request, response, next) => answer({ route, services, request, response }).catch(next));
+  steps.push(...(route.before ?? []).map((step) => step(services)), (request, response, next) => answer({ route, services, request, response }).catch(next));
   return steps;
 }
 

@@ -36,15 +36,18 @@ export type SignedInCall<E extends Endpoint> = Call<E> & { caller: Caller };
 /** Named throttles; `server/http/throttle.ts` says how much each allows. */
 export type ThrottleName = "sign-in" | "write" | "read" | "upload";
 
+/** A step of a request's way that needs what the process is made of. */
+export type RequestStep = (services: Services) => RequestHandler;
+
 export type Route = {
   endpoint: Endpoint;
   throttle: ThrottleName;
   /** Runs after the permission check and before the body is validated: reads a multipart body. */
-  before?: RequestHandler[];
+  before?: RequestStep[];
   handle: (call: SignedInCall<Endpoint>) => Promise<unknown>;
 };
 
-type Options = { throttle?: ThrottleName; before?: RequestHandler[] };
+type Options = { throttle?: ThrottleName; before?: RequestStep[] };
 
 const throttleOf = (endpoint: Endpoint, options: Options): ThrottleName =>
   options.throttle ?? (endpoint.method === "GET" ? "read" : "write");

@@ -5,10 +5,14 @@ import type { Environment } from "../environment";
 
 /** Keeps files unchanged under a key. */
 export type FileStore = {
-  /** Streams a body of unknown length; nothing is stored when the stream breaks or `abort` fires. */
-  put: (file: { key: string; body: Readable; contentType: string; abort?: AbortSignal }) => Promise<void>;
+  /**
+   * Streams a body of unknown length, holding some 20 MB of it in memory however long it is. To give up, destroy the
+   * body with an error: nothing is kept, and the promise is rejected with that error once what was sent is removed.
+   */
+  put: (file: { key: string; body: Readable; contentType: string }) => Promise<void>;
   /** The bytes as they were stored. */
   get: (key: string) => Promise<Readable>;
+  /** Removes a file; one that is not there is no error. */
   remove: (key: string) => Promise<void>;
   /** Throws where the store cannot be reached. */
   check: () => Promise<void>;
@@ -28,9 +32,8 @@ export function createFileStore(environment: Environment): FileStore {
     responseChecksumValidation: "WHEN_REQUIRED",
   });
   return {
-    async put({ key, body, contentType, abort }) {
+    async put({ key, body, contentType }) {
       const upload = new Upload({ client, params: { Bucket: bucket, Key: key, Body: body, ContentType: contentType } });
-      abort?.addEventListener("abort", () => void upload.abort(), { once: true });
       await upload.done();
     },
     async get(key) {

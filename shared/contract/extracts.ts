@@ -8,7 +8,8 @@ export type ExtractKind = z.infer<typeof extractKindSchema>;
 
 /**
  * received -> checking -> checked | unusable; checked -> loading -> loaded -> withdrawn.
- * A check or load that broke down returns to the state before it, with the reason in `failure`.
+ * A check or load that broke down returns to the state before it, with the reason in `failure`: to "received" and to
+ * "checked". A file that is received, checked or unusable can be checked again, for example once missing stores are there.
  */
 export const extractStateSchema = z.enum(["received", "checking", "checked", "unusable", "loading", "loaded", "withdrawn"]);
 
@@ -20,6 +21,7 @@ export const extractSchema = z.object({
   /** SHA-256 of the file as it arrived, in hexadecimal. */
   sha256: z.string(),
   state: extractStateSchema,
+  /** Rows of the file, those of them that a load takes, and how many errors and warnings were found in them. */
   rows: z.object({ read: z.number(), usable: z.number(), errors: z.number(), warnings: z.number() }).nullable(),
   firstWeek: weekSchema.nullable(),
   lastWeek: weekSchema.nullable(),
@@ -33,7 +35,7 @@ export const extractSchema = z.object({
   /** Why the file cannot be used at all, or why the last job broke down. */
   failure: z.object({ code: z.string(), detail: z.string() }).nullable(),
   /** What the reader may do next. */
-  may: z.object({ load: z.boolean(), withdraw: z.boolean() }),
+  may: z.object({ check: z.boolean(), load: z.boolean(), withdraw: z.boolean() }),
 });
 export type Extract = z.infer<typeof extractSchema>;
 
@@ -50,10 +52,22 @@ export const extractIssueSchema = z.object({
 });
 export type ExtractIssue = z.infer<typeof extractIssueSchema>;
 
+/** How often each rule was broken: exact, also where the list of issues is cut. */
+export const issueCountSchema = z.object({
+  rule: z.string(),
+  severity: z.enum(["error", "warning"]),
+  reason: z.string(),
+  remedy: z.string(),
+  count: z.number(),
+});
+export type IssueCount = z.infer<typeof issueCountSchema>;
+
+/** Rows that loading adds, changes or leaves as they are; `weeks` has those of sales, and is empty for other kinds. */
 export const extractChangesSchema = z.object({
   totals: z.object({ new: z.number(), changed: z.number(), same: z.number() }),
   weeks: z.array(z.object({
     week: weekSchema, new: z.number(), changed: z.number(), same: z.number(),
+    /** Units of the file's rows as they stand in the database, and as the file has them. */
     unitsBefore: z.number(), unitsAfter: z.number(),
   })),
 });
@@ -73,7 +87,7 @@ export const getExtract = defineEndpoint({
 export const listExtractIssues = defineEndpoint({
   method: "GET", path: "/api/extracts/:id/issues", summary: "Rows that cannot be used, or look odd", permission: "read",
   params: idParams, query: pageQuery.extend({ severity: z.enum(["error", "warning"]).optional(), rule: z.string().max(60).optional() }),
-  response: pageOf(extractIssueSchema).extend({ byRule: z.array(z.object({ rule: z.string(), severity: z.string(), reason: z.string(), count: z.number() })) }),
+  response: pageOf(extractIssueSchema).extend({ byRule: z.array(issueCountSchema) }),
 });
 export const getExtractChanges = defineEndpoint({
   method: "GET", path: "/api/extracts/:id/changes", summary: "What loading would change, or changed", permission: "read",
@@ -82,6 +96,10 @@ export const getExtractChanges = defineEndpoint({
 export const getExtractOriginal = defineEndpoint({
   method: "GET", path: "/api/extracts/:id/original", summary: "The file as it arrived, byte for byte", permission: "read",
   params: idParams, produces: "application/octet-stream",
+});
+export const checkExtract = defineEndpoint({
+  method: "POST", path: "/api/extracts/:id/check", summary: "Check the file again, against what is in the catalogue by now",
+  permission: "extracts:write", params: idParams, response: acceptedSchema, status: 202,
 });
 export const loadExtract = defineEndpoint({
   method: "POST", path: "/api/extracts/:id/load", summary: "Load all usable rows, or none", permission: "extracts:write",

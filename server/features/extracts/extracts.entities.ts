@@ -1,6 +1,6 @@
 import { defineEntity, p, type InferEntity } from "@mikro-orm/core";
 import { randomUUID } from "node:crypto";
-import type { ExtractChanges, ExtractKind } from "@shared/contract/extracts";
+import type { ExtractChanges, ExtractKind, IssueCount } from "@shared/contract/extracts";
 import { PersonEntity } from "../accounts";
 
 export type ExtractState = "received" | "checking" | "checked" | "unusable" | "loading" | "loaded" | "withdrawn";
@@ -22,6 +22,8 @@ export const ExtractEntity = defineEntity({
     rowsUsable: p.integer().nullable(),
     errorCount: p.integer().nullable(),
     warningCount: p.integer().nullable(),
+    /** How often each rule was broken: exact, though only the first issues are kept. */
+    issueCounts: p.json<IssueCount[]>().nullable().lazy(),
     firstWeek: p.date().nullable(),
     lastWeek: p.date().nullable(),
     changes: p.json<ExtractChanges>().nullable().lazy(),
