@@ -37,7 +37,7 @@ const runningIn = (week: number) => ({ firstWeek, lastWeek }: { firstWeek: numbe
 function executedIn(
   { promotion, store, random }: { promotion: Promotion; store: ChainStore; random: Random },
 ): Promotion | null {
-  const missed = random.uniform() < displayMissedShare;
+  const missed = random.uniform() < displayMissedShare && !promotion.isKey;
   if (!promotion.regions.includes(store.region)) return null;
   if (!missed || promotion.support === "none" || promotion.support === "feature") return promotion;
   return { ...promotion, support: promotion.support === "both" ? "feature" : "none" };

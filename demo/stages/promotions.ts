@@ -6,6 +6,8 @@ export type Promotion = {
   firstWeek: number;
   lastWeek: number;
   regions: readonly Region[];
+  /** The first of its kind: it runs everywhere and no store misses it, so that every store has seen every kind. */
+  isKey: boolean;
   /** Price cut as a share of the regular price; 0 where only feature or display supports it. */
   depth: number;
   support: PromotionLevel;
@@ -34,7 +36,9 @@ export function planPromotions({ weekCount, random }: { weekCount: number; rando
     const drawnDepth = random.choose(depths);
     const supportOnly = random.uniform() < supportOnlyShare;
     const depth = supportOnly && support !== "none" ? 0 : drawnDepth;
-    promotions.push({ firstWeek: week, lastWeek, regions: random.choose<readonly Region[]>(scopes), depth, support });
+    const scope = random.choose<readonly Region[]>(scopes);
+    const isKey = !promotions.some((earlier) => earlier.support === support);
+    promotions.push({ firstWeek: week, lastWeek, regions: isKey ? everywhere : scope, isKey, depth, support });
     week = lastWeek + random.between(4, 9);
   }
   return promotions;

@@ -4,11 +4,11 @@
  */
 export const trueNoise = {
   /** Standard deviation of a week's shock to all products of a category in all stores. */
-  categoryWeekSpread: 0.04,
+  categoryWeekSpread: 0.035,
   /** Standard deviation of a week's shock to one product in all stores. */
-  productWeekSpread: 0.05,
+  productWeekSpread: 0.04,
   /** Standard deviation of the level of a product in a store that persists from week to week. */
-  persistentSpread: 0.07,
+  persistentSpread: 0.05,
   /** First-order autocorrelation of that level. */
   persistence: 0.6,
 };
