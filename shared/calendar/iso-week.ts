@@ -1,5 +1,5 @@
 import { CalendarError } from "./calendar-error";
-import { addDays, dayFromNumber, dayNumber, dayOfYear, weekdayOfNumber, yearOf } from "./day";
+import { addDays, dayNumber, numberOfNewYear, weekdayOfNumber, yearOfNumber } from "./day";
 import type { Day } from "./day";
 
 /** A numbered week of a year that need not be the calendar year of each of its days. */
@@ -15,8 +15,9 @@ export type WeekNumber = { year: number; week: number };
 export function isoWeekOf(day: Day): WeekNumber {
   const number = dayNumber(day);
   const mondayBased = (weekdayOfNumber(number) + 6) % 7;
-  const thursday = dayFromNumber(number - mondayBased + 3);
-  return { year: yearOf(thursday), week: Math.floor((dayOfYear(thursday) - 1) / 7) + 1 };
+  const thursday = number - mondayBased + 3;
+  const year = yearOfNumber(thursday);
+  return { year, week: Math.floor((thursday - numberOfNewYear(year)) / 7) + 1 };
 }
 
 /**

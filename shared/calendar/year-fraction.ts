@@ -1,6 +1,5 @@
-import { dayOfYear, daysInYear, yearOf } from "./day";
+import { dayNumber, daysInYear, numberOfNewYear, yearOfNumber } from "./day";
 import type { Day } from "./day";
-import { middleDayOfWeek } from "./week";
 
 /**
  * Where in the year a week lies, on a circle from 0 to 1: (day of year - 0.5) / days in that year, of the week's middle day.
@@ -11,6 +10,7 @@ import { middleDayOfWeek } from "./week";
  * @example yearFraction("2025-06-30") // (184 - 0.5) / 365 = 0.50274
  */
 export function yearFraction(firstDay: Day): number {
-  const middle = middleDayOfWeek(firstDay);
-  return (dayOfYear(middle) - 0.5) / daysInYear(yearOf(middle));
+  const middle = dayNumber(firstDay) + 3;
+  const year = yearOfNumber(middle);
+  return (middle - numberOfNewYear(year) + 0.5) / daysInYear(year);
 }

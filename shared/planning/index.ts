@@ -25,3 +25,18 @@ export { exposureOf, toModelData } from "./to-model-data";
 export type { RowCounts, SalesModelData } from "./to-model-data";
 export { describeVariation } from "./variation";
 export type { LevelCounts, Variation } from "./variation";
+export { predictScenario, prepareScenario } from "./scenario/prepare-scenario";
+export type { PreparedScenario } from "./scenario/prepare-scenario";
+export type {
+  Interval,
+  PlanCell,
+  ScenarioFlag,
+  ScenarioFlagCode,
+  ScenarioMoney,
+  ScenarioPlan,
+  ScenarioPrediction,
+  SplitRow,
+  StoreModel,
+  StorePrediction,
+  WeekPrediction,
+} from "./scenario/scenario";

@@ -21,6 +21,17 @@ describe("days", () => {
     }
   });
 
+  it("agree with the platform's own UTC dates from the year 100 to 9999", () => {
+    const [first, last] = [dayNumber("0100-01-01"), dayNumber("9999-12-31")];
+    for (let number = first; number <= last; number += 97) {
+      expect(dayFromNumber(number)).toBe(new Date(number * 86_400_000).toISOString().slice(0, 10));
+    }
+    expect(dayFromNumber(last)).toBe("9999-12-31");
+    expect(() => dayFromNumber(last + 1)).toThrow(`Day number ${last + 1} is not a day of the years 100 to 9999.`);
+    expect(() => dayFromNumber(0.5)).toThrow("Day number 0.5 is not a day");
+    expect(() => dayFromNumber(Number.NaN)).toThrow("Day number NaN is not a day");
+  });
+
   it.each(["2023-02-29", "1900-02-29", "2024-13-01", "2024-00-10", "2024-04-31", "0050-01-01", "9999-12-32", "24-01-01", "2024-1-1", "", "2024-01-01T00:00"])(
     "refuse %j, which is no day",
     (text) => {

@@ -1,0 +1,69 @@
+import { designRows, predict, transposeTimes } from "../../engine";
+import type { DesignRows, FittedModel } from "../../engine";
+import { modelColumns } from "../model-columns";
+import type { ModelCell } from "../model-columns";
+import { PlanningError } from "../planning-error";
+import type { CellFlag, Limits } from "./limits";
+import { isSameCell, placeOf } from "./plan-cells";
+import type { CellState } from "./plan-cells";
+
+/** One store's cells in one state, predicted: arrays have one entry per cell. */
+export type CellPredictions = {
+  /** Expected units. */
+  mean: Float64Array;
+  /** Of ln(mean), coefficients only. */
+  standardError: Float64Array;
+  /** Per term id: parts of the linear predictor. */
+  contributions: Record<string, Float64Array>;
+  rows: DesignRows;
+  /** Sum of mean. */
+  total: number;
+  /** Gradient of `total` with respect to the coefficients: the mean's sum of each design column. */
+  totalGradient: Float64Array;
+  flags: CellFlag[];
+};
+
+/**
+ * Predicts one store's cells in one state, and keeps the answer while the same cells are asked for again: while one driver of
+ * a plan is dragged, its base does not change.
+ *
+ * @returns a function from cells to predictions; the identical object as long as no cell changed.
+ * @throws (the function) PlanningError "unusable-value" where a model reads a temperature that is not known.
+ * @example const predictBase = rememberingPredictor({ model, limits: limitsOf(model), state: "base" }); predictBase(cells) === predictBase(cells) // true
+ */
+export function rememberingPredictor(
+  { model, limits, state }: { model: FittedModel; limits: Limits; state: CellState },
+): (cells: readonly ModelCell[]) => CellPredictions {
+  let lastCells: readonly ModelCell[] = [];
+  let last: CellPredictions | null = null;
+  return (cells) => {
+    const isUnchanged = cells.length === lastCells.length && cells.every((cell, index) => isSameCell(cell, lastCells[index]));
+    if (last === null || !isUnchanged) {
+      last = predictCells({ model, limits, cells, state });
+      lastCells = cells;
+    }
+    return last;
+  };
+}
+
+function predictCells(
+  { model, limits, cells, state }: { model: FittedModel; limits: Limits; cells: readonly ModelCell[]; state: CellState },
+): CellPredictions {
+  requireTemperatures(model, cells);
+  const limited = limits(cells, state);
+  const data = modelColumns(limited.cells);
+  const { mean, standardError, contributions } = predict(model, data);
+  const rows = designRows(model, data);
+  const total = mean.reduce((sum, value) => sum + value, 0);
+  return {
+    mean, standardError, contributions, rows, total, totalGradient: transposeTimes(model, rows, mean), flags: limited.flags,
+  };
+}
+
+function requireTemperatures(model: FittedModel, cells: readonly ModelCell[]): void {
+  if (!model.terms.some((term) => term.columns.includes("temperatureC"))) return;
+  const missing = cells.find((cell) => cell.temperatureC === null);
+  if (missing !== undefined) {
+    throw new PlanningError("unusable-value", `${placeOf(missing)}: its model reads a temperature, and none is known.`);
+  }
+}
