@@ -1,0 +1,43 @@
+import { describe, expect, it } from "vitest";
+import { expectGaussianAgreement, expectIceCreamAgreement, expectQuasiPoissonAgreement } from "../support/agreement";
+import { committedReference, freshReference } from "../support/reference-files";
+import type { References } from "../support/reference-files";
+
+/** Numbers may differ in the digits another machine's arithmetic leaves open; texts and shapes may not. */
+function expectSame(fresh: unknown, committed: unknown, path: string): void {
+  if (typeof fresh === "number" && typeof committed === "number") {
+    const difference = Math.abs(fresh - committed);
+    if (!(difference <= 1e-6 * Math.max(1e-3, Math.abs(committed)))) throw new Error(`${path}: ${fresh} now, ${committed} committed`);
+  } else if (typeof fresh === "object" && fresh !== null && typeof committed === "object" && committed !== null) {
+    const [now, before] = [new Map(Object.entries(fresh)), new Map(Object.entries(committed))];
+    expect([...now.keys()], path).toEqual([...before.keys()]);
+    for (const [key, value] of now) expectSame(value, before.get(key), `${path}.${key}`);
+  } else {
+    expect(fresh, path).toEqual(committed);
+  }
+}
+
+/** Each script runs once. */
+const made: { [Name in keyof References]?: References[Name] } = {};
+function fresh<Name extends keyof References>(name: Name): References[Name] {
+  return (made[name] ??= freshReference(name));
+}
+
+const names: (keyof References)[] = ["additive-models", "linear-models", "splines"];
+
+describe("The committed references are what R gives now", () => {
+  it.each(names)("%s", (name) => expectSame(fresh(name), committedReference(name), name));
+});
+
+describe("The engine agrees with R as it runs now", () => {
+  it("on the 11 products of store 2, normal and quasi-Poisson", () => {
+    const { series } = fresh("additive-models");
+    expect(series).toHaveLength(11);
+    for (const one of series) {
+      expectGaussianAgreement(one);
+      expectQuasiPoissonAgreement(one);
+    }
+  });
+
+  it("on the ice-cream demand regression", () => expectIceCreamAgreement(fresh("linear-models")));
+});
