@@ -1,6 +1,6 @@
 import { expect, it } from "vitest";
-import { fitModel } from "../../shared/engine";
-import { planInput, type BaseCell } from "../../shared/planning/plan-input";
+import { fitModel } from "@shared/engine";
+import { planInput, type BaseCell } from "@shared/planning/plan-input";
 
 const model = fitModel(
   { response: "units", family: "quasi-poisson", terms: [{ kind: "linear", column: "price", log: true }] },

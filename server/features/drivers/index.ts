@@ -1,3 +1,13 @@
 export * from "./drivers.entities";
+export { requireProduct, requireStores, type ProductReference, type StoreReference } from "./catalogue-lookup";
+export { isPriceTerm, seenWeekByWeek, type DriverCurve } from "./curves/model-curves";
+export { presentCurve } from "./curves/curves.presenter";
+export { fitProduct } from "./models/fit-product.service";
+export { findFits, type LoadedModel, type StoredFit } from "./models/models.repository";
+export { notForPlans } from "./models/not-for-plans";
+export { requireModel, requireModelOfProduct } from "./models/read-models.service";
+export { presentSalesWeek } from "./sales/sales.presenter";
+export { readSalesRows, storesThatSold, type SellingStore, type StoredSalesRow } from "./sales/sales.repository";
+export { eventOfWeekSql, termsOfWeekSql } from "./sales/week-event-sql";
 export { driversRoutes } from "./drivers.routes";
 export { driversJobs } from "./drivers.jobs";

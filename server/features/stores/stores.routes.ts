@@ -1,3 +1,8 @@
-import type { Route } from "../../http/route";
+import { getComparison } from "@shared/contract/comparisons";
+import { route, type Route } from "../../http/route";
+import { presentComparison } from "./comparison.presenter";
+import { compareStores } from "./comparison.service";
 
-export const storesRoutes: readonly Route[] = [];
+const comparison = route(getComparison, async ({ em, query, now }) => presentComparison(await compareStores(em, { ...query, now })));
+
+export const storesRoutes: readonly Route[] = [comparison];

@@ -1,0 +1,97 @@
+import type { EntityManager } from "@mikro-orm/postgresql";
+import { setImmediate } from "node:timers/promises";
+import { parseModel, type FittedModel, type FittedTerm } from "@shared/engine";
+import { driverOfTerm } from "@shared/planning";
+import { requireProduct, storesThatSold, type SellingStore, type StoredFit } from "../drivers";
+import { anchorPrice } from "./anchor-price";
+import { chainCurve, type ChainCurve, type WeightedCurve } from "./chain-curve";
+import { commonGrid } from "./common-grid";
+import { fitsToCompare, type ComparedModel } from "./compared-model";
+import { storeCurve } from "./store-curve";
+
+export type ComparisonRequest = { product: string; driver: string; level: number; points: number; anchor?: number; model?: string; now: Date };
+
+export type ComparedStore = {
+  store: Pick<SellingStore, "code" | "name" | "region" | "meanWeeklyUnits">;
+  /** Null with the reason where the store could not learn the driver. */
+  learnt: WeightedCurve | null;
+  reason: string | null;
+};
+
+export type ComparisonOutcome = {
+  product: string;
+  modelId: string;
+  driver: string;
+  level: number;
+  anchor: number | null;
+  stores: ComparedStore[];
+  chain: ChainCurve | null;
+};
+
+type Learner = { stored: StoredFit; model: FittedModel; term: FittedTerm | undefined };
+
+/**
+ * One driver's curve of a product for all its stores on common values, relative to a common anchor price for the price
+ * driver; with the chain's own curve, and for stores without a curve the reason.
+ *
+ * @throws ProblemError 422 for an unknown product, or one without a model in use; 404 for an unknown model.
+ */
+export async function compareStores(em: EntityManager, request: ComparisonRequest): Promise<ComparisonOutcome> {
+  const product = await requireProduct(em, request.product);
+  const compared = await fitsToCompare(em, { product, modelId: request.model });
+  const sellers = await storesThatSold(em, { productId: product.id, ...compared.weeks });
+  const learners = await learnersOf(compared.fits, request.driver);
+  const terms = learners.map(({ term }) => term).filter((term) => term !== undefined);
+  const isPrice = terms.some(({ columns }) => columns[0] === "price");
+  const anchor = isPrice ? (request.anchor ?? (await anchorPrice(em, { productId: product.id, terms, now: request.now }))) : null;
+  const grid = terms.length > 0 ? commonGrid(terms, request.points) : [];
+
+  const stores: ComparedStore[] = [];
+  for (const seller of sellers) {
+    stores.push(compareStore({ seller, learner: learners.find(({ stored }) => stored.store === seller.code), compared, grid, anchor, request }));
+    // Other requests get their turn: a large chain takes a second.
+    await setImmediate();
+  }
+  const curves = stores.map(({ learnt }) => learnt).filter((learnt) => learnt !== null);
+  const isLog = learners.every(({ model }) => model.spec.family !== "gaussian");
+  const { driver, level } = request;
+  const chain = chainCurve({ curves, grid, isLog, level });
+  return { product: product.code, modelId: compared.id, driver, level, anchor, stores, chain };
+}
+
+async function learnersOf(fits: readonly StoredFit[], driver: string): Promise<Learner[]> {
+  const learners: Learner[] = [];
+  for (const stored of fits) {
+    const model = parseModel(stored.fit);
+    const term = model.terms.find((each) => driverOfTerm(each) === driver) ?? model.terms.find((each) => each.id === driver);
+    learners.push({ stored, model, term });
+    await setImmediate();
+  }
+  return learners;
+}
+
+function compareStore(
+  { seller, learner, compared, grid, anchor, request }: {
+    seller: SellingStore; learner: Learner | undefined; compared: ComparedModel; grid: number[] | string[]; anchor: number | null;
+    request: ComparisonRequest;
+  },
+): ComparedStore {
+  if (!learner?.term) return { store: seller, learnt: null, reason: whyNot({ seller, learner, compared, driver: request.driver }) };
+  const { model, term, stored: { summary } } = learner;
+  const { meanWeeklyUnits, meanBaseUnits } = summary;
+  const curve = storeCurve({ model, term, grid, anchor, level: request.level });
+  // A store that sold nothing at base counts for nothing, but must not make the chain's mean undefined.
+  const baseUnits = Math.max(meanBaseUnits ?? meanWeeklyUnits, Number.MIN_VALUE);
+  return { store: { ...seller, meanWeeklyUnits }, learnt: { ...curve, baseUnits, meanWeeklyUnits }, reason: null };
+}
+
+function whyNot(
+  { seller, learner, compared, driver }: { seller: SellingStore; learner: Learner | undefined; compared: ComparedModel; driver: string },
+): string {
+  if (learner) {
+    const leftOut = learner.stored.summary.leftOut.find((each) => each.driver === driver);
+    return leftOut?.reason ?? `The model has no ${driver} term.`;
+  }
+  const skipped = compared.skipped.find(({ store }) => store === seller.code);
+  return skipped?.reason ?? "This store is not in the model. Fit all stores of the product.";
+}
