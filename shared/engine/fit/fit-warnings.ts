@@ -3,7 +3,7 @@ import { quoted } from "../basis/columns";
 import type { Family, ModelWarning } from "../types";
 import type { Design } from "./design";
 import type { FittedRows } from "./fitted-rows";
-import { isFrozen } from "./penalty-search";
+import { isAtLimit } from "./penalty-search";
 import type { WorkingFit } from "./working-fit";
 
 type Situation = { design: Design; fit: WorkingFit; rows: FittedRows; family: Family; isPerfect: boolean };
@@ -29,7 +29,8 @@ function indistinguishable({ design, fit }: Situation): ModelWarning[] {
   const names = unpenalisedNames(design);
   return fit.reduced.dropped.map(({ column, dependsOn }) => {
     const own = names[column];
-    const others = dependsOn.map((earlier) => names[earlier].name);
+    // A straight line beside its own column differs by a constant, which is no news.
+    const others = dependsOn.filter((earlier) => earlier > 0).map((earlier) => names[earlier].name);
     const apart = others.length === 0 ? "from a constant" : `from ${quoted(others)}`;
     return {
       code: "columns-indistinguishable",
@@ -52,9 +53,9 @@ function unpenalisedNames(design: Design): { name: string; term: string }[] {
 
 function straightLines({ design, fit }: Situation): ModelWarning[] {
   return design.blocks.flatMap(({ id, smoothness, unpenalised }, block): ModelWarning[] => {
-    if (smoothness !== "auto" || !isFrozen(fit.search, block)) return [];
+    if (smoothness !== "auto" || !isAtLimit(fit.search, block)) return [];
     const shape = unpenalised > 0 ? "a straight line" : "no effect";
-    return [{ code: "straight-line", term: id, message: `Term "${id}": the data show ${shape}; its penalty is held at its limit.` }];
+    return [{ code: "straight-line", term: id, message: `Term "${id}": the data show ${shape}; its penalty went to its limit.` }];
   });
 }
 

@@ -6,6 +6,9 @@ import type { LikelihoodState } from "./restricted-likelihood";
 /** How far, in log units, a penalty may go from its default before it is frozen there: a straight line, or no penalty. */
 const upwards = 16;
 const downwards = 20;
+/** A block the unpenalised columns all but reproduce keeps rounding only; penalties are not let near that. */
+const ownShareOfDefault = 1e-8;
+const ownShareOfLowest = 1e-12;
 
 /** The penalties of one model while they are searched for; holds two states, so that a trial can be refused. */
 export type PenaltySearch = {
@@ -21,15 +24,21 @@ export type PenaltySearch = {
 
 /** @example const search = createSearch(reduced, design.blocks); */
 export function createSearch(reduced: ReducedSystem, blocks: readonly PenaltyBlock[]): PenaltySearch {
-  const defaults = Float64Array.from(blocks, ({ start, end }) => {
-    let trace = 0;
-    for (let k = start; k < end; k++) trace += reduced.matrix[k * reduced.size + k];
-    return Math.log(Math.max(trace / (end - start), Number.MIN_VALUE * 1e30));
+  const scales = blocks.map(({ start, end }) => {
+    let own = 0;
+    let before = 0;
+    for (let k = start; k < end; k++) {
+      own += reduced.matrix[k * reduced.size + k];
+      before += reduced.diagonal[k];
+    }
+    const whole = Math.max(before / (end - start), Number.MIN_VALUE * 1e60);
+    return { own: Math.max(own / (end - start), ownShareOfDefault * whole), whole };
   });
+  const defaults = Float64Array.from(scales, ({ own }) => Math.log(own));
   return {
     blocks,
     defaults,
-    lowest: defaults.map((value) => value - downwards),
+    lowest: Float64Array.from(scales, ({ own, whole }) => Math.max(Math.log(own) - downwards, Math.log(whole * ownShareOfLowest))),
     highest: defaults.map((value) => value + upwards),
     current: createState(reduced.size, blocks.length),
     trial: createState(reduced.size, blocks.length),
@@ -62,6 +71,5 @@ export function tryPenalties(
 export const withinBounds = (search: PenaltySearch, block: number, logPenalty: number): number =>
   Math.min(search.highest[block], Math.max(search.lowest[block], logPenalty));
 
-/** Whether a block's penalty stands at its upper bound: the curve is the penalty's straight line (a circle: no curve). */
-export const isFrozen = (search: PenaltySearch, block: number): boolean =>
-  search.current.logPenalties[block] >= search.highest[block];
+/** Whether a block's penalty went to its limit: the curve is the penalty's straight line (a circle: no curve). */
+export const isAtLimit = (search: PenaltySearch, block: number): boolean => search.current.edf[block] < 1e-3;

@@ -9,6 +9,8 @@ export type ReducedSystem = {
   /** Schur complement, row-major size x size, both triangles. */
   matrix: Float64Array;
   vector: Float64Array;
+  /** Diagonal before the elimination: what is rounding in `matrix` is measured by it. */
+  diagonal: Float64Array;
   /** Weighted residual sum of squares of the unpenalised columns alone. */
   total: number;
   /** z'Wz, the yardstick for what is rounding in `total`. */
@@ -58,6 +60,7 @@ export function eliminateUnpenalised(
   for (let k = 0; k < unpenalised; k++) total -= solved[k] * solved[k];
   return {
     size: penalised,
+    diagonal: Float64Array.from({ length: penalised }, (_, k) => equations.matrix[(unpenalised + k) * (size + 1)]),
     ...schurComplement(equations, { cross, solved, unpenalised, size }),
     total, factor, cross, solved, unpenalised, dropped, rowCount,
     yardstick: equations.total,
