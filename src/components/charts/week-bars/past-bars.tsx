@@ -1,0 +1,31 @@
+import { memo } from "react";
+import type { Scale } from "../scale/scale";
+import { labelEvery } from "./week-layout";
+import type { PastWeek, WeekLayout } from "./week-layout";
+
+type PastBarsProps = { weeks: readonly PastWeek[]; bars: WeekLayout["past"]; y: Scale; foot: number };
+
+/** Weeks that were. They stay as they are while the plan moves. */
+export const PastBars = memo(function PastBars({ weeks, bars, y, foot }: PastBarsProps) {
+  const zero = y.toPixel(0);
+  const every = bars.length > 1 ? labelEvery(bars[1].left - bars[0].left) : 1;
+  return (
+    <g>
+      {bars.map((bar) => {
+        const units = weeks[bar.index].units;
+        if (units === null) return null;
+        const top = y.toPixel(Math.max(0, units));
+        return (
+          <rect key={bar.week} data-week={bar.week} x={bar.left} y={top} width={bar.width} height={zero - top} rx={Math.min(2, bar.width / 4)} fill="var(--history-bar)" fillOpacity="0.62" />
+        );
+      })}
+      {bars
+        .filter((bar) => (bars.length - 1 - (bar.index - bars[0].index)) % every === 0)
+        .map((bar) => (
+          <text key={bar.week} className="chart-text" x={bar.middle} y={foot - 9} textAnchor="middle">
+            {bar.label}
+          </text>
+        ))}
+    </g>
+  );
+});

@@ -1,0 +1,61 @@
+import { useMemo } from "react";
+import type { ReactNode } from "react";
+import { useElementWidth } from "@/lib/use-element-width";
+import { ChartFrame } from "../frame/chart-frame";
+import { LeftAxis } from "../parts/axes";
+import { roundTicks } from "../scale/round-ticks";
+import { PastBars } from "./past-bars";
+import { PlanBars } from "./plan-bars";
+import { WeekChoices } from "./week-choices";
+import { weekLayout } from "./week-layout";
+import type { PastWeek, PlanWeek } from "./week-layout";
+
+export type WeekBarsProps = {
+  title: string;
+  heading?: ReactNode;
+  past: readonly PastWeek[];
+  plan: readonly PlanWeek[];
+  /** The plan week looked at. */
+  selected: string | null;
+  onSelect: (week: string) => void;
+  format: (units: number) => string;
+  legend?: ReactNode;
+  height?: number;
+};
+
+const margin = { top: 12, right: 4, bottom: 28, left: 50 };
+
+/** Units week by week: what was, in grey; what the plan gives, each with its interval and the base across it. */
+export const WeekBars = (props: WeekBarsProps) => {
+  const { title, heading, past, plan, selected, onSelect, format, legend, height = 216 } = props;
+  const [plot, width] = useElementWidth<HTMLDivElement>(900);
+  const layout = useMemo(
+    () => weekLayout({ past, plan, left: margin.left, right: width - margin.right, range: [height - margin.bottom, margin.top] }),
+    [past, plan, width, height],
+  );
+  const { y, dividerX } = layout;
+  const ticks = roundTicks(y.domain[0], y.domain[1], 5).map((value) => ({ value, label: format(value) }));
+  const table = () => ({
+    columns: ["Week", "Units", "Lower", "Upper", "Base units"],
+    rows: [
+      ...past.map((week) => [week.week, week.units, null, null, null]),
+      ...plan.map((week) => [week.week, week.units, week.lower, week.upper, week.base]),
+    ],
+    formats: [undefined, format, format, format, format],
+  });
+  return (
+    <ChartFrame title={title} heading={heading} table={table} height={height} legend={legend}>
+      <div ref={plot} className="relative" style={{ height }}>
+        <WeekChoices bars={layout.plan} selected={selected} onSelect={onSelect} height={height} />
+        <svg width={width} height={height} className="pointer-events-none absolute inset-0" role="img" aria-label={title}>
+          <LeftAxis scale={y} ticks={ticks} left={margin.left - 4} right={width - margin.right} />
+          <PastBars weeks={past} bars={layout.past} y={y} foot={height} />
+          {dividerX !== null && (
+            <line className="chart-reference" x1={dividerX} x2={dividerX} y1={margin.top} y2={height - margin.bottom} />
+          )}
+          <PlanBars weeks={plan} bars={layout.plan} y={y} foot={height} selected={selected} />
+        </svg>
+      </div>
+    </ChartFrame>
+  );
+};

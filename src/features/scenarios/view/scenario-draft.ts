@@ -1,0 +1,17 @@
+import type { PlanCell, Scenario } from "@shared/contract/scenarios";
+
+/** What a person can change on the scenario page; one step of undo is one of these. */
+export type ScenarioEdit = { name: string; cells: readonly PlanCell[]; fixedCost: number };
+
+export const editOf = ({ name, cells, fixedCost }: Scenario): ScenarioEdit => ({ name, cells, fixedCost });
+
+/** The scenario as it is sent to be saved. */
+export const draftOf = (scenario: Scenario, edit: ScenarioEdit) => ({
+  name: edit.name,
+  product: scenario.product,
+  stores: scenario.stores,
+  weeks: scenario.weeks,
+  cells: [...edit.cells],
+  fixedCost: edit.fixedCost,
+  modelId: scenario.modelId,
+});
