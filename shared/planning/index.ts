@@ -40,3 +40,9 @@ export type {
   StorePrediction,
   WeekPrediction,
 } from "./scenario/scenario";
+export { elasticityAt } from "./lane/elasticity";
+export { laneCurve } from "./lane/lane-curve";
+export type { LaneCurve, LaneCurveRequest } from "./lane/lane-curve";
+export type { LaneStore } from "./lane/lane-term";
+export { planInput } from "./plan-input";
+export type { BaseCell, LeftOutCells, PlanChange, PlanInput } from "./plan-input";

@@ -1,0 +1,133 @@
+import { termCurve } from "../../engine";
+import type { FittedTerm, TermCurve } from "../../engine";
+import { normalQuantile } from "../../engine/predict/level";
+import type { Driver } from "../driver";
+import { membersOf } from "./lane-term";
+import type { LaneMember, LaneStore } from "./lane-term";
+
+/** One driver's curve for several stores together, on the link scale: exp() of it is a multiplier. */
+export type LaneCurve = {
+  driver: Driver;
+  kind: FittedTerm["kind"];
+  /** Values in the column's own unit, or level names. */
+  x: Float64Array | string[];
+  estimate: Float64Array;
+  standardError: Float64Array;
+  lower: Float64Array;
+  upper: Float64Array;
+  /** From the smallest to the largest value any of the stores saw; null for levels. */
+  observedRange: [number, number] | null;
+  /** Weeks seen near each x, the stores' mean weighted by base units. */
+  supportCount: Float64Array;
+  /** 1 where stores with at least half of the base units saw x in fewer than 5 weeks or not at all: hatched. */
+  hardlySeen: Uint8Array;
+  /** Stores whose model has no such driver: they take no part. */
+  without: string[];
+};
+
+export type LaneCurveRequest = {
+  stores: readonly LaneStore[];
+  driver: Driver;
+  /** Probability of the band, for example 0.8. */
+  level: number;
+  /** Evenly spaced values over what the stores saw (on the log scale for a log term); 101 unless given. */
+  points?: number;
+  /** Values to evaluate at instead; level names for a factor. */
+  at?: readonly number[] | readonly string[];
+};
+
+const DEFAULT_POINTS = 101;
+const FEWEST_WEEKS_SEEN = 5;
+
+/**
+ * The curve a lane draws: the base-units-weighted mean of the selected stores' multipliers, ln(sum of w exp(f) / sum of w), as
+ * their units add up; with a pointwise band by the delta method, stores' models being independent: each store's variance counts by
+ * the square of its share w exp(f) / sum of w exp(f). A level that a store never saw is averaged over the stores that did.
+ *
+ * @returns null where no selected store's model has the driver.
+ * @throws EngineError for values a term cannot be evaluated at. Cost: stores x points.
+ * @example laneCurve({ stores: [{ store: "S1", model, baseUnits: 420 }], driver: "price", level: 0.8 })?.x
+ */
+export function laneCurve({ stores, driver, level, points = DEFAULT_POINTS, at }: LaneCurveRequest): LaneCurve | null {
+  const { members, without } = membersOf(stores, driver);
+  if (members.length === 0) return null;
+  const x = at === undefined ? valuesOf(members, points) : asValues(at);
+  const sums = sumsOver(members, x);
+  const standardError = sums.variance.map(Math.sqrt);
+  const half = normalQuantile(level);
+  const ranges = members.flatMap(({ term }) => (term.observedRange === null ? [] : [term.observedRange]));
+  return {
+    driver,
+    kind: members[0].term.kind,
+    x,
+    estimate: sums.estimate,
+    standardError,
+    lower: sums.estimate.map((value, point) => value - half * standardError[point]),
+    upper: sums.estimate.map((value, point) => value + half * standardError[point]),
+    observedRange: ranges.length === 0 ? null : [Math.min(...ranges.map(([from]) => from)), Math.max(...ranges.map(([, to]) => to))],
+    supportCount: sums.supportCount,
+    hardlySeen: Uint8Array.from(sums.hardlySeen, (share) => (share >= 0.5 ? 1 : 0)),
+    without,
+  };
+}
+
+type Sums = Record<"estimate" | "variance" | "supportCount" | "hardlySeen", Float64Array>;
+
+/** Means over stores, point by point. A store without a level leaves its weight for that level to the others. */
+function sumsOver(members: readonly LaneMember[], x: Float64Array | string[]): Sums {
+  const curves = members.map((member) => ({ baseUnits: member.baseUnits, curve: knownCurve(member, x) }));
+  const zeros = () => new Float64Array(x.length);
+  const sums: Sums = { estimate: zeros(), variance: zeros(), supportCount: zeros(), hardlySeen: zeros() };
+  const all = curves.reduce((total, { baseUnits }) => total + baseUnits, 0);
+  for (let point = 0; point < x.length; point++) {
+    const having = curves.filter(({ curve }) => curve.positions[point] >= 0);
+    const total = having.reduce((sum, { baseUnits }) => sum + baseUnits, 0);
+    let units = 0;
+    let unitsVariance = 0;
+    sums.hardlySeen[point] = 1 - total / all;
+    for (const { baseUnits, curve: { positions, values } } of having) {
+      const position = positions[point];
+      const own = baseUnits * Math.exp(values.estimate[position]);
+      units += own;
+      unitsVariance += (own * values.standardError[position]) ** 2;
+      sums.supportCount[point] += (baseUnits / all) * values.supportCount[position];
+      const isHardlySeen = values.outside[position] === 1 || values.supportCount[position] < FEWEST_WEEKS_SEEN;
+      if (isHardlySeen) sums.hardlySeen[point] += baseUnits / all;
+    }
+    sums.estimate[point] = Math.log(units / total);
+    sums.variance[point] = unitsVariance / (units * units);
+  }
+  return sums;
+}
+
+/** A store's curve at those of the values its term knows, and where in it each value stands (-1 where it does not). */
+function knownCurve({ model, term }: LaneMember, x: Float64Array | string[]): { values: TermCurve; positions: number[] } {
+  const { basis } = term;
+  if (basis.kind !== "factor") return { values: termCurve(model, term.id, { at: x }), positions: [...x.keys()] };
+  const names = typeof x[0] === "string" ? (x as string[]) : [];
+  const known = names.filter((name) => basis.levels.includes(name));
+  const positions = names.map((name) => known.indexOf(name));
+  return { values: termCurve(model, term.id, { at: known }), positions };
+}
+
+function valuesOf(members: readonly LaneMember[], points: number): Float64Array | string[] {
+  const [{ model, term }] = members;
+  if (term.basis.kind === "factor") {
+    const levels = members.flatMap(({ term: { basis } }) => (basis.kind === "factor" ? [basis.reference, ...basis.levels] : []));
+    return [...new Set(levels)];
+  }
+  if (term.basis.kind === "cyclic-smooth" || members.length === 1) return asValues(termCurve(model, term.id, { points }).x);
+  const ranges = members.flatMap((member) => member.term.observedRange ?? []);
+  const isLog = members.some(({ term: { basis } }) => "log" in basis && basis.log);
+  const [from, to] = [Math.min(...ranges), Math.max(...ranges)];
+  return Float64Array.from({ length: points }, (_, point) => {
+    const share = point / (points - 1);
+    return isLog ? from * (to / from) ** share : from + (to - from) * share;
+  });
+}
+
+function asValues(values: Float64Array | readonly number[] | readonly string[]): Float64Array | string[] {
+  if (values instanceof Float64Array) return values;
+  const names = values.filter((value) => typeof value === "string");
+  return names.length > 0 ? names : Float64Array.from(values, Number);
+}
