@@ -1,6 +1,9 @@
 import { spawn } from "node:child_process";
 import { Problem, Stopped } from "./problem.mjs";
 
+// npm, asked to end, takes a minute to tidy up what it had begun.
+const endGraceMs = 5_000;
+
 /**
  * @typedef {object} RunOptions
  * @property {string} program
@@ -31,14 +34,23 @@ export function runProgram({ program, args, env = process.env, cwd, show = false
       standardOutput += chunk;
     });
     child.stderr?.on("data", (chunk) => (output += chunk));
-    const end = () => signalGroup(child.pid);
+    /** @type {NodeJS.Timeout | undefined} */
+    let force;
+    const end = () => {
+      signalGroup(child.pid, "SIGTERM");
+      force = setTimeout(() => signalGroup(child.pid, "SIGKILL"), endGraceMs);
+    };
+    const ended = () => {
+      clearTimeout(force);
+      stopping?.removeEventListener("abort", end);
+    };
     stopping?.addEventListener("abort", end, { once: true });
     child.on("error", (error) => {
-      stopping?.removeEventListener("abort", end);
+      ended();
       reject(missingProgram(program, error));
     });
     child.on("close", (code) => {
-      stopping?.removeEventListener("abort", end);
+      ended();
       if (stopping?.aborted) reject(new Stopped());
       else resolve({ code: code ?? 1, output, standardOutput });
     });
@@ -66,11 +78,14 @@ export function lastWords(output, count = 1) {
   return lines.slice(-count).join(" ").replace(/[.:]$/, "");
 }
 
-/** @param {number | undefined} pid */
-function signalGroup(pid) {
+/**
+ * @param {number | undefined} pid
+ * @param {NodeJS.Signals} signal
+ */
+function signalGroup(pid, signal) {
   if (pid === undefined) return;
   try {
-    process.kill(-pid, "SIGTERM");
+    process.kill(-pid, signal);
   } catch {
     // It has ended already.
   }

@@ -37,11 +37,11 @@ export async function supervise({ part, context, turn, say, untilUsable }) {
       if (context.stopping.aborted) return;
       endedAtMs.push(Date.now());
       const delayMs = restartDelayMs(endedAtMs);
-      const reason = part.log ? ` (see the end of ${part.log})` : "";
+      const ending = part.log ? `${how}; see the end of ${part.log}` : how;
       if (delayMs === null) {
-        return context.stop(`The ${part.name} keeps ending (${how})${reason}: mend the cause, then start again.`);
+        return context.stop(`The ${part.name} keeps ending (${ending}): mend the cause, then start again.`);
       }
-      say(`The ${part.name} ended (${how})${reason}: starting it again in ${delayMs / 1000} s.`);
+      say(`The ${part.name} ended (${ending}): starting it again in ${delayMs / 1000} s.`);
       const went = await pause(delayMs, context.stopping).then(() => true, () => false);
       if (!went) return;
       current = begin();

@@ -174,7 +174,7 @@ function findLauncher() {
 export async function watchLauncher({ turn, context }) {
   if (!turn.launcher) return;
   while (!context.stopping.aborted) {
-    await sleep(1_000, undefined, { ref: false });
-    if (!isAlive(turn.launcher)) return context.stop("The npm that started this was ended by force: stopping as well.");
+    await sleep(250, undefined, { ref: false });
+    if (!isAlive(turn.launcher)) return context.stop("The npm that started this is gone: stopping as well.");
   }
 }

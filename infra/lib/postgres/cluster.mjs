@@ -1,9 +1,9 @@
-import { existsSync, mkdirSync, readdirSync, renameSync, rmSync, writeFileSync } from "node:fs";
+import { existsSync, mkdirSync, readFileSync, readdirSync, renameSync, rmSync, writeFileSync } from "node:fs";
 import { join } from "node:path";
 import { pause } from "../command.mjs";
 import { Problem } from "../problem.mjs";
 import { lastWords, mustRun, runProgram } from "../run-program.mjs";
-import { asPostgresUser, giveToPostgres } from "./postgres-user.mjs";
+import { asPostgresUser, checkDatabaseOwner, giveToPostgres } from "./postgres-user.mjs";
 import { clearStaleLock, isPostmasterAlive } from "./postmaster.mjs";
 
 const startAttempts = 3;
@@ -35,6 +35,7 @@ function cleanEnvironment() {
  */
 export async function createCluster(cluster, stopping) {
   const data = dataOf(cluster);
+  checkDatabaseOwner(cluster.home);
   if (existsSync(join(data, "PG_VERSION"))) return;
   if (existsSync(data) && readdirSync(data).length > 0) {
     throw new Problem(
@@ -97,7 +98,17 @@ export async function startCluster(cluster, { stopping, say }) {
     if (code === 0) return;
     if (attempt < startAttempts) await pause(1_000, stopping);
   }
-  throw new Problem(`PostgreSQL did not start: the reason stands at the end of ${log}.`);
+  throw new Problem(`PostgreSQL did not start (${fatalLine(log)}): more stands at the end of ${log}.`);
+}
+
+/**
+ * The last thing PostgreSQL could not get over, in its own words.
+ * @param {string} log
+ */
+function fatalLine(log) {
+  const text = existsSync(log) ? readFileSync(log, "utf8").slice(-20_000) : "";
+  const fatal = text.split("\n").filter((line) => /(FATAL|PANIC):/.test(line)).at(-1);
+  return fatal?.replace(/^.*?(FATAL|PANIC):\s*/, "") ?? "it gave no reason";
 }
 
 /** @param {Cluster} cluster */

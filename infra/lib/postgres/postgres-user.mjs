@@ -1,5 +1,6 @@
 import { execFileSync } from "node:child_process";
-import { chownSync } from "node:fs";
+import { chownSync, existsSync, statSync } from "node:fs";
+import { Problem } from "../problem.mjs";
 
 // PostgreSQL refuses to run as root, so root runs it as the user that Debian's package makes.
 const user = "postgres";
@@ -32,6 +33,21 @@ export function giveToPostgres(path) {
   const uid = userId("-u");
   const gid = userId("-g");
   if (uid !== null && gid !== null) chownSync(path, uid, gid);
+}
+
+/**
+ * Refuses a database folder that another user made: PostgreSQL would refuse it less clearly.
+ * @param {string} folder
+ */
+export function checkDatabaseOwner(folder) {
+  const wanted = runsAsRoot() ? userId("-u") : (process.getuid?.() ?? null);
+  if (wanted === null || !existsSync(folder)) return;
+  const { uid } = statSync(folder);
+  if (uid === wanted) return;
+  throw new Problem(
+    `The database in ${folder} belongs to another user (number ${uid}): ` +
+      "start as the user who started it first, or move it away to begin anew.",
+  );
 }
 
 /**
