@@ -94,10 +94,13 @@ export const predictionSchema = z.object({
   baseUnits: z.number(),
   /** Base in normal weather; the rest of the base is what this weather adds. */
   baseInNormalWeather: z.number(),
+  /** Leads from the base in normal weather to the base: units, and their ratio. */
+  weather: z.object({ driver: z.string(), units: z.number(), multiplier: interval }),
   lift: interval,
   /** Units each driver adds to the base; together with `baseUnits` they make `units.estimate`. */
   split: z.array(z.object({ driver: z.string(), units: z.number(), multiplier: interval })),
   weeks: z.array(z.object({ week: weekSchema, units: interval, baseUnits: z.number() })),
+  stores: z.array(z.object({ store: codeSchema, units: z.number(), baseUnits: z.number() })),
   netSales: z.object({ plan: z.number(), base: z.number() }).nullable(),
   grossMargin: z.object({ plan: z.number(), base: z.number() }).nullable(),
   netGain: z.number().nullable(),
@@ -107,7 +110,15 @@ export const predictionSchema = z.object({
     z.object({ kind: z.literal("cannot break even") }),
     z.object({ kind: z.literal("unknown"), reason: z.string() }),
   ]),
-  flags: z.array(z.object({ code: z.string(), driver: z.string().nullable(), detail: z.string() })),
+  /** What to distrust, and where; of "plan" or of its "base". */
+  flags: z.array(z.object({
+    code: z.string(),
+    driver: z.string().nullable(),
+    of: z.enum(["plan", "base"]),
+    stores: z.array(codeSchema),
+    weeks: z.array(weekSchema),
+    detail: z.string(),
+  })),
 });
 export type Prediction = z.infer<typeof predictionSchema>;
 
