@@ -35,8 +35,7 @@ function cleanEnvironment() {
  */
 export async function createCluster(cluster, stopping) {
   const data = dataOf(cluster);
-  checkDatabaseOwner(cluster.home);
-  if (existsSync(join(data, "PG_VERSION"))) return;
+  if (existsSync(join(data, "PG_VERSION"))) return checkDatabaseOwner(cluster.home);
   if (existsSync(data) && readdirSync(data).length > 0) {
     throw new Problem(
       `The folder ${data} is not a whole database (its PG_VERSION is missing): ` +
