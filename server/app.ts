@@ -23,7 +23,7 @@ export function createApp(services: Services): Express {
     next();
   });
   app.use(helmet(securityHeaders(services.environment)));
-  app.use("/api", sameOrigin, express.json({ limit: "16mb" }), sessions(services));
+  app.use("/api", sameOrigin(services.environment), sessions(services));
   mount(app, routes, services);
   app.use("/api", unknownPath);
   serveClient(app, services.environment);

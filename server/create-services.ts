@@ -13,11 +13,16 @@ export async function createServices(environment: Environment, options: { now?: 
   const pool = new pg.Pool({ connectionString: environment.DATABASE_URL, max: environment.DATABASE_POOL_SIZE });
   // A connection that breaks while idle is replaced at the next use.
   pool.on("error", (error) => logger.warn({ err: error }, "database connection lost"));
+  // One that breaks while in use says so too, and without a listener that would end the process.
+  pool.on("connect", (client) => client.on("error", (error) => logger.warn({ err: error }, "database connection broke in use")));
   const queue = await createPgBossQueue({ pool, logger });
-  return { environment, logger, orm, pool, files: createFileStore(environment), queue, now: options.now ?? (() => new Date()) };
+  const stopping = new AbortController();
+  const files = createFileStore(environment);
+  return { environment, logger, orm, pool, files, queue, stopping, now: options.now ?? (() => new Date()) };
 }
 
 export async function closeServices(services: Services): Promise<void> {
+  services.stopping.abort();
   await services.queue.stop();
   services.files.close();
   await services.orm.close();

@@ -14,6 +14,8 @@ export type Services = {
   pool: Pool;
   files: FileStore;
   queue: JobQueue;
+  /** Fires when the process is told to stop, so that what waits or streams can end. */
+  stopping: AbortController;
   /** "Now" comes in as a value, so that tests can set it. */
   now: () => Date;
 };

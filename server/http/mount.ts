@@ -1,9 +1,10 @@
-import type { Express, NextFunction, Request, RequestHandler, Response } from "express";
+import type { Express, Request, RequestHandler, Response } from "express";
 import type { z } from "zod";
 import type { Endpoint } from "@shared/contract/endpoint";
 import { ProblemError } from "../errors";
 import type { Services } from "../services";
-import { authenticate } from "./authenticate";
+import { readBody } from "./read-body";
+import { requirePermission } from "./require-permission";
 import type { Route, SignedInCall } from "./route";
 import { throttle } from "./throttle";
 
@@ -19,32 +20,19 @@ export function mount(app: Express, routes: readonly Route[], services: Services
 
 /** Rate limit, signed in and allowed, body read, then validation and the handler. */
 function stepsOf(route: Route, services: Services): RequestHandler[] {
-  const steps: RequestHandler[] = [throttle(route.throttle, services)];
-  if (route.endpoint.permission !== "public") steps.push(requirePermission(route.endpoint, services));
-  steps.push(...(route.before ?? []).map((step) => step(services)), (request, response, next) => answer({ route, services, request, response }).catch(next));
-  return steps;
+  const { endpoint } = route;
+  return [
+    throttle(route.throttle, services),
+    ...(endpoint.permission === "public" ? [] : [requirePermission(endpoint, services)]),
+    ...readBody(endpoint),
+    ...(route.before ?? []).map((step) => step(services)),
+    (request, response, next) => answer({ route, services, request, response }).catch(next),
+  ];
 }
 
-function requirePermission(endpoint: Endpoint, services: Services): RequestHandler {
-  return (request: Request, response: Response, next: NextFunction) => {
-    authenticate(request, services)
-      .then((caller) => {
-        if (caller.mustChangePassword && !endpoint.beforePasswordChange) {
-          const detail = "You signed in with a one-time password. Choose a password of your own first.";
-          throw new ProblemError({ status: 403, code: "password-change-needed", detail });
-        }
-        if (endpoint.permission !== "public" && !caller.permissions.has(endpoint.permission)) {
-          const detail = "Your roles do not allow this. Ask an administrator of the chain if you need it.";
-          throw new ProblemError({ status: 403, code: "not-allowed", detail });
-        }
-        response.locals.caller = caller;
-        next();
-      })
-      .catch(next);
-  };
-}
+type Exchange = { route: Route; services: Services; request: Request; response: Response };
 
-async function answer({ route, services, request, response }: { route: Route; services: Services; request: Request; response: Response }) {
+async function answer({ route, services, request, response }: Exchange): Promise<void> {
   const { endpoint } = route;
   const call: SignedInCall<Endpoint> = {
     params: parse(endpoint.params, request.params, "params"),
@@ -73,7 +61,8 @@ function parse(schema: z.ZodType | undefined, value: unknown, part: "params" | "
   // An identifier that cannot exist is simply not there.
   if (part === "params") throw new ProblemError({ status: 404, code: "not-found", detail: "There is nothing at this address." });
   const errors = result.error.issues.map((issue) => ({ path: issue.path.join("."), message: issue.message }));
-  const missing = value === undefined && part === "body";
-  const detail = missing ? "The request has no body, or one that is not JSON." : `What was sent cannot be used: ${errors[0]?.message ?? "it is malformed"}`;
+  const detail = value === undefined
+    ? "The request needs a body: JSON, with Content-Type application/json."
+    : `What was sent cannot be used: ${errors[0]?.message ?? "it is malformed"}`;
   throw new ProblemError({ status: 422, code: "invalid-request", detail, errors });
 }

@@ -12,6 +12,8 @@ export type JobContext<Payload> = {
   services: Services;
   logger: Logger;
   now: Date;
+  /** Fires when the job is cancelled, lost to another worker, or its process stops: long waits can end early. */
+  signal: AbortSignal;
   /**
    * Tells people how far it is (written at most a few times a second, outside the job's transaction).
    * @throws JobCancelled where a person asked it to stop.
@@ -19,16 +21,26 @@ export type JobContext<Payload> = {
   progress: (state: { done: number; total?: number | null; message?: string }) => Promise<void>;
 };
 
+/** Why a job was given up. */
+export type JobFailure = { code: string; detail: string };
+
+/** Tries after the first, where a kind does not say. */
+export const defaultRetryLimit = 2;
+
 /** A kind of background work: `run` is idempotent, since a killed worker's job is run again. */
 export type JobDefinition<Schema extends z.ZodType = z.ZodType> = {
   kind: string;
   payload: Schema;
-  /** Seconds after which a job without a living worker is given to another. */
-  expireInSeconds?: number;
+  /** Tries after the first that may break down before the job is given up. */
   retryLimit?: number;
+  /** Seconds to wait before each of those tries; the last counts for all later ones. */
+  retryDelaysSeconds?: readonly number[];
   run: (context: JobContext<z.output<Schema>>) => Promise<Record<string, unknown> | void>;
-  /** Called once when no try is left, or the job was cancelled, to put the state of its subject right. */
-  onGivenUp?: (context: { payload: z.output<Schema>; services: Services; error: { code: string; detail: string } }) => Promise<void>;
+  /**
+   * Called when no try is left, or the job was cancelled, to put the state of its subject right. It is called again
+   * where it threw or its worker was killed meanwhile, so it must be idempotent.
+   */
+  onGivenUp?: (context: { payload: z.output<Schema>; services: Services; error: JobFailure }) => Promise<void>;
 };
 
 /** Keeps the payload's type for `run`. */

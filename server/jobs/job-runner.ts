@@ -1,16 +1,23 @@
 import type PgBoss from "pg-boss";
+import { setTimeout as sleep } from "node:timers/promises";
 import { ProblemError } from "../errors";
-import { JobEntity } from "../features/jobs";
 import type { Services } from "../services";
-import type { JobDefinition } from "./job-queue";
-import { JobLease, LeaseLost } from "./job-lease";
-import { JobCancelled } from "./job-queue";
-import type { QueuedJob, SendInTransaction } from "./pg-boss-queue";
+import { JobCancelled, defaultRetryLimit, type JobDefinition, type JobFailure } from "./job-queue";
+import { JobLease, LeaseLost, type TakenJob } from "./job-lease";
+import { JobLocks } from "./job-locks";
+import type { SendInTransaction } from "./pg-boss-queue";
+import { cleanUpJob, rescueJobs } from "./rescue-jobs";
+import { takeJob } from "./take-job";
 
-/** Without a sign of life for this long a running job is taken to be a killed worker's. */
-const deadAfterSeconds = 15;
-const rescueEveryMs = 5_000;
-const retryDelaysSeconds = [2, 10, 30];
+const pollEveryMs = 500;
+const rescueEveryMs = 4_000;
+/** What runs at a stop may take this long to end by itself. */
+const stopPatienceMs = 5_000;
+/** And what was handed back may take this long to notice. */
+const letGoPatienceMs = 2_000;
+/** A worker that is stopping holds a job's lock a little longer than the job. */
+const lockPatienceMs = 10_000;
+const defaultDelaysSeconds = [2, 10, 30];
 
 type Parts = { boss: PgBoss; send: SendInTransaction; ensureQueue: (kind: string) => Promise<void> };
 
@@ -18,104 +25,130 @@ type Parts = { boss: PgBoss; send: SendInTransaction; ensureQueue: (kind: string
 export class JobRunner {
   readonly #parts: Parts;
   readonly #running = new Map<string, JobLease>();
-  #definitions = new Map<string, JobDefinition>();
-  #rescue: NodeJS.Timeout | undefined;
+  readonly #stopping = new AbortController();
+  #loops: Promise<void>[] = [];
+  #locks: JobLocks | undefined;
 
   constructor(parts: Parts) {
     this.#parts = parts;
   }
 
   async start(definitions: readonly JobDefinition[], services: Services): Promise<void> {
-    this.#definitions = new Map(definitions.map((definition) => [definition.kind, definition]));
-    for (const definition of definitions) {
-      await this.#parts.ensureQueue(definition.kind);
-      await this.#parts.boss.work<QueuedJob>(definition.kind, { batchSize: 1, pollingIntervalSeconds: 0.5 }, async ([job]) => {
-        if (job) await this.#run(definition, job.data, services);
-      });
-    }
-    const rescue = () => this.#rescueAbandoned(services).catch((error) => services.logger.error({ err: error }, "rescue of jobs failed"));
-    await rescue();
-    this.#rescue = setInterval(rescue, rescueEveryMs);
+    const locks = new JobLocks(services.pool, services.logger);
+    this.#locks = locks;
+    for (const definition of definitions) await this.#parts.ensureQueue(definition.kind);
+    const kinds = new Map(definitions.map((definition) => [definition.kind, definition]));
+    const rescue = () => rescueJobs({ kinds, services, send: this.#parts.send });
+    this.#loops = [
+      this.#repeat({ everyMs: rescueEveryMs, services, step: rescue }),
+      ...definitions.map((definition) =>
+        this.#repeat({ everyMs: pollEveryMs, services, step: () => this.#takeAndRun(definition, { services, locks }) }),
+      ),
+    ];
   }
 
   /** Takes no further jobs; what still runs after five seconds goes back to the queue. */
   async stop(): Promise<void> {
-    clearInterval(this.#rescue);
-    await Promise.all([...this.#definitions.keys()].map((kind) => this.#parts.boss.offWork(kind)));
-    const patience = Date.now() + 5_000;
-    while (this.#running.size > 0 && Date.now() < patience) await new Promise((resolve) => setTimeout(resolve, 50));
-    await Promise.all([...this.#running.values()].map((lease) => lease.giveBack(this.#parts.send)));
+    this.#stopping.abort();
+    await this.#untilIdle(stopPatienceMs);
+    for (const lease of this.#running.values()) {
+      lease.lose();
+      await lease.requeue(this.#parts.send, 0, { failed: false });
+    }
+    await this.#untilIdle(letGoPatienceMs);
+    if (this.#running.size === 0) await Promise.all(this.#loops);
+    await this.#locks?.close();
   }
 
-  async #run(definition: JobDefinition, queued: QueuedJob, services: Services): Promise<void> {
-    const lease = await JobLease.take(queued, services);
-    // Cancelled before it began, or taken by another worker after a rescue.
-    if (!lease) return;
-    this.#running.set(lease.jobId, lease);
-    const logger = services.logger.child({ job: lease.jobId, kind: definition.kind, attempt: lease.attempt });
+  async #untilIdle(patienceMs: number): Promise<void> {
+    const until = Date.now() + patienceMs;
+    while (this.#running.size > 0 && Date.now() < until) await sleep(50);
+  }
+
+  /** Does a step again and again until the stop; at once where it says there is more to do. */
+  async #repeat({ everyMs, services, step }: { everyMs: number; services: Services; step: () => Promise<boolean> }): Promise<void> {
+    const { signal } = this.#stopping;
+    while (!signal.aborted) {
+      const more = await step().catch((error: unknown) => {
+        services.logger.error({ err: error }, "the job queue could not be worked on");
+        return false;
+      });
+      // Woken early by the stop, which rejects.
+      if (!more) await sleep(everyMs, undefined, { signal, ref: true }).catch(() => undefined);
+    }
+  }
+
+  /** Whether a job was waiting. */
+  async #takeAndRun(definition: JobDefinition, { services, locks }: { services: Services; locks: JobLocks }): Promise<boolean> {
+    const { kind } = definition;
+    const taken = await takeJob({ boss: this.#parts.boss, pool: services.pool, kind });
+    if (taken === "nothing to do") return false;
+    if (taken === "no longer wanted") return true;
+    const { job } = taken;
+    const lease = new JobLease(job, services);
+    this.#running.set(job.id, lease);
+    try {
+      const isOurs = await locks.take(job.id, { onLost: () => lease.lose(), patienceMs: lockPatienceMs });
+      if (isOurs) await this.#run(definition, { lease, services });
+      else await lease.requeue(this.#parts.send, 1, { failed: false });
+    } finally {
+      lease.end();
+      this.#running.delete(job.id);
+      await locks.release(job.id);
+    }
+    return true;
+  }
+
+  async #run(definition: JobDefinition, { lease, services }: { lease: JobLease; services: Services }): Promise<void> {
+    const { job, signal } = lease;
+    const logger = services.logger.child({ job: job.id, kind: job.kind, attempt: job.attempt });
     try {
       const result = await definition.run({
-        payload: definition.payload.parse(lease.payload),
-        jobId: lease.jobId,
+        payload: definition.payload.parse(job.payload),
+        jobId: job.id,
         em: services.orm.em.fork(),
         services,
         logger,
         now: services.now(),
+        signal,
         progress: (state) => lease.progress(state),
       });
       await lease.succeed(result ?? null);
     } catch (error) {
-      if (error instanceof LeaseLost) logger.warn("job was taken over by another worker");
-      else await this.#failed({ definition, lease, services, error });
-    } finally {
-      lease.end();
-      this.#running.delete(lease.jobId);
+      if (error instanceof LeaseLost || signal.reason instanceof LeaseLost) logger.warn("the job is no longer this worker's");
+      else await this.#failed(definition, { lease, services, error });
     }
   }
 
-  async #failed({ definition, lease, services, error }: { definition: JobDefinition; lease: JobLease; services: Services; error: unknown }) {
-    if (error instanceof JobCancelled) {
+  async #failed(definition: JobDefinition, { lease, services, error }: { lease: JobLease; services: Services; error: unknown }): Promise<void> {
+    const { job } = lease;
+    if (error instanceof JobCancelled || lease.signal.reason instanceof JobCancelled) {
       await lease.finish("cancelled", { code: "cancelled", detail: "Cancelled on request." });
-      await this.#giveUp({ definition, payload: lease.payload, services, error: { code: "cancelled", detail: "Cancelled on request." } });
-      return;
+    } else {
+      const about = { err: error, job: job.id, kind: job.kind };
+      if (error instanceof ProblemError) services.logger.info(about, "job met a problem");
+      else services.logger.error(about, "job failed");
+      if (mayTryAgain(definition, job, error)) {
+        await lease.requeue(this.#parts.send, delaySecondsOf(definition, job), { failed: true });
+        return;
+      }
+      await lease.finish("failed", describe(error));
     }
-    services.logger.error({ err: error, job: lease.jobId, kind: definition.kind }, "job failed");
-    const retries = definition.retryLimit ?? 2;
-    // A problem we name ourselves will be the same next time.
-    if (!(error instanceof ProblemError) && lease.attempt <= retries) {
-      await lease.requeue(this.#parts.send, retryDelaysSeconds[lease.attempt - 1] ?? 30);
-      return;
-    }
-    const detail = describe(error);
-    await lease.finish("failed", detail);
-    await this.#giveUp({ definition, payload: lease.payload, services, error: detail });
-  }
-
-  async #giveUp(given: { definition: JobDefinition; payload: unknown; services: Services; error: { code: string; detail: string } }) {
-    const payload = given.definition.payload.parse(given.payload);
-    await given.definition.onGivenUp?.({ payload, services: given.services, error: given.error });
-  }
-
-  /** Gives the jobs of workers that were killed to others, or up where no try is left. */
-  async #rescueAbandoned(services: Services): Promise<void> {
-    const em = services.orm.em.fork();
-    const lost: { id: string }[] = await em.execute(
-      `select id from jobs where state = 'running' and heartbeat_at < now() - make_interval(secs => ?)`, [deadAfterSeconds],
-    );
-    for (const { id } of lost) {
-      const job = await em.findOneOrFail(JobEntity, { id });
-      const definition = this.#definitions.get(job.kind);
-      if (!definition) continue;
-      const lease = JobLease.adopt(job, services);
-      const error = { code: "worker-lost", detail: "The worker that ran this stopped several times before it was done." };
-      services.logger.warn({ job: id, kind: job.kind, attempt: job.attempt }, "job of a lost worker");
-      if (job.attempt <= (definition.retryLimit ?? 2)) await lease.requeue(this.#parts.send, 0, deadAfterSeconds);
-      else if (await lease.finish("failed", error)) await this.#giveUp({ definition, payload: job.payload, services, error });
-    }
+    await cleanUpJob({ id: job.id, definition, services });
   }
 }
 
-function describe(error: unknown): { code: string; detail: string } {
+/** A problem we name ourselves will be the same next time. */
+function mayTryAgain(definition: JobDefinition, job: TakenJob, error: unknown): boolean {
+  return !(error instanceof ProblemError) && job.failures < (definition.retryLimit ?? defaultRetryLimit);
+}
+
+function delaySecondsOf(definition: JobDefinition, job: TakenJob): number {
+  const delays = definition.retryDelaysSeconds ?? defaultDelaysSeconds;
+  return delays[job.failures] ?? delays.at(-1) ?? 0;
+}
+
+function describe(error: unknown): JobFailure {
   if (error instanceof ProblemError) return { code: error.code, detail: error.message };
   return { code: "unexpected", detail: "It broke down for a reason we do not know. Try again; if it happens again, quote the job's id." };
 }

@@ -9,19 +9,21 @@ import { JobRunner } from "./job-runner";
 /** What travels through the queue; everything else is in our own table. */
 export type QueuedJob = { jobId: string; attempt: number };
 
+/** A message waits for a worker as long as its job does: after this, pg-boss would drop it. */
+const retentionDays = 3650;
+
 /** Puts a job into the queue by the connection of the context's open transaction. */
 export type SendInTransaction = (em: EntityManager, kind: string, job: QueuedJob, delaySeconds?: number) => Promise<void>;
 
 /**
- * The queue over pg-boss: it hands jobs to workers, and our `jobs` table says how they stand. Retries and the rescue
- * of killed workers' jobs are ours (see JobRunner), because pg-boss knows no sign of life and would either wait for
- * its expiry or give a long job away while it still runs.
+ * The queue over pg-boss: it keeps what waits, in order and with delays, and hands each message to one worker; our
+ * `jobs` table says how jobs stand. Retries and the rescue of killed workers' jobs are ours (see JobRunner), because
+ * pg-boss knows no sign of life and would either wait for its expiry or give a long job away while it still runs.
  */
 export async function createPgBossQueue({ pool, logger }: { pool: Pool; logger: Logger }): Promise<JobQueue> {
   const boss = new PgBoss({
     db: { executeSql: (text, values) => pool.query(text, values) },
     schedule: false,
-    monitorStateIntervalSeconds: 60,
   });
   boss.on("error", (error) => logger.error({ err: error }, "queue error"));
   await boss.start();
@@ -37,7 +39,7 @@ export async function createPgBossQueue({ pool, logger }: { pool: Pool; logger: 
     await ensureQueue(kind);
     const client = await connectionOf(em);
     const db = { executeSql: (text: string, values: unknown[]) => client.query(text, values) };
-    await boss.send(kind, job, { db, retryLimit: 0, expireInHours: 23, startAfter: delaySeconds });
+    await boss.send(kind, job, { db, startAfter: delaySeconds, retentionDays });
   };
 
   const runner = new JobRunner({ boss, send, ensureQueue });

@@ -1,4 +1,5 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
+import type { Pool } from "pg";
 import { AccessTokenEntity, PersonEntity, type AccessToken, type Person } from "./accounts.entities";
 
 /** How long a token's time of last use may lag behind, so that not every call writes. */
@@ -37,4 +38,9 @@ export async function noteTokenUse(em: EntityManager, token: AccessToken, now: D
   const last = token.lastUsedAt?.getTime() ?? 0;
   if (now.getTime() - last < lastUseEverySeconds * 1000) return;
   await em.nativeUpdate(AccessTokenEntity, { id: token.id }, { lastUsedAt: now });
+}
+
+/** Moves a session's idle limit; it brings no ended session back. */
+export async function noteLastSeen(pool: Pool, sessionId: string, nowMs: number): Promise<void> {
+  await pool.query("update user_session set sess = jsonb_set(sess::jsonb, '{lastSeenAt}', to_jsonb($2::bigint))::json where sid = $1", [sessionId, nowMs]);
 }

@@ -1,3 +1,4 @@
+import { UniqueConstraintViolationException } from "@mikro-orm/core";
 import type { EntityManager } from "@mikro-orm/postgresql";
 import { emailSchema } from "@shared/contract/accounts";
 import type { Role } from "@shared/contract/permissions";
@@ -24,7 +25,8 @@ export type NewPerson = {
 export async function createPerson(em: EntityManager, person: NewPerson): Promise<Person> {
   const email = emailSchema.safeParse(person.email.trim().toLowerCase());
   if (!email.success) throw unusable("invalid-email", `${person.email} is not an e-mail address.`);
-  if (await personByEmail(em, email.data)) throw conflict("email-taken", `There is someone with the address ${email.data} already.`);
+  const taken = conflict("email-taken", `There is someone with the address ${email.data} already.`);
+  if (await personByEmail(em, email.data)) throw taken;
   const row = em.create(PersonEntity, {
     email: email.data,
     name: person.name,
@@ -33,7 +35,10 @@ export async function createPerson(em: EntityManager, person: NewPerson): Promis
     passwordHash: await hashPassword(person.password),
     mustChangePassword: person.mustChangePassword ?? false,
   });
-  await em.persist(row).flush();
+  await em.persist(row).flush().catch((error: unknown) => {
+    // Someone else was a moment quicker.
+    throw error instanceof UniqueConstraintViolationException ? taken : error;
+  });
   return row;
 }
 

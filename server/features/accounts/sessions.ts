@@ -5,7 +5,7 @@ import { permissionsOf } from "@shared/contract/permissions";
 import type { Caller } from "../../http/route";
 import type { Services } from "../../services";
 import type { Person } from "./accounts.entities";
-import { personById } from "./accounts.repository";
+import { noteLastSeen, personById } from "./accounts.repository";
 
 declare module "express-session" {
   interface SessionData {
@@ -25,24 +25,25 @@ export const idleLimitMs = 8 * 60 * minuteMs;
 export const absoluteLimitMs = 7 * 24 * 60 * minuteMs;
 /** The time of the last request is written at most this often, so that reading does not write. */
 const lastSeenEveryMs = minuteMs;
+const cookieName = "shelftide_session";
 
 const PostgresStore = connectPgSimple(session);
 
 /**
- * Sessions in PostgreSQL by a cookie that scripts in the page cannot read. Only signing in makes one. The store's own
- * touching is off: what moves a session's end is `lastSeenAt`, once a minute.
+ * Sessions in PostgreSQL by a cookie that scripts in the page cannot read. Only signing in makes one, and nothing else
+ * changes it: a request that began before a sign-out must not write the session back when it ends after it.
  */
 export function sessions(services: Services): RequestHandler {
   const { environment, pool, logger } = services;
   return session({
-    name: "shelftide_session",
+    name: cookieName,
     secret: environment.SESSION_SECRET,
     store: new PostgresStore({
       pool, tableName: "user_session", disableTouch: true, errorLog: (...details: unknown[]) => logger.warn({ details }, "session store"),
     }),
     resave: false,
     saveUninitialized: false,
-    cookie: { httpOnly: true, sameSite: "lax", secure: environment.SECURE_COOKIES, path: "/", maxAge: idleLimitMs },
+    cookie: { httpOnly: true, sameSite: "lax", secure: environment.SECURE_COOKIES, path: "/", maxAge: absoluteLimitMs },
   });
 }
 
@@ -56,7 +57,7 @@ export async function callerOfSession(request: Request, services: Services): Pro
     await endSession(request);
     return undefined;
   }
-  if (nowMs - (request.session.lastSeenAt ?? 0) >= lastSeenEveryMs) request.session.lastSeenAt = nowMs;
+  if (nowMs - (request.session.lastSeenAt ?? 0) >= lastSeenEveryMs) await noteLastSeen(services.pool, request.sessionID, nowMs);
   return {
     personId: person.id,
     name: person.name,
@@ -87,7 +88,7 @@ export async function beginSession(request: Request, person: Person, now: Date):
   });
 }
 
-/** Ends the request's session, in the store too. */
+/** Ends the request's session, in the store too; the cookie that is left opens nothing. */
 export function endSession(request: Request): Promise<void> {
   return new Promise((resolve, reject) => {
     request.session.destroy((error) => (error ? reject(error) : resolve()));

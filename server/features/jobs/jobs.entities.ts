@@ -23,6 +23,10 @@ export const JobEntity = defineEntity({
     error: p.json<{ code: string; detail: string }>().nullable(),
     /** Goes up each time a worker takes it; a worker whose number is no longer the row's has lost the job. */
     attempt: p.smallint().default(0),
+    /** Runs that broke down or were lost with their worker; handing on at a stop is none. */
+    failures: p.smallint().default(0),
+    /** It ended without success, and its subject has not been put right yet. */
+    cleanupPending: p.boolean().default(false),
     /** A running job without a fresh sign of life is given to another worker. */
     heartbeatAt: p.datetime().nullable(),
     /** At most one job with this key waits or runs at a time. */

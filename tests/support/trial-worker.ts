@@ -1,0 +1,9 @@
+import { closeServices, createServices } from "../../server/create-services";
+import { readEnvironment } from "../../server/environment";
+import { trialJobs } from "./trial-jobs";
+
+/** A worker process for tests, the same as the real one but for its jobs. */
+const services = await createServices(readEnvironment());
+await services.queue.work(trialJobs, services);
+process.stdout.write("ready\n");
+process.on("SIGTERM", () => void closeServices(services).then(() => process.exit(0)));

@@ -1,0 +1,28 @@
+import { spawn, type ChildProcess } from "node:child_process";
+import { once } from "node:events";
+import { fileURLToPath } from "node:url";
+import type { Services } from "../../server/services";
+
+const script = fileURLToPath(new URL("trial-worker.ts", import.meta.url));
+
+/** Starts a worker in a process of its own on the same database; resolves when it takes jobs. */
+export async function startWorkerProcess({ environment }: Services): Promise<ChildProcess> {
+  const variables = Object.entries(environment).map(([name, value]) => [name, String(value)]);
+  const child = spawn(process.execPath, ["--import", "tsx", script], {
+    env: { PATH: process.env.PATH, ...Object.fromEntries(variables) },
+    stdio: ["ignore", "pipe", "inherit"],
+  });
+  const ended = once(child, "exit").then(([code]) => Promise.reject(new Error(`The worker ended at its start with ${code}.`)));
+  // Only a start that fails is of interest here.
+  ended.catch(() => undefined);
+  await Promise.race([once(child.stdout, "data"), ended]);
+  return child;
+}
+
+/** Sends a signal and waits for the process to end. */
+export async function endProcess(child: ChildProcess, signal: NodeJS.Signals): Promise<void> {
+  if (child.exitCode !== null || child.signalCode !== null) return;
+  const exit = once(child, "exit");
+  child.kill(signal);
+  await exit;
+}
