@@ -23,10 +23,10 @@ export const ExtractEntity = defineEntity({
     errorCount: p.integer().nullable(),
     warningCount: p.integer().nullable(),
     /** How often each rule was broken: exact, though only the first issues are kept. */
-    issueCounts: p.json<IssueCount[]>().nullable().lazy(),
+    issueCounts: p.json<IssueCount[]>().nullable().lazy(true, false),
     firstWeek: p.date().nullable(),
     lastWeek: p.date().nullable(),
-    changes: p.json<ExtractChanges>().nullable().lazy(),
+    changes: p.json<ExtractChanges>().nullable().lazy(true, false),
     failure: p.json<{ code: string; detail: string }>().nullable(),
     jobId: p.uuid().nullable(),
     uploadedBy: () => p.manyToOne(PersonEntity),

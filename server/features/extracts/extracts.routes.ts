@@ -1,3 +1,61 @@
-import type { Route } from "../../http/route";
+import type { Response } from "express";
+import { pipeline } from "node:stream/promises";
+import * as contract from "@shared/contract/extracts";
+import { route, type Route, type SignedInCall } from "../../http/route";
+import type { Endpoint } from "@shared/contract/endpoint";
+import { presentExtract, presentIssue } from "./extracts.presenter";
+import { getChanges, getExtract, listExtracts, listIssues, openOriginal } from "./extracts.service";
+import type { Actor } from "./load/load-extract.service";
+import { requestCheck, requestLoad, requestWithdrawal } from "./requests.service";
+import { registerExtract } from "./upload/receive-extract.service";
+import { receivedFile, receiveUpload } from "./upload/receive-upload";
 
-export const extractsRoutes: readonly Route[] = [];
+const actorOf = ({ caller, requestId }: Pick<SignedInCall<Endpoint>, "caller" | "requestId">): Actor =>
+  ({ personId: caller.personId, tokenId: caller.tokenId, requestId });
+
+/** Answers 202 with where the job can be watched. */
+function accepted(response: Response, jobId: string): { jobId: string } {
+  response.location(`/api/jobs/${jobId}`);
+  return { jobId };
+}
+
+const list = route(contract.listExtracts, async ({ em, query, caller }) => {
+  const { items, nextCursor } = await listExtracts(em, query);
+  return { items: items.map((extract) => presentExtract(extract, caller)), nextCursor };
+});
+
+const upload = route(contract.uploadExtract, async (call) => {
+  const { em, services, body, request, response, caller } = call;
+  const extract = await registerExtract(em, services, { file: receivedFile(request), ...body, actor: actorOf(call), inBackground: true });
+  if (extract.jobId != null) accepted(response, extract.jobId);
+  return presentExtract(extract, caller);
+}, { throttle: "upload", before: [receiveUpload] });
+
+const read = route(contract.getExtract, async ({ em, params, caller }) => presentExtract(await getExtract(em, params.id), caller));
+
+const readIssues = route(contract.listExtractIssues, async ({ em, params, query }) => {
+  const { items, nextCursor, byRule } = await listIssues(em, params.id, query);
+  return { items: items.map(presentIssue), nextCursor, byRule };
+});
+
+const readChanges = route(contract.getExtractChanges, ({ em, params }) => getChanges(em, params.id));
+
+const readOriginal = route(contract.getExtractOriginal, async ({ em, services, params, response }) => {
+  const { extract, body } = await openOriginal(em, services, params.id);
+  // The name decides nothing but the name: as any other type a browser might show what someone uploaded.
+  response.attachment(extract.fileName).type("application/octet-stream");
+  response.set({ "Content-Length": String(extract.sizeBytes), "X-Content-Type-Options": "nosniff", "Cache-Control": "private, no-store" });
+  await pipeline(body, response);
+  return undefined;
+});
+
+const check = route(contract.checkExtract, async (call) =>
+  accepted(call.response, await requestCheck(call.em, { services: call.services, extractId: call.params.id, actor: actorOf(call) })));
+
+const load = route(contract.loadExtract, async (call) =>
+  accepted(call.response, await requestLoad(call.em, { services: call.services, extractId: call.params.id, actor: actorOf(call) })));
+
+const withdraw = route(contract.withdrawExtract, async (call) =>
+  accepted(call.response, await requestWithdrawal(call.em, { services: call.services, extractId: call.params.id, actor: actorOf(call) })));
+
+export const extractsRoutes: readonly Route[] = [list, upload, read, readIssues, readChanges, readOriginal, check, load, withdraw];

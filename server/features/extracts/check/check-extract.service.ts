@@ -1,0 +1,112 @@
+import type { EntityManager } from "@mikro-orm/postgresql";
+import type { Services } from "../../../services";
+import { conflict, notFound } from "../../../errors";
+import type { Extract } from "../extracts.entities";
+import { findExtract, lockExtract, removeIssues } from "../extracts.repository";
+import { kinds } from "../kinds/kinds";
+import { analyseStaging, countStaged, dropStaging } from "../load/staging.repository";
+import { UnreadableFile } from "../read/unreadable-file";
+import { keepIssues, weeksStaged } from "./check.repository";
+import { quietly, type Progress } from "./progress";
+import { stageRows, type StagingProgress } from "./stage-rows";
+import { rejectRepeatedRows } from "./together.repository";
+
+const count = new Intl.NumberFormat("en-GB");
+
+/** States from which a file can be checked, again or for the first time. */
+const checkable = new Set(["received", "checking", "checked", "unusable"]);
+
+/**
+ * Checks an extract's file against the columns of its kind and against the catalogue, keeps what is wrong with its rows,
+ * puts the usable ones where a load finds them, and works out what loading would change. Checking again begins anew.
+ *
+ * @returns the extract as it then is: "checked", or "unusable" with `failure`.
+ * @throws ProblemError 404, or 409 where it is loaded or being loaded.
+ */
+export async function checkExtract(services: Services, { extractId, progress = quietly }: { extractId: string; progress?: Progress }): Promise<Extract> {
+  await begin(services, extractId);
+  try {
+    await services.orm.em.fork().transactional((em) => check({ em, services, extractId, progress }));
+  } catch (error) {
+    if (!(error instanceof UnreadableFile)) throw error;
+    await services.orm.em.fork().transactional((em) => setUnusable({ em, services, extractId, error }));
+  }
+  const extract = await findExtract(services.orm.em.fork(), extractId);
+  if (!extract) throw notFound("extract");
+  return extract;
+}
+
+function begin(services: Services, extractId: string): Promise<void> {
+  return services.orm.em.fork().transactional(async (em) => {
+    const extract = await lockCheckable(em, extractId);
+    extract.state = "checking";
+    extract.failure = null;
+  });
+}
+
+async function lockCheckable(em: EntityManager, extractId: string): Promise<Extract> {
+  const extract = await lockExtract(em, extractId);
+  if (!extract) throw notFound("extract");
+  if (!checkable.has(extract.state)) {
+    throw conflict("not-checkable", `This extract is ${extract.state}, so it cannot be checked again. Upload the file anew.`);
+  }
+  return extract;
+}
+
+type Checking = { em: EntityManager; services: Services; extractId: string; progress: Progress };
+
+async function check({ em, services, extractId, progress }: Checking): Promise<void> {
+  // Held to the end, so that a second worker, which took the first for dead, waits for it.
+  const extract = await lockCheckable(em, extractId);
+  const definition = kinds[extract.kind];
+  await removeIssues(em, extractId);
+  const { table, rowsRead, log } = await stageRows({ em, services, extract, progress: reading(extract.sizeBytes, progress) });
+  await progress({ done: extract.sizeBytes, total: extract.sizeBytes, message: `${count.format(rowsRead)} rows read; comparing them` });
+  await keepIssues(em, { extractId, issues: log.kept });
+  await analyseStaging(em, table);
+  const together = { em, table, extractId, log, keep: true };
+  await rejectRepeatedRows({ ...together, definition });
+  await definition.checkTogether?.(together);
+  const weeks = definition.weekColumn ? await weeksStaged(em, { table, column: definition.weekColumn }) : null;
+  extract.rowsRead = rowsRead;
+  extract.rowsUsable = await countStaged(em, extractId);
+  extract.errorCount = log.total("error");
+  extract.warningCount = log.total("warning");
+  extract.issueCounts = log.byRule();
+  extract.firstWeek = weeks?.first ?? null;
+  extract.lastWeek = weeks?.last ?? null;
+  extract.changes = await definition.compare({ em, table });
+  extract.state = extract.rowsUsable > 0 ? "checked" : "unusable";
+  extract.failure = extract.rowsUsable > 0 ? null : noUsableRow(rowsRead);
+  extract.checkedAt = services.now();
+}
+
+const reading = (sizeBytes: number, progress: Progress) => ({ readBytes, rowsRead, errors }: StagingProgress) =>
+  progress({ done: readBytes, total: sizeBytes, message: `${count.format(rowsRead)} rows read, ${count.format(errors)} of them with errors` });
+
+const noUsableRow = (rowsRead: number) => ({
+  code: "no-usable-row",
+  detail: rowsRead === 1 ? "The one row has an error; see the list." : `Each of the ${count.format(rowsRead)} rows has an error; see the list.`,
+});
+
+type Refusal = { em: EntityManager; services: Services; extractId: string; error: UnreadableFile };
+
+async function setUnusable({ em, services, extractId, error }: Refusal): Promise<void> {
+  const extract = await lockCheckable(em, extractId);
+  await removeIssues(em, extractId);
+  await dropStaging(em, extractId);
+  Object.assign(extract, {
+    state: "unusable", failure: { code: error.code, detail: error.message }, checkedAt: services.now(),
+    rowsRead: null, rowsUsable: null, errorCount: null, warningCount: null, issueCounts: null, firstWeek: null, lastWeek: null, changes: null,
+  } satisfies Partial<Extract>);
+}
+
+/** Puts an extract back to where it was before a check that broke down, with the reason. */
+export function abandonCheck(services: Services, { extractId, error }: { extractId: string; error: { code: string; detail: string } }): Promise<void> {
+  return services.orm.em.fork().transactional(async (em) => {
+    const extract = await lockExtract(em, extractId);
+    if (extract?.state !== "checking") return;
+    extract.state = "received";
+    extract.failure = error;
+  });
+}

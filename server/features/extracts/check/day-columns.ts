@@ -1,0 +1,53 @@
+import { addDays, CalendarError, isDay, parseWeek, type ChainCalendar, type Day } from "@shared/calendar";
+import type { Column } from "./row";
+import type { RuleName } from "./rules";
+
+type WeekReading = { week: Day } | { rule: RuleName; reason: string };
+
+const earliestWeek = "1970-01-01";
+const mostReadings = 10_000;
+
+/** Reads weeks as the chain writes them; a file repeats few weeks many times, so each text is read once. */
+export class WeekReader {
+  readonly #calendar: ChainCalendar;
+  readonly #latest: Day;
+  readonly #readings = new Map<string, WeekReading>();
+
+  constructor(calendar: ChainCalendar, now: Date) {
+    this.#calendar = calendar;
+    this.#latest = addDays(now.toISOString().slice(0, 10), 366);
+  }
+
+  /** The first day of the week that stands in a column; null, and reported, where there is none. */
+  read(column: Column): Day | null {
+    const text = column.raw;
+    if (text === "") return column.report("missing-value");
+    const reading = this.#readings.get(text) ?? this.#understand(text);
+    return "week" in reading ? reading.week : column.report(reading.rule, { reason: reading.reason });
+  }
+
+  #understand(text: string): WeekReading {
+    const reading = this.#parse(text);
+    if (this.#readings.size < mostReadings) this.#readings.set(text, reading);
+    return reading;
+  }
+
+  #parse(text: string): WeekReading {
+    try {
+      const week = parseWeek(this.#calendar, text);
+      if (week >= earliestWeek && week <= this.#latest) return { week };
+      return { rule: "week-out-of-range", reason: `${week} is before 1970 or more than a year ahead` };
+    } catch (error) {
+      if (!(error instanceof CalendarError)) throw error;
+      const rule = error.code === "not-a-first-day" ? "not-week-start" : "bad-week";
+      return { rule, reason: error.message.replace(/\.$/, "") };
+    }
+  }
+}
+
+/** The day that stands in a column; null where it is empty, or reported where it is none. */
+export function dayOf(column: Column, { needed = false }: { needed?: boolean } = {}): Day | null {
+  const text = column.raw;
+  if (text === "") return needed ? column.report("missing-value") : null;
+  return isDay(text) ? text : column.report("bad-day");
+}

@@ -1,0 +1,73 @@
+import type { IssueCount } from "@shared/contract/extracts";
+import { rules, type Rule, type RuleName } from "./rules";
+
+/** What one row broke. */
+export type Finding = {
+  line: number;
+  /** Empty where it is about the whole row. */
+  column: string;
+  value: string;
+  rule: RuleName;
+  /** Says more than the rule does by itself. */
+  reason?: string;
+  remedy?: string;
+};
+
+/** A finding as it is kept. */
+export type LoggedIssue = Required<Finding> & { severity: Rule["severity"] };
+
+/** Issues kept of one file; what is beyond is only counted. */
+export const mostIssuesKept = 100_000;
+/** Of each rule so many are kept even then, so that a flood of one does not hide another. */
+const alwaysKeptOfARule = 1_000;
+
+export const longestValue = 200;
+const longestText = 400;
+
+/** Collects what is wrong with the rows of a file: counts are exact, the issues themselves are kept up to a bound. */
+export class IssueLog {
+  readonly kept: LoggedIssue[] = [];
+  readonly #counts = new Map<RuleName, number>();
+
+  report(finding: Finding): void {
+    const count = this.count(finding.rule, 1);
+    if (this.kept.length >= mostIssuesKept && count > alwaysKeptOfARule) return;
+    const rule = rules[finding.rule];
+    this.kept.push({
+      line: finding.line,
+      column: cut(finding.column, 80),
+      value: cut(finding.value, longestValue),
+      rule: finding.rule,
+      severity: rule.severity,
+      reason: cut(finding.reason ?? rule.reason, longestText),
+      remedy: cut(finding.remedy ?? rule.remedy, longestText),
+    });
+  }
+
+  /** Counts what was found by other means; answers the new count of the rule. */
+  count(rule: RuleName, more: number): number {
+    const count = (this.#counts.get(rule) ?? 0) + more;
+    if (count > 0) this.#counts.set(rule, count);
+    return count;
+  }
+
+  /** How many more of a rule may be kept. */
+  room(rule: RuleName): number {
+    return Math.max(0, mostIssuesKept - this.kept.length, alwaysKeptOfARule - (this.#counts.get(rule) ?? 0));
+  }
+
+  total(severity: Rule["severity"]): number {
+    return this.byRule().reduce((sum, entry) => (entry.severity === severity ? sum + entry.count : sum), 0);
+  }
+
+  /** Counts by rule, errors first, then the most frequent. */
+  byRule(): IssueCount[] {
+    const counts = [...this.#counts].map(([rule, count]) => ({ rule, ...rules[rule], count }));
+    return counts.sort((a, b) => a.severity.localeCompare(b.severity) || b.count - a.count || a.rule.localeCompare(b.rule));
+  }
+}
+
+/** At most so many characters, what PostgreSQL cannot keep in text (NUL, halves of pairs) made visible. */
+function cut(text: string, length: number): string {
+  return text.slice(0, length).replaceAll("\0", "\u2400").toWellFormed();
+}

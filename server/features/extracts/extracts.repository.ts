@@ -1,0 +1,57 @@
+import { LockMode } from "@mikro-orm/core";
+import type { EntityManager } from "@mikro-orm/postgresql";
+import type { ExtractChanges, IssueCount } from "@shared/contract/extracts";
+import { ExtractEntity, ExtractIssueEntity, type Extract, type ExtractIssue } from "./extracts.entities";
+
+export function findExtract(em: EntityManager, id: string): Promise<Extract | null> {
+  return em.findOne(ExtractEntity, { id }, { populate: ["uploadedBy"] });
+}
+
+/** The extract, kept from others until the transaction ends. */
+export function lockExtract(em: EntityManager, id: string): Promise<Extract | null> {
+  return em.findOne(ExtractEntity, { id }, { lockMode: LockMode.PESSIMISTIC_WRITE, refresh: true });
+}
+
+export type ExtractCursor = { uploadedAt: string; id: string };
+
+/** Extracts, newest first, from after a cursor on; one more than the limit where there are more. */
+export function findExtracts(em: EntityManager, { after, limit }: { after?: ExtractCursor; limit: number }): Promise<Extract[]> {
+  const older = after && {
+    $or: [
+      { uploadedAt: { $lt: new Date(after.uploadedAt) } },
+      { uploadedAt: new Date(after.uploadedAt), id: { $lt: after.id } },
+    ],
+  };
+  return em.find(ExtractEntity, older ?? {}, {
+    populate: ["uploadedBy"], orderBy: { uploadedAt: "desc", id: "desc" }, limit: limit + 1,
+  });
+}
+
+export type IssueCursor = { line: number; id: number };
+export type IssueFilter = { extractId: string; severity?: "error" | "warning"; rule?: string; after?: IssueCursor; limit: number };
+
+/** Issues by line, from after a cursor on; one more than the limit where there are more. */
+export function findIssues(em: EntityManager, { extractId, severity, rule, after, limit }: IssueFilter): Promise<ExtractIssue[]> {
+  const where = {
+    extract: extractId,
+    ...(severity && { severity }),
+    ...(rule && { rule }),
+    ...(after && { $or: [{ line: { $gt: after.line } }, { line: after.line, id: { $gt: after.id } }] }),
+  };
+  return em.find(ExtractIssueEntity, where, { orderBy: { line: "asc", id: "asc" }, limit: limit + 1 });
+}
+
+export async function issueCountsOf(em: EntityManager, extract: Extract): Promise<IssueCount[]> {
+  await em.populate(extract, ["issueCounts"]);
+  return extract.issueCounts ?? [];
+}
+
+export async function changesOf(em: EntityManager, extract: Extract): Promise<ExtractChanges | null> {
+  await em.populate(extract, ["changes"]);
+  return extract.changes ?? null;
+}
+
+/** Removes what an earlier check has found. */
+export async function removeIssues(em: EntityManager, extractId: string): Promise<void> {
+  await em.nativeDelete(ExtractIssueEntity, { extract: extractId });
+}

@@ -1,0 +1,66 @@
+import type { EntityManager } from "@mikro-orm/postgresql";
+import type { Readable } from "node:stream";
+import { z } from "zod";
+import type { ExtractChanges, IssueCount } from "@shared/contract/extracts";
+import { conflict, notFound, ProblemError } from "../../errors";
+import type { Services } from "../../services";
+import type { Extract, ExtractIssue } from "./extracts.entities";
+import { changesOf, findExtract, findExtracts, findIssues, issueCountsOf } from "./extracts.repository";
+import { readCursor, writeCursor } from "./page-cursor";
+
+export type Page<Item> = { items: Item[]; nextCursor: string | null };
+type PageQuery = { cursor?: string; limit: number };
+
+/** The extract with this id. @throws ProblemError 404. */
+export async function getExtract(em: EntityManager, id: string): Promise<Extract> {
+  const extract = await findExtract(em, id);
+  if (!extract) throw notFound("extract");
+  return extract;
+}
+
+const extractCursor = z.object({ uploadedAt: z.iso.datetime(), id: z.uuid() });
+
+/** Extracts, newest first. @throws ProblemError 422 for a cursor that is none. */
+export async function listExtracts(em: EntityManager, { cursor, limit }: PageQuery): Promise<Page<Extract>> {
+  const found = await findExtracts(em, { after: readCursor(extractCursor, cursor), limit });
+  return pageOf(found, limit, ({ uploadedAt, id }) => ({ uploadedAt: uploadedAt.toISOString(), id }));
+}
+
+const issueCursor = z.object({ line: z.number().int(), id: z.number().int() });
+
+type IssueQuery = PageQuery & { severity?: "error" | "warning"; rule?: string };
+
+/** What is wrong with rows, by line, with counts by rule. @throws ProblemError 404, or 422 for a cursor that is none. */
+export async function listIssues(
+  em: EntityManager, extractId: string, { cursor, limit, severity, rule }: IssueQuery,
+): Promise<Page<ExtractIssue> & { byRule: IssueCount[] }> {
+  const extract = await getExtract(em, extractId);
+  const found = await findIssues(em, { extractId, severity, rule, after: readCursor(issueCursor, cursor), limit });
+  const page = pageOf(found, limit, ({ line, id }) => ({ line, id }));
+  return { ...page, byRule: await issueCountsOf(em, extract) };
+}
+
+function pageOf<Item>(found: Item[], limit: number, position: (item: Item) => Record<string, string | number>): Page<Item> {
+  const items = found.slice(0, limit);
+  const last = items.at(-1);
+  return { items, nextCursor: found.length > limit && last !== undefined ? writeCursor(position(last)) : null };
+}
+
+/** What loading would change, or changed. @throws ProblemError 404, or 409 before the file was checked. */
+export async function getChanges(em: EntityManager, extractId: string): Promise<ExtractChanges> {
+  const extract = await getExtract(em, extractId);
+  const changes = await changesOf(em, extract);
+  if (changes) return changes;
+  throw conflict("not-checked", "What loading would change is known once the file is checked and has rows that can be used.");
+}
+
+/** The file as it arrived. @throws ProblemError 404, or 503 where the file store does not give it out. */
+export async function openOriginal(em: EntityManager, services: Services, extractId: string): Promise<{ extract: Extract; body: Readable }> {
+  const extract = await getExtract(em, extractId);
+  try {
+    return { extract, body: await services.files.get(extract.storageKey) };
+  } catch (error) {
+    services.logger.error({ err: error, extract: extractId }, "an original could not be read");
+    throw new ProblemError({ status: 503, code: "file-store-unavailable", detail: "The file cannot be read just now. Try again in a minute." });
+  }
+}

@@ -1,0 +1,33 @@
+import { compareEvents, mergeEvents } from "../../catalogue";
+import { copyRow } from "../check/copy-text";
+import { dayOf } from "../check/day-columns";
+import type { KindDefinition } from "./kind";
+
+/** Files of the chain's events, a row an occurrence. */
+export const eventsKind: KindDefinition = {
+  kind: "events",
+  staged: [
+    { name: "code", type: "varchar(64) not null" },
+    { name: "name", type: "varchar(120) not null" },
+    { name: "first_day", type: "date not null" },
+    { name: "last_day", type: "date not null" },
+    { name: "region", type: "varchar(80) not null" },
+  ],
+  key: ["code", "first_day", "region"],
+  keyText: "concat_ws(', ', staged.code, staged.first_day, nullif(staged.region, ''))",
+  reader({ row, codes }) {
+    const [event, name, region] = [row.column("event"), row.column("name"), row.column("region")];
+    const [first, last] = [row.column("first_day"), row.column("last_day")];
+    return () => {
+      const [firstDay, lastDay] = [dayOf(first, { needed: true }), dayOf(last, { needed: true })];
+      if (firstDay !== null && lastDay !== null && lastDay < firstDay) last.report("last-before-first");
+      const heldIn = region.text({ longest: 80 });
+      if (heldIn !== null && !codes.regions.has(heldIn)) region.report("unknown-region");
+      return copyRow([
+        event.text({ longest: 64, needed: true }), name.text({ longest: 120, needed: true }), firstDay, lastDay, heldIn ?? "",
+      ]);
+    };
+  },
+  compare: async ({ em, table }) => ({ totals: await compareEvents(em, table), weeks: [] }),
+  load: ({ em, table }) => mergeEvents(em, table),
+};

@@ -1,0 +1,37 @@
+import type { EntityManager } from "@mikro-orm/postgresql";
+import type { ChainCalendar } from "@shared/calendar";
+import type { ExtractChanges, ExtractKind } from "@shared/contract/extracts";
+import type { CatalogueCodes } from "../../catalogue";
+import type { IssueLog } from "../check/issue-log";
+import type { Row } from "../check/row";
+
+/** A column of the table in which a file's usable rows wait; `line` is always there. */
+export type StagedColumn = { name: string; type: string };
+
+export type ReaderContext = { row: Row; codes: CatalogueCodes; calendar: ChainCalendar; now: Date };
+
+/** Reads the row at hand: its staged values in COPY's text format, of no use where `row.hasError` is set. */
+export type RowReader = () => string;
+
+export type StagedRows = { em: EntityManager; table: string };
+
+/** All that differs from kind to kind of file. */
+export type KindDefinition = {
+  kind: ExtractKind;
+  staged: readonly StagedColumn[];
+  /** Staged columns by which a row stands for something. */
+  key: readonly string[];
+  /** SQL of that in the words of the file, over a staged row `staged`. */
+  keyText: string;
+  reader: (context: ReaderContext) => RowReader;
+  /** Rules over several rows, by SQL: reports, and removes the rows that break them. */
+  checkTogether?: (rows: StagedRows & { extractId: string; log: IssueLog; keep: boolean }) => Promise<void>;
+  /** Staged column of the week, where rows have one. */
+  weekColumn?: string;
+  /** What loading would do to the database as it stands. */
+  compare: (rows: StagedRows) => Promise<ExtractChanges>;
+  /** Makes room for the rows, in a short transaction of its own before the load's. */
+  prepareLoad?: (rows: StagedRows) => Promise<void>;
+  /** Puts the rows in. Called inside the load's transaction, under its lock. */
+  load: (rows: StagedRows & { extractId: string; now: Date; changes: ExtractChanges }) => Promise<void>;
+};

@@ -1,0 +1,16 @@
+import type { ExtractKind } from "@shared/contract/extracts";
+import { eventsKind } from "./events";
+import type { KindDefinition } from "./kind";
+import { productsKind } from "./products";
+import { salesKind } from "./sales";
+import { storesKind } from "./stores";
+import { temperaturesKind } from "./temperatures";
+
+/** Every kind of file, by name. */
+export const kinds: Record<ExtractKind, KindDefinition> = {
+  sales: salesKind,
+  stores: storesKind,
+  products: productsKind,
+  events: eventsKind,
+  temperatures: temperaturesKind,
+};

@@ -1,0 +1,113 @@
+import type { EntityManager } from "@mikro-orm/postgresql";
+import type { ExtractChanges } from "@shared/contract/extracts";
+import { conflict, notFound, ProblemError } from "../../../errors";
+import type { Services } from "../../../services";
+import { audit } from "../../accounts";
+import { quietly, type Progress } from "../check/progress";
+import { stageRows } from "../check/stage-rows";
+import { rejectRepeatedRows } from "../check/together.repository";
+import type { Extract } from "../extracts.entities";
+import { changesOf, findExtract, lockExtract } from "../extracts.repository";
+import { kinds } from "../kinds/kinds";
+import { lockLoads } from "./load-lock.repository";
+import { analyseStaging, countStaged, dropStaging, stagingTable } from "./staging.repository";
+
+/** Who asked for it; the one who uploaded the file, where nobody is named. */
+export type Actor = { personId: string; tokenId?: string | null; requestId?: string | null };
+
+type LoadOptions = { extractId: string; actor?: Actor; progress?: Progress };
+
+const steps = 4;
+
+/**
+ * Loads an extract's usable rows: all of them, or none where anything fails. One load runs at a time in the whole
+ * installation, so two cannot mix. A file that was loaded already answers what it changed then, and changes nothing.
+ *
+ * @returns how many rows were new, changed, and there already.
+ * @throws ProblemError 404, or 409 where the extract is not checked.
+ */
+export async function loadExtract(services: Services, { extractId, actor, progress = quietly }: LoadOptions): Promise<ExtractChanges["totals"]> {
+  const step = (done: number, message: string) => progress({ done, total: steps, message });
+  await step(0, "Making the rows ready");
+  await ensureStaged(services, { extractId, progress });
+  await step(1, "Waiting for other loads to end");
+  const changes = await services.orm.em.fork().transactional(async (em) => {
+    await lockLoads(em);
+    const extract = await requireLoadable(em, extractId);
+    if (extract.state === "loaded") return changesOf(em, extract);
+    return load({ em, services, extract, actor, step });
+  });
+  return changes?.totals ?? { new: 0, changed: 0, same: 0 };
+}
+
+type Load = { em: EntityManager; services: Services; extract: Extract; actor?: Actor; step: (done: number, message: string) => Promise<void> };
+
+async function load({ em, services, extract, actor, step }: Load): Promise<ExtractChanges> {
+  const { compare, load: loadRows } = kinds[extract.kind];
+  const rows = { em, table: stagingTable(extract.id) };
+  const now = services.now();
+  await step(2, "Comparing with what is there");
+  const changes = await compare(rows);
+  await step(3, "Loading");
+  await loadRows({ ...rows, extractId: extract.id, now, changes });
+  await dropStaging(em, extract.id);
+  extract.state = "loaded";
+  extract.changes = changes;
+  extract.loadedAt = now;
+  extract.failure = null;
+  const by = actor ?? { personId: extract.uploadedBy.id };
+  audit(em, { ...by, action: "extract.loaded", subject: { kind: "extract", id: extract.id }, detail: { fileName: extract.fileName, ...changes.totals } });
+  // The last moment at which a cancellation or the loss of the job can still undo everything.
+  await step(steps, "Loaded");
+  return changes;
+}
+
+async function requireLoadable(em: EntityManager, extractId: string): Promise<Extract> {
+  const extract = await lockExtract(em, extractId);
+  if (!extract) throw notFound("extract");
+  if (extract.state === "checked" || extract.state === "loading" || extract.state === "loaded") return extract;
+  throw conflict("not-checked", `This extract is ${extract.state}: only one that was checked can be loaded.`);
+}
+
+/**
+ * Sees to it that the rows found usable by the check wait in the staging table. They are gone where the database server
+ * broke down meanwhile, since that table is not logged; the file is then read again, by the same rules.
+ */
+async function ensureStaged(services: Services, { extractId, progress }: { extractId: string; progress: Progress }): Promise<void> {
+  const extract = await findExtract(services.orm.em.fork(), extractId);
+  if (!extract) throw notFound("extract");
+  if (extract.state !== "checked" && extract.state !== "loading") return;
+  await services.orm.em.fork().transactional(async (em) => {
+    if ((await countStaged(em, extractId)) !== extract.rowsUsable) await stageAgain({ em, services, extract, progress });
+  });
+  const { prepareLoad } = kinds[extract.kind];
+  await services.orm.em.fork().transactional((em) => prepareLoad?.({ em, table: stagingTable(extractId) }) ?? Promise.resolve());
+}
+
+async function stageAgain({ em, services, extract, progress }: { em: EntityManager; services: Services; extract: Extract; progress: Progress }): Promise<void> {
+  const definition = kinds[extract.kind];
+  const { table, log } = await stageRows({
+    em, services, extract,
+    progress: ({ readBytes }) => progress({ done: readBytes / Math.max(1, extract.sizeBytes), total: steps, message: "Reading the file again" }),
+  });
+  await analyseStaging(em, table);
+  // What is wrong with the rows is on record from the check.
+  const together = { em, table, extractId: extract.id, log, keep: false };
+  await rejectRepeatedRows({ ...together, definition });
+  await definition.checkTogether?.(together);
+  const usable = await countStaged(em, extract.id);
+  if (usable === extract.rowsUsable) return;
+  const detail = `Since the check the catalogue has changed: ${usable} rows can be used now, not ${extract.rowsUsable ?? 0}. Check the file again, look at the list, and load it then.`;
+  throw new ProblemError({ status: 409, code: "check-outdated", detail });
+}
+
+/** Puts an extract back to where it was before a load that broke down, with the reason. */
+export function abandonLoad(services: Services, { extractId, error }: { extractId: string; error: { code: string; detail: string } }): Promise<void> {
+  return services.orm.em.fork().transactional(async (em) => {
+    const extract = await lockExtract(em, extractId);
+    if (extract?.state !== "loading") return;
+    extract.state = "checked";
+    extract.failure = error;
+  });
+}
+

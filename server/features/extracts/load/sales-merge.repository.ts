@@ -1,0 +1,101 @@
+import type { ExtractChanges } from "@shared/contract/extracts";
+import type { StagedRows } from "../kinds/kind";
+import { derivePrices } from "./derived-prices.repository";
+import { key, said, salesColumns, type WeekRange, within } from "./sales-columns";
+
+const columns = (names: readonly string[], alias: string) => names.map((name) => `${alias}.${name}`).join(", ");
+const sameKey = key.map((name) => `sales.${name} = staged.${name}`).join(" and ");
+const differs = `(${columns(said, "sales")}) is distinct from (${columns(said, "staged")})`;
+
+/** The price that a row itself tells, and from what; see shared/planning's modelledPrice. */
+const ownPrice = `
+  case when staged.shelf_price > 0 then staged.shelf_price
+    when staged.units > 0 and round(staged.net_sales / staged.units, 4) > 0 then round(staged.net_sales / staged.units, 4) end`;
+const ownSource = `
+  case when staged.shelf_price > 0 then 'shelf'
+    when staged.units > 0 and round(staged.net_sales / staged.units, 4) > 0 then 'paid' else 'unknown' end`;
+
+/** Weeks of the file as SQL literals: the planner then looks into their partitions only. */
+async function weeksOf({ em, table }: StagedRows): Promise<WeekRange | undefined> {
+  const [row] = await em.execute<[{ first: string | null; last: string | null }]>(
+    `select min(week)::text as first, max(week)::text as last from ${table}`,
+  );
+  return row.first === null || row.last === null ? undefined : { first: row.first, last: row.last };
+}
+
+/** What loading would change, by week: rows that are new, that differ from what is there, and that are the same. */
+export async function compareSales({ em, table }: StagedRows): Promise<ExtractChanges> {
+  const range = await weeksOf({ em, table });
+  if (!range) return { totals: { new: 0, changed: 0, same: 0 }, weeks: [] };
+  const weeks = await em.execute<ExtractChanges["weeks"]>(`
+    select staged.week::text as week,
+      count(*) filter (where sales.product_id is null)::int as new,
+      count(*) filter (where sales.product_id is not null and ${differs})::int as changed,
+      count(*) filter (where sales.product_id is not null and not ${differs})::int as same,
+      coalesce(sum(sales.units), 0)::float8 as "unitsBefore", sum(staged.units)::float8 as "unitsAfter"
+    from ${table} staged
+    left join weekly_sales sales on ${sameKey} and ${within(range)}
+    group by staged.week order by staged.week`);
+  const total = (count: "new" | "changed" | "same") => weeks.reduce((sum, week) => sum + week[count], 0);
+  return { totals: { new: total("new"), changed: total("changed"), same: total("same") }, weeks };
+}
+
+/**
+ * Makes the partitions that staged weeks need. In a transaction of its own: making one shuts readers out until the
+ * transaction ends, and a load takes longer than they should wait.
+ */
+export async function ensurePartitions({ em, table }: StagedRows): Promise<void> {
+  await em.execute(`
+    select ensure_sales_partition(year) from (select distinct extract(year from week)::integer as year from ${table}) years`);
+}
+
+type Merge = StagedRows & { extractId: string; now: Date; changes: ExtractChanges };
+
+/**
+ * Puts staged rows into the sales: what they replace goes to the history first; rows that are there already are left
+ * alone, and it is noted whose they are. Prices are derived anew wherever the rows bear on them.
+ */
+export async function mergeSales({ em, table, extractId, now, changes }: Merge): Promise<void> {
+  const range = await weeksOf({ em, table });
+  if (!range) return;
+  if (changes.totals.same > 0) await noteConfirmed({ em, table, extractId, range });
+  if (changes.totals.changed > 0) await replaceChanged({ em, table, extractId, now, range });
+  if (changes.totals.new > 0) await insertNew({ em, table, extractId, range });
+  await derivePrices(em, `select distinct product_id, week from ${table}`);
+}
+
+type Ranged = Omit<Merge, "now" | "changes"> & { range: WeekRange };
+
+async function noteConfirmed({ em, table, extractId, range }: Ranged): Promise<void> {
+  await em.execute(
+    `insert into sales_confirmations (extract_id, confirmed_extract_id, row_count)
+     select ?, sales.extract_id, count(*) from ${table} staged join weekly_sales sales on ${sameKey} and ${within(range)}
+     where not ${differs} group by sales.extract_id`,
+    [extractId],
+  );
+}
+
+async function replaceChanged({ em, table, extractId, now, range }: Ranged & { now: Date }): Promise<void> {
+  await em.execute(
+    `insert into weekly_sales_history (${salesColumns.join(", ")}, replaced_by, replaced_at)
+     select ${columns(salesColumns, "sales")}, ?, ?
+     from ${table} staged join weekly_sales sales on ${sameKey} and ${within(range)} where ${differs}`,
+    [extractId, now],
+  );
+  await em.execute(
+    `update weekly_sales sales set ${said.map((name) => `${name} = staged.${name}`).join(", ")},
+       price = ${ownPrice}, price_source = ${ownSource}, extract_id = ?
+     from ${table} staged where ${sameKey} and ${within(range)} and ${differs}`,
+    [extractId],
+  );
+}
+
+async function insertNew({ em, table, extractId, range }: Ranged): Promise<void> {
+  await em.execute(
+    `insert into weekly_sales (${[...key, ...said].join(", ")}, price, price_source, extract_id)
+     select ${columns([...key, ...said], "staged")}, ${ownPrice}, ${ownSource}, ?
+     from ${table} staged
+     where not exists (select from weekly_sales sales where ${sameKey} and ${within(range)})`,
+    [extractId],
+  );
+}

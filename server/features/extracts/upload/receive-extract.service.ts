@@ -1,0 +1,71 @@
+import type { EntityManager } from "@mikro-orm/postgresql";
+import type { Readable } from "node:stream";
+import type { ExtractKind } from "@shared/contract/extracts";
+import type { Services } from "../../../services";
+import { audit } from "../../accounts";
+import { getChain } from "../../chain";
+import { ExtractEntity, type Extract } from "../extracts.entities";
+import type { Actor } from "../load/load-extract.service";
+import { enqueueCheck } from "../requests.service";
+import { cleanFileName } from "./clean-file-name";
+import { discardFile } from "./discard-file";
+import { forgetIncoming } from "./incoming-files.repository";
+import type { ReceivedFile } from "./receive-upload";
+import { storeOriginal } from "./store-original";
+
+type Registration = {
+  file: ReceivedFile;
+  kind: ExtractKind;
+  layout?: string;
+  actor: Actor;
+  /** Whether a worker is to check it. */
+  inBackground: boolean;
+};
+
+/**
+ * Makes an extract of a file that is in the store, and has it checked. Where that fails the file is removed again.
+ *
+ * @returns the extract with who uploaded it.
+ */
+export async function registerExtract(em: EntityManager, services: Services, { file, kind, layout, actor, inBackground }: Registration): Promise<Extract> {
+  try {
+    return await em.transactional(async (inner) => {
+      const { id, storageKey, sizeBytes, sha256, fileName } = file;
+      const extract = inner.create(ExtractEntity, {
+        id, kind, fileName, sizeBytes, sha256, storageKey, layout: layout ?? null, state: "received",
+        uploadedBy: actor.personId, uploadedAt: services.now(),
+      });
+      await inner.persist(extract).flush();
+      if (inBackground) await enqueueCheck(inner, { services, extract, personId: actor.personId });
+      audit(inner, { ...actor, action: "extract.uploaded", subject: { kind: "extract", id }, detail: { fileName, kind, sizeBytes, sha256 } });
+      await forgetIncoming(inner, storageKey);
+      await inner.populate(extract, ["uploadedBy"]);
+      return extract;
+    });
+  } catch (error) {
+    await discardFile(services, file.storageKey);
+    throw error;
+  }
+}
+
+export type NewExtract = {
+  body: Readable;
+  fileName: string;
+  kind: ExtractKind;
+  layout?: string;
+  personId: string;
+  /** Whether a worker is to check it; without one, call `checkExtract`. */
+  inBackground?: boolean;
+};
+
+/**
+ * Takes a file in from a stream, as the HTTP upload does: kept unchanged, and entered as an extract.
+ *
+ * @throws ProblemError for an empty or binary file, one over the chain's limit, or where the file store does not take it.
+ */
+export async function receiveExtract(services: Services, { body, fileName, kind, layout, personId, inBackground = true }: NewExtract): Promise<Extract> {
+  const em = services.orm.em.fork();
+  const { uploadLimitBytes } = await getChain(em);
+  const stored = await storeOriginal(services, { body, limitBytes: uploadLimitBytes });
+  return registerExtract(em, services, { file: { ...stored, fileName: cleanFileName(fileName) }, kind, layout, actor: { personId }, inBackground });
+}
