@@ -1,10 +1,10 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
 import { EngineError, parseModel } from "@shared/engine";
-import { PlanningError, predictScenario, type ScenarioPrediction } from "@shared/planning";
-import { planInput, type LeftOutCells } from "@shared/planning/plan-input";
+import { planInput, PlanningError, predictScenario, type LeftOutCells, type ScenarioPrediction } from "@shared/planning";
 import { unusable } from "../../errors";
 import { requireModel, requireStores } from "../drivers";
 import { planBase } from "./context/planning-context.service";
+import { cellsOf } from "./scenarios.repository";
 import { readScenario } from "./scenarios.service";
 
 /** A saved plan's figures, and the store-weeks that could not be predicted. */
@@ -22,7 +22,7 @@ export async function predictSavedScenario(em: EntityManager, { id, level }: { i
   const weeks = { first: scenario.firstWeek, last: scenario.lastWeek };
   const { base, fits, notes } = await planBase(em, { productId: scenario.product.id, stores, weeks, model });
   const models = new Map(fits.map(({ store, fit }) => [store, parseModel(fit)]));
-  const { leftOut, ...input } = planInput({ base, changes: scenario.cells, models });
+  const { leftOut, ...input } = planInput({ base, changes: cellsOf(scenario), models });
   if (input.cells.length === 0) throw unusable("nothing-to-predict", `No store-week of this plan can be predicted. ${notes.join(" ")}`);
   try {
     return { prediction: predictScenario({ ...input, level, costs: { fixedCost: scenario.fixedCost } }), leftOut };

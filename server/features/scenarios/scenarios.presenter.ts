@@ -5,6 +5,7 @@ import type { PlanBase } from "./context/planning-context.service";
 import type { SavedPrediction } from "./predict-scenario.service";
 import type { ScenarioRow } from "./scenarios.entities";
 import { mayEdit } from "./scenarios.policy";
+import { cellsOf } from "./scenarios.repository";
 
 /** A scenario without its cells, as lists show it. */
 export function presentListedScenario(scenario: ScenarioRow, caller: Caller): Omit<Scenario, "cells"> {
@@ -29,7 +30,7 @@ export function presentListedScenario(scenario: ScenarioRow, caller: Caller): Om
 
 /** A scenario, and what the reader may do with it. */
 export function presentScenario(scenario: ScenarioRow, caller: Caller): Scenario {
-  return { ...presentListedScenario(scenario, caller), cells: scenario.cells };
+  return { ...presentListedScenario(scenario, caller), cells: cellsOf(scenario) };
 }
 
 /** All a browser needs to predict by itself. */

@@ -1,9 +1,17 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
+import type { PlanCell } from "@shared/contract/scenarios";
 import { ScenarioEntity, type ScenarioRow } from "./scenarios.entities";
 
 /** A scenario with all that is shown of it. */
 export async function findScenario(em: EntityManager, id: string): Promise<ScenarioRow | null> {
   return em.findOne(ScenarioEntity, { id }, { populate: ["product", "createdBy", "updatedBy", "cells"] });
+}
+
+/** The cells of a scenario that `findScenario` read; lists leave them out. */
+export function cellsOf(scenario: ScenarioRow): PlanCell[] {
+  const cells = scenario.cells.unwrap();
+  if (cells === undefined) throw new Error(`The cells of scenario ${scenario.id} were not read.`);
+  return cells;
 }
 
 /** Place in the list: what was changed last comes first. */
