@@ -31,8 +31,43 @@ export const createRouter = (queryClient: QueryClient) =>
               lazy: async () => ({ loader: (await import("./routes/home")).loaderFor(queryClient), element: null }),
             },
             {
+              path: paths.extracts.path,
+              lazy: async () => {
+                const page = await import("./routes/extracts");
+                return { Component: page.ExtractsRoute, loader: page.loaderFor(queryClient) };
+              },
+            },
+            {
+              path: paths.extract.path,
+              lazy: async () => {
+                const page = await import("./routes/extract");
+                return { Component: page.ExtractRoute, loader: page.loaderFor(queryClient) };
+              },
+            },
+            {
               path: paths.password.path,
               lazy: async () => ({ Component: (await import("./routes/password")).PasswordRoute }),
+            },
+            {
+              path: paths.scenarios.path,
+              lazy: async () => {
+                const { ScenariosRoute, loaderFor } = await import("./routes/scenarios");
+                return { Component: ScenariosRoute, loader: loaderFor(queryClient) };
+              },
+            },
+            {
+              path: paths.newScenario.path,
+              lazy: async () => {
+                const { NewScenarioRoute, loaderFor } = await import("./routes/new-scenario");
+                return { Component: NewScenarioRoute, loader: loaderFor(queryClient) };
+              },
+            },
+            {
+              path: paths.scenario.path,
+              lazy: async () => {
+                const { ScenarioRoute, loaderFor } = await import("./routes/scenario");
+                return { Component: ScenarioRoute, loader: loaderFor(queryClient) };
+              },
             },
             {
               path: "*",

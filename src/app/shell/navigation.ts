@@ -4,4 +4,5 @@ import { paths } from "@/lib/paths";
 export const navigation = [
   { label: "Extracts", to: paths.extracts.href() },
   { label: "Drivers", to: paths.drivers.href() },
+  { label: "Scenarios", to: paths.scenarios.href() },
 ] as const;

@@ -18,9 +18,12 @@ export const formatMoney = (amount: number | null | undefined, options: MoneyOpt
   return amount < 0 ? `${minus}${text}` : signed ? `+${text}` : text;
 };
 
+/** Decimals of a currency's coins: 2 for EUR, 0 for JPY. */
+export const currencyDigits = (currency: string, locale = "en-GB"): number =>
+  numberFormat(locale, { style: "currency", currency }).resolvedOptions().maximumFractionDigits ?? 2;
+
 /** A shelf price, in the currency's own number of decimals: "€1.49". */
 export const formatPrice = (price: number | null | undefined, options: Omit<MoneyOptions, "digits">): string => {
   const { currency, locale = "en-GB" } = options;
-  const digits = numberFormat(locale, { style: "currency", currency }).resolvedOptions().maximumFractionDigits ?? 2;
-  return formatMoney(price, { ...options, digits });
+  return formatMoney(price, { ...options, digits: currencyDigits(currency, locale) });
 };

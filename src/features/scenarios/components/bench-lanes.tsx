@@ -1,10 +1,9 @@
-import type { Scenario } from "@shared/contract/scenarios";
+import type { PlanCell, Scenario } from "@shared/contract/scenarios";
 import { Lanes } from "@/components/charts/driver-lane/lanes";
 import type { ScenarioEditing } from "../hooks/use-scenario-edit";
 import type { ScenarioFigures } from "../hooks/use-prediction";
 import { changeAll } from "../view/plan-changes";
 import type { PlanField } from "../view/plan-changes";
-import type { PlanCell } from "@shared/contract/scenarios";
 import { LevelLane } from "./level-lane";
 import { PriceLane } from "./price-lane";
 import { TemperatureLane } from "./temperature-lane";

@@ -2,8 +2,7 @@ import { useMemo } from "react";
 import type { PlanCell as PlanChange } from "@shared/contract/scenarios";
 import { parseModel } from "@shared/engine";
 import { planInput, prepareScenario } from "@shared/planning";
-import type { LaneStore, PlanCell, ScenarioPrediction } from "@shared/planning";
-import type { LeftOutCells } from "@shared/planning/plan-input";
+import type { LaneStore, LeftOutCells, PlanCell, ScenarioPrediction } from "@shared/planning";
 import type { PlanningContext } from "../api/planning-context";
 
 export type ScenarioFigures = {

@@ -1,0 +1,61 @@
+import { Redo2, Undo2 } from "lucide-react";
+import type { Product } from "@shared/contract/catalogue";
+import type { Scenario } from "@shared/contract/scenarios";
+import { IconButton } from "@/components/ui/icon-button";
+import { PageHeader } from "@/components/ui/page-header";
+import { SegmentedControl } from "@/components/ui/segmented-control";
+import { useChainFormat } from "@/lib/format/chain-format";
+import { countOf } from "@/lib/format/number";
+import type { SaveState } from "../hooks/use-autosave";
+import type { ScenarioEditing } from "../hooks/use-scenario-edit";
+import { SaveLine } from "./save-line";
+import { ScenarioMenu } from "./scenario-menu";
+import { ScenarioName } from "./scenario-name";
+
+type ScenarioHeadProps = {
+  scenario: Scenario;
+  product: Product | undefined;
+  editing: ScenarioEditing;
+  saving: { state: SaveState; retry: () => void };
+  level: number;
+  levels: readonly number[];
+  onLevel: (level: number) => void;
+};
+
+export const ScenarioHead = ({ scenario, product, editing, saving, level, levels, onLevel }: ScenarioHeadProps) => {
+  const format = useChainFormat();
+  const { may, stores, weeks, state } = scenario;
+  return (
+    <PageHeader
+      title={editing.edit.name}
+      heading={<ScenarioName name={editing.edit.name} readOnly={!may.edit} onRename={(name) => editing.change({ name })} />}
+      facts={[
+        product?.name ?? scenario.product,
+        stores.length === 1 ? `store ${stores[0]}` : countOf(stores.length, "store"),
+        format.weekSpan(weeks.first, weeks.last),
+        may.edit ? <SaveLine state={saving.state} onRetry={saving.retry} /> : `${state}, can be read only`,
+      ]}
+      actions={
+        <>
+          {may.edit && (
+            <div className="flex gap-1">
+              <IconButton label="Undo (Ctrl Z)" disabled={!editing.canUndo} onClick={editing.undo}>
+                <Undo2 />
+              </IconButton>
+              <IconButton label="Redo (Ctrl Y)" disabled={!editing.canRedo} onClick={editing.redo}>
+                <Redo2 />
+              </IconButton>
+            </div>
+          )}
+          <SegmentedControl
+            label="Level of the intervals"
+            segments={levels.map((one) => ({ value: String(one), label: `${format.percent(one)} interval` }))}
+            value={String(level)}
+            onChange={(text) => onLevel(Number(text))}
+          />
+          <ScenarioMenu scenario={scenario} />
+        </>
+      }
+    />
+  );
+};
