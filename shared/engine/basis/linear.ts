@@ -13,15 +13,21 @@ const role = "linear";
 export const linear: BasisKind<LinearTerm, LinearBasis> = {
   learn(term, _id, data) {
     const x = covariate(data, term, role);
+    const isLog = term.log === true;
+    const seen = seenNumbers(isLog ? numberColumn(data, term.column, role) : x);
     const centre = mean(x);
-    const values = x.map((value) => value - centre);
-    const spread = Math.sqrt(mean(values.map((value) => value * value)));
+    const values = new Float64Array(x.length);
+    let squares = 0;
+    for (let row = 0; row < x.length; row++) {
+      values[row] = x[row] - centre;
+      squares += values[row] * values[row];
+    }
+    const spread = Math.sqrt(squares / x.length);
     // What is left of a constant column is rounding: kept at zero, so that it is found to be the intercept's and dropped.
     const isConstant = !(spread > 1e-13 * Math.abs(centre));
     if (isConstant) values.fill(0);
-    const seen = seenNumbers(numberColumn(data, term.column, role));
     return {
-      basis: { kind: "linear", column: term.column, log: term.log === true, centre, scale: isConstant ? 1 : spread },
+      basis: { kind: "linear", column: term.column, log: isLog, centre, scale: isConstant ? 1 : spread },
       rows: { storage: "single", width: 1, values },
       seen,
       observedRange: rangeOf(seen.values),

@@ -8,14 +8,15 @@ import type { SeenValues } from "../types";
  */
 export function seenNumbers(values: Float64Array): { values: Float64Array; counts: Float64Array } {
   const sorted = values.slice().sort();
-  const distinct = new Float64Array(sorted.length);
-  const counts = new Float64Array(sorted.length);
-  let used = 0;
+  let distinct = sorted.length === 0 ? 0 : 1;
+  for (let at = 1; at < sorted.length; at++) if (sorted[at] !== sorted[at - 1]) distinct++;
+  const seen = { values: new Float64Array(distinct), counts: new Float64Array(distinct) };
+  let used = -1;
   for (let at = 0; at < sorted.length; at++) {
-    if (at === 0 || sorted[at] !== sorted[at - 1]) distinct[used++] = sorted[at];
-    counts[used - 1]++;
+    if (at === 0 || sorted[at] !== sorted[at - 1]) seen.values[++used] = sorted[at];
+    seen.counts[used]++;
   }
-  return { values: distinct.slice(0, used), counts: counts.slice(0, used) };
+  return seen;
 }
 
 /**

@@ -16,26 +16,26 @@ export const smooth: BasisKind<SmoothTerm, SmoothBasis> = {
   learn(term, id, data) {
     const size = checkSize(term.size ?? defaultSize, id);
     const x = covariate(data, term, role);
-    const onScale = seenNumbers(x);
-    checkDistinct(onScale.values, term.column, id);
-    const [smallest, largest] = rangeOf(onScale.values);
+    const isLog = term.log === true;
+    const seen = seenNumbers(isLog ? numberColumn(data, term.column, role) : x);
+    checkDistinct(seen.values, term.column, id);
+    const observedRange = rangeOf(seen.values);
+    const smallest = isLog ? Math.log(observedRange[0]) : observedRange[0];
+    const largest = isLog ? Math.log(observedRange[1]) : observedRange[1];
     const margin = widening * (largest - smallest);
     const basis: SmoothBasis = {
       kind: "smooth",
       column: term.column,
-      log: term.log === true,
+      log: isLog,
       size,
       lower: smallest - margin,
       upper: largest + margin,
       centring: new Float64Array(size),
     };
-    const seen = basis.log ? seenNumbers(numberColumn(data, term.column, role)) : onScale;
     return {
-      basis,
+      basis, seen, observedRange,
       rows: splineRows(x, gridOf(basis)),
-      seen,
-      observedRange: rangeOf(seen.values),
-      warnings: fewValuesWarning(onScale.values.length, size, id),
+      warnings: fewValuesWarning(seen.values.length, size, id),
     };
   },
   rows: (basis, data) => splineRows(covariate(data, basis, role), gridOf(basis)),

@@ -35,25 +35,45 @@ function movable(search: PenaltySearch, automatic: readonly number[]): number[] 
   });
 }
 
+/** Step of a block whose criterion bends downwards: any length that lowers it will do, and shorter is slower. */
+const downhillStep = 3;
+
 /** Newton direction of the movable blocks; where the Hessian is not positive definite, each by its own curvature. */
 function newtonDirection(search: PenaltySearch, free: readonly number[]): Float64Array {
   const { gradient, hessian } = search.current;
   const count = search.blocks.length;
   const size = free.length;
   const matrix = new Float64Array(size * size);
-  free.forEach((row, i) => free.forEach((column, j) => { matrix[i * size + j] = hessian[row * count + column]; }));
-  const direction = Float64Array.from(free, (block) => -gradient[block]);
+  const direction = new Float64Array(size);
+  for (let i = 0; i < size; i++) {
+    direction[i] = -gradient[free[i]];
+    for (let j = 0; j < size; j++) matrix[i * size + j] = hessian[free[i] * count + free[j]];
+  }
   if (choleskyInPlace(matrix, size)) {
     forwardSolve(matrix, size, direction);
     backwardSolve(matrix, size, direction);
   } else {
-    free.forEach((block, i) => {
-      const curvature = Math.abs(hessian[block * count + block]);
-      direction[i] = -gradient[block] / Math.max(curvature, 0.2 * Math.abs(gradient[block]), Number.MIN_VALUE * 1e30);
-    });
+    for (let i = 0; i < size; i++) {
+      const curvature = hessian[free[i] * count + free[i]];
+      const slope = gradient[free[i]];
+      direction[i] = curvature > 0.2 * Math.abs(slope) ? -slope / curvature : -downhillStep * Math.sign(slope);
+    }
   }
-  const longest = direction.reduce((most, step) => Math.max(most, Math.abs(step)), 0);
-  return longest > longestStep ? direction.map((step) => (step * longestStep) / longest) : direction;
+  let longest = 0;
+  for (let i = 0; i < size; i++) longest = Math.max(longest, Math.abs(direction[i]));
+  for (let i = 0; i < size; i++) {
+    if (longest > longestStep) direction[i] *= longestStep / longest;
+    if (isInTail(search, free[i], direction[i])) direction[i] = search.highest[free[i]] - search.lowest[free[i]];
+  }
+  return direction;
+}
+
+/**
+ * Whether a block's criterion falls towards its limit as exp(-log penalty), which Newton would follow one unit a step:
+ * the penalty goes to its limit at once.
+ */
+function isInTail(search: PenaltySearch, block: number, step: number): boolean {
+  return Math.abs(step - 1) < 0.1 && search.current.edf[block] < 0.5;
 }
 
 /**
@@ -84,12 +104,16 @@ function descend(search: PenaltySearch, reduced: ReducedSystem, free: readonly n
   const allowance = 1e-13 * Math.abs(before);
   for (let fraction = 1; fraction > 1e-7; fraction /= 2) {
     const next = from.slice();
-    free.forEach((block, i) => { next[block] = withinBounds(search, block, from[block] + fraction * direction[i]); });
+    for (let i = 0; i < free.length; i++) next[free[i]] = withinBounds(search, free[i], from[free[i]] + fraction * direction[i]);
     if (tryPenalties(search, reduced, next, (trial) => trial.criterion <= before + allowance)) return true;
   }
   return false;
 }
 
 function isNear(search: PenaltySearch, automatic: readonly number[], known: Float64Array): boolean {
-  return automatic.every((block) => Math.abs(search.current.logPenalties[block] - known[block]) < 0.25);
+  const { logPenalties, gradient, edf } = search.current;
+  return automatic.every((block) => {
+    const bothGoToTheLimit = known[block] >= search.highest[block] && edf[block] < 0.1 && gradient[block] < 0;
+    return bothGoToTheLimit || Math.abs(logPenalties[block] - known[block]) < 0.25;
+  });
 }

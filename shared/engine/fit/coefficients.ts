@@ -19,13 +19,44 @@ export function solveCoordinates(reduced: ReducedSystem, state: LikelihoodState)
   return coordinates;
 }
 
-/** (X'WX + S)^-1 in fitting coordinates, row-major; zero for dropped columns. O(size^3). */
+/**
+ * (X'WX + S)^-1 in fitting coordinates, row-major; zero for dropped columns. With K = A_00^-1 A_0q its blocks are
+ * A_00^-1 + K H^-1 K', -K H^-1 and H^-1 (Golub & Van Loan 1996, section 3.2, partitioned inverse). O(size^3).
+ */
 export function coordinateCovariance(reduced: ReducedSystem, state: LikelihoodState): Float64Array {
   const { unpenalised, size, factor, dropped } = reduced;
   const all = unpenalised + size;
   const covariance = new Float64Array(all * all);
   const inverse = new Float64Array(unpenalised * unpenalised);
-  const back = reduced.cross.slice();
+  invertFactored(factor.slice(), unpenalised, inverse);
+  for (const { column } of dropped) inverse[column * unpenalised + column] = 0;
+  const back = backSolvedCross(reduced);
+  const spread = new Float64Array(size);
+  for (let row = 0; row < unpenalised; row++) {
+    spread.fill(0);
+    for (let k = 0; k < size; k++) {
+      const weight = back[row * size + k];
+      for (let column = 0; column < size; column++) spread[column] += weight * state.inverse[k * size + column];
+    }
+    for (let column = 0; column < unpenalised; column++) {
+      let sum = inverse[row * unpenalised + column];
+      for (let k = 0; k < size; k++) sum += spread[k] * back[column * size + k];
+      covariance[row * all + column] = sum;
+    }
+    for (let column = 0; column < size; column++) {
+      covariance[row * all + unpenalised + column] = -spread[column];
+      covariance[(unpenalised + column) * all + row] = -spread[column];
+    }
+  }
+  for (let row = 0; row < size; row++) {
+    covariance.set(state.inverse.subarray(row * size, (row + 1) * size), (unpenalised + row) * all + unpenalised);
+  }
+  return covariance;
+}
+
+/** K = A_00^-1 A_0q = L^-T (L^-1 A_0q), row-major unpenalised x size. */
+function backSolvedCross({ unpenalised, size, factor, cross }: ReducedSystem): Float64Array {
+  const back = cross.slice();
   for (let row = unpenalised - 1; row >= 0; row--) {
     for (let k = row + 1; k < unpenalised; k++) {
       const weight = factor[k * unpenalised + row];
@@ -33,39 +64,36 @@ export function coordinateCovariance(reduced: ReducedSystem, state: LikelihoodSt
     }
     for (let column = 0; column < size; column++) back[row * size + column] /= factor[row * unpenalised + row];
   }
-  const spread = new Float64Array(unpenalised * size);
-  for (let row = 0; row < unpenalised; row++) {
-    for (let k = 0; k < size; k++) {
-      const weight = back[row * size + k];
-      for (let column = 0; column < size; column++) spread[row * size + column] += weight * state.inverse[k * size + column];
-    }
-  }
-  invertFactored(factor.slice(), unpenalised, inverse);
-  for (const { column } of dropped) inverse[column * unpenalised + column] = 0;
-  for (let row = 0; row < unpenalised; row++) {
-    for (let column = 0; column < unpenalised; column++) {
-      let sum = inverse[row * unpenalised + column];
-      for (let k = 0; k < size; k++) sum += spread[row * size + k] * back[column * size + k];
-      covariance[row * all + column] = sum;
-    }
-    for (let column = 0; column < size; column++) {
-      covariance[row * all + unpenalised + column] = -spread[row * size + column];
-      covariance[(unpenalised + column) * all + row] = -spread[row * size + column];
-    }
-  }
-  for (let row = 0; row < size; row++) {
-    for (let column = 0; column < size; column++) {
-      covariance[(unpenalised + row) * all + unpenalised + column] = state.inverse[row * size + column];
-    }
-  }
-  return covariance;
+  return back;
 }
 
 /**
- * The linear map from fitting coordinates to coefficients, row-major rawSize x size: each term by its own transform, each
- * curve less its mean over the rows, the means moved to the intercept.
+ * The linear map from fitting coordinates to coefficients, kept by rows without its zeros: row r has
+ * `values[k]` in `columns[k]` for k from `starts[r]` to `starts[r + 1]`.
  */
-export function coefficientMap(design: Design): Float64Array {
+export type CoefficientMap = { rows: number; starts: Int32Array; columns: Int32Array; values: Float64Array };
+
+/** Each term by its own transform, each curve less its mean over the rows, the means moved to the intercept. */
+export function coefficientMap(design: Design): CoefficientMap {
+  const dense = denseMap(design);
+  const { size, rawSize } = design;
+  const starts = new Int32Array(rawSize + 1);
+  const columns = new Int32Array(rawSize * size);
+  const values = new Float64Array(rawSize * size);
+  let used = 0;
+  for (let row = 0; row < rawSize; row++) {
+    for (let column = 0; column < size; column++) {
+      const value = dense[row * size + column];
+      if (value === 0) continue;
+      columns[used] = column;
+      values[used++] = value;
+    }
+    starts[row + 1] = used;
+  }
+  return { rows: rawSize, starts, columns, values };
+}
+
+function denseMap(design: Design): Float64Array {
   const { size, rawSize } = design;
   const map = new Float64Array(rawSize * size);
   map[0] = 1;
@@ -97,37 +125,33 @@ function writePart(part: DesignTerm, map: Float64Array, size: number): void {
 }
 
 /** map x coordinates. */
-export function applyMap(map: Float64Array, coordinates: Float64Array, rawSize: number): Float64Array {
-  const size = coordinates.length;
-  const coefficients = new Float64Array(rawSize);
-  for (let row = 0; row < rawSize; row++) {
+export function applyMap(map: CoefficientMap, coordinates: Float64Array): Float64Array {
+  const { rows, starts, columns, values } = map;
+  const coefficients = new Float64Array(rows);
+  for (let row = 0; row < rows; row++) {
     let sum = 0;
-    for (let k = 0; k < size; k++) sum += map[row * size + k] * coordinates[k];
+    for (let k = starts[row]; k < starts[row + 1]; k++) sum += values[k] * coordinates[columns[k]];
     coefficients[row] = sum;
   }
   return coefficients;
 }
 
-/** map x covariance x map' x scale, packed lower triangle. Zeros of the map are skipped. */
-export function mapCovariance(
-  map: Float64Array, covariance: Float64Array, sizes: { size: number; rawSize: number; scale: number },
-): Float64Array {
-  const { size, rawSize, scale } = sizes;
-  const half = new Float64Array(rawSize * size);
-  const packed = new Float64Array((rawSize * (rawSize + 1)) / 2);
-  for (let row = 0; row < rawSize; row++) {
-    const start = row * size;
-    for (let k = 0; k < size; k++) {
-      const weight = map[start + k] * scale;
-      if (weight === 0) continue;
-      for (let column = 0; column < size; column++) half[start + column] += weight * covariance[k * size + column];
-    }
-  }
+/** map x covariance x map' x scale, packed lower triangle; the covariance is row-major size x size. */
+export function mapCovariance(map: CoefficientMap, covariance: Float64Array, size: number, scale: number): Float64Array {
+  const { rows, starts, columns, values } = map;
+  const packed = new Float64Array((rows * (rows + 1)) / 2);
+  const half = new Float64Array(size);
   let at = 0;
-  for (let row = 0; row < rawSize; row++) {
-    for (let column = 0; column <= row; column++) {
+  for (let row = 0; row < rows; row++) {
+    half.fill(0);
+    for (let k = starts[row]; k < starts[row + 1]; k++) {
+      const weight = values[k] * scale;
+      const from = columns[k] * size;
+      for (let column = 0; column < size; column++) half[column] += weight * covariance[from + column];
+    }
+    for (let other = 0; other <= row; other++) {
       let sum = 0;
-      for (let k = 0; k < size; k++) sum += half[row * size + k] * map[column * size + k];
+      for (let k = starts[other]; k < starts[other + 1]; k++) sum += values[k] * half[columns[k]];
       packed[at++] = sum;
     }
   }

@@ -1,5 +1,6 @@
 import { bestPenalties, planPenalties } from "./choose-penalties";
 import { solveCoordinates } from "./coefficients";
+import type { CoefficientMap } from "./coefficients";
 import type { Design } from "./design";
 import { createScratch, normalEquations } from "./normal-equations";
 import { predictorOf } from "./predictor";
@@ -17,7 +18,7 @@ export type ExactRows = { response: Float64Array; offset: Float64Array; weights:
  * @throws EngineError too-few-rows.
  * @example fitExact(design, { response, offset, weights }, coefficientMap(design)).criterion;
  */
-export function fitExact(design: Design, rows: ExactRows, map: Float64Array): WorkingFit {
+export function fitExact(design: Design, rows: ExactRows, map: CoefficientMap): WorkingFit {
   const { response, offset, weights } = rows;
   const working = response.map((value, row) => value - offset[row]);
   const equations = normalEquations(design, { response: working, weights }, createScratch(design));

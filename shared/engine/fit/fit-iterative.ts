@@ -3,6 +3,7 @@ import type { DroppedColumn } from "../linalg/dropping-cholesky";
 import { planPenalties, refinePenalties, startPenalties } from "./choose-penalties";
 import type { PenaltyPlan } from "./choose-penalties";
 import { solveCoordinates } from "./coefficients";
+import type { CoefficientMap } from "./coefficients";
 import type { Design } from "./design";
 import { createScratch, normalEquations } from "./normal-equations";
 import type { Scratch } from "./normal-equations";
@@ -21,7 +22,7 @@ type Problem = {
   design: Design;
   family: IterativeRules;
   rows: IterativeRows;
-  map: Float64Array;
+  map: CoefficientMap;
   plan: PenaltyPlan;
   scratch: Scratch;
   maxIterations: number;
@@ -44,7 +45,7 @@ const movementTolerance = 1e-14;
  * @example fitIterative(design, familyRules, { response, offset, weights }, { map, maxIterations: 200 }).converged;
  */
 export function fitIterative(
-  design: Design, family: IterativeRules, rows: IterativeRows, options: { map: Float64Array; maxIterations: number },
+  design: Design, family: IterativeRules, rows: IterativeRows, options: { map: CoefficientMap; maxIterations: number },
 ): WorkingFit {
   const count = rows.response.length;
   const problem: Problem = {

@@ -7,6 +7,7 @@ import { addRowsTimes } from "../linalg/sparse-rows";
 import type { FitOptions, FittedModel, FittedTerm, ModelData, ModelSpec } from "../types";
 import { checkSpec } from "./check-spec";
 import { applyMap, coefficientMap, coordinateCovariance, mapCovariance } from "./coefficients";
+import type { CoefficientMap } from "./coefficients";
 import type { Design } from "./design";
 import { buildDesign } from "./design";
 import { fitExact } from "./fit-exact";
@@ -61,7 +62,7 @@ type Parts = {
   family: FamilyRules;
   rows: FittedRows;
   design: Design;
-  map: Float64Array;
+  map: CoefficientMap;
   fit: WorkingFit;
 };
 
@@ -70,9 +71,8 @@ function assembleModel(parts: Parts): FittedModel {
   const { current } = fit.search;
   const edf = fit.reduced.unpenalisedKept + current.edf.reduce((sum, value) => sum + value, 0);
   const measures = goodness(family, rows, fit, edf);
-  const coefficients = applyMap(map, fit.coordinates, design.rawSize);
-  const { size, rawSize } = design;
-  const covariance = mapCovariance(map, coordinateCovariance(fit.reduced, current), { size, rawSize, scale: measures.dispersion });
+  const coefficients = applyMap(map, fit.coordinates);
+  const covariance = mapCovariance(map, coordinateCovariance(fit.reduced, current), design.size, measures.dispersion);
   const terms = fittedTerms(design, fit);
   const warnings = [...design.warnings, ...fitWarnings({ design, fit, rows, family: spec.family, isPerfect: measures.isPerfect })];
   return {

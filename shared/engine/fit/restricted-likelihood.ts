@@ -5,6 +5,7 @@ import type { ReducedSystem } from "./reduced-system";
 /** The restricted likelihood and all that follows from one set of penalties; arrays are reused by the next evaluation. */
 export type LikelihoodState = {
   logPenalties: Float64Array;
+  penalties: Float64Array;
   /** 1/2 [(n - Mp) ln(D + b'Sb) + ln|X'WX + S| - ln|S|+]; Infinity where the system is singular. */
   criterion: number;
   /** With respect to the log penalties. */
@@ -30,6 +31,7 @@ export const perfectShare = 1e-13;
 export function createState(size: number, blocks: number): LikelihoodState {
   return {
     logPenalties: new Float64Array(blocks),
+    penalties: new Float64Array(blocks),
     criterion: Infinity,
     gradient: new Float64Array(blocks),
     hessian: new Float64Array(blocks * blocks),
@@ -61,13 +63,15 @@ export function evaluateLikelihood(
   const { size, vector, rowCount, unpenalisedKept } = reduced;
   const { blocks, logPenalties, work } = at;
   state.logPenalties.set(logPenalties);
+  const { penalties } = state;
   work.set(reduced.matrix);
   let logPenaltyDeterminant = 0;
-  blocks.forEach(({ start, end }, j) => {
-    const penalty = Math.exp(logPenalties[j]);
-    for (let k = start; k < end; k++) work[k * size + k] += penalty;
+  for (let j = 0; j < blocks.length; j++) {
+    const { start, end } = blocks[j];
+    penalties[j] = Math.exp(logPenalties[j]);
+    for (let k = start; k < end; k++) work[k * size + k] += penalties[j];
     logPenaltyDeterminant += (end - start) * logPenalties[j];
-  });
+  }
   if (!choleskyInPlace(work, size)) {
     state.criterion = Infinity;
     return;
@@ -88,38 +92,45 @@ export function evaluateLikelihood(
 
 function fillDerivatives(reduced: ReducedSystem, blocks: readonly PenaltyBlock[], state: LikelihoodState): void {
   const { size } = reduced;
-  const { coefficients, inverse, logPenalties, gradient, hessian, determinantHessian, edf, squares } = state;
+  const { coefficients, inverse, penalties, gradient, edf, squares } = state;
   const freedom = reduced.rowCount - reduced.unpenalisedKept;
-  const residual = state.penalisedResidual;
-  const count = blocks.length;
-  blocks.forEach(({ start, end }, j) => {
+  for (let j = 0; j < blocks.length; j++) {
+    const { start, end } = blocks[j];
     let trace = 0;
     let square = 0;
     for (let k = start; k < end; k++) {
       trace += inverse[k * size + k];
       square += coefficients[k] * coefficients[k];
     }
-    const penalty = Math.exp(logPenalties[j]);
     squares[j] = square;
-    edf[j] = end - start - penalty * trace;
-    gradient[j] = 0.5 * ((freedom * penalty * square) / residual - edf[j]);
-  });
-  for (let j = 0; j < count; j++) {
-    for (let k = 0; k <= j; k++) {
-      const { form, norm } = blockProducts(state, size, blocks[j], blocks[k]);
-      const penalties = Math.exp(logPenalties[j] + logPenalties[k]);
-      const slopeJ = Math.exp(logPenalties[j]) * squares[j];
-      const slopeK = Math.exp(logPenalties[k]) * squares[k];
-      const own = j === k ? 1 : 0;
-      const ofDeterminant = own * (blocks[j].end - blocks[j].start - edf[j]) - penalties * norm;
-      const ofResidual = own * slopeJ - 2 * penalties * form;
-      const value = 0.5 * (freedom * (ofResidual / residual - (slopeJ / residual) * (slopeK / residual)) + ofDeterminant);
-      hessian[j * count + k] = value;
-      hessian[k * count + j] = value;
-      determinantHessian[j * count + k] = ofDeterminant;
-      determinantHessian[k * count + j] = ofDeterminant;
-    }
+    edf[j] = end - start - penalties[j] * trace;
+    gradient[j] = 0.5 * ((freedom * penalties[j] * square) / state.penalisedResidual - edf[j]);
   }
+  for (let j = 0; j < blocks.length; j++) {
+    for (let k = 0; k <= j; k++) fillSecondDerivative({ state, size, freedom, blocks }, j, k);
+  }
+}
+
+function fillSecondDerivative(
+  of: { state: LikelihoodState; size: number; freedom: number; blocks: readonly PenaltyBlock[] }, j: number, k: number,
+): void {
+  const { state, blocks, freedom } = of;
+  const { penalties, squares, edf, penalisedResidual: residual } = state;
+  const count = blocks.length;
+  const { form, norm } = blockProducts(state, of.size, blocks[j], blocks[k]);
+  const product = penalties[j] * penalties[k];
+  let ofDeterminant = -product * norm;
+  let ofResidual = -2 * product * form;
+  if (j === k) {
+    ofDeterminant += blocks[j].end - blocks[j].start - edf[j];
+    ofResidual += penalties[j] * squares[j];
+  }
+  const slopes = ((penalties[j] * squares[j]) / residual) * ((penalties[k] * squares[k]) / residual);
+  const value = 0.5 * (freedom * (ofResidual / residual - slopes) + ofDeterminant);
+  state.hessian[j * count + k] = value;
+  state.hessian[k * count + j] = value;
+  state.determinantHessian[j * count + k] = ofDeterminant;
+  state.determinantHessian[k * count + j] = ofDeterminant;
 }
 
 /** b_j'(H^-1)_jk b_k and the sum of squares of (H^-1)_jk. */
