@@ -1,5 +1,5 @@
 import { useEffect, useState } from "react";
-import { useQuery, useQueryClient, queryOptions } from "@tanstack/react-query";
+import { queryOptions, useQuery, useQueryClient } from "@tanstack/react-query";
 import { getJob, getJobEvents, jobSchema } from "@shared/contract/jobs";
 import type { Job } from "@shared/contract/jobs";
 import { call, endpointAddress } from "./api-client";
@@ -10,30 +10,35 @@ export const jobQuery = (id: string) =>
 
 export const hasEnded = (job: Job): boolean => job.state !== "queued" && job.state !== "running";
 
+const pollEveryMs = 2000;
+
+type WatchedJob = { job: Job | undefined; updatedAtMs: number };
+
 /** A job as it goes on, by server-sent events; where those cannot be had it is asked for every two seconds. */
-export const useJob = (id: string | null, onEnd?: (job: Job) => void): Job | undefined => {
+export const useJob = (id: string | null, onEnd?: (job: Job) => void): WatchedJob => {
   const queryClient = useQueryClient();
-  const [streaming, setStreaming] = useState(true);
+  const [isStreaming, setStreaming] = useState(false);
   const query = useQuery({
     ...jobQuery(id ?? ""),
     enabled: id !== null,
-    refetchInterval: ({ state }) => (streaming || (state.data && hasEnded(state.data)) ? false : 2000),
+    staleTime: 0,
+    refetchInterval: ({ state }) => (isStreaming || (state.data && hasEnded(state.data)) ? false : pollEveryMs),
   });
   const isOver = query.data ? hasEnded(query.data) : false;
 
   useEffect(() => {
     if (!id || isOver || typeof EventSource === "undefined") return;
     const source = new EventSource(endpointAddress(getJobEvents, { params: { id } }));
-    const receive = (event: MessageEvent<string>) => {
+    source.onopen = () => setStreaming(true);
+    source.onmessage = (event: MessageEvent<string>) => {
       const job = jobSchema.safeParse(parseJson(event.data));
       if (job.success) queryClient.setQueryData(jobQuery(id).queryKey, job.data);
     };
-    source.onopen = () => setStreaming(true);
-    source.onmessage = receive;
-    source.addEventListener("progress", receive);
-    source.addEventListener("job", receive);
     source.onerror = () => setStreaming(false);
-    return () => source.close();
+    return () => {
+      source.close();
+      setStreaming(false);
+    };
   }, [id, isOver, queryClient]);
 
   const ended = query.data && isOver ? query.data : undefined;
@@ -42,5 +47,5 @@ export const useJob = (id: string | null, onEnd?: (job: Job) => void): Job | und
     // Told once per ending, however often the caller makes a new function.
     // eslint-disable-next-line react-hooks/exhaustive-deps
   }, [ended?.id, ended?.state]);
-  return query.data;
+  return { job: query.data, updatedAtMs: query.dataUpdatedAt };
 };

@@ -28,6 +28,9 @@ export const Shell = () => {
   }, [location.pathname]);
 
   if (!session) return <Navigate to={paths.signIn.href(`${location.pathname}${location.search}`)} replace />;
+  if (session.person.mustChangePassword && location.pathname !== paths.password.path) {
+    return <Navigate to={paths.password.href()} replace />;
+  }
   return (
     <ChainFormatContext.Provider value={format}>
       <SkipLink target={contentId} />

@@ -16,11 +16,11 @@ export const ColumnHeading = <Row,>({ column, sorted, onSort }: ColumnHeadingPro
     scope="col"
     aria-sort={sorted === "asc" ? "ascending" : sorted === "desc" ? "descending" : undefined}
     className={classNames(
-      "h-10 border-b border-hairline px-3 text-sm font-medium whitespace-nowrap text-muted",
+      "h-10 border-b border-hairline px-3 text-sm first:pl-4 last:pr-4 sm:first:pl-5 sm:last:pr-5 font-medium whitespace-nowrap text-muted",
       columnClass(column),
     )}
   >
-    <span className={classNames("inline-flex items-center gap-1.5", column.align === "right" && "flex-row-reverse")}>
+    <span className={classNames("flex items-center gap-1.5", column.align === "right" && "flex-row-reverse")}>
       {column.meaning ? <Term meaning={column.meaning}>{column.header}</Term> : !onSort && column.header}
       {onSort && (
         <button

@@ -33,8 +33,6 @@ export const DataTable = <Row extends object>(props: DataTableProps<Row>) => {
   const sorted = table.getRowModel().rows;
   const scroller = useRef<HTMLDivElement>(null);
   const isVirtual = sorted.length > virtualFrom;
-  // The rule is for the React Compiler, which this build does not use.
-  // eslint-disable-next-line react-hooks/incompatible-library
   const virtualizer = useVirtualizer({
     count: sorted.length,
     getScrollElement: () => scroller.current,
@@ -92,7 +90,7 @@ export const DataTable = <Row extends object>(props: DataTableProps<Row>) => {
           <tfoot className="sticky bottom-0 bg-sheet">
             <tr>
               {columns.map((column) => (
-                <td key={column.id} className={classNames("border-t border-control px-3 py-2 font-semibold", columnClass(column))}>
+                <td key={column.id} className={classNames("border-t border-control px-3 py-2 font-semibold first:pl-4 last:pr-4 sm:first:pl-5 sm:last:pr-5", columnClass(column))}>
                   {column.total?.(sorted.map((row) => row.original))}
                 </td>
               ))}
@@ -130,7 +128,7 @@ const BodyRow = <Row extends object>({ columns, selectedKey, onRowClick, row, id
       <td
         key={column.id}
         style={{ height: rowHeight }}
-        className={classNames("border-b border-hairline px-3 py-1 group-last/row:border-b-0", columnClass(column))}
+        className={classNames("border-b border-hairline px-3 py-1 first:pl-4 last:pr-4 sm:first:pl-5 sm:last:pr-5 group-last/row:border-b-0", columnClass(column))}
       >
         {column.cell ? column.cell(row) : column.value(row)}
       </td>

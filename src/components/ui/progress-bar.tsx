@@ -1,52 +1,41 @@
-import { formatNumber } from "@/lib/format/number";
 import { formatDuration } from "@/lib/format/date";
-import { thinSpace } from "@/lib/format/glyphs";
+import { formatPercent } from "@/lib/format/percent";
 
 type ProgressBarProps = {
   label: string;
-  done: number;
-  /** Null while it is not known how much there is. */
-  total: number | null;
-  /** What is counted: "rows", "stores". */
-  counted?: string;
+  /** 0 to 1; null while it is not known how much there is. */
+  share: number | null;
+  /** Counts, in words: "12,400 of 106,139 rows". */
+  note?: string;
   secondsLeft?: number | null;
-  /** Writes an amount; whole numbers by default. */
-  format?: (amount: number) => string;
 };
 
 /** Work that takes a while: how much is done, of how much, and the time left. */
-export const ProgressBar = (props: ProgressBarProps) => {
-  const { label, done, total, counted, secondsLeft, format = formatNumber } = props;
-  const share = total ? Math.min(1, done / total) : null;
-  const counts = total === null ? format(done) : `${format(done)} of ${format(total)}`;
+export const ProgressBar = ({ label, share, note, secondsLeft = null }: ProgressBarProps) => {
+  const percent = share === null ? undefined : Math.floor(Math.min(1, Math.max(0, share)) * 100);
   return (
     <div>
       <div className="mb-1.5 flex items-baseline justify-between gap-3">
         <span className="font-medium">{label}</span>
-        {share !== null && (
-          <span className="text-sm text-muted">
-            {Math.floor(share * 100)}
-            {thinSpace}%
-          </span>
-        )}
+        {percent !== undefined && <span className="text-sm text-muted">{formatPercent(percent / 100)}</span>}
       </div>
       <div
         role="progressbar"
         aria-label={label}
         aria-valuemin={0}
         aria-valuemax={100}
-        aria-valuenow={share === null ? undefined : Math.floor(share * 100)}
-        aria-valuetext={`${counts} ${counted ?? ""}`.trim()}
+        aria-valuenow={percent}
+        aria-valuetext={note}
         className="h-1.5 overflow-hidden rounded-full bg-grid"
       >
         <div
-          className={share === null ? "h-full w-1/3 animate-pulse rounded-full bg-accent" : "h-full rounded-full bg-accent"}
-          style={share === null ? undefined : { width: `${share * 100}%` }}
+          className={percent === undefined ? "h-full w-1/3 animate-pulse rounded-full bg-accent" : "h-full rounded-full bg-accent"}
+          style={percent === undefined ? undefined : { width: `${percent}%` }}
         />
       </div>
       <p className="mt-1.5 text-sm text-muted">
-        {counts} {counted}
-        {typeof secondsLeft === "number" && ` · ${formatDuration(secondsLeft)} left`}
+        {note}
+        {secondsLeft !== null && ` · ${formatDuration(secondsLeft)} left`}
       </p>
     </div>
   );

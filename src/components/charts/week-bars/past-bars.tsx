@@ -5,6 +5,9 @@ import type { PastWeek, WeekLayout } from "./week-layout";
 
 type PastBarsProps = { weeks: readonly PastWeek[]; bars: WeekLayout["past"]; y: Scale; foot: number };
 
+/** Counted from the newest, which stands too near the plan's first label to carry its own. */
+const isLabelled = (fromNewest: number, every: number) => fromNewest % every === (every > 1 ? 1 : 0);
+
 /** Weeks that were. They stay as they are while the plan moves. */
 export const PastBars = memo(function PastBars({ weeks, bars, y, foot }: PastBarsProps) {
   const zero = y.toPixel(0);
@@ -20,7 +23,7 @@ export const PastBars = memo(function PastBars({ weeks, bars, y, foot }: PastBar
         );
       })}
       {bars
-        .filter((bar) => (bars.length - 1 - (bar.index - bars[0].index)) % every === 0)
+        .filter((bar) => isLabelled(bars.length - 1 - (bar.index - bars[0].index), every))
         .map((bar) => (
           <text key={bar.week} className="chart-text" x={bar.middle} y={foot - 9} textAnchor="middle">
             {bar.label}

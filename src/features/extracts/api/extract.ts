@@ -1,0 +1,10 @@
+import { queryOptions } from "@tanstack/react-query";
+import { getExtract } from "@shared/contract/extracts";
+import { call } from "@/lib/api-client";
+
+export const extractQuery = (id: string) =>
+  queryOptions({
+    queryKey: ["extract", id],
+    queryFn: ({ signal }) => call(getExtract, { params: { id }, signal }),
+    staleTime: 5000,
+  });

@@ -1,0 +1,40 @@
+import type { Extract, ExtractKind } from "@shared/contract/extracts";
+import type { TagTone } from "@/components/ui/tag";
+
+type State = Extract["state"];
+
+const stateWords: Record<State, { word: string; tone: TagTone }> = {
+  received: { word: "Received", tone: "neutral" },
+  checking: { word: "Checking", tone: "accent" },
+  checked: { word: "Ready to load", tone: "accent" },
+  unusable: { word: "Cannot be used", tone: "danger" },
+  loading: { word: "Loading", tone: "accent" },
+  loaded: { word: "Loaded", tone: "good" },
+  withdrawn: { word: "Withdrawn", tone: "neutral" },
+};
+
+/** What to call an extract's state, and how loud. */
+export const describeState = ({ state, rows }: Pick<Extract, "state" | "rows">): { word: string; tone: TagTone } => {
+  if (state === "checked" && rows && rows.usable === 0) return { word: "No usable rows", tone: "danger" };
+  if (state === "checked" && rows && rows.errors > 0) return { word: "Ready, with errors", tone: "caution" };
+  return stateWords[state];
+};
+
+/** Whether a job works on it, or soon will, so that it changes by itself. */
+export const isInWork = ({ state, failure }: Pick<Extract, "state" | "failure">): boolean =>
+  state === "checking" || state === "loading" || (state === "received" && failure === null);
+
+export const kindNames: Record<ExtractKind, string> = {
+  sales: "Sales",
+  stores: "Stores",
+  products: "Products",
+  events: "Events",
+  temperatures: "Temperatures",
+};
+
+/** What a file most likely holds, by its name; people correct it where it is wrong. */
+export const kindFromName = (fileName: string): ExtractKind => {
+  const name = fileName.toLowerCase();
+  const named = (Object.keys(kindNames) as ExtractKind[]).find((kind) => name.includes(kind.slice(0, -1)));
+  return named ?? (/weather|temp/.test(name) ? "temperatures" : "sales");
+};
