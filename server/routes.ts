@@ -6,9 +6,12 @@ import { extractsRoutes } from "./features/extracts";
 import { jobsRoutes } from "./features/jobs";
 import { scenariosRoutes } from "./features/scenarios";
 import { storesRoutes } from "./features/stores";
+import { descriptionRoute } from "./http/description-route";
 import type { Route } from "./http/route";
 
-/** Every route of the HTTP interface. */
-export const routes: readonly Route[] = [
+const features: readonly Route[] = [
   ...chainRoutes, ...accountsRoutes, ...jobsRoutes, ...catalogueRoutes, ...extractsRoutes, ...driversRoutes, ...storesRoutes, ...scenariosRoutes,
 ];
+
+/** Every route of the HTTP interface. */
+export const routes: readonly Route[] = [...features, descriptionRoute(features)];

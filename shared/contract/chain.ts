@@ -33,3 +33,8 @@ export const getHealth = defineEndpoint({
   method: "GET", path: "/api/health", summary: "Whether the service answers and reaches its database", permission: "public",
   response: z.object({ status: z.literal("ok") }),
 });
+
+export const getDescription = defineEndpoint({
+  method: "GET", path: "/api/openapi.json", summary: "This description", permission: "public",
+  response: z.record(z.string(), z.unknown()),
+});
