@@ -24,7 +24,7 @@ export async function ensureClientBuild({ say, stopping }) {
     cwd: projectRoot,
     env: { ...process.env, NODE_ENV: "production" },
     stopping,
-    failure: (output) => `The client could not be built: ${errorLine(output)}.`,
+    failure: (output) => `The client could not be built: ${errorLine(output)} (npm run build shows more).`,
   });
   mkdirSync(join(projectRoot, "dist"), { recursive: true });
   writeFileSync(noteFile, hash);

@@ -1,3 +1,4 @@
+import { stripVTControlCharacters } from "node:util";
 import { lastWords, runProgram } from "./run-program.mjs";
 import { Problem } from "./problem.mjs";
 import { projectRoot } from "./paths.mjs";
@@ -30,7 +31,8 @@ export async function runScript({ script, args = [], env, failure, show = false,
  * @returns {string}
  */
 export function errorLine(output) {
-  const lines = output.split("\n").map((line) => line.trim());
-  const named = lines.find((line) => /^([A-Z]\w*)?(Error|Exception)\b.*:/.test(line));
-  return (named ?? lastWords(output)).replace(/\.$/, "");
+  const plain = stripVTControlCharacters(output);
+  const lines = plain.split("\n").map((line) => line.trim());
+  const named = lines.find((line) => /^(([A-Z]\w*)?(Error|Exception)\b.*:|\[[A-Z_]{3,}\] )/.test(line));
+  return (named ?? lastWords(plain)).replace(/\.$/, "");
 }

@@ -37,6 +37,8 @@ describe("what a person is told", () => {
   it("gives the line of a program's output that names its error", () => {
     const output = "server/x.ts:3\n  const a\n        ^\n\nTypeError: a is not a function.\n    at main (server/x.ts:3:1)\n\nNode.js v20";
     expect(errorLine(output)).toBe("TypeError: a is not a function");
+    const build = "error during build:\n\n\u001b[31m[UNRESOLVED_IMPORT] \u001b[0mCould not resolve './a' in b.tsx\n  at c (d.mjs:1:2)\n}\n";
+    expect(errorLine(build)).toBe("[UNRESOLVED_IMPORT] Could not resolve './a' in b.tsx");
     expect(errorLine("one\ntwo\n")).toBe("two");
     expect(lastWords("one\ntwo.\n    at main (x.ts:3:1)\n")).toBe("two");
   });
