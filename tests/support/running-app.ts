@@ -80,11 +80,11 @@ async function freePort(): Promise<number> {
 }
 
 async function healthy(url: string): Promise<void> {
-  const until = Date.now() + 30_000;
+  const until = Date.now() + 120_000;
   while (Date.now() < until) {
     const ok = await fetch(`${url}/api/health`).then((response) => response.ok, () => false);
     if (ok) return;
     await new Promise((resolve) => setTimeout(resolve, 200));
   }
-  throw new Error(`${url}/api/health was not ok within 30 s.`);
+  throw new Error(`${url}/api/health was not ok within 120 s.`);
 }

@@ -1,3 +1,5 @@
+import { CalendarError, requireChainCalendar } from "@shared/calendar";
+import type { WeekStart } from "@shared/calendar";
 import type { Chain } from "@shared/contract/chain";
 
 type Fault = { path: keyof Chain; message: string };
@@ -14,10 +16,19 @@ export function chainFaults(chain: Pick<Chain, "timeZone" | "locale" | "currency
   if (!Intl.supportedValuesOf("currency").includes(chain.currency)) {
     faults.push({ path: "currency", message: `${chain.currency} is no currency. Give its three letters, for example EUR.` });
   }
-  if (chain.calendar === "iso" && chain.weekStart !== 1) {
-    faults.push({ path: "weekStart", message: "ISO 8601 weeks begin on Monday. Choose Monday, or the 4-5-4 calendar." });
-  }
+  const calendarFault = faultOfCalendar(chain);
+  if (calendarFault) faults.push({ path: "weekStart", message: calendarFault });
   return faults;
+}
+
+function faultOfCalendar({ calendar, weekStart }: Pick<Chain, "calendar" | "weekStart">): string | null {
+  try {
+    requireChainCalendar({ kind: calendar, weekStart: weekStart as WeekStart });
+    return null;
+  } catch (error) {
+    if (error instanceof CalendarError) return error.message;
+    throw error;
+  }
 }
 
 function isTimeZone(name: string): boolean {
