@@ -73,7 +73,7 @@ it("Any specification on any data gives finite numbers or an error of the engine
     }
     fitted++;
     expectFinite(model, rows);
-  }), { numRuns: 600, seed: 20240219 });
+  }), { numRuns: 400, seed: 20240219 });
   // Else the property would hold of errors alone.
-  expect(fitted).toBeGreaterThan(120);
-});
+  expect(fitted).toBeGreaterThan(80);
+}, 120_000);
