@@ -45,6 +45,13 @@ export const createRouter = (queryClient: QueryClient) =>
               },
             },
             {
+              path: paths.drivers.path,
+              lazy: async () => {
+                const page = await import("./routes/drivers");
+                return { Component: page.DriversRoute, loader: page.loaderFor(queryClient) };
+              },
+            },
+            {
               path: paths.password.path,
               lazy: async () => ({ Component: (await import("./routes/password")).PasswordRoute }),
             },

@@ -1,0 +1,41 @@
+import type { Curve } from "@shared/contract/drivers";
+import type { CurvePoint } from "@/components/charts/scale/curve-height";
+import type { FactorLevel } from "@/components/charts/factor-lane/factor-level";
+
+type NumberCurve = Curve & { x: number[] };
+type LevelCurve = Curve & { x: string[] };
+
+export const isLevelCurve = (curve: Curve): curve is LevelCurve => curve.kind === "factor";
+export const isNumberCurve = (curve: Curve): curve is NumberCurve => curve.kind !== "factor";
+
+/** From the link scale to multipliers of an average week. */
+export const curvePoints = (curve: NumberCurve): CurvePoint[] =>
+  curve.x.map((x, index) => ({
+    x,
+    estimate: Math.exp(curve.estimate[index]),
+    lower: Math.exp(curve.lower[index]),
+    upper: Math.exp(curve.upper[index]),
+  }));
+
+/** A level's words: "multi_buy" is "Multi-buy". */
+export const levelLabel = (level: string): string => {
+  const words = level === "multi_buy" ? "multi-buy" : level.replaceAll("_", " ");
+  return words.charAt(0).toUpperCase() + words.slice(1);
+};
+
+/** From the link scale to multipliers of a week at the reference level. */
+export const factorLevels = (curve: LevelCurve): FactorLevel[] =>
+  curve.x.map((value, index) => ({
+    value,
+    label: levelLabel(value),
+    estimate: Math.exp(curve.estimate[index]),
+    lower: Math.exp(curve.lower[index]),
+    upper: Math.exp(curve.upper[index]),
+    weeks: curve.supportCount[index],
+  }));
+
+/** The level the others are read against: the one whose multiplier is one without doubt. */
+export const referenceLevel = (curve: LevelCurve): string => {
+  const index = curve.standardError.findIndex((error, at) => error === 0 && curve.estimate[at] === 0);
+  return curve.x[Math.max(0, index)];
+};
