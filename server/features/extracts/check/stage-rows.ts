@@ -84,7 +84,7 @@ type Start = {
 };
 
 function startStager({ record, definition, log, writer, read }: Start): RowStager {
-  if (!record.fields) throw new UnreadableFile("no-header", "The first line is no header: its quotes do not close.");
+  if (!record.fields) throw new UnreadableFile("no-header", "The first line is no header: its quotes do not close, or it does not end.");
   const header = readHeader(definition.kind, record.fields);
   if (header.unknown.length > 0) {
     log.report({ line: record.line, column: "", value: header.unknown.join(", "), rule: "unknown-column" });

@@ -77,7 +77,7 @@ function storageOf({ services, limitBytes, onRefused }: StorageOptions): Storage
 
 function readMultipart({ request, response, storage }: { request: Request; response: Parameters<RequestHandler>[1]; storage: StorageEngine }) {
   const limits = { files: 1, fields: 10, parts: 12, fieldNameSize: 100, fieldSize: 1_000, headerPairs: 20 };
-  const read = multer({ storage, limits, defParamCharset: "utf8" }).single("file");
+  const read = multer({ storage, limits, defParamCharset: "utf8", preservePath: true }).single("file");
   return new Promise<void>((resolve, reject) => {
     read(request, response, (error: unknown) => (error ? reject(asProblem(error)) : resolve()));
   });
@@ -122,7 +122,7 @@ const missingFile = () => unusable("missing-file", "There is no file in the fiel
 
 const notMultipart = () => {
   const detail = "Send the file as multipart/form-data, with the fields file and kind.";
-  return new ProblemError({ status: 415, code: "not-multipart", detail });
+  return new ProblemError({ status: 415, code: "unsupported-content-type", detail });
 };
 
 function hangUpSoon(request: Request): void {
