@@ -35,7 +35,9 @@ export function breakEvenOfCell(cell: BreakEvenCell): BreakEven {
   const marginInPlan = unitMargin - cut + fundingPerUnit;
   const toEarnBack = extraCost(cell);
   if (marginInPlan <= 0) return { kind: "cannot break even" };
-  if (toEarnBack !== 0 && !(baseUnits > 0)) return { kind: "unknown", reason: "Without base units a cost has nothing to be spread over." };
+  if (toEarnBack !== 0 && !(baseUnits > 0)) {
+    return { kind: "unknown", reason: "Without base units a cost has nothing to be spread over." };
+  }
   const spread = toEarnBack === 0 ? 0 : toEarnBack / (baseUnits * marginInPlan);
   return liftOrNoneNeeded((cut - fundingPerUnit) / marginInPlan + spread);
 }

@@ -63,7 +63,8 @@ export type PlanMargins = {
 /**
  * The margins of a plan: sum of base units x m and sum of plan units x (m - d + s), all net of tax.
  *
- * @example planMargins([{ baseUnits: 100, planUnits: 120, regularPrice: 1, price: 0.95, unitCost: 0.55, taxRate: 0, fundingPerUnit: 0 }])
+ * @example
+ * planMargins([{ baseUnits: 100, planUnits: 120, regularPrice: 1, price: 0.95, unitCost: 0.55, taxRate: 0, fundingPerUnit: 0 }])
  * // { base: 45, plan: 48, baseUnits: 100, planUnits: 120 }
  */
 export function planMargins(cells: Iterable<MoneyCell>): PlanMargins {

@@ -5,7 +5,6 @@ export type PlanningErrorCode =
   | "no-log-link"
   | "no-cells"
   | "cell-repeated"
-  | "cells-changed-shape"
   | "unusable-value"
   | "not-in-plan";
 

@@ -40,7 +40,8 @@ export function inventedWeeks({ store, seed, level = 4 }: { store: string; seed:
     );
     const noise = random() + random() + random() + random() + random() + random() - 3;
     const units = Math.max(0, Math.round(mean + Math.sqrt(2 * mean) * noise * Math.SQRT2));
-    return aSalesRow({ store, week, units, netSales: units * price, price, shelfPrice: price, regularPrice, feature, display, temperatureC });
+    const netSales = units * price;
+    return aSalesRow({ store, week, units, netSales, price, shelfPrice: price, regularPrice, feature, display, temperatureC });
   });
 }
 
@@ -65,6 +66,7 @@ export function planCells(
   { stores, weeks, first = "2026-06-08" }: { stores: readonly string[]; weeks: number; first?: Day },
   change: (cell: PlanCell, index: number) => Partial<PlanCell> = () => ({}),
 ): PlanCell[] {
-  const cells = stores.flatMap((store) => Array.from({ length: weeks }, (_, index) => aPlanCell({ store, week: addWeeks(first, index) })));
+  const inWeeks = Array.from({ length: weeks }, (_, index) => addWeeks(first, index));
+  const cells = stores.flatMap((store) => inWeeks.map((week) => aPlanCell({ store, week })));
   return cells.map((cell, index) => ({ ...cell, ...change(cell, index) }));
 }

@@ -62,7 +62,8 @@ describe("the default specification", () => {
   });
 
   it("keeps to straight lines without a season below half a year", () => {
-    const { spec, leftOut, straightLines } = defaultSpec({ ...twoYears, weeks: 20, weeksSpanned: 20, promotion: { none: 17, feature: 3 } });
+    const fewMonths = { ...twoYears, weeks: 20, weeksSpanned: 20, promotion: { none: 17, feature: 3 } };
+    const { spec, leftOut, straightLines } = defaultSpec(fewMonths);
     expect(spec.terms.map((term) => term.kind)).toEqual(["linear", "factor", "linear"]);
     expect(straightLines.map((note) => note.driver)).toEqual(["price", "temperature"]);
     expect(leftOut).toContainEqual({ driver: "season", reason: "20 weeks do not cover a year." });

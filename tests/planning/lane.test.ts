@@ -81,7 +81,8 @@ describe("a lane's curve", () => {
   });
 
   it("leaves out stores whose model lacks the driver, and is none when all do", () => {
-    const priceOnly = fitModel({ ...first.spec, terms: first.spec.terms.slice(0, 1) }, toModelData(inventedWeeks({ store: "S4", seed: 34 })).data);
+    const { data } = toModelData(inventedWeeks({ store: "S4", seed: 34 }));
+    const priceOnly = fitModel({ ...first.spec, terms: first.spec.terms.slice(0, 1) }, data);
     const stores = [...alone, { store: "S4", model: priceOnly, baseUnits: 900 }];
     const lane = laneOf({ stores, driver: "temperature", level, points: 21 });
     expect(lane.without).toEqual(["S4"]);

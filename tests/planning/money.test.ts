@@ -3,7 +3,9 @@ import { describe, expect, it } from "vitest";
 import { breakEvenOfCell, breakEvenOfPlan, netGain, netOfTax, planMargins, roundToCents } from "@shared/planning";
 import type { MoneyCell } from "@shared/planning";
 
-const aCell: MoneyCell = { baseUnits: 100, planUnits: 120, regularPrice: 1, price: 0.95, unitCost: 0.55, taxRate: 0, fundingPerUnit: 0 };
+const aCell: MoneyCell = {
+  baseUnits: 100, planUnits: 120, regularPrice: 1, price: 0.95, unitCost: 0.55, taxRate: 0, fundingPerUnit: 0,
+};
 
 const liftOf = (breakEven: ReturnType<typeof breakEvenOfCell>) => (breakEven.kind === "lift" ? breakEven.lift : Number.NaN);
 
@@ -20,7 +22,8 @@ describe("break-even", () => {
 
   it("spreads a fixed cost less a lump sum over the base", () => {
     // 0.05 / 0.40 + (30 - 10) / (100 x 0.40)
-    expect(liftOf(breakEvenOfCell({ unitMargin: 0.45, cut: 0.05, fixedCost: 30, lumpFunding: 10, baseUnits: 100 }))).toBeCloseTo(0.625, 14);
+    const breakEven = breakEvenOfCell({ unitMargin: 0.45, cut: 0.05, fixedCost: 30, lumpFunding: 10, baseUnits: 100 });
+    expect(liftOf(breakEven)).toBeCloseTo(0.625, 14);
   });
 
   it("is lowered by the supplier's funding per unit, and not needed when it covers the cut", () => {

@@ -1,6 +1,15 @@
 import { describe, expect, it } from "vitest";
 import { fitModel } from "@shared/engine";
-import { PlanningError, predictScenario, prepareScenario, roundToCents, toModelData } from "@shared/planning";
+import type { FittedModel, ModelSpec } from "@shared/engine";
+import {
+  PlanningError,
+  defaultSpec,
+  describeVariation,
+  predictScenario,
+  prepareScenario,
+  roundToCents,
+  toModelData,
+} from "@shared/planning";
 import type { PlanCell, ScenarioPlan, StoreModel } from "@shared/planning";
 import { salesRows } from "./a-sales-row";
 import { aPlanCell, inventedModel, inventedWeeks, planCells } from "./an-invented-store";
@@ -9,7 +18,9 @@ const level = 0.8;
 const model = inventedModel({ store: "S1", seed: 21 });
 const oneStore: StoreModel[] = [{ store: "S1", model }];
 const twoStores: StoreModel[] = [...oneStore, { store: "S2", model: inventedModel({ store: "S2", seed: 22 }) }];
-const predictOne = (changes: Partial<PlanCell>) => predictScenario({ stores: oneStore, cells: [aPlanCell(changes)], level });
+const predictWith = (fitted: FittedModel, changes: Partial<PlanCell>) =>
+  predictScenario({ stores: [{ store: "S1", model: fitted }], cells: [aPlanCell(changes)], level });
+const predictOne = (changes: Partial<PlanCell>) => predictWith(model, changes);
 const codesOf = ({ flags }: ReturnType<typeof predictOne>) => flags.map((flag) => `${flag.code} ${flag.driver}`);
 
 describe("weeks and stores of a scenario", () => {
@@ -38,7 +49,9 @@ describe("weeks and stores of a scenario", () => {
 });
 
 describe("money of a scenario", () => {
-  const plan: Partial<PlanCell> = { price: 1.573, regularPrice: 1.936, taxRate: 0.21, unitCost: 1.1, promotion: "feature", fundingPerUnit: 0.05 };
+  const plan: Partial<PlanCell> = {
+    price: 1.573, regularPrice: 1.936, taxRate: 0.21, unitCost: 1.1, promotion: "feature", fundingPerUnit: 0.05,
+  };
 
   it("is net of tax, rounded to cents once, with the supplier's funding in the plan's margin", () => {
     const { units, baseUnits, money } = predictOne(plan);
@@ -54,12 +67,14 @@ describe("money of a scenario", () => {
   });
 
   it("takes what is paid per unit where a multi-buy lowers it below the shelf price", () => {
-    const { units, money } = predictOne({ regularPrice: 1.936, price: 1.936, pricePaid: 1.452, mechanic: "multi_buy", unitCost: 1.1 });
+    const multiBuy = { regularPrice: 1.936, price: 1.936, pricePaid: 1.452, mechanic: "multi_buy", unitCost: 1.1 } as const;
+    const { units, money } = predictOne(multiBuy);
     expect(money.netSales.plan).toBe(roundToCents(units.estimate * 1.2));
   });
 
   it("tells no margin where a unit cost is not known", () => {
-    const { money } = predictScenario({ stores: oneStore, cells: planCells({ stores: ["S1"], weeks: 3 }, (_, index) => (index < 2 ? { unitCost: null } : {})), level });
+    const cells = planCells({ stores: ["S1"], weeks: 3 }, (_, index) => (index < 2 ? { unitCost: null } : {}));
+    const { money } = predictScenario({ stores: oneStore, cells, level });
     expect(money.grossMargin).toBeNull();
     expect(money.netGain).toBeNull();
     expect(money.breakEven).toEqual({ kind: "unknown", reason: "The unit cost of 2 store-weeks is not known." });
@@ -85,7 +100,7 @@ describe("flags of a scenario", () => {
   });
 
   it("put stores and weeks with the same reason together", () => {
-    const cells = planCells({ stores: ["S1", "S2"], weeks: 3 }, (cell, index) => (cell.store === "S2" && index > 3 ? { price: index / 5 } : {}));
+    const cells = planCells({ stores: ["S1", "S2"], weeks: 3 }, (_, index) => (index > 3 ? { price: index / 5 } : {}));
     const { flags } = predictScenario({ stores: twoStores, cells, level });
     expect(flags).toContainEqual({
       code: "outside-range", driver: "price", of: "plan", stores: ["S2"], weeks: ["2026-06-15", "2026-06-22"],
@@ -99,17 +114,18 @@ describe("flags of a scenario", () => {
   });
 
   it("name values that few weeks saw", () => {
-    const rows = inventedWeeks({ store: "S1", seed: 21 }).map((row, index) => ({ ...row, display: index === 30, feature: index % 9 === 0 }));
+    const weeks = inventedWeeks({ store: "S1", seed: 21 });
+    const rows = weeks.map((row, index) => ({ ...row, display: index === 30, feature: index % 9 === 0 }));
     const { data } = toModelData(rows);
     const fitted = fitModel({ ...model.spec, terms: model.spec.terms.slice(0, 2) }, data);
-    const { flags } = predictScenario({ stores: [{ store: "S1", model: fitted }], cells: [aPlanCell({ promotion: "display" })], level });
+    const { flags } = predictWith(fitted, { promotion: "display" });
     expect(flags.map((flag) => flag.detail)).toEqual(["Promotion display was seen in fewer than 5 weeks here."]);
   });
 
   it("predict a level that was never seen without an effect, and say so", () => {
     const rows = inventedWeeks({ store: "S1", seed: 21 }).map((row) => ({ ...row, display: false }));
     const fitted = fitModel({ ...model.spec, terms: model.spec.terms.slice(0, 2) }, toModelData(rows).data);
-    const { flags, lift } = predictScenario({ stores: [{ store: "S1", model: fitted }], cells: [aPlanCell({ promotion: "both" })], level });
+    const { flags, lift } = predictWith(fitted, { promotion: "both" });
     expect(lift.estimate).toBe(0);
     expect(flags.map(({ code, detail }) => [code, detail])).toEqual([
       ["never-seen", "Promotion both was never seen here: it is predicted without any effect of its own."],
@@ -118,8 +134,8 @@ describe("flags of a scenario", () => {
 
   it("say that a driver which never varied has no effect to predict", () => {
     const rows = salesRows(60, (index) => ({ feature: index % 5 === 0, units: 40 + (index % 7) }));
-    const fitted = fitModel({ response: "units", family: "quasi-poisson", terms: [{ kind: "factor", column: "promotion" }] }, toModelData(rows).data);
-    const { flags, lift } = predictScenario({ stores: [{ store: "S1", model: fitted }], cells: [aPlanCell({ price: 1.5, temperatureC: 25 })], level });
+    const spec: ModelSpec = { response: "units", family: "quasi-poisson", terms: [{ kind: "factor", column: "promotion" }] };
+    const { flags, lift } = predictWith(fitModel(spec, toModelData(rows).data), { price: 1.5, temperatureC: 25 });
     expect(lift.estimate).toBe(0);
     expect(flags.map((flag) => flag.detail)).toEqual([
       "The effect of price could not be learnt here: it is left out of the prediction.",
@@ -151,6 +167,26 @@ describe("a prepared scenario", () => {
     }
   });
 
+  it.each<[string, Partial<PlanCell>]>([
+    ["week", { week: "2026-12-14" }], ["event", { event: "fair" }], ["exposure", { exposure: 0.5 }], ["price", { price: 1.5 }],
+    ["regular price", { regularPrice: 1.7 }], ["promotion", { promotion: "both" }], ["mechanic", { mechanic: "multi_buy" }],
+    ["temperature", { temperatureC: 21 }], ["normal temperature", { normalTemperatureC: 12 }], ["unit cost", { unitCost: 1 }],
+  ])("notices that nothing but the %s of a week changed", (_, changes) => {
+    const rows = inventedWeeks({ store: "S1", seed: 23 }).map((row, index) => ({
+      ...row,
+      event: index % 13 === 0 ? "fair" : null,
+      mechanic: index % 11 === 0 ? ("multi_buy" as const) : ("none" as const),
+      units: Math.round(row.units * (index % 13 === 0 ? 1.3 : 1) * (index % 11 === 0 ? 1.2 : 1) * (1 + row.week.charCodeAt(6) / 200)),
+    }));
+    const { data } = toModelData(rows);
+    const everyDriver = { store: "S1", model: fitModel(defaultSpec(describeVariation(data)).spec, data) };
+    const scenario = prepareScenario([everyDriver]);
+    const before = scenario.evaluate({ cells: [aPlanCell()], level });
+    const after = scenario.evaluate({ cells: [aPlanCell(changes)], level });
+    expect(after).toEqual(predictScenario({ stores: [everyDriver], cells: [aPlanCell(changes)], level }));
+    expect(after).not.toEqual(before);
+  });
+
   it("takes a temperature that is not planned for the normal one", () => {
     expect(predictOne({ temperatureC: null })).toEqual(predictOne({}));
     expect(predictOne({ temperatureC: 16, normalTemperatureC: null }).weather.units).toBe(0);
@@ -160,7 +196,7 @@ describe("a prepared scenario", () => {
     const spec = { ...model.spec, family: "log-gaussian", terms: model.spec.terms.slice(0, 2) } as const;
     const rows = inventedWeeks({ store: "S1", seed: 21 }).map((row) => ({ ...row, units: Math.max(1, row.units) }));
     const fitted = fitModel(spec, toModelData(rows).data);
-    const { units, baseUnits, lift, split } = predictScenario({ stores: [{ store: "S1", model: fitted }], cells: [aPlanCell({ price: 1.5 })], level });
+    const { units, baseUnits, lift, split } = predictWith(fitted, { price: 1.5 });
     expect(lift.estimate).toBeCloseTo(units.estimate / baseUnits - 1, 12);
     expect(split[0].units).toBeCloseTo(units.estimate - baseUnits, 9);
     expect(units.upper).toBeGreaterThan(units.estimate);
@@ -185,7 +221,9 @@ describe("a scenario refuses", () => {
   });
 
   it("a store without a model, a store with two, and a store-week given twice", () => {
-    expect(refusal(() => predictOne({ store: "S9" }))).toEqual({ code: "not-in-plan", message: "Store S9 has no model to predict it with." });
+    expect(refusal(() => predictOne({ store: "S9" }))).toEqual({
+      code: "not-in-plan", message: "Store S9 has no model to predict it with.",
+    });
     expect(refusal(() => prepareScenario([...oneStore, ...oneStore]))?.message).toBe("Each store of a scenario has one model.");
     expect(refusal(() => predictScenario({ stores: oneStore, cells: [aPlanCell(), aPlanCell()], level }))).toEqual({
       code: "cell-repeated", message: "Store S1, week 2026-06-08 comes twice in the plan.",
@@ -213,7 +251,8 @@ describe("a scenario refuses", () => {
   });
 
   it("a model without a log link", () => {
-    const fitted = fitModel({ response: "units", family: "gaussian", terms: [] }, toModelData(inventedWeeks({ store: "S1", seed: 21 })).data);
+    const { data } = toModelData(inventedWeeks({ store: "S1", seed: 21 }));
+    const fitted = fitModel({ response: "units", family: "gaussian", terms: [] }, data);
     expect(refusal(() => prepareScenario([{ store: "S1", model: fitted }]))).toEqual({
       code: "no-log-link", message: "The model of store S1 adds units up instead of multiplying them: it cannot tell a lift.",
     });

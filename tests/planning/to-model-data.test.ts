@@ -31,7 +31,8 @@ describe("columns of a sales model", () => {
   });
 
   it("name the four levels of support", () => {
-    const levels = [[false, false], [true, false], [false, true], [true, true]].map(([feature, display]) => promotionOf({ feature, display }));
+    const pairs = [[false, false], [true, false], [false, true], [true, true]];
+    const levels = pairs.map(([feature, display]) => promotionOf({ feature, display }));
     expect(levels).toEqual(["none", "feature", "display", "both"]);
   });
 

@@ -64,11 +64,16 @@ export function laneCurve({ stores, driver, level, points = DEFAULT_POINTS, at }
     standardError,
     lower: sums.estimate.map((value, point) => value - half * standardError[point]),
     upper: sums.estimate.map((value, point) => value + half * standardError[point]),
-    observedRange: ranges.length === 0 ? null : [Math.min(...ranges.map(([from]) => from)), Math.max(...ranges.map(([, to]) => to))],
+    observedRange: unionOf(ranges),
     supportCount: sums.supportCount,
     hardlySeen: Uint8Array.from(sums.hardlySeen, (share) => (share >= 0.5 ? 1 : 0)),
     without,
   };
+}
+
+function unionOf(ranges: readonly [number, number][]): [number, number] | null {
+  if (ranges.length === 0) return null;
+  return [Math.min(...ranges.map(([from]) => from)), Math.max(...ranges.map(([, to]) => to))];
 }
 
 type Sums = Record<"estimate" | "variance" | "supportCount" | "hardlySeen", Float64Array>;

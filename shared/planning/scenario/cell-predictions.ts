@@ -4,8 +4,9 @@ import { modelColumns } from "../model-columns";
 import type { ModelCell } from "../model-columns";
 import { PlanningError } from "../planning-error";
 import type { CellFlag, Limits } from "./limits";
-import { isSameCell, placeOf } from "./plan-cells";
+import { cellInState, isSameInState, placeOf } from "./plan-cells";
 import type { CellState } from "./plan-cells";
+import type { PlanCell } from "./scenario";
 
 /** One store's cells in one state, predicted: arrays have one entry per cell. */
 export type CellPredictions = {
@@ -27,19 +28,23 @@ export type CellPredictions = {
  * Predicts one store's cells in one state, and keeps the answer while the same cells are asked for again: while one driver of
  * a plan is dragged, its base does not change.
  *
- * @returns a function from cells to predictions; the identical object as long as no cell changed.
+ * @returns a function from a plan's cells to predictions; the identical object as long as no cell changed.
  * @throws (the function) PlanningError "unusable-value" where a model reads a temperature that is not known.
- * @example const predictBase = rememberingPredictor({ model, limits: limitsOf(model), state: "base" }); predictBase(cells) === predictBase(cells) // true
+ * @example
+ * const predictBase = rememberingPredictor({ model, limits: limitsOf(model), state: "base" });
+ * predictBase(cells) === predictBase(cells) // true
  */
 export function rememberingPredictor(
   { model, limits, state }: { model: FittedModel; limits: Limits; state: CellState },
-): (cells: readonly ModelCell[]) => CellPredictions {
-  let lastCells: readonly ModelCell[] = [];
+): (cells: readonly PlanCell[]) => CellPredictions {
+  let lastCells: readonly PlanCell[] = [];
   let last: CellPredictions | null = null;
   return (cells) => {
-    const isUnchanged = cells.length === lastCells.length && cells.every((cell, index) => isSameCell(cell, lastCells[index]));
+    const isUnchanged =
+      cells.length === lastCells.length && cells.every((cell, index) => isSameInState(cell, lastCells[index], state));
     if (last === null || !isUnchanged) {
-      last = predictCells({ model, limits, cells, state });
+      const inState = cells.map((cell) => cellInState(cell, state));
+      last = predictCells({ model, limits, cells: inState, state });
       lastCells = cells;
     }
     return last;

@@ -53,7 +53,8 @@ function differenceOf({ plan, base, termIds }: Pair): Float64Array {
 }
 
 function gradientOf(
-  { model, plan, base, termIds, weights, difference }: Pair & { model: FittedModel; weights: Float64Array; difference: Float64Array },
+  { model, plan, base, termIds, weights, difference }:
+  Pair & { model: FittedModel; weights: Float64Array; difference: Float64Array },
 ): Float64Array {
   const byPlan = new Float64Array(difference.length);
   const byBase = new Float64Array(difference.length);

@@ -29,7 +29,12 @@ const FEWEST_WEEKS_SEEN = 5;
 type NumberColumn = "price" | "regularPrice" | "depth" | "temperatureC";
 type LevelColumn = "promotion" | "mechanic" | "event";
 type Finding = Pick<CellFlag, "code" | "value"> | null;
-type TermLimit = { driver: Driver; find: (cell: ModelCell) => Finding; withKnownLevel: (cell: ModelCell) => ModelCell };
+type TermLimit = {
+  driver: Driver;
+  find: (cell: ModelCell) => Finding;
+  /** The cell itself where its level is known. */
+  withKnownLevel?: (cell: ModelCell) => ModelCell;
+};
 
 /** The columns a person plans with. Time of year and trend come with the weeks and raise no flag of their own. */
 const numberColumns: readonly string[] = ["price", "regularPrice", "depth", "temperatureC"] satisfies NumberColumn[];
@@ -59,14 +64,16 @@ export function limitsOf(model: FittedModel): Limits {
         }
       }
     }
-    return { cells: cells.map((cell) => limits.reduce((known, limit) => limit.withKnownLevel(known), cell)), flags };
+    let known = cells;
+    for (const { withKnownLevel } of limits) if (withKnownLevel !== undefined) known = known.map(withKnownLevel);
+    return { cells: known, flags };
   };
 }
 
 function levelLimit(term: FittedTerm, column: LevelColumn): TermLimit {
   const { basis } = term;
   const driver = driverOfTerm(term);
-  if (basis.kind !== "factor") return { driver, find: () => null, withKnownLevel: (cell) => cell };
+  if (basis.kind !== "factor") return { driver, find: () => null };
   const weeksSeen = remembering((level: string) => supportCounts(term, [level])[0]);
   return {
     driver,
@@ -92,7 +99,6 @@ function numberLimit(term: FittedTerm, column: NumberColumn): TermLimit {
       if (value < range[0] || value > range[1]) return { code: "outside-range", value: shown };
       return weeksSeen(value) < FEWEST_WEEKS_SEEN ? { code: "few-weeks", value: shown } : null;
     },
-    withKnownLevel: (cell) => cell,
   };
 }
 
@@ -100,12 +106,18 @@ function depthOf({ price, regularPrice }: ModelCell): number | null {
   return regularPrice === null ? null : Math.log(price / regularPrice);
 }
 
-/** Counting goes through all values seen, and the same few are asked for again and again while a person drags. */
+/**
+ * Counting goes through all values seen, and the same few are asked for again and again while a person drags: most often the
+ * one asked for last, since a plan tends to have one price.
+ */
 function remembering<Value>(count: (value: Value) => number): (value: Value) => number {
   const known = new Map<Value, number>();
+  let last: { value: Value; answer: number } | null = null;
   return (value) => {
+    if (last !== null && last.value === value) return last.answer;
     const answer = known.get(value) ?? count(value);
     known.set(value, answer);
+    last = { value, answer };
     return answer;
   };
 }

@@ -24,29 +24,32 @@ export function cellInState(cell: PlanCell, state: CellState): ModelCell {
     mechanic: isPlan ? cell.mechanic : "none",
     deal: price < cell.regularPrice ? 1 : 0,
     event: cell.event ?? NO_EVENT,
-    temperatureC: state === "normal" ? (cell.normalTemperatureC ?? cell.temperatureC) : (cell.temperatureC ?? cell.normalTemperatureC),
+    temperatureC: temperatureIn(cell, state),
     exposure: cell.exposure ?? 1,
   };
 }
 
+function temperatureIn({ temperatureC, normalTemperatureC }: PlanCell, state: CellState): number | null {
+  return state === "normal" ? (normalTemperatureC ?? temperatureC) : (temperatureC ?? normalTemperatureC);
+}
+
 /**
- * Whether two cells ask a model for the same prediction.
+ * Whether a store-week asks a model for the same prediction as before, in one of its states. Reads the plan's own cells, so
+ * that nothing is built for what did not change.
  *
- * @example isSameCell(cell, { ...cell }) // true
+ * @example isSameInState(cell, { ...cell, price: 1.49 }, "base") // true: only the plan moved
  */
-export function isSameCell(one: ModelCell, other: ModelCell): boolean {
-  return (
-    one.price === other.price &&
-    one.regularPrice === other.regularPrice &&
-    one.promotion === other.promotion &&
-    one.mechanic === other.mechanic &&
-    one.deal === other.deal &&
-    one.event === other.event &&
-    one.temperatureC === other.temperatureC &&
-    one.exposure === other.exposure &&
+export function isSameInState(one: PlanCell, other: PlanCell, state: CellState): boolean {
+  const isSameBase =
+    one.store === other.store &&
     one.week === other.week &&
-    one.store === other.store
-  );
+    one.regularPrice === other.regularPrice &&
+    one.event === other.event &&
+    one.exposure === other.exposure &&
+    one.temperatureC === other.temperatureC &&
+    one.normalTemperatureC === other.normalTemperatureC;
+  if (state !== "plan" || !isSameBase) return isSameBase;
+  return one.price === other.price && one.promotion === other.promotion && one.mechanic === other.mechanic;
 }
 
 /**
@@ -59,14 +62,13 @@ export function isSameCell(one: ModelCell, other: ModelCell): boolean {
 export function groupByStore(cells: readonly PlanCell[], stores: readonly string[]): Map<string, PlanCell[]> {
   if (cells.length === 0) throw new PlanningError("no-cells", "A scenario needs at least one store and one week.");
   const groups = new Map<string, PlanCell[]>(stores.map((store) => [store, []]));
-  const seen = new Set<string>();
   for (const cell of cells) {
     const group = groups.get(cell.store);
     if (group === undefined) throw new PlanningError("not-in-plan", `Store ${cell.store} has no model to predict it with.`);
     checkValues(cell);
-    const key = `${cell.store}\n${cell.week}`;
-    if (seen.has(key)) throw new PlanningError("cell-repeated", `${placeOf(cell)} comes twice in the plan.`);
-    seen.add(key);
+    if (group.some(({ week }) => week === cell.week)) {
+      throw new PlanningError("cell-repeated", `${placeOf(cell)} comes twice in the plan.`);
+    }
     group.push(cell);
   }
   return groups;

@@ -74,6 +74,7 @@ function summarise(stores: readonly EvaluatedStore[], { level, costs }: Scenario
 
 function requireLogLink({ store, model }: StoreModel): void {
   if (model.spec.family === "gaussian") {
-    throw new PlanningError("no-log-link", `The model of store ${store} adds units up instead of multiplying them: it cannot tell a lift.`);
+    const reason = "adds units up instead of multiplying them: it cannot tell a lift";
+    throw new PlanningError("no-log-link", `The model of store ${store} ${reason}.`);
   }
 }

@@ -1,5 +1,3 @@
-import type { FittedModel } from "../../engine";
-import { driverOfTerm } from "../driver";
 import type { Driver } from "../driver";
 import { netOfTax } from "../money";
 import type { CellFlag } from "./limits";
@@ -28,39 +26,42 @@ export function flagsOf(stores: readonly EvaluatedStore[]): ScenarioFlag[] {
 
 /** The base's flags only where the base has a value of its own: what it shares with the plan is flagged there. */
 function seenFlagsOf({ plan, base, cells }: EvaluatedStore): CellFlag[] {
+  if (base.flags.length === 0) return plan.flags;
   const repriced = new Set(cells.filter((cell) => cell.price !== cell.regularPrice).map((cell) => cell.week));
   return [...plan.flags, ...base.flags.filter((flag) => flag.driver === "price" && repriced.has(flag.week))];
 }
 
-const moved: Readonly<Record<Driver, (cell: PlanCell) => number | string | null>> = {
-  price: (cell) => (cell.price === cell.regularPrice ? null : cell.price),
-  promotion: (cell) => (cell.promotion === "none" ? null : cell.promotion),
-  mechanic: (cell) => (cell.mechanic === "none" ? null : cell.mechanic),
-  temperature: ({ temperatureC, normalTemperatureC }) =>
-    normalTemperatureC === null || temperatureC === normalTemperatureC ? null : temperatureC,
-};
+/** The value of each driver that a plan moves away from its base, null where it does not. */
+const movedValue: readonly [Driver, (cell: PlanCell) => number | string | null][] = [
+  ["price", (cell) => (cell.price === cell.regularPrice ? null : cell.price)],
+  ["promotion", (cell) => (cell.promotion === "none" ? null : cell.promotion)],
+  ["mechanic", (cell) => (cell.mechanic === "none" ? null : cell.mechanic)],
+  [
+    "temperature",
+    ({ temperatureC, normalTemperatureC }) =>
+      normalTemperatureC === null || temperatureC === normalTemperatureC ? null : temperatureC,
+  ],
+];
 
-function unmodelledFlagsOf({ store, model, cells }: EvaluatedStore): CellFlag[] {
-  const modelled = driversIn(model);
-  return Object.entries(moved).flatMap(([driver, valueIn]) => {
-    if (modelled.has(driver)) return [];
-    return cells.flatMap((cell): CellFlag[] => {
+function unmodelledFlagsOf({ store, modelled, cells }: EvaluatedStore): CellFlag[] {
+  const flags: CellFlag[] = [];
+  for (const [driver, valueIn] of movedValue) {
+    if (modelled.has(driver)) continue;
+    for (const cell of cells) {
       const value = valueIn(cell);
-      return value === null ? [] : [{ code: "not-modelled", driver, of: "plan", store, week: cell.week, value }];
-    });
-  });
-}
-
-function driversIn(model: FittedModel): Set<Driver> {
-  return new Set(model.terms.flatMap((term) => driverOfTerm(term).split(":")));
+      if (value !== null) flags.push({ code: "not-modelled", driver, of: "plan", store, week: cell.week, value });
+    }
+  }
+  return flags;
 }
 
 function belowCostFlagsOf({ store, cells }: EvaluatedStore): CellFlag[] {
-  return cells.flatMap((cell): CellFlag[] => {
-    const price = netOfTax(cell.pricePaid ?? cell.price, cell.taxRate);
-    if (cell.unitCost === null || price >= cell.unitCost) return [];
-    return [{ code: "below-cost", driver: "price", of: "plan", store, week: cell.week, value: cell.price }];
-  });
+  const flags: CellFlag[] = [];
+  for (const { week, price, pricePaid, taxRate, unitCost } of cells) {
+    if (unitCost === null || netOfTax(pricePaid ?? price, taxRate) >= unitCost) continue;
+    flags.push({ code: "below-cost", driver: "price", of: "plan", store, week, value: price });
+  }
+  return flags;
 }
 
 function together(group: readonly CellFlag[], storeCount: number): ScenarioFlag {
