@@ -20,9 +20,13 @@ await runCommand(async (context) => {
   const { settings, state } = await useDatabase({ context, command: "npm run migration:create", say });
   const env = applicationEnvironment({ settings, state, hasDemo: false });
   await migrate(env, stopping);
+  // tsx loads the TypeScript; MikroORM would look for another loader and warn that it is not there.
+  env.MIKRO_ORM_CLI_USE_TS_NODE = "0";
+  // The name becomes part of the class's name.
+  const naming = name ? ["--name", name.replaceAll("-", "_")] : [];
   await runScript({
-    script: "node_modules/@mikro-orm/cli/cli.js", args: ["migration:create", ...(name ? ["--name", name] : [])],
-    env, stopping, show: true, failure: "No migration was made",
+    script: "node_modules/@mikro-orm/cli/cli.js", args: ["migration:create", ...naming], env, stopping, show: true,
+    failure: "No migration was made",
   });
   say("Read the new file in server/migrations, and commit it together with the snapshot.");
 });

@@ -22,6 +22,7 @@ import { countStage, sum, summaryLine } from "./test-count.mjs";
 export async function runStages({ stages, args = [], say }) {
   const counts = [];
   const lines = [];
+  const startedMs = Date.now();
   for (const stage of stages) {
     say(`\n── ${stage.title} ${"─".repeat(Math.max(3, 70 - stage.title.length))}`);
     const startMs = Date.now();
@@ -32,7 +33,8 @@ export async function runStages({ stages, args = [], say }) {
     lines.push(line);
   }
   const total = sum(counts);
-  say(`\n${lines.join("\n")}\n\n${summaryLine(total)}`);
+  if (stages.length > 1) say(`\n${lines.join("\n")}\nAll: ${seconds(Date.now() - startedMs)} s`);
+  say(`\n${summaryLine(total)}`);
   return total.failed === 0 ? 0 : 1;
 }
 

@@ -40,6 +40,8 @@ export async function startThrowAwayServices({ context, say }) {
     TEST_S3_ENDPOINT: `http://127.0.0.1:${files}`,
     TEST_SMTP_URL: `smtp://127.0.0.1:${smtp}`,
     TEST_MAIL_URL: `http://127.0.0.1:${page}`,
+    // The S3 client otherwise prints a notice about Node.js versions in every test process.
+    AWS_SDK_JS_NODE_VERSION_SUPPORT_WARNING_DISABLED: "true",
   };
 }
 
