@@ -1,4 +1,5 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
+import { randomUUID } from "node:crypto";
 import type { ScenarioDraft } from "@shared/contract/scenarios";
 import { notFound } from "../../errors";
 import type { Caller } from "../../http/route";
@@ -40,14 +41,15 @@ export async function createScenario(
 ): Promise<ScenarioRow> {
   const checked = await checkDraft(em, draft);
   const person = em.getReference(PersonEntity, actor.personId);
+  const id = randomUUID();
   const scenario = em.create(ScenarioEntity, {
-    ...contentOf(em, checked), state: "draft", createdBy: person, createdAt: now, updatedBy: person, updatedAt: now,
+    id, ...contentOf(em, checked), cells: draft.cells, state: "draft", createdBy: person, createdAt: now, updatedBy: person, updatedAt: now,
   });
   em.persist(scenario);
-  audit(em, { ...actor, action: "scenario.created", subject: { kind: "scenario", id: scenario.id }, detail: { product: checked.product.code } });
+  audit(em, { ...actor, action: "scenario.created", subject: { kind: "scenario", id }, detail: { product: checked.product.code } });
   await em.flush();
   em.clear();
-  return readScenario(em, scenario.id);
+  return readScenario(em, id);
 }
 
 /**
@@ -66,6 +68,7 @@ export async function saveScenario(
   requireEditable(scenario);
   const checked = await checkDraft(em, draft, { modelId: scenario.model.id, product: scenario.product.code });
   em.assign(scenario, { ...contentOf(em, checked), updatedBy: em.getReference(PersonEntity, personId), updatedAt: now });
+  scenario.cells.set(draft.cells);
   // The database compares the version once more: of two saves at the same moment one gets 412.
   await em.flush();
   em.clear();
@@ -92,7 +95,6 @@ function contentOf(em: EntityManager, { draft, product, model }: CheckedDraft) {
     stores: [...draft.stores],
     firstWeek: draft.weeks.first,
     lastWeek: draft.weeks.last,
-    cells: draft.cells,
     fixedCost: draft.fixedCost,
   };
 }

@@ -1,4 +1,5 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
+import { randomUUID } from "node:crypto";
 import type { Day } from "@shared/calendar";
 import type { ModelSpec } from "@shared/engine";
 import { unusable } from "../../../errors";
@@ -54,6 +55,7 @@ export function within(weeks: FitRequest["weeks"]): string {
 /** Makes the model's row, a candidate without fits; it is written with the caller's flush. */
 export function addModel(em: EntityManager, { request, at }: { request: CheckedRequest; at: Date }): ModelRow {
   const model = em.create(ModelEntity, {
+    id: randomUUID(),
     product: em.getReference(ProductEntity, request.productFound.id),
     spec: request.spec ?? null,
     firstWeek: request.weeks?.first ?? null,
