@@ -52,6 +52,13 @@ export const createRouter = (queryClient: QueryClient) =>
               },
             },
             {
+              path: paths.stores.path,
+              lazy: async () => {
+                const page = await import("./routes/stores");
+                return { Component: page.StoresRoute, loader: page.loaderFor(queryClient) };
+              },
+            },
+            {
               path: paths.password.path,
               lazy: async () => ({ Component: (await import("./routes/password")).PasswordRoute }),
             },

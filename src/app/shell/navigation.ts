@@ -4,5 +4,6 @@ import { paths } from "@/lib/paths";
 export const navigation = [
   { label: "Extracts", to: paths.extracts.href() },
   { label: "Drivers", to: paths.drivers.href() },
+  { label: "Stores", to: paths.stores.href() },
   { label: "Scenarios", to: paths.scenarios.href() },
 ] as const;

@@ -18,6 +18,8 @@ type DataTableProps<Row> = {
   selectedKey?: string | null;
   onRowClick?: (row: Row) => void;
   rowHeight?: number;
+  /** Stands first whatever the order, as a whole does above its parts; not in the totals. */
+  leadRow?: Row;
   /** From so many pixels on the rows scroll under the heading. */
   maxHeight?: number;
   foot?: ReactNode;
@@ -46,6 +48,7 @@ export const DataTable = <Row extends object>(props: DataTableProps<Row>) => {
   const before = isVirtual ? (windowed[0]?.start ?? 0) : 0;
   const after = isVirtual ? virtualizer.getTotalSize() - (windowed.at(-1)?.end ?? 0) : 0;
   const firstIndex = isVirtual ? (windowed[0]?.index ?? 0) : 0;
+  const leadRows = props.leadRow ? 1 : 0;
   const height = maxHeight ?? (isVirtual ? 600 : undefined);
 
   return (
@@ -57,7 +60,7 @@ export const DataTable = <Row extends object>(props: DataTableProps<Row>) => {
       className="overflow-auto rounded-lg focus-visible:-outline-offset-2 print:overflow-visible"
       style={height ? { maxHeight: height } : undefined}
     >
-      <table className="w-full border-separate border-spacing-0" aria-rowcount={sorted.length + 1}>
+      <table className="w-full border-separate border-spacing-0" aria-rowcount={sorted.length + leadRows + 1}>
         <caption className="sr-only">{caption}</caption>
         <colgroup>
           {columns.map((column) => (
@@ -80,9 +83,12 @@ export const DataTable = <Row extends object>(props: DataTableProps<Row>) => {
           </tr>
         </thead>
         <tbody>
+          {props.leadRow && (
+            <BodyRow columns={columns} row={props.leadRow} id={rowKey(props.leadRow)} index={0} rowHeight={rowHeight} isLead />
+          )}
           {before > 0 && <Gap height={before} />}
           {shown.map((row, index) => (
-            <BodyRow key={row.id} {...props} row={row.original} id={row.id} index={firstIndex + index} rowHeight={rowHeight} />
+            <BodyRow key={row.id} {...props} row={row.original} id={row.id} index={firstIndex + index + leadRows} rowHeight={rowHeight} />
           ))}
           {after > 0 && <Gap height={after} />}
         </tbody>
@@ -114,15 +120,16 @@ type BodyRowProps<Row> = Pick<DataTableProps<Row>, "columns" | "selectedKey" | "
   id: string;
   index: number;
   rowHeight: number;
+  isLead?: boolean;
 };
 
-const BodyRow = <Row extends object>({ columns, selectedKey, onRowClick, row, id, index, rowHeight }: BodyRowProps<Row>) => (
+const BodyRow = <Row extends object>({ columns, selectedKey, onRowClick, row, id, index, rowHeight, isLead }: BodyRowProps<Row>) => (
   <tr
     aria-rowindex={index + 2}
     aria-selected={selectedKey === undefined ? undefined : selectedKey === id}
     data-row={id}
     onClick={onRowClick && (() => onRowClick(row))}
-    className={classNames("group/row", onRowClick && "cursor-pointer hover:bg-hover", selectedKey === id && "bg-accent-soft")}
+    className={classNames("group/row", onRowClick && "cursor-pointer hover:bg-hover", isLead && "font-semibold", selectedKey === id && "bg-accent-soft")}
   >
     {columns.map((column) => (
       <td
