@@ -13,9 +13,18 @@ export async function stopProcess(identity, { graceMs = 10_000 } = {}) {
   send(identity.pid, "SIGTERM");
   const deadline = Date.now() + graceMs;
   while (isAlive(identity) && Date.now() < deadline) await sleep(50);
-  if (isAlive(identity)) send(identity.pid, "SIGKILL");
+  if (isAlive(identity)) endByForce(identity.pid);
   while (isAlive(identity) && Date.now() < deadline + 5_000) await sleep(20);
   return true;
+}
+
+/**
+ * A part leads a group of its own; what it started itself must not outlive it.
+ * @param {number} pid
+ */
+function endByForce(pid) {
+  send(-pid, "SIGKILL");
+  send(pid, "SIGKILL");
 }
 
 /**
