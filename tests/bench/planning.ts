@@ -45,6 +45,8 @@ for (const change of Object.values(drags)) timesOf(scenario, change);
 const figures: Record<string, { value: number; limit: number | null; unit: "ms" }> = {};
 for (const [name, change] of Object.entries(drags)) {
   const times = timesOf(scenario, change);
+  // What a step takes when nothing else has the processor: on a busy machine the median is mostly waiting.
+  figures[`${name} dragged, 10 in 100 within`] = { value: at(times, 0.1), limit: null, unit: "ms" };
   figures[`${name} dragged, median`] = { value: at(times, 0.5), limit: FRAME_MS, unit: "ms" };
   figures[`${name} dragged, 95 in 100 within`] = { value: at(times, 0.95), limit: null, unit: "ms" };
 }
