@@ -1,4 +1,4 @@
-export type Region = "coast" | "town" | "moor";
+export type Region = "Coast" | "Town" | "Moor";
 export type PromotionLevel = "none" | "feature" | "display" | "both";
 
 /** A row of `stores.csv`; days are written 2024-06-03, `null` means not (yet). */

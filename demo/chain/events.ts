@@ -21,8 +21,8 @@ const weekOf = (day: (year: number) => string) => (year: number) => mondayOf(`${
 
 const yearlyEvents: YearlyEvent[] = [
   { code: "easter", name: "Week before Easter", region: null, firstDay: (year) => addDays(easterSunday(year), -6) },
-  { code: "spring_fair", name: "Larkmoor Spring Fair", region: "moor", firstDay: weekOf(() => "05-10") },
-  { code: "regatta", name: "Coast Regatta", region: "coast", firstDay: weekOf(regattaDay) },
+  { code: "spring_fair", name: "Larkmoor Spring Fair", region: "Moor", firstDay: weekOf(() => "05-10") },
+  { code: "regatta", name: "Coast Regatta", region: "Coast", firstDay: weekOf(regattaDay) },
   { code: "autumn_holidays", name: "Autumn school holidays", region: null, firstDay: weekOf(holidayDay) },
   { code: "winter_feast", name: "Week of 24 December", region: null, firstDay: weekOf(() => "12-24") },
 ];

@@ -12,7 +12,7 @@ const weekCount = 6;
 export function exampleScenario(lastWeek: Day): ScenarioDraft {
   const first = addWeeks(lastWeek, 2);
   const weeks = { first, last: addWeeks(first, weekCount - 1) };
-  const onTheCoast = stores.filter(({ region }) => region === "coast").slice(0, storeCount).map(({ code }) => code);
+  const onTheCoast = stores.filter(({ region }) => region === "Coast").slice(0, storeCount).map(({ code }) => code);
   const cells = onTheCoast.flatMap((store) =>
     weeksBetween(weeks.first, weeks.last).map((week) => ({ store, week, price: 1.49, promotion: "feature" as const })),
   );

@@ -13,14 +13,14 @@ export type Promotion = {
   support: PromotionLevel;
 };
 
-const everywhere: readonly Region[] = ["coast", "town", "moor"];
+const everywhere: readonly Region[] = ["Coast", "Town", "Moor"];
 
 const lengths = [[1, 3], [2, 5], [3, 2]] as const;
 /** Dealt like cards, shuffled anew when used up, so that every kind of support comes round for every product. */
 const supportDeck = ["none", "none", "feature", "feature", "display", "display", "both", "both"] as const;
 const depths = [[0.08, 2], [0.12, 3], [0.16, 3], [0.2, 4], [0.25, 3], [0.3, 2]] as const;
 const scopes = [
-  [everywhere, 65], [["coast", "town"], 12], [["town", "moor"], 12], [["coast", "moor"], 11],
+  [everywhere, 65], [["Coast", "Town"], 12], [["Town", "Moor"], 12], [["Coast", "Moor"], 11],
 ] as const satisfies readonly (readonly [readonly Region[], number])[];
 const supportOnlyShare = 0.16;
 

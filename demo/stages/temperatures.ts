@@ -6,9 +6,9 @@ import { autoregression } from "./autoregression";
 type Climate = { meanC: number; swingC: number };
 
 const climates: Record<Region, Climate> = {
-  coast: { meanC: 10.8, swingC: 5.6 },
-  town: { meanC: 10.4, swingC: 8 },
-  moor: { meanC: 8.1, swingC: 7.6 },
+  Coast: { meanC: 10.8, swingC: 5.6 },
+  Town: { meanC: 10.4, swingC: 8 },
+  Moor: { meanC: 8.1, swingC: 7.6 },
 };
 
 const warmestYearFraction = 0.56;

@@ -40,7 +40,7 @@ export function trueElasticity({ product, price, store }: { product: string; pri
 }
 
 function effectsOf(truth: ProductTruth, store: ChainStore | null): Effects {
-  const visitors = store?.region === "coast" ? truth.coastVisitors : 0;
+  const visitors = store?.region === "Coast" ? truth.coastVisitors : 0;
   const season = [...truth.season, { amplitude: visitors, crest: 0.58, timesAYear: 1 }];
   return {
     price: (price) => (store?.priceResponse ?? 1) * priceEffect(truth.price, price),

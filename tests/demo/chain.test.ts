@@ -9,7 +9,7 @@ import { stores } from "../../demo/chain/stores";
 describe("The demo chain", () => {
   it("has 24 stores, eight in each region, and each response group in every region", () => {
     expect(stores).toHaveLength(24);
-    for (const region of ["coast", "town", "moor"]) {
+    for (const region of ["Coast", "Town", "Moor"]) {
       const here = stores.filter((store) => store.region === region);
       expect(here).toHaveLength(8);
       expect(new Set(here.map(({ group }) => group))).toEqual(new Set(["keen", "middle", "steady"]));
@@ -69,7 +69,7 @@ describe("The demo chain", () => {
 
   it("holds events that fill whole weeks and never meet in a region", () => {
     const events = eventsOfYears(2020, 2045);
-    for (const region of ["coast", "town", "moor"]) {
+    for (const region of ["Coast", "Town", "Moor"]) {
       const here = events.filter((event) => event.region === null || event.region === region);
       expect(new Set(here.map(({ firstDay }) => firstDay)).size).toBe(here.length);
     }

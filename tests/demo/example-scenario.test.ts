@@ -16,7 +16,7 @@ describe("The demo's example scenario", () => {
 
   it("plans six coming weeks in six stores on the coast, one cell each", () => {
     const regions = scenario.stores.map((code) => stores.find((store) => store.code === code)?.region);
-    expect(regions).toEqual(new Array(6).fill("coast"));
+    expect(regions).toEqual(new Array(6).fill("Coast"));
     expect(weeksApart(lastWeek, scenario.weeks.first)).toBeGreaterThan(0);
     expect(weeksApart(scenario.weeks.first, scenario.weeks.last)).toBe(5);
     const cells = scenario.cells.map(({ store, week }) => `${store} ${week}`);

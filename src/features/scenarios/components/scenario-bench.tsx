@@ -59,17 +59,17 @@ export const ScenarioBench = ({ scenario, context }: { scenario: Scenario; conte
     <>
       {head}
       <div className="grid items-start gap-5 xl:grid-cols-[minmax(0,1fr)_23.5rem]">
-        <BenchLanes scenario={scenario} figures={figures} level={level} week={week} onWeek={setWeek} editing={editing} />
+        <div className="flex min-w-0 flex-col gap-5">
+          <BenchLanes scenario={scenario} figures={figures} level={level} week={week} onWeek={setWeek} editing={editing} />
+          <WeekSheet figures={figures} context={context} week={week} onWeek={setWeek} />
+        </div>
         <SumSheet
           scenario={scenario}
           figures={figures}
           fixedCost={edit.fixedCost}
           onFixedCost={(fixedCost) => editing.change({ fixedCost })}
-          cautions={<Cautions figures={figures} context={context} firstWeek={scenario.weeks.first} product={product} />}
+          cautions={<Cautions figures={figures} context={context} firstWeek={scenario.weeks.first} />}
         />
-      </div>
-      <div className="mt-5">
-        <WeekSheet figures={figures} context={context} week={week} onWeek={setWeek} />
       </div>
       {saving.state.kind === "conflict" && (
         <ConflictDialog
