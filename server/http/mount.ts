@@ -61,8 +61,13 @@ function parse(schema: z.ZodType | undefined, value: unknown, part: "params" | "
   // An identifier that cannot exist is simply not there.
   if (part === "params") throw new ProblemError({ status: 404, code: "not-found", detail: "There is nothing at this address." });
   const errors = result.error.issues.map((issue) => ({ path: issue.path.join("."), message: issue.message }));
-  const detail = value === undefined
-    ? "The request needs a body: JSON, with Content-Type application/json."
-    : `What was sent cannot be used: ${errors[0]?.message ?? "it is malformed"}`;
+  const detail = value === undefined ? "The request needs a body: JSON, with Content-Type application/json." : describe(errors);
   throw new ProblemError({ status: 422, code: "invalid-request", detail, errors });
+}
+
+function describe([first, ...more]: { path: string; message: string }[]): string {
+  if (!first) return "What was sent cannot be used.";
+  const where = first.path === "" ? "" : `${first.path}: `;
+  const rest = more.length === 0 ? "" : ` (and ${more.length} more)`;
+  return `What was sent cannot be used. ${where}${first.message.replace(/\.$/, "")}${rest}.`;
 }

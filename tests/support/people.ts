@@ -22,7 +22,7 @@ export async function signedIn(app: Express, email: string, withPassword = passw
 
 /** Creates a person of these roles and signs in. */
 export async function signedInAs(app: Express, services: Services, roles: Role[]) {
-  const { email } = await addPerson(services, { roles, email: `${roles.join(".")}@chain.example` });
+  const { email } = await addPerson(services, { roles, email: `${roles.join(".") || "nobody"}@chain.example` });
   return signedIn(app, email);
 }
 

@@ -1,3 +1,4 @@
+import { randomUUID } from "node:crypto";
 import type { EntityManager } from "@mikro-orm/postgresql";
 import type { Permission } from "@shared/contract/permissions";
 import { notFound } from "../../errors";
@@ -23,6 +24,8 @@ export async function makeToken(em: EntityManager, wanted: NewToken, { caller, r
   requireOwnRights(caller, wanted.permissions);
   const { token, prefix, hash } = newToken();
   const row = em.create(AccessTokenEntity, {
+    // Given here, since the audit entry names it before the flush would.
+    id: randomUUID(),
     person: caller.personId,
     name: wanted.name,
     prefix,

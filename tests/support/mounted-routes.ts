@@ -1,0 +1,27 @@
+import type { Express } from "express";
+import type { Endpoint } from "@shared/contract/endpoint";
+import { contractEndpoints, nameOf } from "./contract-endpoints";
+
+/** What the router really holds under /api, as "METHOD path", read from the router itself. */
+export function mountedNames(app: Express): string[] {
+  return app.router.stack.flatMap(({ route }) => {
+    if (!route?.path.startsWith("/api")) return [];
+    const methods = new Set(route.stack.map((step) => step.method.toUpperCase()));
+    return [...methods].map((method) => `${method} ${route.path}`);
+  });
+}
+
+/** The contract's endpoint of each mounted route. */
+export function mountedEndpoints(app: Express): Endpoint[] {
+  const byName = new Map(contractEndpoints().map((endpoint) => [nameOf(endpoint), endpoint]));
+  return mountedNames(app).map((name) => {
+    const endpoint = byName.get(name);
+    if (!endpoint) throw new Error(`${name} is mounted, but not in the contract.`);
+    return endpoint;
+  });
+}
+
+/** The endpoint's path with an identifier that nothing has. */
+export function pathOf({ path }: Endpoint, id = "00000000-0000-4000-8000-000000000000"): string {
+  return path.replace(/:\w+/g, id);
+}
