@@ -16,9 +16,10 @@ await runCommand(async (context) => {
   }
   const { stopping } = context;
   await ensurePackages({ say, stopping });
-  const { settings, state, isRunning } = await useDatabase({ context, command: "npm run create-administrator", say });
+  const database = await useDatabase({ context, command: "npm run create-administrator", say });
+  const { settings, state } = database;
   const env = applicationEnvironment({ settings, state, hasDemo: state.demo === "loaded" && settings.embedsDatabase });
-  if (!isRunning) await migrate(env, stopping);
+  await migrate(database, env);
   await runScript({
     script: "server/features/accounts/create-administrator.ts", args: [email], env, stopping, show: true,
     failure: `No administrator was made for ${email}`,

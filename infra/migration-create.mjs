@@ -17,9 +17,10 @@ await runCommand(async (context) => {
   }
   const { stopping } = context;
   await ensurePackages({ say, stopping, withTools: true });
-  const { settings, state } = await useDatabase({ context, command: "npm run migration:create", say });
+  const database = await useDatabase({ context, command: "npm run migration:create", say });
+  const { settings, state } = database;
   const env = applicationEnvironment({ settings, state, hasDemo: false });
-  await migrate(env, stopping);
+  await migrate(database, env);
   // tsx loads the TypeScript; MikroORM would look for another loader and warn that it is not there.
   env.MIKRO_ORM_CLI_USE_TS_NODE = "0";
   // The name becomes part of the class's name.

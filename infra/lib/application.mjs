@@ -7,7 +7,8 @@ import { supervise } from "./supervise.mjs";
 const leaveWithParent = ["--import", join(projectRoot, "infra/lib/leave-with-parent.mjs")];
 
 /**
- * Starts one web process and one worker, and waits until the application answers.
+ * Starts one web process, waits until it answers, then starts one worker: on a small machine the two would only slow
+ * each other down.
  * @param {import("./services.mjs").Installation} installation
  * @param {NodeJS.ProcessEnv} env
  */
@@ -19,8 +20,6 @@ export async function startApplication({ context, turn, settings, folder, say },
   const worker = part("worker", "server/worker.ts", "worker.log");
   const url = `http://127.0.0.1:${settings.port}`;
   const untilUsable = () => waitForHealth({ url, log: web.log, stopping: context.stopping });
-  await Promise.all([
-    supervise({ part: web, context, turn, say, untilUsable }),
-    supervise({ part: worker, context, turn, say }),
-  ]);
+  await supervise({ part: web, context, turn, say, untilUsable });
+  await supervise({ part: worker, context, turn, say });
 }

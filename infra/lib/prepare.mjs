@@ -1,4 +1,6 @@
 import { applicationEnvironment } from "./application-environment.mjs";
+import { hashSources } from "./hash-sources.mjs";
+import { projectRoot } from "./paths.mjs";
 import { runScript } from "./script.mjs";
 import { planDemo } from "./settings.mjs";
 import { writeState } from "./state.mjs";
@@ -14,7 +16,7 @@ export async function prepareDatabase(installation, { mode, publicUrl } = {}) {
   const demo = planDemo({ ...settings, remembered: state.demo });
   const hasDemo = demo !== "none";
   const env = applicationEnvironment({ settings, state, hasDemo, mode, publicUrl });
-  await migrate(env, context.stopping);
+  await migrate(installation, env);
   if (demo === "load") {
     say("Loading the demo chain (up to a minute) …");
     await runScript({
@@ -29,12 +31,18 @@ export async function prepareDatabase(installation, { mode, publicUrl } = {}) {
 }
 
 /**
+ * Runs the migrations, unless the embedded database is known to have run exactly these.
+ * @param {Pick<import("./services.mjs").Installation, "settings" | "state" | "folder" | "context">} installation
  * @param {NodeJS.ProcessEnv} env
- * @param {AbortSignal} stopping
  */
-export function migrate(env, stopping) {
-  return runScript({
-    script: "server/database/migrate.ts", env, stopping,
+export async function migrate({ settings, state, folder, context }, env) {
+  const schema = hashSources(projectRoot, ["server/migrations", "server/database"]);
+  if (settings.embedsDatabase && state.schema === schema) return;
+  await runScript({
+    script: "server/database/migrate.ts", env, stopping: context.stopping,
     failure: "The database could not be brought up to date",
   });
+  if (!settings.embedsDatabase) return;
+  state.schema = schema;
+  writeState(folder, state);
 }

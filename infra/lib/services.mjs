@@ -77,7 +77,7 @@ async function runDatabase(installation, cluster) {
   context.onClose(() => stopCluster(cluster));
   await createCluster(cluster, context.stopping);
   await startCluster(cluster, { stopping: context.stopping, say });
-  await ensureDatabase(cluster, context.stopping);
+  if (await ensureDatabase(cluster, context.stopping)) state.schema = null;
   keepClusterUp({ cluster, context, say });
 }
 

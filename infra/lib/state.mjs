@@ -12,6 +12,7 @@ import { writePrivateFile } from "./write-file.mjs";
  * @property {string} databasePassword of the embedded database
  * @property {string} sessionSecret signs the session cookies
  * @property {"loaded" | "empty" | null} demo null until the first start has decided
+ * @property {string | null} schema hash of the migrations that the embedded database has run; null: not known
  */
 
 /**
@@ -51,6 +52,7 @@ export function newState() {
     databasePassword: randomBytes(24).toString("hex"),
     sessionSecret: randomBytes(32).toString("hex"),
     demo: null,
+    schema: null,
   };
 }
 
@@ -72,6 +74,7 @@ function parse(text) {
     typeof value.ports === "object" &&
     value.ports !== null &&
     Object.values(value.ports).every(Number.isInteger) &&
-    [null, "loaded", "empty"].includes(value.demo);
+    [null, "loaded", "empty"].includes(value.demo) &&
+    ["string", "object", "undefined"].includes(typeof value.schema);
   return isWhole ? value : null;
 }

@@ -23,7 +23,8 @@ export async function stopProcess(identity, { graceMs = 10_000 } = {}) {
  * @param {number} pid
  */
 function endByForce(pid) {
-  send(-pid, "SIGKILL");
+  // A container's first process leads everything, which is no group of ours.
+  if (pid > 1) send(-pid, "SIGKILL");
   send(pid, "SIGKILL");
 }
 

@@ -9,18 +9,16 @@ import { readTurn } from "./turn.mjs";
  * The installation's database for a short command: that of the running application, else started for the command
  * alone, else the real one that DATABASE_URL names.
  * @param {{ context: import("./command.mjs").Context, command: string, say: (line: string) => void }} options
- * @returns {Promise<{
- *   settings: import("./settings.mjs").Settings, state: import("./state.mjs").State, isRunning: boolean,
- * }>}
+ * @returns {Promise<Pick<import("./services.mjs").Installation, "settings" | "state" | "folder" | "context">>}
  */
 export async function useDatabase({ context, command, say }) {
   const settings = readSettings();
   const folder = openDataFolder({ embedsDatabase: settings.embedsDatabase, say });
   const running = readTurn(folder);
   if (running?.address || !settings.embedsDatabase) {
-    return { settings, state: readState(folder), isRunning: Boolean(running?.address) };
+    return { settings, state: readState(folder), folder, context };
   }
   const installation = await openInstallation({ context, command, say });
   await startServices(installation, { databaseOnly: true });
-  return { settings, state: installation.state, isRunning: false };
+  return installation;
 }

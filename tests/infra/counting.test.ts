@@ -2,7 +2,7 @@ import { mkdirSync, utimesSync, writeFileSync } from "node:fs";
 import { join } from "node:path";
 import { describe, expect, it } from "vitest";
 import { restartDelayMs } from "../../infra/lib/back-off.mjs";
-import { hashSources } from "../../infra/lib/client-build.mjs";
+import { hashSources } from "../../infra/lib/hash-sources.mjs";
 import { folderNameFor } from "../../infra/lib/data-folder.mjs";
 import { countStage, sum, summaryLine } from "../../infra/lib/test-count.mjs";
 import { temporaryFolders } from "./temporary-folder";
@@ -53,7 +53,7 @@ describe("starting a part again", () => {
   });
 });
 
-describe("the hash of the client's sources", () => {
+describe("the hash of sources", () => {
   function makeSources() {
     const root = makeFolder();
     mkdirSync(join(root, "src", "deep"), { recursive: true });

@@ -147,6 +147,7 @@ export async function stopCluster(cluster) {
  * @param {Cluster} cluster
  * @param {AbortSignal} stopping
  * @param {{ mayCreateDatabases?: boolean }} [rights] tests make databases of their own
+ * @returns {Promise<boolean>} whether the database is new
  */
 export async function ensureDatabase(cluster, stopping, { mayCreateDatabases = false } = {}) {
   const ask = (/** @type {string} */ sql) =>
@@ -165,6 +166,7 @@ export async function ensureDatabase(cluster, stopping, { mayCreateDatabases = f
   const createdb = mayCreateDatabases ? "createdb" : "nocreatedb";
   if (roles === "0") await ask(`create role shelftide login ${createdb} password '${cluster.password}'`);
   if (databases === "0") await ask("create database shelftide owner shelftide");
+  return databases === "0";
 }
 
 /**
