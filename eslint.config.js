@@ -31,5 +31,6 @@ export default tseslint.config(
     },
   },
   { files: ["src/**/*.{ts,tsx}"], languageOptions: { globals: globals.browser }, plugins: { "react-hooks": reactHooks }, rules: { ...reactHooks.configs.recommended.rules, ...rulesOfTheCompiler } },
+  { files: ["public/**"], languageOptions: { globals: globals.browser } },
   { files: ["infra/**", "demo/**", "tests/bench/**", "server/main.ts", "server/worker.ts"], languageOptions: { globals: globals.node }, rules: { "no-console": "off" } },
 );

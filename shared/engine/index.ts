@@ -7,6 +7,8 @@ export {
   covarianceQuadratic, designRows, designTransposeTimes, designTransposeTimesMany, transposeTimes,
 } from "./predict/design-rows";
 export type { DesignRows } from "./predict/design-rows";
+export { normalQuantile } from "./predict/level";
 export { predict } from "./predict/predict";
+export { supportCounts } from "./predict/support";
 export { termCurve } from "./predict/term-curve";
 export { parseModel, serialiseModel } from "./model-text";

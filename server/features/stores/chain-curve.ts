@@ -1,4 +1,4 @@
-import { normalQuantile } from "@shared/engine/predict/level";
+import { normalQuantile } from "@shared/engine";
 import type { Interval, StoreCurve } from "./store-curve";
 
 /** A store that learnt the driver, and how much it counts. */

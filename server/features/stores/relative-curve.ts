@@ -1,7 +1,7 @@
 import {
   covarianceQuadratic, designRows, termCurve, transposeTimes, type FittedModel, type FittedTerm, type ModelData, type TermCurve,
 } from "@shared/engine";
-import { normalQuantile } from "@shared/engine/predict/level";
+import { normalQuantile } from "@shared/engine";
 
 /** A curve with the values it was asked at. */
 export type BandedCurve = Pick<TermCurve, "estimate" | "standardError" | "lower" | "upper">;

@@ -1,5 +1,4 @@
-import { termCurve } from "../../engine";
-import { normalQuantile } from "../../engine/predict/level";
+import { normalQuantile, termCurve } from "../../engine";
 import type { Interval } from "../scenario/scenario";
 import { membersOf } from "./lane-term";
 import type { LaneStore } from "./lane-term";

@@ -1,6 +1,5 @@
-import { termCurve } from "../../engine";
+import { normalQuantile, termCurve } from "../../engine";
 import type { FittedTerm, TermCurve } from "../../engine";
-import { normalQuantile } from "../../engine/predict/level";
 import type { Driver } from "../driver";
 import { membersOf } from "./lane-term";
 import type { LaneMember, LaneStore } from "./lane-term";

@@ -1,6 +1,6 @@
 import type { Day } from "../../calendar";
 import type { FittedModel, FittedTerm } from "../../engine";
-import { supportCounts } from "../../engine/predict/support";
+import { supportCounts } from "../../engine";
 import { driverOfTerm } from "../driver";
 import type { Driver } from "../driver";
 import type { ModelCell } from "../model-columns";

@@ -1,4 +1,4 @@
-import { normalQuantile } from "../../engine/predict/level";
+import { normalQuantile } from "../../engine";
 import { PlanningError } from "../planning-error";
 import { groupByStore } from "./plan-cells";
 import type { ScenarioPlan, ScenarioPrediction, StoreModel } from "./scenario";
