@@ -161,6 +161,8 @@ describe("POST /api/models for one store", () => {
     const spec = (term: object) => ({ product: "JAM", stores: ["A1"], spec: { ...logLog, terms: [term] } });
     await refused(spec({ kind: "linear", column: "moonlight" }), "column-missing", /moonlight/);
     await refused(spec({ kind: "smooth", column: "regularPrice" }), "column-constant", /regularPrice/);
+    const curves = Array.from({ length: 20 }, (_, index) => ({ kind: "smooth", id: `curve ${index}`, column: "price", size: 40 }));
+    await refused({ product: "JAM", stores: ["A1"], spec: { ...logLog, terms: curves } }, "spec-too-large", /800 coefficients: at most 160/);
     await refused(spec({ kind: "wavelet", column: "price" }), "invalid-request", /./);
   });
 

@@ -8,6 +8,7 @@ import { ProductEntity } from "../../catalogue";
 import { requireProduct, requireStores, type ProductReference } from "../catalogue-lookup";
 import { ModelEntity, type ModelRow } from "../drivers.entities";
 import { storesThatSold } from "../sales/sales.repository";
+import { requireModestSpec } from "./spec-size";
 
 /** What a person, script or the demo asks to have fitted. */
 export type FitRequest = {
@@ -31,7 +32,8 @@ export type CheckedRequest = FitRequest & { productFound: ProductReference; stor
 /**
  * Finds what a request names.
  *
- * @throws ProblemError 422 for an unknown product or store, weeks the wrong way round, or a product nobody sold.
+ * @throws ProblemError 422 for an unknown product or store, weeks the wrong way round, a specification beyond all measure,
+ * or a product nobody sold.
  */
 export async function checkRequest(em: EntityManager, request: FitRequest): Promise<CheckedRequest> {
   const { weeks } = request;
@@ -39,6 +41,7 @@ export async function checkRequest(em: EntityManager, request: FitRequest): Prom
     const detail = `The first week ${weeks.first} lies after the last one ${weeks.last}. Give them the other way round.`;
     throw unusable("weeks-reversed", detail, [{ path: "weeks.first", message: detail }]);
   }
+  if (request.spec) requireModestSpec(request.spec);
   const productFound = await requireProduct(em, request.product);
   const storesFound = request.stores
     ? await requireStores(em, request.stores)
