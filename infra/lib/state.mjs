@@ -75,6 +75,6 @@ function parse(text) {
     value.ports !== null &&
     Object.values(value.ports).every(Number.isInteger) &&
     [null, "loaded", "empty"].includes(value.demo) &&
-    ["string", "object", "undefined"].includes(typeof value.schema);
+    (value.schema == null || typeof value.schema === "string");
   return isWhole ? value : null;
 }
