@@ -34,7 +34,12 @@ export function createFileStore(environment: Environment): FileStore {
   return {
     async put({ key, body, contentType }) {
       const upload = new Upload({ client, params: { Bucket: bucket, Key: key, Body: body, ContentType: contentType } });
-      await upload.done();
+      try {
+        await upload.done();
+      } catch (error) {
+        // Taking back what was sent may fail too; what counts is why it had to be.
+        throw body.errored ?? error;
+      }
     },
     async get(key) {
       const { Body } = await client.send(new GetObjectCommand({ Bucket: bucket, Key: key }));

@@ -122,6 +122,6 @@ describe("a check", () => {
   it("tells in its job how many rows it has read", async () => {
     const extract = await checked(test, { file: salesFile("2026-06-01,S1,P1,1,1.79,1.79,,0,0,none") });
     const { body: job } = await read(test, `/api/jobs/${extract.jobId}`).expect(200);
-    expect(job).toMatchObject({ state: "succeeded", progress: { done: extract.sizeBytes, total: extract.sizeBytes, message: "1 rows read; comparing them" }, subject: `/api/extracts/${extract.id}` });
+    expect(job).toMatchObject({ state: "succeeded", progress: { done: extract.sizeBytes, total: extract.sizeBytes, message: "Rows read: 1. Comparing them" }, subject: `/api/extracts/${extract.id}` });
   });
 });

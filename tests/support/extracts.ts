@@ -3,7 +3,7 @@ import { Readable } from "node:stream";
 import request from "supertest";
 import type { Extract, ExtractKind } from "@shared/contract/extracts";
 import { ensureChain } from "../../server/features/chain";
-import { checkExtract, receiveExtract } from "../../server/features/extracts";
+import { checkExtract, loadExtract, receiveExtract } from "../../server/features/extracts";
 import { hasEnded, waitForJob } from "./jobs";
 import { bearerOf } from "./people";
 import { startTestApp, type TestApp } from "./test-app";
@@ -83,6 +83,14 @@ export const productsFile = [
 export async function loadCatalogue(test: ExtractsApp): Promise<void> {
   await loaded(test, { kind: "stores" satisfies ExtractKind, file: storesFile });
   await loaded(test, { kind: "products" satisfies ExtractKind, file: productsFile });
+}
+
+/** The same without HTTP and queue. */
+export async function loadCatalogueDirectly(test: ExtractsApp): Promise<void> {
+  for (const [kind, file] of [["stores", storesFile], ["products", productsFile]] as const) {
+    const { id } = await checkedDirectly(test, { kind, file });
+    await loadExtract(test.services, { extractId: id });
+  }
 }
 
 export const salesHeader = "week,store,product,units,net_sales,regular_price,shelf_price,feature,display,mechanic";

@@ -40,12 +40,18 @@ const readIssues = route(contract.listExtractIssues, async ({ em, params, query 
 
 const readChanges = route(contract.getExtractChanges, ({ em, params }) => getChanges(em, params.id));
 
-const readOriginal = route(contract.getExtractOriginal, async ({ em, services, params, response }) => {
+const readOriginal = route(contract.getExtractOriginal, async (call) => {
+  const { em, services, params, response } = call;
   const { extract, body } = await openOriginal(em, services, params.id);
   // The name decides nothing but the name: as any other type a browser might show what someone uploaded.
   response.attachment(extract.fileName).type("application/octet-stream");
   response.set({ "Content-Length": String(extract.sizeBytes), "X-Content-Type-Options": "nosniff", "Cache-Control": "private, no-store" });
-  await pipeline(body, response);
+  try {
+    await pipeline(body, response);
+  } catch (error) {
+    // Who asked for it has gone: that is no fault of ours.
+    if (!call.request.destroyed) throw error;
+  }
   return undefined;
 });
 

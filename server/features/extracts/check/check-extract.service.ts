@@ -61,7 +61,7 @@ async function check({ em, services, extractId, progress }: Checking): Promise<v
   const definition = kinds[extract.kind];
   await removeIssues(em, extractId);
   const { table, rowsRead, log } = await stageRows({ em, services, extract, progress: reading(extract.sizeBytes, progress) });
-  await progress({ done: extract.sizeBytes, total: extract.sizeBytes, message: `${count.format(rowsRead)} rows read; comparing them` });
+  await progress({ done: extract.sizeBytes, total: extract.sizeBytes, message: `Rows read: ${count.format(rowsRead)}. Comparing them` });
   await keepIssues(em, { extractId, issues: log.kept });
   await analyseStaging(em, table);
   const together = { em, table, extractId, log, keep: true };
@@ -82,7 +82,7 @@ async function check({ em, services, extractId, progress }: Checking): Promise<v
 }
 
 const reading = (sizeBytes: number, progress: Progress) => ({ readBytes, rowsRead, errors }: StagingProgress) =>
-  progress({ done: readBytes, total: sizeBytes, message: `${count.format(rowsRead)} rows read, ${count.format(errors)} of them with errors` });
+  progress({ done: readBytes, total: sizeBytes, message: `Rows read: ${count.format(rowsRead)}, with errors: ${count.format(errors)}` });
 
 const noUsableRow = (rowsRead: number) => ({
   code: "no-usable-row",

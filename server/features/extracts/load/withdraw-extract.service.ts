@@ -26,8 +26,9 @@ export async function requireWithdrawable(em: EntityManager, extract: Extract): 
   const confirmed = await countConfirmed(em, extract.id);
   const by = replaced.by ?? confirmed.by;
   if (by === null) return;
-  const rows = count.format(replaced.rows + confirmed.rows);
-  const detail = `${by}, loaded later, holds the same products, stores and weeks in ${rows} rows. Withdraw that first, or load a corrected file over both.`;
+  const total = replaced.rows + confirmed.rows;
+  const rows = total === 1 ? "one row" : `${count.format(total)} rows`;
+  const detail = `${by}, loaded later, holds the same products, stores and weeks in ${rows}. Withdraw that first, or load a corrected file over both.`;
   throw conflict("touched-later", detail);
 }
 
