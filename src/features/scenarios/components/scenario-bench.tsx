@@ -58,7 +58,7 @@ export const ScenarioBench = ({ scenario, context }: { scenario: Scenario; conte
   return (
     <>
       {head}
-      <div className="grid items-start gap-5 xl:grid-cols-[minmax(0,1fr)_23.5rem]">
+      <div className="grid grid-cols-[minmax(0,1fr)] items-start gap-5 xl:grid-cols-[minmax(0,1fr)_23.5rem]">
         <div className="flex min-w-0 flex-col gap-5">
           <BenchLanes scenario={scenario} figures={figures} level={level} week={week} onWeek={setWeek} editing={editing} />
           <WeekSheet figures={figures} context={context} week={week} onWeek={setWeek} />
