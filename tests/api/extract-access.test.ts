@@ -51,8 +51,8 @@ describe("extracts", () => {
     const seen: string[] = [];
     let cursor: string | null = "";
     while (cursor !== null) {
-      const page = await read(test, `/api/extracts?limit=1${cursor && `&cursor=${cursor}`}`).expect(200);
-      seen.push(...page.body.items.map((item: { id: string }) => item.id));
+      const page: { body: { items: { id: string }[]; nextCursor: string | null } } = await read(test, `/api/extracts?limit=1${cursor && `&cursor=${cursor}`}`).expect(200);
+      seen.push(...page.body.items.map((item) => item.id));
       cursor = page.body.nextCursor;
     }
     expect(seen).toEqual(all.items.map((item: { id: string }) => item.id));
