@@ -27,56 +27,14 @@ beforeAll(async () => {
 });
 afterAll(() => test.stop());
 
-const logLog = { response: "units", family: "log-gaussian", terms: [{ kind: "linear", column: "price", log: true }] } as const;
+const logLog = {
+  response: "units",
+  family: "log-gaussian",
+  terms: [{ kind: "linear", column: "price", log: true }],
+} as const;
 
-const fitAt = (store: string, body: object = {}) => planner.post("/api/models").send({ product: "JAM", stores: [store], ...body });
-
-describe("GET /api/sales", () => {
-  it("gives a product's weeks in one store, filled up from the catalogue", async () => {
-    const { body } = await planner.get("/api/sales?product=JAM&store=A1").expect(200);
-    const [first] = sampleRows();
-    expect(body.items).toHaveLength(104);
-    expect(body.items[0]).toEqual({
-      week: first.week, units: first.units, netSales: first.units * first.price, price: first.price, priceSource: "shelf",
-      regularPrice: 2, promotion: "both", mechanic: "none", temperatureC: first.temperatureC, event: null,
-      openDays: null, stockOutDays: null,
-    });
-  });
-
-  it("keeps to the weeks asked for", async () => {
-    const { body } = await planner.get("/api/sales?product=JAM&store=A1&first=2024-12-30&last=2025-01-06").expect(200);
-    expect(body.items.map(({ week }: { week: string }) => week)).toEqual(["2024-12-30", "2025-01-06"]);
-  });
-
-  it("takes a row's own temperature and event first, then the store's, then the region's largest overlap", async () => {
-    const run = (sql: string) => test.services.pool.query(sql);
-    await run("insert into temperatures (week, store_code, temperature_c) values ('2024-06-03', 'B1', 31.5)");
-    await run(`insert into events (code, name, first_day, last_day, region) values
-      ('long', 'Long', '2024-06-05', '2024-06-12', ''), ('short', 'Short', '2024-06-03', '2024-06-04', 'moor'),
-      ('elsewhere', 'Elsewhere', '2024-06-03', '2024-06-09', 'coast')`);
-    const weeks = async () => {
-      const { body } = await planner.get("/api/sales?product=JAM&store=B1&first=2024-06-03&last=2024-06-10").expect(200);
-      return body.items.map(({ temperatureC, event }: { temperatureC: number; event: string | null }) => ({ temperatureC, event }));
-    };
-    const regional = sampleRows().find(({ store, week }) => store === "B1" && week === "2024-06-10");
-    expect(await weeks()).toEqual([{ temperatureC: 31.5, event: "long" }, { temperatureC: regional?.temperatureC, event: "long" }]);
-
-    await run(`update weekly_sales set temperature_c = 33, event = 'own' where week = '2024-06-03' and store_id = (select id from stores where code = 'B1')`);
-    expect((await weeks())[0]).toEqual({ temperatureC: 33, event: "own" });
-
-    await run(`update weekly_sales set temperature_c = null, event = null where week = '2024-06-03'`);
-    await run("delete from events where code in ('long', 'short', 'elsewhere')");
-    await run("delete from temperatures where store_code = 'B1'");
-  });
-
-  it("refuses unknown codes by name, and strangers", async () => {
-    const { body } = await planner.get("/api/sales?product=JAM&store=Z9").expect(422);
-    expect(body).toMatchObject({ code: "unknown-store", detail: expect.stringContaining('"Z9"') });
-    await planner.get("/api/sales?product=NONE&store=A1").expect(422).expect(/unknown-product/);
-    await planner.get("/api/sales?product=JAM").expect(422);
-    await request(test.app).get("/api/sales?product=JAM&store=A1").expect(401);
-  });
-});
+const fitAt = (store: string, body: object = {}) =>
+  planner.post("/api/models").send({ product: "JAM", stores: [store], ...body });
 
 describe("POST /api/models for one store", () => {
   it("finds the elasticity that a regression by hand finds", async () => {
@@ -102,32 +60,59 @@ describe("POST /api/models for one store", () => {
 
   it("fits the default specification, and keeps a model that survives the way to the database and back", async () => {
     const { body } = await fitAt("A1").expect(201);
-    expect(body.terms.map(({ id }: { id: string }) => id)).toEqual(["price", "promotion", "yearFraction", "temperatureC"]);
+    expect(body.terms.map(({ id }: { id: string }) => id)).toEqual([
+      "price",
+      "promotion",
+      "yearFraction",
+      "temperatureC",
+    ]);
     const { body: kept } = await planner.get(`/api/models/${body.id}/fits`).expect(200);
     expect(kept.items).toHaveLength(1);
     const model = parseModel(kept.items[0].fit);
     expect(body.fitted.map(({ value }: { value: number }) => value)).toEqual(Array.from(model.fitted));
     expect(body.coefficients.map(({ value }: { value: number }) => value)).toEqual(Array.from(model.coefficients));
 
-    const { body: drawn } = await planner.get(`/api/models/${body.id}/curves?store=A1&level=0.9&points=40`).expect(200);
+    const { body: drawn } = await planner
+      .get(`/api/models/${body.id}/curves?store=A1&level=0.9&points=40`)
+      .expect(200);
     const price = drawn.curves.find(({ driver }: { driver: string }) => driver === "price");
     const curve = termCurve(model, "price", { points: 40, level: 0.9, derivative: true });
-    expect(price).toMatchObject({ kind: "smooth", column: "price", estimate: Array.from(curve.estimate), upper: Array.from(curve.upper) });
+    expect(price).toMatchObject({
+      kind: "smooth",
+      column: "price",
+      estimate: Array.from(curve.estimate),
+      upper: Array.from(curve.upper),
+    });
     expect(price.elasticity.estimate).toEqual(Array.from(curve.derivative?.estimate ?? []));
     expect(price.seen).toHaveLength(104);
     const promotion = drawn.curves.find(({ driver }: { driver: string }) => driver === "promotion");
     expect(promotion).toMatchObject({ kind: "factor", seen: [], elasticity: null, observedRange: null });
     expect(promotion.x).toContain("none");
-    expect(predict(model, { price: [2], promotion: ["none"], yearFraction: [0.5], temperatureC: [15], logExposure: [0] }).mean[0]).toBeGreaterThan(0);
+    expect(
+      predict(model, { price: [2], promotion: ["none"], yearFraction: [0.5], temperatureC: [15], logExposure: [0] })
+        .mean[0],
+    ).toBeGreaterThan(0);
   });
 
   it("tells what can be said of the fit", async () => {
     const { body: created } = await fitAt("B1").expect(201);
     const { body } = await planner.get(`/api/models/${created.id}`).expect(200);
-    expect(body).toMatchObject({ product: "JAM", state: "candidate", spec: null, createdBy: "Test Person", skipped: [], notForPlans: null });
+    expect(body).toMatchObject({
+      product: "JAM",
+      state: "candidate",
+      spec: null,
+      createdBy: "Test Person",
+      skipped: [],
+      notForPlans: null,
+    });
     expect(body.fits).toHaveLength(1);
     expect(body.fits[0]).toMatchObject({
-      store: "B1", rows: 104, firstWeek: sample.firstWeek, lastWeek: sample.lastWeek, converged: true, stockOuts: { leftOut: 0, partly: 0 },
+      store: "B1",
+      rows: 104,
+      firstWeek: sample.firstWeek,
+      lastWeek: sample.lastWeek,
+      converged: true,
+      stockOuts: { leftOut: 0, partly: 0 },
     });
     expect(body.fits[0].leftOut.map(({ driver }: { driver: string }) => driver)).toEqual(["mechanic", "event"]);
     expect(body.fits[0].meanBaseUnits).toBeGreaterThan(20);
@@ -136,13 +121,23 @@ describe("POST /api/models for one store", () => {
 
   it("leaves an entry in the audit trail", async () => {
     const { body } = await fitAt("A1").expect(201);
-    const { rows } = await test.services.pool.query("select action, person_id, detail from audit_entries where subject_kind = 'model' and subject_id = $1", [body.id]);
-    expect(rows).toEqual([{ action: "model.fitted", person_id: plannerId, detail: { product: "JAM", stores: 1, weeks: null } }]);
+    const { rows } = await test.services.pool.query(
+      "select action, person_id, detail from audit_entries where subject_kind = 'model' and subject_id = $1",
+      [body.id],
+    );
+    expect(rows).toEqual([
+      { action: "model.fitted", person_id: plannerId, detail: { product: "JAM", stores: 1, weeks: null } },
+    ]);
   });
 
   it("keeps to the weeks asked for", async () => {
     const { body } = await fitAt("A1", { weeks: { first: "2025-01-01", last: "2025-06-30" } }).expect(201);
-    expect(body.fitted.map(({ week }: { week: string }) => week).sort().at(0)).toBe("2025-01-06");
+    expect(
+      body.fitted
+        .map(({ week }: { week: string }) => week)
+        .sort()
+        .at(0),
+    ).toBe("2025-01-06");
     expect(body.fitted).toHaveLength(26);
   });
 
@@ -156,23 +151,45 @@ describe("POST /api/models for one store", () => {
     await refused({ product: "TEA", stores: ["A1"] }, "no-sales", /"A1".*"TEA"/);
     await refused({ product: "TEA" }, "no-sales", /"TEA"/);
     await refused({ product: "JAM", stores: ["B2"] }, "too-few-weeks", /5 weeks .* at least 8/);
-    await refused({ product: "JAM", stores: ["A1"], weeks: { first: "2025-01-06", last: "2024-01-01" } }, "weeks-reversed", /2025-01-06/);
+    await refused(
+      { product: "JAM", stores: ["A1"], weeks: { first: "2025-01-06", last: "2024-01-01" } },
+      "weeks-reversed",
+      /2025-01-06/,
+    );
     await refused({ product: "JAM", stores: [] }, "invalid-request", /./);
     const spec = (term: object) => ({ product: "JAM", stores: ["A1"], spec: { ...logLog, terms: [term] } });
     await refused(spec({ kind: "linear", column: "moonlight" }), "column-missing", /moonlight/);
     await refused(spec({ kind: "smooth", column: "regularPrice" }), "column-constant", /regularPrice/);
-    const curves = Array.from({ length: 20 }, (_, index) => ({ kind: "smooth", id: `curve ${index}`, column: "price", size: 40 }));
-    await refused({ product: "JAM", stores: ["A1"], spec: { ...logLog, terms: curves } }, "spec-too-large", /800 coefficients: at most 160/);
+    const curves = Array.from({ length: 20 }, (_, index) => ({
+      kind: "smooth",
+      id: `curve ${index}`,
+      column: "price",
+      size: 40,
+    }));
+    await refused(
+      { product: "JAM", stores: ["A1"], spec: { ...logLog, terms: curves } },
+      "spec-too-large",
+      /800 coefficients: at most 160/,
+    );
     await refused(spec({ kind: "wavelet", column: "price" }), "invalid-request", /./);
   });
 
   it("refuses a body that is none, strangers, and people who do not fit models", async () => {
     await planner.post("/api/models").expect(422);
-    await planner.post("/api/models").set("content-type", "application/json").send("{").expect(400).expect(/malformed-json/);
+    await planner
+      .post("/api/models")
+      .set("content-type", "application/json")
+      .send("{")
+      .expect(400)
+      .expect(/malformed-json/);
     await request(test.app).post("/api/models").send({ product: "JAM" }).expect(401);
     const { email } = await addPerson(test.services, { roles: ["data-admin"] });
     const admin = await signedIn(test.app, email);
-    await admin.post("/api/models").send({ product: "JAM", stores: ["A1"] }).expect(403).expect(/not-allowed/);
+    await admin
+      .post("/api/models")
+      .send({ product: "JAM", stores: ["A1"] })
+      .expect(403)
+      .expect(/not-allowed/);
   });
 });
 
@@ -180,7 +197,10 @@ describe("a product's first model", () => {
   it("is put in use by the chain's rule, which the audit trail says", async () => {
     const { body } = await planner.get("/api/models?product=JAM&state=in-use").expect(200);
     expect(body.items).toHaveLength(1);
-    const { rows } = await test.services.pool.query("select person_id, detail from audit_entries where action = 'model.used' and subject_id = $1", [body.items[0].id]);
+    const { rows } = await test.services.pool.query(
+      "select person_id, detail from audit_entries where action = 'model.used' and subject_id = $1",
+      [body.items[0].id],
+    );
     expect(rows).toEqual([{ person_id: null, detail: { rule: "first model of its product" } }]);
   });
 });
@@ -191,11 +211,19 @@ describe("POST /api/models for all stores", () => {
     expect(answer.headers.location).toBe(`/api/jobs/${answer.body.jobId}`);
     const job = await waitForJob(test.services, answer.body.jobId, hasEnded);
     expect(job).toMatchObject({ state: "succeeded", done: 4, total: 4, subject: `/api/models/${answer.body.id}` });
-    expect(job.result).toMatchObject({ fitted: 3, skipped: [{ store: "B2", reason: expect.stringMatching(/^5 weeks/) }] });
+    expect(job.result).toMatchObject({
+      fitted: 3,
+      skipped: [{ store: "B2", reason: expect.stringMatching(/^5 weeks/) }],
+    });
 
     const { body } = await planner.get(`/api/models/${answer.body.id}`).expect(200);
     expect(body.fits.map(({ store }: { store: string }) => store)).toEqual(["A1", "A2", "B1"]);
-    expect(body).toMatchObject({ state: "candidate", jobId: answer.body.jobId, skipped: [{ store: "B2" }], may: { use: false } });
+    expect(body).toMatchObject({
+      state: "candidate",
+      jobId: answer.body.jobId,
+      skipped: [{ store: "B2" }],
+      may: { use: false },
+    });
     const { body: some } = await planner.get(`/api/models/${answer.body.id}/fits?stores=A2,B2`).expect(200);
     expect(some.items.map(({ store }: { store: string }) => store)).toEqual(["A2"]);
     const { body: without } = await planner.get(`/api/models/${answer.body.id}/curves?store=B2`).expect(404);
@@ -204,9 +232,15 @@ describe("POST /api/models for all stores", () => {
 
   it("leaves no model where no store could be fitted", async () => {
     const before = await planner.get("/api/models?product=JAM").expect(200);
-    const answer = await planner.post("/api/models").send({ product: "JAM", stores: ["B2", "A1"], weeks: { first: "2025-12-01", last: "2025-12-22" } }).expect(202);
+    const answer = await planner
+      .post("/api/models")
+      .send({ product: "JAM", stores: ["B2", "A1"], weeks: { first: "2025-12-01", last: "2025-12-22" } })
+      .expect(202);
     const job = await waitForJob(test.services, answer.body.jobId, (row) => hasEnded(row) && !row.cleanupPending);
-    expect(job).toMatchObject({ state: "failed", error: { code: "nothing-fitted", detail: expect.stringContaining("B2") } });
+    expect(job).toMatchObject({
+      state: "failed",
+      error: { code: "nothing-fitted", detail: expect.stringContaining("B2") },
+    });
     await planner.get(`/api/models/${answer.body.id}`).expect(404);
     const after = await planner.get("/api/models?product=JAM").expect(200);
     expect(after.body.items).toHaveLength(before.body.items.length);
@@ -214,17 +248,39 @@ describe("POST /api/models for all stores", () => {
 
   it("goes on where a run before it ended", async () => {
     const em = test.services.orm.em.fork();
-    const { rows: stores } = await test.services.pool.query<{ id: number; code: string }>("select id, code from stores order by code");
-    const { rows: [{ id: productId }] } = await test.services.pool.query("select id from products where code = 'JAM'");
+    const { rows: stores } = await test.services.pool.query<{ id: number; code: string }>(
+      "select id, code from stores order by code",
+    );
+    const {
+      rows: [{ id: productId }],
+    } = await test.services.pool.query("select id from products where code = 'JAM'");
     const model = em.create(ModelEntity, { product: productId, createdBy: plannerId, createdAt: sample.now });
     await em.persist(model).flush();
     const { services } = test;
-    const run = (progress: () => Promise<void>) => fitModelsJob.run({
-      payload: { modelId: model.id, stores }, jobId: model.id, em: services.orm.em.fork(), services, logger: createLogger("silent"), now: sample.now, signal: new AbortController().signal, progress,
-    });
+    const run = (progress: () => Promise<void>) =>
+      fitModelsJob.run({
+        payload: { modelId: model.id, stores },
+        jobId: model.id,
+        em: services.orm.em.fork(),
+        services,
+        logger: createLogger("silent"),
+        now: sample.now,
+        signal: new AbortController().signal,
+        progress,
+      });
     let done = 0;
-    await expect(run(async () => { if (++done === 2) throw new Error("killed"); })).rejects.toThrow("killed");
-    const written = async () => (await services.pool.query("select store_id, xmin::text from model_fits where model_id = $1 order by store_id", [model.id])).rows;
+    await expect(
+      run(async () => {
+        if (++done === 2) throw new Error("killed");
+      }),
+    ).rejects.toThrow("killed");
+    const written = async () =>
+      (
+        await services.pool.query(
+          "select store_id, xmin::text from model_fits where model_id = $1 order by store_id",
+          [model.id],
+        )
+      ).rows;
     const first = await written();
     expect(first).toHaveLength(2);
     await expect(run(async () => undefined)).resolves.toMatchObject({ fitted: 3, skipped: [{ store: "B2" }] });
@@ -242,13 +298,21 @@ describe("PUT /api/models/:id/use", () => {
     const { body: before } = await planner.get("/api/models?product=JAM&state=in-use").expect(200);
     expect((await manager.get(`/api/models/${candidate.id}`).expect(200)).body.may).toEqual({ use: true });
     const { body } = await manager.put(`/api/models/${candidate.id}/use`).expect(200);
-    expect(body).toMatchObject({ id: candidate.id, state: "in-use", usedFrom: sample.now.toISOString(), may: { use: false } });
+    expect(body).toMatchObject({
+      id: candidate.id,
+      state: "in-use",
+      usedFrom: sample.now.toISOString(),
+      may: { use: false },
+    });
     await manager.put(`/api/models/${candidate.id}/use`).expect(200);
     const { body: retired } = await planner.get(`/api/models/${before.items[0].id}`).expect(200);
     expect(retired).toMatchObject({ state: "retired", usedUntil: sample.now.toISOString() });
     const { body: inUse } = await planner.get("/api/models?product=JAM&state=in-use").expect(200);
     expect(inUse.items.map(({ id }: { id: string }) => id)).toEqual([candidate.id]);
-    const { rows } = await test.services.pool.query("select count(*)::int as times from audit_entries where action = 'model.used' and subject_id = $1", [candidate.id]);
+    const { rows } = await test.services.pool.query(
+      "select count(*)::int as times from audit_entries where action = 'model.used' and subject_id = $1",
+      [candidate.id],
+    );
     expect(rows[0].times).toBe(1);
   });
 
@@ -257,14 +321,23 @@ describe("PUT /api/models/:id/use", () => {
     const { body: other } = await fitAt("B1").expect(201);
     const answers = await Promise.all([one.id, other.id].map((id) => manager.put(`/api/models/${id}/use`)));
     expect(answers.map(({ status }) => status)).toEqual([200, 200]);
-    const { rows } = await test.services.pool.query("select count(*)::int as number from models where state = 'in-use'");
+    const { rows } = await test.services.pool.query(
+      "select count(*)::int as number from models where state = 'in-use'",
+    );
     expect(rows[0].number).toBe(1);
   });
 
   it("refuses planners, managers of other categories and strangers", async () => {
     const { body: candidate } = await fitAt("A1").expect(201);
-    await planner.put(`/api/models/${candidate.id}/use`).expect(403).expect(/not-allowed/);
-    const { email } = await addPerson(test.services, { roles: ["category-manager"], categories: ["drinks"], email: "drinks@chain.example" });
+    await planner
+      .put(`/api/models/${candidate.id}/use`)
+      .expect(403)
+      .expect(/not-allowed/);
+    const { email } = await addPerson(test.services, {
+      roles: ["category-manager"],
+      categories: ["drinks"],
+      email: "drinks@chain.example",
+    });
     const other = await signedIn(test.app, email);
     const { body } = await other.put(`/api/models/${candidate.id}/use`).expect(403);
     expect(body).toMatchObject({ code: "not-your-category", detail: expect.stringContaining("spreads") });
@@ -295,7 +368,10 @@ describe("reading models", () => {
 
   it("refuses unknown models, codes and strangers", async () => {
     const unknown = "6f1f7a52-5c3c-4c3b-9d55-2f3a1e0c7d11";
-    await planner.get("/api/models?product=NONE").expect(422).expect(/unknown-product/);
+    await planner
+      .get("/api/models?product=NONE")
+      .expect(422)
+      .expect(/unknown-product/);
     await planner.get("/api/models").expect(422);
     await planner.get("/api/models?product=JAM&state=sleeping").expect(422);
     for (const path of ["", "/fits", "/curves?store=A1"]) {
@@ -303,7 +379,10 @@ describe("reading models", () => {
       await request(test.app).get(`/api/models/${unknown}${path}`).expect(401);
     }
     const { body: made } = await fitAt("A1").expect(201);
-    await planner.get(`/api/models/${made.id}/curves?store=Z9`).expect(422).expect(/unknown-store/);
+    await planner
+      .get(`/api/models/${made.id}/curves?store=Z9`)
+      .expect(422)
+      .expect(/unknown-store/);
     await planner.get(`/api/models/${made.id}/curves?store=A1&level=2`).expect(422);
     await planner.get(`/api/models/${made.id}/curves`).expect(422);
     await request(test.app).get("/api/models?product=JAM").expect(401);

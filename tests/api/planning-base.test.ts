@@ -6,7 +6,10 @@ import { storeNormals } from "../../server/features/scenarios/context/store-temp
 import { toldValue } from "../../server/features/scenarios/context/told-value";
 
 const yearsOf = (first: string, count: number, temperature: (week: string, index: number) => number) =>
-  weeksBetween(first, addWeeks(first, count - 1)).map((week, index) => ({ week, temperatureC: temperature(week, index) }));
+  weeksBetween(first, addWeeks(first, count - 1)).map((week, index) => ({
+    week,
+    temperatureC: temperature(week, index),
+  }));
 
 describe("a normal temperature", () => {
   it("is the plain mean of the other years where each of them was even", () => {
@@ -17,7 +20,9 @@ describe("a normal temperature", () => {
 
   it("takes no notice of the week itself and its own season, however hot", () => {
     const even = yearsOf("2023-01-02", 156, () => 10);
-    const hot = even.map((entry) => (entry.week >= "2025-05-01" && entry.week <= "2025-08-31" ? { ...entry, temperatureC: 40 } : entry));
+    const hot = even.map((entry) =>
+      entry.week >= "2025-05-01" && entry.week <= "2025-08-31" ? { ...entry, temperatureC: 40 } : entry,
+    );
     expect(normalTemperature(hot)("2025-06-30")).toBeCloseTo(10, 12);
   });
 
@@ -91,8 +96,15 @@ describe("a price told for a week", () => {
 
 describe("notes on a plan's base", () => {
   const cell = {
-    store: "S1", week: "2026-01-05", regularPrice: 2, normalTemperatureC: 5, event: null, yearFraction: 0.02, weekIndex: 2922,
-    unitCost: 1, taxRate: 0,
+    store: "S1",
+    week: "2026-01-05",
+    regularPrice: 2,
+    normalTemperatureC: 5,
+    event: null,
+    yearFraction: 0.02,
+    weekIndex: 2922,
+    unitCost: 1,
+    taxRate: 0,
   };
   it("are none where nothing is missing", () => {
     expect(contextNotes({ base: [cell], withoutModel: [], skipped: [], roughNormals: [] })).toEqual([]);
@@ -101,7 +113,10 @@ describe("notes on a plan's base", () => {
   it("name stores without a model or a price, five at most", () => {
     const stores = ["S1", "S2", "S3", "S4", "S5", "S6", "S7"];
     const notes = contextNotes({
-      base: [{ ...cell, regularPrice: null }], withoutModel: stores, skipped: [{ store: "S2", reason: "Too new." }], roughNormals: ["S1"],
+      base: [{ ...cell, regularPrice: null }],
+      withoutModel: stores,
+      skipped: [{ store: "S2", reason: "Too new." }],
+      roughNormals: ["S1"],
     });
     expect(notes).toEqual([
       "7 stores have no model: S1, S2, S3, S4, S5 and 2 more.",

@@ -2,13 +2,11 @@ import type { Agent } from "supertest";
 import request from "supertest";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { addWeeks } from "@shared/calendar";
-import type { BaseCell, Prediction, Scenario, ScenarioDraft } from "@shared/contract/scenarios";
-import { parseModel } from "@shared/engine";
-import { planInput, predictScenario } from "@shared/planning";
+import type { Scenario, ScenarioDraft } from "@shared/contract/scenarios";
 import { fitProduct } from "../../server/features/drivers";
 import { createScenario } from "../../server/features/scenarios";
 import { addPerson, signedIn } from "../support/people";
-import { loadSample, sample, sampleTemperature } from "../support/sample-sales";
+import { loadSample, sample, sampleDraft } from "../support/sample-sales";
 import { startTestApp, type TestApp } from "../support/test-app";
 
 let test: TestApp;
@@ -24,28 +22,24 @@ beforeAll(async () => {
   const person = await addPerson(test.services, { roles: ["planner"], name: "Pia Planner" });
   plannerId = person.id;
   planner = await signedIn(test.app, person.email);
-  const other = await addPerson(test.services, { roles: ["planner"], name: "Otto Other", email: "otto@chain.example" });
+  const other = await addPerson(test.services, {
+    roles: ["planner"],
+    name: "Otto Other",
+    email: "otto@chain.example",
+  });
   colleague = await signedIn(test.app, other.email);
 });
 afterAll(() => test.stop());
 
-const weeks = { first: "2026-01-12", last: "2026-02-16" };
-const draft: ScenarioDraft = {
-  name: "Winter jam",
-  product: "JAM",
-  stores: ["A1", "A2", "B2"],
-  weeks,
-  cells: [
-    { store: "A1", week: "2026-01-19", price: 1.6, promotion: "feature" },
-    { store: "A2", week: "2026-01-19", price: 1.5, promotion: "both", temperatureC: 1 },
-    { store: "A2", week: "2026-02-09", price: 1.9 },
-  ],
-  fixedCost: 40,
-};
+const draft = sampleDraft;
+const { weeks } = draft;
 const unknown = "6f1f7a52-5c3c-4c3b-9d55-2f3a1e0c7d11";
 
 async function create(changes: Partial<ScenarioDraft> = {}): Promise<Scenario> {
-  const { body } = await planner.post("/api/scenarios").send({ ...draft, ...changes }).expect(201);
+  const { body } = await planner
+    .post("/api/scenarios")
+    .send({ ...draft, ...changes })
+    .expect(201);
   return body;
 }
 
@@ -69,8 +63,13 @@ describe("POST and GET /api/scenarios", () => {
     expect(read.headers.etag).toBe('"1"');
     expect(read.body).toEqual(answer.body);
     expect(read.body).toMatchObject({
-      ...draft, modelId, state: "draft", version: 1, createdBy: { id: plannerId, name: "Pia Planner" },
-      createdAt: sample.now.toISOString(), may: { edit: true },
+      ...draft,
+      modelId,
+      state: "draft",
+      version: 1,
+      createdBy: { id: plannerId, name: "Pia Planner" },
+      createdAt: sample.now.toISOString(),
+      may: { edit: true },
     });
   });
 
@@ -78,13 +77,21 @@ describe("POST and GET /api/scenarios", () => {
     const em = test.services.orm.em.fork();
     const scenario = await createScenario({ em, draft, personId: plannerId, now });
     expect((await planner.get(`/api/scenarios/${scenario.id}`).expect(200)).body.name).toBe("Winter jam");
-    const wrong = createScenario({ em: test.services.orm.em.fork(), draft: { ...draft, stores: ["Z9"], cells: [] }, personId: plannerId, now });
+    const wrong = createScenario({
+      em: test.services.orm.em.fork(),
+      draft: { ...draft, stores: ["Z9"], cells: [] },
+      personId: plannerId,
+      now,
+    });
     await expect(wrong).rejects.toMatchObject({ status: 422, code: "unknown-store" });
   });
 
   it("names what is wrong with a draft, where it is", async () => {
     const refused = async (changes: object, code: string, path: string, message: RegExp) => {
-      const { body } = await planner.post("/api/scenarios").send({ ...draft, ...changes }).expect(422);
+      const { body } = await planner
+        .post("/api/scenarios")
+        .send({ ...draft, ...changes })
+        .expect(422);
       expect(body).toMatchObject({ code, detail: expect.stringMatching(message) });
       expect(body.errors?.map((error: { path: string }) => error.path)).toContain(path);
     };
@@ -92,18 +99,46 @@ describe("POST and GET /api/scenarios", () => {
     await refused({ product: "NONE" }, "unknown-product", "product", /"NONE"/);
     await refused({ stores: ["A1", "Q7"], cells: [] }, "unknown-store", "stores.1", /"Q7"/);
     await refused({ stores: ["A1", "A1"], cells: [] }, "store-repeated", "stores.1", /"A1" comes twice/);
-    await refused({ weeks: { first: "2026-01-13", last: weeks.last } }, "not-a-week", "weeks.first", /Monday: write 2026-01-12/);
-    await refused({ weeks: { first: weeks.last, last: weeks.first } }, "weeks-reversed", "weeks.first", /after the last/);
-    await refused({ weeks: { first: weeks.first, last: addWeeks(weeks.first, 104) } }, "too-many-weeks", "weeks.last", /105 weeks: a plan has at most 104/);
+    await refused(
+      { weeks: { first: "2026-01-13", last: weeks.last } },
+      "not-a-week",
+      "weeks.first",
+      /Monday: write 2026-01-12/,
+    );
+    await refused(
+      { weeks: { first: weeks.last, last: weeks.first } },
+      "weeks-reversed",
+      "weeks.first",
+      /after the last/,
+    );
+    await refused(
+      { weeks: { first: weeks.first, last: addWeeks(weeks.first, 104) } },
+      "too-many-weeks",
+      "weeks.last",
+      /105 weeks: a plan has at most 104/,
+    );
     await refused(cells({ store: "B1", week: weeks.first }), "cell-outside-plan", "cells.0.store", /"B1"/);
     await refused(cells({ store: "A1", week: "2026-03-02" }), "cell-outside-plan", "cells.0.week", /2026-03-02/);
     await refused(cells({ store: "A1", week: "2026-01-20" }), "cell-outside-plan", "cells.0.week", /2026-01-20/);
     await refused(cells(draft.cells[0], draft.cells[0]), "cell-repeated", "cells.1", /comes twice/);
-    await refused(cells({ store: "A1", week: weeks.first, price: 0 }), "invalid-request", "cells.0.price", /above zero/);
-    await refused(cells({ store: "A1", week: weeks.first, promotion: "fireworks" }), "invalid-request", "cells.0.promotion", /./);
+    await refused(
+      cells({ store: "A1", week: weeks.first, price: 0 }),
+      "invalid-request",
+      "cells.0.price",
+      /above zero/,
+    );
+    await refused(
+      cells({ store: "A1", week: weeks.first, promotion: "fireworks" }),
+      "invalid-request",
+      "cells.0.promotion",
+      /./,
+    );
     await refused(cells({ store: "A1", week: weeks.first, colour: "red" }), "invalid-request", "cells.0", /./);
     await refused({ name: " " }, "invalid-request", "name", /name/);
-    await planner.post("/api/scenarios").send({ ...draft, modelId: unknown }).expect(404);
+    await planner
+      .post("/api/scenarios")
+      .send({ ...draft, modelId: unknown })
+      .expect(404);
   });
 
   it("refuses strangers, people who do not plan, and unknown scenarios", async () => {
@@ -124,19 +159,44 @@ describe("PUT /api/scenarios/:id", () => {
   it("saves over the version it was read at, and raises it", async () => {
     const { id } = await create();
     now = new Date(sample.now.getTime() + 60_000);
-    const answer = await colleague.put(`/api/scenarios/${id}`).set("If-Match", '"1"').send({ ...draft, name: "Colder jam", cells: [] }).expect(200);
+    const answer = await colleague
+      .put(`/api/scenarios/${id}`)
+      .set("If-Match", '"1"')
+      .send({ ...draft, name: "Colder jam", cells: [] })
+      .expect(200);
     now = sample.now;
     expect(answer.headers.etag).toBe('"2"');
-    expect(answer.body).toMatchObject({ name: "Colder jam", cells: [], version: 2, updatedBy: { name: "Otto Other" }, createdBy: { name: "Pia Planner" } });
+    expect(answer.body).toMatchObject({
+      name: "Colder jam",
+      cells: [],
+      version: 2,
+      updatedBy: { name: "Otto Other" },
+      createdBy: { name: "Pia Planner" },
+    });
     expect(answer.body.updatedAt > answer.body.createdAt).toBe(true);
   });
 
   it("asks for the version with 428, and refuses an old one with 412 that says who saved meanwhile", async () => {
     const { id } = await create();
-    await planner.put(`/api/scenarios/${id}`).send(draft).expect(428).expect(/version-required/);
-    await colleague.put(`/api/scenarios/${id}`).set("If-Match", '"1"').send({ ...draft, name: "Otto's" }).expect(200);
-    const late = await planner.put(`/api/scenarios/${id}`).set("If-Match", '"1"').send({ ...draft, name: "Pia's" }).expect(412);
-    expect(late.body).toMatchObject({ code: "changed-meanwhile", detail: expect.stringMatching(/Otto Other saved version 2/) });
+    await planner
+      .put(`/api/scenarios/${id}`)
+      .send(draft)
+      .expect(428)
+      .expect(/version-required/);
+    await colleague
+      .put(`/api/scenarios/${id}`)
+      .set("If-Match", '"1"')
+      .send({ ...draft, name: "Otto's" })
+      .expect(200);
+    const late = await planner
+      .put(`/api/scenarios/${id}`)
+      .set("If-Match", '"1"')
+      .send({ ...draft, name: "Pia's" })
+      .expect(412);
+    expect(late.body).toMatchObject({
+      code: "changed-meanwhile",
+      detail: expect.stringMatching(/Otto Other saved version 2/),
+    });
     expect(late.headers.etag).toBe('"2"');
     await planner.put(`/api/scenarios/${id}`).set("If-Match", "elephant").send(draft).expect(412);
     expect((await planner.get(`/api/scenarios/${id}`)).body.name).toBe("Otto's");
@@ -144,8 +204,14 @@ describe("PUT /api/scenarios/:id", () => {
 
   it("lets one of two saves at the same moment win", async () => {
     const { id } = await create();
-    const answers = await Promise.all([planner, colleague].map((agent, index) =>
-      agent.put(`/api/scenarios/${id}`).set("If-Match", '"1"').send({ ...draft, name: `Name ${index}` })));
+    const answers = await Promise.all(
+      [planner, colleague].map((agent, index) =>
+        agent
+          .put(`/api/scenarios/${id}`)
+          .set("If-Match", '"1"')
+          .send({ ...draft, name: `Name ${index}` }),
+      ),
+    );
     expect(answers.map(({ status }) => status).sort()).toEqual([200, 412]);
     const winner = answers.findIndex(({ status }) => status === 200);
     expect((await planner.get(`/api/scenarios/${id}`)).body).toMatchObject({ name: `Name ${winner}`, version: 2 });
@@ -156,7 +222,11 @@ describe("PUT /api/scenarios/:id", () => {
     const next = await fitProduct(test.services, { product: "JAM", personId: plannerId, putInUse: true });
     const kept = await planner.put(`/api/scenarios/${id}`).set("If-Match", '"1"').send(draft).expect(200);
     expect(kept.body.modelId).toBe(modelId);
-    const moved = await planner.put(`/api/scenarios/${id}`).set("If-Match", '"2"').send({ ...draft, modelId: next.modelId }).expect(200);
+    const moved = await planner
+      .put(`/api/scenarios/${id}`)
+      .set("If-Match", '"2"')
+      .send({ ...draft, modelId: next.modelId })
+      .expect(200);
     expect(moved.body.modelId).toBe(next.modelId);
     modelId = next.modelId;
   });
@@ -209,7 +279,10 @@ describe("GET /api/scenarios", () => {
   });
 
   it("refuses a cursor it did not give, and strangers", async () => {
-    await planner.get("/api/scenarios?cursor=elephant").expect(422).expect(/unknown-cursor/);
+    await planner
+      .get("/api/scenarios?cursor=elephant")
+      .expect(422)
+      .expect(/unknown-cursor/);
     await planner.get("/api/scenarios?limit=0").expect(422);
     await request(test.app).get("/api/scenarios").expect(401);
   });
@@ -219,98 +292,20 @@ describe("DELETE /api/scenarios/:id", () => {
   it("deletes one's own draft only", async () => {
     const { id } = await create();
     await request(test.app).delete(`/api/scenarios/${id}`).expect(401);
-    await colleague.delete(`/api/scenarios/${id}`).expect(403).expect(/not-your-scenario/);
+    await colleague
+      .delete(`/api/scenarios/${id}`)
+      .expect(403)
+      .expect(/not-your-scenario/);
     await planner.delete(`/api/scenarios/${id}`).expect(204);
-    const { rows } = await test.services.pool.query("select action, person_id from audit_entries where subject_id = $1 order by id", [id]);
-    expect(rows).toEqual([{ action: "scenario.created", person_id: plannerId }, { action: "scenario.deleted", person_id: plannerId }]);
+    const { rows } = await test.services.pool.query(
+      "select action, person_id from audit_entries where subject_id = $1 order by id",
+      [id],
+    );
+    expect(rows).toEqual([
+      { action: "scenario.created", person_id: plannerId },
+      { action: "scenario.deleted", person_id: plannerId },
+    ]);
     await planner.get(`/api/scenarios/${id}`).expect(404);
     await planner.delete(`/api/scenarios/${id}`).expect(404);
-  });
-});
-
-describe("GET /api/planning-context", () => {
-  it("gives each store-week's base: prices and costs as announced, events, normal weather", async () => {
-    const { body } = await planner.get(contextPath).expect(200);
-    expect(body.modelId).toBe(modelId);
-    expect(body.base).toHaveLength(18);
-    const at = (store: string, week: string): BaseCell => body.base.find((cell: BaseCell) => cell.store === store && cell.week === week);
-    expect(at("A1", "2026-01-19")).toMatchObject({ regularPrice: 2, unitCost: 1.1, taxRate: 0.2, event: "fair", weekIndex: 2924 });
-    expect(at("A1", "2026-01-26")).toMatchObject({ event: "fair" });
-    expect(at("A1", "2026-02-02")).toMatchObject({ regularPrice: 2.2, unitCost: 1.15, event: null });
-    expect(at("B2", "2026-01-19")).toMatchObject({ event: null });
-    // Both other years count alike: the mean of the same weeks of 2024 and 2025, smoothed.
-    const around = (sampleTemperature("coast", "2024-01-22") + sampleTemperature("coast", "2025-01-20")) / 2;
-    expect(at("A1", "2026-01-19").normalTemperatureC).toBeGreaterThan(around - 0.5);
-    expect(at("A1", "2026-01-19").normalTemperatureC).toBeLessThan(around + 0.5);
-    expect(at("B2", "2026-01-19").normalTemperatureC).toBeLessThan(at("A1", "2026-01-19").normalTemperatureC ?? 0);
-  });
-
-  it("lets what a store's own sales told last go before older terms", async () => {
-    const of = (week: string) => `update weekly_sales set regular_price = $1, unit_cost = $2 where week = '${week}' and store_id = (select id from stores where code = 'A1')`;
-    await test.services.pool.query(of(sample.lastWeek), [1.95, 1.05]);
-    const { body } = await planner.get(contextPath).expect(200);
-    const at = (week: string) => body.base.find((cell: BaseCell) => cell.store === "A1" && cell.week === week);
-    expect(at("2026-01-19")).toMatchObject({ regularPrice: 1.95, unitCost: 1.05 });
-    expect(at("2026-02-09")).toMatchObject({ regularPrice: 2.2, unitCost: 1.15 });
-    await test.services.pool.query(of(sample.lastWeek), [2, null]);
-  });
-
-  it("gives the fits there are, the year before, and says which stores have no model and why", async () => {
-    const { body } = await planner.get(contextPath).expect(200);
-    expect(body.fits.map(({ store }: { store: string }) => store)).toEqual(["A1", "A2"]);
-    const weeksOfA1 = body.history.filter(({ store }: { store: string }) => store === "A1").map(({ week }: { week: string }) => week);
-    expect(weeksOfA1).toHaveLength(53);
-    expect(weeksOfA1[52]).toBe(sample.lastWeek);
-    expect(body.notes[0]).toBe("1 store has no model: B2.");
-    expect(body.notes[1]).toMatch(/^Store B2 could not be fitted: 5 weeks/);
-  });
-
-  it("refuses weeks and codes it does not know, and strangers", async () => {
-    const path = (query: string) => `/api/planning-context?${query}`;
-    await planner.get(path(`product=JAM&stores=A1&first=2026-01-13&last=${weeks.last}`)).expect(422).expect(/not-a-week/);
-    await planner.get(path(`product=JAM&stores=Q7&first=${weeks.first}&last=${weeks.last}`)).expect(422).expect(/Q7/);
-    await planner.get(path(`product=NONE&stores=A1&first=${weeks.first}&last=${weeks.last}`)).expect(422).expect(/NONE/);
-    await planner.get(path(`product=JAM&stores=A1&first=${weeks.first}`)).expect(422);
-    await request(test.app).get(contextPath).expect(401);
-  });
-});
-
-describe("POST /api/scenarios/:id/predict", () => {
-  it("equals what the browser's code makes of the planning context", async () => {
-    const { id } = await create();
-    const { body: predicted } = await planner.post(`/api/scenarios/${id}/predict`).send({ level: 0.9 }).expect(200);
-    const { body: context } = await planner.get(`${contextPath}&model=${modelId}`).expect(200);
-    const models = new Map<string, ReturnType<typeof parseModel>>(
-      context.fits.map(({ store, fit }: { store: string; fit: string }) => [store, parseModel(fit)]),
-    );
-    const { stores, cells, leftOut } = planInput({ base: context.base, changes: draft.cells, models });
-    const own = predictScenario({ stores, cells, level: 0.9, costs: { fixedCost: 40 } });
-    const figures: Prediction = predicted;
-    for (const key of ["units", "lift", "weather"] as const) expect(figures[key]).toEqual(own[key]);
-    expect(figures.split).toEqual(own.split);
-    expect(figures.weeks).toEqual(own.weeks);
-    expect(figures.stores).toEqual(own.stores);
-    expect(figures).toMatchObject({ level: 0.9, baseUnits: own.baseUnits, netGain: own.money.netGain, breakEven: own.money.breakEven });
-    expect(leftOut).toEqual([{ store: "B2", weeks: 6, reason: "the store has no model" }]);
-    expect(figures.flags.at(-1)).toMatchObject({ code: "left-out", stores: ["B2"], detail: "6 weeks of store B2 left out: the store has no model." });
-    expect(figures.lift.estimate).toBeGreaterThan(0.05);
-    expect(figures.split.reduce((sum, row) => sum + row.units, figures.baseUnits)).toBeCloseTo(figures.units.estimate, 8);
-  });
-
-  it("takes 80 % for the level unless told otherwise", async () => {
-    const { id } = await create();
-    expect((await planner.post(`/api/scenarios/${id}/predict`).expect(200)).body.level).toBe(0.8);
-    await planner.post(`/api/scenarios/${id}/predict`).send({ level: 3 }).expect(422);
-  });
-
-  it("says so where no store of the plan has a model", async () => {
-    const { id } = await create({ stores: ["B2"], cells: [] });
-    const { body } = await planner.post(`/api/scenarios/${id}/predict`).expect(422);
-    expect(body).toMatchObject({ code: "nothing-to-predict", detail: expect.stringContaining("1 store has no model: B2.") });
-  });
-
-  it("refuses unknown scenarios and strangers", async () => {
-    await planner.post(`/api/scenarios/${unknown}/predict`).expect(404);
-    await request(test.app).post(`/api/scenarios/${unknown}/predict`).expect(401);
   });
 });

@@ -36,7 +36,13 @@ describe("GET /api/comparisons", () => {
 
   it("draws every store's price curve on one grid, relative to the chain's regular price", async () => {
     const comparison = await compare();
-    expect(comparison).toMatchObject({ product: "JAM", modelId, driver: "price", level: 0.8, anchor: sample.regularPrice });
+    expect(comparison).toMatchObject({
+      product: "JAM",
+      modelId,
+      driver: "price",
+      level: 0.8,
+      anchor: sample.regularPrice,
+    });
     expect(comparison.stores.map(({ store }) => store)).toEqual(["A1", "A2", "B1", "B2"]);
     const curves = comparison.stores.map(({ curve }) => curve).filter((curve) => curve !== null);
     expect(curves).toHaveLength(3);
@@ -60,11 +66,15 @@ describe("GET /api/comparisons", () => {
     const x = curve.x.map(Number);
     expect([curve.estimate[0], curve.lower[0], curve.upper[0]]).toEqual([0, 0, 0]);
     const own = termCurve(model, "price", { at: [...x, 1.5], level: 0.95 });
-    x.forEach((_, index) => expect(curve.estimate[index]).toBeCloseTo(own.estimate[index] - own.estimate[x.length], 12));
+    x.forEach((_, index) =>
+      expect(curve.estimate[index]).toBeCloseTo(own.estimate[index] - own.estimate[x.length], 12),
+    );
     // Two nearly uncorrelated ends: the difference's error lies between that of its parts and their sum.
     const last = x.length - 1;
     expect(curve.standardError[last]).toBeGreaterThan(0);
-    expect(curve.standardError[last]).toBeLessThanOrEqual(own.standardError[last] + own.standardError[x.length] + 1e-12);
+    expect(curve.standardError[last]).toBeLessThanOrEqual(
+      own.standardError[last] + own.standardError[x.length] + 1e-12,
+    );
     expect(curve.upper[last] - curve.estimate[last]).toBeCloseTo(1.959964 * curve.standardError[last], 5);
   });
 
@@ -81,9 +91,16 @@ describe("GET /api/comparisons", () => {
 
   it("tells mean weekly units, and why a store has no curve", async () => {
     const { stores } = await compare();
-    const units = sampleRows().filter(({ store }) => store === "A1").map((row) => row.units);
+    const units = sampleRows()
+      .filter(({ store }) => store === "A1")
+      .map((row) => row.units);
     expect(stores[0].meanWeeklyUnits).toBeCloseTo(units.reduce((sum, value) => sum + value, 0) / 104, 9);
-    expect(stores[3]).toMatchObject({ store: "B2", curve: null, elasticity: null, reason: expect.stringMatching(/^5 weeks/) });
+    expect(stores[3]).toMatchObject({
+      store: "B2",
+      curve: null,
+      elasticity: null,
+      reason: expect.stringMatching(/^5 weeks/),
+    });
   });
 
   it("adds the chain: the mean of the stores' multipliers by base units", async () => {
@@ -92,11 +109,17 @@ describe("GET /api/comparisons", () => {
     const weights = model.fits.map(({ meanBaseUnits }: { meanBaseUnits: number }) => meanBaseUnits);
     const total = weights.reduce((sum: number, value: number) => sum + value, 0);
     const curves = stores.map(({ curve }) => curve).filter((curve) => curve !== null);
-    const expected = curves.reduce((sum, curve, index) => sum + (weights[index] / total) * Math.exp(curve.estimate[0]), 0);
+    const expected = curves.reduce(
+      (sum, curve, index) => sum + (weights[index] / total) * Math.exp(curve.estimate[0]),
+      0,
+    );
     expect(chain?.estimate[0]).toBeCloseTo(Math.log(expected), 12);
     expect(chain?.x).toEqual(curves[0].x);
     const slopes = stores.slice(0, 3).map(({ elasticity }) => elasticity?.estimate ?? Number.NaN);
-    expect(chain?.elasticity?.estimate).toBeCloseTo(slopes.reduce((sum, slope, index) => sum + (weights[index] / total) * slope, 0), 12);
+    expect(chain?.elasticity?.estimate).toBeCloseTo(
+      slopes.reduce((sum, slope, index) => sum + (weights[index] / total) * slope, 0),
+      12,
+    );
   });
 
   it("compares levels and times of year too, without an anchor", async () => {
@@ -117,8 +140,14 @@ describe("GET /api/comparisons", () => {
   });
 
   it("refuses unknown codes and models, models of another product, and strangers", async () => {
-    await planner.get("/api/comparisons?product=NONE").expect(422).expect(/unknown-product/);
-    await planner.get(`/api/comparisons?product=TEA&model=${modelId}`).expect(422).expect(/model-of-other-product/);
+    await planner
+      .get("/api/comparisons?product=NONE")
+      .expect(422)
+      .expect(/unknown-product/);
+    await planner
+      .get(`/api/comparisons?product=TEA&model=${modelId}`)
+      .expect(422)
+      .expect(/model-of-other-product/);
     await planner.get("/api/comparisons?product=JAM&model=6f1f7a52-5c3c-4c3b-9d55-2f3a1e0c7d11").expect(404);
     await planner.get("/api/comparisons?product=JAM&anchor=-1").expect(422);
     await request(test.app).get("/api/comparisons?product=JAM").expect(401);

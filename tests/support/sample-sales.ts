@@ -1,4 +1,5 @@
 import { addWeeks, weeksBetween, yearFraction } from "@shared/calendar";
+import type { ScenarioDraft } from "@shared/contract/scenarios";
 import { ensureChain } from "../../server/features/chain";
 import type { Services } from "../../server/services";
 
@@ -24,8 +25,28 @@ export const sample = {
   fair: { code: "fair", firstDay: "2026-01-21", lastDay: "2026-01-27" },
 } as const;
 
+/** A plan of the sample's winter: two stores that can be predicted, and one that cannot. */
+export const sampleDraft: ScenarioDraft = {
+  name: "Winter jam",
+  product: "JAM",
+  stores: ["A1", "A2", "B2"],
+  weeks: { first: "2026-01-12", last: "2026-02-16" },
+  cells: [
+    { store: "A1", week: "2026-01-19", price: 1.6, promotion: "feature" },
+    { store: "A2", week: "2026-01-19", price: 1.5, promotion: "both", temperatureC: 1 },
+    { store: "A2", week: "2026-02-09", price: 1.9 },
+  ],
+  fixedCost: 40,
+};
+
 export type SampleRow = {
-  store: string; week: string; units: number; price: number; feature: boolean; display: boolean; temperatureC: number;
+  store: string;
+  week: string;
+  units: number;
+  price: number;
+  feature: boolean;
+  display: boolean;
+  temperatureC: number;
 };
 
 const extractId = "00000000-0000-4000-8000-000000000001";
@@ -51,9 +72,22 @@ export function sampleRows(): SampleRow[] {
       const feature = (index + place) % 9 === 0;
       const display = (index + 2 * place) % 11 === 0;
       const temperatureC = sampleTemperature(store.region, week);
-      const logUnits = Math.log(store.level) + store.elasticity * Math.log(price / 2)
-        + 0.02 * (temperatureC - 11) + (feature ? 0.35 : 0) + (display ? 0.25 : 0) + 0.3 * wobble(index + 1000 * place);
-      return { store: store.code, week, units: Math.max(1, Math.round(Math.exp(logUnits))), price, feature, display, temperatureC };
+      const logUnits =
+        Math.log(store.level) +
+        store.elasticity * Math.log(price / 2) +
+        0.02 * (temperatureC - 11) +
+        (feature ? 0.35 : 0) +
+        (display ? 0.25 : 0) +
+        0.3 * wobble(index + 1000 * place);
+      return {
+        store: store.code,
+        week,
+        units: Math.max(1, Math.round(Math.exp(logUnits))),
+        price,
+        feature,
+        display,
+        temperatureC,
+      };
     }),
   );
 }
@@ -69,7 +103,8 @@ export async function loadSample(services: Services): Promise<void> {
        ('TEA', 'Nettle tea', (select id from categories where code = 'drinks'))`,
   );
   await run(
-    "insert into stores (code, name, region) select code, name, region from jsonb_to_recordset($1) as s(code text, name text, region text)",
+    `insert into stores (code, name, region)
+     select code, name, region from jsonb_to_recordset($1) as s(code text, name text, region text)`,
     [JSON.stringify(sample.stores)],
   );
   await run(
@@ -79,13 +114,19 @@ export async function loadSample(services: Services): Promise<void> {
        as t(valid_from, unit_cost, regular_price, tax_rate)
      where p.code = 'JAM'`,
     [
-      sample.unitCost, sample.regularPrice, sample.taxRate,
-      sample.newTerms.validFrom, sample.newTerms.unitCost, sample.newTerms.regularPrice, sample.newTerms.taxRate,
+      sample.unitCost,
+      sample.regularPrice,
+      sample.taxRate,
+      sample.newTerms.validFrom,
+      sample.newTerms.unitCost,
+      sample.newTerms.regularPrice,
+      sample.newTerms.taxRate,
     ],
   );
-  await run("insert into events (code, name, first_day, last_day, region) values ($1, 'Winter fair', $2, $3, 'coast')", [
-    sample.fair.code, sample.fair.firstDay, sample.fair.lastDay,
-  ]);
+  await run(
+    "insert into events (code, name, first_day, last_day, region) values ($1, 'Winter fair', $2, $3, 'coast')",
+    [sample.fair.code, sample.fair.firstDay, sample.fair.lastDay],
+  );
   await loadTemperatures(services);
   await loadRows(services, sampleRows());
 }

@@ -28,9 +28,16 @@ export async function requireStores(em: EntityManager, codes: readonly string[])
   const unknown = unique.filter((code) => !found.has(code));
   if (unknown.length > 0) {
     const named = unknown.slice(0, mostNamed);
-    const errors = named.map((code) => ({ path: `stores.${codes.indexOf(code)}`, message: `There is no store "${code}".` }));
+    const errors = named.map((code) => ({
+      path: `stores.${codes.indexOf(code)}`,
+      message: `There is no store "${code}".`,
+    }));
     const others = unknown.length > 1 ? ` and ${unknown.length - 1} more` : "";
-    throw unusable("unknown-store", `There is no store "${unknown[0]}"${others}. Check the codes, or load them with a stores extract.`, errors);
+    throw unusable(
+      "unknown-store",
+      `There is no store "${unknown[0]}"${others}. Check the codes, or load them with a stores extract.`,
+      errors,
+    );
   }
   return unique.map((code) => found.get(code)).filter((store) => store !== undefined);
 }

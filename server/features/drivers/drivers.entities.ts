@@ -16,7 +16,10 @@ export const ModelEntity = defineEntity({
   tableName: "models",
   indexes: [{ properties: ["product", "state"] }],
   properties: {
-    id: p.uuid().primary().onCreate(() => randomUUID()),
+    id: p
+      .uuid()
+      .primary()
+      .onCreate(() => randomUUID()),
     product: () => p.manyToOne(ProductEntity),
     state: p.string().length(12).$type<ModelState>().default("candidate"),
     /** Null where each store has the default specification that its data allow. */

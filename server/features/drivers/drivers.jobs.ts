@@ -9,12 +9,18 @@ import { deleteUnfinishedModel, findModel, type LoadedModel } from "./models/mod
  */
 export const fitModelsJob = defineJob({
   kind: "fit-models",
-  payload: z.object({ modelId: z.uuid(), stores: z.array(z.object({ id: z.number().int(), code: z.string() })).min(1) }),
+  payload: z.object({
+    modelId: z.uuid(),
+    stores: z.array(z.object({ id: z.number().int(), code: z.string() })).min(1),
+  }),
   async run({ payload, em, progress, now }) {
     const model = await findModel(em, payload.modelId);
     if (!model) return { modelId: payload.modelId, fitted: 0, skipped: [] };
     const outcome = await fitStores({
-      em, model: toFit(model), stores: payload.stores, at: now,
+      em,
+      model: toFit(model),
+      stores: payload.stores,
+      at: now,
       onStore: ({ done, total, store }) => progress({ done, total, message: `Store ${store}` }),
     });
     return { modelId: model.id, ...outcome };

@@ -9,7 +9,11 @@ import { useModel } from "./models/use-model.service";
 import { presentSalesWeek } from "./sales/sales.presenter";
 import { salesOfStore } from "./sales/sales.service";
 
-const codesOf = (list: string | undefined) => list?.split(",").map((code) => code.trim()).filter((code) => code !== "");
+const codesOf = (list: string | undefined) =>
+  list
+    ?.split(",")
+    .map((code) => code.trim())
+    .filter((code) => code !== "");
 
 const salesWeeks = route(contract.getSalesWeeks, async ({ em, query }) => {
   const rows = await salesOfStore(em, query);
@@ -30,7 +34,9 @@ const models = route(contract.listModels, async ({ em, query, caller }) => {
   return { items: found.map((each) => presentModel(each, caller)) };
 });
 
-const model = route(contract.getModel, async ({ em, params, caller }) => presentModel(await readModel(em, params.id), caller));
+const model = route(contract.getModel, async ({ em, params, caller }) =>
+  presentModel(await readModel(em, params.id), caller),
+);
 
 const fits = route(contract.getModelFits, async ({ em, params, query }) => {
   const found = await readFits(em, { modelId: params.id, stores: codesOf(query.stores) });
@@ -38,7 +44,8 @@ const fits = route(contract.getModelFits, async ({ em, params, query }) => {
 });
 
 const modelInUse = route(contract.useModel, async ({ em, params, caller, requestId, now }) =>
-  presentModel(await useModel(em, { modelId: params.id, caller, requestId, now }), caller));
+  presentModel(await useModel(em, { modelId: params.id, caller, requestId, now }), caller),
+);
 
 const curves = route(contract.getModelCurves, async ({ em, params, query }) => {
   const found = await curvesOfStore(em, { modelId: params.id, ...query });

@@ -1,6 +1,12 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
 import { EngineError, parseModel } from "@shared/engine";
-import { planInput, PlanningError, predictScenario, type LeftOutCells, type ScenarioPrediction } from "@shared/planning";
+import {
+  planInput,
+  PlanningError,
+  predictScenario,
+  type LeftOutCells,
+  type ScenarioPrediction,
+} from "@shared/planning";
 import { unusable } from "../../errors";
 import { requireModel, requireStores } from "../drivers";
 import { planBase } from "./context/planning-context.service";
@@ -15,7 +21,10 @@ export type SavedPrediction = { prediction: ScenarioPrediction; leftOut: LeftOut
  *
  * @throws ProblemError 404 where there is no such scenario, 422 where none of its store-weeks can be predicted.
  */
-export async function predictSavedScenario(em: EntityManager, { id, level }: { id: string; level: number }): Promise<SavedPrediction> {
+export async function predictSavedScenario(
+  em: EntityManager,
+  { id, level }: { id: string; level: number },
+): Promise<SavedPrediction> {
   const scenario = await readScenario(em, id);
   const stores = await requireStores(em, scenario.stores);
   const model = await requireModel(em, scenario.model.id);
@@ -23,7 +32,8 @@ export async function predictSavedScenario(em: EntityManager, { id, level }: { i
   const { base, fits, notes } = await planBase(em, { productId: scenario.product.id, stores, weeks, model });
   const models = new Map(fits.map(({ store, fit }) => [store, parseModel(fit)]));
   const { leftOut, ...input } = planInput({ base, changes: cellsOf(scenario), models });
-  if (input.cells.length === 0) throw unusable("nothing-to-predict", `No store-week of this plan can be predicted. ${notes.join(" ")}`);
+  if (input.cells.length === 0)
+    throw unusable("nothing-to-predict", `No store-week of this plan can be predicted. ${notes.join(" ")}`);
   try {
     return { prediction: predictScenario({ ...input, level, costs: { fixedCost: scenario.fixedCost } }), leftOut };
   } catch (error) {

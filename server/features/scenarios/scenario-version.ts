@@ -16,12 +16,17 @@ export function versionFrom(ifMatch: string | undefined): number {
   // A proxy that compresses may have marked the tag as weak.
   const version = /^(?:W\/)?"(\d{1,9})"$/.exec(ifMatch.trim())?.[1];
   if (version !== undefined) return Number(version);
-  throw new ProblemError({ status: 412, code: "unknown-version", detail: `${ifMatch} is no version of this scenario. Read it again, then repeat your change.` });
+  throw new ProblemError({
+    status: 412,
+    code: "unknown-version",
+    detail: `${ifMatch} is no version of this scenario. Read it again, then repeat your change.`,
+  });
 }
 
 /** What a person is told who saved over a version they had not seen. */
 export function changedMeanwhile({ version, by, at }: { version: number; by: string; at: Date }): ProblemError {
-  const detail = `${by} saved version ${version} of this scenario at ${at.toISOString()}, after you had read it. `
-    + "Nothing of yours was stored: read it again and repeat your change, or save yours under another name.";
+  const detail =
+    `${by} saved version ${version} of this scenario at ${at.toISOString()}, after you had read it. ` +
+    "Nothing of yours was stored: read it again and repeat your change, or save yours under another name.";
   return new ProblemError({ status: 412, code: "changed-meanwhile", detail, headers: { ETag: entityTag(version) } });
 }

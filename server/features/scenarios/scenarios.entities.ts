@@ -12,7 +12,10 @@ export const ScenarioEntity = defineEntity({
   tableName: "scenarios",
   indexes: [{ properties: ["updatedAt"] }, { properties: ["product", "state"] }],
   properties: {
-    id: p.uuid().primary().onCreate(() => randomUUID()),
+    id: p
+      .uuid()
+      .primary()
+      .onCreate(() => randomUUID()),
     name: p.string().length(120),
     product: () => p.manyToOne(ProductEntity),
     model: () => p.manyToOne(ModelEntity),

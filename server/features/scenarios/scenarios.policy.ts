@@ -15,13 +15,20 @@ export function mayEdit(caller: Pick<Caller, "permissions">, { state }: Pick<Row
 /** @throws ProblemError 409 where the scenario is no longer being written. */
 export function requireEditable({ state }: Pick<Row, "state">): void {
   if (editable.has(state)) return;
-  throw conflict("not-editable", `This scenario is ${state}: it can no longer be changed. Save a copy of it under another name.`);
+  throw conflict(
+    "not-editable",
+    `This scenario is ${state}: it can no longer be changed. Save a copy of it under another name.`,
+  );
 }
 
 /** @throws ProblemError 403 for another person's scenario, 409 for one that is more than a draft. */
 export function requireMayDelete(caller: Pick<Caller, "personId">, { state, createdBy }: Row): void {
   if (createdBy.id !== caller.personId) {
-    throw new ProblemError({ status: 403, code: "not-your-scenario", detail: "Only the person who began a scenario deletes it. Ask them to." });
+    throw new ProblemError({
+      status: 403,
+      code: "not-your-scenario",
+      detail: "Only the person who began a scenario deletes it. Ask them to.",
+    });
   }
   if (state === "draft") return;
   throw conflict("not-a-draft", `This scenario is ${state}: only drafts are deleted.`);

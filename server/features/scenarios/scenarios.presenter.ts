@@ -9,7 +9,8 @@ import { cellsOf } from "./scenarios.repository";
 
 /** A scenario without its cells, as lists show it. */
 export function presentListedScenario(scenario: ScenarioRow, caller: Caller): Omit<Scenario, "cells"> {
-  const { id, name, product, model, stores, firstWeek, lastWeek, fixedCost, state, version, createdBy, updatedBy } = scenario;
+  const { id, name, product, model, stores, firstWeek, lastWeek, fixedCost, state, version, createdBy, updatedBy } =
+    scenario;
   return {
     id,
     name,
@@ -35,9 +36,22 @@ export function presentScenario(scenario: ScenarioRow, caller: Caller): Scenario
 
 /** All a browser needs to predict by itself. */
 export function presentContext(
-  { modelId, base, fits, notes }: PlanBase, history: readonly StoredSalesRow[],
-): { modelId: string; base: BaseCell[]; fits: { store: string; fit: string }[]; history: ReturnType<typeof presentHistory>[]; notes: string[] } {
-  return { modelId, base, fits: fits.map(({ store, fit }) => ({ store, fit })), history: history.map(presentHistory), notes };
+  { modelId, base, fits, notes }: PlanBase,
+  history: readonly StoredSalesRow[],
+): {
+  modelId: string;
+  base: BaseCell[];
+  fits: { store: string; fit: string }[];
+  history: ReturnType<typeof presentHistory>[];
+  notes: string[];
+} {
+  return {
+    modelId,
+    base,
+    fits: fits.map(({ store, fit }) => ({ store, fit })),
+    history: history.map(presentHistory),
+    notes,
+  };
 }
 
 function presentHistory(row: StoredSalesRow) {
@@ -56,7 +70,11 @@ export function presentPrediction({ prediction, leftOut }: SavedPrediction): Pre
     flags: [
       ...flags,
       ...leftOut.map(({ store, weeks, reason }) => ({
-        code: "left-out", driver: null, of: "plan" as const, stores: [store], weeks: [],
+        code: "left-out",
+        driver: null,
+        of: "plan" as const,
+        stores: [store],
+        weeks: [],
         detail: `${weeks === 1 ? "1 week" : `${weeks} weeks`} of store ${store} left out: ${reason}.`,
       })),
     ],

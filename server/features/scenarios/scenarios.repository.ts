@@ -19,14 +19,19 @@ export type ScenarioPlace = { updatedAt: Date; id: string };
 
 /** Scenarios without their cells, last changed first, from after a place on; one more than the limit where there are more. */
 export async function findScenarios(
-  em: EntityManager, { product, after, limit }: { product?: string; after?: ScenarioPlace; limit: number },
+  em: EntityManager,
+  { product, after, limit }: { product?: string; after?: ScenarioPlace; limit: number },
 ): Promise<ScenarioRow[]> {
   const older = after && {
     $or: [{ updatedAt: { $lt: after.updatedAt } }, { updatedAt: after.updatedAt, id: { $lt: after.id } }],
   };
-  return em.find(ScenarioEntity, { ...(product !== undefined && { product: { code: product } }), ...older }, {
-    populate: ["product", "createdBy", "updatedBy"],
-    orderBy: { updatedAt: "desc", id: "desc" },
-    limit: limit + 1,
-  });
+  return em.find(
+    ScenarioEntity,
+    { ...(product !== undefined && { product: { code: product } }), ...older },
+    {
+      populate: ["product", "createdBy", "updatedBy"],
+      orderBy: { updatedAt: "desc", id: "desc" },
+      limit: limit + 1,
+    },
+  );
 }

@@ -31,7 +31,13 @@ const read = route(contract.getScenario, async ({ em, params, caller, response }
 
 const save = route(contract.putScenario, async ({ em, params, body, caller, now, request, response }) => {
   const { personId } = caller;
-  const scenario = await saveScenario(em, { id: params.id, draft: body, ifMatch: request.get("if-match"), personId, now });
+  const scenario = await saveScenario(em, {
+    id: params.id,
+    draft: body,
+    ifMatch: request.get("if-match"),
+    personId,
+    now,
+  });
   response.set("ETag", entityTag(scenario.version));
   return presentScenario(scenario, caller);
 });
@@ -42,10 +48,14 @@ const remove = route(contract.deleteScenario, async ({ em, params, caller, reque
 });
 
 const predict = route(contract.predictScenario, async ({ em, params, body }) =>
-  presentPrediction(await predictSavedScenario(em, { id: params.id, level: body.level })));
+  presentPrediction(await predictSavedScenario(em, { id: params.id, level: body.level })),
+);
 
 const context = route(contract.getPlanningContext, async ({ em, query }) => {
-  const stores = query.stores.split(",").map((code) => code.trim()).filter((code) => code !== "");
+  const stores = query.stores
+    .split(",")
+    .map((code) => code.trim())
+    .filter((code) => code !== "");
   const { context, history } = await readPlanningContext(em, { ...query, stores });
   return presentContext(context, history);
 });

@@ -23,7 +23,8 @@ export async function readScenario(em: EntityManager, id: string): Promise<Scena
 
 /** A page of scenarios, last changed first, and the place to go on from where there are more. */
 export async function listScenarios(
-  em: EntityManager, { product, after, limit }: { product?: string; after?: ScenarioPlace; limit: number },
+  em: EntityManager,
+  { product, after, limit }: { product?: string; after?: ScenarioPlace; limit: number },
 ): Promise<{ scenarios: ScenarioRow[]; next: ScenarioPlace | null }> {
   const found = await findScenarios(em, { product, after, limit });
   const scenarios = found.slice(0, limit);
@@ -43,14 +44,28 @@ export async function createScenario(
   const person = em.getReference(PersonEntity, actor.personId);
   const id = randomUUID();
   const scenario = em.create(ScenarioEntity, {
-    id, ...contentOf(em, checked), cells: draft.cells, state: "draft", createdBy: person, createdAt: now, updatedBy: person, updatedAt: now,
+    id,
+    ...contentOf(em, checked),
+    cells: draft.cells,
+    state: "draft",
+    createdBy: person,
+    createdAt: now,
+    updatedBy: person,
+    updatedAt: now,
   });
   em.persist(scenario);
-  audit(em, { ...actor, action: "scenario.created", subject: { kind: "scenario", id }, detail: { product: checked.product.code } });
+  audit(em, {
+    ...actor,
+    action: "scenario.created",
+    subject: { kind: "scenario", id },
+    detail: { product: checked.product.code },
+  });
   await em.flush();
   em.clear();
   return readScenario(em, id);
 }
+
+type Save = { id: string; draft: ScenarioDraft; ifMatch?: string; now: Date };
 
 /**
  * Saves a scenario over the version it was read at. Pages save by themselves every few seconds: the version, its time and
@@ -60,14 +75,19 @@ export async function createScenario(
  * 422 for a draft that cannot be used.
  */
 export async function saveScenario(
-  em: EntityManager, { id, draft, ifMatch, personId, now }: { id: string; draft: ScenarioDraft; ifMatch?: string; personId: string; now: Date },
+  em: EntityManager,
+  { id, draft, ifMatch, personId, now }: Pick<Actor, "personId"> & Save,
 ): Promise<ScenarioRow> {
   const scenario = await readScenario(em, id);
   const { version, updatedBy, updatedAt } = scenario;
   if (versionFrom(ifMatch) !== version) throw changedMeanwhile({ version, by: updatedBy.name, at: updatedAt });
   requireEditable(scenario);
   const checked = await checkDraft(em, draft, { modelId: scenario.model.id, product: scenario.product.code });
-  em.assign(scenario, { ...contentOf(em, checked), updatedBy: em.getReference(PersonEntity, personId), updatedAt: now });
+  em.assign(scenario, {
+    ...contentOf(em, checked),
+    updatedBy: em.getReference(PersonEntity, personId),
+    updatedAt: now,
+  });
   scenario.cells.set(draft.cells);
   // The database compares the version once more: of two saves at the same moment one gets 412.
   await em.flush();
@@ -77,13 +97,21 @@ export async function saveScenario(
 
 /** Deletes one's own draft. @throws ProblemError 404, 403 for another person's, 409 for more than a draft. */
 export async function deleteScenario(
-  em: EntityManager, { id, caller, requestId }: { id: string; caller: Caller; requestId: string },
+  em: EntityManager,
+  { id, caller, requestId }: { id: string; caller: Caller; requestId: string },
 ): Promise<void> {
   const scenario = await readScenario(em, id);
   requireMayDelete(caller, scenario);
   em.remove(scenario);
   const { personId, tokenId } = caller;
-  audit(em, { personId, tokenId, requestId, action: "scenario.deleted", subject: { kind: "scenario", id }, detail: { name: scenario.name } });
+  audit(em, {
+    personId,
+    tokenId,
+    requestId,
+    action: "scenario.deleted",
+    subject: { kind: "scenario", id },
+    detail: { name: scenario.name },
+  });
   await em.flush();
 }
 

@@ -7,7 +7,8 @@ import { findLastRegularPrice, findRegularPrice } from "./anchor.repository";
  * say none, the commonest regular price of the last week of sales; else the middle of what the stores have seen.
  */
 export async function anchorPrice(
-  em: EntityManager, { productId, terms, now }: { productId: number; terms: readonly FittedTerm[]; now: Date },
+  em: EntityManager,
+  { productId, terms, now }: { productId: number; terms: readonly FittedTerm[]; now: Date },
 ): Promise<number> {
   const on = now.toISOString().slice(0, 10);
   const regular = (await findRegularPrice(em, { productId, on })) ?? (await findLastRegularPrice(em, productId));

@@ -2,7 +2,10 @@ import type { EntityManager } from "@mikro-orm/postgresql";
 import type { Day } from "@shared/calendar";
 
 /** The regular price the chain's terms say on a day; null where they say none. */
-export async function findRegularPrice(em: EntityManager, { productId, on }: { productId: number; on: Day }): Promise<number | null> {
+export async function findRegularPrice(
+  em: EntityManager,
+  { productId, on }: { productId: number; on: Day },
+): Promise<number | null> {
   const [terms] = await em.execute<{ price: number | null }[]>(
     `select regular_price::float8 as price from product_terms
      where product_id = ? and valid_from <= ?::date order by valid_from desc limit 1`,

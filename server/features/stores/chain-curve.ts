@@ -20,9 +20,17 @@ export type ChainCurve = {
  * @param isLog false for models that add drivers up: then the weighted mean itself.
  * @returns null where no store learnt the driver.
  */
-export function chainCurve(
-  { curves, grid, isLog, level }: { curves: readonly WeightedCurve[]; grid: number[] | string[]; isLog: boolean; level: number },
-): ChainCurve | null {
+export function chainCurve({
+  curves,
+  grid,
+  isLog,
+  level,
+}: {
+  curves: readonly WeightedCurve[];
+  grid: number[] | string[];
+  isLog: boolean;
+  level: number;
+}): ChainCurve | null {
   if (curves.length === 0) return null;
   return {
     x: grid,
@@ -32,12 +40,23 @@ export function chainCurve(
   };
 }
 
-function meanAt(
-  { curves, value, index, isLog }: { curves: readonly WeightedCurve[]; value: number | string; index: number; isLog: boolean },
-): number {
+function meanAt({
+  curves,
+  value,
+  index,
+  isLog,
+}: {
+  curves: readonly WeightedCurve[];
+  value: number | string;
+  index: number;
+  isLog: boolean;
+}): number {
   let weight = 0;
   let total = 0;
-  for (const { curve: { curve }, baseUnits } of curves) {
+  for (const {
+    curve: { curve },
+    baseUnits,
+  } of curves) {
     const at = typeof value === "string" ? Array.from(curve.x, String).indexOf(value) : index;
     if (at < 0) continue;
     weight += baseUnits;

@@ -1,6 +1,12 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
 import { unusable } from "../../errors";
-import { findFits, requireModelOfProduct, type ProductReference, type SkippedStore, type StoredFit } from "../drivers";
+import {
+  findFits,
+  requireModelOfProduct,
+  type ProductReference,
+  type SkippedStore,
+  type StoredFit,
+} from "../drivers";
 
 /** A model whose stores are compared. */
 export type ComparedModel = {
@@ -16,7 +22,8 @@ export type ComparedModel = {
  * @throws ProblemError 404 for an unknown model, 422 where it is another product's or none is in use.
  */
 export async function fitsToCompare(
-  em: EntityManager, { product, modelId }: { product: ProductReference; modelId?: string },
+  em: EntityManager,
+  { product, modelId }: { product: ProductReference; modelId?: string },
 ): Promise<ComparedModel> {
   const model = await requireModelOfProduct(em, { product, modelId });
   const fits = await findFits(em, { modelId: model.id });

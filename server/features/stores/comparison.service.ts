@@ -9,7 +9,15 @@ import { commonGrid } from "./common-grid";
 import { fitsToCompare, type ComparedModel } from "./compared-model";
 import { storeCurve } from "./store-curve";
 
-export type ComparisonRequest = { product: string; driver: string; level: number; points: number; anchor?: number; model?: string; now: Date };
+export type ComparisonRequest = {
+  product: string;
+  driver: string;
+  level: number;
+  points: number;
+  anchor?: number;
+  model?: string;
+  now: Date;
+};
 
 export type ComparedStore = {
   store: Pick<SellingStore, "code" | "name" | "region" | "meanWeeklyUnits">;
@@ -41,56 +49,62 @@ export async function compareStores(em: EntityManager, request: ComparisonReques
   const compared = await fitsToCompare(em, { product, modelId: request.model });
   const sellers = await storesThatSold(em, { productId: product.id, ...compared.weeks });
   const learners = await learnersOf(compared.fits, request.driver);
-  const terms = learners.map(({ term }) => term).filter((term) => term !== undefined);
+  const terms = [...learners.values()].map(({ term }) => term).filter((term) => term !== undefined);
   const isPrice = terms.some(({ columns }) => columns[0] === "price");
-  const anchor = isPrice ? (request.anchor ?? (await anchorPrice(em, { productId: product.id, terms, now: request.now }))) : null;
+  const anchor = isPrice
+    ? (request.anchor ?? (await anchorPrice(em, { productId: product.id, terms, now: request.now })))
+    : null;
   const grid = terms.length > 0 ? commonGrid(terms, request.points) : [];
 
+  const frame = { compared, grid, anchor, request };
   const stores: ComparedStore[] = [];
   for (const seller of sellers) {
-    stores.push(compareStore({ seller, learner: learners.find(({ stored }) => stored.store === seller.code), compared, grid, anchor, request }));
+    stores.push(compareStore(seller, learners.get(seller.code), frame));
     // Other requests get their turn: a large chain takes a second.
     await setImmediate();
   }
   const curves = stores.map(({ learnt }) => learnt).filter((learnt) => learnt !== null);
-  const isLog = learners.every(({ model }) => model.spec.family !== "gaussian");
+  const isLog = [...learners.values()].every(({ model }) => model.spec.family !== "gaussian");
   const { driver, level } = request;
   const chain = chainCurve({ curves, grid, isLog, level });
   return { product: product.code, modelId: compared.id, driver, level, anchor, stores, chain };
 }
 
-async function learnersOf(fits: readonly StoredFit[], driver: string): Promise<Learner[]> {
-  const learners: Learner[] = [];
+/** What each fitted store learnt, by its code. */
+async function learnersOf(fits: readonly StoredFit[], driver: string): Promise<Map<string, Learner>> {
+  const learners = new Map<string, Learner>();
   for (const stored of fits) {
     const model = parseModel(stored.fit);
-    const term = model.terms.find((each) => driverOfTerm(each) === driver) ?? model.terms.find((each) => each.id === driver);
-    learners.push({ stored, model, term });
+    const ofDriver = model.terms.find((term) => driverOfTerm(term) === driver);
+    learners.set(stored.store, { stored, model, term: ofDriver ?? model.terms.find(({ id }) => id === driver) });
     await setImmediate();
   }
   return learners;
 }
 
-function compareStore(
-  { seller, learner, compared, grid, anchor, request }: {
-    seller: SellingStore; learner: Learner | undefined; compared: ComparedModel; grid: number[] | string[]; anchor: number | null;
-    request: ComparisonRequest;
-  },
-): ComparedStore {
-  if (!learner?.term) return { store: seller, learnt: null, reason: whyNot({ seller, learner, compared, driver: request.driver }) };
-  const { model, term, stored: { summary } } = learner;
-  const { meanWeeklyUnits, meanBaseUnits } = summary;
+/** What all stores of a comparison have in common. */
+type Frame = {
+  compared: ComparedModel;
+  grid: number[] | string[];
+  anchor: number | null;
+  request: ComparisonRequest;
+};
+
+function compareStore(seller: SellingStore, learner: Learner | undefined, frame: Frame): ComparedStore {
+  const { grid, anchor, request } = frame;
+  if (!learner?.term) return { store: seller, learnt: null, reason: whyNot(seller, learner, frame) };
+  const { model, term } = learner;
+  const { meanWeeklyUnits, meanBaseUnits } = learner.stored.summary;
   const curve = storeCurve({ model, term, grid, anchor, level: request.level });
   // A store that sold nothing at base counts for nothing, but must not make the chain's mean undefined.
   const baseUnits = Math.max(meanBaseUnits ?? meanWeeklyUnits, Number.MIN_VALUE);
   return { store: { ...seller, meanWeeklyUnits }, learnt: { ...curve, baseUnits, meanWeeklyUnits }, reason: null };
 }
 
-function whyNot(
-  { seller, learner, compared, driver }: { seller: SellingStore; learner: Learner | undefined; compared: ComparedModel; driver: string },
-): string {
+function whyNot(seller: SellingStore, learner: Learner | undefined, { compared, request }: Frame): string {
   if (learner) {
-    const leftOut = learner.stored.summary.leftOut.find((each) => each.driver === driver);
-    return leftOut?.reason ?? `The model has no ${driver} term.`;
+    const leftOut = learner.stored.summary.leftOut.find(({ driver }) => driver === request.driver);
+    return leftOut?.reason ?? `The model has no ${request.driver} term.`;
   }
   const skipped = compared.skipped.find(({ store }) => store === seller.code);
   return skipped?.reason ?? "This store is not in the model. Fit all stores of the product.";

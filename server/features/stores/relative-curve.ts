@@ -1,5 +1,12 @@
 import {
-  covarianceQuadratic, designRows, termCurve, transposeTimes, type FittedModel, type FittedTerm, type ModelData, type TermCurve,
+  covarianceQuadratic,
+  designRows,
+  termCurve,
+  transposeTimes,
+  type FittedModel,
+  type FittedTerm,
+  type ModelData,
+  type TermCurve,
 } from "@shared/engine";
 import { normalQuantile } from "@shared/engine";
 
@@ -16,11 +23,19 @@ export type BandedCurve = Pick<TermCurve, "estimate" | "standardError" | "lower"
  * @throws EngineError as `termCurve`.
  * @example relativeCurve({ model, term, x: [1.49, 1.99], anchor: 1.99, level: 0.8 }).estimate // [0.62, 0]
  */
-export function relativeCurve(
-  { model, term, x, anchor, level }: {
-    model: FittedModel; term: FittedTerm; x: readonly number[]; anchor: number; level: number;
-  },
-): BandedCurve {
+export function relativeCurve({
+  model,
+  term,
+  x,
+  anchor,
+  level,
+}: {
+  model: FittedModel;
+  term: FittedTerm;
+  x: readonly number[];
+  anchor: number;
+  level: number;
+}): BandedCurve {
   const z = normalQuantile(level);
   const values = [...x, anchor];
   const { estimate } = termCurve(model, term.id, { at: values });
@@ -35,7 +50,10 @@ export function relativeCurve(
 }
 
 /** Standard errors of f(x) - f(last value), for all values but the last. */
-function differenceErrors(model: FittedModel, { term, values }: { term: FittedTerm; values: readonly number[] }): Float64Array {
+function differenceErrors(
+  model: FittedModel,
+  { term, values }: { term: FittedTerm; values: readonly number[] },
+): Float64Array {
   const rows = designRows(model, dataFor(model, { term, values }));
   const own = { ...rows, parts: rows.parts.filter((part) => part.id === term.id) };
   const last = values.length - 1;
@@ -51,7 +69,10 @@ function differenceErrors(model: FittedModel, { term, values }: { term: FittedTe
 /** Columns for all terms, as the engine asks for; those of the other terms hold any value they know, and do not matter. */
 function dataFor(model: FittedModel, { term, values }: { term: FittedTerm; values: readonly number[] }): ModelData {
   const data: Record<string, number[] | string[]> = {};
-  for (const { columns: [column], seen } of model.terms) {
+  for (const {
+    columns: [column],
+    seen,
+  } of model.terms) {
     const [known] = seen.values;
     data[column] = typeof known === "string" ? repeat(known, values.length) : repeat(known, values.length);
   }

@@ -3,6 +3,8 @@ import { route, type Route } from "../../http/route";
 import { presentComparison } from "./comparison.presenter";
 import { compareStores } from "./comparison.service";
 
-const comparison = route(getComparison, async ({ em, query, now }) => presentComparison(await compareStores(em, { ...query, now })));
+const comparison = route(getComparison, async ({ em, query, now }) =>
+  presentComparison(await compareStores(em, { ...query, now })),
+);
 
 export const storesRoutes: readonly Route[] = [comparison];

@@ -14,7 +14,8 @@ export type StoreCurves = { store: string; level: number; intercept: number; cur
  * @throws ProblemError 404 for an unknown model, or one that has no fit for the store; 422 for an unknown store.
  */
 export async function curvesOfStore(
-  em: EntityManager, { modelId, store, level, points }: { modelId: string; store: string; level: number; points: number },
+  em: EntityManager,
+  { modelId, store, level, points }: { modelId: string; store: string; level: number; points: number },
 ): Promise<StoreCurves> {
   const model = await requireModel(em, modelId);
   await requireStores(em, [store]);
@@ -26,5 +27,9 @@ export async function curvesOfStore(
 
 function noFit({ store, reason }: { store: string; reason?: string }): ProblemError {
   const why = reason ? ` ${reason}` : " Fit the product for this store first.";
-  return new ProblemError({ status: 404, code: "no-fit", detail: `This model knows nothing of store "${store}".${why}` });
+  return new ProblemError({
+    status: 404,
+    code: "no-fit",
+    detail: `This model knows nothing of store "${store}".${why}`,
+  });
 }

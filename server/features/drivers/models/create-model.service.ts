@@ -24,7 +24,8 @@ export type NewModelAnswer =
  * @throws ProblemError 422 where codes, weeks or the specification cannot be used; the engine's code and message pass through.
  */
 export async function createModel(
-  em: EntityManager, { request, services, now }: { request: FitRequest; services: Services; now: Date },
+  em: EntityManager,
+  { request, services, now }: { request: FitRequest; services: Services; now: Date },
 ): Promise<NewModelAnswer> {
   const checked = await checkRequest(em, request);
   const isOneStore = request.stores !== undefined && checked.storesFound.length === 1;
@@ -32,9 +33,14 @@ export async function createModel(
 }
 
 async function fitOneStore(em: EntityManager, request: CheckedRequest, now: Date): Promise<NewModelAnswer> {
-  const { productFound, storesFound: [store], weeks: range } = request;
+  const {
+    productFound,
+    storesFound: [store],
+    weeks: range,
+  } = request;
   const weeks = await readSalesRows(em, { productId: productFound.id, storeIds: [store.id], ...range });
-  if (weeks.length === 0) throw unusable("no-sales", noWeeks({ store: store.code, product: productFound.code, weeks: range }));
+  if (weeks.length === 0)
+    throw unusable("no-sales", noWeeks({ store: store.code, product: productFound.code, weeks: range }));
   const fit = attempt(() => fitStore({ store: store.code, weeks, spec: request.spec ?? null }));
 
   const modelId = await em.transactional(async (inner) => {
@@ -42,7 +48,13 @@ async function fitOneStore(em: EntityManager, request: CheckedRequest, now: Date
     model.fittedAt = now;
     auditFit(inner, { model, request, action: "model.fitted" });
     await inner.flush();
-    await insertFit(inner, { modelId: model.id, storeId: store.id, text: serialiseModel(fit.model), summary: fit.summary, at: now });
+    await insertFit(inner, {
+      modelId: model.id,
+      storeId: store.id,
+      text: serialiseModel(fit.model),
+      summary: fit.summary,
+      at: now,
+    });
     await useFirstModel(inner, { modelId: model.id, productId: productFound.id, spec: model.spec ?? null, at: now });
     return model.id;
   });
@@ -58,20 +70,27 @@ function attempt<Result>(work: () => Result): Result {
 }
 
 async function fitInBackground(
-  em: EntityManager, { request, services, now }: { request: CheckedRequest; services: Services; now: Date },
+  em: EntityManager,
+  { request, services, now }: { request: CheckedRequest; services: Services; now: Date },
 ): Promise<NewModelAnswer> {
   return em.transactional(async (inner) => {
     const model = addModel(inner, { request, at: now });
     auditFit(inner, { model, request, action: "model.fit-requested" });
     await inner.flush();
     const payload = { modelId: model.id, stores: request.storesFound.map(({ id, code }) => ({ id, code })) };
-    const jobId = await services.queue.enqueue(inner, fitModelsJob, payload, { personId: request.personId, subject: `/api/models/${model.id}` });
+    const jobId = await services.queue.enqueue(inner, fitModelsJob, payload, {
+      personId: request.personId,
+      subject: `/api/models/${model.id}`,
+    });
     model.jobId = jobId;
     return { kind: "accepted" as const, modelId: model.id, jobId };
   });
 }
 
-function auditFit(em: EntityManager, { model, request, action }: { model: ModelRow; request: CheckedRequest; action: string }): void {
+function auditFit(
+  em: EntityManager,
+  { model, request, action }: { model: ModelRow; request: CheckedRequest; action: string },
+): void {
   audit(em, {
     personId: request.personId,
     tokenId: request.tokenId,

@@ -11,7 +11,8 @@ import { addModel, checkRequest, type FitRequest } from "./new-model";
  * @throws ProblemError 422 for an unknown product or store, or where no store could be fitted; no model is left then.
  */
 export async function fitProduct(
-  services: Services, { putInUse = false, ...request }: FitRequest & { putInUse?: boolean },
+  services: Services,
+  { putInUse = false, ...request }: FitRequest & { putInUse?: boolean },
 ): Promise<FitOutcome & { modelId: string }> {
   const em = services.orm.em.fork();
   const at = services.now();
@@ -28,8 +29,10 @@ export async function fitProduct(
         await switchModelInUse(inner, { modelId: model.id, productId, personId: request.personId, at });
       }
       audit(inner, {
-        personId: request.personId, action: putInUse ? "model.used" : "model.fitted",
-        subject: { kind: "model", id: model.id }, detail: { product: productCode, stores: outcome.fitted },
+        personId: request.personId,
+        action: putInUse ? "model.used" : "model.fitted",
+        subject: { kind: "model", id: model.id },
+        detail: { product: productCode, stores: outcome.fitted },
       });
     });
     return { modelId: model.id, ...outcome };

@@ -1,8 +1,16 @@
 import type { FitSummary } from "@shared/contract/drivers";
 import { fitModel, modelReport, predict, type FittedModel, type ModelSpec } from "@shared/engine";
 import {
-  defaultSpec, describeVariation, modelColumns, NO_EVENT, priceLearning, toModelData,
-  type DefaultSpec, type RowCounts, type SalesModelData, type SalesRow,
+  defaultSpec,
+  describeVariation,
+  modelColumns,
+  NO_EVENT,
+  priceLearning,
+  toModelData,
+  type DefaultSpec,
+  type RowCounts,
+  type SalesModelData,
+  type SalesRow,
 } from "@shared/planning";
 
 /** One store's fit: the model, the weeks it was fitted to (in the order of `model.fitted`), and what can be said of it. */
@@ -15,13 +23,18 @@ export type StoreFit = { model: FittedModel; rows: SalesRow[]; summary: FitSumma
  * @param spec null for the default specification that these weeks allow.
  * @throws EngineError, PlanningError where the weeks or the specification cannot be used.
  */
-export function fitStore(
-  { store, weeks, spec }: { store: string; weeks: readonly SalesRow[]; spec: ModelSpec | null },
-): StoreFit {
+export function fitStore({
+  store,
+  weeks,
+  spec,
+}: {
+  store: string;
+  weeks: readonly SalesRow[];
+  spec: ModelSpec | null;
+}): StoreFit {
   const learnt = toModelData(weeks);
-  const chosen = spec === null
-    ? defaultSpec(describeVariation(learnt.data))
-    : { spec, leftOut: [], straightLines: [] };
+  const chosen =
+    spec === null ? defaultSpec(describeVariation(learnt.data)) : { spec, leftOut: [], straightLines: [] };
   const model = fitModel(chosen.spec, learnt.data);
   return { model, rows: learnt.rows, summary: summarise({ store, weeks, learnt, chosen, model }) };
 }

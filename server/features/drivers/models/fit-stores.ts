@@ -43,7 +43,11 @@ export async function fitStores({ em, model, stores, at, onStore }: Work): Promi
   const skipped: SkippedStore[] = [];
   for (let from = 0; from < stores.length; from += storesAtOnce) {
     const batch = stores.slice(from, from + storesAtOnce);
-    const weeks = await weeksOf(em, model, batch.filter((store) => !done.has(store.id)));
+    const weeks = await weeksOf(
+      em,
+      model,
+      batch.filter((store) => !done.has(store.id)),
+    );
     for (const [index, store] of batch.entries()) {
       if (!done.has(store.id)) {
         const reason = await fitAndWrite({ em, model, store, weeks: weeks.get(store.code) ?? [], at });
@@ -54,22 +58,44 @@ export async function fitStores({ em, model, stores, at, onStore }: Work): Promi
     }
   }
   const fitted = stores.length - skipped.length;
-  if (fitted === 0) throw unusable("nothing-fitted", `None of ${stores.length} stores could be fitted. ${skipped[0].store}: ${skipped[0].reason}`);
+  if (fitted === 0)
+    throw unusable(
+      "nothing-fitted",
+      `None of ${stores.length} stores could be fitted. ${skipped[0].store}: ${skipped[0].reason}`,
+    );
   await finish({ em, model, skipped, at });
   return { fitted, skipped };
 }
 
-async function weeksOf(em: EntityManager, model: ModelToFit, stores: readonly StoreKey[]): Promise<Map<string, StoredSalesRow[]>> {
-  const rows = await readSalesRows(em, { productId: model.productId, storeIds: stores.map((store) => store.id), ...model.weeks });
+async function weeksOf(
+  em: EntityManager,
+  model: ModelToFit,
+  stores: readonly StoreKey[],
+): Promise<Map<string, StoredSalesRow[]>> {
+  const rows = await readSalesRows(em, {
+    productId: model.productId,
+    storeIds: stores.map((store) => store.id),
+    ...model.weeks,
+  });
   const byStore = new Map<string, StoredSalesRow[]>(stores.map((store) => [store.code, []]));
   for (const row of rows) byStore.get(row.store)?.push(row);
   return byStore;
 }
 
 /** The reason why a store could not be fitted; null where it was. */
-async function fitAndWrite(
-  { em, model, store, weeks, at }: { em: EntityManager; model: ModelToFit; store: StoreKey; weeks: StoredSalesRow[]; at: Date },
-): Promise<string | null> {
+async function fitAndWrite({
+  em,
+  model,
+  store,
+  weeks,
+  at,
+}: {
+  em: EntityManager;
+  model: ModelToFit;
+  store: StoreKey;
+  weeks: StoredSalesRow[];
+  at: Date;
+}): Promise<string | null> {
   if (weeks.length === 0) return noWeeks({ store: store.code, product: model.productCode, weeks: model.weeks });
   try {
     const { model: fitted, summary } = fitStore({ store: store.code, weeks, spec: model.spec });
@@ -83,13 +109,32 @@ async function fitAndWrite(
 }
 
 /** Why there is nothing to fit, for one store. */
-export function noWeeks({ store, product, weeks }: { store: string; product: string; weeks?: { first: string; last: string } }): string {
+export function noWeeks({
+  store,
+  product,
+  weeks,
+}: {
+  store: string;
+  product: string;
+  weeks?: { first: string; last: string };
+}): string {
   return `Store "${store}" has no weeks of product "${product}"${within(weeks)}.`;
 }
 
-async function finish({ em, model, skipped, at }: { em: EntityManager; model: ModelToFit; skipped: SkippedStore[]; at: Date }): Promise<void> {
+async function finish({
+  em,
+  model,
+  skipped,
+  at,
+}: {
+  em: EntityManager;
+  model: ModelToFit;
+  skipped: SkippedStore[];
+  at: Date;
+}): Promise<void> {
   await em.transactional(async (inner) => {
     const isFirstTime = await markFitted(inner, { modelId: model.id, skipped, at });
-    if (isFirstTime) await useFirstModel(inner, { modelId: model.id, productId: model.productId, spec: model.spec, at });
+    if (isFirstTime)
+      await useFirstModel(inner, { modelId: model.id, productId: model.productId, spec: model.spec, at });
   });
 }

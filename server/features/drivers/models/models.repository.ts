@@ -18,16 +18,26 @@ export async function findModelInUse(em: EntityManager, productId: number): Prom
 }
 
 /** A product's models, newest first. */
-export async function findModelsOfProduct(em: EntityManager, { productId, state }: { productId: number; state?: ModelState }) {
-  return em.find(ModelEntity, { product: productId, ...(state && { state }) }, {
-    populate: ["product.category", "createdBy"],
-    orderBy: { createdAt: "desc", id: "desc" },
-    limit: mostListed,
-  });
+export async function findModelsOfProduct(
+  em: EntityManager,
+  { productId, state }: { productId: number; state?: ModelState },
+) {
+  return em.find(
+    ModelEntity,
+    { product: productId, ...(state && { state }) },
+    {
+      populate: ["product.category", "createdBy"],
+      orderBy: { createdAt: "desc", id: "desc" },
+      limit: mostListed,
+    },
+  );
 }
 
 /** What can be said of the fits of models, by model, in the order of store codes. */
-export async function findFitSummaries(em: EntityManager, modelIds: readonly string[]): Promise<Map<string, FitSummary[]>> {
+export async function findFitSummaries(
+  em: EntityManager,
+  modelIds: readonly string[],
+): Promise<Map<string, FitSummary[]>> {
   const summaries = new Map<string, FitSummary[]>(modelIds.map((id) => [id, []]));
   if (modelIds.length === 0) return summaries;
   const rows = await em.execute<{ modelId: string; summary: FitSummary }[]>(
@@ -42,7 +52,10 @@ export async function findFitSummaries(em: EntityManager, modelIds: readonly str
 export type StoredFit = { store: string; name: string; region: string; fit: string; summary: FitSummary };
 
 /** The fits of a model as the engine wrote them, by store code; all of them unless stores are named. */
-export async function findFits(em: EntityManager, { modelId, stores }: { modelId: string; stores?: readonly string[] }): Promise<StoredFit[]> {
+export async function findFits(
+  em: EntityManager,
+  { modelId, stores }: { modelId: string; stores?: readonly string[] },
+): Promise<StoredFit[]> {
   if (stores?.length === 0) return [];
   return em.execute<StoredFit[]>(
     `select s.code as store, s.name, s.region, f.fit, f.summary from model_fits f join stores s on s.id = f.store_id
@@ -53,13 +66,16 @@ export async function findFits(em: EntityManager, { modelId, stores }: { modelId
 
 /** Keys of the stores a model is fitted for already. */
 export async function findFittedStoreIds(em: EntityManager, modelId: string): Promise<Set<number>> {
-  const rows = await em.execute<{ id: number }[]>("select store_id as id from model_fits where model_id = ?", [modelId]);
+  const rows = await em.execute<{ id: number }[]>("select store_id as id from model_fits where model_id = ?", [
+    modelId,
+  ]);
   return new Set(rows.map((row) => row.id));
 }
 
 /** Writes one store's fit at once; where a run before this one wrote it, that one stays. */
 export async function insertFit(
-  em: EntityManager, fit: { modelId: string; storeId: number; text: string; summary: FitSummary; at: Date },
+  em: EntityManager,
+  fit: { modelId: string; storeId: number; text: string; summary: FitSummary; at: Date },
 ): Promise<void> {
   await em.execute(
     `insert into model_fits (model_id, store_id, fit, summary, created_at) values (?, ?, ?, ?::jsonb, ?)
@@ -70,7 +86,8 @@ export async function insertFit(
 
 /** Records that all stores of a model are done; false where that was recorded before. */
 export async function markFitted(
-  em: EntityManager, { modelId, skipped, at }: { modelId: string; skipped: readonly SkippedStore[]; at: Date },
+  em: EntityManager,
+  { modelId, skipped, at }: { modelId: string; skipped: readonly SkippedStore[]; at: Date },
 ): Promise<boolean> {
   const rows = await em.execute<{ id: string }[]>(
     "update models set fitted_at = ?, skipped = ?::jsonb where id = ? and fitted_at is null returning id",
@@ -86,7 +103,8 @@ export async function lockProduct(em: EntityManager, productId: number): Promise
 
 /** Puts a model in use and retires the one before; the product must be locked. */
 export async function switchModelInUse(
-  em: EntityManager, { modelId, productId, personId, at }: { modelId: string; productId: number; personId: string | null; at: Date },
+  em: EntityManager,
+  { modelId, productId, personId, at }: { modelId: string; productId: number; personId: string | null; at: Date },
 ): Promise<void> {
   // In this order: an index allows one in use per product at any moment.
   await em.execute(

@@ -47,7 +47,10 @@ export async function checkRequest(em: EntityManager, request: FitRequest): Prom
     ? await requireStores(em, request.stores)
     : await storesThatSold(em, { productId: productFound.id, ...weeks });
   if (storesFound.length > 0) return { ...request, productFound, storesFound };
-  throw unusable("no-sales", `No store has weeks of product "${request.product}"${within(weeks)}. Load a sales extract first.`);
+  throw unusable(
+    "no-sales",
+    `No store has weeks of product "${request.product}"${within(weeks)}. Load a sales extract first.`,
+  );
 }
 
 /** Says between which weeks something was looked for, for the end of a sentence. */

@@ -11,6 +11,7 @@ export function notForPlans(spec: ModelSpec): string | null {
   if (spec.response !== "units") return `Plans need a model of units; this one is of ${spec.response}.`;
   if (spec.family === "gaussian") return "Plans need a model whose drivers multiply: log-gaussian or quasi-Poisson.";
   const running = spec.terms.find((term) => term.kind !== "factor" && calendarTime.has(term.column));
-  if (running) return `A ${running.kind === "linear" ? "line" : "curve"} in calendar time (${running.column}) would run on into the weeks planned.`;
-  return null;
+  if (!running) return null;
+  const shape = running.kind === "linear" ? "line" : "curve";
+  return `A ${shape} in calendar time (${running.column}) would run on into the weeks planned.`;
 }

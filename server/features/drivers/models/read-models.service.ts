@@ -4,7 +4,13 @@ import { notFound, unusable } from "../../../errors";
 import { requireProduct, type ProductReference } from "../catalogue-lookup";
 import type { ModelState } from "../drivers.entities";
 import {
-  findFitSummaries, findFits, findModel, findModelInUse, findModelsOfProduct, type LoadedModel, type StoredFit,
+  findFitSummaries,
+  findFits,
+  findModel,
+  findModelInUse,
+  findModelsOfProduct,
+  type LoadedModel,
+  type StoredFit,
 } from "./models.repository";
 
 /** A model and what can be said of its fits. */
@@ -23,15 +29,22 @@ export async function requireModel(em: EntityManager, id: string): Promise<Loade
  * @throws ProblemError 404 for an unknown model, 422 where it is another product's, or none is in use.
  */
 export async function requireModelOfProduct(
-  em: EntityManager, { product, modelId }: { product: ProductReference; modelId?: string },
+  em: EntityManager,
+  { product, modelId }: { product: ProductReference; modelId?: string },
 ): Promise<LoadedModel> {
   const id = modelId ?? (await findModelInUse(em, product.id))?.id;
   if (id === undefined) {
-    throw unusable("no-model-in-use", `Product "${product.code}" has no model in use. Fit it on the Drivers page, or by POST /api/models, first.`);
+    throw unusable(
+      "no-model-in-use",
+      `Product "${product.code}" has no model in use. Fit it on the Drivers page, or by POST /api/models, first.`,
+    );
   }
   const model = await requireModel(em, id);
   if (model.product.id === product.id) return model;
-  throw unusable("model-of-other-product", `This model is of product "${model.product.code}", not of "${product.code}".`);
+  throw unusable(
+    "model-of-other-product",
+    `This model is of product "${model.product.code}", not of "${product.code}".`,
+  );
 }
 
 /** @throws ProblemError 404 where there is no such model. */
@@ -47,11 +60,15 @@ export async function readModel(em: EntityManager, id: string): Promise<ModelWit
  * @throws ProblemError 422 where there is no such product.
  */
 export async function listModelsOfProduct(
-  em: EntityManager, { product, state }: { product: string; state?: ModelState },
+  em: EntityManager,
+  { product, state }: { product: string; state?: ModelState },
 ): Promise<ModelWithFits[]> {
   const { id: productId } = await requireProduct(em, product);
   const models = await findModelsOfProduct(em, { productId, state });
-  const summaries = await findFitSummaries(em, models.map((model) => model.id));
+  const summaries = await findFitSummaries(
+    em,
+    models.map((model) => model.id),
+  );
   return models.map((model) => ({ model, fits: summaries.get(model.id) ?? [] }));
 }
 
@@ -60,7 +77,10 @@ export async function listModelsOfProduct(
  *
  * @throws ProblemError 404 where there is no such model.
  */
-export async function readFits(em: EntityManager, { modelId, stores }: { modelId: string; stores?: readonly string[] }): Promise<StoredFit[]> {
+export async function readFits(
+  em: EntityManager,
+  { modelId, stores }: { modelId: string; stores?: readonly string[] },
+): Promise<StoredFit[]> {
   await requireModel(em, modelId);
   return findFits(em, { modelId, stores });
 }

@@ -15,7 +15,9 @@ const defaultSizes = { smooth: 10, "cyclic-smooth": 12 } as const;
 export function requireModestSpec({ terms }: ModelSpec): void {
   const coefficients = terms.reduce((sum, term) => sum + sizeOf(term), 0);
   if (coefficients <= mostCoefficients) return;
-  const detail = `The terms have ${coefficients} coefficients: at most ${mostCoefficients} are fitted. Use fewer terms, or a smaller size for their curves.`;
+  const detail =
+    `The terms have ${coefficients} coefficients: at most ${mostCoefficients} are fitted. ` +
+    "Use fewer terms, or a smaller size for their curves.";
   throw unusable("spec-too-large", detail, [{ path: "spec.terms", message: detail }]);
 }
 

@@ -14,7 +14,8 @@ import { readModel, requireModel, type ModelWithFits } from "./read-models.servi
  * where plans cannot use it.
  */
 export async function useModel(
-  em: EntityManager, { modelId, caller, requestId, now }: { modelId: string; caller: Caller; requestId: string; now: Date },
+  em: EntityManager,
+  { modelId, caller, requestId, now }: { modelId: string; caller: Caller; requestId: string; now: Date },
 ): Promise<ModelWithFits> {
   const model = await requireModel(em, modelId);
   requireMayUseModels(caller, model.product.category.code);
@@ -25,8 +26,12 @@ export async function useModel(
     if (model.state === "in-use") return;
     await switchModelInUse(inner, { modelId, productId: model.product.id, personId: caller.personId, at: now });
     audit(inner, {
-      personId: caller.personId, tokenId: caller.tokenId, requestId,
-      action: "model.used", subject: { kind: "model", id: modelId }, detail: { product: model.product.code },
+      personId: caller.personId,
+      tokenId: caller.tokenId,
+      requestId,
+      action: "model.used",
+      subject: { kind: "model", id: modelId },
+      detail: { product: model.product.code },
     });
   });
   em.clear();
@@ -35,7 +40,10 @@ export async function useModel(
 
 function requireUsable(model: LoadedModel): void {
   if (!model.fittedAt) {
-    throw conflict("still-fitting", "This model is still being fitted. Wait until its job has ended, then put it in use.");
+    throw conflict(
+      "still-fitting",
+      "This model is still being fitted. Wait until its job has ended, then put it in use.",
+    );
   }
   const reason = model.spec ? notForPlans(model.spec) : null;
   if (reason !== null) throw unusable("not-for-plans", `${reason} It can be looked at, but not put in use.`);

@@ -9,11 +9,17 @@ import { notForPlans } from "./not-for-plans";
  * the transaction that finishes the model.
  */
 export async function useFirstModel(
-  em: EntityManager, { modelId, productId, spec, at }: { modelId: string; productId: number; spec: ModelSpec | null; at: Date },
+  em: EntityManager,
+  { modelId, productId, spec, at }: { modelId: string; productId: number; spec: ModelSpec | null; at: Date },
 ): Promise<void> {
   if (spec !== null && notForPlans(spec) !== null) return;
   await lockProduct(em, productId);
   if (await findModelInUse(em, productId)) return;
   await switchModelInUse(em, { modelId, productId, personId: null, at });
-  audit(em, { personId: null, action: "model.used", subject: { kind: "model", id: modelId }, detail: { rule: "first model of its product" } });
+  audit(em, {
+    personId: null,
+    action: "model.used",
+    subject: { kind: "model", id: modelId },
+    detail: { rule: "first model of its product" },
+  });
 }

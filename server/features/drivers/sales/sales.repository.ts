@@ -57,11 +57,19 @@ const salesSql = `
   order by c.store, c.week`;
 
 /** A store and how its weeks of a product count. */
-export type SellingStore = { id: number; code: string; name: string; region: string; weeks: number; meanWeeklyUnits: number };
+export type SellingStore = {
+  id: number;
+  code: string;
+  name: string;
+  region: string;
+  weeks: number;
+  meanWeeklyUnits: number;
+};
 
 /** The stores that have weeks of a product, by code, with the mean of their weekly units. */
 export async function storesThatSold(
-  em: EntityManager, { productId, first, last }: { productId: number; first?: Day; last?: Day },
+  em: EntityManager,
+  { productId, first, last }: { productId: number; first?: Day; last?: Day },
 ): Promise<SellingStore[]> {
   return em.execute<SellingStore[]>(
     `select s.id, s.code, s.name, s.region, w.weeks, w.mean as "meanWeeklyUnits"

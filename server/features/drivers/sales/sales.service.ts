@@ -9,7 +9,8 @@ import { readSalesRows, type StoredSalesRow } from "./sales.repository";
  * @throws ProblemError 422 where the product or store is unknown.
  */
 export async function salesOfStore(
-  em: EntityManager, { product, store, first, last }: { product: string; store: string; first?: Day; last?: Day },
+  em: EntityManager,
+  { product, store, first, last }: { product: string; store: string; first?: Day; last?: Day },
 ): Promise<StoredSalesRow[]> {
   const { id: productId } = await requireProduct(em, product);
   const [{ id: storeId }] = await requireStores(em, [store]);

@@ -16,11 +16,22 @@ type Noted = {
 
 /** What people should know before they trust a plan on this base, in sentences. */
 export function contextNotes({ base, withoutModel, skipped, roughNormals }: Noted): string[] {
-  const storesWhere = (isSo: (cell: BaseCell) => boolean) => [...new Set(base.filter(isSo).map(({ store }) => store))];
+  const storesWhere = (isSo: (cell: BaseCell) => boolean) => [
+    ...new Set(base.filter(isSo).map(({ store }) => store)),
+  ];
   const sentences: [readonly string[], (stores: string) => string][] = [
-    [storesWhere((cell) => cell.regularPrice === null), (stores) => `The regular price is not known everywhere in ${stores}: those weeks are left out.`],
-    [storesWhere((cell) => cell.unitCost === null), (stores) => `The unit cost is not known everywhere in ${stores}: no margin can be told.`],
-    [roughNormals, (stores) => `No other year tells the normal temperature of ${stores}: the mean of all weeks known is taken.`],
+    [
+      storesWhere((cell) => cell.regularPrice === null),
+      (stores) => `The regular price is not known everywhere in ${stores}: those weeks are left out.`,
+    ],
+    [
+      storesWhere((cell) => cell.unitCost === null),
+      (stores) => `The unit cost is not known everywhere in ${stores}: no margin can be told.`,
+    ],
+    [
+      roughNormals,
+      (stores) => `No other year tells the normal temperature of ${stores}: the mean of all weeks known is taken.`,
+    ],
   ];
   return [
     ...withoutModelNotes(withoutModel, skipped),
@@ -32,7 +43,10 @@ function withoutModelNotes(stores: readonly string[], skipped: readonly SkippedS
   if (stores.length === 0) return [];
   const count = stores.length === 1 ? "1 store has no model" : `${stores.length} stores have no model`;
   const reasons = skipped.filter(({ store }) => stores.includes(store)).slice(0, mostNamed);
-  return [`${count}: ${listed(stores)}.`, ...reasons.map(({ store, reason }) => `Store ${store} could not be fitted: ${reason}`)];
+  return [
+    `${count}: ${listed(stores)}.`,
+    ...reasons.map(({ store, reason }) => `Store ${store} could not be fitted: ${reason}`),
+  ];
 }
 
 function namedStores(stores: readonly string[]): string {

@@ -19,7 +19,11 @@ const halfYearWeeks = 26;
  * @example normalTemperature(history)("2026-06-08") // 14.2
  */
 export function normalTemperature(history: readonly WeekTemperature[]): (week: Day) => number | null {
-  const known = history.map(({ week, temperatureC }) => ({ index: weekIndex(week), place: yearFraction(week), temperatureC }));
+  const known = history.map(({ week, temperatureC }) => ({
+    index: weekIndex(week),
+    place: yearFraction(week),
+    temperatureC,
+  }));
   return (week) => {
     const index = weekIndex(week);
     const place = yearFraction(week);

@@ -3,14 +3,26 @@ import type { Day } from "@shared/calendar";
 import { eventOfWeekSql } from "../../drivers";
 
 /** What a week of sales tells of a store's price, cost and event. */
-export type ToldBySales = { store: string; week: Day; regularPrice: number | null; unitCost: number | null; event: string | null };
+export type ToldBySales = {
+  store: string;
+  week: Day;
+  regularPrice: number | null;
+  unitCost: number | null;
+  event: string | null;
+};
+
+const toldColumns = `
+  s.code as store, w.week, w.regular_price::float8 as "regularPrice", w.unit_cost::float8 as "unitCost", w.event`;
 
 type Range = { productId: number; storeIds: readonly number[]; first: Day; last: Day };
 
 /** What sales tell of the weeks asked for, where there are sales of them already. */
-export async function findToldWithin(em: EntityManager, { productId, storeIds, first, last }: Range): Promise<ToldBySales[]> {
+export async function findToldWithin(
+  em: EntityManager,
+  { productId, storeIds, first, last }: Range,
+): Promise<ToldBySales[]> {
   return em.execute<ToldBySales[]>(
-    `select s.code as store, w.week, w.regular_price::float8 as "regularPrice", w.unit_cost::float8 as "unitCost", w.event
+    `select ${toldColumns}
      from weekly_sales w join stores s on s.id = w.store_id
      where w.product_id = ? and w.store_id in (?) and w.week between ?::date and ?::date`,
     [productId, [...storeIds], first, last],
@@ -18,16 +30,22 @@ export async function findToldWithin(em: EntityManager, { productId, storeIds, f
 }
 
 /** Per store the last row before a week that tells a regular price, and the last that tells a cost. */
-export async function findToldBefore(em: EntityManager, { productId, storeIds, first }: Omit<Range, "last">): Promise<ToldBySales[]> {
+export async function findToldBefore(
+  em: EntityManager,
+  { productId, storeIds, first }: Omit<Range, "last">,
+): Promise<ToldBySales[]> {
   const lastTelling = (column: "regular_price" | "unit_cost") => `
-    select s.code as store, w.week, w.regular_price::float8 as "regularPrice", w.unit_cost::float8 as "unitCost", w.event
+    select ${toldColumns}
     from stores s cross join lateral (
       select * from weekly_sales r
       where r.product_id = ? and r.store_id = s.id and r.week < ?::date and r.${column} is not null
       order by r.week desc limit 1
     ) w where s.id in (?)`;
   const bounds = [productId, first, [...storeIds]];
-  return em.execute<ToldBySales[]>(`${lastTelling("regular_price")} union all ${lastTelling("unit_cost")}`, [...bounds, ...bounds]);
+  return em.execute<ToldBySales[]>(`${lastTelling("regular_price")} union all ${lastTelling("unit_cost")}`, [
+    ...bounds,
+    ...bounds,
+  ]);
 }
 
 /** A product's terms from a day on. */
@@ -46,7 +64,10 @@ export async function findTerms(em: EntityManager, productId: number): Promise<T
 export type RegionEvent = { region: string; week: Day; event: string };
 
 /** The calendar's event of each week in each region; ordinary weeks are not there. */
-export async function findEvents(em: EntityManager, { regions, first, last }: { regions: readonly string[]; first: Day; last: Day }): Promise<RegionEvent[]> {
+export async function findEvents(
+  em: EntityManager,
+  { regions, first, last }: { regions: readonly string[]; first: Day; last: Day },
+): Promise<RegionEvent[]> {
   return em.execute<RegionEvent[]>(
     `select r.region, w.week, e.code as event
      from (select distinct region from stores where region in (?)) r
@@ -61,7 +82,8 @@ export type PlaceTemperature = { region: string; store: string; week: Day; tempe
 
 /** All temperatures known of regions and stores, those that came with a product's sales included (they go first). */
 export async function findTemperatures(
-  em: EntityManager, { productId, stores }: { productId: number; stores: readonly { id: number; code: string; region: string }[] },
+  em: EntityManager,
+  { productId, stores }: { productId: number; stores: readonly { id: number; code: string; region: string }[] },
 ): Promise<PlaceTemperature[]> {
   const codes = stores.map(({ code }) => code);
   const regions = stores.map(({ region }) => region);
@@ -80,7 +102,10 @@ export async function findTemperatures(
 }
 
 /** The last week before a day in which any of the stores has a row of the product; null where there is none. */
-export async function findLastWeekBefore(em: EntityManager, { productId, storeIds, first }: Omit<Range, "last">): Promise<Day | null> {
+export async function findLastWeekBefore(
+  em: EntityManager,
+  { productId, storeIds, first }: Omit<Range, "last">,
+): Promise<Day | null> {
   const [row] = await em.execute<{ week: Day | null }[]>(
     "select max(week) as week from weekly_sales where product_id = ? and store_id in (?) and week < ?::date",
     [productId, [...storeIds], first],

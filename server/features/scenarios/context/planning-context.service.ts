@@ -2,12 +2,22 @@ import type { EntityManager } from "@mikro-orm/postgresql";
 import { addWeeks, weeksBetween, type Day } from "@shared/calendar";
 import type { BaseCell } from "@shared/contract/scenarios";
 import {
-  findFits, readSalesRows, type LoadedModel, type StoredFit, type StoredSalesRow, type StoreReference,
+  findFits,
+  readSalesRows,
+  type LoadedModel,
+  type StoredFit,
+  type StoredSalesRow,
+  type StoreReference,
 } from "../../drivers";
 import { baseCells } from "./base-cells";
 import { contextNotes } from "./context-notes";
 import {
-  findEvents, findLastWeekBefore, findTemperatures, findTerms, findToldBefore, findToldWithin,
+  findEvents,
+  findLastWeekBefore,
+  findTemperatures,
+  findTerms,
+  findToldBefore,
+  findToldWithin,
 } from "./planned-weeks.repository";
 import { storeNormals } from "./store-temperatures";
 
@@ -43,13 +53,18 @@ export async function planBase(em: EntityManager, { productId, stores, weeks, mo
     base,
     withoutModel: stores.map(({ code }) => code).filter((code) => !fitted.has(code)),
     skipped: model.skipped,
-    roughNormals: stores.filter((store) => planned.some((week) => normals(store, week).isRough)).map(({ code }) => code),
+    roughNormals: stores
+      .filter((store) => planned.some((week) => normals(store, week).isRough))
+      .map(({ code }) => code),
   });
   return { modelId: model.id, base, fits, notes };
 }
 
 /** The stores' last weeks before a plan, by store and week: 53 up to the last that was sold. */
-export async function historyBefore(em: EntityManager, { productId, stores, weeks }: PlanFrame): Promise<StoredSalesRow[]> {
+export async function historyBefore(
+  em: EntityManager,
+  { productId, stores, weeks }: PlanFrame,
+): Promise<StoredSalesRow[]> {
   const storeIds = stores.map(({ id }) => id);
   const last = await findLastWeekBefore(em, { productId, storeIds, first: weeks.first });
   if (last === null) return [];

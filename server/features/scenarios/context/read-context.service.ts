@@ -14,7 +14,8 @@ export type ContextRequest = { product: string; stores: readonly string[]; first
  * @throws ProblemError 422 for unknown codes, weeks that are none of the chain's, or a product without a model in use.
  */
 export async function readPlanningContext(
-  em: EntityManager, request: ContextRequest,
+  em: EntityManager,
+  request: ContextRequest,
 ): Promise<{ context: PlanBase; history: StoredSalesRow[] }> {
   const weeks = { first: request.first, last: request.last };
   const { weekStart } = await getChain(em);

@@ -14,9 +14,17 @@ type Place = (week: Day) => Normal;
  * @returns a function from a store and a week to its normal temperature; where no other year covers the time of year, the
  * mean of all weeks known, marked as rough.
  */
-export function storeNormals(temperatures: readonly PlaceTemperature[]): (store: { code: string; region: string }, week: Day) => Normal {
-  const ofRegion = bySource(temperatures.filter(({ store }) => store === ""), "region");
-  const ofStore = bySource(temperatures.filter(({ store }) => store !== ""), "store");
+export function storeNormals(
+  temperatures: readonly PlaceTemperature[],
+): (store: { code: string; region: string }, week: Day) => Normal {
+  const ofRegion = bySource(
+    temperatures.filter(({ store }) => store === ""),
+    "region",
+  );
+  const ofStore = bySource(
+    temperatures.filter(({ store }) => store !== ""),
+    "store",
+  );
   const places = new Map<string, Place>();
   return ({ code, region }, week) => {
     const own = ofStore.get(code);

@@ -3,7 +3,13 @@ import type { ScenarioDraft } from "@shared/contract/scenarios";
 import { unusable, type ProblemError } from "../../../errors";
 import { getChain } from "../../chain";
 import {
-  notForPlans, requireModelOfProduct, requireProduct, requireStores, type LoadedModel, type ProductReference, type StoreReference,
+  notForPlans,
+  requireModelOfProduct,
+  requireProduct,
+  requireStores,
+  type LoadedModel,
+  type ProductReference,
+  type StoreReference,
 } from "../../drivers";
 import { cellFaults, weekFaults, type DraftFault } from "./draft-faults";
 
@@ -11,7 +17,12 @@ import { cellFaults, weekFaults, type DraftFault } from "./draft-faults";
 const mostNamed = 50;
 
 /** A draft whose codes were found and whose weeks and cells are right. */
-export type CheckedDraft = { draft: ScenarioDraft; product: ProductReference; stores: StoreReference[]; model: LoadedModel };
+export type CheckedDraft = {
+  draft: ScenarioDraft;
+  product: ProductReference;
+  stores: StoreReference[];
+  model: LoadedModel;
+};
 
 /**
  * Checks a draft against the catalogue, the chain's calendar and the product's models.
@@ -21,7 +32,9 @@ export type CheckedDraft = { draft: ScenarioDraft; product: ProductReference; st
  * @throws ProblemError 422 that names every fault (the first 50); its code is the first one's.
  */
 export async function checkDraft(
-  em: EntityManager, draft: ScenarioDraft, keep?: { modelId: string; product: string },
+  em: EntityManager,
+  draft: ScenarioDraft,
+  keep?: { modelId: string; product: string },
 ): Promise<CheckedDraft> {
   const { weekStart } = await getChain(em);
   throwFaults(weekFaults({ weeks: draft.weeks, weekStart }));
@@ -40,10 +53,12 @@ export async function checkDraft(
  * there is no such model.
  */
 export async function requirePlanningModel(
-  em: EntityManager, { product, modelId }: { product: ProductReference; modelId?: string },
+  em: EntityManager,
+  { product, modelId }: { product: ProductReference; modelId?: string },
 ): Promise<LoadedModel> {
   const model = await requireModelOfProduct(em, { product, modelId });
-  if (!model.fittedAt) throw unusable("still-fitting", "This model is still being fitted. Wait until its job has ended.");
+  if (!model.fittedAt)
+    throw unusable("still-fitting", "This model is still being fitted. Wait until its job has ended.");
   const reason = model.spec ? notForPlans(model.spec) : null;
   if (reason !== null) throw unusable("not-for-plans", `${reason} Choose another model of the product.`);
   return model;
@@ -57,5 +72,9 @@ export function throwFaults(faults: readonly DraftFault[]): void {
 function faultsProblem(faults: readonly DraftFault[]): ProblemError {
   const [first] = faults;
   const others = faults.length > 1 ? ` (and ${faults.length - 1} more)` : "";
-  return unusable(first.code, `${first.message}${others}`, faults.slice(0, mostNamed).map(({ path, message }) => ({ path, message })));
+  return unusable(
+    first.code,
+    `${first.message}${others}`,
+    faults.slice(0, mostNamed).map(({ path, message }) => ({ path, message })),
+  );
 }
