@@ -1,4 +1,4 @@
-import express, { type Express } from "express";
+import express, { type Express, type RequestHandler } from "express";
 import helmet from "helmet";
 import { randomUUID } from "node:crypto";
 import { pinoHttp } from "pino-http";
@@ -10,6 +10,12 @@ import { serveClient } from "./http/serve-client";
 import { routes } from "./routes";
 import type { Services } from "./services";
 import { sessions } from "./features/accounts";
+
+/** What one person may read must not come out of a cache for the next; a route that allows keeping says so itself. */
+const notKept: RequestHandler = (_request, response, next) => {
+  response.set("Cache-Control", "no-store");
+  next();
+};
 
 /** The whole application over given services; it listens nowhere yet. */
 export function createApp(services: Services): Express {
@@ -23,7 +29,7 @@ export function createApp(services: Services): Express {
     next();
   });
   app.use(helmet(securityHeaders(services.environment)));
-  app.use("/api", sameOrigin(services.environment), sessions(services));
+  app.use("/api", notKept, sameOrigin(services.environment), sessions(services));
   mount(app, routes, services);
   app.use("/api", unknownPath);
   serveClient(app, services.environment);

@@ -6,11 +6,14 @@ import { createLogger } from "./logger";
 import type { Services } from "./services";
 import { createFileStore } from "./storage/file-store";
 
+/** A request fails sooner than people give up. */
+const connectionTimeoutMillis = 10_000;
+
 /** Connects everything a process needs; `closeServices` lets go of it again. */
 export async function createServices(environment: Environment, options: { now?: () => Date } = {}): Promise<Services> {
   const logger = createLogger(environment.LOG_LEVEL);
   const orm = await createOrm(environment);
-  const pool = new pg.Pool({ connectionString: environment.DATABASE_URL, max: environment.DATABASE_POOL_SIZE });
+  const pool = new pg.Pool({ connectionString: environment.DATABASE_URL, max: environment.DATABASE_POOL_SIZE, connectionTimeoutMillis });
   // A connection that breaks while idle is replaced at the next use.
   pool.on("error", (error) => logger.warn({ err: error }, "database connection lost"));
   // One that breaks while in use says so too, and without a listener that would end the process.

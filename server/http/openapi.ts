@@ -1,6 +1,7 @@
 import { z } from "zod";
 import { problemSchema } from "@shared/contract/common";
 import type { Endpoint } from "@shared/contract/endpoint";
+import { acceptedSchema } from "@shared/contract/jobs";
 
 type Schema = Record<string, unknown>;
 
@@ -84,10 +85,12 @@ function describeBody({ multipart }: Endpoint, body: z.ZodType): Schema {
   return { required: true, content: { "multipart/form-data": { schema: withFile } } };
 }
 
-function describeSuccess({ response, status, produces }: Endpoint): Record<string, Schema> {
+function describeSuccess({ response, status, produces, orAccepted }: Endpoint): Record<string, Schema> {
   const code = String(status ?? (response || produces ? 200 : 204));
   const location = { Location: { description: "Address of the job to follow.", schema: { type: "string" } } };
+  const accepted = { "application/json": { schema: jsonSchema(acceptedSchema, "output") } };
   return {
+    ...(orAccepted && { 202: { description: "It takes longer, and goes on in the background.", headers: location, content: accepted } }),
     [code]: {
       description: code === "204" ? "Done; there is no body." : "Success.",
       ...(code === "202" && { headers: location }),

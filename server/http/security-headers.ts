@@ -21,6 +21,7 @@ export function securityHeaders(environment: Environment): HelmetOptions {
         "worker-src": ["'self'"],
       },
     },
+    xFrameOptions: { action: "deny" },
     // Over plain http on loopback this would make browsers refuse the page.
     strictTransportSecurity: environment.SECURE_COOKIES ? { maxAge: 31_536_000 } : false,
     referrerPolicy: { policy: "same-origin" },

@@ -101,7 +101,7 @@ export const createModel = defineEndpoint({
     fitted: z.array(z.object({ store: codeSchema, week: weekSchema, value: z.number() })),
     warnings: z.array(z.string()),
   }),
-  status: 201,
+  status: 201, orAccepted: true,
 });
 
 export const listModels = defineEndpoint({

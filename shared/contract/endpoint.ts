@@ -32,6 +32,8 @@ export type Endpoint<
   multipart?: boolean;
   /** Media type of a success when it is no JSON. */
   produces?: string;
+  /** May answer 202 with the job's address in Location instead, where the work is long. */
+  orAccepted?: boolean;
   /** Allowed to a person who still has to replace a one-time password. */
   beforePasswordChange?: boolean;
 };

@@ -67,10 +67,10 @@ describe("the OpenAPI description", () => {
     expect(operationOf("post", "/api/scenarios/{id}/predict").requestBody?.required).toBe(false);
   });
 
-  it("gives one success, and problem details for everything that can go wrong", () => {
+  it("gives a success, and problem details for everything that can go wrong", () => {
     for (const { endpoint, operation } of operations) {
       const successes = Object.keys(operation.responses).filter((status) => status.startsWith("2"));
-      expect(successes, nameOf(endpoint)).toHaveLength(1);
+      expect(successes, nameOf(endpoint)).toHaveLength(endpoint.orAccepted ? 2 : 1);
       for (const [status, response] of Object.entries(operation.responses)) {
         expect(response.description, `${nameOf(endpoint)} ${status}`).not.toBe("");
         if (!status.startsWith("2")) {
@@ -80,6 +80,12 @@ describe("the OpenAPI description", () => {
       if (endpoint.permission !== "public") expect(operation.responses).toMatchObject({ 401: {}, 403: {} });
     }
     expect(document.components.schemas.Problem).toMatchObject({ type: "object", required: expect.arrayContaining(["type", "title", "status", "detail", "code", "requestId"]) });
+  });
+
+  it("says where the job is that long work goes on in", () => {
+    for (const path of ["/api/models", "/api/extracts/{id}/load"]) {
+      expect(operationOf("post", path).responses).toMatchObject({ 202: { headers: { Location: { schema: { type: "string" } } } } });
+    }
   });
 
   it("refers only to what it defines, and can be written as JSON", () => {

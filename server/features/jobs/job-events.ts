@@ -1,24 +1,14 @@
 import type { Request, Response } from "express";
 import { ProblemError } from "../../errors";
 import type { Services } from "../../services";
-import { JobWatch } from "./job-watch";
+import { watchOf } from "./job-watch";
 import type { JobRow } from "./jobs.entities";
 import { presentJob } from "./jobs.presenter";
 
-/** Streams that one process keeps open. */
-const mostStreams = 500;
 /** A comment this often keeps proxies from closing a quiet stream. */
 const heartbeatEveryMs = 15_000;
 /** After this the browser connects again, and shows again that it may. */
 const longestMs = 30 * 60_000;
-
-const watches = new WeakMap<Services, JobWatch>();
-
-function watchOf(services: Services): JobWatch {
-  const watch = watches.get(services) ?? new JobWatch(services);
-  watches.set(services, watch);
-  return watch;
-}
 
 type Stream = { jobId: string; services: Services; request: Request; response: Response };
 
@@ -30,7 +20,7 @@ type Stream = { jobId: string; services: Services; request: Request; response: R
  */
 export function streamJob({ jobId, services, request, response }: Stream): Promise<void> {
   const watch = watchOf(services);
-  if (watch.size >= mostStreams) {
+  if (watch.isFull) {
     const detail = "Too many people follow jobs right now. Ask for the job itself every few seconds instead.";
     throw new ProblemError({ status: 503, code: "too-many-streams", detail, headers: { "Retry-After": "10" } });
   }

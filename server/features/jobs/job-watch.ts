@@ -4,6 +4,17 @@ import type { JobRow } from "./jobs.entities";
 import { findJobs } from "./jobs.repository";
 
 const pollEveryMs = 300;
+/** Who watches through one process at a time; more would keep it from answering anyone else. */
+export const mostWatchers = 500;
+
+const watches = new WeakMap<Services, JobWatch>();
+
+/** The watch of a process, made when the first asks for it. */
+export function watchOf(services: Services): JobWatch {
+  const watch = watches.get(services) ?? new JobWatch(services);
+  watches.set(services, watch);
+  return watch;
+}
 
 /** Told how the job stands, at first and after each look; undefined where it is gone or cannot be read. */
 export type JobListener = (job: JobRow | undefined) => void;
@@ -21,11 +32,10 @@ export class JobWatch {
     this.#services = services;
   }
 
-  /** How many watch now. */
-  get size(): number {
+  get isFull(): boolean {
     let count = 0;
     for (const listeners of this.#listeners.values()) count += listeners.size;
-    return count;
+    return count >= mostWatchers;
   }
 
   /** Begins to watch; the answer ends it. */
