@@ -20,10 +20,10 @@ export type LaneGeometry = {
   trackY: number;
 };
 
-export const laneHeight = 152;
-const margin = { top: 12, right: 20, bottom: 50, left: 52 };
-const rugGap = 6;
-const trackGap = 18;
+export const laneHeight = 156;
+const margin = { top: 12, right: 20, bottom: 52, left: 52 };
+const rugGap = 8;
+const trackGap = 20;
 
 type LaneGeometryOptions = {
   width: number;

@@ -31,7 +31,7 @@ export const LaneLayout = (props: LaneLayoutProps) => {
       aria-labelledby={frame.titleId}
       tabIndex={0}
       onKeyDown={frame.onKeyDown}
-      className="group/lane grid grid-cols-[1fr_auto] border-b border-hairline first:rounded-t-lg last:rounded-b-lg last:border-b-0 focus-visible:-outline-offset-2 lg:grid-cols-[11.5rem_minmax(0,1fr)_8.5rem]"
+      className="group/lane grid grid-cols-[1fr_auto] border-b border-hairline first:rounded-t-lg last:rounded-b-lg last:border-b-0 focus-visible:-outline-offset-2 lg:grid-cols-[11.5rem_minmax(0,1fr)_9.5rem]"
     >
       <span id={frame.titleId} className="sr-only">
         {title}
@@ -47,7 +47,7 @@ export const LaneLayout = (props: LaneLayoutProps) => {
         <div className="mt-1">{value}</div>
         {detail && <div className="mt-0.5 text-sm text-muted">{detail}</div>}
       </div>
-      <div className="p-4 pb-1 lg:order-last lg:border-l lg:border-hairline">{effect}</div>
+      <div className="p-4 pb-1 lg:order-last lg:px-3.5 lg:border-l lg:border-hairline">{effect}</div>
       <div className="col-span-2 min-w-0 lg:col-span-1">
         {frame.showsTable ? (
           <div className="p-3">

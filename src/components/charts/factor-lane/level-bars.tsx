@@ -1,5 +1,6 @@
 import type { LaneGeometry } from "../driver-lane/lane-geometry";
 import { fewestWeeks } from "../scale/unseen-ranges";
+import { wrapLabel } from "../scale/place-labels";
 import { isLearnt } from "./factor-level";
 import type { FactorLevel } from "./factor-level";
 
@@ -19,17 +20,18 @@ export const LevelBars = ({ levels, geometry, baseline, value, hatchId }: LevelB
   const inside = (pixel: number) => Math.min(innerHeight, Math.max(0, pixel));
   return levels.map((level, index) => {
     const middle = x.toPixel(index + 0.5);
-    const name = (
+    const name = wrapLabel(level.label, x.toPixel(1) - 8).map((line, row) => (
       <text
+        key={line}
         className={level.value === value ? "chart-text-strong" : "chart-text"}
         x={middle}
-        y={innerHeight + 24}
+        y={innerHeight + 22 + row * 15}
         textAnchor="middle"
         style={{ fontSize: 12.5 }}
       >
-        {level.label}
+        {line}
       </text>
-    );
+    ));
     if (!isLearnt(level)) return <g key={level.value}>{name}</g>;
     const height = y.toPixel(level.estimate);
     const [top, bottom] = [inside(y.toPixel(level.upper)), inside(y.toPixel(level.lower))];

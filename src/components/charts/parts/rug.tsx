@@ -1,10 +1,16 @@
 import { memo } from "react";
 import type { Scale } from "../scale/scale";
+import { rugStrokes } from "./rug-strokes";
 
 type RugProps = { values: readonly number[]; x: Scale; y: number };
 
-/** One short stroke per week seen, at its exact value; weeks at one value lie over each other and darken it. */
+/** One short stroke per value seen, at its exact place; where weeks share a place the stroke is taller and darker. */
 export const Rug = memo(function Rug({ values, x, y }: RugProps) {
-  const path = values.map((value) => `M${x.toPixel(value).toFixed(2)} ${y}v5`).join("");
-  return <path d={path} fill="none" stroke="var(--driver)" strokeOpacity="0.5" strokeWidth="1" aria-hidden="true" />;
+  return (
+    <g stroke="var(--driver)" strokeWidth="1.25" aria-hidden="true" data-part="rug">
+      {rugStrokes(values, x).map(({ place, height, opacity }) => (
+        <line key={place} x1={place} x2={place} y1={y + 6 - height} y2={y + 6} strokeOpacity={opacity} />
+      ))}
+    </g>
+  );
 });

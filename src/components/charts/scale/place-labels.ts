@@ -17,3 +17,13 @@ export const labelsThatFit = (ticks: readonly LabelledTick[], scale: Scale, gap 
   }
   return kept;
 };
+
+/** A label over at most two lines within a width; what does not fit ends in an ellipsis. */
+export const wrapLabel = (text: string, width: number, pixelsPerCharacter = 7.2): string[] => {
+  const most = Math.max(4, Math.floor(width / pixelsPerCharacter));
+  if (text.length <= most) return [text];
+  const cut = text.lastIndexOf(" ", most);
+  const first = cut > 0 ? text.slice(0, cut) : text;
+  const rest = cut > 0 ? text.slice(cut + 1) : "";
+  return [first, rest].filter(Boolean).map((line) => (line.length <= most ? line : `${line.slice(0, most - 1)}…`));
+};

@@ -10,7 +10,7 @@ import { cautionsOf } from "../view/cautions";
 const Fact = ({ name, children }: { name: ReactNode; children: ReactNode }) => (
   <div className="flex items-baseline justify-between gap-4 border-t border-hairline py-2 first:border-t-0">
     <dt className="text-muted">{name}</dt>
-    <dd className="text-right font-medium">{children}</dd>
+    <dd className="shrink-0 text-right font-medium">{children}</dd>
   </div>
 );
 

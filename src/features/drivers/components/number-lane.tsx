@@ -60,7 +60,13 @@ export const NumberLane = (props: NumberLaneProps) => {
       effect={{
         multiplier: chain.multiplier(here.estimate),
         interval: formatRange(chain.number(here.lower, { digits: 2 }), chain.number(here.upper, { digits: 2 })),
-        note: `of an average week, ${formatPercent(level)} band`,
+        note: (
+          <>
+            {formatPercent(level)} band
+            <br />
+            of an average week
+          </>
+        ),
       }}
     />
   );

@@ -18,7 +18,7 @@ export const StoreDrivers = ({ model, fit, storeName, level }: StoreDriversProps
   const regularPrice = newestRegularPrice(sales.data ?? []);
   return (
     <div className="flex flex-col gap-5">
-      <div className="grid gap-5 xl:grid-cols-[minmax(0,1fr)_21rem]">
+      <div className="grid grid-cols-[minmax(0,1fr)] gap-5 xl:grid-cols-[minmax(0,1fr)_21rem]">
         <QueryView query={curves} loading="Drawing the curves" failure="The curves could not be drawn" skeleton={<CurvesOutline />}>
           {(answer) => <DriverLanes key={answer.store} curves={answer.curves} fit={fit} level={answer.level} regularPrice={regularPrice} />}
         </QueryView>

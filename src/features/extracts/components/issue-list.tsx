@@ -87,7 +87,7 @@ export const IssueList = ({ extract, rule, onRule }: IssueListProps) => {
           <LoadingState label="Reading the list" />
         </div>
       ) : (
-        <div className="grid border-t border-hairline lg:grid-cols-[19rem_minmax(0,1fr)]">
+        <div className="grid grid-cols-[minmax(0,1fr)] border-t border-hairline lg:grid-cols-[19rem_minmax(0,1fr)]">
           <div className="border-hairline p-2 max-lg:border-b lg:border-r">
             <IssueRules counts={counts} chosen={rule} onChoose={onRule} />
           </div>

@@ -24,7 +24,7 @@ export const LevelComparison = ({ comparison, driver, groups, groupOf, selected,
   }));
   const chainRow = chain && { id: "chain", name: "Chain", region: "", group: null, meanWeeklyUnits: chain.meanWeeklyUnits };
   return (
-    <div className="grid items-start gap-5 xl:grid-cols-2">
+    <div className="grid grid-cols-[minmax(0,1fr)] items-start gap-5 xl:grid-cols-2">
       <Sheet>
         <LevelDots
           title={pictureTitles[driver]}

@@ -10,6 +10,8 @@ type DotLevelsOptions = {
   labelOf: (level: string) => string;
 };
 
+const usualOrder = ["feature", "display", "both"];
+
 /** Levels other than the reference, each with the stores that know it. A reference is one, without doubt, everywhere. */
 export const dotLevels = ({ stores, chain, groupOf, labelOf }: DotLevelsOptions): DotLevel[] => {
   const names = (chain?.x ?? []).map(String);
@@ -31,5 +33,6 @@ export const dotLevels = ({ stores, chain, groupOf, labelOf }: DotLevelsOptions)
         };
       }),
     }))
-    .filter((level) => level.dots.length > 0);
+    .filter((level) => level.dots.length > 0)
+    .sort((a, b) => usualOrder.indexOf(a.value) - usualOrder.indexOf(b.value));
 };
