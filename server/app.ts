@@ -1,7 +1,6 @@
 import express, { type Express, type RequestHandler } from "express";
 import helmet from "helmet";
-import { randomUUID } from "node:crypto";
-import { pinoHttp } from "pino-http";
+import { logRequests, nameRequest } from "./http/log-requests";
 import { mount } from "./http/mount";
 import { problemHandler, unknownPath } from "./http/problem-handler";
 import { sameOrigin } from "./http/same-origin";
@@ -23,11 +22,7 @@ export function createApp(services: Services): Express {
   app.set("trust proxy", services.environment.TRUST_PROXY);
   app.set("query parser", "simple");
   app.disable("etag");
-  app.use(pinoHttp({ logger: services.logger, genReqId: () => randomUUID(), autoLogging: services.environment.NODE_ENV !== "test" }));
-  app.use((request, response, next) => {
-    response.set("X-Request-Id", String(request.id));
-    next();
-  });
+  app.use(logRequests(services), nameRequest);
   app.use(helmet(securityHeaders(services.environment)));
   app.use("/api", notKept, sameOrigin(services.environment), sessions(services));
   mount(app, routes, services);
