@@ -20,17 +20,11 @@ export type ChainCurve = {
  * @param isLog false for models that add drivers up: then the weighted mean itself.
  * @returns null where no store learnt the driver.
  */
-export function chainCurve({
-  curves,
-  grid,
-  isLog,
-  level,
-}: {
-  curves: readonly WeightedCurve[];
-  grid: number[] | string[];
-  isLog: boolean;
-  level: number;
-}): ChainCurve | null {
+export function chainCurve(
+  { curves, grid, isLog, level }: {
+    curves: readonly WeightedCurve[]; grid: number[] | string[]; isLog: boolean; level: number;
+  },
+): ChainCurve | null {
   if (curves.length === 0) return null;
   return {
     x: grid,
@@ -40,17 +34,11 @@ export function chainCurve({
   };
 }
 
-function meanAt({
-  curves,
-  value,
-  index,
-  isLog,
-}: {
-  curves: readonly WeightedCurve[];
-  value: number | string;
-  index: number;
-  isLog: boolean;
-}): number {
+function meanAt(
+  { curves, value, index, isLog }: {
+    curves: readonly WeightedCurve[]; value: number | string; index: number; isLog: boolean;
+  },
+): number {
   let weight = 0;
   let total = 0;
   for (const {

@@ -25,17 +25,9 @@ function commonLevels(terms: readonly FittedTerm[]): string[] {
   return [...references, ...[...levels].filter((level) => !references.has(level)).sort()];
 }
 
-function evenly({
-  from,
-  to,
-  points,
-  isByRatio,
-}: {
-  from: number;
-  to: number;
-  points: number;
-  isByRatio: boolean;
-}): number[] {
+function evenly(
+  { from, to, points, isByRatio }: { from: number; to: number; points: number; isByRatio: boolean },
+): number[] {
   const grid = Array.from({ length: points }, (_, index) => {
     const share = index / (points - 1);
     return isByRatio ? from * (to / from) ** share : from + (to - from) * share;

@@ -1,6 +1,7 @@
 import {
   covarianceQuadratic,
   designRows,
+  normalQuantile,
   termCurve,
   transposeTimes,
   type FittedModel,
@@ -8,7 +9,6 @@ import {
   type ModelData,
   type TermCurve,
 } from "@shared/engine";
-import { normalQuantile } from "@shared/engine";
 
 /** A curve with the values it was asked at. */
 export type BandedCurve = Pick<TermCurve, "estimate" | "standardError" | "lower" | "upper">;
@@ -23,19 +23,11 @@ export type BandedCurve = Pick<TermCurve, "estimate" | "standardError" | "lower"
  * @throws EngineError as `termCurve`.
  * @example relativeCurve({ model, term, x: [1.49, 1.99], anchor: 1.99, level: 0.8 }).estimate // [0.62, 0]
  */
-export function relativeCurve({
-  model,
-  term,
-  x,
-  anchor,
-  level,
-}: {
-  model: FittedModel;
-  term: FittedTerm;
-  x: readonly number[];
-  anchor: number;
-  level: number;
-}): BandedCurve {
+export function relativeCurve(
+  { model, term, x, anchor, level }: {
+    model: FittedModel; term: FittedTerm; x: readonly number[]; anchor: number; level: number;
+  },
+): BandedCurve {
   const z = normalQuantile(level);
   const values = [...x, anchor];
   const { estimate } = termCurve(model, term.id, { at: values });

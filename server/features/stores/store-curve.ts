@@ -12,19 +12,15 @@ export type StoreCurve = { curve: DriverCurve; elasticity: (Interval & { standar
  * A driver's curve in one store on the grid of all stores, relative to the anchor where there is one; levels are those the
  * store knows. The elasticity is the slope d ln(units) / d ln(price) at the anchor.
  */
-export function storeCurve({
-  model,
-  term,
-  grid,
-  anchor,
-  level,
-}: {
-  model: FittedModel;
-  term: FittedTerm;
-  grid: readonly number[] | readonly string[];
-  anchor: number | null;
-  level: number;
-}): StoreCurve {
+export function storeCurve(
+  { model, term, grid, anchor, level }: {
+    model: FittedModel;
+    term: FittedTerm;
+    grid: readonly number[] | readonly string[];
+    anchor: number | null;
+    level: number;
+  },
+): StoreCurve {
   const isPrice = isPriceTerm(model, term);
   const own = knownTo(term, grid);
   const centred = termCurve(model, term.id, { at: own, level, derivative: isPrice });
@@ -45,17 +41,9 @@ function knownTo(
   return basis.kind === "factor" ? grid.map(String).filter((level) => basis.levels.includes(level)) : grid;
 }
 
-function elasticityAt({
-  model,
-  term,
-  anchor,
-  level,
-}: {
-  model: FittedModel;
-  term: FittedTerm;
-  anchor: number;
-  level: number;
-}) {
+function elasticityAt(
+  { model, term, anchor, level }: { model: FittedModel; term: FittedTerm; anchor: number; level: number },
+) {
   const { derivative } = termCurve(model, term.id, { at: [anchor], level, derivative: true });
   if (!derivative) return null;
   const {

@@ -23,15 +23,9 @@ export type StoreFit = { model: FittedModel; rows: SalesRow[]; summary: FitSumma
  * @param spec null for the default specification that these weeks allow.
  * @throws EngineError, PlanningError where the weeks or the specification cannot be used.
  */
-export function fitStore({
-  store,
-  weeks,
-  spec,
-}: {
-  store: string;
-  weeks: readonly SalesRow[];
-  spec: ModelSpec | null;
-}): StoreFit {
+export function fitStore(
+  { store, weeks, spec }: { store: string; weeks: readonly SalesRow[]; spec: ModelSpec | null },
+): StoreFit {
   const learnt = toModelData(weeks);
   const chosen =
     spec === null ? defaultSpec(describeVariation(learnt.data)) : { spec, leftOut: [], straightLines: [] };

@@ -83,19 +83,11 @@ async function weeksOf(
 }
 
 /** The reason why a store could not be fitted; null where it was. */
-async function fitAndWrite({
-  em,
-  model,
-  store,
-  weeks,
-  at,
-}: {
-  em: EntityManager;
-  model: ModelToFit;
-  store: StoreKey;
-  weeks: StoredSalesRow[];
-  at: Date;
-}): Promise<string | null> {
+async function fitAndWrite(
+  { em, model, store, weeks, at }: {
+    em: EntityManager; model: ModelToFit; store: StoreKey; weeks: StoredSalesRow[]; at: Date;
+  },
+): Promise<string | null> {
   if (weeks.length === 0) return noWeeks({ store: store.code, product: model.productCode, weeks: model.weeks });
   try {
     const { model: fitted, summary } = fitStore({ store: store.code, weeks, spec: model.spec });
@@ -109,29 +101,15 @@ async function fitAndWrite({
 }
 
 /** Why there is nothing to fit, for one store. */
-export function noWeeks({
-  store,
-  product,
-  weeks,
-}: {
-  store: string;
-  product: string;
-  weeks?: { first: string; last: string };
-}): string {
+export function noWeeks(
+  { store, product, weeks }: { store: string; product: string; weeks?: { first: string; last: string } },
+): string {
   return `Store "${store}" has no weeks of product "${product}"${within(weeks)}.`;
 }
 
-async function finish({
-  em,
-  model,
-  skipped,
-  at,
-}: {
-  em: EntityManager;
-  model: ModelToFit;
-  skipped: SkippedStore[];
-  at: Date;
-}): Promise<void> {
+async function finish(
+  { em, model, skipped, at }: { em: EntityManager; model: ModelToFit; skipped: SkippedStore[]; at: Date },
+): Promise<void> {
   await em.transactional(async (inner) => {
     const isFirstTime = await markFitted(inner, { modelId: model.id, skipped, at });
     if (isFirstTime)

@@ -18,17 +18,9 @@ export function termsOf(terms: readonly Terms[], week: Day): Terms | undefined {
  * @param terms oldest first.
  * @returns null where neither says.
  */
-export function toldValue({
-  rows,
-  terms,
-  week,
-  what,
-}: {
-  rows: readonly ToldBySales[];
-  terms: readonly Terms[];
-  week: Day;
-  what: Told;
-}): number | null {
+export function toldValue(
+  { rows, terms, week, what }: { rows: readonly ToldBySales[]; terms: readonly Terms[]; week: Day; what: Told },
+): number | null {
   const row = rows.findLast((each) => each.week <= week && each[what] !== null);
   const inForce = termsOf(terms, week);
   const announced = inForce?.[what] ?? null;
