@@ -109,6 +109,7 @@ describe("an upload is refused, and leaves nothing,", () => {
   it.each([
     ["an unknown kind", () => upload(test, { file: small, kind: "weather" }), 422, "invalid-request"],
     ["no kind", () => request(test.app).post("/api/extracts").set("Authorization", test.dataAdmin).attach("file", Buffer.from(small), "a.csv"), 422, "invalid-request"],
+    ["a layout that nobody saved", () => upload(test, { file: small }).field("layout", "till export"), 422, "unknown-layout"],
     ["no file", () => request(test.app).post("/api/extracts").set("Authorization", test.dataAdmin).field("kind", "sales"), 422, "missing-file"],
     ["the file in another field", () => request(test.app).post("/api/extracts").set("Authorization", test.dataAdmin).field("kind", "sales").attach("data", Buffer.from(small), "a.csv"), 422, "missing-file"],
     ["two files", () => upload(test, { file: small }).attach("file", Buffer.from(small), "second.csv"), 422, "one-file-only"],

@@ -7,9 +7,17 @@ export function findExtract(em: EntityManager, id: string): Promise<Extract | nu
   return em.findOne(ExtractEntity, { id }, { populate: ["uploadedBy"] });
 }
 
-/** The extract, kept from others until the transaction ends. */
+/** The extract as it is now, its row kept from others until the transaction ends: for short transactions, or at their end. */
 export function lockExtract(em: EntityManager, id: string): Promise<Extract | null> {
   return em.findOne(ExtractEntity, { id }, { lockMode: LockMode.PESSIMISTIC_WRITE, refresh: true });
+}
+
+/**
+ * Keeps other checks of an extract out until the transaction ends. Unlike a lock of its row this lets requests read and
+ * refuse meanwhile, however long it takes.
+ */
+export async function lockCheck(em: EntityManager, id: string): Promise<void> {
+  await em.execute("select pg_advisory_xact_lock(hashtextextended(?, 0))", [`shelftide check ${id}`]);
 }
 
 export type ExtractCursor = { uploadedAt: string; id: string };

@@ -2,7 +2,7 @@ import type { EntityManager } from "@mikro-orm/postgresql";
 import type { Services } from "../../../services";
 import { conflict, notFound } from "../../../errors";
 import type { Extract } from "../extracts.entities";
-import { findExtract, lockExtract, removeIssues } from "../extracts.repository";
+import { findExtract, lockCheck, lockExtract, removeIssues } from "../extracts.repository";
 import { kinds } from "../kinds/kinds";
 import { analyseStaging, countStaged, dropStaging } from "../load/staging.repository";
 import { UnreadableFile } from "../read/unreadable-file";
@@ -31,7 +31,11 @@ export async function checkExtract(services: Services, { extractId, progress = q
     if (!(error instanceof UnreadableFile)) throw error;
     await services.orm.em.fork().transactional((em) => setUnusable({ em, services, extractId, error }));
   }
-  const extract = await findExtract(services.orm.em.fork(), extractId);
+  return requireExtract(services.orm.em.fork(), extractId);
+}
+
+async function requireExtract(em: EntityManager, extractId: string): Promise<Extract> {
+  const extract = await findExtract(em, extractId);
   if (!extract) throw notFound("extract");
   return extract;
 }
@@ -56,28 +60,34 @@ async function lockCheckable(em: EntityManager, extractId: string): Promise<Extr
 type Checking = { em: EntityManager; services: Services; extractId: string; progress: Progress };
 
 async function check({ em, services, extractId, progress }: Checking): Promise<void> {
-  // Held to the end, so that a second worker, which took the first for dead, waits for it.
-  const extract = await lockCheckable(em, extractId);
-  const definition = kinds[extract.kind];
+  // A second worker, which took the first for dead, waits for it.
+  await lockCheck(em, extractId);
+  const { kind, storageKey, sizeBytes } = await requireExtract(em, extractId);
+  const definition = kinds[kind];
   await removeIssues(em, extractId);
-  const { table, rowsRead, log } = await stageRows({ em, services, extract, progress: reading(extract.sizeBytes, progress) });
-  await progress({ done: extract.sizeBytes, total: extract.sizeBytes, message: `Rows read: ${count.format(rowsRead)}. Comparing them` });
+  const { table, rowsRead, log } = await stageRows({
+    em, services, extract: { id: extractId, kind, storageKey }, progress: reading(sizeBytes, progress),
+  });
+  await progress({ done: sizeBytes, total: sizeBytes, message: `Rows read: ${count.format(rowsRead)}. Comparing them` });
   await keepIssues(em, { extractId, issues: log.kept });
   await analyseStaging(em, table);
   const together = { em, table, extractId, log, keep: true };
   await rejectRepeatedRows({ ...together, definition });
   await definition.checkTogether?.(together);
   const weeks = definition.weekColumn ? await weeksStaged(em, { table, column: definition.weekColumn }) : null;
+  const rowsUsable = await countStaged(em, extractId);
+  const changes = await definition.compare({ em, table });
+  const extract = await lockCheckable(em, extractId);
   extract.rowsRead = rowsRead;
-  extract.rowsUsable = await countStaged(em, extractId);
+  extract.rowsUsable = rowsUsable;
   extract.errorCount = log.total("error");
   extract.warningCount = log.total("warning");
   extract.issueCounts = log.byRule();
   extract.firstWeek = weeks?.first ?? null;
   extract.lastWeek = weeks?.last ?? null;
-  extract.changes = await definition.compare({ em, table });
-  extract.state = extract.rowsUsable > 0 ? "checked" : "unusable";
-  extract.failure = extract.rowsUsable > 0 ? null : noUsableRow(rowsRead);
+  extract.changes = changes;
+  extract.state = rowsUsable > 0 ? "checked" : "unusable";
+  extract.failure = rowsUsable > 0 ? null : noUsableRow(rowsRead);
   extract.checkedAt = services.now();
 }
 

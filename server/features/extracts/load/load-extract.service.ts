@@ -7,7 +7,7 @@ import { quietly, type Progress } from "../check/progress";
 import { stageRows } from "../check/stage-rows";
 import { rejectRepeatedRows } from "../check/together.repository";
 import type { Extract } from "../extracts.entities";
-import { changesOf, findExtract, lockExtract } from "../extracts.repository";
+import { changesOf, findExtract, lockCheck, lockExtract } from "../extracts.repository";
 import { kinds } from "../kinds/kinds";
 import { lockLoads } from "./load-lock.repository";
 import { analyseStaging, countStaged, dropStaging, stagingTable } from "./staging.repository";
@@ -33,7 +33,7 @@ export async function loadExtract(services: Services, { extractId, actor, progre
   await step(1, "Waiting for other loads to end");
   const changes = await services.orm.em.fork().transactional(async (em) => {
     await lockLoads(em);
-    const extract = await requireLoadable(em, extractId);
+    const extract = requireLoadable(await findExtract(em, extractId));
     if (extract.state === "loaded") return changesOf(em, extract);
     return load({ em, services, extract, actor, step });
   });
@@ -42,28 +42,28 @@ export async function loadExtract(services: Services, { extractId, actor, progre
 
 type Load = { em: EntityManager; services: Services; extract: Extract; actor?: Actor; step: (done: number, message: string) => Promise<void> };
 
-async function load({ em, services, extract, actor, step }: Load): Promise<ExtractChanges> {
-  const { compare, load: loadRows } = kinds[extract.kind];
-  const rows = { em, table: stagingTable(extract.id) };
+async function load({ em, services, extract: { id, kind }, actor, step }: Load): Promise<ExtractChanges> {
+  const { compare, load: loadRows } = kinds[kind];
+  const rows = { em, table: stagingTable(id) };
   const now = services.now();
   await step(2, "Comparing with what is there");
   const changes = await compare(rows);
   await step(3, "Loading");
-  await loadRows({ ...rows, extractId: extract.id, now, changes });
-  await dropStaging(em, extract.id);
+  await loadRows({ ...rows, extractId: id, now, changes });
+  await dropStaging(em, id);
+  const extract = requireLoadable(await lockExtract(em, id));
   extract.state = "loaded";
   extract.changes = changes;
   extract.loadedAt = now;
   extract.failure = null;
   const by = actor ?? { personId: extract.uploadedBy.id };
-  audit(em, { ...by, action: "extract.loaded", subject: { kind: "extract", id: extract.id }, detail: { fileName: extract.fileName, ...changes.totals } });
+  audit(em, { ...by, action: "extract.loaded", subject: { kind: "extract", id }, detail: { fileName: extract.fileName, ...changes.totals } });
   // The last moment at which a cancellation or the loss of the job can still undo everything.
   await step(steps, "Loaded");
   return changes;
 }
 
-async function requireLoadable(em: EntityManager, extractId: string): Promise<Extract> {
-  const extract = await lockExtract(em, extractId);
+function requireLoadable(extract: Extract | null): Extract {
   if (!extract) throw notFound("extract");
   if (extract.state === "checked" || extract.state === "loading" || extract.state === "loaded") return extract;
   throw conflict("not-checked", `This extract is ${extract.state}: only one that was checked can be loaded.`);
@@ -78,6 +78,7 @@ async function ensureStaged(services: Services, { extractId, progress }: { extra
   if (!extract) throw notFound("extract");
   if (extract.state !== "checked" && extract.state !== "loading") return;
   await services.orm.em.fork().transactional(async (em) => {
+    await lockCheck(em, extractId);
     if ((await countStaged(em, extractId)) !== extract.rowsUsable) await stageAgain({ em, services, extract, progress });
   });
   const { prepareLoad } = kinds[extract.kind];

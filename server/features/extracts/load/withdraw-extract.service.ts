@@ -4,7 +4,7 @@ import type { Services } from "../../../services";
 import { audit } from "../../accounts";
 import { quietly, type Progress } from "../check/progress";
 import type { Extract } from "../extracts.entities";
-import { lockExtract } from "../extracts.repository";
+import { findExtract, lockExtract } from "../extracts.repository";
 import type { Actor } from "./load-extract.service";
 import { lockLoads } from "./load-lock.repository";
 import { countConfirmed, countReplaced, restoreBefore } from "./withdrawal.repository";
@@ -44,12 +44,14 @@ export async function withdrawExtract(
   await progress({ done: 0, total: 2, message: "Waiting for other loads to end" });
   await services.orm.em.fork().transactional(async (em) => {
     await lockLoads(em);
+    const loaded = await findExtract(em, extractId);
+    if (!loaded) throw notFound("extract");
+    if (loaded.state === "withdrawn") return;
+    await requireWithdrawable(em, loaded);
+    await progress({ done: 1, total: 2, message: "Putting back what was there before" });
+    await restoreBefore(em, { id: extractId, firstWeek: loaded.firstWeek ?? "-infinity", lastWeek: loaded.lastWeek ?? "infinity" });
     const extract = await lockExtract(em, extractId);
     if (!extract) throw notFound("extract");
-    if (extract.state === "withdrawn") return;
-    await requireWithdrawable(em, extract);
-    await progress({ done: 1, total: 2, message: "Putting back what was there before" });
-    await restoreBefore(em, { id: extract.id, firstWeek: extract.firstWeek ?? "-infinity", lastWeek: extract.lastWeek ?? "infinity" });
     extract.state = "withdrawn";
     extract.withdrawnAt = services.now();
     extract.failure = null;
