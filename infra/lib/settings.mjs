@@ -8,6 +8,7 @@ import { Problem } from "./problem.mjs";
  * @property {boolean} embedsDatabase
  * @property {boolean} embedsFiles
  * @property {boolean} embedsMail
+ * @property {boolean} namesSender whether MAIL_FROM says whom mail comes from
  * @property {boolean} wantsDemo
  */
 
@@ -21,12 +22,6 @@ const storeOptions = ["S3_ENDPOINT", "S3_REGION"];
 export function readSettings(env = process.env) {
   const embedsFiles = ![...storeVariables, ...storeOptions].some((name) => env[name]);
   if (!embedsFiles) checkStore(env);
-  if (env.SMTP_URL && !env.MAIL_FROM) {
-    throw new Problem(
-      "SMTP_URL is set but MAIL_FROM is not: give the sender's address too, " +
-        'such as MAIL_FROM="Shelftide <shelftide@your-chain.example>".',
-    );
-  }
   const demo = env.SHELFTIDE_DEMO ?? "on";
   if (!["on", "off"].includes(demo)) throw new Problem(`SHELFTIDE_DEMO=${demo} is neither on nor off: give one of the two.`);
   return {
@@ -34,6 +29,7 @@ export function readSettings(env = process.env) {
     embedsDatabase: !env.DATABASE_URL,
     embedsFiles,
     embedsMail: !env.SMTP_URL,
+    namesSender: Boolean(env.MAIL_FROM),
     wantsDemo: demo === "on",
   };
 }

@@ -12,6 +12,7 @@ const demoAccounts = ["data", "planner", "manager", "admin"];
 export function startedLines({ address, settings, state, hasDemo }) {
   const lines = ["", `Shelftide answers at ${address}`];
   if (settings.embedsMail) lines.push(`Caught mail is shown at http://127.0.0.1:${state.ports.mailPage}`);
+  else if (!settings.namesSender) lines.push("Mail goes out from an invented address: set MAIL_FROM to your own.");
   if (hasDemo) {
     const names = demoAccounts.map((name) => `${name}@larkmoor.example`).join(", ");
     lines.push(`Demo accounts: ${names}`, "Their password: shelftide-demo");

@@ -10,7 +10,7 @@ const state = { ...newState(), ports: { database: 20_001, files: 20_002, smtp: 2
 describe("the settings of an installation", () => {
   it("embed every part and load the demo when nothing is set", () => {
     expect(readSettings({})).toEqual({
-      port: 4310, embedsDatabase: true, embedsFiles: true, embedsMail: true, wantsDemo: true,
+      port: 4310, embedsDatabase: true, embedsFiles: true, embedsMail: true, namesSender: false, wantsDemo: true,
     });
   });
 
@@ -31,10 +31,6 @@ describe("the settings of an installation", () => {
     expect(() => readSettings({ S3_ENDPOINT: "https://files.example" })).toThrow(
       "S3_BUCKET and S3_ACCESS_KEY_ID and S3_SECRET_ACCESS_KEY are not set",
     );
-  });
-
-  it("refuse a mail server without a sender", () => {
-    expect(() => readSettings({ SMTP_URL: "smtp://mail.example" })).toThrow("SMTP_URL is set but MAIL_FROM is not");
   });
 
   it("refuse a demo that is neither on nor off", () => {
@@ -103,6 +99,14 @@ describe("what the start command says", () => {
       "data@larkmoor.example, planner@larkmoor.example, manager@larkmoor.example, admin@larkmoor.example",
     );
     expect(text).toContain("shelftide-demo");
+  });
+
+  it("asks for a sender where a real mail server has none", () => {
+    const lines = (env: NodeJS.ProcessEnv) =>
+      startedLines({ address, settings: readSettings(env), state, hasDemo: false }).join("\n");
+    expect(lines({ SMTP_URL: "smtp://mail.example" })).toContain("set MAIL_FROM to your own");
+    expect(lines({ SMTP_URL: "smtp://mail.example", MAIL_FROM: "a@b.example" })).not.toContain("MAIL_FROM");
+    expect(lines({})).not.toContain("MAIL_FROM");
   });
 
   it("names no demo account where there is none, but how to make the first one", () => {
