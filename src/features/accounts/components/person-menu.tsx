@@ -23,7 +23,7 @@ export const PersonMenu = ({ person, onChangePassword }: PersonMenuProps) => {
   return (
     <Menu
       trigger={
-        <button type="button" aria-label={`${person.name}: account`} className="rounded-full">
+        <button type="button" aria-label={`${initialsOf(person.name)}: account of ${person.name}`} className="rounded-full">
           <Avatar initials={initialsOf(person.name)} />
         </button>
       }
