@@ -1,7 +1,8 @@
 import { randomUUID } from "node:crypto";
 import request from "supertest";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
-import { act, checkedDirectly, loadCatalogueDirectly, read, salesFile, startExtractsApp, type ExtractsApp } from "../support/extracts";
+import { checkExtractJob } from "../../server/features/extracts/extracts.jobs";
+import { act, checkedDirectly, loadCatalogueDirectly, read, salesFile, startExtractsApp, upload, type ExtractsApp } from "../support/extracts";
 import { bearerOf } from "../support/people";
 
 let test: ExtractsApp;
@@ -63,5 +64,13 @@ describe("extracts", () => {
   it("say that changes are not known before a check has found a usable row", async () => {
     const empty = await checkedDirectly(test, { file: "week,store\n" });
     expect((await read(test, `/api/extracts/${empty.id}/changes`).expect(409)).body.code).toBe("not-checked");
+  });
+
+  it("whose check was cancelled before it began can be checked again", async () => {
+    const { body } = await upload(test, { file: salesFile("2026-06-01,S1,P1,1,1.79,1.79,,0,0,none") }).expect(202);
+    const error = { code: "cancelled", detail: "Cancelled on request." };
+    await checkExtractJob.onGivenUp?.({ payload: { extractId: body.id }, services: test.services, error });
+    const { body: extract } = await read(test, `/api/extracts/${body.id}`).expect(200);
+    expect(extract).toMatchObject({ state: "received", failure: error, may: { check: true } });
   });
 });

@@ -115,7 +115,8 @@ async function setUnusable({ em, services, extractId, error }: Refusal): Promise
 export function abandonCheck(services: Services, { extractId, error }: { extractId: string; error: { code: string; detail: string } }): Promise<void> {
   return services.orm.em.fork().transactional(async (em) => {
     const extract = await lockExtract(em, extractId);
-    if (extract?.state !== "checking") return;
+    // Received still, where it was cancelled before a worker took it.
+    if (extract?.state !== "checking" && extract?.state !== "received") return;
     extract.state = "received";
     extract.failure = error;
   });
