@@ -10,16 +10,32 @@ import { cleanUpJob, rescueJobs } from "./rescue-jobs";
 import { takeJob } from "./take-job";
 
 const pollEveryMs = 500;
-const rescueEveryMs = 4_000;
-/** What runs at a stop may take this long to end by itself. */
-const stopPatienceMs = 5_000;
-/** And what was handed back may take this long to notice. */
+/** What was handed back at a stop may take this long to notice. */
 const letGoPatienceMs = 2_000;
 /** A worker that is stopping holds a job's lock a little longer than the job. */
 const lockPatienceMs = 10_000;
 const defaultDelaysSeconds = [2, 10, 30];
 
-type Parts = { boss: PgBoss; send: SendInTransaction; ensureQueue: (kind: string) => Promise<void> };
+/** How patient a worker is; tests are less so. */
+export type JobTiming = {
+  /** Without a sign of life for this long, and with its lock free, a running job is a lost worker's. */
+  silentAfterSeconds: number;
+  rescueEveryMs: number;
+  /** What runs at a stop may take this long to end by itself. */
+  stopPatienceMs: number;
+};
+export const defaultTiming: JobTiming = { silentAfterSeconds: 8, rescueEveryMs: 4_000, stopPatienceMs: 5_000 };
+
+type Parts = {
+  boss: PgBoss;
+  send: SendInTransaction;
+  ensureQueue: (kind: string) => Promise<void>;
+  timing: JobTiming;
+};
+
+type Repeated = { everyMs: number; services: Services; step: () => Promise<boolean> };
+type Means = { services: Services; locks: JobLocks };
+type Held = { lease: JobLease; services: Services };
 
 /** Runs jobs one at a time per kind, retries what broke down, and rescues what killed workers left behind. */
 export class JobRunner {
@@ -38,7 +54,8 @@ export class JobRunner {
     this.#locks = locks;
     for (const definition of definitions) await this.#parts.ensureQueue(definition.kind);
     const kinds = new Map(definitions.map((definition) => [definition.kind, definition]));
-    const rescue = () => rescueJobs({ kinds, services, send: this.#parts.send });
+    const { rescueEveryMs, silentAfterSeconds } = this.#parts.timing;
+    const rescue = () => rescueJobs({ kinds, services, send: this.#parts.send, silentAfterSeconds });
     this.#loops = [
       this.#repeat({ everyMs: rescueEveryMs, services, step: rescue }),
       ...definitions.map((definition) =>
@@ -47,10 +64,10 @@ export class JobRunner {
     ];
   }
 
-  /** Takes no further jobs; what still runs after five seconds goes back to the queue. */
+  /** Takes no further jobs; what still runs after some seconds goes back to the queue. */
   async stop(): Promise<void> {
     this.#stopping.abort();
-    await this.#untilIdle(stopPatienceMs);
+    await this.#untilIdle(this.#parts.timing.stopPatienceMs);
     for (const lease of this.#running.values()) {
       lease.lose();
       await lease.requeue(this.#parts.send, 0, { failed: false });
@@ -66,7 +83,7 @@ export class JobRunner {
   }
 
   /** Does a step again and again until the stop; at once where it says there is more to do. */
-  async #repeat({ everyMs, services, step }: { everyMs: number; services: Services; step: () => Promise<boolean> }): Promise<void> {
+  async #repeat({ everyMs, services, step }: Repeated): Promise<void> {
     const { signal } = this.#stopping;
     while (!signal.aborted) {
       const more = await step().catch((error: unknown) => {
@@ -79,7 +96,7 @@ export class JobRunner {
   }
 
   /** Whether a job was waiting. */
-  async #takeAndRun(definition: JobDefinition, { services, locks }: { services: Services; locks: JobLocks }): Promise<boolean> {
+  async #takeAndRun(definition: JobDefinition, { services, locks }: Means): Promise<boolean> {
     const { kind } = definition;
     const taken = await takeJob({ boss: this.#parts.boss, pool: services.pool, kind });
     if (taken === "nothing to do") return false;
@@ -99,7 +116,7 @@ export class JobRunner {
     return true;
   }
 
-  async #run(definition: JobDefinition, { lease, services }: { lease: JobLease; services: Services }): Promise<void> {
+  async #run(definition: JobDefinition, { lease, services }: Held): Promise<void> {
     const { job, signal } = lease;
     const logger = services.logger.child({ job: job.id, kind: job.kind, attempt: job.attempt });
     try {
@@ -115,12 +132,13 @@ export class JobRunner {
       });
       await lease.succeed(result ?? null);
     } catch (error) {
-      if (error instanceof LeaseLost || signal.reason instanceof LeaseLost) logger.warn("the job is no longer this worker's");
+      const isLost = error instanceof LeaseLost || signal.reason instanceof LeaseLost;
+      if (isLost) logger.warn("the job is no longer this worker's");
       else await this.#failed(definition, { lease, services, error });
     }
   }
 
-  async #failed(definition: JobDefinition, { lease, services, error }: { lease: JobLease; services: Services; error: unknown }): Promise<void> {
+  async #failed(definition: JobDefinition, { lease, services, error }: Held & { error: unknown }): Promise<void> {
     const { job } = lease;
     if (error instanceof JobCancelled || lease.signal.reason instanceof JobCancelled) {
       await lease.finish("cancelled", { code: "cancelled", detail: "Cancelled on request." });
@@ -150,5 +168,6 @@ function delaySecondsOf(definition: JobDefinition, job: TakenJob): number {
 
 function describe(error: unknown): JobFailure {
   if (error instanceof ProblemError) return { code: error.code, detail: error.message };
-  return { code: "unexpected", detail: "It broke down for a reason we do not know. Try again; if it happens again, quote the job's id." };
+  const detail = "It broke down for a reason we do not know. Try again; if it happens again, quote the job's id.";
+  return { code: "unexpected", detail };
 }

@@ -4,7 +4,7 @@ import type { Pool, PoolClient } from "pg";
 import { JobEntity } from "../features/jobs";
 import type { Logger } from "../logger";
 import type { JobQueue } from "./job-queue";
-import { JobRunner } from "./job-runner";
+import { JobRunner, defaultTiming, type JobTiming } from "./job-runner";
 
 /** What travels through the queue; everything else is in our own table. */
 export type QueuedJob = { jobId: string; attempt: number };
@@ -15,12 +15,14 @@ const retentionDays = 3650;
 /** Puts a job into the queue by the connection of the context's open transaction. */
 export type SendInTransaction = (em: EntityManager, kind: string, job: QueuedJob, delaySeconds?: number) => Promise<void>;
 
+type Means = { pool: Pool; logger: Logger; timing?: JobTiming };
+
 /**
  * The queue over pg-boss: it keeps what waits, in order and with delays, and hands each message to one worker; our
  * `jobs` table says how jobs stand. Retries and the rescue of killed workers' jobs are ours (see JobRunner), because
  * pg-boss knows no sign of life and would either wait for its expiry or give a long job away while it still runs.
  */
-export async function createPgBossQueue({ pool, logger }: { pool: Pool; logger: Logger }): Promise<JobQueue> {
+export async function createPgBossQueue({ pool, logger, timing = defaultTiming }: Means): Promise<JobQueue> {
   const boss = new PgBoss({
     db: { executeSql: (text, values) => pool.query(text, values) },
     schedule: false,
@@ -42,7 +44,7 @@ export async function createPgBossQueue({ pool, logger }: { pool: Pool; logger: 
     await boss.send(kind, job, { db, startAfter: delaySeconds, retentionDays });
   };
 
-  const runner = new JobRunner({ boss, send, ensureQueue });
+  const runner = new JobRunner({ boss, send, ensureQueue, timing });
 
   return {
     async enqueue(em, definition, payload, options = {}) {

@@ -4,16 +4,18 @@ import { requeueInTransaction, type TakenJob } from "./job-lease";
 import { defaultRetryLimit, type JobDefinition, type JobFailure } from "./job-queue";
 import type { SendInTransaction } from "./pg-boss-queue";
 
-/** Silent for this long, and its lock free: the worker that ran it is gone. */
-const silentAfterSeconds = 8;
-
-type Rescue = { kinds: ReadonlyMap<string, JobDefinition>; services: Services; send: SendInTransaction };
+type Rescue = {
+  kinds: ReadonlyMap<string, JobDefinition>;
+  services: Services;
+  send: SendInTransaction;
+  silentAfterSeconds: number;
+};
 
 /**
  * Gives the jobs of workers that were killed to others, or up where no try is left, and puts right what ended without
  * success where nobody has yet. Never says that there is more to do at once.
  */
-export async function rescueJobs({ kinds, services, send }: Rescue): Promise<false> {
+export async function rescueJobs({ kinds, services, send, silentAfterSeconds }: Rescue): Promise<false> {
   const known = [...kinds.keys()];
   const silent = await services.pool.query<TakenJob>(
     `select id, kind, attempt, failures, payload from jobs

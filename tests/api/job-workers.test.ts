@@ -4,7 +4,7 @@ import { closeServices, createServices } from "../../server/create-services";
 import type { Services } from "../../server/services";
 import { enqueue, hasEnded, waitForJob } from "../support/jobs";
 import { startTestApp, type TestApp } from "../support/test-app";
-import { busyJob, countingJob, createTrialMarks, marksOf, onceOnlyJob, trialJobs } from "../support/trial-jobs";
+import { busyJob, countingJob, createTrialMarks, marksOf, onceOnlyJob, trialJobs, trialTiming } from "../support/trial-jobs";
 import { endProcess, startWorkerProcess } from "../support/worker-process";
 
 let test: TestApp;
@@ -28,7 +28,7 @@ async function startWorker(): Promise<ChildProcess> {
 }
 
 async function startWorkerHere(): Promise<Services> {
-  const services = await createServices(test.services.environment);
+  const services = await createServices(test.services.environment, { jobTiming: trialTiming });
   await services.queue.work(trialJobs, services);
   workersHere.push(services);
   return services;
@@ -72,7 +72,7 @@ describe("a worker that is told to stop", () => {
     await startWorkerHere();
     const began = Date.now();
     await endProcess(stopped, "SIGTERM");
-    expect(Date.now() - began).toBeLessThan(9_000);
+    expect(Date.now() - began).toBeLessThan(7_000);
     expect(stopped.exitCode).toBe(0);
     const job = await waitForJob(test.services, id, (row) => row.attempt === 2, 15_000);
     expect(job).toMatchObject({ failures: 0 });
@@ -83,7 +83,7 @@ describe("a worker that is told to stop", () => {
 
   it("lets a short job end by itself", { timeout: 120_000 }, async () => {
     const stopped = await startWorker();
-    const id = await enqueue(test.services, countingJob, { steps: 4, stepMs: 250 });
+    const id = await enqueue(test.services, countingJob, { steps: 3, stepMs: 250 });
     await waitForJob(test.services, id, (job) => job.done >= 1);
     await endProcess(stopped, "SIGTERM");
     expect(await waitForJob(test.services, id, hasEnded, 100)).toMatchObject({ state: "succeeded", attempt: 1 });
@@ -103,7 +103,7 @@ describe("several workers", () => {
 
   it("leave a job to a worker that is too busy to give a sign of life", { timeout: 120_000 }, async () => {
     await startWorker();
-    const id = await enqueue(test.services, busyJob, { ms: 14_000 });
+    const id = await enqueue(test.services, busyJob, { ms: 6_000 });
     await waitForJob(test.services, id, (job) => job.state === "running");
     await startWorkerHere();
     const job = await waitForJob(test.services, id, hasEnded, 60_000);

@@ -2,7 +2,11 @@ import { setTimeout as sleep } from "node:timers/promises";
 import { z } from "zod";
 import { ProblemError } from "../../server/errors";
 import { defineJob, type JobContext } from "../../server/jobs/job-queue";
+import type { JobTiming } from "../../server/jobs/job-runner";
 import type { Services } from "../../server/services";
+
+/** As in earnest, but quicker. */
+export const trialTiming: JobTiming = { silentAfterSeconds: 3, rescueEveryMs: 1_000, stopPatienceMs: 3_000 };
 
 /** Jobs whose doings can be read in the table `trial_marks`, by whichever process they ran in. */
 export async function createTrialMarks({ pool }: Services): Promise<void> {
