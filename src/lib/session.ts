@@ -1,4 +1,5 @@
 import { queryOptions, useQuery } from "@tanstack/react-query";
+import type { QueryClient } from "@tanstack/react-query";
 import { getSession } from "@shared/contract/accounts";
 import type { Session } from "@shared/contract/accounts";
 import type { Permission } from "@shared/contract/permissions";
@@ -19,6 +20,13 @@ export const sessionQuery = () =>
     },
     staleTime: 60_000,
   });
+
+/**
+ * Whatever one person has read goes before another signs in. The session's own entry stays, because a cleared one
+ * would no longer tell the shell of the change.
+ */
+export const forgetOthersData = (queryClient: QueryClient): void =>
+  queryClient.removeQueries({ predicate: ({ queryKey }) => queryKey[0] !== sessionQuery().queryKey[0] });
 
 export const useSession = (): Session | null => useQuery(sessionQuery()).data ?? null;
 

@@ -104,7 +104,7 @@ export const Combobox = (props: ComboboxProps) => {
               onOpenAutoFocus={(event) => event.preventDefault()}
               onCloseAutoFocus={(event) => event.preventDefault()}
               onInteractOutside={(event) => input.current?.contains(event.target as Node) && event.preventDefault()}
-              className="z-40 w-(--radix-popover-trigger-width) min-w-64 rounded-md border border-hairline bg-raised text-ink shadow-raised"
+              className="z-40 w-max max-w-[min(30rem,calc(100vw-2rem))] min-w-(--radix-popover-trigger-width) rounded-md border border-hairline bg-raised text-ink shadow-raised"
             >
               <OptionList id={wiring.id} shown={shown} more={matching.length - shown.length} active={active} value={value} onChoose={choose} />
             </Popover.Content>

@@ -1,14 +1,14 @@
 import { useMutation, useQueryClient } from "@tanstack/react-query";
 import { signOut } from "@shared/contract/accounts";
 import { call } from "@/lib/api-client";
-import { sessionQuery } from "@/lib/session";
+import { forgetOthersData, sessionQuery } from "@/lib/session";
 
 export const useSignOut = () => {
   const queryClient = useQueryClient();
   return useMutation({
     mutationFn: () => call(signOut, {}),
     onSuccess: () => {
-      queryClient.clear();
+      forgetOthersData(queryClient);
       queryClient.setQueryData(sessionQuery().queryKey, null);
     },
   });

@@ -1,0 +1,41 @@
+import { screen } from "@testing-library/react";
+import userEvent from "@testing-library/user-event";
+import { afterEach, describe, expect, it, vi } from "vitest";
+import type { Session } from "@shared/contract/accounts";
+import { PersonMenu } from "@/features/accounts/components/person-menu";
+import { sessionQuery, useSession } from "@/lib/session";
+import { answerRequests } from "./support/answer";
+import { renderInPage } from "./support/render";
+
+afterEach(() => vi.unstubAllGlobals());
+
+const person: Session["person"] = {
+  id: "0b7e3a44-3b1b-4a8e-9a0a-000000000001", email: "ada@larkmoor.example", name: "Ada Kale", roles: ["planner"], categories: [], mustChangePassword: false,
+};
+const session: Session = { person, permissions: ["read"], by: "session" };
+
+const Page = () => {
+  const known = useSession();
+  return known ? <PersonMenu person={known.person} onChangePassword={vi.fn()} /> : <p>Nobody is signed in.</p>;
+};
+
+describe("signing out", () => {
+  it("tells the page at once and forgets what the person has read", async () => {
+    answerRequests((_address, options) => (options.method === "DELETE" ? { status: 204 } : { status: 200, body: session }));
+    const { queryClient } = renderInPage(<Page />);
+    queryClient.setQueryData(["sales", "P1", "S1"], [1, 2, 3]);
+    await userEvent.click(await screen.findByRole("button", { name: "AK: account of Ada Kale" }));
+    await userEvent.click(screen.getByRole("menuitem", { name: "Sign out" }));
+    expect(await screen.findByText("Nobody is signed in.")).toBeTruthy();
+    expect(queryClient.getQueryData(["sales", "P1", "S1"])).toBeUndefined();
+    expect(queryClient.getQueryData(sessionQuery().queryKey)).toBeNull();
+  });
+
+  it("that the server did not hear of says that the person is still signed in", async () => {
+    answerRequests((_address, options) => (options.method === "DELETE" ? "no answer" : { status: 200, body: session }));
+    renderInPage(<Page />);
+    await userEvent.click(await screen.findByRole("button", { name: "AK: account of Ada Kale" }));
+    await userEvent.click(screen.getByRole("menuitem", { name: "Sign out" }));
+    expect(await screen.findByText("You are still signed in: the server did not answer.")).toBeTruthy();
+  });
+});
