@@ -5,7 +5,11 @@ import { ProblemError } from "../errors";
 export function knownProblem(error: unknown): ProblemError | undefined {
   if (error instanceof ProblemError) return error;
   if (error instanceof OptimisticLockError) {
-    return new ProblemError({ status: 412, code: "changed-meanwhile", detail: "Someone saved this meanwhile. Read it again, then repeat your change." });
+    return new ProblemError({
+      status: 412,
+      code: "changed-meanwhile",
+      detail: "Someone saved this meanwhile. Read it again, then repeat your change.",
+    });
   }
   return databaseProblem(error) ?? httpProblem(error);
 }
@@ -17,12 +21,22 @@ const unusableCharacters = new Set(["22021", "22P05"]);
 
 function databaseProblem(error: unknown): ProblemError | undefined {
   const code = codeOf(error);
-  const lost = error instanceof Error && /^(Connection terminated|timeout exceeded when trying to connect|Knex: Timeout)/.test(error.message);
+  const lost =
+    error instanceof Error &&
+    /^(Connection terminated|timeout exceeded when trying to connect|Knex: Timeout)/.test(error.message);
   if (lost || (code !== undefined && unreachable.test(code))) {
-    return new ProblemError({ status: 503, code: "unavailable", detail: "Something this needs cannot be reached right now. Try again in a moment." });
+    return new ProblemError({
+      status: 503,
+      code: "unavailable",
+      detail: "Something this needs cannot be reached right now. Try again in a moment.",
+    });
   }
   if (code !== undefined && unusableCharacters.has(code)) {
-    return new ProblemError({ status: 422, code: "unusable-characters", detail: "A text that was sent holds a zero character. Remove it and try again." });
+    return new ProblemError({
+      status: 422,
+      code: "unusable-characters",
+      detail: "A text that was sent holds a zero character. Remove it and try again.",
+    });
   }
   return undefined;
 }
@@ -38,15 +52,25 @@ function codeOf(error: unknown): string | undefined {
 function httpProblem(error: unknown): ProblemError | undefined {
   if (!(error instanceof Error)) return undefined;
   const { type, status } = error as { type?: string; status?: number };
-  if (type === "entity.parse.failed") return new ProblemError({ status: 400, code: "malformed-json", detail: "The body is not valid JSON." });
+  if (type === "entity.parse.failed") {
+    return new ProblemError({ status: 400, code: "malformed-json", detail: "The body is not valid JSON." });
+  }
   if (type === "entity.too.large") {
-    return new ProblemError({ status: 413, code: "body-too-large", detail: "The body is larger than this address accepts." });
+    return new ProblemError({
+      status: 413,
+      code: "body-too-large",
+      detail: "The body is larger than this address accepts.",
+    });
   }
   if (type?.startsWith("charset.") || type?.startsWith("encoding.")) {
     return new ProblemError({ status: 415, code: "unsupported-encoding", detail: "Send the body as UTF-8 JSON." });
   }
-  if (error instanceof URIError) return new ProblemError({ status: 400, code: "malformed-address", detail: "The address is not properly encoded." });
-  if (status === 404) return new ProblemError({ status: 404, code: "unknown-path", detail: "There is nothing at this address." });
+  if (error instanceof URIError) {
+    return new ProblemError({ status: 400, code: "malformed-address", detail: "The address is not properly encoded." });
+  }
+  if (status === 404) {
+    return new ProblemError({ status: 404, code: "unknown-path", detail: "There is nothing at this address." });
+  }
   if (status !== undefined && status >= 400 && status < 500) {
     return new ProblemError({ status, code: "bad-request", detail: "The request cannot be understood." });
   }

@@ -48,7 +48,8 @@ async function answer({ route, services, request, response }: Exchange): Promise
   };
   const result = await route.handle(call);
   if (response.headersSent || response.writableEnded) return;
-  const status = response.statusCode !== 200 ? response.statusCode : (endpoint.status ?? (endpoint.response ? 200 : 204));
+  const status =
+    response.statusCode !== 200 ? response.statusCode : (endpoint.status ?? (endpoint.response ? 200 : 204));
   if (result === undefined) response.status(status).end();
   else response.status(status).json(result);
 }
@@ -59,9 +60,12 @@ function parse(schema: z.ZodType | undefined, value: unknown, part: "params" | "
   // The types are restored by `route`, which pairs this endpoint with a handler of the same endpoint.
   if (result.success) return result.data as undefined;
   // An identifier that cannot exist is simply not there.
-  if (part === "params") throw new ProblemError({ status: 404, code: "not-found", detail: "There is nothing at this address." });
+  if (part === "params") {
+    throw new ProblemError({ status: 404, code: "not-found", detail: "There is nothing at this address." });
+  }
   const errors = result.error.issues.map((issue) => ({ path: issue.path.join("."), message: issue.message }));
-  const detail = value === undefined ? "The request needs a body: JSON, with Content-Type application/json." : describe(errors);
+  const detail =
+    value === undefined ? "The request needs a body: JSON, with Content-Type application/json." : describe(errors);
   throw new ProblemError({ status: 422, code: "invalid-request", detail, errors });
 }
 

@@ -14,7 +14,8 @@ export function networkOf(address: string): string {
   const [head = "", tail] = plain.toLowerCase().split("::");
   const first = head === "" ? [] : head.split(":");
   const last = tail === undefined || tail === "" ? [] : tail.split(":");
-  const zeros = tail === undefined ? [] : Array.from({ length: Math.max(0, 8 - first.length - last.length) }, () => "0");
+  const zeros =
+    tail === undefined ? [] : Array.from({ length: Math.max(0, 8 - first.length - last.length) }, () => "0");
   const groups = [...first, ...zeros, ...last].map((group) => group.replace(/^0+(?=.)/, ""));
   return `${groups.slice(0, 4).join(":")}::/64`;
 }

@@ -34,13 +34,19 @@ export function describeEndpoints(endpoints: readonly Endpoint[]) {
     info: {
       title: "Shelftide",
       version: "1",
-      description: "Weekly sales in, driver curves and predicted units out. Long work answers 202 with the address of its job in Location.",
+      description:
+        "Weekly sales in, driver curves and predicted units out. Long work answers 202 with the address of its job in Location.",
     },
     servers: [{ url: "/" }],
     paths,
     components: {
       securitySchemes: {
-        session: { type: "apiKey", in: "cookie", name: "shelftide_session", description: "Signed in by POST /api/session." },
+        session: {
+          type: "apiKey",
+          in: "cookie",
+          name: "shelftide_session",
+          description: "Signed in by POST /api/session.",
+        },
         token: { type: "http", scheme: "bearer", description: "An access token made by POST /api/tokens." },
       },
       schemas: { Problem: jsonSchema(problemSchema, "output") },
@@ -64,15 +70,24 @@ function describeEndpoint(endpoint: Endpoint): Schema {
 
 /** "GET /api/extracts/:id/issues" becomes "get-extracts-id-issues". */
 function operationId({ method, path }: Endpoint): string {
-  const words = path.split("/").slice(2).map((word) => word.replace(/\W+/g, ""));
+  const words = path
+    .split("/")
+    .slice(2)
+    .map((word) => word.replace(/\W+/g, ""));
   return [method.toLowerCase(), ...words].join("-");
 }
 
 function describeParameters(schema: z.ZodType | undefined, place: "path" | "query"): Schema[] {
   if (!schema) return [];
-  const { properties = {}, required = [] } = jsonSchema(schema, "input") as { properties?: Record<string, Schema>; required?: string[] };
+  const { properties = {}, required = [] } = jsonSchema(schema, "input") as {
+    properties?: Record<string, Schema>;
+    required?: string[];
+  };
   return Object.entries(properties).map(([name, property]) => ({
-    name, in: place, required: place === "path" || required.includes(name), schema: property,
+    name,
+    in: place,
+    required: place === "path" || required.includes(name),
+    schema: property,
   }));
 }
 
@@ -81,7 +96,11 @@ function describeBody({ multipart }: Endpoint, body: z.ZodType): Schema {
   // A body that has a default may be left out.
   if (!multipart) return { required: !body.safeParse(undefined).success, content: { "application/json": { schema } } };
   const file = { type: "string", format: "binary", description: "The file, kept unchanged." };
-  const withFile = { ...schema, properties: { ...schema.properties, file }, required: [...(schema.required ?? []), "file"] };
+  const withFile = {
+    ...schema,
+    properties: { ...schema.properties, file },
+    required: [...(schema.required ?? []), "file"],
+  };
   return { required: true, content: { "multipart/form-data": { schema: withFile } } };
 }
 
@@ -90,7 +109,9 @@ function describeSuccess({ response, status, produces, orAccepted }: Endpoint): 
   const location = { Location: { description: "Address of the job to follow.", schema: { type: "string" } } };
   const accepted = { "application/json": { schema: jsonSchema(acceptedSchema, "output") } };
   return {
-    ...(orAccepted && { 202: { description: "It takes longer, and goes on in the background.", headers: location, content: accepted } }),
+    ...(orAccepted && {
+      202: { description: "It takes longer, and goes on in the background.", headers: location, content: accepted },
+    }),
     [code]: {
       description: code === "204" ? "Done; there is no body." : "Success.",
       ...(code === "202" && { headers: location }),

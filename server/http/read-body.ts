@@ -22,7 +22,13 @@ function requireContentType(type: string): RequestHandler {
       next();
       return;
     }
-    next(new ProblemError({ status: 415, code: "unsupported-content-type", detail: `Send the body as ${type}, and say so in Content-Type.` }));
+    next(
+      new ProblemError({
+        status: 415,
+        code: "unsupported-content-type",
+        detail: `Send the body as ${type}, and say so in Content-Type.`,
+      }),
+    );
   };
 }
 

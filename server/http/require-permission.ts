@@ -24,8 +24,9 @@ function check(caller: Caller, { permission, beforePasswordChange }: Endpoint): 
     throw new ProblemError({ status: 403, code: "password-change-needed", detail });
   }
   if (permission === "public" || caller.permissions.has(permission)) return;
-  const detail = caller.tokenId === null
-    ? "Your roles do not allow this. Ask an administrator of the chain if you need it."
-    : "This access token, or its maker's roles today, do not allow this.";
+  const detail =
+    caller.tokenId === null
+      ? "Your roles do not allow this. Ask an administrator of the chain if you need it."
+      : "This access token, or its maker's roles today, do not allow this.";
   throw new ProblemError({ status: 403, code: "not-allowed", detail });
 }

@@ -61,9 +61,16 @@ export function route<E extends Endpoint>(
   handle: (call: SignedInCall<E>) => Promise<ResponseOf<E> | undefined>,
   options: Options = {},
 ): Route {
-  if (endpoint.permission === "public") throw new Error(`${endpoint.method} ${endpoint.path} is public: use publicRoute.`);
+  if (endpoint.permission === "public") {
+    throw new Error(`${endpoint.method} ${endpoint.path} is public: use publicRoute.`);
+  }
   // The table of routes is of mixed endpoints; `mount` calls each handler with what its own endpoint parsed.
-  return { endpoint, throttle: throttleOf(endpoint, options), before: options.before, handle: handle as Route["handle"] };
+  return {
+    endpoint,
+    throttle: throttleOf(endpoint, options),
+    before: options.before,
+    handle: handle as Route["handle"],
+  };
 }
 
 /** The same for an endpoint that needs no sign-in: there is no caller. */
@@ -72,6 +79,13 @@ export function publicRoute<E extends Endpoint>(
   handle: (call: Call<E>) => Promise<ResponseOf<E> | undefined>,
   options: Options = {},
 ): Route {
-  if (endpoint.permission !== "public") throw new Error(`${endpoint.method} ${endpoint.path} is not public: use route.`);
-  return { endpoint, throttle: throttleOf(endpoint, options), before: options.before, handle: handle as Route["handle"] };
+  if (endpoint.permission !== "public") {
+    throw new Error(`${endpoint.method} ${endpoint.path} is not public: use route.`);
+  }
+  return {
+    endpoint,
+    throttle: throttleOf(endpoint, options),
+    before: options.before,
+    handle: handle as Route["handle"],
+  };
 }

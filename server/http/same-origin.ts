@@ -16,7 +16,13 @@ export function sameOrigin({ PUBLIC_URL }: Pick<Environment, "PUBLIC_URL">): Req
       next();
       return;
     }
-    next(new ProblemError({ status: 403, code: "foreign-origin", detail: "This request came from another site and was refused." }));
+    next(
+      new ProblemError({
+        status: 403,
+        code: "foreign-origin",
+        detail: "This request came from another site and was refused.",
+      }),
+    );
   };
 }
 

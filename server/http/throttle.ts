@@ -36,7 +36,12 @@ function limiterOf(name: Allowance, services: Services): RateLimiterPostgres {
   const existing = made.get(name);
   if (existing) return existing;
   const limiter = new RateLimiterPostgres({
-    storeClient: services.pool, storeType: "pool", tableName: "rate_limits", tableCreated: true, keyPrefix: name, ...allowances[name],
+    storeClient: services.pool,
+    storeType: "pool",
+    tableName: "rate_limits",
+    tableCreated: true,
+    keyPrefix: name,
+    ...allowances[name],
   });
   made.set(name, limiter);
   return limiter;
@@ -46,7 +51,10 @@ function limiterOf(name: Allowance, services: Services): RateLimiterPostgres {
 export function throttle(name: ThrottleName, services: Services): RequestHandler {
   if (name === "read") return (_request, _response, next) => next();
   return (request, _response, next) => {
-    consume(limiterOf(name, services), name === "sign-in" ? addressOf(request) : callerOf(request)).then(() => next(), next);
+    consume(limiterOf(name, services), name === "sign-in" ? addressOf(request) : callerOf(request)).then(
+      () => next(),
+      next,
+    );
   };
 }
 
@@ -62,7 +70,8 @@ const callerOf = (request: Request) => request.session?.personId ?? addressOf(re
  * @throws ProblemError 429 where the account or the network address has had too many wrong ones.
  */
 export async function guardAgainstGuessing(
-  services: Services, { account, address }: { account: string; address: string },
+  services: Services,
+  { account, address }: { account: string; address: string },
 ): Promise<{ succeeded: () => Promise<void> }> {
   const byAddress = limiterOf("address-guesses", services);
   const byAccount = limiterOf("account-guesses", services);
@@ -90,5 +99,10 @@ function tooMany(result: RateLimiterRes): ProblemError {
   const seconds = Math.max(1, Math.ceil(result.msBeforeNext / 1000));
   const wait = seconds < 120 ? `${seconds} seconds` : `${Math.ceil(seconds / 60)} minutes`;
   const detail = `There were too many tries. Wait ${wait} and try again.`;
-  return new ProblemError({ status: 429, code: "too-many-requests", detail, headers: { "Retry-After": String(seconds) } });
+  return new ProblemError({
+    status: 429,
+    code: "too-many-requests",
+    detail,
+    headers: { "Retry-After": String(seconds) },
+  });
 }

@@ -10,7 +10,13 @@ const progressEveryMs = 250;
 export class LeaseLost extends Error {}
 
 /** A job as the worker that took it knows it. */
-export type TakenJob = { id: string; kind: string; attempt: number; failures: number; payload: Record<string, unknown> };
+export type TakenJob = {
+  id: string;
+  kind: string;
+  attempt: number;
+  failures: number;
+  payload: Record<string, unknown>;
+};
 
 /**
  * A worker's hold on one job. Every write names the attempt, so that a worker which was taken for dead and wakes up
@@ -35,7 +41,15 @@ export class JobLease {
     return this.#abort.signal;
   }
 
-  async progress({ done, total = null, message = "" }: { done: number; total?: number | null; message?: string }): Promise<void> {
+  async progress({
+    done,
+    total = null,
+    message = "",
+  }: {
+    done: number;
+    total?: number | null;
+    message?: string;
+  }): Promise<void> {
     if (this.#lost) throw new LeaseLost();
     if (this.#cancelRequested) throw new JobCancelled();
     const now = Date.now();
@@ -104,7 +118,10 @@ export class JobLease {
 type Requeue = { job: TakenJob; send: SendInTransaction; delaySeconds: number; failed: boolean };
 
 /** Makes a running job wait again, if this attempt is still the one that counts. */
-export async function requeueInTransaction(em: EntityManager, { job, send, delaySeconds, failed }: Requeue): Promise<void> {
+export async function requeueInTransaction(
+  em: EntityManager,
+  { job, send, delaySeconds, failed }: Requeue,
+): Promise<void> {
   const rows: { id: string }[] = await em.execute(
     `update jobs set state = 'queued', failures = failures + ? where id = ? and attempt = ? and state = 'running' returning id`,
     [failed ? 1 : 0, job.id, job.attempt],

@@ -29,7 +29,10 @@ export class JobLocks {
     const until = Date.now() + patienceMs;
     for (;;) {
       const client = await this.#client();
-      const { rows } = await client.query<{ taken: boolean }>("select pg_try_advisory_lock(hashtextextended($1, 0)) as taken", [jobId]);
+      const { rows } = await client.query<{ taken: boolean }>(
+        "select pg_try_advisory_lock(hashtextextended($1, 0)) as taken",
+        [jobId],
+      );
       if (rows[0]?.taken) {
         this.#held.set(jobId, onLost);
         return true;

@@ -68,7 +68,10 @@ export type EnqueueOptions = {
 export type JobQueue = {
   /** Adds a job inside the context's open transaction: both happen or neither. Returns the job's id. */
   enqueue: <Schema extends z.ZodType>(
-    em: EntityManager, definition: JobDefinition<Schema>, payload: z.input<Schema>, options?: EnqueueOptions,
+    em: EntityManager,
+    definition: JobDefinition<Schema>,
+    payload: z.input<Schema>,
+    options?: EnqueueOptions,
   ) => Promise<string>;
   /** Runs these kinds until `stop`. */
   work: (definitions: readonly JobDefinition[], services: Services) => Promise<void>;

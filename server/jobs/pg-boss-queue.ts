@@ -13,7 +13,12 @@ export type QueuedJob = { jobId: string; attempt: number };
 const retentionDays = 3650;
 
 /** Puts a job into the queue by the connection of the context's open transaction. */
-export type SendInTransaction = (em: EntityManager, kind: string, job: QueuedJob, delaySeconds?: number) => Promise<void>;
+export type SendInTransaction = (
+  em: EntityManager,
+  kind: string,
+  job: QueuedJob,
+  delaySeconds?: number,
+) => Promise<void>;
 
 type Means = { pool: Pool; logger: Logger; timing?: JobTiming };
 
@@ -50,7 +55,10 @@ export async function createPgBossQueue({ pool, logger, timing = defaultTiming }
     async enqueue(em, definition, payload, options = {}) {
       if (options.singletonKey) {
         await em.execute("select pg_advisory_xact_lock(hashtext(?))", [options.singletonKey]);
-        const waiting = await em.findOne(JobEntity, { singletonKey: options.singletonKey, state: { $in: ["queued", "running"] } });
+        const waiting = await em.findOne(JobEntity, {
+          singletonKey: options.singletonKey,
+          state: { $in: ["queued", "running"] },
+        });
         if (waiting) return waiting.id;
       }
       const parsed = definition.payload.parse(payload) as Record<string, unknown>;
@@ -75,6 +83,8 @@ export async function createPgBossQueue({ pool, logger, timing = defaultTiming }
 
 async function connectionOf(em: EntityManager): Promise<PoolClient> {
   const transaction = em.getTransactionContext<{ client: { acquireConnection: () => Promise<PoolClient> } }>();
-  if (!transaction) throw new Error("A job is put into the queue inside a transaction only: wrap it in em.transactional.");
+  if (!transaction) {
+    throw new Error("A job is put into the queue inside a transaction only: wrap it in em.transactional.");
+  }
   return transaction.client.acquireConnection();
 }

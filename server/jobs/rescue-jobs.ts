@@ -27,7 +27,8 @@ export async function rescueJobs({ kinds, services, send, silentAfterSeconds }: 
     await em.transactional((inner) => rescueOne(inner, { job, definition: kinds.get(job.kind), services, send }));
   }
   const pending = await services.pool.query<{ id: string; kind: string }>(
-    "select id, kind from jobs where cleanup_pending and kind = any($1)", [known],
+    "select id, kind from jobs where cleanup_pending and kind = any($1)",
+    [known],
   );
   for (const { id, kind } of pending.rows) await cleanUpJob({ id, definition: kinds.get(kind), services });
   return false;
@@ -37,14 +38,20 @@ type Lost = { job: TakenJob; definition: JobDefinition | undefined; services: Se
 
 async function rescueOne(em: EntityManager, { job, definition, services, send }: Lost): Promise<void> {
   // Held while any process that runs the job lives, however busy it is.
-  const [lock]: { free: boolean }[] = await em.execute("select pg_try_advisory_xact_lock(hashtextextended(?, 0)) as free", [job.id]);
+  const [lock]: { free: boolean }[] = await em.execute(
+    "select pg_try_advisory_xact_lock(hashtextextended(?, 0)) as free",
+    [job.id],
+  );
   if (!lock?.free) return;
   services.logger.warn({ job: job.id, kind: job.kind, attempt: job.attempt }, "job of a lost worker");
   if (job.failures < (definition?.retryLimit ?? defaultRetryLimit)) {
     await requeueInTransaction(em, { job, send, delaySeconds: 0, failed: true });
     return;
   }
-  const error: JobFailure = { code: "worker-lost", detail: "The worker that ran this stopped several times before it was done." };
+  const error: JobFailure = {
+    code: "worker-lost",
+    detail: "The worker that ran this stopped several times before it was done.",
+  };
   await em.execute(
     `update jobs set state = 'failed', error = ?, finished_at = now(), cleanup_pending = true
      where id = ? and attempt = ? and state = 'running'`,
@@ -59,7 +66,8 @@ export async function cleanUpJob({ id, definition, services }: CleanUp): Promise
   try {
     await services.orm.em.fork().transactional(async (em) => {
       const [job]: { payload: unknown; error: JobFailure }[] = await em.execute(
-        "select payload, error from jobs where id = ? and cleanup_pending for update skip locked", [id],
+        "select payload, error from jobs where id = ? and cleanup_pending for update skip locked",
+        [id],
       );
       if (!job) return;
       const payload = definition?.payload.safeParse(job.payload);

@@ -22,7 +22,13 @@ export const sendMailJob = defineJob({
     } catch (error) {
       message.lastError = (error instanceof Error ? error.message : String(error)).slice(0, 500);
       await em.flush();
-      throw refusedForGood(error) ? new ProblemError({ status: 422, code: "mail-refused", detail: "The mail server refuses this message for good." }) : error;
+      throw refusedForGood(error)
+        ? new ProblemError({
+            status: 422,
+            code: "mail-refused",
+            detail: "The mail server refuses this message for good.",
+          })
+        : error;
     }
     // A process killed between the server's yes and this flush sends the message again, under the same Message-ID.
     message.sentAt = now;
@@ -33,7 +39,12 @@ export const sendMailJob = defineJob({
 
 /** SMTP answers of 500 and above are final; anything else may pass. */
 function refusedForGood(error: unknown): boolean {
-  return error instanceof Error && "responseCode" in error && typeof error.responseCode === "number" && error.responseCode >= 500;
+  return (
+    error instanceof Error &&
+    "responseCode" in error &&
+    typeof error.responseCode === "number" &&
+    error.responseCode >= 500
+  );
 }
 
 export const mailJobs: readonly JobDefinition[] = [sendMailJob];

@@ -12,9 +12,15 @@ type MailEnvironment = Pick<Environment, "SMTP_URL" | "MAIL_FROM" | "PUBLIC_URL"
  *
  * @throws Error of nodemailer where the server cannot be reached or refuses.
  */
-export async function sendMessage(message: OutboxMessage, { SMTP_URL, MAIL_FROM, PUBLIC_URL }: MailEnvironment): Promise<void> {
+export async function sendMessage(
+  message: OutboxMessage,
+  { SMTP_URL, MAIL_FROM, PUBLIC_URL }: MailEnvironment,
+): Promise<void> {
   const transport = createTransport({
-    url: SMTP_URL, connectionTimeout: patienceMs, greetingTimeout: patienceMs, socketTimeout: patienceMs,
+    url: SMTP_URL,
+    connectionTimeout: patienceMs,
+    greetingTimeout: patienceMs,
+    socketTimeout: patienceMs,
   });
   const host = PUBLIC_URL === undefined ? "shelftide" : new URL(PUBLIC_URL).hostname;
   try {

@@ -20,21 +20,34 @@ beforeAll(async () => {
 afterAll(() => test.stop());
 
 const withJson = () => endpoints.filter(({ body, multipart }) => body && !multipart);
-const send = (endpoint: Endpoint, path = pathOf(endpoint)) => agent[endpoint.method.toLowerCase() as "get" | "post" | "put" | "delete"](path);
+const send = (endpoint: Endpoint, path = pathOf(endpoint)) =>
+  agent[endpoint.method.toLowerCase() as "get" | "post" | "put" | "delete"](path);
 
 describe("a body that cannot be used", () => {
   it("is refused at every route where it is not valid JSON", async () => {
     for (const endpoint of withJson()) {
-      expectProblem(await send(endpoint).set("Content-Type", "application/json").send('{"name": '), 400, "malformed-json");
+      expectProblem(
+        await send(endpoint).set("Content-Type", "application/json").send('{"name": '),
+        400,
+        "malformed-json",
+      );
       expectProblem(await send(endpoint).set("Content-Type", "application/json").send('"text"'), 400, "malformed-json");
     }
   });
 
   it("is refused at every route where it is no JSON at all", async () => {
     for (const endpoint of withJson()) {
-      expectProblem(await send(endpoint).set("Content-Type", "text/plain").send("name=x"), 415, "unsupported-content-type");
+      expectProblem(
+        await send(endpoint).set("Content-Type", "text/plain").send("name=x"),
+        415,
+        "unsupported-content-type",
+      );
       expectProblem(await send(endpoint).type("form").send({ name: "x" }), 415, "unsupported-content-type");
-      expectProblem(await send(endpoint).set("Content-Type", "application/json; charset=latin1").send("{}"), 415, "unsupported-encoding");
+      expectProblem(
+        await send(endpoint).set("Content-Type", "application/json; charset=latin1").send("{}"),
+        415,
+        "unsupported-encoding",
+      );
     }
   });
 
@@ -52,12 +65,24 @@ describe("a body that cannot be used", () => {
     }
   });
 
-  it("is refused while it is read where it is too large, whatever it says of its size", { timeout: 60_000 }, async () => {
-    const large = JSON.stringify({ name: "x".repeat(17 * 1024 * 1024) });
-    expectProblem(await agent.put("/api/chain").set("Content-Type", "application/json").send(large), 413, "body-too-large");
-    const small = JSON.stringify({ email: "x".repeat(20_000), password: "x" });
-    expectProblem(await request(test.app).post("/api/session").set("Content-Type", "application/json").send(small), 413, "body-too-large");
-  });
+  it(
+    "is refused while it is read where it is too large, whatever it says of its size",
+    { timeout: 60_000 },
+    async () => {
+      const large = JSON.stringify({ name: "x".repeat(17 * 1024 * 1024) });
+      expectProblem(
+        await agent.put("/api/chain").set("Content-Type", "application/json").send(large),
+        413,
+        "body-too-large",
+      );
+      const small = JSON.stringify({ email: "x".repeat(20_000), password: "x" });
+      expectProblem(
+        await request(test.app).post("/api/session").set("Content-Type", "application/json").send(small),
+        413,
+        "body-too-large",
+      );
+    },
+  );
 
   it("is refused with a sentence where a text holds what the database cannot keep", async () => {
     const response = await agent.post("/api/tokens").send({ name: "a\u0000b", permissions: ["read"] });

@@ -27,8 +27,15 @@ describe("the chain's settings", () => {
   it("are read by everyone who is signed in", async () => {
     const { body } = await planner.get("/api/chain").expect(200);
     expect(body).toEqual({
-      name: "My chain", currency: "EUR", locale: "en-GB", timeZone: "Europe/London", calendar: "iso", weekStart: 1,
-      temperatureUnit: "celsius", intervalLevel: 0.8, uploadLimitBytes: 2_147_483_648,
+      name: "My chain",
+      currency: "EUR",
+      locale: "en-GB",
+      timeZone: "Europe/London",
+      calendar: "iso",
+      weekStart: 1,
+      temperatureUnit: "celsius",
+      intervalLevel: 0.8,
+      uploadLimitBytes: 2_147_483_648,
     });
     expectProblem(await request(test.app).get("/api/chain"), 401, "not-signed-in");
   });
@@ -42,13 +49,22 @@ describe("the chain's settings", () => {
   });
 
   it("are changed by an administrator, one or all, and the audit trail says from what to what", async () => {
-    const { body } = await administrator.put("/api/chain").send({ calendar: "4-5-4", weekStart: 0, timeZone: "America/New_York", currency: "EUR" }).expect(200);
+    const { body } = await administrator
+      .put("/api/chain")
+      .send({ calendar: "4-5-4", weekStart: 0, timeZone: "America/New_York", currency: "EUR" })
+      .expect(200);
     expect(body).toEqual({ ...defaultChain, calendar: "4-5-4", weekStart: 0, timeZone: "America/New_York" });
     expect((await planner.get("/api/chain")).body).toEqual(body);
     const em = test.services.orm.em.fork();
-    const entries = await em.find(AuditEntryEntity, { action: "settings.changed" }, { orderBy: { id: "desc" }, limit: 1 });
+    const entries = await em.find(
+      AuditEntryEntity,
+      { action: "settings.changed" },
+      { orderBy: { id: "desc" }, limit: 1 },
+    );
     expect(entries[0]?.detail).toEqual({
-      calendar: { from: "iso", to: "4-5-4" }, weekStart: { from: 1, to: 0 }, timeZone: { from: "Europe/London", to: "America/New_York" },
+      calendar: { from: "iso", to: "4-5-4" },
+      weekStart: { from: 1, to: 0 },
+      timeZone: { from: "Europe/London", to: "America/New_York" },
     });
     const count = await em.count(AuditEntryEntity, { action: "settings.changed" });
     await administrator.put("/api/chain").send(body).expect(200);
@@ -79,7 +95,13 @@ describe("the chain's settings", () => {
   });
 
   it.each([
-    [{ currency: "eur" }], [{ weekStart: 7 }], [{ intervalLevel: 1 }], [{ uploadLimitBytes: 0 }], [{ name: "" }], [{ calendar: "weekly" }], [{ temperatureUnit: "kelvin" }],
+    [{ currency: "eur" }],
+    [{ weekStart: 7 }],
+    [{ intervalLevel: 1 }],
+    [{ uploadLimitBytes: 0 }],
+    [{ name: "" }],
+    [{ calendar: "weekly" }],
+    [{ temperatureUnit: "kelvin" }],
   ])("do not take %j", async (settings) => {
     expectProblem(await administrator.put("/api/chain").send(settings), 422, "invalid-request");
   });

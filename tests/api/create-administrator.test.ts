@@ -18,7 +18,9 @@ afterAll(() => test.stop());
 /** Runs the command as a person would, on the test's database. */
 async function run(...given: string[]) {
   const variables = Object.entries(test.services.environment).map(([name, value]) => [name, String(value)]);
-  const child = spawn(process.execPath, ["--import", "tsx", script, ...given], { env: { PATH: process.env.PATH, ...Object.fromEntries(variables) } });
+  const child = spawn(process.execPath, ["--import", "tsx", script, ...given], {
+    env: { PATH: process.env.PATH, ...Object.fromEntries(variables) },
+  });
   let output = "";
   let errors = "";
   child.stdout.setEncoding("utf8").on("data", (text: string) => (output += text));
@@ -35,7 +37,11 @@ describe("the command that creates an administrator", { timeout: 120_000 }, () =
     expect(password).toMatch(/^[\w-]{16}$/);
     const agent = request.agent(test.app);
     const { body } = await agent.post("/api/session").send({ email: "ada@chain.example", password }).expect(200);
-    expect(body.person).toMatchObject({ email: "ada@chain.example", roles: ["administrator"], mustChangePassword: true });
+    expect(body.person).toMatchObject({
+      email: "ada@chain.example",
+      roles: ["administrator"],
+      mustChangePassword: true,
+    });
     await agent.put("/api/session/password").send({ current: password, next: "a password of my own" }).expect(204);
     expect((await agent.get("/api/chain").expect(200)).body).toEqual(defaultChain);
     const entries = await test.services.orm.em.fork().find(AuditEntryEntity, { action: "person.created" });
@@ -47,7 +53,11 @@ describe("the command that creates an administrator", { timeout: 120_000 }, () =
     const count = await em.count(PersonEntity);
     await em.nativeUpdate(ChainEntity, {}, { name: "Larkmoor" });
     const taken = await run("ada@chain.example");
-    expect(taken).toMatchObject({ code: 1, output: "", errors: "There is someone with the address ada@chain.example already.\n" });
+    expect(taken).toMatchObject({
+      code: 1,
+      output: "",
+      errors: "There is someone with the address ada@chain.example already.\n",
+    });
     const none = await run("ada");
     expect(none).toMatchObject({ code: 1, output: "", errors: "ada is not an e-mail address.\n" });
     const missing = await run();

@@ -26,14 +26,20 @@ describe("health", () => {
     const pool = new pg.Pool({ connectionString: "postgres://nobody@127.0.0.1:9/nothing" });
     const app = createApp({ ...test.services, pool });
     expectProblem(await request(app).get("/api/health"), 503, "database-unreachable");
-    expectProblem(await request(app).post("/api/session").send({ email: "a@chain.example", password: "x" }), 503, "unavailable");
+    expectProblem(
+      await request(app).post("/api/session").send({ email: "a@chain.example", password: "x" }),
+      503,
+      "unavailable",
+    );
     await pool.end();
   });
 
   it("is a problem within seconds where the database takes connections and says nothing", async () => {
     const silent = createServer((socket) => socket.on("error", () => undefined)).listen(0, "127.0.0.1");
     await once(silent, "listening");
-    const pool = new pg.Pool({ connectionString: `postgres://nobody@127.0.0.1:${(silent.address() as AddressInfo).port}/nothing` });
+    const pool = new pg.Pool({
+      connectionString: `postgres://nobody@127.0.0.1:${(silent.address() as AddressInfo).port}/nothing`,
+    });
     const began = Date.now();
     expectProblem(await request(createApp({ ...test.services, pool })).get("/api/health"), 503, "database-unreachable");
     expect(Date.now() - began).toBeLessThan(10_000);

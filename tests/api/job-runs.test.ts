@@ -24,8 +24,24 @@ describe("a job", () => {
     const halfway = await waitForJob(test.services, id, (job) => job.done >= 2);
     expect(halfway).toMatchObject({ state: "running", total: 5, attempt: 1, subject: "/api/somewhere" });
     const job = await waitForJob(test.services, id, hasEnded);
-    expect(job).toMatchObject({ state: "succeeded", done: 5, attempt: 1, failures: 0, result: { counted: 5 }, error: null, cleanupPending: false });
-    expect(await marksOf(test.services, id)).toEqual(["begin", "step 1", "step 2", "step 3", "step 4", "step 5", "end"]);
+    expect(job).toMatchObject({
+      state: "succeeded",
+      done: 5,
+      attempt: 1,
+      failures: 0,
+      result: { counted: 5 },
+      error: null,
+      cleanupPending: false,
+    });
+    expect(await marksOf(test.services, id)).toEqual([
+      "begin",
+      "step 1",
+      "step 2",
+      "step 3",
+      "step 4",
+      "step 5",
+      "end",
+    ]);
   });
 
   it("is tried again after it broke down", async () => {
@@ -45,7 +61,11 @@ describe("a job", () => {
   it("is not tried again where it met a problem it can name", async () => {
     const id = await enqueue(test.services, refusingJob, { name: "one" });
     const job = await waitForJob(test.services, id, hasEnded);
-    expect(job).toMatchObject({ state: "failed", attempt: 1, error: { code: "not-usable", detail: "This cannot be used. Send another." } });
+    expect(job).toMatchObject({
+      state: "failed",
+      attempt: 1,
+      error: { code: "not-usable", detail: "This cannot be used. Send another." },
+    });
     expect(await marksOf(test.services, id)).toEqual(["begin"]);
   });
 
@@ -59,7 +79,9 @@ describe("a job", () => {
 describe("adding a job", () => {
   it("needs an open transaction", async () => {
     const em = test.services.orm.em.fork();
-    await expect(test.services.queue.enqueue(em, countingJob, { steps: 1, stepMs: 1 })).rejects.toThrow(/inside a transaction/);
+    await expect(test.services.queue.enqueue(em, countingJob, { steps: 1, stepMs: 1 })).rejects.toThrow(
+      /inside a transaction/,
+    );
   });
 
   it("is refused with a payload that does not fit its kind", async () => {
@@ -70,10 +92,12 @@ describe("adding a job", () => {
   it("leaves nothing where the transaction is rolled back", async () => {
     const em = test.services.orm.em.fork();
     let id = "";
-    await expect(em.transactional(async (inner) => {
-      id = await test.services.queue.enqueue(inner, countingJob, { steps: 1, stepMs: 1 });
-      throw new Error("on second thoughts");
-    })).rejects.toThrow("on second thoughts");
+    await expect(
+      em.transactional(async (inner) => {
+        id = await test.services.queue.enqueue(inner, countingJob, { steps: 1, stepMs: 1 });
+        throw new Error("on second thoughts");
+      }),
+    ).rejects.toThrow("on second thoughts");
     expect(await em.fork().count(JobEntity, { id })).toBe(0);
     const { rows } = await test.services.pool.query("select 1 from pgboss.job where data->>'jobId' = $1", [id]);
     expect(rows).toEqual([]);

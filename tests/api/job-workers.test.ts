@@ -4,7 +4,15 @@ import { closeServices, createServices } from "../../server/create-services";
 import type { Services } from "../../server/services";
 import { enqueue, hasEnded, waitForJob } from "../support/jobs";
 import { startTestApp, type TestApp } from "../support/test-app";
-import { busyJob, countingJob, createTrialMarks, marksOf, onceOnlyJob, trialJobs, trialTiming } from "../support/trial-jobs";
+import {
+  busyJob,
+  countingJob,
+  createTrialMarks,
+  marksOf,
+  onceOnlyJob,
+  trialJobs,
+  trialTiming,
+} from "../support/trial-jobs";
 import { endProcess, startWorkerProcess } from "../support/worker-process";
 
 let test: TestApp;
@@ -93,10 +101,13 @@ describe("a worker that is told to stop", () => {
 describe("several workers", () => {
   it("run each of many jobs exactly once", { timeout: 120_000 }, async () => {
     await Promise.all([startWorkerHere(), startWorkerHere(), startWorkerHere()]);
-    const ids = await Promise.all(Array.from({ length: 40 }, () => enqueue(test.services, countingJob, { steps: 1, stepMs: 5 })));
+    const ids = await Promise.all(
+      Array.from({ length: 40 }, () => enqueue(test.services, countingJob, { steps: 1, stepMs: 5 })),
+    );
     for (const id of ids) await waitForJob(test.services, id, hasEnded, 60_000);
     const { rows } = await test.services.pool.query<{ begins: number }>(
-      "select count(*)::int as begins from trial_marks where mark = 'begin' and job = any($1) group by job", [ids],
+      "select count(*)::int as begins from trial_marks where mark = 'begin' and job = any($1) group by job",
+      [ids],
     );
     expect(rows.map((row) => row.begins)).toEqual(ids.map(() => 1));
   });

@@ -36,12 +36,18 @@ afterAll(async () => {
   server.close();
 });
 
-const count = (steps: number, stepMs: number, by: string | null = personId) => enqueue(test.services, countingJob, { steps, stepMs }, { personId: by });
+const count = (steps: number, stepMs: number, by: string | null = personId) =>
+  enqueue(test.services, countingJob, { steps, stepMs }, { personId: by });
 
 /** Follows a job as a browser would; the answer's text comes in as it is sent. */
 async function follow(id: string, on = server) {
   const { port } = on.address() as AddressInfo;
-  const sent = httpRequest({ host: "127.0.0.1", port, path: `/api/jobs/${id}/events`, headers: { authorization: bearer } }).end();
+  const sent = httpRequest({
+    host: "127.0.0.1",
+    port,
+    path: `/api/jobs/${id}/events`,
+    headers: { authorization: bearer },
+  }).end();
   const [response] = (await once(sent, "response")) as [IncomingMessage];
   let text = "";
   response.setEncoding("utf8").on("data", (chunk: string) => (text += chunk));
@@ -50,7 +56,10 @@ async function follow(id: string, on = server) {
 }
 
 function jobsIn(text: string): Job[] {
-  return text.split("\n\n").filter((block) => block.startsWith("data: ")).map((block) => jobSchema.parse(JSON.parse(block.slice("data: ".length))));
+  return text
+    .split("\n\n")
+    .filter((block) => block.startsWith("data: "))
+    .map((block) => jobSchema.parse(JSON.parse(block.slice("data: ".length))));
 }
 
 describe("a job's state", () => {
@@ -59,7 +68,13 @@ describe("a job's state", () => {
     await waitForJob(test.services, id, hasEnded);
     const { body } = await agent.get(`/api/jobs/${id}`).expect(200);
     expect(jobSchema.strict().parse(body)).toMatchObject({
-      id, kind: "trial.counting", state: "succeeded", progress: { done: 1, total: 1, message: "Step 1" }, result: { counted: 1 }, error: null, attempt: 1,
+      id,
+      kind: "trial.counting",
+      state: "succeeded",
+      progress: { done: 1, total: 1, message: "Step 1" },
+      result: { counted: 1 },
+      error: null,
+      attempt: 1,
     });
     expectProblem(await request(test.app).get(`/api/jobs/${id}`), 401, "not-signed-in");
     expectProblem(await agent.get(`/api/jobs/${unknown}`), 404, "not-found");
@@ -70,7 +85,10 @@ describe("following a job", () => {
   it("tells each change as it happens, and ends with the job", async () => {
     const id = await count(8, 150);
     const stream = await follow(id);
-    expect(stream.response.headers).toMatchObject({ "content-type": "text/event-stream; charset=utf-8", "cache-control": "no-cache, no-transform" });
+    expect(stream.response.headers).toMatchObject({
+      "content-type": "text/event-stream; charset=utf-8",
+      "cache-control": "no-cache, no-transform",
+    });
     await stream.ended;
     const jobs = jobsIn(stream.text());
     expect(stream.text()).toMatch(/^retry: 1000\n\n/);
@@ -136,7 +154,8 @@ describe("following a job", () => {
   });
 });
 
-const connectionsOf = (of: Server) => new Promise<number>((resolve) => of.getConnections((_error, connections) => resolve(connections)));
+const connectionsOf = (of: Server) =>
+  new Promise<number>((resolve) => of.getConnections((_error, connections) => resolve(connections)));
 
 describe("cancelling a job", () => {
   it("stops one that runs at its next step, and puts its subject right", async () => {
@@ -170,7 +189,9 @@ describe("cancelling a job", () => {
     const { body } = await agent.post(`/api/jobs/${id}/cancel`).expect(200);
     expect(body.state).toBe("cancelled");
     const entries = await test.services.orm.em.fork().find(AuditEntryEntity, { subjectKind: "job", subjectId: id });
-    expect(entries).toMatchObject([{ action: "job.cancelled", person: { id: personId }, detail: { kind: "trial.counting" } }]);
+    expect(entries).toMatchObject([
+      { action: "job.cancelled", person: { id: personId }, detail: { kind: "trial.counting" } },
+    ]);
     const done = await count(1, 1);
     await waitForJob(test.services, done, hasEnded);
     expectProblem(await agent.post(`/api/jobs/${done}/cancel`), 409, "job-ended");
@@ -182,8 +203,15 @@ describe("cancelling a job", () => {
     expectProblem(await other.post(`/api/jobs/${id}/cancel`), 403, "not-your-job");
     expectProblem(await request(test.app).post(`/api/jobs/${id}/cancel`), 401, "not-signed-in");
     expectProblem(await agent.post(`/api/jobs/${unknown}/cancel`), 404, "not-found");
-    const { body: token } = await agent.post("/api/tokens").send({ name: "reads only", permissions: ["read"] }).expect(201);
-    expectProblem(await request(test.app).post(`/api/jobs/${id}/cancel`).set("Authorization", `Bearer ${token.token}`), 403, "not-your-job");
+    const { body: token } = await agent
+      .post("/api/tokens")
+      .send({ name: "reads only", permissions: ["read"] })
+      .expect(201);
+    expectProblem(
+      await request(test.app).post(`/api/jobs/${id}/cancel`).set("Authorization", `Bearer ${token.token}`),
+      403,
+      "not-your-job",
+    );
     const administrator = await signedInAs(test.app, test.services, ["administrator"]);
     await administrator.post(`/api/jobs/${id}/cancel`).expect(200);
     await waitForJob(test.services, id, hasEnded);
@@ -199,6 +227,8 @@ describe("cancelling a job", () => {
 });
 
 async function givenUp(steps: number): Promise<number> {
-  const { rows } = await test.services.pool.query("select 1 from trial_marks where mark = $1", [`given up ${steps} cancelled`]);
+  const { rows } = await test.services.pool.query("select 1 from trial_marks where mark = $1", [
+    `given up ${steps} cancelled`,
+  ]);
   return rows.length;
 }

@@ -26,9 +26,15 @@ afterAll(() => test.stop());
 describe("the log", () => {
   it("says of each request what was asked, how it went, and the id that its answer named", async () => {
     const response = await request(app).get("/api/health?probe=1").expect(200);
-    const line = text.split("\n").filter(Boolean).map((entry) => JSON.parse(entry)).at(-1);
+    const line = text
+      .split("\n")
+      .filter(Boolean)
+      .map((entry) => JSON.parse(entry))
+      .at(-1);
     expect(line).toMatchObject({
-      req: { id: response.headers["x-request-id"], method: "GET", url: "/api/health?probe=1" }, res: { statusCode: 200 }, responseTime: expect.any(Number),
+      req: { id: response.headers["x-request-id"], method: "GET", url: "/api/health?probe=1" },
+      res: { statusCode: 200 },
+      responseTime: expect.any(Number),
     });
   });
 
@@ -37,10 +43,20 @@ describe("the log", () => {
     const agent = request.agent(app);
     const signIn = await agent.post("/api/session").send({ email, password }).expect(200);
     const cookie = String(signIn.headers["set-cookie"]).split(";")[0]?.split("=")[1] ?? "";
-    const { body } = await agent.post("/api/tokens").send({ name: "test", permissions: ["read"] }).expect(201);
+    const { body } = await agent
+      .post("/api/tokens")
+      .send({ name: "test", permissions: ["read"] })
+      .expect(201);
     await request(app).get("/api/session").set("Authorization", `Bearer ${body.token}`).expect(200);
-    await request(app).post("/api/session").send({ email, password: `${password} that is wrong` }).expect(401);
-    await request(app).post("/api/session").set("Content-Type", "application/json").send(`{"password": "${password}`).expect(400);
+    await request(app)
+      .post("/api/session")
+      .send({ email, password: `${password} that is wrong` })
+      .expect(401);
+    await request(app)
+      .post("/api/session")
+      .set("Content-Type", "application/json")
+      .send(`{"password": "${password}`)
+      .expect(400);
     expect(text).toContain("/api/tokens");
     for (const secret of [password, cookie, decodeURIComponent(cookie), String(body.token).slice(12)]) {
       expect(secret.length).toBeGreaterThan(10);

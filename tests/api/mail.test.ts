@@ -15,7 +15,10 @@ const received: ParsedMail[] = [];
 const refusals: Error[] = [];
 
 class Refusal extends Error {
-  constructor(readonly responseCode: number, message: string) {
+  constructor(
+    readonly responseCode: number,
+    message: string,
+  ) {
     super(message);
   }
 }
@@ -45,9 +48,15 @@ afterAll(async () => {
 });
 
 async function write(subject: string, to = "ada@larkmoor.example") {
-  await test.services.orm.em.fork().transactional((em) => writeMail(em, test.services.queue, { to, subject, text: "Week 24 is loaded." }));
-  const message = await test.services.orm.em.fork().findOneOrFail(OutboxMessageEntity, { subject: subject.replace(/\s+/g, " ") });
-  const job = await test.services.orm.em.fork().findOneOrFail(JobEntity, { kind: "send-mail", payload: { messageId: message.id } });
+  await test.services.orm.em
+    .fork()
+    .transactional((em) => writeMail(em, test.services.queue, { to, subject, text: "Week 24 is loaded." }));
+  const message = await test.services.orm.em
+    .fork()
+    .findOneOrFail(OutboxMessageEntity, { subject: subject.replace(/\s+/g, " ") });
+  const job = await test.services.orm.em
+    .fork()
+    .findOneOrFail(JobEntity, { kind: "send-mail", payload: { messageId: message.id } });
   return { messageId: message.id, jobId: job.id };
 }
 
@@ -67,10 +76,12 @@ describe("an e-mail of the outbox", () => {
 
   it("is not there where the transaction it was written in is rolled back", async () => {
     const em = test.services.orm.em.fork();
-    await expect(em.transactional(async (inner) => {
-      await writeMail(inner, test.services.queue, { to: "ada@larkmoor.example", subject: "Never", text: "Never." });
-      throw new Error("on second thoughts");
-    })).rejects.toThrow("on second thoughts");
+    await expect(
+      em.transactional(async (inner) => {
+        await writeMail(inner, test.services.queue, { to: "ada@larkmoor.example", subject: "Never", text: "Never." });
+        throw new Error("on second thoughts");
+      }),
+    ).rejects.toThrow("on second thoughts");
     expect(await em.fork().count(OutboxMessageEntity, { subject: "Never" })).toBe(0);
   });
 
@@ -88,7 +99,10 @@ describe("an e-mail of the outbox", () => {
   it("is not tried again where the server refuses it for good, and keeps the reason", async () => {
     refusals.push(new Refusal(554, "we take nothing of this kind"));
     const { messageId, jobId } = await write("Refused");
-    expect(await waitForJob(test.services, jobId, hasEnded)).toMatchObject({ state: "failed", error: { code: "mail-refused" } });
+    expect(await waitForJob(test.services, jobId, hasEnded)).toMatchObject({
+      state: "failed",
+      error: { code: "mail-refused" },
+    });
     const message = await messageOf(messageId);
     expect(message).toMatchObject({ attempts: 1, sentAt: null });
     expect(message.lastError).toContain("we take nothing of this kind");
@@ -99,7 +113,9 @@ describe("an e-mail of the outbox", () => {
     await waitForJob(test.services, jobId, hasEnded);
     const [sendMail] = mailJobs;
     if (!sendMail) throw new Error("There is no job that sends mail.");
-    const again = await test.services.orm.em.fork().transactional((em) => test.services.queue.enqueue(em, sendMail, { messageId }));
+    const again = await test.services.orm.em
+      .fork()
+      .transactional((em) => test.services.queue.enqueue(em, sendMail, { messageId }));
     expect(await waitForJob(test.services, again, hasEnded)).toMatchObject({ state: "succeeded" });
     expect(receivedWith("Only once")).toHaveLength(1);
   });

@@ -26,15 +26,25 @@ describe("the router", () => {
 
   it("asks for a permission at every route but those that must work without sign-in", () => {
     const open = endpoints.filter(({ permission }) => permission === "public").map(nameOf);
-    expect(open.sort()).toEqual(["DELETE /api/session", "GET /api/health", "GET /api/openapi.json", "POST /api/session"]);
-    for (const { permission } of endpoints) if (permission !== "public") expect(permissionSchema.options).toContain(permission);
+    expect(open.sort()).toEqual([
+      "DELETE /api/session",
+      "GET /api/health",
+      "GET /api/openapi.json",
+      "POST /api/session",
+    ]);
+    for (const { permission } of endpoints) {
+      if (permission !== "public") expect(permissionSchema.options).toContain(permission);
+    }
   });
 });
 
 describe("every route", () => {
   it("refuses who is not signed in, before it looks at anything else", async () => {
     for (const endpoint of endpoints) {
-      const response = await request(test.app)[methodOf(endpoint)](pathOf(endpoint)).set("Content-Type", "application/json").send(endpoint.method === "GET" ? undefined : "{");
+      const sent = request(test.app)[methodOf(endpoint)](pathOf(endpoint));
+      const response = await sent
+        .set("Content-Type", "application/json")
+        .send(endpoint.method === "GET" ? undefined : "{");
       if (endpoint.permission === "public") expect(response.status, nameOf(endpoint)).not.toBe(401);
       else expectProblem(response, 401, "not-signed-in");
     }
@@ -46,7 +56,10 @@ describe("every route", () => {
     for (const endpoint of endpoints.filter(({ permission }) => permission !== "public")) {
       const response = await agent[methodOf(endpoint)](pathOf(endpoint));
       const isRefused = response.status === 403 && response.body.code === "not-allowed";
-      expect({ route: nameOf(endpoint), isRefused }).toEqual({ route: nameOf(endpoint), isRefused: !allowed.has(endpoint.permission) });
+      expect({ route: nameOf(endpoint), isRefused }).toEqual({
+        route: nameOf(endpoint),
+        isRefused: !allowed.has(endpoint.permission),
+      });
       expect(response.status, nameOf(endpoint)).not.toBe(401);
       expect(response.status, nameOf(endpoint)).toBeLessThan(500);
       if (isRefused) expectProblem(response, 403, "not-allowed");
@@ -61,7 +74,11 @@ describe("every route", () => {
   });
 
   it("is closed to a one-time password, but for reading the session and choosing a password", async () => {
-    const { email } = await addPerson(test.services, { email: "new@chain.example", roles: [...roleSchema.options], mustChangePassword: true });
+    const { email } = await addPerson(test.services, {
+      email: "new@chain.example",
+      roles: [...roleSchema.options],
+      mustChangePassword: true,
+    });
     const agent = await signedIn(test.app, email);
     const open: string[] = [];
     for (const endpoint of endpoints.filter(({ permission }) => permission !== "public")) {

@@ -15,13 +15,16 @@ beforeAll(async () => {
 });
 afterAll(() => test.stop());
 
-const appWith = (changes: Partial<Environment>) => createApp({ ...test.services, environment: { ...test.services.environment, ...changes } });
+const appWith = (changes: Partial<Environment>) =>
+  createApp({ ...test.services, environment: { ...test.services.environment, ...changes } });
 
 function directives(policy: string): Record<string, string[]> {
-  return Object.fromEntries(policy.split(";").map((part) => {
-    const [name = "", ...sources] = part.trim().split(/\s+/);
-    return [name, sources];
-  }));
+  return Object.fromEntries(
+    policy.split(";").map((part) => {
+      const [name = "", ...sources] = part.trim().split(/\s+/);
+      return [name, sources];
+    }),
+  );
 }
 
 describe("the content security policy", () => {
@@ -29,9 +32,17 @@ describe("the content security policy", () => {
     for (const path of ["/api/health", "/api/chain", "/api/nothing", "/"]) {
       const { headers } = await request(test.app).get(path);
       expect(directives(String(headers["content-security-policy"])), path).toEqual({
-        "default-src": ["'self'"], "base-uri": ["'none'"], "connect-src": ["'self'"], "font-src": ["'self'"], "form-action": ["'self'"],
-        "frame-ancestors": ["'none'"], "img-src": ["'self'", "data:", "blob:"], "object-src": ["'none'"], "script-src": ["'self'"],
-        "style-src": ["'self'"], "worker-src": ["'self'"],
+        "default-src": ["'self'"],
+        "base-uri": ["'none'"],
+        "connect-src": ["'self'"],
+        "font-src": ["'self'"],
+        "form-action": ["'self'"],
+        "frame-ancestors": ["'none'"],
+        "img-src": ["'self'", "data:", "blob:"],
+        "object-src": ["'none'"],
+        "script-src": ["'self'"],
+        "style-src": ["'self'"],
+        "worker-src": ["'self'"],
       });
     }
   });
@@ -40,7 +51,11 @@ describe("the content security policy", () => {
 describe("other headers", () => {
   it("keep answers from being guessed at, framed or traced", async () => {
     const { headers } = await request(test.app).get("/api/health").expect(200);
-    expect(headers).toMatchObject({ "x-content-type-options": "nosniff", "x-frame-options": "DENY", "referrer-policy": "same-origin" });
+    expect(headers).toMatchObject({
+      "x-content-type-options": "nosniff",
+      "x-frame-options": "DENY",
+      "referrer-policy": "same-origin",
+    });
     expect(headers["x-powered-by"]).toBeUndefined();
     expect(headers["access-control-allow-origin"]).toBeUndefined();
   });
@@ -79,7 +94,9 @@ describe("a request that changes something", () => {
   it("is let through from a script that sends no such headers, and from our own pages", async () => {
     expect(await outcome({})).toBe("let through");
     expect(await outcome({ Host: "shelf.chain.example", Origin: "https://shelf.chain.example" })).toBe("let through");
-    expect(await outcome({ Host: "shelf.chain.example:443", Origin: "https://shelf.chain.example" })).toBe("let through");
+    expect(await outcome({ Host: "shelf.chain.example:443", Origin: "https://shelf.chain.example" })).toBe(
+      "let through",
+    );
     expect(await outcome({ Host: "127.0.0.1:4310", Origin: "http://127.0.0.1:4310" })).toBe("let through");
     expect(await outcome({ "Sec-Fetch-Site": "same-origin" })).toBe("let through");
     expect(await outcome({ "Sec-Fetch-Site": "none" })).toBe("let through");
@@ -87,17 +104,29 @@ describe("a request that changes something", () => {
 
   it("is refused from other sites, neighbours and pages that hide where they are from", async () => {
     const Host = "shelf.chain.example";
-    for (const Origin of ["https://evil.example", "null", "https://shelf.chain.example.evil.example", "https://shelf.chain.example:8443", "https://chain.example", "garbage"]) {
+    for (const Origin of [
+      "https://evil.example",
+      "null",
+      "https://shelf.chain.example.evil.example",
+      "https://shelf.chain.example:8443",
+      "https://chain.example",
+      "garbage",
+    ]) {
       expect(await outcome({ Host, Origin }), Origin).toBe("refused");
     }
-    for (const site of ["cross-site", "same-site"]) expect(await outcome({ "Sec-Fetch-Site": site }), site).toBe("refused");
+    for (const site of ["cross-site", "same-site"])
+      expect(await outcome({ "Sec-Fetch-Site": site }), site).toBe("refused");
     // The browser's own word counts before anything that a host name suggests.
     expect(await outcome({ Host, Origin: `https://${Host}`, "Sec-Fetch-Site": "cross-site" })).toBe("refused");
   });
 
   it("is refused at sign-in and sign-out too", async () => {
     const Origin = "https://evil.example";
-    expectProblem(await request(test.app).post("/api/session").set({ Origin }).send({ email: "a@chain.example", password: "x" }), 403, "foreign-origin");
+    expectProblem(
+      await request(test.app).post("/api/session").set({ Origin }).send({ email: "a@chain.example", password: "x" }),
+      403,
+      "foreign-origin",
+    );
     expectProblem(await request(test.app).delete("/api/session").set({ Origin }), 403, "foreign-origin");
   });
 
@@ -116,7 +145,10 @@ describe("a request that changes something", () => {
     const response = await request(test.app).post("/api/tokens").set({ Origin, Authorization: bearer }).send({});
     expect(response.body.code).not.toBe("foreign-origin");
     await request(test.app).get("/api/health").set({ Origin }).expect(200);
-    const bogus = await request(test.app).put("/api/chain").set({ Origin, Authorization: "Bearer nonsense" }).send(body);
+    const bogus = await request(test.app)
+      .put("/api/chain")
+      .set({ Origin, Authorization: "Bearer nonsense" })
+      .send(body);
     expectProblem(bogus, 401, "not-signed-in");
   });
 });

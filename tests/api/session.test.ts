@@ -21,7 +21,12 @@ afterAll(() => test.stop());
 beforeEach(async () => {
   now = new Date("2026-06-01T08:00:00Z");
   count += 1;
-  person = await addPerson(test.services, { email: `person${count}@chain.example`, name: "Ada", roles: ["category-manager"], categories: ["tea"] });
+  person = await addPerson(test.services, {
+    email: `person${count}@chain.example`,
+    name: "Ada",
+    roles: ["category-manager"],
+    categories: ["tea"],
+  });
 });
 
 const pass = (ms: number) => {
@@ -29,16 +34,20 @@ const pass = (ms: number) => {
 };
 const cookieOf = (response: request.Response) => String(response.headers["set-cookie"]);
 const signIn = (credentials: object) => request(test.app).post("/api/session").send(credentials);
-const change = (fields: Partial<{ disabledAt: Date }>) => test.services.orm.em.fork().nativeUpdate(PersonEntity, { id: person.id }, fields);
+const change = (fields: Partial<{ disabledAt: Date }>) =>
+  test.services.orm.em.fork().nativeUpdate(PersonEntity, { id: person.id }, fields);
 
 async function auditOf(id: string) {
-  const entries = await test.services.orm.em.fork().find(AuditEntryEntity, { subjectId: id }, { orderBy: { id: "asc" } });
+  const entries = await test.services.orm.em
+    .fork()
+    .find(AuditEntryEntity, { subjectId: id }, { orderBy: { id: "asc" } });
   return entries.map(({ action, person: by }) => ({ action, by: by?.id ?? null }));
 }
 
 async function sessionRow() {
   const { rows } = await test.services.pool.query<{ sid: string; version: string }>(
-    "select sid, xmin::text as version from user_session where sess->>'personId' = $1", [person.id],
+    "select sid, xmin::text as version from user_session where sess->>'personId' = $1",
+    [person.id],
   );
   return rows[0];
 }
@@ -47,7 +56,14 @@ describe("signing in", () => {
   it("answers who one is and what one may do, and sets a cookie that scripts cannot read", async () => {
     const response = await signIn({ email: person.email, password }).expect(200);
     expect(response.body).toEqual({
-      person: { id: person.id, email: person.email, name: "Ada", roles: ["category-manager"], categories: ["tea"], mustChangePassword: false },
+      person: {
+        id: person.id,
+        email: person.email,
+        name: "Ada",
+        roles: ["category-manager"],
+        categories: ["tea"],
+        mustChangePassword: false,
+      },
       permissions: ["read", "models:fit", "models:use", "scenarios:write", "scenarios:decide"],
       by: "session",
     });
@@ -57,7 +73,11 @@ describe("signing in", () => {
   it("sends the cookie over https only where the installation says so", async () => {
     const environment = { ...test.services.environment, SECURE_COOKIES: true, TRUST_PROXY: 1 };
     const app = createApp({ ...test.services, environment });
-    const response = await request(app).post("/api/session").set("X-Forwarded-Proto", "https").send({ email: person.email, password }).expect(200);
+    const response = await request(app)
+      .post("/api/session")
+      .set("X-Forwarded-Proto", "https")
+      .send({ email: person.email, password })
+      .expect(200);
     expect(cookieOf(response)).toContain("; Secure");
     const plain = await request(app).post("/api/session").send({ email: person.email, password });
     expect(plain.headers["set-cookie"]).toBeUndefined();
@@ -78,7 +98,10 @@ describe("signing in", () => {
   });
 
   it("does not take up a session id that was planted", async () => {
-    const response = await request(test.app).post("/api/session").set("Cookie", "shelftide_session=s%3Aplanted.bm90IGEgc2lnbmF0dXJl").send({ email: person.email, password });
+    const response = await request(test.app)
+      .post("/api/session")
+      .set("Cookie", "shelftide_session=s%3Aplanted.bm90IGEgc2lnbmF0dXJl")
+      .send({ email: person.email, password });
     expect(response.status).toBe(200);
     expect(cookieOf(response)).not.toContain("planted");
   });
@@ -93,7 +116,10 @@ describe("signing in", () => {
       expect({ ...response.body, requestId: "" }).toEqual({ ...wrong.body, requestId: "" });
       expect(response.headers["set-cookie"]).toBeUndefined();
     }
-    expect(await auditOf(person.id)).toEqual([{ action: "session.refused", by: null }, { action: "session.refused", by: null }]);
+    expect(await auditOf(person.id)).toEqual([
+      { action: "session.refused", by: null },
+      { action: "session.refused", by: null },
+    ]);
   });
 
   it("refuses what is no address and password", async () => {
@@ -110,7 +136,10 @@ describe("a session", () => {
     await agent.delete("/api/session").expect(204);
     expectProblem(await agent.get("/api/session"), 401, "not-signed-in");
     expect(await sessionRow()).toBeUndefined();
-    expect(await auditOf(person.id)).toEqual([{ action: "session.began", by: person.id }, { action: "session.ended", by: person.id }]);
+    expect(await auditOf(person.id)).toEqual([
+      { action: "session.began", by: person.id },
+      { action: "session.ended", by: person.id },
+    ]);
   });
 
   it("stays ended after a sign-out where a request from before is answered later", async () => {
@@ -123,7 +152,16 @@ describe("a session", () => {
       await client.query("begin");
       await client.query("lock table chain");
       const slow = agent.get("/api/chain").then((response) => response.status);
-      await expect.poll(async () => (await test.services.pool.query("select 1 from pg_stat_activity where wait_event_type = 'Lock' and datname = current_database()")).rowCount).toBe(1);
+      await expect
+        .poll(
+          async () =>
+            (
+              await test.services.pool.query(
+                "select 1 from pg_stat_activity where wait_event_type = 'Lock' and datname = current_database()",
+              )
+            ).rowCount,
+        )
+        .toBe(1);
       await agent.delete("/api/session").expect(204);
       await client.query("rollback");
       await slow;

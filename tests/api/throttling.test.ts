@@ -36,7 +36,8 @@ function expectWait(response: request.Response, atMostSeconds: number) {
 
 describe("guessing a password", () => {
   it("is stopped after ten wrong ones for an account, wherever they come from, even for the right one", async () => {
-    for (let guess = 1; guess <= 10; guess += 1) expectProblem(await signIn(person.email, "wrong", `192.0.2.${guess}`), 401, "wrong-credentials");
+    for (let guess = 1; guess <= 10; guess += 1)
+      expectProblem(await signIn(person.email, "wrong", `192.0.2.${guess}`), 401, "wrong-credentials");
     const response = await signIn(person.email.toUpperCase(), password, "192.0.2.99");
     expectWait(response, 900);
     expect(Number(response.headers["retry-after"])).toBeGreaterThan(800);
@@ -45,12 +46,14 @@ describe("guessing a password", () => {
   });
 
   it("is stopped the same way for an account that does not exist", async () => {
-    for (let guess = 1; guess <= 10; guess += 1) expectProblem(await signIn("nobody@chain.example", "wrong", `192.0.2.${guess}`), 401, "wrong-credentials");
+    for (let guess = 1; guess <= 10; guess += 1)
+      expectProblem(await signIn("nobody@chain.example", "wrong", `192.0.2.${guess}`), 401, "wrong-credentials");
     expectWait(await signIn("nobody@chain.example", "wrong", "192.0.2.99"), 900);
   });
 
   it("is stopped after thirty wrong ones from a network address, whomever they try", { timeout: 60_000 }, async () => {
-    for (let guess = 1; guess <= 30; guess += 1) expectProblem(await signIn(`person-${guess}@elsewhere.example`, "wrong"), 401, "wrong-credentials");
+    for (let guess = 1; guess <= 30; guess += 1)
+      expectProblem(await signIn(`person-${guess}@elsewhere.example`, "wrong"), 401, "wrong-credentials");
     expectWait(await signIn(person.email, password), 900);
     await signIn(person.email, password, "198.51.100.7").expect(200);
   });
@@ -66,13 +69,16 @@ describe("guessing a password", () => {
       for (let guess = 1; guess <= 9; guess += 1) await signIn(person.email, "wrong", `192.0.2.${guess}`).expect(401);
       await signIn(person.email, password, "192.0.2.50").expect(200);
     }
-    const { rows } = await test.services.pool.query("select points from rate_limits where key = 'address-guesses:192.0.2.50'");
+    const { rows } = await test.services.pool.query(
+      "select points from rate_limits where key = 'address-guesses:192.0.2.50'",
+    );
     expect(rows).toEqual([{ points: 0 }]);
   });
 
   it("is counted for all web processes together", async () => {
     const another = createApp({ ...test.services, environment: { ...test.services.environment, TRUST_PROXY: 1 } });
-    for (let guess = 1; guess <= 10; guess += 1) await signIn(person.email, "wrong", `192.0.2.${guess}`, guess % 2 ? app : another).expect(401);
+    for (let guess = 1; guess <= 10; guess += 1)
+      await signIn(person.email, "wrong", `192.0.2.${guess}`, guess % 2 ? app : another).expect(401);
     expectWait(await signIn(person.email, password, "192.0.2.99", another), 900);
     expectWait(await signIn(person.email, password, "192.0.2.99"), 900);
   });
@@ -116,7 +122,8 @@ describe("counters", () => {
     } finally {
       vi.useRealTimers();
     }
-    const left = async () => (await test.services.pool.query<{ key: string }>("select key from rate_limits where key like 'write:%'")).rows;
+    const left = async () =>
+      (await test.services.pool.query<{ key: string }>("select key from rate_limits where key like 'write:%'")).rows;
     await expect.poll(left).toEqual([{ key: "write:fresh" }]);
   });
 });

@@ -26,7 +26,10 @@ async function newPerson(roles: Role[]) {
 }
 
 async function newToken(agent: Awaited<ReturnType<typeof signedIn>>, permissions: Permission[], more: object = {}) {
-  const { body } = await agent.post("/api/tokens").send({ name: "weekly upload", permissions, ...more }).expect(201);
+  const { body } = await agent
+    .post("/api/tokens")
+    .send({ name: "weekly upload", permissions, ...more })
+    .expect(201);
   return { id: String(body.id), token: String(body.token), body };
 }
 
@@ -43,8 +46,15 @@ describe("making an access token", () => {
     const { id, token, body } = await newToken(agent, ["read", "extracts:write"]);
     expect(token).toMatch(/^shelf_[\w-]{43}$/);
     expect(body).toEqual({
-      id, token, name: "weekly upload", prefix: token.slice(0, 12), permissions: ["read", "extracts:write"],
-      createdAt: "2026-06-01T08:00:00.000Z", expiresAt: "2026-08-30T08:00:00.000Z", lastUsedAt: null, revokedAt: null,
+      id,
+      token,
+      name: "weekly upload",
+      prefix: token.slice(0, 12),
+      permissions: ["read", "extracts:write"],
+      createdAt: "2026-06-01T08:00:00.000Z",
+      expiresAt: "2026-08-30T08:00:00.000Z",
+      lastUsedAt: null,
+      revokedAt: null,
     });
     const list = await agent.get("/api/tokens").expect(200);
     expect(list.body.items).toEqual([{ ...body, token: undefined }]);
@@ -52,13 +62,19 @@ describe("making an access token", () => {
     expect(JSON.stringify({ ...row })).not.toContain(token.slice(12));
     expect(row.hash).toMatch(/^[0-9a-f]{64}$/);
     const [entry] = await test.services.orm.em.fork().find(AuditEntryEntity, { subjectKind: "token", subjectId: id });
-    expect(entry).toMatchObject({ action: "token.made", person: { id: personId }, detail: { name: "weekly upload", permissions: ["read", "extracts:write"] } });
+    expect(entry).toMatchObject({
+      action: "token.made",
+      person: { id: personId },
+      detail: { name: "weekly upload", permissions: ["read", "extracts:write"] },
+    });
     expect(JSON.stringify({ ...entry })).not.toContain(token.slice(12));
   });
 
   it("is refused for more than one's own rights, naming what is too much", async () => {
     const { agent } = await newPerson(["planner"]);
-    const response = await agent.post("/api/tokens").send({ name: "x", permissions: ["read", "extracts:write", "people:manage"] });
+    const response = await agent
+      .post("/api/tokens")
+      .send({ name: "x", permissions: ["read", "extracts:write", "people:manage"] });
     expectProblem(response, 403, "more-than-own-rights");
     expect(response.body.detail).toContain("extracts:write, people:manage");
   });
@@ -66,15 +82,37 @@ describe("making an access token", () => {
   it("is refused to a token, which could outlive itself otherwise", async () => {
     const { agent } = await newPerson(["administrator"]);
     const { token } = await newToken(agent, ["read", "people:manage"]);
-    expectProblem(await withToken(token).post("/api/tokens").send({ name: "x", permissions: ["read"] }), 403, "session-needed");
+    expectProblem(
+      await withToken(token)
+        .post("/api/tokens")
+        .send({ name: "x", permissions: ["read"] }),
+      403,
+      "session-needed",
+    );
   });
 
   it("is refused without a name, a permission that exists, or an end", async () => {
     const { agent } = await newPerson(["planner"]);
-    for (const wrong of [{ name: " " }, { permissions: [] }, { permissions: ["everything"] }, { expiresInDays: 0 }, { expiresInDays: 1000 }]) {
-      expectProblem(await agent.post("/api/tokens").send({ name: "x", permissions: ["read"], ...wrong }), 422, "invalid-request");
+    for (const wrong of [
+      { name: " " },
+      { permissions: [] },
+      { permissions: ["everything"] },
+      { expiresInDays: 0 },
+      { expiresInDays: 1000 },
+    ]) {
+      expectProblem(
+        await agent.post("/api/tokens").send({ name: "x", permissions: ["read"], ...wrong }),
+        422,
+        "invalid-request",
+      );
     }
-    expectProblem(await request(test.app).post("/api/tokens").send({ name: "x", permissions: ["read"] }), 401, "not-signed-in");
+    expectProblem(
+      await request(test.app)
+        .post("/api/tokens")
+        .send({ name: "x", permissions: ["read"] }),
+      401,
+      "not-signed-in",
+    );
   });
 });
 
@@ -121,7 +159,15 @@ describe("calling by an access token", () => {
   it("is refused for anything that is no token of ours, even from a browser that is signed in", async () => {
     const { agent } = await newPerson(["planner"]);
     const { token } = await newToken(agent, ["read"]);
-    for (const header of ["Bearer", "Bearer x", `Basic ${token}`, `Bearer ${token}x`, `Bearer shelf_${"A".repeat(43)}`, token, `Bearer ${token} ${token}`]) {
+    for (const header of [
+      "Bearer",
+      "Bearer x",
+      `Basic ${token}`,
+      `Bearer ${token}x`,
+      `Bearer shelf_${"A".repeat(43)}`,
+      token,
+      `Bearer ${token} ${token}`,
+    ]) {
       const response = await agent.get("/api/session").set("Authorization", header);
       expectProblem(response, 401, "not-signed-in");
       expect(response.headers["www-authenticate"]).toBe("Bearer");
@@ -136,7 +182,9 @@ describe("revoking an access token", () => {
     await agent.delete(`/api/tokens/${id}`).expect(204);
     await agent.delete(`/api/tokens/${id}`).expect(204);
     expectProblem(await withToken(token).get("/api/session"), 401, "not-signed-in");
-    const entries = await test.services.orm.em.fork().find(AuditEntryEntity, { subjectId: id, action: "token.revoked" });
+    const entries = await test.services.orm.em
+      .fork()
+      .find(AuditEntryEntity, { subjectId: id, action: "token.revoked" });
     expect(entries.map(({ person }) => person?.id)).toEqual([personId]);
     const { body } = await agent.get("/api/tokens").expect(200);
     expect(body.items[0].revokedAt).toBe("2026-06-01T08:00:00.000Z");

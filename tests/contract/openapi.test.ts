@@ -21,7 +21,8 @@ function operationOf(method: string, path: string): Operation {
   return operation as Operation;
 }
 const operations = endpoints.map((endpoint) => ({
-  endpoint, operation: operationOf(endpoint.method.toLowerCase(), endpoint.path.replace(/:(\w+)/g, "{$1}")),
+  endpoint,
+  operation: operationOf(endpoint.method.toLowerCase(), endpoint.path.replace(/:(\w+)/g, "{$1}")),
 }));
 
 describe("the OpenAPI description", () => {
@@ -31,7 +32,9 @@ describe("the OpenAPI description", () => {
   });
 
   it("describes each endpoint of the contract once, under a name of its own", () => {
-    const described = Object.entries(document.paths).flatMap(([path, methods]) => Object.keys(methods).map((method) => `${method.toUpperCase()} ${path}`));
+    const described = Object.entries(document.paths).flatMap(([path, methods]) =>
+      Object.keys(methods).map((method) => `${method.toUpperCase()} ${path}`),
+    );
     expect(described.sort()).toEqual(endpoints.map((endpoint) => nameOf(endpoint).replace(/:(\w+)/g, "{$1}")).sort());
     const ids = operations.map(({ operation }) => operation.operationId);
     expect(new Set(ids).size).toBe(ids.length);
@@ -40,29 +43,45 @@ describe("the OpenAPI description", () => {
   it("asks for a session or a token with the endpoint's permission, and for nothing where it is public", () => {
     for (const { endpoint, operation } of operations) {
       const { permission } = endpoint;
-      expect(operation.security, nameOf(endpoint)).toEqual(permission === "public" ? [] : [{ session: [permission] }, { token: [permission] }]);
+      expect(operation.security, nameOf(endpoint)).toEqual(
+        permission === "public" ? [] : [{ session: [permission] }, { token: [permission] }],
+      );
       if (permission !== "public") expect(permissionSchema.options).toContain(permission);
     }
-    expect(document.components.securitySchemes).toMatchObject({ session: { type: "apiKey", in: "cookie" }, token: { type: "http", scheme: "bearer" } });
+    expect(document.components.securitySchemes).toMatchObject({
+      session: { type: "apiKey", in: "cookie" },
+      token: { type: "http", scheme: "bearer" },
+    });
   });
 
   it("gives each address's parameters, as required, and no other", () => {
     for (const { endpoint, operation } of operations) {
       const inPath = (operation.parameters ?? []).filter((parameter) => parameter.in === "path");
-      expect(inPath.map(({ name }) => `:${name}`), nameOf(endpoint)).toEqual(endpoint.path.match(/:\w+/g) ?? []);
+      expect(
+        inPath.map(({ name }) => `:${name}`),
+        nameOf(endpoint),
+      ).toEqual(endpoint.path.match(/:\w+/g) ?? []);
       expect(inPath.every(({ required }) => required)).toBe(true);
     }
     const { parameters } = operationOf("get", "/api/extracts/{id}/issues");
-    expect(parameters?.find(({ name }) => name === "limit")).toMatchObject({ in: "query", required: false, schema: { default: 100, maximum: 1000 } });
+    expect(parameters?.find(({ name }) => name === "limit")).toMatchObject({
+      in: "query",
+      required: false,
+      schema: { default: 100, maximum: 1000 },
+    });
   });
 
   it("gives a body to each endpoint that reads one, and a file to an upload", () => {
-    for (const { endpoint, operation } of operations) expect(Boolean(operation.requestBody), nameOf(endpoint)).toBe(Boolean(endpoint.body));
+    for (const { endpoint, operation } of operations) {
+      expect(Boolean(operation.requestBody), nameOf(endpoint)).toBe(Boolean(endpoint.body));
+    }
     expect(operationOf("post", "/api/session").requestBody).toMatchObject({
-      required: true, content: { "application/json": { schema: { type: "object", required: ["email", "password"] } } },
+      required: true,
+      content: { "application/json": { schema: { type: "object", required: ["email", "password"] } } },
     });
     expect(operationOf("post", "/api/extracts").requestBody?.content["multipart/form-data"]?.schema).toMatchObject({
-      properties: { file: { type: "string", format: "binary" }, kind: { enum: expect.arrayContaining(["sales"]) } }, required: ["kind", "file"],
+      properties: { file: { type: "string", format: "binary" }, kind: { enum: expect.arrayContaining(["sales"]) } },
+      required: ["kind", "file"],
     });
     expect(operationOf("post", "/api/scenarios/{id}/predict").requestBody?.required).toBe(false);
   });
@@ -79,12 +98,17 @@ describe("the OpenAPI description", () => {
       }
       if (endpoint.permission !== "public") expect(operation.responses).toMatchObject({ 401: {}, 403: {} });
     }
-    expect(document.components.schemas.Problem).toMatchObject({ type: "object", required: expect.arrayContaining(["type", "title", "status", "detail", "code", "requestId"]) });
+    expect(document.components.schemas.Problem).toMatchObject({
+      type: "object",
+      required: expect.arrayContaining(["type", "title", "status", "detail", "code", "requestId"]),
+    });
   });
 
   it("says where the job is that long work goes on in", () => {
     for (const path of ["/api/models", "/api/extracts/{id}/load"]) {
-      expect(operationOf("post", path).responses).toMatchObject({ 202: { headers: { Location: { schema: { type: "string" } } } } });
+      expect(operationOf("post", path).responses).toMatchObject({
+        202: { headers: { Location: { schema: { type: "string" } } } },
+      });
     }
   });
 

@@ -10,7 +10,12 @@ describe("the permissions of roles", () => {
   it("are those of all of a person's roles together, each once", () => {
     expect(permissionsOf(["planner", "category-manager", "planner"])).toEqual(permissionsOf(["category-manager"]));
     expect(permissionsOf(["data-admin", "administrator"])).toEqual([
-      "read", "extracts:write", "catalogue:write", "people:manage", "settings:manage", "audit:read",
+      "read",
+      "extracts:write",
+      "catalogue:write",
+      "people:manage",
+      "settings:manage",
+      "audit:read",
     ]);
   });
 
@@ -19,7 +24,9 @@ describe("the permissions of roles", () => {
   });
 
   it("keep extracts from planners, and plans and fits from data admins and administrators", () => {
-    for (const role of ["planner", "category-manager", "administrator"] as const) expect(permissionsOf([role])).not.toContain("extracts:write");
+    for (const role of ["planner", "category-manager", "administrator"] as const) {
+      expect(permissionsOf([role])).not.toContain("extracts:write");
+    }
     for (const role of ["data-admin", "administrator"] as const) {
       expect(permissionsOf([role])).not.toContain("scenarios:write");
       expect(permissionsOf([role])).not.toContain("models:fit");

@@ -27,7 +27,12 @@ export async function signedInAs(app: Express, services: Services, roles: Role[]
 }
 
 /** Creates a person of these roles and answers the value of an Authorization header for all their rights. */
-export async function bearerOf(app: Express, services: Services, roles: Role[], permissions: Permission[] = permissionsOf(roles)) {
+export async function bearerOf(
+  app: Express,
+  services: Services,
+  roles: Role[],
+  permissions: Permission[] = permissionsOf(roles),
+) {
   const agent = await signedInAs(app, services, roles);
   const { body } = await agent.post("/api/tokens").send({ name: "test", permissions }).expect(201);
   return `Bearer ${body.token}`;

@@ -7,7 +7,11 @@ export function expectProblem(response: Response, status: number, code: string):
   expect({ status: response.status, code: response.body.code }).toEqual({ status, code });
   expect(response.headers["content-type"]).toBe("application/problem+json; charset=utf-8");
   const problem = problemSchema.strict().parse(response.body);
-  expect(problem).toMatchObject({ status, type: `urn:shelftide:problem:${code}`, requestId: response.headers["x-request-id"] });
+  expect(problem).toMatchObject({
+    status,
+    type: `urn:shelftide:problem:${code}`,
+    requestId: response.headers["x-request-id"],
+  });
   expect(problem.detail).toMatch(/\.$/);
   expect(problem.title).not.toBe("");
 }

@@ -10,7 +10,9 @@ export const trialTiming: JobTiming = { silentAfterSeconds: 3, rescueEveryMs: 1_
 
 /** Jobs whose doings can be read in the table `trial_marks`, by whichever process they ran in. */
 export async function createTrialMarks({ pool }: Services): Promise<void> {
-  await pool.query("create table trial_marks (id bigserial primary key, job uuid, process integer, mark text, at timestamptz default clock_timestamp())");
+  await pool.query(
+    "create table trial_marks (id bigserial primary key, job uuid, process integer, mark text, at timestamptz default clock_timestamp())",
+  );
 }
 
 export async function marksOf({ pool }: Services, job: string): Promise<string[]> {
@@ -18,15 +20,27 @@ export async function marksOf({ pool }: Services, job: string): Promise<string[]
   return rows.map(({ mark }) => mark);
 }
 
-async function leaveMark({ services, jobId }: Pick<JobContext<unknown>, "services" | "jobId">, mark: string): Promise<void> {
-  await services.pool.query("insert into trial_marks (job, process, mark) values ($1, $2, $3)", [jobId, process.pid, mark]);
+async function leaveMark(
+  { services, jobId }: Pick<JobContext<unknown>, "services" | "jobId">,
+  mark: string,
+): Promise<void> {
+  await services.pool.query("insert into trial_marks (job, process, mark) values ($1, $2, $3)", [
+    jobId,
+    process.pid,
+    mark,
+  ]);
 }
 
 /** Says so where two processes do the same thing at once: both need one lock of the database. */
-async function alone<Result>({ services, jobId }: Pick<JobContext<unknown>, "services" | "jobId">, work: () => Promise<Result>): Promise<Result> {
+async function alone<Result>(
+  { services, jobId }: Pick<JobContext<unknown>, "services" | "jobId">,
+  work: () => Promise<Result>,
+): Promise<Result> {
   const client = await services.pool.connect();
   try {
-    const { rows } = await client.query<{ free: boolean }>("select pg_try_advisory_lock(4711, hashtext($1)) as free", [jobId]);
+    const { rows } = await client.query<{ free: boolean }>("select pg_try_advisory_lock(4711, hashtext($1)) as free", [
+      jobId,
+    ]);
     if (!rows[0]?.free) await leaveMark({ services, jobId }, "two at once");
     return await work();
   } finally {
@@ -53,7 +67,9 @@ export const countingJob = defineJob({
     return { counted: steps };
   },
   async onGivenUp({ payload, services, error }) {
-    await services.pool.query("insert into trial_marks (mark) values ($1)", [`given up ${payload.steps} ${error.code}`]);
+    await services.pool.query("insert into trial_marks (mark) values ($1)", [
+      `given up ${payload.steps} ${error.code}`,
+    ]);
   },
 });
 
@@ -72,7 +88,9 @@ export const breakingJob = defineJob({
     if (begun < context.payload.succeedsAtTry) throw new Error("broken on purpose");
   },
   async onGivenUp({ services, error, payload }) {
-    await services.pool.query("insert into trial_marks (mark) values ($1)", [`given up ${payload.succeedsAtTry} ${error.code}`]);
+    await services.pool.query("insert into trial_marks (mark) values ($1)", [
+      `given up ${payload.succeedsAtTry} ${error.code}`,
+    ]);
   },
 });
 
@@ -86,7 +104,9 @@ export const refusingJob = defineJob({
   },
   async onGivenUp({ services, payload }) {
     await services.pool.query("insert into trial_marks (mark) values ($1)", [`given up ${payload.name}`]);
-    const { rowCount } = await services.pool.query("select 1 from trial_marks where mark = $1", [`given up ${payload.name}`]);
+    const { rowCount } = await services.pool.query("select 1 from trial_marks where mark = $1", [
+      `given up ${payload.name}`,
+    ]);
     if (rowCount === 1) throw new Error("broken on purpose");
   },
 });

@@ -9,10 +9,16 @@ const script = fileURLToPath(new URL("trial-worker.ts", import.meta.url));
 export async function startWorkerProcess({ environment }: Services): Promise<ChildProcess> {
   const variables = Object.entries(environment).map(([name, value]) => [name, String(value)]);
   const child = spawn(process.execPath, ["--import", "tsx", script], {
-    env: { PATH: process.env.PATH, AWS_SDK_JS_NODE_VERSION_SUPPORT_WARNING_DISABLED: "true", ...Object.fromEntries(variables) },
+    env: {
+      PATH: process.env.PATH,
+      AWS_SDK_JS_NODE_VERSION_SUPPORT_WARNING_DISABLED: "true",
+      ...Object.fromEntries(variables),
+    },
     stdio: ["ignore", "pipe", "inherit"],
   });
-  const ended = once(child, "exit").then(([code]) => Promise.reject(new Error(`The worker ended at its start with ${code}.`)));
+  const ended = once(child, "exit").then(([code]) =>
+    Promise.reject(new Error(`The worker ended at its start with ${code}.`)),
+  );
   // Only a start that fails is of interest here.
   ended.catch(() => undefined);
   await Promise.race([once(child.stdout, "data"), ended]);

@@ -6,7 +6,10 @@ export const PersonEntity = defineEntity({
   name: "Person",
   tableName: "people",
   properties: {
-    id: p.uuid().primary().onCreate(() => randomUUID()),
+    id: p
+      .uuid()
+      .primary()
+      .onCreate(() => randomUUID()),
     /** Kept in lower case. */
     email: p.string().length(254).unique(),
     name: p.string().length(120),
@@ -28,7 +31,10 @@ export const AccessTokenEntity = defineEntity({
   tableName: "access_tokens",
   indexes: [{ properties: ["person"] }],
   properties: {
-    id: p.uuid().primary().onCreate(() => randomUUID()),
+    id: p
+      .uuid()
+      .primary()
+      .onCreate(() => randomUUID()),
     person: () => p.manyToOne(PersonEntity).deleteRule("cascade"),
     name: p.string().length(80),
     prefix: p.string().length(16),

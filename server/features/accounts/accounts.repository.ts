@@ -42,5 +42,8 @@ export async function noteTokenUse(em: EntityManager, token: AccessToken, now: D
 
 /** Moves a session's idle limit; it brings no ended session back. */
 export async function noteLastSeen(pool: Pool, sessionId: string, nowMs: number): Promise<void> {
-  await pool.query("update user_session set sess = jsonb_set(sess::jsonb, '{lastSeenAt}', to_jsonb($2::bigint))::json where sid = $1", [sessionId, nowMs]);
+  await pool.query(
+    "update user_session set sess = jsonb_set(sess::jsonb, '{lastSeenAt}', to_jsonb($2::bigint))::json where sid = $1",
+    [sessionId, nowMs],
+  );
 }

@@ -59,4 +59,12 @@ const deleteToken = route(contract.revokeToken, async ({ params, em, caller, req
   return undefined;
 });
 
-export const accountsRoutes: readonly Route[] = [signIn, readSession, signOut, changePassword, createToken, listTokens, deleteToken];
+export const accountsRoutes: readonly Route[] = [
+  signIn,
+  readSession,
+  signOut,
+  changePassword,
+  createToken,
+  listTokens,
+  deleteToken,
+];

@@ -14,8 +14,19 @@ async function createAdministrator(email: string): Promise<string> {
     await orm.em.fork().transactional(async (em) => {
       await ensureChain(em);
       const name = email.split("@")[0] ?? email;
-      const person = await createPerson(em, { email, name, roles: ["administrator"], password, mustChangePassword: true });
-      audit(em, { personId: null, action: "person.created", subject: { kind: "person", id: person.id }, detail: { roles: person.roles } });
+      const person = await createPerson(em, {
+        email,
+        name,
+        roles: ["administrator"],
+        password,
+        mustChangePassword: true,
+      });
+      audit(em, {
+        personId: null,
+        action: "person.created",
+        subject: { kind: "person", id: person.id },
+        detail: { roles: person.roles },
+      });
     });
     return password;
   } finally {

@@ -35,7 +35,13 @@ export async function personSigningIn(em: EntityManager, services: Services, att
     requestId: attempt.requestId,
   });
   await em.flush();
-  if (!signedIn) throw new ProblemError({ status: 401, code: "wrong-credentials", detail: "The e-mail address or the password is wrong." });
+  if (!signedIn) {
+    throw new ProblemError({
+      status: 401,
+      code: "wrong-credentials",
+      detail: "The e-mail address or the password is wrong.",
+    });
+  }
   await guard.succeeded();
   return person;
 }
@@ -60,11 +66,18 @@ export async function replacePassword(em: EntityManager, services: Services, cha
     throw wrongField("wrong-password", "current", "The current password is wrong.");
   }
   await guard.succeeded();
-  if (change.current === change.next) throw wrongField("same-password", "next", "The new password is the current one. Choose another.");
+  if (change.current === change.next) {
+    throw wrongField("same-password", "next", "The new password is the current one. Choose another.");
+  }
   person.passwordHash.set(await hashPassword(change.next));
   person.passwordVersion += 1;
   person.mustChangePassword = false;
-  audit(em, { personId: person.id, action: "password.changed", subject: { kind: "person", id: person.id }, requestId: change.requestId });
+  audit(em, {
+    personId: person.id,
+    action: "password.changed",
+    subject: { kind: "person", id: person.id },
+    requestId: change.requestId,
+  });
   await em.flush();
   return person;
 }

@@ -35,10 +35,13 @@ export async function createPerson(em: EntityManager, person: NewPerson): Promis
     passwordHash: await hashPassword(person.password),
     mustChangePassword: person.mustChangePassword ?? false,
   });
-  await em.persist(row).flush().catch((error: unknown) => {
-    // Someone else was a moment quicker.
-    throw error instanceof UniqueConstraintViolationException ? taken : error;
-  });
+  await em
+    .persist(row)
+    .flush()
+    .catch((error: unknown) => {
+      // Someone else was a moment quicker.
+      throw error instanceof UniqueConstraintViolationException ? taken : error;
+    });
   return row;
 }
 

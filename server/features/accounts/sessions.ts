@@ -39,7 +39,10 @@ export function sessions(services: Services): RequestHandler {
     name: cookieName,
     secret: environment.SESSION_SECRET,
     store: new PostgresStore({
-      pool, tableName: "user_session", disableTouch: true, errorLog: (...details: unknown[]) => logger.warn({ details }, "session store"),
+      pool,
+      tableName: "user_session",
+      disableTouch: true,
+      errorLog: (...details: unknown[]) => logger.warn({ details }, "session store"),
     }),
     resave: false,
     saveUninitialized: false,
@@ -57,7 +60,9 @@ export async function callerOfSession(request: Request, services: Services): Pro
     await endSession(request);
     return undefined;
   }
-  if (nowMs - (request.session.lastSeenAt ?? 0) >= lastSeenEveryMs) await noteLastSeen(services.pool, request.sessionID, nowMs);
+  if (nowMs - (request.session.lastSeenAt ?? 0) >= lastSeenEveryMs) {
+    await noteLastSeen(services.pool, request.sessionID, nowMs);
+  }
   return {
     personId: person.id,
     name: person.name,

@@ -10,7 +10,11 @@ import type { AccessToken } from "./accounts.entities";
  */
 export function requireSession(caller: Caller): void {
   if (caller.tokenId === null) return;
-  throw new ProblemError({ status: 403, code: "session-needed", detail: "An access token cannot do this. Sign in with your password." });
+  throw new ProblemError({
+    status: 403,
+    code: "session-needed",
+    detail: "An access token cannot do this. Sign in with your password.",
+  });
 }
 
 /** A token may do at most what its maker may. @throws ProblemError 403 otherwise, naming what is too much. */

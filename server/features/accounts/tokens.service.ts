@@ -19,7 +19,11 @@ type By = { caller: Caller; requestId: string; now: Date };
  *
  * @throws ProblemError 403 where it would do more than its maker may, or a token asks for one.
  */
-export async function makeToken(em: EntityManager, wanted: NewToken, { caller, requestId, now }: By): Promise<{ row: AccessToken; token: string }> {
+export async function makeToken(
+  em: EntityManager,
+  wanted: NewToken,
+  { caller, requestId, now }: By,
+): Promise<{ row: AccessToken; token: string }> {
   requireSession(caller);
   requireOwnRights(caller, wanted.permissions);
   const { token, prefix, hash } = newToken();

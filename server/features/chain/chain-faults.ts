@@ -5,16 +5,24 @@ import type { Chain } from "@shared/contract/chain";
 type Fault = { path: keyof Chain; message: string };
 
 /** What is wrong with settings that each look right; empty where they can be used. */
-export function chainFaults(chain: Pick<Chain, "timeZone" | "locale" | "currency" | "calendar" | "weekStart">): Fault[] {
+export function chainFaults(
+  chain: Pick<Chain, "timeZone" | "locale" | "currency" | "calendar" | "weekStart">,
+): Fault[] {
   const faults: Fault[] = [];
   if (!isTimeZone(chain.timeZone)) {
     faults.push({ path: "timeZone", message: `${chain.timeZone} is no time zone. Give a name such as Europe/London.` });
   }
   if (!isLocale(chain.locale)) {
-    faults.push({ path: "locale", message: `${chain.locale} is no language tag that numbers can be written by. Give one such as en-GB.` });
+    faults.push({
+      path: "locale",
+      message: `${chain.locale} is no language tag that numbers can be written by. Give one such as en-GB.`,
+    });
   }
   if (!Intl.supportedValuesOf("currency").includes(chain.currency)) {
-    faults.push({ path: "currency", message: `${chain.currency} is no currency. Give its three letters, for example EUR.` });
+    faults.push({
+      path: "currency",
+      message: `${chain.currency} is no currency. Give its three letters, for example EUR.`,
+    });
   }
   const calendarFault = faultOfCalendar(chain);
   if (calendarFault) faults.push({ path: "weekStart", message: calendarFault });

@@ -44,7 +44,11 @@ type Change = { caller: Caller; requestId: string };
  * @throws ProblemError 422 for a time zone, locale or currency that does not exist, or a week start that does not fit
  * the calendar.
  */
-export async function changeChain(em: EntityManager, settings: Partial<Chain>, { caller, requestId }: Change): Promise<ChainRow> {
+export async function changeChain(
+  em: EntityManager,
+  settings: Partial<Chain>,
+  { caller, requestId }: Change,
+): Promise<ChainRow> {
   const row = await getChain(em);
   const before = { ...row };
   em.assign(row, settings);
@@ -54,7 +58,14 @@ export async function changeChain(em: EntityManager, settings: Partial<Chain>, {
   const changed = (Object.keys(settings) as (keyof Chain)[]).filter((key) => before[key] !== row[key]);
   if (changed.length === 0) return row;
   const detail = Object.fromEntries(changed.map((key) => [key, { from: before[key], to: row[key] }]));
-  audit(em, { personId: caller.personId, tokenId: caller.tokenId, action: "settings.changed", subject: { kind: "chain" }, detail, requestId });
+  audit(em, {
+    personId: caller.personId,
+    tokenId: caller.tokenId,
+    action: "settings.changed",
+    subject: { kind: "chain" },
+    detail,
+    requestId,
+  });
   await em.flush();
   return row;
 }

@@ -14,7 +14,11 @@ export async function checkHealth({ pool, logger }: Services): Promise<{ status:
     return { status: "ok" };
   } catch (error) {
     logger.error({ err: error }, "the database does not answer");
-    throw new ProblemError({ status: 503, code: "database-unreachable", detail: "The database cannot be reached. Try again in a moment." });
+    throw new ProblemError({
+      status: 503,
+      code: "database-unreachable",
+      detail: "The database cannot be reached. Try again in a moment.",
+    });
   } finally {
     clearTimeout(timer);
   }

@@ -10,7 +10,10 @@ export const JobEntity = defineEntity({
   tableName: "jobs",
   indexes: [{ properties: ["state", "createdAt"] }, { properties: ["subject"] }, { properties: ["singletonKey"] }],
   properties: {
-    id: p.uuid().primary().onCreate(() => randomUUID()),
+    id: p
+      .uuid()
+      .primary()
+      .onCreate(() => randomUUID()),
     kind: p.string().length(60),
     state: p.string().length(12).$type<JobState>().default("queued"),
     payload: p.json<Record<string, unknown>>(),

@@ -7,6 +7,8 @@ const readOnly: readonly Permission[] = ["read", "audit:read"];
 /** Whoever asked for a job, if they may change anything at all; and administrators. */
 export function mayCancel(caller: Caller, job: JobRow): boolean {
   if (caller.permissions.has("people:manage")) return true;
-  const changesThings = permissionSchema.options.some((permission) => !readOnly.includes(permission) && caller.permissions.has(permission));
+  const changesThings = permissionSchema.options.some(
+    (permission) => !readOnly.includes(permission) && caller.permissions.has(permission),
+  );
   return changesThings && job.createdBy?.id === caller.personId;
 }

@@ -10,7 +10,11 @@ export function findJobs(em: EntityManager, ids: readonly string[]): Promise<Job
 }
 
 /** Ends a job that waits, and asks one that runs to stop; says whether there was anything left to stop. */
-export async function requestCancel(em: EntityManager, id: string, error: { code: string; detail: string }): Promise<boolean> {
+export async function requestCancel(
+  em: EntityManager,
+  id: string,
+  error: { code: string; detail: string },
+): Promise<boolean> {
   // In one statement, since a worker may take or end the job at any moment.
   const rows: { id: string }[] = await em.execute(
     `update jobs set

@@ -18,17 +18,32 @@ export async function getJob(em: EntityManager, id: string): Promise<JobRow> {
  *
  * @throws ProblemError 403 for someone else's job, 409 for one that has ended otherwise.
  */
-export async function cancelJob(em: EntityManager, id: string, { caller, requestId }: { caller: Caller; requestId: string }): Promise<JobRow> {
+export async function cancelJob(
+  em: EntityManager,
+  id: string,
+  { caller, requestId }: { caller: Caller; requestId: string },
+): Promise<JobRow> {
   const job = await getJob(em, id);
   if (!mayCancel(caller, job)) {
-    throw new ProblemError({ status: 403, code: "not-your-job", detail: "Only the person who asked for this job, or an administrator, can stop it." });
+    throw new ProblemError({
+      status: 403,
+      code: "not-your-job",
+      detail: "Only the person who asked for this job, or an administrator, can stop it.",
+    });
   }
   if (job.state === "cancelled") return job;
   await em.transactional(async (inner) => {
     const stopped = await requestCancel(inner, id, { code: "cancelled", detail: "Cancelled on request." });
     if (!stopped) throw conflict("job-ended", "This job has ended already, so there is nothing to stop.");
     const subject = { kind: "job", id };
-    audit(inner, { personId: caller.personId, tokenId: caller.tokenId, action: "job.cancelled", subject, detail: { kind: job.kind }, requestId });
+    audit(inner, {
+      personId: caller.personId,
+      tokenId: caller.tokenId,
+      action: "job.cancelled",
+      subject,
+      detail: { kind: job.kind },
+      requestId,
+    });
   });
   return em.refreshOrFail(job);
 }
