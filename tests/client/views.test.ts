@@ -10,6 +10,7 @@ import { cautionsOf } from "@/features/drivers/view/cautions";
 import { chooseFit, chooseModel, newerCandidate } from "@/features/drivers/view/choose-model";
 import { curvePoints, factorLevels, levelLabel, referenceLevel } from "@/features/drivers/view/curve-points";
 import { driverColour, driverLabel, inLaneOrder } from "@/features/drivers/view/driver-words";
+import { plainWarning } from "@/features/drivers/view/plain-warning";
 import { elasticityAt } from "@/features/drivers/view/elasticity";
 import { medianOf, newestRegularPrice, pastWeeks } from "@/features/drivers/view/past-weeks";
 import { weekAtFraction } from "@/features/drivers/view/week-at-fraction";
@@ -135,6 +136,13 @@ describe("drivers", () => {
     expect(newerCandidate(models, models[0])).toBeUndefined();
     expect(chooseFit(models[0], "S2")?.store).toBe("S2");
     expect(chooseFit(models[0], "S9")?.store).toBe("S1");
+  });
+
+  it("warn in the words of the page", () => {
+    expect(plainWarning('Term "yearFraction": the data show no effect; its penalty went to its limit.')).toBe(
+      "Week of year: its weeks show no effect, and so it is drawn.",
+    );
+    expect(plainWarning("It was sold out often.")).toBe("It was sold out often.");
   });
 
   it("carry what is to be distrusted, in sentences", () => {

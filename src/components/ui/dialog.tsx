@@ -1,7 +1,6 @@
 import { X } from "lucide-react";
 import { useEffect, useId, useRef } from "react";
 import type { ReactNode } from "react";
-import { IconButton } from "./icon-button";
 
 type DialogProps = {
   open: boolean;
@@ -14,7 +13,8 @@ type DialogProps = {
 
 /**
  * The browser's own modal dialog: it keeps focus inside, closes on Escape and gives focus back. (The usual
- * library adds a style element to lock scrolling, which our content security policy refuses.)
+ * library adds a style element to lock scrolling, which our content security policy refuses.) It lies above
+ * everything, also above popovers: keep comboboxes, terms and hints out of it.
  */
 export const Dialog = ({ open, onClose, title, children, actions }: DialogProps) => {
   const element = useRef<HTMLDialogElement>(null);
@@ -34,17 +34,21 @@ export const Dialog = ({ open, onClose, title, children, actions }: DialogProps)
       className="m-auto w-[min(34rem,calc(100vw-2rem))] rounded-lg border border-hairline bg-raised p-0 text-ink shadow-raised backdrop:bg-black/40"
     >
       {open && (
-        <div className="p-5">
-          <div className="mb-3 flex items-start justify-between gap-4">
-            <h2 id={titleId} className="text-lg font-semibold">
-              {title}
-            </h2>
-            <IconButton label="Close" onClick={onClose} className="-mt-1 -mr-2">
-              <X />
-            </IconButton>
-          </div>
+        <div className="relative p-5">
+          <h2 id={titleId} className="mb-3 pr-8 text-lg font-semibold">
+            {title}
+          </h2>
           {children}
           {actions && <div className="mt-5 flex flex-wrap justify-end gap-3">{actions}</div>}
+          {/* Last, so that the dialog opens on what it asks. No hint: its own Escape would come before the dialog's. */}
+          <button
+            type="button"
+            aria-label="Close"
+            onClick={onClose}
+            className="absolute top-3.5 right-3 inline-flex size-8 items-center justify-center rounded-sm text-muted hover:bg-hover hover:text-ink"
+          >
+            <X className="size-4" aria-hidden="true" />
+          </button>
         </div>
       )}
     </dialog>

@@ -15,7 +15,7 @@ export const DriverChoice = ({ products, stores, product, store, onProduct, onSt
   <>
     <Combobox
       label="Product"
-      className="w-72 max-w-full"
+      className="w-80 max-w-full"
       options={products.map(({ code, name, categoryName }) => ({ value: code, label: name, detail: categoryName }))}
       value={product}
       onChange={onProduct}

@@ -1,6 +1,7 @@
 import type { FitSummary, Model } from "@shared/contract/drivers";
 import { countOf } from "@/lib/format/number";
 import { driverLabel } from "./driver-words";
+import { plainWarning } from "./plain-warning";
 
 /** What to distrust in a fit, each as a sentence. */
 export const cautionsOf = (model: Model, fit: FitSummary): string[] => [
@@ -12,6 +13,6 @@ export const cautionsOf = (model: Model, fit: FitSummary): string[] => [
           `${countOf(fit.priceLearning.regularPrices, "regular price")}: too little to trust its elasticity.`,
       ]),
   ...fit.straightLines.map(({ driver, reason }) => `${driverLabel(driver)}: ${reason}`),
-  ...fit.warnings,
+  ...fit.warnings.map(plainWarning),
   ...(model.notForPlans ? [model.notForPlans] : []),
 ];

@@ -59,8 +59,8 @@ export const ExtractActions = ({ extract }: { extract: Extract }) => {
         }
       >
         <p>
-          What its rows replaced is put back, and rows it added are taken out. The file itself is kept, and can be loaded
-          again later. Models already fitted stay as they are until they are fitted anew.
+          What its rows replaced is put back, and rows it added are taken out. The file itself is kept; to load
+          its rows again, upload it again. Models already fitted stay as they are until they are fitted anew.
         </p>
       </Dialog>
     </>

@@ -44,7 +44,7 @@ export const StoresPage = () => {
           <>
             <Combobox
               label="Product"
-              className="w-64 max-w-full"
+              className="w-80 max-w-full"
               options={(products.data ?? []).map(({ code, name, categoryName }) => ({ value: code, label: name, detail: categoryName }))}
               value={product || null}
               onChange={address.setProduct}
