@@ -1,4 +1,5 @@
 import { openDataFolder } from "./data-folder.mjs";
+import { recordPrograms } from "./run-program.mjs";
 import { readSettings } from "./settings.mjs";
 import { readState } from "./state.mjs";
 import { takeTurn, watchLauncher } from "./turn.mjs";
@@ -14,6 +15,7 @@ export async function openInstallation({ context, command, say }) {
   const state = readState(folder);
   const turn = await takeTurn({ folder, command, say });
   context.onClose(() => turn.giveBack());
+  recordPrograms(turn);
   void watchLauncher({ turn: turn.turn, context });
   return { context, turn, settings, state, folder, say };
 }

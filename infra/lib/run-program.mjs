@@ -4,6 +4,19 @@ import { Problem, Stopped } from "./problem.mjs";
 // npm, asked to end, takes a minute to tidy up what it had begun.
 const endGraceMs = 5_000;
 
+/** @type {Pick<import("./turn.mjs").TurnHandle, "addChild" | "removeChild"> | null} */
+let record = null;
+let stepCount = 0;
+
+/**
+ * From now on the programs that run stand in the turn's record, so that none outlives a command that is ended by
+ * force: two npm at once would spoil each other's work.
+ * @param {import("./turn.mjs").TurnHandle} turn
+ */
+export function recordPrograms(turn) {
+  record = turn;
+}
+
 /**
  * @typedef {object} RunOptions
  * @property {string} program
@@ -27,6 +40,8 @@ export function runProgram({ program, args, env = process.env, cwd, show = false
     const child = spawn(program, args, {
       env, cwd, detached: true, stdio: ["ignore", show ? "inherit" : "pipe", show ? "inherit" : "pipe"],
     });
+    const step = `unfinished step ${(stepCount += 1)}`;
+    if (child.pid !== undefined) record?.addChild(step, child.pid);
     let output = "";
     let standardOutput = "";
     child.stdout?.on("data", (chunk) => {
@@ -42,6 +57,7 @@ export function runProgram({ program, args, env = process.env, cwd, show = false
     };
     const ended = () => {
       clearTimeout(force);
+      record?.removeChild(step);
       stopping?.removeEventListener("abort", end);
     };
     stopping?.addEventListener("abort", end, { once: true });

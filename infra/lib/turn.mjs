@@ -90,7 +90,10 @@ export function heldSentence({ command, address, owner }) {
  * @param {Turn} turn
  */
 function turnHandle(path, turn) {
-  const write = () => writePrivateFile(path, JSON.stringify(turn, null, 2));
+  let isHeld = true;
+  const write = () => {
+    if (isHeld) writePrivateFile(path, JSON.stringify(turn, null, 2));
+  };
   return {
     turn,
     /** @param {string} address */
@@ -114,6 +117,7 @@ function turnHandle(path, turn) {
       write();
     },
     giveBack() {
+      isHeld = false;
       rmSync(path, { force: true });
     },
   };
