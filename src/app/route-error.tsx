@@ -23,7 +23,11 @@ export const RouteError = ({ inShell = false }: { inShell?: boolean }) => {
   const status = statusOf(error);
   const body =
     status === 404 ? (
-      <EmptyState heading="h1" title={titleOf(404)} action={<LinkButton to={paths.home.href()}>Go to the start</LinkButton>}>
+      <EmptyState
+        heading="h1"
+        title={titleOf(404)}
+        action={<LinkButton to={paths.home.href()}>Go to the start</LinkButton>}
+      >
         It may have been removed, or the link has lost a part on its way.
       </EmptyState>
     ) : (

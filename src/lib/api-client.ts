@@ -4,15 +4,25 @@ import { addressOf } from "./address";
 
 type AnyEndpoint = Endpoint;
 /** Asks for a part only where the endpoint has one. */
-type Part<Name extends string, Value> = [Value] extends [undefined] ? { [K in Name]?: undefined } : { [K in Name]: Value };
-type OptionalPart<Name extends string, Value> = [Value] extends [undefined] ? { [K in Name]?: undefined } : { [K in Name]?: Value };
+type Part<Name extends string, Value> = [Value] extends [undefined]
+  ? { [K in Name]?: undefined }
+  : { [K in Name]: Value };
+type OptionalPart<Name extends string, Value> = [Value] extends [undefined]
+  ? { [K in Name]?: undefined }
+  : { [K in Name]?: Value };
 
 export type CallOptions<E extends AnyEndpoint> = Part<"params", ParamsOf<E>> &
   OptionalPart<"query", QueryOf<E>> &
   Part<"body", BodyOf<E>> & { headers?: Record<string, string>; signal?: AbortSignal };
 
 /** The same parts once the endpoint's types have done their work. */
-type SentParts = { params?: object; query?: object; body?: unknown; headers?: Record<string, string>; signal?: AbortSignal };
+type SentParts = {
+  params?: object;
+  query?: object;
+  body?: unknown;
+  headers?: Record<string, string>;
+  signal?: AbortSignal;
+};
 
 export type Answer<E extends AnyEndpoint> = { data: ResponseOf<E>; status: number; headers: Headers };
 
@@ -44,7 +54,11 @@ async function send(endpoint: AnyEndpoint, options: SentParts): Promise<Response
     return await fetch(endpointAddress(endpoint, options), {
       method: endpoint.method,
       credentials: "same-origin",
-      headers: { accept: "application/json", ...(hasBody && { "content-type": "application/json" }), ...options.headers },
+      headers: {
+        accept: "application/json",
+        ...(hasBody && { "content-type": "application/json" }),
+        ...options.headers,
+      },
       body: hasBody ? JSON.stringify(options.body) : undefined,
       signal: options.signal,
     });

@@ -20,7 +20,10 @@ export const paths = {
     path: "/scenarios/new",
     href: (view: { product?: string; store?: string } = {}) => addressOf("/scenarios/new", view),
   },
-  scenario: { path: "/scenarios/:scenarioId", href: (scenarioId: string) => `/scenarios/${encodeURIComponent(scenarioId)}` },
+  scenario: {
+    path: "/scenarios/:scenarioId",
+    href: (scenarioId: string) => `/scenarios/${encodeURIComponent(scenarioId)}`,
+  },
 } as const;
 
 /** A return address is followed only within this site. */

@@ -45,7 +45,13 @@ describe("the sum column", () => {
 
   it("shows the total's interval and each part's units with their sign", () => {
     renderInPage(
-      <SumColumn title="From base to plan" parts={parts} interval={interval} format={formatNumber} formatSigned={(units) => formatNumber(units, { signed: true })} />,
+      <SumColumn
+        title="From base to plan"
+        parts={parts}
+        interval={interval}
+        format={formatNumber}
+        formatSigned={(units) => formatNumber(units, { signed: true })}
+      />,
     );
     expect(screen.getByText("−700")).toBeTruthy();
     expect(screen.getByText("+1,200")).toBeTruthy();
@@ -67,7 +73,9 @@ describe("weeks", () => {
   ];
 
   it("leave a gap where nothing was recorded", () => {
-    renderInPage(<WeekBars title="Weeks" past={past} plan={plan} selected={null} onSelect={vi.fn()} format={formatNumber} />);
+    renderInPage(
+      <WeekBars title="Weeks" past={past} plan={plan} selected={null} onSelect={vi.fn()} format={formatNumber} />,
+    );
     expect(document.querySelectorAll("rect[data-week]")).toHaveLength(2);
     expect(document.querySelector('rect[data-week="2026-05-18"]')).toBeNull();
   });
@@ -89,7 +97,16 @@ describe("weeks", () => {
 
   it("are chosen by keyboard among the plan's weeks", async () => {
     const onSelect = vi.fn();
-    renderInPage(<WeekBars title="Weeks" past={past} plan={plan} selected="2026-06-08" onSelect={onSelect} format={formatNumber} />);
+    renderInPage(
+      <WeekBars
+        title="Weeks"
+        past={past}
+        plan={plan}
+        selected="2026-06-08"
+        onSelect={onSelect}
+        format={formatNumber}
+      />,
+    );
     screen.getByRole("radio", { name: "wk 24" }).focus();
     await userEvent.keyboard("{ArrowRight}");
     expect(onSelect).toHaveBeenCalledWith("2026-06-15");
@@ -105,7 +122,17 @@ describe("a driver of levels", () => {
 
   it("is a group of radio buttons, of which those never learnt cannot be chosen", async () => {
     const onChange = vi.fn();
-    renderInPage(<FactorLane driver="promotion" label="Promotion" title="Demand by promotion" levels={levels} value="none" baseline="none" onChange={onChange} />);
+    renderInPage(
+      <FactorLane
+        driver="promotion"
+        label="Promotion"
+        title="Demand by promotion"
+        levels={levels}
+        value="none"
+        baseline="none"
+        onChange={onChange}
+      />,
+    );
     expect(screen.getByRole<HTMLInputElement>("radio", { name: "Both, not learnt" }).disabled).toBe(true);
     screen.getByRole("radio", { name: "None" }).focus();
     await userEvent.keyboard("{ArrowRight}");
@@ -113,7 +140,17 @@ describe("a driver of levels", () => {
   });
 
   it("draws each level's bar inside its band", () => {
-    renderInPage(<FactorLane driver="promotion" label="Promotion" title="Demand by promotion" levels={levels} value="feature" baseline="none" onChange={vi.fn()} />);
+    renderInPage(
+      <FactorLane
+        driver="promotion"
+        label="Promotion"
+        title="Demand by promotion"
+        levels={levels}
+        value="feature"
+        baseline="none"
+        onChange={vi.fn()}
+      />,
+    );
     const level = document.querySelector('[data-level="feature"]');
     const band = level?.querySelector('[data-part="band"]');
     const bar = number(level?.querySelector('[data-part="bar"]'), "y1");
@@ -122,8 +159,19 @@ describe("a driver of levels", () => {
   });
 
   it("has stores in the order of their estimates within each level", () => {
-    const dots = [1.5, 1.2, 1.9].map((estimate, index) => ({ id: `s${index}`, name: "", group: 1 as const, estimate, lower: estimate, upper: estimate }));
-    const { columns } = dotLayout({ levels: [{ value: "feature", label: "Feature", dots, chain: 1.4 }], width: 400, height: 300 });
+    const dots = [1.5, 1.2, 1.9].map((estimate, index) => ({
+      id: `s${index}`,
+      name: "",
+      group: 1 as const,
+      estimate,
+      lower: estimate,
+      upper: estimate,
+    }));
+    const { columns } = dotLayout({
+      levels: [{ value: "feature", label: "Feature", dots, chain: 1.4 }],
+      width: 400,
+      height: 300,
+    });
     expect(columns[0].dots.map(({ id }) => id)).toEqual(["s1", "s0", "s2"]);
     expect(columns[0].dots[0].x).toBeLessThan(columns[0].dots[1].x);
   });
@@ -150,15 +198,44 @@ describe("many stores on one picture", () => {
   });
 
   it("draw what lies outside that range dashed", () => {
-    renderInPage(<CurveOverlay title="All stores" xLabel="Price" curves={curves} chain={null} domain={[1, 2]} anchor={1.5} format={String} highlighted={null} onHighlight={vi.fn()} />);
+    renderInPage(
+      <CurveOverlay
+        title="All stores"
+        xLabel="Price"
+        curves={curves}
+        chain={null}
+        domain={[1, 2]}
+        anchor={1.5}
+        format={String}
+        highlighted={null}
+        onHighlight={vi.fn()}
+      />,
+    );
     const dashed = (id: string) => document.querySelectorAll(`[data-curve="${id}"] path[stroke-dasharray]`).length;
     expect([dashed("Ashgill"), dashed("Yarrowby")]).toEqual([2, 0]);
   });
 
   it("name the store under the pointer and choose it when pressed", () => {
     const onHighlight = vi.fn();
-    renderInPage(<CurveOverlay title="All stores" xLabel="Price" curves={curves} chain={null} domain={[1, 2]} anchor={1.5} format={String} highlighted={null} onHighlight={onHighlight} />);
-    const geometry = overlayGeometry({ width: 720, height: 420, domain: [1, 2], curves: curves.map(({ points }) => points) });
+    renderInPage(
+      <CurveOverlay
+        title="All stores"
+        xLabel="Price"
+        curves={curves}
+        chain={null}
+        domain={[1, 2]}
+        anchor={1.5}
+        format={String}
+        highlighted={null}
+        onHighlight={onHighlight}
+      />,
+    );
+    const geometry = overlayGeometry({
+      width: 720,
+      height: 420,
+      domain: [1, 2],
+      curves: curves.map(({ points }) => points),
+    });
     const at = {
       clientX: geometry.margin.left + geometry.x.toPixel(1.25),
       clientY: geometry.margin.top + geometry.y.toPixel((1.25 / 1.5) ** -3),
@@ -182,7 +259,10 @@ describe("small marks", () => {
 
   it("raise a rug's stroke where weeks share a value", () => {
     const strokes = rugStrokes([1.5, 1.5, 1.5, 1.5, 1.2], linearScale({ domain: [1, 2], range: [0, 400] }));
-    expect(strokes.map(({ place, count }) => [place, count])).toEqual([[200, 4], [80, 1]]);
+    expect(strokes.map(({ place, count }) => [place, count])).toEqual([
+      [200, 4],
+      [80, 1],
+    ]);
     expect(strokes[0].height).toBeGreaterThan(strokes[1].height);
   });
 });

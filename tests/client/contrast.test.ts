@@ -3,9 +3,11 @@ import { describe, expect, it } from "vitest";
 
 /** Tokens of src/styles/tokens.css by name, light and dark. */
 const tokens = new Map(
-  [...readFileSync("src/styles/tokens.css", "utf8").matchAll(/--([\w-]+): light-dark\((#[0-9a-f]{6}), (#[0-9a-f]{6})\)/g)].map(
-    ([, name, light, dark]) => [name, { light, dark }],
-  ),
+  [
+    ...readFileSync("src/styles/tokens.css", "utf8").matchAll(
+      /--([\w-]+): light-dark\((#[0-9a-f]{6}), (#[0-9a-f]{6})\)/g,
+    ),
+  ].map(([, name, light, dark]) => [name, { light, dark }]),
 );
 
 type Mode = "light" | "dark";
@@ -17,7 +19,8 @@ const token = (name: string, mode: Mode): string => {
   return found[mode];
 };
 
-const channels = (colour: string) => [1, 3, 5].map((start) => Number.parseInt(colour.slice(start, start + 2), 16) / 255);
+const channels = (colour: string) =>
+  [1, 3, 5].map((start) => Number.parseInt(colour.slice(start, start + 2), 16) / 255);
 
 const linear = (channel: number) => (channel <= 0.04045 ? channel / 12.92 : ((channel + 0.055) / 1.055) ** 2.4);
 
@@ -44,7 +47,10 @@ const groups = [1, 2, 3, 4, 5, 6];
 
 /** Text and the ground it stands on: 4.5 to 1. */
 const texts: [string, string][] = [
-  ...["paper", "sheet", "raised", "hover"].flatMap((ground): [string, string][] => [["ink", ground], ["muted", ground]]),
+  ...["paper", "sheet", "raised", "hover"].flatMap((ground): [string, string][] => [
+    ["ink", ground],
+    ["muted", ground],
+  ]),
   ["accent", "sheet"],
   ["accent", "accent-soft"],
   ["accent", "paper"],
@@ -91,8 +97,16 @@ describe.each(modes)("in the %s theme", (mode) => {
 
 /** Dichromatic vision: Viénot, Brettel & Mollon, Color Research and Application 24 (1999) 243-252, on linear RGB. */
 const dichromat: Record<"protan" | "deutan", number[][]> = {
-  protan: [[0.11238, 0.88762, 0], [0.11238, 0.88762, 0], [0.00401, -0.00401, 1]],
-  deutan: [[0.29275, 0.70725, 0], [0.29275, 0.70725, 0], [-0.02234, 0.02234, 1]],
+  protan: [
+    [0.11238, 0.88762, 0],
+    [0.11238, 0.88762, 0],
+    [0.00401, -0.00401, 1],
+  ],
+  deutan: [
+    [0.29275, 0.70725, 0],
+    [0.29275, 0.70725, 0],
+    [-0.02234, 0.02234, 1],
+  ],
 };
 
 const lab = (rgb: number[]) => {
@@ -107,7 +121,14 @@ const lab = (rgb: number[]) => {
 
 const seenBy = (colour: string, kind: keyof typeof dichromat) => {
   const rgb = channels(colour).map(linear);
-  return lab(dichromat[kind].map((row) => Math.max(0, row.reduce((sum, weight, index) => sum + weight * rgb[index], 0))));
+  return lab(
+    dichromat[kind].map((row) =>
+      Math.max(
+        0,
+        row.reduce((sum, weight, index) => sum + weight * rgb[index], 0),
+      ),
+    ),
+  );
 };
 
 const apart = (a: number[], b: number[]) => Math.hypot(...a.map((value, index) => value - b[index]));
@@ -118,14 +139,21 @@ describe.each(modes)("for the colour-blind, in the %s theme", (mode) => {
     const names = ["price", "week", "temperature", "promotion"];
     for (const [index, one] of names.entries()) {
       for (const other of names.slice(index + 1)) {
-        const distance = apart(seenBy(token(`driver-${one}`, mode), kind), seenBy(token(`driver-${other}`, mode), kind));
+        const distance = apart(
+          seenBy(token(`driver-${one}`, mode), kind),
+          seenBy(token(`driver-${other}`, mode), kind),
+        );
         expect(distance, `${one} and ${other}`).toBeGreaterThan(8);
       }
     }
   });
 
   it.each(["protan", "deutan"] as const)("the first three groups of stores stay apart to %s eyes", (kind) => {
-    for (const [one, other] of [[1, 2], [1, 3], [2, 3]]) {
+    for (const [one, other] of [
+      [1, 2],
+      [1, 3],
+      [2, 3],
+    ]) {
       const distance = apart(seenBy(token(`group-${one}`, mode), kind), seenBy(token(`group-${other}`, mode), kind));
       expect(distance, `${one} and ${other}`).toBeGreaterThan(8);
     }

@@ -27,8 +27,19 @@ const Lane = (props: Partial<DriverLaneProps>) => {
   };
   return (
     <DriverLane
-      driver="price" label="Price" title="Demand by price" points={points} seen={seen} unseen={[[1, 1.15]]} steps={steps} value={value}
-      baseline={1.79} format={(price) => `€${price.toFixed(2)}`} parse={parseNumber} {...props} onChange={onChange}
+      driver="price"
+      label="Price"
+      title="Demand by price"
+      points={points}
+      seen={seen}
+      unseen={[[1, 1.15]]}
+      steps={steps}
+      value={value}
+      baseline={1.79}
+      format={(price) => `€${price.toFixed(2)}`}
+      parse={parseNumber}
+      {...props}
+      onChange={onChange}
     />
   );
 };
@@ -54,8 +65,13 @@ describe("a driver's lane", () => {
 
   it("draws the line itself through the same scales", () => {
     renderInPage(<Lane />);
-    const line = [...document.querySelectorAll("path")].find((path) => path.getAttribute("stroke") === "var(--driver)" && path.getAttribute("d")?.startsWith("M0,"));
-    const places = [...(line?.getAttribute("d") ?? "").matchAll(/[ML]([\d.]+),([\d.]+)/g)].map(([, x, y]) => [Number(x), Number(y)]);
+    const line = [...document.querySelectorAll("path")].find(
+      (path) => path.getAttribute("stroke") === "var(--driver)" && path.getAttribute("d")?.startsWith("M0,"),
+    );
+    const places = [...(line?.getAttribute("d") ?? "").matchAll(/[ML]([\d.]+),([\d.]+)/g)].map(([, x, y]) => [
+      Number(x),
+      Number(y),
+    ]);
     expect(places).toHaveLength(points.length);
     points.forEach((point, index) => {
       expect(places[index][0]).toBeCloseTo(geometry.x.toPixel(point.x), 2);
@@ -106,7 +122,11 @@ describe("a driver's lane", () => {
     const onChange = vi.fn();
     const onCommit = vi.fn();
     renderInPage(<Lane onChange={onChange} onCommit={onCommit} />);
-    const at = (price: number) => ({ pointerId: 1, button: 0, clientX: geometry.margin.left + geometry.x.toPixel(price) });
+    const at = (price: number) => ({
+      pointerId: 1,
+      button: 0,
+      clientX: geometry.margin.left + geometry.x.toPixel(price),
+    });
     fireEvent.pointerDown(slider(), at(1.5));
     fireEvent.pointerMove(slider(), at(1.43));
     fireEvent.pointerMove(slider(), at(1.431));

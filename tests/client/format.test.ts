@@ -43,7 +43,11 @@ describe("numbers", () => {
   });
 
   it("count in the singular and the plural", () => {
-    expect([countOf(1, "row"), countOf(2316, "row"), countOf(0, "store is", "stores are")]).toEqual(["1 row", "2,316 rows", "0 stores are"]);
+    expect([countOf(1, "row"), countOf(2316, "row"), countOf(0, "store is", "stores are")]).toEqual([
+      "1 row",
+      "2,316 rows",
+      "0 stores are",
+    ]);
   });
 });
 
@@ -72,7 +76,11 @@ describe("percents, money, temperatures and sizes", () => {
   });
 
   it("write sizes in decimal units", () => {
-    expect([formatBytes(812), formatBytes(12_400_000), formatBytes(2e9)]).toEqual([`812${thin}bytes`, `12.4${thin}MB`, `2.0${thin}GB`]);
+    expect([formatBytes(812), formatBytes(12_400_000), formatBytes(2e9)]).toEqual([
+      `812${thin}bytes`,
+      `12.4${thin}MB`,
+      `2.0${thin}GB`,
+    ]);
   });
 });
 
@@ -93,7 +101,13 @@ describe("days and weeks", () => {
   });
 
   it("left to wait are as precise as they deserve", () => {
-    expect([3, 42, 70, 200, 9000].map(formatDuration)).toEqual(["a few seconds", "40 seconds", "a minute", "3 minutes", "3 hours"]);
+    expect([3, 42, 70, 200, 9000].map(formatDuration)).toEqual([
+      "a few seconds",
+      "40 seconds",
+      "a minute",
+      "3 minutes",
+      "3 hours",
+    ]);
   });
 
   it("left to wait follow the pace since the work was first seen", () => {

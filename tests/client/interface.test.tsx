@@ -20,7 +20,13 @@ type Row = { id: string; name: string; units: number | null };
 
 const columns: TableColumn<Row>[] = [
   { id: "name", header: "Store", value: (row) => row.name },
-  { id: "units", header: "Units", value: (row) => row.units, align: "right", total: (rows) => `sum ${sumOf(rows, (row) => row.units)}` },
+  {
+    id: "units",
+    header: "Units",
+    value: (row) => row.units,
+    align: "right",
+    total: (rows) => `sum ${sumOf(rows, (row) => row.units)}`,
+  },
 ];
 const rows: Row[] = [
   { id: "a", name: "Store 10", units: 3 },
@@ -28,7 +34,11 @@ const rows: Row[] = [
   { id: "c", name: "Ashgill", units: 40 },
 ];
 
-const shownNames = () => screen.getAllByRole("row").slice(1).map((row) => within(row).queryAllByRole("cell")[0]?.textContent);
+const shownNames = () =>
+  screen
+    .getAllByRole("row")
+    .slice(1)
+    .map((row) => within(row).queryAllByRole("cell")[0]?.textContent);
 
 describe("a table", () => {
   it("sorts numbers by size with missing ones last either way, and says how it is sorted", async () => {
@@ -45,12 +55,28 @@ describe("a table", () => {
   });
 
   it("sorts names as people do, nine before ten", () => {
-    renderInPage(<DataTable caption="Stores" rows={rows} columns={columns} rowKey={(row) => row.id} initialSort={{ column: "name", descending: false }} />);
+    renderInPage(
+      <DataTable
+        caption="Stores"
+        rows={rows}
+        columns={columns}
+        rowKey={(row) => row.id}
+        initialSort={{ column: "name", descending: false }}
+      />,
+    );
     expect(shownNames().slice(0, 3)).toEqual(["Ashgill", "Store 9", "Store 10"]);
   });
 
   it("totals what it shows, without the row that leads", () => {
-    renderInPage(<DataTable caption="Stores" rows={rows} columns={columns} rowKey={(row) => row.id} leadRow={{ id: "chain", name: "Chain", units: 1000 }} />);
+    renderInPage(
+      <DataTable
+        caption="Stores"
+        rows={rows}
+        columns={columns}
+        rowKey={(row) => row.id}
+        leadRow={{ id: "chain", name: "Chain", units: 1000 }}
+      />,
+    );
     expect(screen.getByText("sum 43")).toBeTruthy();
     expect(shownNames()[0]).toBe("Chain");
   });
@@ -59,7 +85,11 @@ describe("a table", () => {
     // Nothing has a size here; rows in view are told from the height of what scrolls.
     vi.spyOn(Element.prototype, "clientHeight", "get").mockReturnValue(600);
     vi.spyOn(Element.prototype, "clientWidth", "get").mockReturnValue(800);
-    const many = Array.from({ length: 5000 }, (_, index) => ({ id: String(index), name: `Store ${index}`, units: index }));
+    const many = Array.from({ length: 5000 }, (_, index) => ({
+      id: String(index),
+      name: `Store ${index}`,
+      units: index,
+    }));
     renderInPage(<DataTable caption="Stores" rows={many} columns={columns} rowKey={(row) => row.id} />);
     expect(screen.getByRole("table").getAttribute("aria-rowcount")).toBe("5001");
     const drawn = document.querySelectorAll("tr[data-row]").length;
@@ -152,7 +182,11 @@ describe("fields, states and words", () => {
 
   it("a busy button keeps its focus and takes no second press", async () => {
     const onClick = vi.fn();
-    renderInPage(<Button busy onClick={onClick}>Load</Button>);
+    renderInPage(
+      <Button busy onClick={onClick}>
+        Load
+      </Button>,
+    );
     const button = screen.getByRole("button", { name: "Load" });
     button.focus();
     await userEvent.keyboard("{Enter}");

@@ -38,7 +38,9 @@ describe("scales", () => {
   });
 
   it("refuse a log domain that reaches zero", () => {
-    expect(() => logScale({ domain: [0, 2], range: [0, 1] })).toThrow("A log scale needs a domain above zero; got 0 to 2.");
+    expect(() => logScale({ domain: [0, 2], range: [0, 1] })).toThrow(
+      "A log scale needs a domain above zero; got 0 to 2.",
+    );
   });
 
   it("put a domain without width in the middle", () => {
@@ -154,7 +156,10 @@ describe("a curve as drawn", () => {
   it("is found under a pointer by its height there, within reach only", () => {
     const x = linearScale({ domain: [1, 4], range: [0, 300] });
     const y = logScale({ domain: [0.25, 4], range: [200, 0] });
-    const curves = [{ id: "low", points }, { id: "flat", points: points.map((point) => ({ ...point, estimate: 3 })) }];
+    const curves = [
+      { id: "low", points },
+      { id: "flat", points: points.map((point) => ({ ...point, estimate: 3 })) },
+    ];
     const at = (value: number) => ({ x: x.toPixel(2), y: y.toPixel(value) });
     expect(nearestCurve(curves, at(1.05), { x, y })).toBe("low");
     expect(nearestCurve(curves, at(2.9), { x, y })).toBe("flat");
@@ -178,18 +183,27 @@ describe("what was not seen", () => {
 
 describe("the height of a picture of multipliers", () => {
   it("holds one and every estimate", () => {
-    const [low, high] = ratioDomain([{ estimate: 1.6, lower: 1.5, upper: 1.7 }, { estimate: 2.4, lower: 2.2, upper: 2.6 }]);
+    const [low, high] = ratioDomain([
+      { estimate: 1.6, lower: 1.5, upper: 1.7 },
+      { estimate: 2.4, lower: 2.2, upper: 2.6 },
+    ]);
     expect(low).toBeLessThan(1);
     expect(high).toBeGreaterThan(2.4);
   });
 
   it("is not set by a band that runs away", () => {
-    const [, high] = ratioDomain([{ estimate: 1, lower: 0.9, upper: 1.1 }, { estimate: 1.5, lower: 0.01, upper: 1e6 }]);
+    const [, high] = ratioDomain([
+      { estimate: 1, lower: 0.9, upper: 1.1 },
+      { estimate: 1.5, lower: 0.01, upper: 1e6 },
+    ]);
     expect(high).toBeLessThan(3);
   });
 
   it("does not blow up a driver that does nothing", () => {
-    const [low, high] = ratioDomain([{ estimate: 1, lower: 1, upper: 1 }, { estimate: 1.001, lower: 1.001, upper: 1.001 }]);
+    const [low, high] = ratioDomain([
+      { estimate: 1, lower: 1, upper: 1 },
+      { estimate: 1.001, lower: 1.001, upper: 1.001 },
+    ]);
     expect(high / low).toBeGreaterThan(1.2);
   });
 });

@@ -10,7 +10,12 @@ import { renderInPage } from "./support/render";
 afterEach(() => vi.unstubAllGlobals());
 
 const person: Session["person"] = {
-  id: "0b7e3a44-3b1b-4a8e-9a0a-000000000001", email: "ada@larkmoor.example", name: "Ada Kale", roles: ["planner"], categories: [], mustChangePassword: false,
+  id: "0b7e3a44-3b1b-4a8e-9a0a-000000000001",
+  email: "ada@larkmoor.example",
+  name: "Ada Kale",
+  roles: ["planner"],
+  categories: [],
+  mustChangePassword: false,
 };
 const session: Session = { person, permissions: ["read"], by: "session" };
 
@@ -21,7 +26,9 @@ const Page = () => {
 
 describe("signing out", () => {
   it("tells the page at once and forgets what the person has read", async () => {
-    answerRequests((_address, options) => (options.method === "DELETE" ? { status: 204 } : { status: 200, body: session }));
+    answerRequests((_address, options) =>
+      options.method === "DELETE" ? { status: 204 } : { status: 200, body: session },
+    );
     const { queryClient } = renderInPage(<Page />);
     queryClient.setQueryData(["sales", "P1", "S1"], [1, 2, 3]);
     await userEvent.click(await screen.findByRole("button", { name: "AK: account of Ada Kale" }));

@@ -9,7 +9,14 @@ import { renderInPage } from "./support/render";
 afterEach(() => vi.unstubAllGlobals());
 
 const session = {
-  person: { id: "0b7e3a44-3b1b-4a8e-9a0a-000000000001", email: "ada@larkmoor.example", name: "Ada Kale", roles: ["planner"], categories: [], mustChangePassword: false },
+  person: {
+    id: "0b7e3a44-3b1b-4a8e-9a0a-000000000001",
+    email: "ada@larkmoor.example",
+    name: "Ada Kale",
+    roles: ["planner"],
+    categories: [],
+    mustChangePassword: false,
+  },
   permissions: ["read"],
   by: "session",
 };
@@ -27,7 +34,10 @@ describe("signing in", () => {
     const { queryClient } = renderInPage(<SignInForm onSignedIn={onSignedIn} />);
     await fillIn();
     await waitFor(() => expect(onSignedIn).toHaveBeenCalled());
-    expect(JSON.parse(String(asked.mock.calls[0][1]?.body))).toEqual({ email: "ada@larkmoor.example", password: "a long password" });
+    expect(JSON.parse(String(asked.mock.calls[0][1]?.body))).toEqual({
+      email: "ada@larkmoor.example",
+      password: "a long password",
+    });
     expect(queryClient.getQueryData(sessionQuery().queryKey)).toMatchObject({ person: { name: "Ada Kale" } });
   });
 

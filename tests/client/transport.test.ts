@@ -30,15 +30,26 @@ describe("a request", () => {
   });
 
   it("gives what the contract says", async () => {
-    answerRequests(() => ({ status: 200, body: { items: [{ code: "S01", name: "Ashgill", region: "coast", opened: null, closed: null }] } }));
+    answerRequests(() => ({
+      status: 200,
+      body: { items: [{ code: "S01", name: "Ashgill", region: "coast", opened: null, closed: null }] },
+    }));
     expect((await call(listStores, {})).items[0].name).toBe("Ashgill");
   });
 
   it("turns problem details into a typed error with everything they say", async () => {
-    answerRequests(() => refusal(422, "The name is missing.", { code: "invalid-request", errors: [{ path: "name", message: "Give a name." }] }));
+    answerRequests(() =>
+      refusal(422, "The name is missing.", {
+        code: "invalid-request",
+        errors: [{ path: "name", message: "Give a name." }],
+      }),
+    );
     const error = await failureOf(call(getChain, {}));
     expect(error).toMatchObject({
-      status: 422, code: "invalid-request", detail: "The name is missing.", requestId: "req-1",
+      status: 422,
+      code: "invalid-request",
+      detail: "The name is missing.",
+      requestId: "req-1",
       errors: [{ path: "name", message: "Give a name." }],
     });
   });
@@ -81,7 +92,14 @@ describe("the session", () => {
   it("is forgotten by whichever request finds that it has run out", async () => {
     const client = createQueryClient();
     const key = sessionQuery().queryKey;
-    const person = { id: "0b7e3a44-3b1b-4a8e-9a0a-000000000001", email: "a@b.example", name: "Ada", roles: [], categories: [], mustChangePassword: false };
+    const person = {
+      id: "0b7e3a44-3b1b-4a8e-9a0a-000000000001",
+      email: "a@b.example",
+      name: "Ada",
+      roles: [],
+      categories: [],
+      mustChangePassword: false,
+    };
     const session: Session = { person, permissions: [], by: "session" };
     client.setQueryData(key, session);
     answerRequests(() => refusal(401, "Sign in again."));
@@ -96,12 +114,20 @@ describe("the session", () => {
 
 describe("addresses", () => {
   it("hold what a colleague needs to see the same", () => {
-    expect(paths.stores.href({ product: "P01", driver: "price", store: "S 1" })).toBe("/stores?product=P01&driver=price&store=S+1");
+    expect(paths.stores.href({ product: "P01", driver: "price", store: "S 1" })).toBe(
+      "/stores?product=P01&driver=price&store=S+1",
+    );
     expect(paths.signIn.href("/stores?product=P01")).toBe("/sign-in?returnTo=%2Fstores%3Fproduct%3DP01");
   });
 
   it("lead back into this site only", () => {
     expect(safeReturn("/stores?product=P01")).toBe("/stores?product=P01");
-    expect(["//evil.example", "https://evil.example", "/\\evil.example", "", null].map(safeReturn)).toEqual(["/", "/", "/", "/", "/"]);
+    expect(["//evil.example", "https://evil.example", "/\\evil.example", "", null].map(safeReturn)).toEqual([
+      "/",
+      "/",
+      "/",
+      "/",
+      "/",
+    ]);
   });
 });

@@ -24,7 +24,10 @@ describe("extracts", () => {
   it("say in a word where they stand, with errors and without usable rows apart", () => {
     expect(describeState({ state: "checked", rows: { ...rows, errors: 0 } }).word).toBe("Ready to load");
     expect(describeState({ state: "checked", rows }).word).toBe("Ready, with errors");
-    expect(describeState({ state: "checked", rows: { ...rows, usable: 0 } })).toEqual({ word: "No usable rows", tone: "danger" });
+    expect(describeState({ state: "checked", rows: { ...rows, usable: 0 } })).toEqual({
+      word: "No usable rows",
+      tone: "danger",
+    });
   });
 
   it("are watched while a job works on them or soon will, not once a check broke down", () => {
@@ -52,24 +55,55 @@ describe("extracts", () => {
   });
 
   it("give their issues as a list to send on", () => {
-    const issue = { line: 17, column: "store", value: "=X", severity: "error" as const, rule: "unknown-store", reason: "Unknown", remedy: "Load it" };
+    const issue = {
+      line: 17,
+      column: "store",
+      value: "=X",
+      severity: "error" as const,
+      rule: "unknown-store",
+      reason: "Unknown",
+      remedy: "Load it",
+    };
     expect(issuesCsv([issue]).rows).toEqual([[17, "store", "=X", "error", "Unknown", "Load it"]]);
   });
 
   it("that did not arrive say what was kept", () => {
     expect(uploadProblem(new DOMException("", "AbortError"))).toBe("Stopped. Nothing was kept.");
-    expect(uploadProblem(new ApiError({ status: 0, code: "unreachable", detail: "x" }))).toMatch(/Nothing was kept; try again/);
-    expect(uploadProblem(new ApiError({ status: 413, code: "too-large", detail: "The file is too large." }))).toBe("The file is too large.");
+    expect(uploadProblem(new ApiError({ status: 0, code: "unreachable", detail: "x" }))).toMatch(
+      /Nothing was kept; try again/,
+    );
+    expect(uploadProblem(new ApiError({ status: 413, code: "too-large", detail: "The file is too large." }))).toBe(
+      "The file is too large.",
+    );
   });
 });
 
 const curve = (more: Partial<Curve>): Curve => ({
-  term: "price", driver: "price", kind: "smooth", column: "price", x: [1, 1.5, 2], estimate: [0.5, 0, -0.5], standardError: [0.1, 0.1, 0.1],
-  lower: [0.4, -0.1, -0.6], upper: [0.6, 0.1, -0.4], observedRange: [1, 2], supportCount: [5, 9, 5], seen: [1, 1.5, 2], elasticity: null, ...more,
+  term: "price",
+  driver: "price",
+  kind: "smooth",
+  column: "price",
+  x: [1, 1.5, 2],
+  estimate: [0.5, 0, -0.5],
+  standardError: [0.1, 0.1, 0.1],
+  lower: [0.4, -0.1, -0.6],
+  upper: [0.6, 0.1, -0.4],
+  observedRange: [1, 2],
+  supportCount: [5, 9, 5],
+  seen: [1, 1.5, 2],
+  elasticity: null,
+  ...more,
 });
 const promotion = curve({
-  driver: "promotion", kind: "factor", x: ["both", "feature", "none", "display"], estimate: [0.6, 0.35, 0, 0.3], standardError: [0.1, 0.05, 0, 0.05],
-  lower: [0.5, 0.3, 0, 0.2], upper: [0.7, 0.4, 0, 0.4], supportCount: [3, 20, 120, 9], seen: [],
+  driver: "promotion",
+  kind: "factor",
+  x: ["both", "feature", "none", "display"],
+  estimate: [0.6, 0.35, 0, 0.3],
+  standardError: [0.1, 0.05, 0, 0.05],
+  lower: [0.5, 0.3, 0, 0.2],
+  upper: [0.7, 0.4, 0, 0.4],
+  supportCount: [3, 20, 120, 9],
+  seen: [],
 });
 
 describe("drivers", () => {
@@ -95,7 +129,9 @@ describe("drivers", () => {
   });
 
   it("keep their colours, names and order, whatever else a model holds", () => {
-    expect(inLaneOrder([{ driver: "rain" }, { driver: "promotion" }, { driver: "price" }]).map(({ driver }) => driver)).toEqual(["price", "promotion", "rain"]);
+    expect(
+      inLaneOrder([{ driver: "rain" }, { driver: "promotion" }, { driver: "price" }]).map(({ driver }) => driver),
+    ).toEqual(["price", "promotion", "rain"]);
     expect([driverColour("season"), driverColour("rain")]).toEqual(["week", "trend"]);
     expect([driverLabel("price:promotion"), driverLabel("rain")]).toEqual(["Price × Promotion", "rain"]);
   });
@@ -108,8 +144,18 @@ describe("drivers", () => {
 
   it("show weeks with a gap where one is missing, and the newest regular price", () => {
     const week = (first: string, units: number, regularPrice: number | null): SalesWeek => ({
-      week: first, units, netSales: 0, price: null, priceSource: "shelf", regularPrice, promotion: "none", mechanic: "none", temperatureC: null,
-      event: null, openDays: null, stockOutDays: null,
+      week: first,
+      units,
+      netSales: 0,
+      price: null,
+      priceSource: "shelf",
+      regularPrice,
+      promotion: "none",
+      mechanic: "none",
+      temperatureC: null,
+      event: null,
+      openDays: null,
+      stockOutDays: null,
     });
     const sales = [week("2026-06-22", 3, null), week("2026-06-08", 5, 1.79)];
     expect(pastWeeks(sales, (first) => first).map(({ units }) => units)).toEqual([5, null, 3]);
@@ -118,13 +164,37 @@ describe("drivers", () => {
   });
 
   const fit = (store: string): FitSummary => ({
-    store, rows: 100, firstWeek: "2024-06-03", lastWeek: "2026-05-25", devianceExplained: 0.9, dispersion: 2, edf: 10, converged: true, warnings: [],
-    stockOuts: { leftOut: 0, partly: 0 }, leftOut: [], straightLines: [], priceLearning: { weeksMoved: 12, regularPrices: 5, enough: true },
-    meanWeeklyUnits: 10, meanBaseUnits: 9,
+    store,
+    rows: 100,
+    firstWeek: "2024-06-03",
+    lastWeek: "2026-05-25",
+    devianceExplained: 0.9,
+    dispersion: 2,
+    edf: 10,
+    converged: true,
+    warnings: [],
+    stockOuts: { leftOut: 0, partly: 0 },
+    leftOut: [],
+    straightLines: [],
+    priceLearning: { weeksMoved: 12, regularPrices: 5, enough: true },
+    meanWeeklyUnits: 10,
+    meanBaseUnits: 9,
   });
   const model = (id: string, more: Partial<Model>): Model => ({
-    id, product: "P1", state: "candidate", spec: null, createdAt: "2026-06-01T00:00:00.000Z", createdBy: "Ada", jobId: null, usedFrom: null,
-    usedUntil: null, fits: [fit("S1"), fit("S2")], skipped: [], notForPlans: null, may: { use: false }, ...more,
+    id,
+    product: "P1",
+    state: "candidate",
+    spec: null,
+    createdAt: "2026-06-01T00:00:00.000Z",
+    createdBy: "Ada",
+    jobId: null,
+    usedFrom: null,
+    usedUntil: null,
+    fits: [fit("S1"), fit("S2")],
+    skipped: [],
+    notForPlans: null,
+    may: { use: false },
+    ...more,
   });
 
   it("are shown by the model asked for, else the one in use, else the newest that knows a store", () => {
@@ -160,7 +230,11 @@ describe("drivers", () => {
 describe("stores", () => {
   it("have a shape and a colour by region, the smallest beyond six together", () => {
     const { groups, of } = regionGroups(["town", "coast", "moor", "coast"].map((region) => ({ region })));
-    expect(groups).toEqual([{ group: 1, name: "coast", count: 2 }, { group: 2, name: "moor", count: 1 }, { group: 3, name: "town", count: 1 }]);
+    expect(groups).toEqual([
+      { group: 1, name: "coast", count: 2 },
+      { group: 2, name: "moor", count: 1 },
+      { group: 3, name: "town", count: 1 },
+    ]);
     expect(of("town")).toBe(3);
     const many = regionGroups("aabbccddeeffgh".split("").map((region) => ({ region })));
     expect(many.groups).toHaveLength(6);
@@ -176,7 +250,13 @@ describe("stores", () => {
   });
 
   it("share one axis that one wide interval does not set", () => {
-    const [low, high] = intervalDomain([{ estimate: -2, lower: -2.3, upper: -1.7 }, { estimate: -1.5, lower: -40, upper: 30 }], -1);
+    const [low, high] = intervalDomain(
+      [
+        { estimate: -2, lower: -2.3, upper: -1.7 },
+        { estimate: -1.5, lower: -40, upper: 30 },
+      ],
+      -1,
+    );
     expect(low).toBeGreaterThan(-3);
     expect(high).toBeGreaterThanOrEqual(-1);
     expect(high).toBeLessThan(0);

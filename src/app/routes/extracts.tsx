@@ -30,7 +30,10 @@ export const ExtractsRoute = () => {
       <PageHeader title="Extracts" facts={["Files with stores, products and weekly sales, as they arrived"]} />
       <div className="flex flex-col gap-5">
         {mayUpload && (
-          <UploadPanel limitBytes={limitBytes} onUploaded={(extract) => void navigate(paths.extract.href(extract.id))} />
+          <UploadPanel
+            limitBytes={limitBytes}
+            onUploaded={(extract) => void navigate(paths.extract.href(extract.id))}
+          />
         )}
         <Sheet flush>
           {query.isPending && (
@@ -39,7 +42,11 @@ export const ExtractsRoute = () => {
             </div>
           )}
           {query.isError && !query.data && (
-            <ErrorState title="The extracts could not be read" error={query.error} onRetry={() => void query.refetch()} />
+            <ErrorState
+              title="The extracts could not be read"
+              error={query.error}
+              onRetry={() => void query.refetch()}
+            />
           )}
           {query.data && extracts.length === 0 && <NoExtracts mayUpload={mayUpload} />}
           {extracts.length > 0 && <ExtractList extracts={extracts} />}

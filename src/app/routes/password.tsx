@@ -10,7 +10,9 @@ export const PasswordRoute = () => {
   const session = useSession();
   const navigate = useNavigate();
   const status = useStatusLine();
-  const facts = session?.person.mustChangePassword ? ["Yours was made for you: choose one only you know, then go on."] : [];
+  const facts = session?.person.mustChangePassword
+    ? ["Yours was made for you: choose one only you know, then go on."]
+    : [];
   return (
     <div className="mx-auto max-w-md">
       <PageHeader title="Change password" facts={facts} />

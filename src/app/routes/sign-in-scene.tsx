@@ -16,6 +16,10 @@ export const SignInScene = () => (
       fill="currentColor"
       opacity="0.1"
     />
-    <path d="M0 184c140-28 250-20 380 4s260 22 390-6 240-20 350 6 200 18 320-2V220H0Z" fill="currentColor" opacity="0.16" />
+    <path
+      d="M0 184c140-28 250-20 380 4s260 22 390-6 240-20 350 6 200 18 320-2V220H0Z"
+      fill="currentColor"
+      opacity="0.16"
+    />
   </svg>
 );

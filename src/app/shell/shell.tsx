@@ -36,7 +36,11 @@ export const Shell = () => {
       <SkipLink target={contentId} />
       <TopBar session={session} chainName={chain?.name} />
       {navigation.state === "loading" && (
-        <div className="fixed inset-x-0 top-0 z-50 h-0.5 animate-pulse bg-accent" role="status" aria-label="Loading the page" />
+        <div
+          className="fixed inset-x-0 top-0 z-50 h-0.5 animate-pulse bg-accent"
+          role="status"
+          aria-label="Loading the page"
+        />
       )}
       <main
         ref={content}

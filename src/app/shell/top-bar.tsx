@@ -15,13 +15,14 @@ const linkStyle = ({ isActive }: { isActive: boolean }) =>
     isActive ? "bg-accent-soft text-ink" : "text-muted hover:bg-hover hover:text-ink",
   );
 
-const Links = () => navigation.map(({ label, to }) => (
-  <li key={to}>
-    <NavLink to={to} className={linkStyle}>
-      {label}
-    </NavLink>
-  </li>
-));
+const Links = () =>
+  navigation.map(({ label, to }) => (
+    <li key={to}>
+      <NavLink to={to} className={linkStyle}>
+        {label}
+      </NavLink>
+    </li>
+  ));
 
 type TopBarProps = { session: Session; chainName?: string };
 

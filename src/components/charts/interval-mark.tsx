@@ -25,9 +25,26 @@ export const IntervalMark = ({ estimate, lower, upper, domain, group, reference,
   return (
     <svg width={width} height={height} className="block" aria-hidden="true" data-group={group ?? undefined}>
       {reference !== undefined && (
-        <line className="chart-axis" x1={x.toPixel(reference)} x2={x.toPixel(reference)} y1="2" y2={height - 2} strokeOpacity="0.5" />
+        <line
+          className="chart-axis"
+          x1={x.toPixel(reference)}
+          x2={x.toPixel(reference)}
+          y1="2"
+          y2={height - 2}
+          strokeOpacity="0.5"
+        />
       )}
-      <line x1={inside(lower)} x2={inside(upper)} y1={height / 2} y2={height / 2} stroke={group === null ? "var(--ink)" : "var(--group)"} strokeWidth="3" strokeOpacity="0.4" strokeLinecap="round" data-part="interval" />
+      <line
+        x1={inside(lower)}
+        x2={inside(upper)}
+        y1={height / 2}
+        y2={height / 2}
+        stroke={group === null ? "var(--ink)" : "var(--group)"}
+        strokeWidth="3"
+        strokeOpacity="0.4"
+        strokeLinecap="round"
+        data-part="interval"
+      />
       {group === null ? (
         <rect x={inside(estimate) - 1.5} y={height / 2 - 6} width="3" height="12" fill="var(--ink)" />
       ) : (

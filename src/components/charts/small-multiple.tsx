@@ -3,6 +3,10 @@ import { GroupMark } from "./parts/group-shape";
 import { linePath } from "./parts/band-path";
 import { linearScale, logScale } from "./scale/scale";
 
+const buttonStyle =
+  "rounded-sm border border-transparent p-1.5 text-left transition-colors hover:bg-hover " +
+  "aria-pressed:border-control aria-pressed:bg-hover";
+
 type Point = { x: number; estimate: number };
 
 type SmallMultipleProps = {
@@ -31,12 +35,35 @@ export const SmallMultiple = (props: SmallMultipleProps) => {
       data-group={props.group}
       aria-pressed={props.isSelected}
       onClick={props.onSelect}
-      className="rounded-sm border border-transparent p-1.5 text-left transition-colors hover:bg-hover aria-pressed:border-control aria-pressed:bg-hover"
+      className={buttonStyle}
     >
-      <svg viewBox={`0 0 ${width} ${height}`} className="block h-11 w-full" preserveAspectRatio="none" fill="none" aria-hidden="true">
-        <line className="chart-grid" x1="0" x2={width} y1={y.toPixel(1)} y2={y.toPixel(1)} vectorEffect="non-scaling-stroke" />
-        <path d={linePath(props.chain, { x, y })} stroke="var(--base-bar)" strokeWidth="1.25" vectorEffect="non-scaling-stroke" />
-        <path d={linePath(props.points, { x, y })} stroke="var(--group)" strokeWidth="2" vectorEffect="non-scaling-stroke" />
+      <svg
+        viewBox={`0 0 ${width} ${height}`}
+        className="block h-11 w-full"
+        preserveAspectRatio="none"
+        fill="none"
+        aria-hidden="true"
+      >
+        <line
+          className="chart-grid"
+          x1="0"
+          x2={width}
+          y1={y.toPixel(1)}
+          y2={y.toPixel(1)}
+          vectorEffect="non-scaling-stroke"
+        />
+        <path
+          d={linePath(props.chain, { x, y })}
+          stroke="var(--base-bar)"
+          strokeWidth="1.25"
+          vectorEffect="non-scaling-stroke"
+        />
+        <path
+          d={linePath(props.points, { x, y })}
+          stroke="var(--group)"
+          strokeWidth="2"
+          vectorEffect="non-scaling-stroke"
+        />
       </svg>
       <span className="mt-1 flex items-center gap-1.5 text-sm">
         <GroupMark group={props.group} />

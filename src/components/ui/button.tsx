@@ -10,7 +10,16 @@ type ButtonProps = ComponentProps<"button"> & {
   busy?: boolean;
 };
 
-export const Button = ({ tone, size, busy = false, className, children, onClick, type = "button", ...rest }: ButtonProps) => (
+export const Button = ({
+  tone,
+  size,
+  busy = false,
+  className,
+  children,
+  onClick,
+  type = "button",
+  ...rest
+}: ButtonProps) => (
   <button
     {...rest}
     type={type}

@@ -1,4 +1,8 @@
-export type ComboboxOption = { value: string; label: string; /** Said in grey after the label, and searched too. */ detail?: string };
+export type ComboboxOption = {
+  value: string;
+  label: string;
+  /** Said in grey after the label, and searched too. */ detail?: string;
+};
 
 const plain = (text: string) => text.normalize("NFD").replace(/\p{M}/gu, "").toLowerCase();
 

@@ -8,6 +8,14 @@ import type { ComboboxOption } from "./combobox-options";
 import { controlStyle } from "./control-style";
 import { Field } from "./field";
 
+const listStyle =
+  "z-40 w-max max-w-[min(30rem,calc(100vw-2rem))] min-w-(--radix-popover-trigger-width) rounded-md " +
+  "border border-hairline bg-raised text-ink shadow-raised";
+
+const optionStyle =
+  "flex min-h-9 cursor-pointer items-center justify-between gap-3 rounded-sm px-2.5 hover:bg-hover " +
+  "aria-selected:font-semibold data-[active=true]:bg-accent-soft";
+
 type ComboboxProps = {
   label: ReactNode;
   hideLabel?: boolean;
@@ -35,7 +43,12 @@ export const Combobox = (props: ComboboxProps) => {
   const show = () => {
     if (open) return;
     setText("");
-    setActive(Math.max(0, options.findIndex((option) => option.value === value)));
+    setActive(
+      Math.max(
+        0,
+        options.findIndex((option) => option.value === value),
+      ),
+    );
     setOpen(true);
   };
   const close = () => {
@@ -92,7 +105,10 @@ export const Combobox = (props: ComboboxProps) => {
                 onBlur={close}
                 className={classNames(controlStyle, "pr-9 text-ellipsis")}
               />
-              <ChevronDown className="pointer-events-none absolute top-2.5 right-3 size-4 text-muted" aria-hidden="true" />
+              <ChevronDown
+                className="pointer-events-none absolute top-2.5 right-3 size-4 text-muted"
+                aria-hidden="true"
+              />
             </div>
           </Popover.Anchor>
           <Popover.Portal>
@@ -104,9 +120,16 @@ export const Combobox = (props: ComboboxProps) => {
               onOpenAutoFocus={(event) => event.preventDefault()}
               onCloseAutoFocus={(event) => event.preventDefault()}
               onInteractOutside={(event) => input.current?.contains(event.target as Node) && event.preventDefault()}
-              className="z-40 w-max max-w-[min(30rem,calc(100vw-2rem))] min-w-(--radix-popover-trigger-width) rounded-md border border-hairline bg-raised text-ink shadow-raised"
+              className={listStyle}
             >
-              <OptionList id={wiring.id} shown={shown} more={matching.length - shown.length} active={active} value={value} onChoose={choose} />
+              <OptionList
+                id={wiring.id}
+                shown={shown}
+                more={matching.length - shown.length}
+                active={active}
+                value={value}
+                onChoose={choose}
+              />
             </Popover.Content>
           </Popover.Portal>
         </Popover.Root>
@@ -142,7 +165,7 @@ const OptionList = ({ id, shown, more, active, value, onChoose }: OptionListProp
             // Pressing must not take the focus from the field before the choice is made.
             onMouseDown={(event) => event.preventDefault()}
             onClick={() => onChoose(option)}
-            className="flex min-h-9 cursor-pointer items-center justify-between gap-3 rounded-sm px-2.5 hover:bg-hover aria-selected:font-semibold data-[active=true]:bg-accent-soft"
+            className={optionStyle}
           >
             <span className="truncate">{option.label}</span>
             {option.detail && <span className="shrink-0 text-sm font-normal text-muted">{option.detail}</span>}
@@ -150,7 +173,9 @@ const OptionList = ({ id, shown, more, active, value, onChoose }: OptionListProp
         ))}
       </ul>
       {shown.length === 0 && <p className="px-4 pb-3 text-muted">Nothing by that name.</p>}
-      {more > 0 && <p className="border-t border-hairline px-4 py-2 text-sm text-muted">{more} more: type to narrow.</p>}
+      {more > 0 && (
+        <p className="border-t border-hairline px-4 py-2 text-sm text-muted">{more} more: type to narrow.</p>
+      )}
     </>
   );
 };

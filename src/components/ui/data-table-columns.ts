@@ -21,10 +21,10 @@ export type TableColumn<Row> = {
 
 export type TableSort = { column: string; descending: boolean };
 
-export const sumOf = <Row,>(rows: readonly Row[], value: (row: Row) => number | null): number =>
+export const sumOf = <Row>(rows: readonly Row[], value: (row: Row) => number | null): number =>
   rows.reduce((sum, row) => sum + (value(row) ?? 0), 0);
 
 const fromClasses = { sm: "max-sm:hidden", md: "max-md:hidden", lg: "max-lg:hidden" };
 
-export const columnClass = <Row,>(column: TableColumn<Row>): string =>
+export const columnClass = <Row>(column: TableColumn<Row>): string =>
   `${column.align === "right" ? "text-right" : "text-left"} ${column.from ? fromClasses[column.from] : ""}`;

@@ -84,11 +84,25 @@ export const DataTable = <Row extends object>(props: DataTableProps<Row>) => {
         </thead>
         <tbody>
           {props.leadRow && (
-            <BodyRow columns={columns} row={props.leadRow} id={rowKey(props.leadRow)} index={0} rowHeight={rowHeight} isLead />
+            <BodyRow
+              columns={columns}
+              row={props.leadRow}
+              id={rowKey(props.leadRow)}
+              index={0}
+              rowHeight={rowHeight}
+              isLead
+            />
           )}
           {before > 0 && <Gap height={before} />}
           {shown.map((row, index) => (
-            <BodyRow key={row.id} {...props} row={row.original} id={row.id} index={firstIndex + index + leadRows} rowHeight={rowHeight} />
+            <BodyRow
+              key={row.id}
+              {...props}
+              row={row.original}
+              id={row.id}
+              index={firstIndex + index + leadRows}
+              rowHeight={rowHeight}
+            />
           ))}
           {after > 0 && <Gap height={after} />}
         </tbody>
@@ -96,7 +110,13 @@ export const DataTable = <Row extends object>(props: DataTableProps<Row>) => {
           <tfoot className="sticky bottom-0 bg-sheet">
             <tr>
               {columns.map((column) => (
-                <td key={column.id} className={classNames("border-t border-control px-3 py-2 font-semibold first:pl-4 last:pr-4 sm:first:pl-5 sm:last:pr-5", columnClass(column))}>
+                <td
+                  key={column.id}
+                  className={classNames(
+                    "border-t border-control px-3 py-2 font-semibold first:pl-4 last:pr-4 sm:first:pl-5 sm:last:pr-5",
+                    columnClass(column),
+                  )}
+                >
                   {column.total?.(sorted.map((row) => row.original))}
                 </td>
               ))}
@@ -123,19 +143,36 @@ type BodyRowProps<Row> = Pick<DataTableProps<Row>, "columns" | "selectedKey" | "
   isLead?: boolean;
 };
 
-const BodyRow = <Row extends object>({ columns, selectedKey, onRowClick, row, id, index, rowHeight, isLead }: BodyRowProps<Row>) => (
+const BodyRow = <Row extends object>({
+  columns,
+  selectedKey,
+  onRowClick,
+  row,
+  id,
+  index,
+  rowHeight,
+  isLead,
+}: BodyRowProps<Row>) => (
   <tr
     aria-rowindex={index + 2}
     aria-selected={selectedKey === undefined ? undefined : selectedKey === id}
     data-row={id}
     onClick={onRowClick && (() => onRowClick(row))}
-    className={classNames("group/row", onRowClick && "cursor-pointer hover:bg-hover", isLead && "font-semibold", selectedKey === id && "bg-accent-soft")}
+    className={classNames(
+      "group/row",
+      onRowClick && "cursor-pointer hover:bg-hover",
+      isLead && "font-semibold",
+      selectedKey === id && "bg-accent-soft",
+    )}
   >
     {columns.map((column) => (
       <td
         key={column.id}
         style={{ height: rowHeight }}
-        className={classNames("border-b border-hairline px-3 py-1 first:pl-4 last:pr-4 sm:first:pl-5 sm:last:pr-5 group-last/row:border-b-0", columnClass(column))}
+        className={classNames(
+          "border-b border-hairline px-3 py-1 first:pl-4 last:pr-4 sm:first:pl-5 sm:last:pr-5 group-last/row:border-b-0",
+          columnClass(column),
+        )}
       >
         {column.cell ? column.cell(row) : column.value(row)}
       </td>

@@ -2,6 +2,14 @@ import { X } from "lucide-react";
 import { useEffect, useId, useRef } from "react";
 import type { ReactNode } from "react";
 
+const dialogStyle =
+  "m-auto w-[min(34rem,calc(100vw-2rem))] rounded-lg border border-hairline bg-raised p-0 text-ink " +
+  "shadow-raised backdrop:bg-[rgb(10_20_22/0.42)]";
+
+const closeStyle =
+  "absolute top-3.5 right-3 inline-flex size-8 items-center justify-center rounded-sm text-muted " +
+  "hover:bg-hover hover:text-ink";
+
 type DialogProps = {
   open: boolean;
   onClose: () => void;
@@ -31,7 +39,7 @@ export const Dialog = ({ open, onClose, title, children, actions }: DialogProps)
       aria-labelledby={titleId}
       onClose={onClose}
       onClick={(event) => event.target === element.current && onClose()}
-      className="m-auto w-[min(34rem,calc(100vw-2rem))] rounded-lg border border-hairline bg-raised p-0 text-ink shadow-raised backdrop:bg-black/40"
+      className={dialogStyle}
     >
       {open && (
         <div className="relative p-5">
@@ -41,12 +49,7 @@ export const Dialog = ({ open, onClose, title, children, actions }: DialogProps)
           {children}
           {actions && <div className="mt-5 flex flex-wrap justify-end gap-3">{actions}</div>}
           {/* Last, so that the dialog opens on what it asks. No hint: its own Escape would come before the dialog's. */}
-          <button
-            type="button"
-            aria-label="Close"
-            onClick={onClose}
-            className="absolute top-3.5 right-3 inline-flex size-8 items-center justify-center rounded-sm text-muted hover:bg-hover hover:text-ink"
-          >
+          <button type="button" aria-label="Close" onClick={onClose} className={closeStyle}>
             <X className="size-4" aria-hidden="true" />
           </button>
         </div>

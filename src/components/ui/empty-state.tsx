@@ -14,7 +14,12 @@ export const EmptyState = ({ title, children, action, heading: Heading = "h2" }:
   <div className="flex flex-col items-center px-6 py-12 text-center">
     <svg viewBox="0 0 120 44" className="mb-5 w-32 text-control" fill="none" stroke="currentColor" aria-hidden="true">
       <path d="M4 6h112M20 6v6M100 6v6" strokeWidth="2" strokeLinecap="round" />
-      <path d="M4 28c14-12 27-12 40-2s26 10 38 0 26-8 34-2" strokeWidth="2" strokeDasharray="2 5" strokeLinecap="round" />
+      <path
+        d="M4 28c14-12 27-12 40-2s26 10 38 0 26-8 34-2"
+        strokeWidth="2"
+        strokeDasharray="2 5"
+        strokeLinecap="round"
+      />
       <path d="M4 40h112" strokeWidth="2" strokeLinecap="round" />
     </svg>
     <Heading className="text-lg font-semibold">{title}</Heading>

@@ -29,7 +29,11 @@ export const ProgressBar = ({ label, share, note, secondsLeft = null }: Progress
         className="h-1.5 overflow-hidden rounded-full bg-grid"
       >
         <div
-          className={percent === undefined ? "h-full w-1/3 animate-pulse rounded-full bg-accent" : "h-full rounded-full bg-accent"}
+          className={
+            percent === undefined
+              ? "h-full w-1/3 animate-pulse rounded-full bg-accent"
+              : "h-full rounded-full bg-accent"
+          }
           style={percent === undefined ? undefined : { width: `${percent}%` }}
         />
       </div>

@@ -1,7 +1,11 @@
 import { ToggleGroup } from "radix-ui";
 import { classNames } from "@/lib/class-names";
 
-export type Segment<Value extends string> = { value: Value; label: string; /** Colours the segment in use. */ driver?: string };
+export type Segment<Value extends string> = {
+  value: Value;
+  label: string;
+  /** Colours the segment in use. */ driver?: string;
+};
 
 type SegmentedControlProps<Value extends string> = {
   label: string;

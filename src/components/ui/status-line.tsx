@@ -3,6 +3,10 @@ import { createContext, useCallback, useContext, useMemo, useRef, useState } fro
 import type { ReactNode } from "react";
 import { IconButton } from "./icon-button";
 
+const lineStyle =
+  "pointer-events-auto flex max-w-xl items-center gap-2.5 rounded-md bg-ink py-1.5 pr-1.5 pl-4 " +
+  "text-sheet shadow-raised [&_svg]:size-4";
+
 type Status = { text: string; tone: "good" | "danger" };
 type Say = { done: (text: string) => void; failed: (text: string) => void };
 
@@ -34,10 +38,14 @@ export const StatusLineProvider = ({ children }: { children: ReactNode }) => {
       {children}
       <div role="status" className="pointer-events-none fixed inset-x-4 bottom-5 z-50 flex justify-center print:hidden">
         {status && (
-          <div className="pointer-events-auto flex max-w-xl items-center gap-2.5 rounded-md bg-ink py-1.5 pr-1.5 pl-4 text-sheet shadow-raised [&_svg]:size-4">
+          <div className={lineStyle}>
             {status.tone === "good" ? <Check aria-hidden="true" /> : <TriangleAlert aria-hidden="true" />}
             <span>{status.text}</span>
-            <IconButton label="Dismiss" onClick={() => setStatus(null)} className="text-sheet hover:bg-sheet/15 hover:text-sheet">
+            <IconButton
+              label="Dismiss"
+              onClick={() => setStatus(null)}
+              className="text-sheet hover:bg-sheet/15 hover:text-sheet"
+            >
               <X />
             </IconButton>
           </div>

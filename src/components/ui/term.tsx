@@ -2,6 +2,9 @@ import { Popover } from "radix-ui";
 import { useState } from "react";
 import type { ReactNode } from "react";
 
+const bubbleStyle =
+  "pointer-events-none z-50 max-w-72 rounded-sm bg-ink px-2.5 py-1.5 text-sm font-normal text-sheet " + "shadow-raised";
+
 type TermProps = { children: ReactNode; /** One plain sentence: what the word means here. */ meaning: string };
 
 /** A word of the trade with its one-line meaning on hover, focus and, on a touch screen, tap. */
@@ -40,7 +43,7 @@ export const Term = ({ children, meaning }: TermProps) => {
           onOpenAutoFocus={(event) => event.preventDefault()}
           onCloseAutoFocus={(event) => event.preventDefault()}
           aria-hidden="true"
-          className="pointer-events-none z-50 max-w-72 rounded-sm bg-ink px-2.5 py-1.5 text-sm font-normal text-sheet shadow-raised"
+          className={bubbleStyle}
         >
           {meaning}
         </Popover.Content>

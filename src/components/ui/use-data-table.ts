@@ -26,14 +26,16 @@ type DataTableOptions<Row> = {
 export const useDataTable = <Row extends object>({ rows, columns, rowKey, initialSort }: DataTableOptions<Row>) => {
   const definitions = useMemo(() => {
     const helper = createColumnHelper<typeof features, Row>();
-    return helper.columns(columns.map((column) =>
-      helper.accessor((row) => column.value(row) ?? undefined, {
-        id: column.id,
-        enableSorting: column.sortable ?? true,
-        sortUndefined: "last",
-        sortFn: (a, b, id) => compareValues(a.getValue<string | number>(id), b.getValue<string | number>(id)),
-      }),
-    ));
+    return helper.columns(
+      columns.map((column) =>
+        helper.accessor((row) => column.value(row) ?? undefined, {
+          id: column.id,
+          enableSorting: column.sortable ?? true,
+          sortUndefined: "last",
+          sortFn: (a, b, id) => compareValues(a.getValue<string | number>(id), b.getValue<string | number>(id)),
+        }),
+      ),
+    );
   }, [columns]);
   const data = useMemo(() => [...rows], [rows]);
   return useTable({

@@ -14,7 +14,12 @@ type Signs = { signed?: boolean; digits?: number };
 
 /** Stands in until the chain's own settings have come. */
 export const neutralSettings: Settings = {
-  currency: "EUR", locale: "en-GB", timeZone: "UTC", calendar: "iso", weekStart: 1, temperatureUnit: "celsius",
+  currency: "EUR",
+  locale: "en-GB",
+  timeZone: "UTC",
+  calendar: "iso",
+  weekStart: 1,
+  temperatureUnit: "celsius",
 };
 
 /** Every way a number or a date is written for this chain. */
@@ -28,7 +33,8 @@ export const createChainFormat = (settings: Settings) => {
     multiplier: (value: Amount) => formatMultiplier(value, { locale }),
     percent: (share: Amount, options: Signs = {}) => formatPercent(share, { locale, ...options }),
     money: (amount: Amount, options: Signs = {}) => formatMoney(amount, { currency, locale, ...options }),
-    price: (amount: Amount, options: { signed?: boolean } = {}) => formatPrice(amount, { currency, locale, ...options }),
+    price: (amount: Amount, options: { signed?: boolean } = {}) =>
+      formatPrice(amount, { currency, locale, ...options }),
     temperature: (celsius: Amount) => formatTemperature(celsius, { unit: settings.temperatureUnit }),
     degrees: (celsius: number) => formatDegrees(celsius, settings.temperatureUnit),
     day: formatDay,

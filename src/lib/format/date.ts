@@ -21,16 +21,30 @@ export const formatWeekDays = (firstDay: string, options: { year?: boolean } = {
 
 type InstantOptions = { timeZone?: string; locale?: string };
 
+const formatters = new Map<string, Intl.DateTimeFormat>();
+
+/** Making an Intl formatter costs most of a millisecond; some stand in pages that redraw with every drag. */
+const dateTimeFormat = (locale: string, options: Intl.DateTimeFormatOptions): Intl.DateTimeFormat => {
+  const key = `${locale} ${JSON.stringify(options)}`;
+  const known = formatters.get(key);
+  if (known) return known;
+  const made = new Intl.DateTimeFormat(locale, options);
+  formatters.set(key, made);
+  return made;
+};
+
 /** A moment in the chain's time zone: "1 Dec 2026, 10:42". */
 export const formatMoment = (instant: string | Date | null | undefined, options: InstantOptions = {}): string => {
   if (!instant) return missing;
   const { timeZone, locale = "en-GB" } = options;
-  return new Intl.DateTimeFormat(locale, { dateStyle: "medium", timeStyle: "short", timeZone }).format(new Date(instant));
+  return dateTimeFormat(locale, { dateStyle: "medium", timeStyle: "short", timeZone }).format(new Date(instant));
 };
 
 /** "10:42" in the chain's time zone. */
 export const formatTimeOfDay = (instant: string | Date, options: InstantOptions = {}): string =>
-  new Intl.DateTimeFormat(options.locale ?? "en-GB", { timeStyle: "short", timeZone: options.timeZone }).format(new Date(instant));
+  dateTimeFormat(options.locale ?? "en-GB", { timeStyle: "short", timeZone: options.timeZone }).format(
+    new Date(instant),
+  );
 
 /** Time left, as precise as it deserves: "a few seconds", "40 seconds", "3 minutes", "2 hours". */
 export const formatDuration = (seconds: number): string => {

@@ -40,7 +40,8 @@ export const formatMultiplier = (value: number | null | undefined, options: Numb
 };
 
 /** "9,150 – 11,380" */
-export const formatRange = (lower: string, upper: string): string => `${lower}${thinSpace}${enDash}${thinSpace}${upper}`;
+export const formatRange = (lower: string, upper: string): string =>
+  `${lower}${thinSpace}${enDash}${thinSpace}${upper}`;
 
 /** "1 row", "2,316 rows" */
 export const countOf = (count: number, one: string, many = `${one}s`): string =>

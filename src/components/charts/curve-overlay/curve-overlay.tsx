@@ -42,17 +42,39 @@ export type CurveOverlayProps = {
 
 /** One driver's curve of many stores on one picture: groups by colour, the chain in ink, one store with its band. */
 export const CurveOverlay = (props: CurveOverlayProps) => {
-  const { title, heading, xLabel, curves, chain, domain, anchor, format, ticks, highlighted, onHighlight, legend, height = 420 } = props;
+  const {
+    title,
+    heading,
+    xLabel,
+    curves,
+    chain,
+    domain,
+    anchor,
+    format,
+    ticks,
+    highlighted,
+    onHighlight,
+    legend,
+    height = 420,
+  } = props;
   const [plot, width] = useElementWidth<HTMLDivElement>(720);
   const [hovered, setHovered] = useState<string | null>(null);
   const id = useId().replace(/[^\w-]/g, "");
   const [low, high] = domain;
   const geometry = useMemo(
-    () => overlayGeometry({ width, height, domain: [low, high], curves: [...curves, ...(chain ? [chain] : [])].map((curve) => curve.points) }),
+    () =>
+      overlayGeometry({
+        width,
+        height,
+        domain: [low, high],
+        curves: [...curves, ...(chain ? [chain] : [])].map((curve) => curve.points),
+      }),
     [width, height, low, high, curves, chain],
   );
   const xTicks = useMemo(
-    () => ticks ?? roundTicks(low, high, Math.round(geometry.innerWidth / 100)).map((value) => ({ value, label: format(value) })),
+    () =>
+      ticks ??
+      roundTicks(low, high, Math.round(geometry.innerWidth / 100)).map((value) => ({ value, label: format(value) })),
     [ticks, low, high, geometry.innerWidth, format],
   );
   const picture = useMemo(
@@ -61,17 +83,21 @@ export const CurveOverlay = (props: CurveOverlayProps) => {
   );
   const curveUnder = (event: MouseEvent<HTMLElement>) => {
     const box = event.currentTarget.getBoundingClientRect();
-    const place = { x: event.clientX - box.left - geometry.margin.left, y: event.clientY - box.top - geometry.margin.top };
+    const place = {
+      x: event.clientX - box.left - geometry.margin.left,
+      y: event.clientY - box.top - geometry.margin.top,
+    };
     return nearestCurve(curves, place, geometry) ?? null;
   };
   const find = (name: string | null) => curves.find((curve) => curve.id === name) ?? null;
   const table = () => ({
     columns: [xLabel, ...(chain ? [chain.name] : []), ...curves.map((curve) => curve.name)],
-    rows: (chain ?? curves[0])?.points.map((point, index) => [
-      point.x,
-      ...(chain ? [point.estimate] : []),
-      ...curves.map((curve) => curve.points[index]?.estimate ?? null),
-    ]) ?? [],
+    rows:
+      (chain ?? curves[0])?.points.map((point, index) => [
+        point.x,
+        ...(chain ? [point.estimate] : []),
+        ...curves.map((curve) => curve.points[index]?.estimate ?? null),
+      ]) ?? [],
     formats: [format, ...Array<(n: number) => string>(curves.length + 1).fill((n) => n.toFixed(3))],
   });
   return (
@@ -88,7 +114,13 @@ export const CurveOverlay = (props: CurveOverlayProps) => {
         }}
       >
         <StillCurves label={title} picture={picture} />
-        <OverlayHighlight id={id} geometry={geometry} highlighted={find(highlighted)} hovered={find(hovered)} chain={chain} />
+        <OverlayHighlight
+          id={id}
+          geometry={geometry}
+          highlighted={find(highlighted)}
+          hovered={find(hovered)}
+          chain={chain}
+        />
       </div>
     </ChartFrame>
   );
@@ -100,7 +132,8 @@ const layers = [OverlayGround, OverlayLines, ChainLine];
 const StillCurves = memo(function StillCurves({ label, picture }: { label: string; picture: OverlayPicture }) {
   const { geometry, curves } = picture;
   const data = useMemo(
-    () => curves.map((curve) => ({ id: curve.id, data: curve.points.map((point) => ({ x: point.x, y: point.estimate })) })),
+    () =>
+      curves.map((curve) => ({ id: curve.id, data: curve.points.map((point) => ({ x: point.x, y: point.estimate })) })),
     [curves],
   );
   return (

@@ -29,7 +29,9 @@ export const overlayGeometry = ({ width, height, domain, curves }: OverlayGeomet
   const innerWidth = Math.max(80, width - margin.left - margin.right);
   const innerHeight = height - margin.top - margin.bottom;
   const lines = curves.flatMap((points) =>
-    points.filter((point) => point.x >= domain[0] && point.x <= domain[1]).map((point) => ({ ...point, lower: point.estimate, upper: point.estimate })),
+    points
+      .filter((point) => point.x >= domain[0] && point.x <= domain[1])
+      .map((point) => ({ ...point, lower: point.estimate, upper: point.estimate })),
   );
   const vertical = ratioDomain(lines);
   return {
@@ -45,7 +47,10 @@ export const overlayGeometry = ({ width, height, domain, curves }: OverlayGeomet
 };
 
 /** Cuts a curve where its own store's range ends, so that what lies outside can be drawn dashed. */
-export const splitByRange = <Point extends { x: number }>(points: readonly Point[], range: readonly [number, number] | null) => {
+export const splitByRange = <Point extends { x: number }>(
+  points: readonly Point[],
+  range: readonly [number, number] | null,
+) => {
   if (!range) return { inside: [...points], before: [], after: [] };
   const inside = points.filter((point) => point.x >= range[0] && point.x <= range[1]);
   if (inside.length === 0) return { inside: [], before: [...points], after: [] };

@@ -27,7 +27,9 @@ export const OverlayHighlight = ({ id, geometry, highlighted, hovered, chain }: 
               <OverlayLine curve={highlighted} geometry={geometry} stroke="var(--group)" width={3} />
             </g>
           )}
-          {hovered && hovered !== highlighted && <OverlayLine curve={hovered} geometry={geometry} stroke="var(--group)" width={2.5} />}
+          {hovered && hovered !== highlighted && (
+            <OverlayLine curve={hovered} geometry={geometry} stroke="var(--group)" width={2.5} />
+          )}
         </g>
         {highlighted && <NameOnLine curve={highlighted} geometry={geometry} at={0.03} />}
         {hovered && hovered !== highlighted && <NameOnLine curve={hovered} geometry={geometry} at={0.2} />}

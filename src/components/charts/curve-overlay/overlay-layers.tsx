@@ -33,9 +33,19 @@ export const OverlayGround = () => {
       <clipPath id={`${id}-clip`}>
         <rect width={innerWidth} height={innerHeight} />
       </clipPath>
-      <LeftAxis scale={y} ticks={yTicks.map((value) => ({ value, label: formatMultiplier(value, { digits: Math.min(2, (String(value).split(".")[1] ?? "").length) }) }))} left={0} right={innerWidth} />
+      <LeftAxis
+        scale={y}
+        ticks={yTicks.map((value) => ({
+          value,
+          label: formatMultiplier(value, { digits: Math.min(2, (String(value).split(".")[1] ?? "").length) }),
+        }))}
+        left={0}
+        right={innerWidth}
+      />
       <line className="chart-reference" x1={0} x2={innerWidth} y1={y.toPixel(1)} y2={y.toPixel(1)} />
-      {anchor !== null && <line className="chart-reference" x1={x.toPixel(anchor)} x2={x.toPixel(anchor)} y1={0} y2={innerHeight} />}
+      {anchor !== null && (
+        <line className="chart-reference" x1={x.toPixel(anchor)} x2={x.toPixel(anchor)} y1={0} y2={innerHeight} />
+      )}
       <line className="chart-axis" x1={0} x2={innerWidth} y1={innerHeight} y2={innerHeight} />
       <BottomAxis scale={x} ticks={xTicks} y={innerHeight} />
       <text className="chart-text" x={innerWidth} y={innerHeight + 40} textAnchor="end">
@@ -51,20 +61,45 @@ export const OverlayLines = () => {
   return (
     <g clipPath={`url(#${id}-clip)`} fill="none">
       {curves.map((curve) => (
-        <OverlayLine key={curve.id} curve={curve} geometry={geometry} stroke="var(--group)" width={1.4} opacity={0.55} />
+        <OverlayLine
+          key={curve.id}
+          curve={curve}
+          geometry={geometry}
+          stroke="var(--group)"
+          width={1.4}
+          opacity={0.55}
+        />
       ))}
     </g>
   );
 };
 
-type OverlayLineProps = { curve: OverlayCurve; geometry: OverlayGeometry; stroke: string; width: number; opacity?: number };
+type OverlayLineProps = {
+  curve: OverlayCurve;
+  geometry: OverlayGeometry;
+  stroke: string;
+  width: number;
+  opacity?: number;
+};
 
 export const OverlayLine = ({ curve, geometry, stroke, width, opacity = 1 }: OverlayLineProps) => {
   const { inside, before, after } = splitByRange(curve.points, curve.range);
   return (
-    <g data-group={curve.group} data-curve={curve.id} stroke={stroke} strokeWidth={width} strokeOpacity={opacity} strokeLinejoin="round">
+    <g
+      data-group={curve.group}
+      data-curve={curve.id}
+      stroke={stroke}
+      strokeWidth={width}
+      strokeOpacity={opacity}
+      strokeLinejoin="round"
+    >
       <path d={linePath(inside, geometry)} />
-      {[before, after].map((part, index) => part.length > 1 && <path key={index} d={linePath(part, geometry)} strokeDasharray="3 4" strokeOpacity={opacity * 0.6} />)}
+      {[before, after].map(
+        (part, index) =>
+          part.length > 1 && (
+            <path key={index} d={linePath(part, geometry)} strokeDasharray="3 4" strokeOpacity={opacity * 0.6} />
+          ),
+      )}
     </g>
   );
 };

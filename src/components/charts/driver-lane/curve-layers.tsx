@@ -52,7 +52,13 @@ const decimals = (ticks: readonly number[]) =>
 export const BandLayer = () => {
   const { id, geometry, points } = usePicture();
   return (
-    <path d={bandPath(points, geometry)} clipPath={`url(#${id}-clip)`} fill="var(--driver)" fillOpacity="0.16" aria-hidden="true" />
+    <path
+      d={bandPath(points, geometry)}
+      clipPath={`url(#${id}-clip)`}
+      fill="var(--driver)"
+      fillOpacity="0.16"
+      aria-hidden="true"
+    />
   );
 };
 
@@ -62,7 +68,15 @@ export const FootLayer = () => {
   return (
     <g>
       <Rug values={seen} x={x} y={rugY} />
-      <line x1={0} x2={innerWidth} y1={trackY} y2={trackY} stroke="var(--track)" strokeWidth="1.5" strokeLinecap="round" />
+      <line
+        x1={0}
+        x2={innerWidth}
+        y1={trackY}
+        y2={trackY}
+        stroke="var(--track)"
+        strokeWidth="1.5"
+        strokeLinecap="round"
+      />
       <BottomAxis scale={x} ticks={xTicks} y={trackY + 1} />
     </g>
   );

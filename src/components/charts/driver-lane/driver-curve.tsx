@@ -30,7 +30,10 @@ export const DriverCurve = memo(function DriverCurve(props: DriverCurveProps) {
     () => [{ id: "curve", data: points.map((point) => ({ x: point.x, y: point.estimate })) }],
     [points],
   );
-  const picture = useMemo(() => ({ id, geometry, points, seen, unseen, xTicks }), [id, geometry, points, seen, unseen, xTicks]);
+  const picture = useMemo(
+    () => ({ id, geometry, points, seen, unseen, xTicks }),
+    [id, geometry, points, seen, unseen, xTicks],
+  );
   const { width, height, margin, x, y } = geometry;
   return (
     <CurvePictureContext.Provider value={picture}>

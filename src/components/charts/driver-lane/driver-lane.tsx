@@ -47,7 +47,20 @@ export type DriverLaneProps = {
 
 /** A driver as a slider on its own curve: the track is the curve's horizontal axis, the dot rides the curve. */
 export const DriverLane = (props: DriverLaneProps) => {
-  const { label, title, points, seen, unseen, steps, value, baseline, mixed, format, formatTick = format, ticks } = props;
+  const {
+    label,
+    title,
+    points,
+    seen,
+    unseen,
+    steps,
+    value,
+    baseline,
+    mixed,
+    format,
+    formatTick = format,
+    ticks,
+  } = props;
   const [plot, width] = useElementWidth<HTMLDivElement>(600);
   const { min, max } = steps;
   const { yDomain } = props;

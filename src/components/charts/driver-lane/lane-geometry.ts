@@ -34,7 +34,13 @@ type LaneGeometryOptions = {
 };
 
 /** One set of scales for everything a lane draws: curve, band, rug, hatching, track, handle and dots. */
-export const laneGeometry = ({ width, domain, points, height = laneHeight, yDomain }: LaneGeometryOptions): LaneGeometry => {
+export const laneGeometry = ({
+  width,
+  domain,
+  points,
+  height = laneHeight,
+  yDomain,
+}: LaneGeometryOptions): LaneGeometry => {
   const innerWidth = Math.max(40, width - margin.left - margin.right);
   const innerHeight = height - margin.top - margin.bottom;
   const vertical = yDomain ?? ratioDomain(points);

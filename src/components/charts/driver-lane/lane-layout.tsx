@@ -6,6 +6,10 @@ import type { ChartTable } from "../frame/chart-table";
 import { useChartFrame } from "../frame/use-chart-frame";
 import type { DriverColour } from "../drivers";
 
+const laneStyle =
+  "group/lane grid grid-cols-[1fr_auto] border-b border-hairline first:rounded-t-lg " +
+  "last:rounded-b-lg last:border-b-0 focus-visible:-outline-offset-2 lg:grid-cols-[11.5rem_minmax(0,1fr)_9.5rem]";
+
 type LaneLayoutProps = {
   driver: DriverColour;
   /** "Price" */
@@ -31,7 +35,7 @@ export const LaneLayout = (props: LaneLayoutProps) => {
       aria-labelledby={frame.titleId}
       tabIndex={0}
       onKeyDown={frame.onKeyDown}
-      className="group/lane grid grid-cols-[1fr_auto] border-b border-hairline first:rounded-t-lg last:rounded-b-lg last:border-b-0 focus-visible:-outline-offset-2 lg:grid-cols-[11.5rem_minmax(0,1fr)_9.5rem]"
+      className={laneStyle}
     >
       <span id={frame.titleId} className="sr-only">
         {title}

@@ -41,12 +41,45 @@ export const LaneOverlay = (props: LaneOverlayProps) => {
     <div ref={plot} className="absolute inset-0" data-dragging={slider.isDragging || undefined}>
       <svg width={width} height={height} className="absolute inset-0" aria-hidden="true">
         <g transform={`translate(${margin.left} ${margin.top})`}>
-          <line x1={stretch[0]} x2={stretch[1]} y1={trackY} y2={trackY} stroke="var(--driver)" strokeWidth="4" strokeLinecap="round" data-part="stretch" />
-          <line x1={handleX} x2={handleX} y1={dotY} y2={trackY} stroke="var(--driver)" strokeWidth="1.5" data-part="stem" />
+          <line
+            x1={stretch[0]}
+            x2={stretch[1]}
+            y1={trackY}
+            y2={trackY}
+            stroke="var(--driver)"
+            strokeWidth="4"
+            strokeLinecap="round"
+            data-part="stretch"
+          />
+          <line
+            x1={handleX}
+            x2={handleX}
+            y1={dotY}
+            y2={trackY}
+            stroke="var(--driver)"
+            strokeWidth="1.5"
+            data-part="stem"
+          />
           {baseline !== null && baselineX !== null && (
-            <circle cx={baselineX} cy={y.toPixel(curveValueAt(points, baseline).estimate)} r="4.75" fill="var(--sheet)" stroke="var(--driver)" strokeWidth="2" data-part="baseline" />
+            <circle
+              cx={baselineX}
+              cy={y.toPixel(curveValueAt(points, baseline).estimate)}
+              r="4.75"
+              fill="var(--sheet)"
+              stroke="var(--driver)"
+              strokeWidth="2"
+              data-part="baseline"
+            />
           )}
-          <circle cx={handleX} cy={dotY} r="5.75" fill="var(--driver)" stroke="var(--sheet)" strokeWidth="1.5" data-part="dot" />
+          <circle
+            cx={handleX}
+            cy={dotY}
+            r="5.75"
+            fill="var(--driver)"
+            stroke="var(--sheet)"
+            strokeWidth="1.5"
+            data-part="dot"
+          />
           {!readOnly && <HandleShape x={handleX} y={trackY} />}
         </g>
       </svg>
@@ -80,7 +113,16 @@ export const LaneOverlay = (props: LaneOverlayProps) => {
 
 const HandleShape = ({ x, y }: { x: number; y: number }) => (
   <g transform={`translate(${x} ${y})`} data-part="handle">
-    <rect x="-8.25" y="-10" width="16.5" height="20" rx="5.5" fill="var(--sheet)" stroke="var(--driver)" strokeWidth="2" />
+    <rect
+      x="-8.25"
+      y="-10"
+      width="16.5"
+      height="20"
+      rx="5.5"
+      fill="var(--sheet)"
+      stroke="var(--driver)"
+      strokeWidth="2"
+    />
     <path d="M-2.25-3.5v7M2.25-3.5v7" stroke="var(--driver)" strokeWidth="1.5" strokeLinecap="round" />
   </g>
 );

@@ -2,6 +2,11 @@ import { useState } from "react";
 import { snap } from "../scale/snap";
 import type { Steps } from "../scale/snap";
 
+const fieldStyle =
+  "-ml-2 h-8 w-[calc(100%+0.5rem)] max-w-40 rounded-sm border border-transparent bg-transparent " +
+  "px-2 text-xl font-semibold tracking-[-0.01em] text-ink transition-colors hover:border-control " +
+  "focus:border-control focus-visible:outline-offset-0";
+
 type LaneValueProps = {
   /** Name of the field: "Price, typed". */
   label: string;
@@ -40,7 +45,7 @@ export const LaneValue = ({ label, value, text, isMixed, steps, parse, onCommit 
         if (event.key === "Enter") finish();
         if (event.key === "Escape") setDraft(null);
       }}
-      className="-ml-2 h-8 w-[calc(100%+0.5rem)] max-w-40 rounded-sm border border-transparent bg-transparent px-2 text-xl font-semibold tracking-[-0.01em] text-ink transition-colors hover:border-control focus:border-control focus-visible:outline-offset-0"
+      className={fieldStyle}
     />
   );
 };

@@ -27,7 +27,8 @@ export const useSlider = ({ value, steps, valueAt, onChange, onCommit }: SliderO
   };
   const finish = (event: PointerEvent<Element>) => {
     if (!isDragging) return;
-    if (event.currentTarget.hasPointerCapture?.(event.pointerId)) event.currentTarget.releasePointerCapture(event.pointerId);
+    if (event.currentTarget.hasPointerCapture?.(event.pointerId))
+      event.currentTarget.releasePointerCapture(event.pointerId);
     setDragging(false);
     onCommit?.(latest.current);
   };

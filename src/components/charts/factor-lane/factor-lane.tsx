@@ -62,13 +62,33 @@ export const FactorLane = (props: FactorLaneProps) => {
       value={<p className="text-xl font-semibold tracking-[-0.01em]">{chosen?.label ?? "mixed"}</p>}
     >
       <div ref={plot} style={{ height: laneHeight }} className="relative overflow-hidden">
-        <LevelChoices label={label} levels={levels} value={value} geometry={geometry} onChange={onChange} readOnly={readOnly} />
-        <svg width={geometry.width} height={laneHeight} className="pointer-events-none absolute inset-0" aria-hidden="true">
+        <LevelChoices
+          label={label}
+          levels={levels}
+          value={value}
+          geometry={geometry}
+          onChange={onChange}
+          readOnly={readOnly}
+        />
+        <svg
+          width={geometry.width}
+          height={laneHeight}
+          className="pointer-events-none absolute inset-0"
+          aria-hidden="true"
+        >
           <defs>
             <HatchPattern id={`${id}-hatch`} />
           </defs>
           <g transform={`translate(${margin.left} ${margin.top})`}>
-            <LeftAxis scale={y} ticks={yTicks.map((tick) => ({ value: tick, label: formatMultiplier(tick, { digits: tick % 1 === 0 ? 0 : 1 }) }))} left={0} right={innerWidth} />
+            <LeftAxis
+              scale={y}
+              ticks={yTicks.map((tick) => ({
+                value: tick,
+                label: formatMultiplier(tick, { digits: tick % 1 === 0 ? 0 : 1 }),
+              }))}
+              left={0}
+              right={innerWidth}
+            />
             <line className="chart-reference" x1={0} x2={innerWidth} y1={y.toPixel(1)} y2={y.toPixel(1)} />
             <LevelBars levels={levels} geometry={geometry} baseline={baseline} hatchId={`${id}-hatch`} value={value} />
           </g>

@@ -40,13 +40,47 @@ export const LevelBars = ({ levels, geometry, baseline, value, hatchId }: LevelB
     return (
       <g key={level.value} data-level={level.value}>
         {isThin && <rect x={left - 8} y={0} width={barWidth + 16} height={innerHeight} fill={`url(#${hatchId})`} />}
-        <rect x={left} y={top} width={barWidth} height={Math.max(0, bottom - top)} rx="2" fill="var(--driver)" fillOpacity="0.2" data-part="band" />
-        <line x1={left} x2={left + barWidth} y1={height} y2={height} stroke="var(--driver)" strokeWidth="3" strokeLinecap="round" data-part="bar" />
+        <rect
+          x={left}
+          y={top}
+          width={barWidth}
+          height={Math.max(0, bottom - top)}
+          rx="2"
+          fill="var(--driver)"
+          fillOpacity="0.2"
+          data-part="band"
+        />
+        <line
+          x1={left}
+          x2={left + barWidth}
+          y1={height}
+          y2={height}
+          stroke="var(--driver)"
+          strokeWidth="3"
+          strokeLinecap="round"
+          data-part="bar"
+        />
         {level.value === baseline && (
-          <circle cx={middle} cy={height} r="4.75" fill="var(--sheet)" stroke="var(--driver)" strokeWidth="2" data-part="baseline" />
+          <circle
+            cx={middle}
+            cy={height}
+            r="4.75"
+            fill="var(--sheet)"
+            stroke="var(--driver)"
+            strokeWidth="2"
+            data-part="baseline"
+          />
         )}
         {level.value === value && level.value !== baseline && (
-          <circle cx={middle} cy={height} r="5.75" fill="var(--driver)" stroke="var(--sheet)" strokeWidth="1.5" data-part="dot" />
+          <circle
+            cx={middle}
+            cy={height}
+            r="5.75"
+            fill="var(--driver)"
+            stroke="var(--sheet)"
+            strokeWidth="1.5"
+            data-part="dot"
+          />
         )}
         {name}
       </g>

@@ -4,6 +4,12 @@ import type { LaneGeometry } from "../driver-lane/lane-geometry";
 import { isLearnt } from "./factor-level";
 import type { FactorLevel } from "./factor-level";
 
+const choiceStyle =
+  "absolute top-1.5 bottom-2 cursor-pointer rounded-md border border-transparent transition-colors " +
+  "hover:bg-hover has-checked:border-driver has-checked:bg-driver-soft has-focus-visible:outline-2 " +
+  "has-focus-visible:outline-offset-1 has-focus-visible:outline-accent " +
+  "has-disabled:cursor-not-allowed has-disabled:opacity-60";
+
 type LevelChoicesProps = {
   label: string;
   levels: readonly FactorLevel[];
@@ -27,7 +33,7 @@ export const LevelChoices = ({ label, levels, value, geometry, onChange, readOnl
           <label
             key={level.value}
             title={isLearnt(level) ? undefined : `Seen in ${countOf(level.weeks, "week")}: too few to learn from`}
-            className="absolute top-1.5 bottom-2 cursor-pointer rounded-md border border-transparent transition-colors hover:bg-hover has-checked:border-driver has-checked:bg-driver-soft has-focus-visible:outline-2 has-focus-visible:outline-offset-1 has-focus-visible:outline-accent has-disabled:cursor-not-allowed has-disabled:opacity-60"
+            className={choiceStyle}
             style={{ left: margin.left + (index + 0.5) * column - width / 2, width }}
           >
             <input

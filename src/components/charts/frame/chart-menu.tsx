@@ -1,6 +1,10 @@
 import { Ellipsis, FileDown, ImageDown, Table2, ChartSpline } from "lucide-react";
 import { Menu, MenuItem } from "@/components/ui/menu";
 
+const triggerStyle =
+  "inline-flex size-7 items-center justify-center rounded-sm text-muted transition-colors " +
+  "hover:bg-hover hover:text-ink data-[state=open]:bg-hover print:hidden";
+
 type ChartMenuProps = {
   title: string;
   showsTable: boolean;
@@ -13,11 +17,7 @@ type ChartMenuProps = {
 export const ChartMenu = ({ title, showsTable, onToggleTable, onSavePicture, onSaveCsv }: ChartMenuProps) => (
   <Menu
     trigger={
-      <button
-        type="button"
-        aria-label={`${title}: table, picture or file`}
-        className="inline-flex size-7 items-center justify-center rounded-sm text-muted transition-colors hover:bg-hover hover:text-ink data-[state=open]:bg-hover print:hidden"
-      >
+      <button type="button" aria-label={`${title}: table, picture or file`} className={triggerStyle}>
         <Ellipsis className="size-4" aria-hidden="true" />
       </button>
     }

@@ -20,7 +20,11 @@ export const ChartNumbers = ({ title, table, height }: { title: string; table: C
         <thead className="sticky top-0 bg-sheet">
           <tr>
             {table.columns.map((column, index) => (
-              <th key={column} scope="col" className={`border-b border-hairline px-3 py-1.5 font-medium text-muted ${side(table, index)}`}>
+              <th
+                key={column}
+                scope="col"
+                className={`border-b border-hairline px-3 py-1.5 font-medium text-muted ${side(table, index)}`}
+              >
                 {column}
               </th>
             ))}

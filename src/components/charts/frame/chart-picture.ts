@@ -1,7 +1,16 @@
 /** Looks that come from style sheets and must stand in the drawing itself once it leaves the page. */
 const copiedProperties = [
-  "fill", "fill-opacity", "stroke", "stroke-width", "stroke-opacity", "stroke-dasharray", "stroke-linecap",
-  "stroke-linejoin", "opacity", "shape-rendering", "paint-order",
+  "fill",
+  "fill-opacity",
+  "stroke",
+  "stroke-width",
+  "stroke-opacity",
+  "stroke-dasharray",
+  "stroke-linecap",
+  "stroke-linejoin",
+  "opacity",
+  "shape-rendering",
+  "paint-order",
 ];
 
 /** Pixels per CSS pixel: sharp on a slide. */
@@ -31,7 +40,10 @@ export const chartPicture = async ({ title, plot }: PictureOptions): Promise<Blo
   context.translate(margin.side - box.left, margin.top - box.top);
   for (const drawing of plot.querySelectorAll<SVGSVGElement>("svg")) await paintDrawing(context, drawing);
   return new Promise((resolve, reject) =>
-    canvas.toBlob((blob) => (blob ? resolve(blob) : reject(new Error("The picture could not be written."))), "image/png"),
+    canvas.toBlob(
+      (blob) => (blob ? resolve(blob) : reject(new Error("The picture could not be written."))),
+      "image/png",
+    ),
   );
 };
 

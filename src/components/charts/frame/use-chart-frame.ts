@@ -6,7 +6,8 @@ import type { ChartTable } from "./chart-table";
 import { chartPicture } from "./chart-picture";
 
 const isTyping = (target: EventTarget) =>
-  target instanceof HTMLElement && (target.isContentEditable || ["INPUT", "SELECT", "TEXTAREA"].includes(target.tagName));
+  target instanceof HTMLElement &&
+  (target.isContentEditable || ["INPUT", "SELECT", "TEXTAREA"].includes(target.tagName));
 
 type ChartFrameOptions = {
   title: string;

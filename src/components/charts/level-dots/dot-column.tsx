@@ -16,11 +16,34 @@ export const DotColumn = ({ column, y, foot, highlighted, onHighlight }: DotColu
   return (
     <g>
       {column.chain !== null && (
-        <line x1={column.left} x2={column.right} y1={y.toPixel(column.chain)} y2={y.toPixel(column.chain)} stroke="var(--ink)" strokeWidth="2" data-part="chain" />
+        <line
+          x1={column.left}
+          x2={column.right}
+          y1={y.toPixel(column.chain)}
+          y2={y.toPixel(column.chain)}
+          stroke="var(--ink)"
+          strokeWidth="2"
+          data-part="chain"
+        />
       )}
       {column.dots.map((dot) => (
-        <g key={dot.id} data-group={dot.group} data-dot={dot.id} className="cursor-pointer" onClick={() => onHighlight(dot.id)}>
-          <line x1={dot.x} x2={dot.x} y1={inside(dot.lower)} y2={inside(dot.upper)} stroke="var(--group)" strokeWidth={dot.id === highlighted ? 4 : 2.5} strokeOpacity={dot.id === highlighted ? 0.55 : 0.3} strokeLinecap="round" />
+        <g
+          key={dot.id}
+          data-group={dot.group}
+          data-dot={dot.id}
+          className="cursor-pointer"
+          onClick={() => onHighlight(dot.id)}
+        >
+          <line
+            x1={dot.x}
+            x2={dot.x}
+            y1={inside(dot.lower)}
+            y2={inside(dot.upper)}
+            stroke="var(--group)"
+            strokeWidth={dot.id === highlighted ? 4 : 2.5}
+            strokeOpacity={dot.id === highlighted ? 0.55 : 0.3}
+            strokeLinecap="round"
+          />
           <GroupShape group={dot.group} x={dot.x} y={y.toPixel(dot.estimate)} />
         </g>
       ))}
@@ -29,7 +52,13 @@ export const DotColumn = ({ column, y, foot, highlighted, onHighlight }: DotColu
           {named.name}
         </text>
       )}
-      <text className="chart-text" x={(column.left + column.right) / 2} y={foot} textAnchor="middle" style={{ fontSize: 12.5 }}>
+      <text
+        className="chart-text"
+        x={(column.left + column.right) / 2}
+        y={foot}
+        textAnchor="middle"
+        style={{ fontSize: 12.5 }}
+      >
         {column.label}
       </text>
     </g>

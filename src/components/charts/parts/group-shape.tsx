@@ -2,7 +2,12 @@
 export type StoreGroup = 1 | 2 | 3 | 4 | 5 | 6;
 
 export const groupNames: Record<StoreGroup, string> = {
-  1: "circle", 2: "square", 3: "triangle", 4: "diamond", 5: "triangle pointing down", 6: "cross",
+  1: "circle",
+  2: "square",
+  3: "triangle",
+  4: "diamond",
+  5: "triangle pointing down",
+  6: "cross",
 };
 
 const shapes: Record<StoreGroup, string> = {
@@ -16,7 +21,13 @@ const shapes: Record<StoreGroup, string> = {
 
 /** A group's mark inside a drawing, centred on its place. */
 export const GroupShape = ({ group, x = 0, y = 0 }: { group: StoreGroup; x?: number; y?: number }) => (
-  <path data-group={group} d={shapes[group]} transform={`translate(${x} ${y})`} fill="var(--group)" aria-hidden="true" />
+  <path
+    data-group={group}
+    d={shapes[group]}
+    transform={`translate(${x} ${y})`}
+    fill="var(--group)"
+    aria-hidden="true"
+  />
 );
 
 /** A group's mark in text. */

@@ -7,7 +7,13 @@ export const HatchPattern = ({ id }: { id: string }) => (
   </pattern>
 );
 
-type HatchingProps = { id: string; ranges: readonly (readonly [number, number])[]; x: Scale; top: number; bottom: number };
+type HatchingProps = {
+  id: string;
+  ranges: readonly (readonly [number, number])[];
+  x: Scale;
+  top: number;
+  bottom: number;
+};
 
 /** Stretches of the axis that too few weeks support, hatched within the chart's own range. */
 export const Hatching = ({ id, ranges, x, top, bottom }: HatchingProps) => {

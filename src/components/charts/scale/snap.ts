@@ -12,7 +12,12 @@ export const snap = (value: number, { min, max, step }: Steps): number => {
 export const valueAfterKey = (key: string, value: number, steps: Steps): number | undefined => {
   const { min, max, step } = steps;
   const by: Record<string, number> = {
-    ArrowRight: 1, ArrowUp: 1, ArrowLeft: -1, ArrowDown: -1, PageUp: 10, PageDown: -10,
+    ArrowRight: 1,
+    ArrowUp: 1,
+    ArrowLeft: -1,
+    ArrowDown: -1,
+    PageUp: 10,
+    PageDown: -10,
   };
   if (key === "Home") return min;
   if (key === "End") return max;

@@ -45,9 +45,21 @@ export const SumColumn = ({ title, heading, parts, interval, format, formatSigne
     <ChartFrame title={title} heading={heading} table={table} height={height}>
       <div ref={plot}>
         <svg width={width} height={height} role="img" aria-label={title}>
-          <LeftAxis scale={y} ticks={ticks.map((value) => ({ value, label: format(value) }))} left={margin.left - 4} right={width - margin.right} />
+          <LeftAxis
+            scale={y}
+            ticks={ticks.map((value) => ({ value, label: format(value) }))}
+            left={margin.left - 4}
+            right={width - margin.right}
+          />
           {bars.slice(0, -1).map((bar, index) => (
-            <line key={bar.id} className="chart-reference" x1={bar.left + bar.width} x2={bars[index + 1].left} y1={bar.endY} y2={bar.endY} />
+            <line
+              key={bar.id}
+              className="chart-reference"
+              x1={bar.left + bar.width}
+              x2={bars[index + 1].left}
+              y1={bar.endY}
+              y2={bar.endY}
+            />
           ))}
           {bars.map((bar) => (
             <SumBarShape
@@ -74,7 +86,14 @@ const SumBarShape = ({ bar, foot, text, clearance }: SumBarShapeProps) => {
   const middle = bar.left + bar.width / 2;
   return (
     <g data-driver={bar.driver} data-part={bar.id}>
-      <rect x={bar.left} y={bar.top} width={bar.width} height={Math.max(1, bar.bottom - bar.top)} rx={Math.min(3, (bar.bottom - bar.top) / 2)} fill={fillOf(bar)} />
+      <rect
+        x={bar.left}
+        y={bar.top}
+        width={bar.width}
+        height={Math.max(1, bar.bottom - bar.top)}
+        rx={Math.min(3, (bar.bottom - bar.top) / 2)}
+        fill={fillOf(bar)}
+      />
       <text className="chart-text-strong chart-halo" x={middle} y={clearance - 7} textAnchor="middle">
         {text}
       </text>

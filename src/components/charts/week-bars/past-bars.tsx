@@ -19,7 +19,16 @@ export const PastBars = memo(function PastBars({ weeks, bars, y, foot }: PastBar
         if (units === null) return null;
         const top = y.toPixel(Math.max(0, units));
         return (
-          <rect key={bar.week} data-week={bar.week} x={bar.left} y={top} width={bar.width} height={zero - top} rx={Math.min(2, bar.width / 4)} fill="var(--history-bar)" />
+          <rect
+            key={bar.week}
+            data-week={bar.week}
+            x={bar.left}
+            y={top}
+            width={bar.width}
+            height={zero - top}
+            rx={Math.min(2, bar.width / 4)}
+            fill="var(--history-bar)"
+          />
         );
       })}
       {bars

@@ -30,7 +30,14 @@ export const WeekBars = (props: WeekBarsProps) => {
   const { title, heading, past, plan, selected, onSelect, format, legend, height = 216 } = props;
   const [plot, width] = useElementWidth<HTMLDivElement>(900);
   const layout = useMemo(
-    () => weekLayout({ past, plan, left: margin.left, right: width - margin.right, range: [height - margin.bottom, margin.top] }),
+    () =>
+      weekLayout({
+        past,
+        plan,
+        left: margin.left,
+        right: width - margin.right,
+        range: [height - margin.bottom, margin.top],
+      }),
     [past, plan, width, height],
   );
   const { y, dividerX } = layout;
@@ -47,7 +54,13 @@ export const WeekBars = (props: WeekBarsProps) => {
     <ChartFrame title={title} heading={heading} table={table} height={height} legend={legend}>
       <div ref={plot} className="relative" style={{ height }}>
         <WeekChoices bars={layout.plan} selected={selected} onSelect={onSelect} height={height} />
-        <svg width={width} height={height} className="pointer-events-none absolute inset-0" role="img" aria-label={title}>
+        <svg
+          width={width}
+          height={height}
+          className="pointer-events-none absolute inset-0"
+          role="img"
+          aria-label={title}
+        >
           <LeftAxis scale={y} ticks={ticks} left={margin.left - 4} right={width - margin.right} />
           <PastBars weeks={past} bars={layout.past} y={y} foot={height} />
           {dividerX !== null && (

@@ -1,6 +1,10 @@
 import { useId } from "react";
 import type { WeekBar } from "./week-layout";
 
+const choiceStyle =
+  "absolute top-0 cursor-pointer rounded-sm transition-colors hover:bg-hover " +
+  "has-focus-visible:outline-2 has-focus-visible:outline-accent";
+
 type WeekChoicesProps = {
   bars: readonly WeekBar[];
   selected: string | null;
@@ -14,11 +18,7 @@ export const WeekChoices = ({ bars, selected, onSelect, height }: WeekChoicesPro
   return (
     <div role="radiogroup" aria-label="Week looked at">
       {bars.map((bar) => (
-        <label
-          key={bar.week}
-          className="absolute top-0 cursor-pointer rounded-sm transition-colors hover:bg-hover has-focus-visible:outline-2 has-focus-visible:outline-accent"
-          style={{ left: bar.left - 4, width: bar.width + 8, height }}
-        >
+        <label key={bar.week} className={choiceStyle} style={{ left: bar.left - 4, width: bar.width + 8, height }}>
           <input
             type="radio"
             name={name}

@@ -24,7 +24,8 @@ const gapBetween = 20;
 /** Plan weeks get wide places, past weeks share the rest; those furthest back are left out where they would not fit. */
 export const weekLayout = ({ past, plan, left, right, range }: WeekLayoutOptions): WeekLayout => {
   const whole = right - left;
-  const planPlace = plan.length === 0 ? 0 : Math.min(widestPlan * 1.25, (whole * (past.length ? 0.5 : 1)) / plan.length);
+  const planPlace =
+    plan.length === 0 ? 0 : Math.min(widestPlan * 1.25, (whole * (past.length ? 0.5 : 1)) / plan.length);
   const room = whole - planPlace * plan.length - (plan.length && past.length ? gapBetween : 0);
   const kept = past.slice(Math.max(0, past.length - Math.floor(room / narrowestPast)));
   const pastPlace = kept.length ? Math.min(planPlace || widestPlan, room / kept.length) : 0;
@@ -36,7 +37,10 @@ export const weekLayout = ({ past, plan, left, right, range }: WeekLayoutOptions
     1,
   ];
   return {
-    past: kept.map((week, index) => ({ ...barIn(week, pastLeft + index * pastPlace, pastPlace), index: past.length - kept.length + index })),
+    past: kept.map((week, index) => ({
+      ...barIn(week, pastLeft + index * pastPlace, pastPlace),
+      index: past.length - kept.length + index,
+    })),
     plan: plan.map((week, index) => barIn(week, planLeft + index * planPlace, planPlace)),
     y: linearScale({ domain: [0, Math.max(...values) * 1.04], range }),
     dividerX: plan.length && kept.length ? planLeft - gapBetween / 2 : null,

@@ -23,7 +23,11 @@ export const PersonMenu = ({ person, onChangePassword }: PersonMenuProps) => {
   return (
     <Menu
       trigger={
-        <button type="button" aria-label={`${initialsOf(person.name)}: account of ${person.name}`} className="rounded-full">
+        <button
+          type="button"
+          aria-label={`${initialsOf(person.name)}: account of ${person.name}`}
+          className="rounded-full"
+        >
           <Avatar initials={initialsOf(person.name)} />
         </button>
       }
@@ -41,7 +45,9 @@ export const PersonMenu = ({ person, onChangePassword }: PersonMenuProps) => {
       </MenuItem>
       <MenuItem
         onSelect={() =>
-          signOut.mutate(undefined, { onError: () => status.failed("You are still signed in: the server did not answer.") })
+          signOut.mutate(undefined, {
+            onError: () => status.failed("You are still signed in: the server did not answer."),
+          })
         }
       >
         <LogOut aria-hidden="true" /> Sign out

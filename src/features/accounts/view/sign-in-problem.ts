@@ -6,7 +6,9 @@ export const signInProblem = (error: unknown): string => {
   if (!(error instanceof ApiError)) return "Something went wrong in this page. Reload it, then try again.";
   if (error.status === 401) return "That e-mail address and password do not go together.";
   if (error.status === 429) {
-    const wait = error.retryAfterSeconds ? ` Try again in ${formatDuration(error.retryAfterSeconds)}.` : " Try again later.";
+    const wait = error.retryAfterSeconds
+      ? ` Try again in ${formatDuration(error.retryAfterSeconds)}.`
+      : " Try again later.";
     return `Too many attempts.${wait}`;
   }
   if (error.status === 0) return error.detail;

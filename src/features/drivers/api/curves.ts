@@ -8,7 +8,8 @@ type CurvesOf = { modelId: string; store: string; level: number };
 export const curvesQuery = ({ modelId, store, level }: CurvesOf) =>
   queryOptions({
     queryKey: ["curves", modelId, store, level],
-    queryFn: ({ signal }) => call(getModelCurves, { params: { id: modelId }, query: { store, level, points: 121 }, signal }),
+    queryFn: ({ signal }) =>
+      call(getModelCurves, { params: { id: modelId }, query: { store, level, points: 121 }, signal }),
     staleTime: Infinity,
     placeholderData: keepPreviousData,
   });

@@ -5,7 +5,10 @@ import { call } from "@/lib/api-client";
 import { modelsQuery } from "./models";
 
 /** A product sold in one store only is fitted at once; otherwise the answer names the job. */
-const fitEndpoint = { ...createModel, response: z.union([modelAcceptedSchema, createModel.response ?? modelAcceptedSchema]) };
+const fitEndpoint = {
+  ...createModel,
+  response: z.union([modelAcceptedSchema, createModel.response ?? modelAcceptedSchema]),
+};
 
 /** Fits a product anew in all its stores; gives the job to watch, or null where it is done already. */
 export const useFitModel = (product: string) => {

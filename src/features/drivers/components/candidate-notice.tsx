@@ -18,8 +18,8 @@ export const CandidateNotice = ({ model, isShown, onShow }: CandidateNoticeProps
     <Notice tone="neutral">
       <div className="flex flex-wrap items-center justify-between gap-3">
         <span>
-          {isShown ? "You are looking at a fit that is not in use" : "A newer fit waits to be looked at"}: made {format.moment(model.createdAt)} by{" "}
-          {model.createdBy}, {countOf(model.fits.length, "store")}.
+          {isShown ? "You are looking at a fit that is not in use" : "A newer fit waits to be looked at"}: made{" "}
+          {format.moment(model.createdAt)} by {model.createdBy}, {countOf(model.fits.length, "store")}.
         </span>
         <span className="flex gap-2">
           {!isShown && (
@@ -35,7 +35,8 @@ export const CandidateNotice = ({ model, isShown, onShow }: CandidateNoticeProps
               onClick={() =>
                 putInUse.mutate(model.id, {
                   onSuccess: () => status.done("This model is now in use."),
-                  onError: (error) => status.failed(error instanceof ApiError ? error.detail : "It was not put in use. Try again."),
+                  onError: (error) =>
+                    status.failed(error instanceof ApiError ? error.detail : "It was not put in use. Try again."),
                 })
               }
             >

@@ -53,7 +53,12 @@ export const DriversPage = () => {
               onProduct={(code) => set({ product: code, model: null })}
               onStore={(code) => set({ product, store: code })}
             />
-            <SegmentedControl label="Level of the bands" segments={levels} value={String(level) === "0.95" ? "0.95" : "0.8"} onChange={(value) => set({ level: value })} />
+            <SegmentedControl
+              label="Level of the bands"
+              segments={levels}
+              value={String(level) === "0.95" ? "0.95" : "0.8"}
+              onChange={(value) => set({ level: value })}
+            />
           </>
         }
       />
@@ -64,7 +69,9 @@ export const DriversPage = () => {
         isEmpty={(list) => list.length === 0}
         empty={
           <Sheet>
-            <EmptyState title="No products yet">Once a data admin has loaded stores, products and weekly sales, drivers can be learnt here.</EmptyState>
+            <EmptyState title="No products yet">
+              Once a data admin has loaded stores, products and weekly sales, drivers can be learnt here.
+            </EmptyState>
           </Sheet>
         }
       >
@@ -78,7 +85,16 @@ export const DriversPage = () => {
               <Sheet>
                 <EmptyState
                   title={`Nothing is learnt of ${known?.name ?? "this product"} yet`}
-                  action={mayFit && <FitButton product={product} label="Learn its drivers" tone="primary" jobId={models.data?.[0]?.jobId} />}
+                  action={
+                    mayFit && (
+                      <FitButton
+                        product={product}
+                        label="Learn its drivers"
+                        tone="primary"
+                        jobId={models.data?.[0]?.jobId}
+                      />
+                    )
+                  }
                 >
                   {mayFit
                     ? "A fit takes seconds for a store and runs in the background for a chain."

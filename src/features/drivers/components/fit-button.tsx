@@ -8,7 +8,12 @@ import { hasEnded, useJob } from "@/lib/use-job";
 import { useFitModel } from "../api/fit-model";
 import { modelsQuery } from "../api/models";
 
-type FitButtonProps = { product: string; label: string; tone?: "primary" | "secondary"; /** A fit that goes on already. */ jobId?: string | null };
+type FitButtonProps = {
+  product: string;
+  label: string;
+  tone?: "primary" | "secondary";
+  /** A fit that goes on already. */ jobId?: string | null;
+};
 
 /** Fits the product in all its stores, in the background, and shows how far that is. */
 export const FitButton = ({ product, label, tone = "secondary", jobId = null }: FitButtonProps) => {
@@ -20,7 +25,8 @@ export const FitButton = ({ product, label, tone = "secondary", jobId = null }: 
     void queryClient.invalidateQueries({ queryKey: modelsQuery(product).queryKey });
     if (!started) return;
     if (ended.state === "succeeded") status.done("The fit is done.");
-    if (ended.state === "failed") status.failed(ended.error?.detail ?? "The fit broke down. The model in use stays as it was.");
+    if (ended.state === "failed")
+      status.failed(ended.error?.detail ?? "The fit broke down. The model in use stays as it was.");
   });
   if (job && !hasEnded(job)) {
     return (
@@ -36,7 +42,8 @@ export const FitButton = ({ product, label, tone = "secondary", jobId = null }: 
       onClick={() =>
         fit.mutate(undefined, {
           onSuccess: setStarted,
-          onError: (error) => status.failed(error instanceof ApiError ? error.detail : "The fit did not start. Try again."),
+          onError: (error) =>
+            status.failed(error instanceof ApiError ? error.detail : "The fit did not start. Try again."),
         })
       }
     >

@@ -15,7 +15,8 @@ export const LevelLane = ({ curve, level }: LevelLaneProps) => {
   const levels = useMemo(() => factorLevels(curve), [curve]);
   const reference = referenceLevel(curve);
   const [picked, setPicked] = useState<string | null>(null);
-  const chosen = levels.find((one) => one.value === picked) ?? levels.find((one) => one.value !== reference) ?? levels[0];
+  const chosen =
+    levels.find((one) => one.value === picked) ?? levels.find((one) => one.value !== reference) ?? levels[0];
   const label = driverLabel(curve.driver);
   const isReference = chosen.value === reference;
   return (

@@ -28,32 +28,52 @@ export const ModelFacts = ({ model, fit }: { model: Model; fit: FitSummary }) =>
         </Fact>
         <Fact name="Mean week">{format.units(fit.meanWeeklyUnits)} units</Fact>
         {fit.meanBaseUnits !== null && (
-          <Fact name={<Term meaning="What the same weeks would have sold at regular price without promotion.">Mean base</Term>}>
+          <Fact
+            name={
+              <Term meaning="What the same weeks would have sold at regular price without promotion.">Mean base</Term>
+            }
+          >
             {format.units(fit.meanBaseUnits)} units
           </Fact>
         )}
         <Fact name="Price moved without promotion">
           in {countOf(fit.priceLearning.weeksMoved, "week")}
-          <span className="block text-sm font-normal text-muted">{countOf(fit.priceLearning.regularPrices, "regular price")}</span>
+          <span className="block text-sm font-normal text-muted">
+            {countOf(fit.priceLearning.regularPrices, "regular price")}
+          </span>
         </Fact>
         <Fact name="Sold out">
           {leftOut + partly === 0 ? "never" : `${countOf(leftOut, "week")} left out`}
-          {partly > 0 && <span className="block text-sm font-normal text-muted">{countOf(partly, "week")} counted in part</span>}
+          {partly > 0 && (
+            <span className="block text-sm font-normal text-muted">{countOf(partly, "week")} counted in part</span>
+          )}
         </Fact>
         {fit.devianceExplained !== null && (
-          <Fact name={<Term meaning="How much of the weeks' ups and downs the drivers account for: 100 % would be all of it.">Explained</Term>}>
+          <Fact
+            name={
+              <Term meaning="How much of the weeks' ups and downs the drivers account for: 100 % would be all of it.">
+                Explained
+              </Term>
+            }
+          >
             {format.percent(fit.devianceExplained)}
           </Fact>
         )}
         <Fact
           name={
-            <Term meaning="Effective degrees of freedom: how much freedom the curves took. A straight line takes one.">Freedom taken</Term>
+            <Term meaning="Effective degrees of freedom: how much freedom the curves took. A straight line takes one.">
+              Freedom taken
+            </Term>
           }
         >
           {format.number(fit.edf, { digits: 1 })}
         </Fact>
         <Fact
-          name={<Term meaning="How much wider than pure chance the weeks scatter: 1 would be pure chance. Bands allow for it.">Scatter</Term>}
+          name={
+            <Term meaning="How much wider than pure chance the weeks scatter: 1 would be pure chance. Bands allow for it.">
+              Scatter
+            </Term>
+          }
         >
           {format.multiplier(fit.dispersion)}
         </Fact>
@@ -69,8 +89,8 @@ export const ModelFacts = ({ model, fit }: { model: Model; fit: FitSummary }) =>
           </Notice>
         )}
         <p className="text-sm text-muted">
-          Curves describe past weeks; they do not prove cause. What moved only together, such as a price that was cut only in
-          promotions, cannot be told apart.
+          Curves describe past weeks; they do not prove cause. What moved only together, such as a price that was cut
+          only in promotions, cannot be told apart.
         </p>
       </div>
     </Sheet>

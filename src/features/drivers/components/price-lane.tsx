@@ -37,7 +37,9 @@ export const PriceLane = ({ curve, level, fit, regularPrice }: PriceLaneProps) =
                 <Term meaning="Own-price elasticity: by how many percent units change when the price rises by one percent, at the handle's price.">
                   elasticity
                 </Term>{" "}
-                <span className="font-medium whitespace-nowrap text-ink">{format.number(elasticity.estimate, { digits: 1 })}</span>{" "}
+                <span className="font-medium whitespace-nowrap text-ink">
+                  {format.number(elasticity.estimate, { digits: 1 })}
+                </span>{" "}
                 <span className="whitespace-nowrap">
                   ({format.number(elasticity.lower, { digits: 1 })} to {format.number(elasticity.upper, { digits: 1 })})
                 </span>

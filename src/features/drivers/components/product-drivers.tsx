@@ -36,16 +36,19 @@ export const ProductDrivers = (props: ProductDriversProps) => {
       <div className="flex flex-wrap items-center justify-between gap-3">
         <p className="text-muted">
           {stateWords[model.state]}
-          {model.usedFrom && ` since ${format.moment(model.usedFrom)}`} · fitted {format.moment(model.createdAt)} · {model.fits.length} of{" "}
-          {model.fits.length + model.skipped.length} stores learnt
+          {model.usedFrom && ` since ${format.moment(model.usedFrom)}`} · fitted {format.moment(model.createdAt)} ·{" "}
+          {model.fits.length} of {model.fits.length + model.skipped.length} stores learnt
         </p>
         {mayFit && <FitButton product={model.product} label="Fit anew" jobId={models[0].jobId} />}
       </div>
-      {waiting && <CandidateNotice model={waiting} isShown={waiting.id === model.id} onShow={() => onModel(waiting.id)} />}
+      {waiting && (
+        <CandidateNotice model={waiting} isShown={waiting.id === model.id} onShow={() => onModel(waiting.id)} />
+      )}
       {isUnknown || !fit ? (
         <Sheet>
           <EmptyState title={`Nothing is learnt of it in ${wantedStore ? nameOf(wantedStore) : "any store"}`}>
-            {skipped?.reason ?? "It was not sold there, or not in the weeks the model was fitted to. Choose another store."}
+            {skipped?.reason ??
+              "It was not sold there, or not in the weeks the model was fitted to. Choose another store."}
           </EmptyState>
         </Sheet>
       ) : (

@@ -19,8 +19,21 @@ export const StoreDrivers = ({ model, fit, storeName, level }: StoreDriversProps
   return (
     <div className="flex flex-col gap-5">
       <div className="grid grid-cols-[minmax(0,1fr)] gap-5 xl:grid-cols-[minmax(0,1fr)_21rem]">
-        <QueryView query={curves} loading="Drawing the curves" failure="The curves could not be drawn" skeleton={<CurvesOutline />}>
-          {(answer) => <DriverLanes key={answer.store} curves={answer.curves} fit={fit} level={answer.level} regularPrice={regularPrice} />}
+        <QueryView
+          query={curves}
+          loading="Drawing the curves"
+          failure="The curves could not be drawn"
+          skeleton={<CurvesOutline />}
+        >
+          {(answer) => (
+            <DriverLanes
+              key={answer.store}
+              curves={answer.curves}
+              fit={fit}
+              level={answer.level}
+              regularPrice={regularPrice}
+            />
+          )}
         </QueryView>
         <ModelFacts model={model} fit={fit} />
       </div>

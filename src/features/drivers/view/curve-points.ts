@@ -27,20 +27,23 @@ export const levelLabel = (level: string): string => {
 const usualOrder = ["none", "feature", "display", "both", "multi_buy", "coupon", "other"];
 
 const byUsualOrder = (a: FactorLevel, b: FactorLevel): number => {
-  const place = ({ value }: FactorLevel) => (usualOrder.includes(value) ? usualOrder.indexOf(value) : usualOrder.length);
+  const place = ({ value }: FactorLevel) =>
+    usualOrder.includes(value) ? usualOrder.indexOf(value) : usualOrder.length;
   return place(a) - place(b) || a.label.localeCompare(b.label);
 };
 
 /** From the link scale to multipliers of a week at the reference level. */
 export const factorLevels = (curve: LevelCurve): FactorLevel[] =>
-  curve.x.map((value, index): FactorLevel => ({
-    value,
-    label: levelLabel(value),
-    estimate: Math.exp(curve.estimate[index]),
-    lower: Math.exp(curve.lower[index]),
-    upper: Math.exp(curve.upper[index]),
-    weeks: curve.supportCount[index],
-  })).sort(byUsualOrder);
+  curve.x
+    .map((value, index): FactorLevel => ({
+      value,
+      label: levelLabel(value),
+      estimate: Math.exp(curve.estimate[index]),
+      lower: Math.exp(curve.lower[index]),
+      upper: Math.exp(curve.upper[index]),
+      weeks: curve.supportCount[index],
+    }))
+    .sort(byUsualOrder);
 
 /** The level the others are read against: the one whose multiplier is one without doubt. */
 export const referenceLevel = (curve: LevelCurve): string => {

@@ -7,4 +7,7 @@ const driverOfTerm = (term: string): string => [...new Set(term.split(":").map(d
 export const plainWarning = (warning: string): string =>
   warning
     .replace(/^Term "([^"]+)"/, (_, term: string) => driverLabel(driverOfTerm(term)))
-    .replace(/: the data show (a straight line|no effect); its penalty went to its limit\.$/, ": its weeks show $1, and so it is drawn.");
+    .replace(
+      /: the data show (a straight line|no effect); its penalty went to its limit\.$/,
+      ": its weeks show $1, and so it is drawn.",
+    );

@@ -22,8 +22,13 @@ export const useRefreshExtract = (id: string) => {
   const queryClient = useQueryClient();
   return () =>
     Promise.all(
-      [extractQuery(id).queryKey, extractIssuesKey(id), extractChangesKey(id), ["extracts"], ["products"], ["stores"]].map(
-        (queryKey) => queryClient.invalidateQueries({ queryKey }),
-      ),
+      [
+        extractQuery(id).queryKey,
+        extractIssuesKey(id),
+        extractChangesKey(id),
+        ["extracts"],
+        ["products"],
+        ["stores"],
+      ].map((queryKey) => queryClient.invalidateQueries({ queryKey })),
     );
 };

@@ -14,7 +14,11 @@ export const extractIssuesQuery = (id: string, rule: string | null) =>
   infiniteQueryOptions({
     queryKey: [...extractIssuesKey(id), rule],
     queryFn: ({ pageParam, signal }) =>
-      call(listExtractIssues, { params: { id }, query: { limit: pageSize, cursor: pageParam, rule: rule ?? undefined }, signal }),
+      call(listExtractIssues, {
+        params: { id },
+        query: { limit: pageSize, cursor: pageParam, rule: rule ?? undefined },
+        signal,
+      }),
     initialPageParam: undefined as string | undefined,
     getNextPageParam: (page) => page.nextCursor ?? undefined,
   });
@@ -24,7 +28,10 @@ export const readAllIssues = async (id: string, rule: string | null): Promise<Ex
   const issues: ExtractIssue[] = [];
   let cursor: string | undefined;
   do {
-    const page = await call(listExtractIssues, { params: { id }, query: { limit: exportPageSize, cursor, rule: rule ?? undefined } });
+    const page = await call(listExtractIssues, {
+      params: { id },
+      query: { limit: exportPageSize, cursor, rule: rule ?? undefined },
+    });
     issues.push(...page.items);
     cursor = page.nextCursor ?? undefined;
   } while (cursor);

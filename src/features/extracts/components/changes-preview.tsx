@@ -29,7 +29,9 @@ const columnsFor = (format: ChainFormat): TableColumn<Week>[] => [
     value: (week) => week.week,
     cell: ({ week }) => (
       <>
-        <span className="inline-block font-medium whitespace-nowrap first-letter:uppercase">{format.weekSpan(week, week)}</span>
+        <span className="inline-block font-medium whitespace-nowrap first-letter:uppercase">
+          {format.weekSpan(week, week)}
+        </span>
         <span className="ml-3 text-sm text-muted max-md:hidden">{format.weekDays(week, { year: false })}</span>
       </>
     ),
@@ -64,7 +66,12 @@ export const ChangesPreview = ({ extractId, isLoaded }: { extractId: string; isL
   const format = useChainFormat();
   return (
     <Sheet flush heading={isLoaded ? "What loading changed" : "What loading would change"}>
-      <QueryView query={query} loading="Comparing with what is there" failure="The comparison could not be made" skeleton={<div className="h-24" role="status" aria-label="Comparing with what is there" />}>
+      <QueryView
+        query={query}
+        loading="Comparing with what is there"
+        failure="The comparison could not be made"
+        skeleton={<div className="h-24" role="status" aria-label="Comparing with what is there" />}
+      >
         {(changes) => (
           <>
             <p className="px-4 pb-4 text-muted sm:px-5">{changesSentence(changes, isLoaded)}</p>

@@ -27,7 +27,11 @@ export const ExtractActions = ({ extract }: { extract: Extract }) => {
   const busyWith = (name: ExtractAction) => action.isPending && action.variables === name;
   return (
     <>
-      <a href={endpointAddress(getExtractOriginal, { params: { id: extract.id } })} download={extract.fileName} className={buttonStyle()}>
+      <a
+        href={endpointAddress(getExtractOriginal, { params: { id: extract.id } })}
+        download={extract.fileName}
+        className={buttonStyle()}
+      >
         <Download aria-hidden="true" /> Original
       </a>
       {may.check && (
@@ -59,8 +63,8 @@ export const ExtractActions = ({ extract }: { extract: Extract }) => {
         }
       >
         <p>
-          What its rows replaced is put back, and rows it added are taken out. The file itself is kept; to load
-          its rows again, upload it again. Models already fitted stay as they are until they are fitted anew.
+          What its rows replaced is put back, and rows it added are taken out. The file itself is kept; to load its rows
+          again, upload it again. Models already fitted stay as they are until they are fitted anew.
         </p>
       </Dialog>
     </>

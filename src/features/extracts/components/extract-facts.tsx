@@ -31,10 +31,22 @@ export const ExtractFacts = ({ extract }: { extract: Extract }) => {
   return (
     <Sheet>
       <dl className="grid grid-cols-2 gap-5 sm:grid-cols-4">
-        <Figure label="Rows read" value={format.number(rows.read)} note={firstWeek && lastWeek ? format.weekSpan(firstWeek, lastWeek) : undefined} />
-        <Figure label="Rows to use" value={format.number(rows.usable)} note={isWhole ? "all of them" : `${countOf(rows.read - rows.usable, "row")} left out`} />
+        <Figure
+          label="Rows read"
+          value={format.number(rows.read)}
+          note={firstWeek && lastWeek ? format.weekSpan(firstWeek, lastWeek) : undefined}
+        />
+        <Figure
+          label="Rows to use"
+          value={format.number(rows.usable)}
+          note={isWhole ? "all of them" : `${countOf(rows.read - rows.usable, "row")} left out`}
+        />
         <Figure label="Errors" value={format.number(rows.errors)} tone={rows.errors > 0 ? "danger" : undefined} />
-        <Figure label="Warnings" value={format.number(rows.warnings)} tone={rows.warnings > 0 ? "caution" : undefined} />
+        <Figure
+          label="Warnings"
+          value={format.number(rows.warnings)}
+          tone={rows.warnings > 0 ? "caution" : undefined}
+        />
       </dl>
     </Sheet>
   );

@@ -63,5 +63,13 @@ const columnsFor = (format: ChainFormat): TableColumn<Extract>[] => [
 
 export const ExtractList = ({ extracts }: { extracts: readonly Extract[] }) => {
   const format = useChainFormat();
-  return <DataTable caption="Extracts, newest first" rows={extracts} columns={columnsFor(format)} rowKey={(extract) => extract.id} rowHeight={48} />;
+  return (
+    <DataTable
+      caption="Extracts, newest first"
+      rows={extracts}
+      columns={columnsFor(format)}
+      rowKey={(extract) => extract.id}
+      rowHeight={48}
+    />
+  );
 };

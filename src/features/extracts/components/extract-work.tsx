@@ -20,7 +20,8 @@ export const ExtractWork = ({ extract }: { extract: Extract }) => {
   const isWatched = isInWork(extract);
   const tell = (ended: Job) => {
     void refresh();
-    if (isWatched && ended.state === "succeeded" && extract.state === "loading") status.done(`${extract.fileName} is loaded.`);
+    if (isWatched && ended.state === "succeeded" && extract.state === "loading")
+      status.done(`${extract.fileName} is loaded.`);
   };
   const { job, updatedAtMs } = useJob(extract.jobId, tell);
   const isRunning = job !== undefined && (job.state === "queued" || job.state === "running");
@@ -36,7 +37,9 @@ export const ExtractWork = ({ extract }: { extract: Extract }) => {
   return (
     <Notice tone="danger" role="alert">
       <strong className="font-semibold">
-        {extract.state === "unusable" ? "This file cannot be used. " : "The last step broke down; nothing was changed. "}
+        {extract.state === "unusable"
+          ? "This file cannot be used. "
+          : "The last step broke down; nothing was changed. "}
       </strong>
       {extract.failure.detail}
     </Notice>

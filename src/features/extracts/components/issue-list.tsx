@@ -17,7 +17,14 @@ import { IssueRules } from "./issue-rules";
 type Numbered = ExtractIssue & { id: string };
 
 const columns: TableColumn<Numbered>[] = [
-  { id: "line", header: "Line", meaning: "Line in the file; the header is line 1.", value: (issue) => issue.line, align: "right", width: "5.5rem" },
+  {
+    id: "line",
+    header: "Line",
+    meaning: "Line in the file; the header is line 1.",
+    value: (issue) => issue.line,
+    align: "right",
+    width: "5.5rem",
+  },
   {
     id: "column",
     header: "Column",
@@ -30,7 +37,12 @@ const columns: TableColumn<Numbered>[] = [
     id: "value",
     header: "Value",
     value: (issue) => issue.value,
-    cell: (issue) => (issue.value === "" ? <span className="text-muted">empty</span> : <code className="text-sm break-all">{issue.value}</code>),
+    cell: (issue) =>
+      issue.value === "" ? (
+        <span className="text-muted">empty</span>
+      ) : (
+        <code className="text-sm break-all">{issue.value}</code>
+      ),
     width: "12rem",
     sortable: false,
   },
@@ -55,7 +67,8 @@ export const IssueList = ({ extract, rule, onRule }: IssueListProps) => {
   const [isSaving, setSaving] = useState(false);
   const status = useStatusLine();
   const issues = useMemo(
-    () => (query.data?.pages ?? []).flatMap((page) => page.items).map((issue, index) => ({ ...issue, id: String(index) })),
+    () =>
+      (query.data?.pages ?? []).flatMap((page) => page.items).map((issue, index) => ({ ...issue, id: String(index) })),
     [query.data],
   );
   const counts = query.data?.pages[0]?.byRule ?? [];
@@ -70,7 +83,13 @@ export const IssueList = ({ extract, rule, onRule }: IssueListProps) => {
     }
   };
   if (query.isError && !query.data) {
-    return <ErrorState title="The list of issues could not be read" error={query.error} onRetry={() => void query.refetch()} />;
+    return (
+      <ErrorState
+        title="The list of issues could not be read"
+        error={query.error}
+        onRetry={() => void query.refetch()}
+      />
+    );
   }
   return (
     <Sheet
@@ -92,7 +111,14 @@ export const IssueList = ({ extract, rule, onRule }: IssueListProps) => {
             <IssueRules counts={counts} chosen={rule} onChoose={onRule} />
           </div>
           <div className="min-w-0">
-            <DataTable caption="Issues" rows={issues} columns={columns} rowKey={(issue) => issue.id} rowHeight={58} maxHeight={560} />
+            <DataTable
+              caption="Issues"
+              rows={issues}
+              columns={columns}
+              rowKey={(issue) => issue.id}
+              rowHeight={58}
+              maxHeight={560}
+            />
             {query.hasNextPage && (
               <div className="border-t border-hairline p-3 text-center">
                 <Button size="small" onClick={() => void query.fetchNextPage()} busy={query.isFetchingNextPage}>

@@ -1,7 +1,11 @@
 import type { IssueCount } from "@shared/contract/extracts";
 import { useChainFormat } from "@/lib/format/chain-format";
 
-type IssueRulesProps = { counts: readonly IssueCount[]; chosen: string | null; onChoose: (rule: string | null) => void };
+type IssueRulesProps = {
+  counts: readonly IssueCount[];
+  chosen: string | null;
+  onChoose: (rule: string | null) => void;
+};
 
 const rowStyle =
   "flex w-full items-baseline justify-between gap-3 rounded-sm px-3 py-2 text-left transition-colors hover:bg-hover aria-pressed:bg-accent-soft";

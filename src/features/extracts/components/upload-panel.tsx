@@ -75,12 +75,28 @@ export const UploadPanel = ({ limitBytes, onUploaded }: UploadPanelProps) => {
           <div className="min-w-48 flex-1">
             <p className="font-semibold">{file ? file.name : "Drop a file here"}</p>
             <p className="text-sm text-muted">
-              {file ? formatBytes(file.size) : "CSV with a header row, .csv or .csv.gz. It is kept unchanged and checked line by line."}
+              {file
+                ? formatBytes(file.size)
+                : "CSV with a header row, .csv or .csv.gz. It is kept unchanged and checked line by line."}
             </p>
           </div>
           <div className="flex flex-wrap items-end gap-3">
-            {file && <SelectField label="It holds" choices={kindChoices} value={kind} onChange={setKind} fieldClassName="w-40" />}
-            <label htmlFor={inputId} className={buttonStyle({ className: "cursor-pointer has-focus-visible:outline-2 has-focus-visible:outline-offset-2 has-focus-visible:outline-accent" })}>
+            {file && (
+              <SelectField
+                label="It holds"
+                choices={kindChoices}
+                value={kind}
+                onChange={setKind}
+                fieldClassName="w-40"
+              />
+            )}
+            <label
+              htmlFor={inputId}
+              className={buttonStyle({
+                className:
+                  "cursor-pointer has-focus-visible:outline-2 has-focus-visible:outline-offset-2 has-focus-visible:outline-accent",
+              })}
+            >
               {file ? "Choose another" : "Choose a file"}
               <input
                 id={inputId}

@@ -34,7 +34,12 @@ export const CurveComparison = ({ comparison, driver, groups, groupOf, selected,
   const grid = (chain?.x ?? []).map(Number);
   const domain: [number, number] = driver === "season" ? [0, 1] : [grid[0], grid[grid.length - 1]];
   const small = useMemo(
-    () => ratioDomain(curves.flatMap((curve) => curve.points.map((point) => ({ ...point, lower: point.estimate, upper: point.estimate })))),
+    () =>
+      ratioDomain(
+        curves.flatMap((curve) =>
+          curve.points.map((point) => ({ ...point, lower: point.estimate, upper: point.estimate })),
+        ),
+      ),
     [curves],
   );
   const rows = stores.map((store, index) => ({

@@ -22,7 +22,13 @@ export const LevelComparison = ({ comparison, driver, groups, groupOf, selected,
     group: groupOf(store.region),
     meanWeeklyUnits: store.meanWeeklyUnits,
   }));
-  const chainRow = chain && { id: "chain", name: "Chain", region: "", group: null, meanWeeklyUnits: chain.meanWeeklyUnits };
+  const chainRow = chain && {
+    id: "chain",
+    name: "Chain",
+    region: "",
+    group: null,
+    meanWeeklyUnits: chain.meanWeeklyUnits,
+  };
   return (
     <div className="grid grid-cols-[minmax(0,1fr)] items-start gap-5 xl:grid-cols-2">
       <Sheet>

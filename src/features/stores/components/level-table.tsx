@@ -33,7 +33,9 @@ export const LevelTable = ({ rows, chain, levels, selected, onSelect }: LevelTab
             return (
               <span className="whitespace-nowrap">
                 {format.percent(estimate - 1, { signed: true })}{" "}
-                {dot && <span className="text-sm text-muted">{formatPercentInterval(dot.lower - 1, dot.upper - 1)}</span>}
+                {dot && (
+                  <span className="text-sm text-muted">{formatPercentInterval(dot.lower - 1, dot.upper - 1)}</span>
+                )}
               </span>
             );
           },

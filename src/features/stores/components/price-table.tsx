@@ -27,7 +27,9 @@ const columnsFor = (format: ChainFormat, domain: [number, number], level: number
     header: `Elasticity, ${formatPercent(level)} interval`,
     value: (row) => row.elasticity?.estimate ?? null,
     cell: (row) =>
-      row.elasticity && <IntervalMark {...row.elasticity} domain={domain} group={row.group} reference={unitElastic} width={168} />,
+      row.elasticity && (
+        <IntervalMark {...row.elasticity} domain={domain} group={row.group} reference={unitElastic} width={168} />
+      ),
     sortable: false,
     width: "12rem",
     from: "sm",
@@ -54,7 +56,10 @@ const columnsFor = (format: ChainFormat, domain: [number, number], level: number
 export const PriceTable = ({ rows, chain, level, selected, onSelect }: PriceTableProps) => {
   const format = useChainFormat();
   const columns = useMemo(() => {
-    const domain = intervalDomain(rows.flatMap((row) => row.elasticity ?? []), unitElastic);
+    const domain = intervalDomain(
+      rows.flatMap((row) => row.elasticity ?? []),
+      unitElastic,
+    );
     return columnsFor(format, domain, level);
   }, [rows, format, level]);
   return (

@@ -36,7 +36,11 @@ export const StoreTable = <Row extends StoreRow>(props: StoreTableProps<Row>) =>
       value: (row) => row.name,
       cell: (row) => (
         <span className="flex items-center gap-2.5">
-          {row.group === null ? <span className="h-0.5 w-3 bg-ink" aria-hidden="true" /> : <GroupMark group={row.group} />}
+          {row.group === null ? (
+            <span className="h-0.5 w-3 bg-ink" aria-hidden="true" />
+          ) : (
+            <GroupMark group={row.group} />
+          )}
           {row.group === null ? (
             row.name
           ) : (

@@ -34,18 +34,33 @@ export const StoresPage = () => {
   const known = products.data?.find((one) => one.code === product);
   const learnt = query.data?.stores.filter(({ curve }) => curve !== null).length ?? 0;
   const noModel = query.error instanceof ApiError && query.error.status === 422;
-  const view = query.data && { comparison: query.data, driver, groups, groupOf, selected: store, onSelect: address.setStore };
+  const view = query.data && {
+    comparison: query.data,
+    driver,
+    groups,
+    groupOf,
+    selected: store,
+    onSelect: address.setStore,
+  };
   return (
     <>
       <PageHeader
         title={known ? `${known.name} across ${learnt || "all"} stores` : "Stores"}
-        facts={["each store learnt apart", "coloured by region", query.data?.anchor != null && `anchor ${format.price(query.data.anchor)}`].filter(Boolean)}
+        facts={[
+          "each store learnt apart",
+          "coloured by region",
+          query.data?.anchor != null && `anchor ${format.price(query.data.anchor)}`,
+        ].filter(Boolean)}
         actions={
           <>
             <Combobox
               label="Product"
               className="w-80 max-w-full"
-              options={(products.data ?? []).map(({ code, name, categoryName }) => ({ value: code, label: name, detail: categoryName }))}
+              options={(products.data ?? []).map(({ code, name, categoryName }) => ({
+                value: code,
+                label: name,
+                detail: categoryName,
+              }))}
               value={product || null}
               onChange={address.setProduct}
               placeholder="Find a product"
@@ -71,7 +86,9 @@ export const StoresPage = () => {
             title={known ? `Nothing is learnt of ${known.name} yet` : "No products yet"}
             action={known && <LinkButton to={paths.drivers.href({ product })}>Go to its drivers</LinkButton>}
           >
-            {known ? "Stores can be compared once a model of it is in use." : "Once sales are loaded and drivers learnt, stores can be compared here."}
+            {known
+              ? "Stores can be compared once a model of it is in use."
+              : "Once sales are loaded and drivers learnt, stores can be compared here."}
           </EmptyState>
         </Sheet>
       ) : (
@@ -81,7 +98,9 @@ export const StoresPage = () => {
               <div className="flex flex-col gap-5">
                 {view.comparison.chain === null ? (
                   <Sheet>
-                    <EmptyState title="No store could learn this driver">Choose another driver, or another product.</EmptyState>
+                    <EmptyState title="No store could learn this driver">
+                      Choose another driver, or another product.
+                    </EmptyState>
                   </Sheet>
                 ) : typeof view.comparison.chain.x[0] === "string" ? (
                   <LevelComparison {...view} />

@@ -7,9 +7,13 @@ import type { ComparedDriver } from "../view/drivers";
 type DriverAxis = { label: string; format: (x: number) => string; ticks?: readonly LabelledTick[] };
 
 const months = monthTicks(1);
-const monthAt = (fraction: number) => [...months].reverse().find(({ value }) => value <= fraction + 1e-9)?.label ?? "Jan";
+const monthAt = (fraction: number) =>
+  [...months].reverse().find(({ value }) => value <= fraction + 1e-9)?.label ?? "Jan";
 const labels: Record<ComparedDriver, string> = {
-  price: "Price", season: "Week of year", temperature: "Temperature", promotion: "Promotion",
+  price: "Price",
+  season: "Week of year",
+  temperature: "Temperature",
+  promotion: "Promotion",
 };
 
 /** How a driver's values are written along the picture's foot. */

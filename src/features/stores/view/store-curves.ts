@@ -10,7 +10,12 @@ export type LearntStore = ComparedStore & { curve: Curve };
 export const isLearnt = (store: ComparedStore): store is LearntStore => store.curve !== null;
 
 /** From the link scale to multipliers. */
-export const curvePoints = ({ x, estimate, lower, upper }: Pick<Curve, "x" | "estimate" | "lower" | "upper">): CurvePoint[] =>
+export const curvePoints = ({
+  x,
+  estimate,
+  lower,
+  upper,
+}: Pick<Curve, "x" | "estimate" | "lower" | "upper">): CurvePoint[] =>
   x.map((value, index) => ({
     x: Number(value),
     estimate: Math.exp(estimate[index]),
