@@ -1,5 +1,5 @@
 import { randomBytes } from "node:crypto";
-import { chmodSync, mkdirSync, mkdtempSync, rmSync } from "node:fs";
+import { chmodSync, mkdirSync, mkdtempSync, readdirSync, rmSync } from "node:fs";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { startPart } from "./part.mjs";
@@ -8,7 +8,11 @@ import { createCluster, databaseUrl, ensureDatabase, startCluster, stopCluster }
 import { postgresUserReaches, runsAsRoot } from "./postgres/postgres-user.mjs";
 import { ensurePostgres } from "./postgres/programs.mjs";
 import { Problem } from "./problem.mjs";
+import { recordPrograms } from "./run-program.mjs";
 import { fileStorePart, mailPart } from "./services.mjs";
+import { clearLeftovers, isLeftBehind, takeTurn } from "./turn.mjs";
+
+const prefix = "shelftide-test-";
 
 /**
  * Starts a database server, a file store and a mail catcher for tests alone, in a folder that goes when the command
@@ -19,7 +23,11 @@ import { fileStorePart, mailPart } from "./services.mjs";
 export async function startThrowAwayServices({ context, say }) {
   const { stopping } = context;
   const [programs] = await ensurePostgres({ say, stopping });
-  const folder = makeFolder(context);
+  const base = findBase();
+  await clearLeftBehind({ base, programs, say });
+  const folder = makeFolder(base, context);
+  const turn = await takeTurn({ folder, command: "npm test", say });
+  recordPrograms(turn);
   const ports = await pickPorts(4);
   const [database, files, smtp, page] = ports;
   const cluster = {
@@ -32,6 +40,7 @@ export async function startThrowAwayServices({ context, say }) {
   const parts = [fileStorePart({ folder, port: files }), mailPart({ folder, smtpPort: smtp, pagePort: page })];
   await Promise.all(parts.map((part) => {
     const running = startPart(part);
+    turn.addChild(part.name, running.pid);
     context.onClose(running.stop);
     return running.ready;
   }));
@@ -45,15 +54,36 @@ export async function startThrowAwayServices({ context, say }) {
   };
 }
 
-/** @param {import("./command.mjs").Context} context */
-function makeFolder(context) {
-  const base = [tmpdir(), "/tmp", "/var/tmp"].find((candidate) => !runsAsRoot() || postgresUserReaches(candidate));
-  if (!base) throw new Problem("The user postgres reaches no folder for temporary files: set TMPDIR to one it can reach.");
-  const folder = mkdtempSync(join(base, "shelftide-test-"));
+function findBase() {
+  const base = [tmpdir(), "/tmp", "/var/tmp"].find((folder) => !runsAsRoot() || postgresUserReaches(folder));
+  if (base) return base;
+  throw new Problem("The user postgres reaches no folder for temporary files: set TMPDIR to one it can reach.");
+}
+
+/**
+ * @param {string} base
+ * @param {import("./command.mjs").Context} context
+ */
+function makeFolder(base, context) {
+  const folder = mkdtempSync(join(base, prefix));
   context.onClose(() => rmSync(folder, { recursive: true, force: true }));
   chmodSync(folder, 0o711);
   mkdirSync(join(folder, "logs"));
   return folder;
+}
+
+/**
+ * Removes what test runs left that were ended by force: a database server would otherwise run on for ever.
+ * @param {{ base: string, programs: string, say: (line: string) => void }} options
+ */
+async function clearLeftBehind({ base, programs, say }) {
+  const folders = readdirSync(base).filter((name) => name.startsWith(prefix)).map((name) => join(base, name));
+  for (const folder of folders.filter(isLeftBehind)) {
+    say(`Removing ${folder}, which a test run left that was ended by force.`);
+    await clearLeftovers(folder, say);
+    await stopCluster({ home: join(folder, "postgres"), programs, port: 0, password: "" });
+    rmSync(folder, { recursive: true, force: true });
+  }
 }
 
 /** @param {number} count */

@@ -27,7 +27,7 @@ export async function takeTurn({ folder, command, say }) {
   const turn = { command, address: null, owner: ownIdentity(), launcher: findLauncher(), children: {} };
   for (let attempt = 0; attempt < 5; attempt += 1) {
     if (createWhole(path, turn)) return turnHandle(path, turn);
-    await clearLeftovers(path, say);
+    await clearLeftovers(folder, say);
   }
   throw new Problem(`${path} is being changed by another command: wait a moment, then try again.`);
 }
@@ -39,6 +39,15 @@ export async function takeTurn({ folder, command, say }) {
 export function readTurn(folder) {
   const turn = parseTurn(join(folder, "running.json"));
   return turn && isAlive(turn.owner) ? turn : null;
+}
+
+/**
+ * @param {string} folder
+ * @returns {boolean} whether a command that was ended by force had the turn here last
+ */
+export function isLeftBehind(folder) {
+  const turn = parseTurn(join(folder, "running.json"));
+  return turn !== null && stateOfTurn(turn) === "left behind";
 }
 
 /**
@@ -54,10 +63,12 @@ export function stateOfTurn(turn, alive = isAlive) {
 }
 
 /**
- * @param {string} path
+ * Stops what a command left running that was ended by force, and forgets its turn.
+ * @param {string} folder
  * @param {(line: string) => void} say
  */
-async function clearLeftovers(path, say) {
+export async function clearLeftovers(folder, say) {
+  const path = join(folder, "running.json");
   const turn = parseTurn(path);
   if (turn) {
     const found = stateOfTurn(turn);
