@@ -12,7 +12,7 @@ import { SumColumn } from "@/components/charts/sum-column/sum-column";
 import { runningSums, sumBars, sumScale } from "@/components/charts/sum-column/sum-layout";
 import type { SumPart } from "@/components/charts/sum-column/sum-layout";
 import { WeekBars } from "@/components/charts/week-bars/week-bars";
-import { weekLayout } from "@/components/charts/week-bars/week-layout";
+import { labelledPast, weekLayout } from "@/components/charts/week-bars/week-layout";
 import { formatNumber } from "@/lib/format/number";
 import { renderInPage } from "./support/render";
 
@@ -93,6 +93,17 @@ describe("weeks", () => {
     expect(kept.length).toBeLessThan(60);
     expect(kept[kept.length - 1].week).toBe("w155");
     expect(kept[kept.length - 1].index).toBe(155);
+  });
+
+  it("carry labels that neither run into each other nor beyond the right end", () => {
+    const many = Array.from({ length: 60 }, (_, index) => ({ week: `w${index}`, label: "wk 22", units: 1 }));
+    const { past: bars } = weekLayout({ past: many, plan: [], left: 50, right: 550, range: [188, 12] });
+    const labelled = labelledPast(bars);
+    expect(labelled.length).toBeGreaterThan(5);
+    labelled.forEach((bar, index) => {
+      expect(bar.middle + 18).toBeLessThanOrEqual(550);
+      if (index > 0) expect(bar.middle - labelled[index - 1].middle).toBeGreaterThanOrEqual(46);
+    });
   });
 
   it("are chosen by keyboard among the plan's weeks", async () => {

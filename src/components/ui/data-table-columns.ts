@@ -26,5 +26,8 @@ export const sumOf = <Row>(rows: readonly Row[], value: (row: Row) => number | n
 
 const fromClasses = { sm: "max-sm:hidden", md: "max-md:hidden", lg: "max-lg:hidden" };
 
+/** Takes a column out of the page below the width it is meant for. */
+export const hiddenBelow = <Row>(column: TableColumn<Row>): string => (column.from ? fromClasses[column.from] : "");
+
 export const columnClass = <Row>(column: TableColumn<Row>): string =>
-  `${column.align === "right" ? "text-right" : "text-left"} ${column.from ? fromClasses[column.from] : ""}`;
+  `${column.align === "right" ? "text-right" : "text-left"} ${hiddenBelow(column)}`;

@@ -2,7 +2,7 @@ import { useVirtualizer } from "@tanstack/react-virtual";
 import { useRef } from "react";
 import type { ReactNode } from "react";
 import { classNames } from "@/lib/class-names";
-import { columnClass } from "./data-table-columns";
+import { columnClass, hiddenBelow } from "./data-table-columns";
 import type { TableColumn, TableSort } from "./data-table-columns";
 import { ColumnHeading } from "./data-table-heading";
 import { useDataTable } from "./use-data-table";
@@ -64,7 +64,11 @@ export const DataTable = <Row extends object>(props: DataTableProps<Row>) => {
         <caption className="sr-only">{caption}</caption>
         <colgroup>
           {columns.map((column) => (
-            <col key={column.id} style={column.width ? { width: column.width } : undefined} />
+            <col
+              key={column.id}
+              className={hiddenBelow(column)}
+              style={column.width ? { width: column.width } : undefined}
+            />
           ))}
         </colgroup>
         <thead className="sticky top-0 z-10 bg-sheet">

@@ -74,7 +74,10 @@ export const CurveOverlay = (props: CurveOverlayProps) => {
   const xTicks = useMemo(
     () =>
       ticks ??
-      roundTicks(low, high, Math.round(geometry.innerWidth / 100)).map((value) => ({ value, label: format(value) })),
+      roundTicks(low, high, Math.max(4, Math.round(geometry.innerWidth / 100))).map((value) => ({
+        value,
+        label: format(value),
+      })),
     [ticks, low, high, geometry.innerWidth, format],
   );
   const picture = useMemo(

@@ -1,17 +1,13 @@
 import { memo } from "react";
 import type { Scale } from "../scale/scale";
-import { labelEvery } from "./week-layout";
+import { labelledPast } from "./week-layout";
 import type { PastWeek, WeekLayout } from "./week-layout";
 
 type PastBarsProps = { weeks: readonly PastWeek[]; bars: WeekLayout["past"]; y: Scale; foot: number };
 
-/** Counted from the newest, which stands too near the plan's first label to carry its own. */
-const isLabelled = (fromNewest: number, every: number) => fromNewest % every === (every > 1 ? 1 : 0);
-
 /** Weeks that were. They stay as they are while the plan moves. */
 export const PastBars = memo(function PastBars({ weeks, bars, y, foot }: PastBarsProps) {
   const zero = y.toPixel(0);
-  const every = bars.length > 1 ? labelEvery(bars[1].left - bars[0].left) : 1;
   return (
     <g>
       {bars.map((bar) => {
@@ -31,13 +27,11 @@ export const PastBars = memo(function PastBars({ weeks, bars, y, foot }: PastBar
           />
         );
       })}
-      {bars
-        .filter((bar) => isLabelled(bars.length - 1 - (bar.index - bars[0].index), every))
-        .map((bar) => (
-          <text key={bar.week} className="chart-text" x={bar.middle} y={foot - 9} textAnchor="middle">
-            {bar.label}
-          </text>
-        ))}
+      {labelledPast(bars).map((bar) => (
+        <text key={bar.week} className="chart-text" x={bar.middle} y={foot - 9} textAnchor="middle">
+          {bar.label}
+        </text>
+      ))}
     </g>
   );
 });

@@ -54,3 +54,15 @@ const barIn = ({ week, label }: { week: string; label: string }, start: number, 
 
 /** Every how many bars a label fits. */
 export const labelEvery = (place: number, labelPixels = 46): number => Math.max(1, Math.ceil(labelPixels / place));
+
+/** Half a label, with a little air. */
+const halfLabelPixels = 22;
+
+/** Which of the past bars carry a label: every so many, and none so near the right end that it would reach beyond. */
+export const labelledPast = (bars: WeekLayout["past"]): WeekLayout["past"] => {
+  if (bars.length < 2) return bars;
+  const place = bars[1].left - bars[0].left;
+  const every = labelEvery(place);
+  const free = Math.min(every - 1, Math.ceil(halfLabelPixels / place));
+  return bars.filter((_, at) => (bars.length - 1 - at) % every === free);
+};
