@@ -28,6 +28,8 @@ export function createApp(services: Services): Express {
   mount(app, routes, services);
   app.use("/api", unknownPath);
   serveClient(app, services.environment);
+  // Without a built client nothing else answers here, and the framework would with headers of its own.
+  app.use(unknownPath);
   app.use(problemHandler);
   return app;
 }
