@@ -52,7 +52,7 @@ export const ModelFacts = ({ model, fit }: { model: Model; fit: FitSummary }) =>
           <Fact
             name={
               <Term meaning="How much of the weeks' ups and downs the drivers account for: 100 % would be all of it.">
-                Explained
+                Deviance explained
               </Term>
             }
           >
@@ -62,7 +62,7 @@ export const ModelFacts = ({ model, fit }: { model: Model; fit: FitSummary }) =>
         <Fact
           name={
             <Term meaning="Effective degrees of freedom: how much freedom the curves took. A straight line takes one.">
-              Freedom taken
+              Effective degrees of freedom
             </Term>
           }
         >
@@ -71,7 +71,7 @@ export const ModelFacts = ({ model, fit }: { model: Model; fit: FitSummary }) =>
         <Fact
           name={
             <Term meaning="How much wider than pure chance the weeks scatter: 1 would be pure chance. Bands allow for it.">
-              Scatter
+              Dispersion
             </Term>
           }
         >
