@@ -42,7 +42,10 @@ export const receiveUpload = (services: Services): RequestHandler => (request, r
     if (!request.is("multipart/form-data")) throw notMultipart();
     const { uploadLimitBytes } = await getChain(services.orm.em.fork());
     if (Number(request.get("content-length")) > uploadLimitBytes + multipartOverheadBytes) throw overLimit(uploadLimitBytes);
-    await readMultipart({ request, response, storage: storageOf({ services, limitBytes: uploadLimitBytes, onRefused: refuse }) });
+    const storage = storageOf({ services, limitBytes: uploadLimitBytes, onRefused: refuse });
+    await readMultipart({ request, response, storage }).catch(async (error: unknown) => {
+      throw (await storage.failure()) ?? error;
+    });
     await requireComplete(request, services);
   };
   receive().then(() => {
@@ -54,10 +57,22 @@ export const receiveUpload = (services: Services): RequestHandler => (request, r
 
 type StorageOptions = { services: Services; limitBytes: number; onRefused: (problem: ProblemError) => void };
 
-function storageOf({ services, limitBytes, onRefused }: StorageOptions): StorageEngine {
+/**
+ * Storing is cut off by ending the file's stream, which the parser may report first, as a broken form: `failure` waits for
+ * what storing itself has to say, undefined where it knows no reason of its own.
+ */
+type Storage = StorageEngine & { failure: () => Promise<ProblemError | undefined> };
+
+function storageOf({ services, limitBytes, onRefused }: StorageOptions): Storage {
+  let storing: Promise<StoredOriginal> | undefined;
   return {
+    failure: async () => {
+      const [outcome] = await Promise.allSettled([storing]);
+      return outcome.status === "rejected" && outcome.reason instanceof ProblemError ? outcome.reason : undefined;
+    },
     _handleFile(request, file, done) {
-      storeOriginal(services, { body: file.stream, limitBytes }).then(
+      storing = storeOriginal(services, { body: file.stream, limitBytes });
+      storing.then(
         (stored) => {
           received.set(request, { ...stored, fileName: cleanFileName(file.originalname) });
           done(null, { size: stored.sizeBytes });
