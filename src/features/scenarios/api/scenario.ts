@@ -10,3 +10,12 @@ export const scenarioQuery = (id: string) =>
     refetchOnWindowFocus: false,
     staleTime: 0,
   });
+
+/** What someone else saved meanwhile: asked for apart, so that the page's own draft does not change under a person's hands. */
+export const theirScenarioQuery = (id: string) =>
+  queryOptions({
+    queryKey: ["scenario", id, "theirs"],
+    queryFn: ({ signal }) => call(getScenario, { params: { id }, signal }),
+    staleTime: 0,
+    gcTime: 0,
+  });

@@ -5,21 +5,14 @@ import { Dialog } from "@/components/ui/dialog";
 import { ErrorState } from "@/components/ui/error-state";
 import { LoadingState } from "@/components/ui/skeleton";
 import { useChainFormat } from "@/lib/format/chain-format";
-import { call } from "@/lib/api-client";
-import { getScenario } from "@shared/contract/scenarios";
+import { theirScenarioQuery } from "../api/scenario";
 
 type ConflictDialogProps = { scenarioId: string; onKeepMine: (theirs: Scenario) => void; onTakeTheirs: (theirs: Scenario) => void };
 
 /** Two people edited the same scenario: both versions still exist, and a person says which one stays. */
 export const ConflictDialog = ({ scenarioId, onKeepMine, onTakeTheirs }: ConflictDialogProps) => {
   const format = useChainFormat();
-  // Their version is asked for apart from the page's own, which must not change under the person's hands.
-  const theirs = useQuery({
-    queryKey: ["scenario", scenarioId, "theirs"],
-    queryFn: ({ signal }) => call(getScenario, { params: { id: scenarioId }, signal }),
-    staleTime: 0,
-    gcTime: 0,
-  });
+  const theirs = useQuery(theirScenarioQuery(scenarioId));
   const known = theirs.data;
   return (
     <Dialog
