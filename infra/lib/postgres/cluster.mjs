@@ -163,8 +163,9 @@ export async function ensureDatabase(cluster, stopping, { mayCreateDatabases = f
       "(select count(*) from pg_database where datname = 'shelftide')",
   );
   const [roles, databases] = found.trim().split(" ");
-  const createdb = mayCreateDatabases ? "createdb" : "nocreatedb";
-  if (roles === "0") await ask(`create role shelftide login ${createdb} password '${cluster.password}'`);
+  // `drop database … with (force)` must be able to end an autovacuum worker too, which no ordinary role may.
+  const rights = mayCreateDatabases ? "createdb in role pg_signal_backend" : "nocreatedb";
+  if (roles === "0") await ask(`create role shelftide login password '${cluster.password}' ${rights}`);
   if (databases === "0") await ask("create database shelftide owner shelftide");
   return databases === "0";
 }
