@@ -1,8 +1,10 @@
 /**
  * Distribution of the response; the link goes with it.
  * gaussian: identity. log-gaussian: ln(response) is normal. quasi-poisson: log link, variance = dispersion x mean.
+ * negative-binomial: log link, variance = mean + mean^2 / theta, theta estimated. binomial: logit link, the response a
+ * share from 0 to 1 and the weights its number of trials.
  */
-export type Family = "gaussian" | "log-gaussian" | "quasi-poisson";
+export type Family = "gaussian" | "log-gaussian" | "quasi-poisson" | "negative-binomial" | "binomial";
 
 /**
  * How smooth a term is: by REML ("auto"), by the effective degrees of freedom asked for (without the constant),
@@ -21,14 +23,22 @@ export type LinearTerm = Common & { kind: "linear"; column: string; log?: boolea
 /** One coefficient per level beside the reference (default: the first level in sorted order), unpenalised. */
 export type FactorTerm = Common & { kind: "factor"; column: string; reference?: string };
 
-/** A curve: cubic B-splines on equally spaced knots, `size` of them before centring (default 10). */
+/**
+ * A curve: cubic B-splines on equally spaced knots, `size` of them before centring (default 10). `by` a column of numbers:
+ * the curve times that number, not centred. `by` a column of text: one curve per level, each with its own penalty, knots
+ * over the whole column, each centred over its level's rows. `shape`: the curve never rises, or never falls.
+ */
 export type SmoothTerm = Common & {
   kind: "smooth";
   column: string;
   log?: boolean;
   size?: number;
   smoothness?: Smoothness;
+  shape?: Shape;
+  by?: string;
 };
+
+export type Shape = "decreasing" | "increasing";
 
 /** A curve on a circle: the same splines, wrapped round `period`, `size` of them before centring (default 12). */
 export type CyclicSmoothTerm = Common & {
@@ -39,7 +49,39 @@ export type CyclicSmoothTerm = Common & {
   smoothness?: Smoothness;
 };
 
-export type TermSpec = LinearTerm | FactorTerm | SmoothTerm | CyclicSmoothTerm;
+/** A regression spline: natural cubic, boundary knots at the range and df - 1 inner knots at quantiles, unpenalised. */
+export type NaturalSplineTerm = Common & { kind: "natural-spline"; column: string; log?: boolean; df: number };
+
+/** A local polynomial of `degree` (default 1) over the nearest span x rows, tricube weights. For up to 2,000 rows. */
+export type LocalRegressionTerm = Common & { kind: "local-regression"; column: string; log?: boolean; span: number; degree?: 0 | 1 | 2 };
+
+/** What two columns do together beyond what each does alone (their main effects are removed); `sizes` default 5 and 5. */
+export type TensorProductTerm = Common & {
+  kind: "tensor-product";
+  columns: [string, string];
+  sizes?: [number, number];
+  smoothness?: Smoothness;
+};
+
+/** A slowly moving level over whole-numbered weeks: first differences are penalised; held flat after the last week. */
+export type RandomWalkTerm = Common & { kind: "random-walk"; column: string; smoothness?: Smoothness };
+
+/** A level (or, with `by`, a slope in that column) per group, shrunk to zero by one ridge. */
+export type RandomEffectTerm = Common & { kind: "random-effect"; column: string; by?: string; smoothness?: Smoothness };
+
+/** One curve per group as a deviation from the column's own smooth: level, slope and wiggly part, a penalty for each. */
+export type FactorSmoothTerm = Common & {
+  kind: "factor-smooth";
+  column: string;
+  log?: boolean;
+  group: string;
+  size?: number;
+  smoothness?: Smoothness;
+};
+
+export type TermSpec =
+  | LinearTerm | FactorTerm | SmoothTerm | CyclicSmoothTerm | NaturalSplineTerm | LocalRegressionTerm | TensorProductTerm
+  | RandomWalkTerm | RandomEffectTerm | FactorSmoothTerm;
 
 /** An additive model: link(mean) = intercept + sum of terms + offset. */
 export type ModelSpec = {
@@ -77,6 +119,15 @@ export type SmoothBasis = {
   centring: Float64Array;
 };
 
+/** A smooth times a number: coefficients are of the splines themselves, nothing is centred. */
+export type ScaledSmoothBasis = Omit<SmoothBasis, "kind" | "centring"> & { kind: "scaled-smooth"; by: string };
+
+/**
+ * A smooth per level of `by`: column level x size + k is spline k of that level. `centring`, levels x size, is the mean of
+ * each level's splines over that level's rows.
+ */
+export type LevelledSmoothBasis = Omit<SmoothBasis, "kind"> & { kind: "levelled-smooth"; by: string; levels: string[] };
+
 export type CyclicSmoothBasis = {
   kind: "cyclic-smooth";
   column: string;
@@ -86,7 +137,47 @@ export type CyclicSmoothBasis = {
   centring: Float64Array;
 };
 
-export type TermBasis = LinearBasis | FactorBasis | SmoothBasis | CyclicSmoothBasis;
+/** B-splines on the knots (both boundary knots included once); its curve is natural by the term's coordinates. */
+export type NaturalSplineBasis = { kind: "natural-spline"; column: string; log: boolean; knots: Float64Array; centring: Float64Array };
+
+/** Coefficients are the pooled partial residuals at the distinct values `at`, whose local fits the curve is made of. */
+export type LocalRegressionBasis = {
+  kind: "local-regression";
+  column: string;
+  log: boolean;
+  /** Nearest rows taken, and the degree of the polynomial. */
+  neighbours: number;
+  degree: number;
+  /** Distinct values on the fitting scale, ascending; rows and total weight at each; mean of the curve's rows. */
+  at: Float64Array;
+  rows: Float64Array;
+  weights: Float64Array;
+  centring: Float64Array;
+};
+
+/** Column i x (second size) + j is spline i of the first column times spline j of the second; main effects are removed by the coordinates. */
+export type TensorProductBasis = {
+  kind: "tensor-product";
+  margins: [SmoothBasis, SmoothBasis];
+};
+
+/** One column per week from `first` to `last`, weeks without rows too. */
+export type RandomWalkBasis = { kind: "random-walk"; column: string; first: number; last: number; centring: Float64Array };
+
+export type RandomEffectBasis = { kind: "random-effect"; column: string; by: string | null; levels: string[] };
+
+/** Column level x size + k is spline k of that group. `centre` and `spread` of the column over all rows make the slope. */
+export type FactorSmoothBasis = Omit<SmoothBasis, "kind" | "centring"> & {
+  kind: "factor-smooth";
+  group: string;
+  levels: string[];
+  /** Row-major size x size: coefficients of one group = matrix x its coordinates (level, slope, wiggly part). */
+  toCoefficients: Float64Array;
+};
+
+export type TermBasis =
+  | LinearBasis | FactorBasis | SmoothBasis | ScaledSmoothBasis | LevelledSmoothBasis | CyclicSmoothBasis | NaturalSplineBasis
+  | LocalRegressionBasis | TensorProductBasis | RandomWalkBasis | RandomEffectBasis | FactorSmoothBasis;
 
 /** Values seen in the fitted rows, ascending (levels: in order of `levels`), and how many rows had each. */
 export type SeenValues = { values: Float64Array | string[]; counts: Float64Array };
@@ -100,12 +191,64 @@ export type FittedTerm = {
   count: number;
   /** Effective degrees of freedom without the constant: trace of the term's block of (X'WX + S)^-1 X'WX. */
   edf: number;
-  /** Multiplier of the second-difference penalty; empty for unpenalised terms. */
+  /**
+   * Multipliers of the term's penalties, empty for unpenalised terms. One for a curve; one per level for a curve per level;
+   * one per column for a tensor product; level, slope and wiggly part for curves per group.
+   */
   penalties: number[];
   basis: TermBasis;
-  /** Smallest and largest value fitted to, in the column's own unit; null for a factor. */
+  /** Smallest and largest value fitted to, in the column's own unit; null for a factor, groups and tensor products. */
   observedRange: [number, number] | null;
   seen: SeenValues;
+  /** Where its coordinates stand in `information`: first unpenalised and first penalised among the shared, or first within each group's block. */
+  layout: { unpenalisedFirst: number; penalisedFirst: number; groupFirst: number | null };
+};
+
+/**
+ * X'WX of the last working model in fitting coordinates (in which every penalty is diagonal), and what tests, information
+ * criteria and influence are computed from. Shared coordinates: `unpenalised` ones first, then the penalised.
+ */
+export type ModelInformation = {
+  unpenalised: number;
+  size: number;
+  /** Packed lower triangle over the shared coordinates. */
+  shared: Float64Array;
+  /** Shared coordinates left out because earlier ones reproduce them. */
+  dropped: number[];
+  /** Estimates of the shared coordinates. */
+  coordinates: Float64Array;
+  /** Second derivatives of the criterion by the log penalties, in the order of terms and their penalties; row-major. */
+  criterionHessian: Float64Array;
+  groups: GroupInformation | null;
+};
+
+/** Blocks of one grouping column, eliminated group by group: `count` groups of `size` coordinates each. */
+export type GroupInformation = {
+  count: number;
+  size: number;
+  /** count x packed lower triangle of X_g'WX_g. */
+  own: Float64Array;
+  /** count x size x shared size, row-major: X_g'WX_shared. */
+  cross: Float64Array;
+  /** count x size. */
+  coordinates: Float64Array;
+};
+
+/**
+ * Covariance of the coefficients of groups in block-arrow form. With V that of the shared coefficients and L_g = link:
+ * cov(g, shared) = -L_g V, cov(g, h) = L_g V L_h' + [g = h] own_g.
+ */
+export type GroupCovariance = {
+  count: number;
+  /** Coefficients of one group, over all its terms. */
+  size: number;
+  /** Per own coefficient of a group, the coefficient index for group 0 and the step from one group to the next. */
+  first: number[];
+  step: number[];
+  /** count x size x (number of shared coefficients), row-major. */
+  link: Float64Array;
+  /** count x packed lower triangle. */
+  own: Float64Array;
 };
 
 export type WarningCode =
@@ -113,6 +256,7 @@ export type WarningCode =
   | "few-distinct-values"
   | "straight-line"
   | "level-without-units"
+  | "separation"
   | "perfect-fit"
   | "not-converged";
 
@@ -126,12 +270,23 @@ export type FittedModel = {
   rowCount: number;
   coefficients: Float64Array;
   coefficientNames: string[];
-  /** Bayesian posterior covariance of `coefficients`, packed lower triangle: (i, j <= i) at i (i + 1) / 2 + j. */
+  /**
+   * Bayesian posterior covariance of the shared coefficients (all but those of eliminated groups, which come last), packed
+   * lower triangle: (i, j <= i) at i (i + 1) / 2 + j.
+   */
   covariance: Float64Array;
+  /** Covariance of the coefficients of groups, where the model has terms on groups. */
+  groupCovariance: GroupCovariance | null;
   terms: FittedTerm[];
+  /** Null with local regression, which has no such form. */
+  information: ModelInformation | null;
   /** Mean of the response per row of the data given; log-gaussian: exp(eta + dispersion / 2). */
   fitted: Float64Array;
   dispersion: number;
+  /** Of the negative binomial, variance = mean + mean^2 / theta; null for other families. */
+  theta: number | null;
+  /** Log-likelihood at the estimates; null for quasi families, which have none. */
+  logLikelihood: number | null;
   /** Total effective degrees of freedom, intercept included. */
   edf: number;
   deviance: number;

@@ -1,13 +1,17 @@
 /**
  * The columns of one term, kept per row only where they are not zero.
- * single: one column, one value a row. index: `width` indicator columns, the row's is `index[row]`.
- * spline: four neighbouring columns a row, `first[row]` to `first[row] + 3`, their values at 4 x row; on a circle
- * (`wraps`) column `width + k` is column k. The n x p matrix these stand for is never formed.
+ * single: one column, one value a row. index: `width` columns, the row's only one is `index[row]`, its value `values[row]`
+ * (1 where `values` is null). spline: four neighbouring columns a row, `first[row]` to `first[row] + 3`, their values at
+ * 4 x row; on a circle (`wraps`) column `width + k` is column k. dense: `width` values a row. tensor: products of two
+ * splines, column (left column) x right.width + (right column). The n x p matrix these stand for is never formed.
  */
-export type SparseRows =
-  | { storage: "single"; width: 1; values: Float64Array }
-  | { storage: "index"; width: number; index: Int32Array }
-  | { storage: "spline"; width: number; wraps: boolean; first: Int32Array; values: Float64Array };
+export type SparseRows = SingleRows | IndexRows | SplineRows | DenseRows | TensorRows;
+
+export type SingleRows = { storage: "single"; width: 1; values: Float64Array };
+export type IndexRows = { storage: "index"; width: number; index: Int32Array; values: Float64Array | null };
+export type SplineRows = { storage: "spline"; width: number; wraps: boolean; first: Int32Array; values: Float64Array };
+export type DenseRows = { storage: "dense"; width: number; values: Float64Array };
+export type TensorRows = { storage: "tensor"; width: number; left: SplineRows; right: SplineRows };
 
 /** Columns a kernel writes before the circle is closed. */
 export const paddedWidth = (rows: SparseRows): number => (rows.storage === "spline" && rows.wraps ? rows.width + 3 : rows.width);

@@ -3,15 +3,32 @@ import { identityTransform } from "./difference-penalty";
 
 /**
  * From the coordinates a term is fitted in to the coefficients of its raw columns.
- * scaled: coefficient = factor x coordinate. without: the raw column `leftOut` has coefficient zero. dense: coefficients = matrix x coordinates.
+ * scaled: coefficient = factor x coordinate. without: the raw column `leftOut` has coefficient zero. dense: coefficients =
+ * matrix x coordinates. blocks: the same dense matrix (rows x columns) for each of `count` levels; a level's first
+ * `unpenalised` coordinates stand among the term's unpenalised ones, level by level, the others among its penalised ones.
  */
 export type TermTransform =
   | { form: "scaled"; factor: number }
   | { form: "without"; leftOut: number }
-  | { form: "dense"; matrix: Float64Array };
+  | { form: "dense"; matrix: Float64Array }
+  | { form: "blocks"; matrix: Float64Array; rows: number; columns: number; count: number; unpenalised: number };
 
-/** Fitting coordinates of a term: the unpenalised come first, then those under the identity penalty. */
-export type TermCoordinates = { transform: TermTransform; rawWidth: number; unpenalised: number; penalised: number };
+/** One penalty: its diagonal over the term's penalised coordinates `start` to `end` (all ones where null). */
+export type PenaltyShape = { start: number; end: number; diagonal: Float64Array | null };
+
+/**
+ * Fitting coordinates of a term: the unpenalised come first, then those under diagonal penalties.
+ * For a term on groups (`grouped`) transform is blocks without unpenalised coordinates, `penalties` cover one group's
+ * coordinates and hold for every group alike.
+ */
+export type TermCoordinates = {
+  transform: TermTransform;
+  rawWidth: number;
+  unpenalised: number;
+  penalised: number;
+  penalties: PenaltyShape[];
+  grouped: boolean;
+};
 
 /**
  * The coordinates a term is fitted in, by its kind.
