@@ -24,3 +24,22 @@ ten_digits <- function(values) signif(as.numeric(values), 10)
 write_result <- function(result) {
   writeLines(toJSON(result, digits = NA, auto_unbox = TRUE, pretty = FALSE), output_path())
 }
+
+# Steps so small that what is left between two programs is their arithmetic.
+tight_control <- function() {
+  mgcv::gam.control(
+    epsilon = 1e-12, maxit = 500,
+    newton = list(conv.tol = 1e-12, maxNstep = 5, maxSstep = 2, maxHalf = 30, use.svd = FALSE)
+  )
+}
+
+# What an additive model of mgcv says at its own rows. edf: per smooth term, then in all, the intercept included.
+summarise_gam <- function(fit) {
+  on_link <- predict(fit, type = "link", se.fit = TRUE)
+  list(
+    linearPredictor = ten_digits(on_link$fit), standardError = ten_digits(on_link$se.fit),
+    edf = I(ten_digits(vapply(fit$smooth, function(term) sum(fit$edf[term$first.para:term$last.para]), 0))),
+    totalEdf = ten_digits(sum(fit$edf)), dispersion = ten_digits(fit$sig2),
+    deviance = ten_digits(fit$deviance), nullDeviance = ten_digits(fit$null.deviance)
+  )
+}

@@ -23,7 +23,9 @@ function fresh<Name extends keyof References>(name: Name): References[Name] {
   return (made[name] ??= freshReference(name));
 }
 
-const names: (keyof References)[] = ["additive-models", "linear-models", "splines"];
+const names: (keyof References)[] = [
+  "additive-models", "linear-models", "splines", "counts-and-shares", "varying-curves", "natural-and-local",
+];
 
 describe("The committed references are what R gives now", () => {
   it.each(names)("%s", (name) => expectSame(fresh(name), committedReference(name), name));

@@ -3,8 +3,7 @@ import { mkdtempSync, readFileSync, rmSync } from "node:fs";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { fileURLToPath } from "node:url";
-
-export type MadeWith = { r: string; packages: Record<string, string>; lapack: string };
+import type { CountsAndShares, MadeWith, NaturalAndLocal, VaryingCurves } from "./reference-shapes";
 
 export type FitSummary = {
   linearPredictor: number[];
@@ -30,6 +29,9 @@ export type SeriesReference = {
 type Coefficients = { estimate: number[]; error: number[] };
 
 export type References = {
+  "counts-and-shares": CountsAndShares;
+  "varying-curves": VaryingCurves;
+  "natural-and-local": NaturalAndLocal;
   "additive-models": { madeWith: MadeWith; series: SeriesReference[] };
   "linear-models": {
     madeWith: MadeWith;
