@@ -25,7 +25,7 @@ export const factor: BasisKind<FactorTerm, FactorBasis> = {
     const index = indexOfLevels(basis, perRow);
     return {
       basis,
-      rows: { storage: "index", width: levels.length, index },
+      rows: { storage: "index", width: levels.length, index, values: null },
       seen: seenLevels(levels, index),
       observedRange: null,
       warnings: [],
@@ -35,6 +35,7 @@ export const factor: BasisKind<FactorTerm, FactorBasis> = {
     storage: "index",
     width: basis.levels.length,
     index: indexOfLevels(basis, levelColumn(data, basis.column, role)),
+    values: null,
   }),
   logSlopeRows: () => null,
   outside: (_range, basis, data) => new Uint8Array(levelColumn(data, basis.column, role).length),

@@ -1,38 +1,66 @@
-import { paddedWidth } from "./sparse-rows";
-import type { SparseRows } from "./sparse-rows";
+import { gatherRow, paddedWidth, roomForRow } from "./sparse-rows";
+import type { IndexRows as Index, SingleRows as Single, SparseRows, SplineRows as Spline } from "./sparse-rows";
 
-type Single = Extract<SparseRows, { storage: "single" }>;
-type Index = Extract<SparseRows, { storage: "index" }>;
-type Spline = Extract<SparseRows, { storage: "spline" }>;
+export { groupSquare } from "./group-square";
 
-/** Order in which pairs are written, so that six kernels serve all nine combinations. */
-const rank = { single: 0, index: 1, spline: 2 } as const;
+/** Order in which pairs are written, so that each pair needs one kernel. */
+const rank = { single: 0, index: 1, spline: 2, dense: 3, tensor: 4 } as const;
 
 /** Whether `crossProduct` wants its two terms the other way round. */
 export const isSwapped = (left: SparseRows, right: SparseRows): boolean => rank[left.storage] > rank[right.storage];
 
 /**
  * Weighted cross-product X_left' diag(weights) X_right of two terms, by a kernel for the pair of storages: n x 16
- * additions for two splines, 4 for a spline and an index, 1 for two indices.
+ * additions for two splines, 4 for a spline and an index, 1 for two indices; dense and tensor rows entry by entry.
  *
- * @param left must not rank after `right` in the order single, index, spline (see `isSwapped`).
+ * @param left must not rank after `right` in the order single, index, spline, dense, tensor (see `isSwapped`).
+ * @param weights length n. Not changed.
  * @param out receives left.width x right.width values, row-major, at its start; must hold the padded widths. Overwritten.
  * @example crossProduct(ones, spline, weights, out); // out: sums of weights under each spline
  */
 export function crossProduct(left: SparseRows, right: SparseRows, weights: Float64Array, out: Float64Array): void {
-  const rows = paddedWidth(left);
-  const columns = paddedWidth(right);
-  out.fill(0, 0, rows * columns);
-  if (left.storage === "single") crossSingle(left, right, weights, out);
-  else if (left.storage === "index") crossIndex(left, right, weights, out);
-  else if (right.storage === "spline") {
-    if (left === right) squareSpline(left, weights, out);
-    else crossSplines(left, right, weights, out);
+  out.fill(0, 0, paddedWidth(left) * paddedWidth(right));
+  if (isGeneral(left) || isGeneral(right)) {
+    crossEntries(left, right, weights, out);
+    return;
   }
+  const scaled = withValues(right, withValues(left, weights));
+  if (left.storage === "single") crossSingle(left, right, scaled, out);
+  else if (left.storage === "index") crossIndex(left, right as Index | Spline, scaled, out);
+  else if (left === right) squareSpline(left, scaled, out);
+  else crossSplines(left, right as Spline, scaled, out);
   closeCircles(left, right, out);
 }
 
-function crossSingle(left: Single, right: SparseRows, weights: Float64Array, out: Float64Array): void {
+const isGeneral = (rows: SparseRows): rows is Extract<SparseRows, { storage: "dense" | "tensor" }> =>
+  rows.storage === "dense" || rows.storage === "tensor";
+
+/** An index with values is one without, its values among the weights: the inner loops stay those of plain indices. */
+function withValues(rows: SparseRows, weights: Float64Array): Float64Array {
+  if (rows.storage !== "index" || rows.values === null) return weights;
+  const { values } = rows;
+  const scaled = new Float64Array(weights.length);
+  for (let row = 0; row < scaled.length; row++) scaled[row] = weights[row] * values[row];
+  return scaled;
+}
+
+/** Any pair, by the rows' entries. */
+function crossEntries(left: SparseRows, right: SparseRows, weights: Float64Array, out: Float64Array): void {
+  const { width } = right;
+  const own = roomForRow(left);
+  const other = roomForRow(right);
+  for (let row = 0; row < weights.length; row++) {
+    const rows = gatherRow(left, row, 0, own);
+    const columns = gatherRow(right, row, 0, other);
+    for (let i = 0; i < rows; i++) {
+      const scaled = weights[row] * own.values[i];
+      const start = own.indices[i] * width;
+      for (let j = 0; j < columns; j++) out[start + other.indices[j]] += scaled * other.values[j];
+    }
+  }
+}
+
+function crossSingle(left: Single, right: Single | Index | Spline, weights: Float64Array, out: Float64Array): void {
   const count = weights.length;
   const own = left.values;
   if (right.storage === "single") {
@@ -55,12 +83,12 @@ function crossSingle(left: Single, right: SparseRows, weights: Float64Array, out
   }
 }
 
-function crossIndex(left: Index, right: SparseRows, weights: Float64Array, out: Float64Array): void {
+function crossIndex(left: Index, right: Index | Spline, weights: Float64Array, out: Float64Array): void {
   const count = weights.length;
   const own = left.index;
   if (right.storage === "index") {
     for (let row = 0; row < count; row++) out[own[row] * right.width + right.index[row]] += weights[row];
-  } else if (right.storage === "spline") {
+  } else {
     const { first, values } = right;
     const stride = paddedWidth(right);
     for (let row = 0; row < count; row++) {

@@ -17,7 +17,22 @@ export type TensorRows = { storage: "tensor"; width: number; left: SplineRows; r
 export const paddedWidth = (rows: SparseRows): number => (rows.storage === "spline" && rows.wraps ? rows.width + 3 : rows.width);
 
 /**
- * out[row] += (the term's row) . coefficients[first ...]. O(n).
+ * How many entries `gatherRow` writes for a row.
+ *
+ * @example entriesPerRow({ storage: "single", width: 1, values }); // 1
+ */
+export function entriesPerRow(rows: SparseRows): number {
+  switch (rows.storage) {
+    case "single":
+    case "index": return 1;
+    case "spline": return 4;
+    case "dense": return rows.width;
+    case "tensor": return 16;
+  }
+}
+
+/**
+ * out[row] += (the term's row) . coefficients[first ...]. O(n x entries per row).
  *
  * @example addRowsTimes(rows, model.coefficients, term.first, linearPredictor);
  */
@@ -27,15 +42,22 @@ export function addRowsTimes(rows: SparseRows, coefficients: Float64Array, first
     const slope = coefficients[first];
     for (let row = 0; row < count; row++) out[row] += rows.values[row] * slope;
   } else if (rows.storage === "index") {
-    for (let row = 0; row < count; row++) out[row] += coefficients[first + rows.index[row]];
-  } else {
+    const { index, values } = rows;
+    if (values === null) for (let row = 0; row < count; row++) out[row] += coefficients[first + index[row]];
+    else for (let row = 0; row < count; row++) out[row] += values[row] * coefficients[first + index[row]];
+  } else if (rows.storage === "spline") {
     addSplineTimes(rows, coefficients, first, out);
+  } else if (rows.storage === "dense") {
+    const { width, values } = rows;
+    for (let row = 0, at = 0; row < count; row++) {
+      for (let k = 0; k < width; k++) out[row] += values[at++] * coefficients[first + k];
+    }
+  } else {
+    addTensorTimes(rows, coefficients, first, out);
   }
 }
 
-function addSplineTimes(
-  rows: Extract<SparseRows, { storage: "spline" }>, coefficients: Float64Array, first: number, out: Float64Array,
-): void {
+function addSplineTimes(rows: SplineRows, coefficients: Float64Array, first: number, out: Float64Array): void {
   const unwrapped = unwrap(coefficients.subarray(first, first + rows.width), rows.wraps);
   const { values } = rows;
   for (let row = 0; row < out.length; row++) {
@@ -55,8 +77,25 @@ function unwrap(coefficients: Float64Array, wraps: boolean): Float64Array {
   return padded;
 }
 
+function addTensorTimes({ left, right }: TensorRows, coefficients: Float64Array, first: number, out: Float64Array): void {
+  for (let row = 0; row < out.length; row++) {
+    for (let k = 0; k < 4; k++) {
+      const at = first + columnOf(left, row, k) * right.width;
+      let sum = 0;
+      for (let m = 0; m < 4; m++) sum += right.values[4 * row + m] * coefficients[at + columnOf(right, row, m)];
+      out[row] += left.values[4 * row + k] * sum;
+    }
+  }
+}
+
+/** Column of a row's k-th spline. */
+function columnOf({ first, width, wraps }: SplineRows, row: number, k: number): number {
+  const column = first[row] + k;
+  return wraps && column >= width ? column - width : column;
+}
+
 /**
- * out[first ...] += X_term' vector. O(n).
+ * out[first ...] += X_term' vector. O(n x entries per row).
  *
  * @example addTransposeTimes(rows, residuals, gradient, term.first);
  */
@@ -67,27 +106,49 @@ export function addTransposeTimes(rows: SparseRows, vector: Float64Array, out: F
     for (let row = 0; row < count; row++) sum += rows.values[row] * vector[row];
     out[first] += sum;
   } else if (rows.storage === "index") {
-    for (let row = 0; row < count; row++) out[first + rows.index[row]] += vector[row];
-  } else {
-    const { width, wraps, values } = rows;
+    const { index, values } = rows;
+    if (values === null) for (let row = 0; row < count; row++) out[first + index[row]] += vector[row];
+    else for (let row = 0; row < count; row++) out[first + index[row]] += values[row] * vector[row];
+  } else if (rows.storage === "spline") {
     for (let row = 0; row < count; row++) {
-      for (let k = 0; k < 4; k++) {
-        const column = rows.first[row] + k;
-        out[first + (wraps && column >= width ? column - width : column)] += values[4 * row + k] * vector[row];
-      }
+      for (let k = 0; k < 4; k++) out[first + columnOf(rows, row, k)] += rows.values[4 * row + k] * vector[row];
+    }
+  } else if (rows.storage === "dense") {
+    const { width, values } = rows;
+    for (let row = 0, at = 0; row < count; row++) {
+      for (let k = 0; k < width; k++) out[first + k] += values[at++] * vector[row];
+    }
+  } else {
+    addTensorTranspose(rows, vector, out, first);
+  }
+}
+
+function addTensorTranspose({ left, right }: TensorRows, vector: Float64Array, out: Float64Array, first: number): void {
+  for (let row = 0; row < vector.length; row++) {
+    for (let k = 0; k < 4; k++) {
+      const at = first + columnOf(left, row, k) * right.width;
+      const scaled = left.values[4 * row + k] * vector[row];
+      for (let m = 0; m < 4; m++) out[at + columnOf(right, row, m)] += right.values[4 * row + m] * scaled;
     }
   }
 }
 
+/** What `gatherRow` writes to: (column, value) pairs, `count` of them so far. */
+export type RowEntries = { indices: Int32Array; values: Float64Array; count: number };
+
+/** Room for one row's entries. */
+export function roomForRow(rows: SparseRows): RowEntries {
+  const entries = entriesPerRow(rows);
+  return { indices: new Int32Array(entries), values: new Float64Array(entries), count: 0 };
+}
+
 /**
- * Writes one row's non-zero entries as (coefficient index, value) pairs.
+ * Writes one row's entries as (coefficient index, value) pairs: `entriesPerRow` of them.
  *
  * @returns how many entries `indices` and `values` hold after this term's were added at `count`.
  * @example let count = 0; for (const term of terms) count = gatherRow(term.rows, row, term.first, { indices, values, count });
  */
-export function gatherRow(
-  rows: SparseRows, row: number, first: number, into: { indices: Int32Array; values: Float64Array; count: number },
-): number {
+export function gatherRow(rows: SparseRows, row: number, first: number, into: RowEntries): number {
   const { indices, values } = into;
   let { count } = into;
   if (rows.storage === "single") {
@@ -95,12 +156,22 @@ export function gatherRow(
     values[count++] = rows.values[row];
   } else if (rows.storage === "index") {
     indices[count] = first + rows.index[row];
-    values[count++] = 1;
-  } else {
+    values[count++] = rows.values === null ? 1 : rows.values[row];
+  } else if (rows.storage === "spline") {
     for (let k = 0; k < 4; k++) {
-      const column = rows.first[row] + k;
-      indices[count] = first + (rows.wraps && column >= rows.width ? column - rows.width : column);
+      indices[count] = first + columnOf(rows, row, k);
       values[count++] = rows.values[4 * row + k];
+    }
+  } else if (rows.storage === "dense") {
+    for (let k = 0; k < rows.width; k++) {
+      indices[count] = first + k;
+      values[count++] = rows.values[row * rows.width + k];
+    }
+  } else {
+    const { left, right } = rows;
+    for (let k = 0; k < 16; k++) {
+      indices[count] = first + columnOf(left, row, k >> 2) * right.width + columnOf(right, row, k & 3);
+      values[count++] = left.values[4 * row + (k >> 2)] * right.values[4 * row + (k & 3)];
     }
   }
   return count;
