@@ -4,6 +4,8 @@ export type RowUncertainty = {
   linearPredictor: number;
   standardError: number;
   dispersion: number;
+  /** Of the negative binomial; others ignore it. */
+  theta: number;
   /** Probability the interval holds. */
   level: number;
   /** Standard normal quantile of (1 + level) / 2. */
@@ -14,17 +16,33 @@ export type RowUncertainty = {
 
 export type Interval = { lower: number; upper: number };
 
+/** One value per fitted row. Weights are prior weights (binomial: trials), all above zero. */
+export type LikelihoodRows = {
+  response: Float64Array;
+  /** Offset included. */
+  linearPredictor: Float64Array;
+  weights: Float64Array;
+  theta: number;
+};
+
 /** What every family says about responses and predictions; functions of single rows take and return plain numbers. */
 type CommonRules = {
+  /** "known": variance is a function of the mean (and theta) alone, dispersion 1. "unknown": times a dispersion to be estimated. */
+  scale: "known" | "unknown";
   /** @throws EngineError response-invalid, with row, value and rule. */
   check(response: Float64Array, column: string): void;
   /** Expected response at a linear predictor. */
   mean(linearPredictor: number, dispersion: number): number;
-  /** Value half of new rows fall below, or null where the family gives none. */
+  /** Value half of new rows fall below, or null where the family gives none (counts, shares and quasi families). */
   median: ((linearPredictor: number) => number) | null;
+  /**
+   * Log-likelihood on the response's own scale, every constant included; null for quasi families, which have none. Unknown
+   * scale: at the variance that maximises it, deviance / n (as R's AIC has it). Always finite.
+   */
+  logLikelihood: ((rows: LikelihoodRows) => number) | null;
   meanInterval(row: RowUncertainty): Interval;
-  /** Interval of a new row's value; the coefficients' uncertainty is mixed in. */
-  observationInterval(row: RowUncertainty): Interval;
+  /** Interval of a new row's value, the coefficients' uncertainty mixed in; null where only the mean can be predicted. */
+  observationInterval: ((row: RowUncertainty) => Interval) | null;
 };
 
 /** A family whose transformed response is normal: the restricted likelihood is exact and one solve is enough. */
@@ -34,19 +52,33 @@ export type ExactRules = CommonRules & {
   transform(response: Float64Array): Float64Array;
 };
 
-/** A family fitted by iterated working models (penalised iteratively reweighted least squares). */
+/**
+ * A family fitted by iterated working models (penalised iteratively reweighted least squares). `theta` is read by the
+ * negative binomial alone; any number does for the others.
+ */
 export type IterativeRules = CommonRules & {
   fitting: "iterative";
-  /** Linear predictor to start from at a response (offset included). */
-  start(response: number): number;
+  /** Linear predictors to start from (offset included), one per row, a new array. */
+  start(rows: { response: Float64Array; weights: Float64Array }): Float64Array;
+  /** Variance of a row of weight and dispersion 1 at a mean. */
+  variance(mean: number, theta: number): number;
   /** Unit deviance at a mean, not negative. */
-  unitDeviance(response: number, mean: number): number;
-  /** Writes working response (without the offset) and working weight of every row, given predictors and prior weights. */
+  unitDeviance(response: number, mean: number, theta: number): number;
+  /**
+   * Writes working response (without the offset) and working weight (expected information) of every row, given predictors,
+   * means, prior weights and theta.
+   */
   working(rows: WorkingRows): void;
   /** Sum of weighted squared Pearson residuals. */
-  pearson(response: Float64Array, mean: Float64Array, weights: Float64Array): number;
-  /** Mean of the model with intercept and offset only, written per row. */
-  nullMean(response: Float64Array, offset: Float64Array, weights: Float64Array): Float64Array;
+  pearson(rows: MeanRows): number;
+  /** Mean of the maximum likelihood model with intercept and offset only, written per row. */
+  nullMean(rows: NullRows): Float64Array;
+  /**
+   * Theta by maximum likelihood given the means, within 1e-3 to 1e7; null for families without one. Means that are the
+   * responses themselves (as at the start of a fit) say nothing of it: begin with theta 1 and estimate from the second
+   * working model on.
+   */
+  estimateTheta: ((rows: ThetaRows) => number) | null;
 };
 
 export type WorkingRows = {
@@ -55,8 +87,16 @@ export type WorkingRows = {
   weights: Float64Array;
   linearPredictor: Float64Array;
   mean: Float64Array;
+  theta: number;
   workingResponse: Float64Array;
   workingWeights: Float64Array;
 };
+
+export type MeanRows = { response: Float64Array; mean: Float64Array; weights: Float64Array; theta: number };
+
+export type NullRows = { response: Float64Array; offset: Float64Array; weights: Float64Array; theta: number };
+
+/** `start`: theta of the last working model. */
+export type ThetaRows = { response: Float64Array; mean: Float64Array; weights: Float64Array; start: number };
 
 export type FamilyRules = ExactRules | IterativeRules;

@@ -1,14 +1,18 @@
 import { EngineError } from "../errors";
 import type { Family } from "../types";
 import type { FamilyRules } from "./family-rules";
+import { binomial } from "./binomial";
 import { gaussian } from "./gaussian";
 import { logGaussian } from "./log-gaussian";
+import { negativeBinomial } from "./negative-binomial";
 import { quasiPoisson } from "./quasi-poisson";
 
 const families: Record<Family, FamilyRules> = {
   gaussian,
   "log-gaussian": logGaussian,
   "quasi-poisson": quasiPoisson,
+  "negative-binomial": negativeBinomial,
+  binomial,
 };
 
 /**

@@ -1,12 +1,15 @@
 import type { ExactRules } from "./family-rules";
+import { normalLogLikelihood } from "./normal-log-likelihood";
 
 /** Normal response, identity link. */
 export const gaussian: ExactRules = {
   fitting: "exact",
+  scale: "unknown",
   check: () => undefined,
   transform: (response) => response.slice(),
   mean: (linearPredictor) => linearPredictor,
   median: (linearPredictor) => linearPredictor,
+  logLikelihood: ({ response, linearPredictor, weights }) => normalLogLikelihood({ values: response, around: linearPredictor, weights }),
   meanInterval({ linearPredictor, standardError, quantile }) {
     const half = quantile * standardError;
     return { lower: linearPredictor - half, upper: linearPredictor + half };

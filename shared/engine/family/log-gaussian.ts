@@ -1,6 +1,7 @@
 import { EngineError } from "../errors";
 import { exponential } from "./exponential";
 import type { ExactRules } from "./family-rules";
+import { normalLogLikelihood } from "./normal-log-likelihood";
 
 /**
  * Lognormal response: ln(response) is normal. Median exp(eta), mean exp(eta + dispersion / 2).
@@ -8,6 +9,7 @@ import type { ExactRules } from "./family-rules";
  */
 export const logGaussian: ExactRules = {
   fitting: "exact",
+  scale: "unknown",
   check(response, column) {
     for (let row = 0; row < response.length; row++) {
       if (!(response[row] > 0)) {
@@ -21,6 +23,11 @@ export const logGaussian: ExactRules = {
   transform: (response) => response.map(Math.log),
   mean: (linearPredictor, dispersion) => exponential(linearPredictor + dispersion / 2),
   median: exponential,
+  logLikelihood({ response, linearPredictor, weights }) {
+    const values = response.map(Math.log);
+    // The density of the response is that of its logarithm over the response.
+    return normalLogLikelihood({ values, around: linearPredictor, weights }) - values.reduce((sum, value) => sum + value, 0);
+  },
   meanInterval({ linearPredictor, standardError, quantile, dispersion }) {
     const middle = linearPredictor + dispersion / 2;
     const half = quantile * standardError;

@@ -1,7 +1,10 @@
-import { EngineError } from "../errors";
 import { exponential } from "./exponential";
 import type { IterativeRules, WorkingRows } from "./family-rules";
 import { countInterval } from "./count-interval";
+import { checkUnits, logLinkInterval, logLinkStart } from "./log-link";
+import { pearsonStatistic } from "./pearson-statistic";
+
+const variance = (mean: number): number => mean;
 
 /**
  * Log link, variance = dispersion x mean; the dispersion is Pearson's statistic over n - edf.
@@ -9,36 +12,18 @@ import { countInterval } from "./count-interval";
  */
 export const quasiPoisson: IterativeRules = {
   fitting: "iterative",
-  check(response, column) {
-    let total = 0;
-    for (let row = 0; row < response.length; row++) {
-      if (response[row] < 0) {
-        throw new EngineError(
-          "response-invalid",
-          `Response "${column}" must not be negative for quasi-poisson; row ${row + 1} is ${response[row]}.`,
-        );
-      }
-      total += response[row];
-    }
-    if (response.length > 0 && !(total > 0)) {
-      throw new EngineError("response-invalid", `Response "${column}" is 0 in every row; quasi-poisson needs a value above 0.`);
-    }
-  },
-  start: (response) => Math.log(response + 0.1),
+  scale: "unknown",
+  check: (response, column) => checkUnits(response, { column, family: "quasi-poisson" }),
+  start: logLinkStart,
   mean: (linearPredictor) => exponential(linearPredictor),
   median: null,
+  logLikelihood: null,
+  variance,
   unitDeviance: (response, mean) =>
     Math.max(0, 2 * (response > 0 ? response * Math.log(response / mean) - (response - mean) : mean)),
   working: fillWorking,
-  pearson(response, mean, weights) {
-    let sum = 0;
-    for (let row = 0; row < response.length; row++) {
-      const residual = response[row] - mean[row];
-      sum += (weights[row] * residual * residual) / mean[row];
-    }
-    return sum;
-  },
-  nullMean(response, offset, weights) {
+  pearson: pearsonStatistic(variance),
+  nullMean({ response, offset, weights }) {
     let units = 0;
     let exposure = 0;
     const exposures = offset.map(exponential);
@@ -48,10 +33,8 @@ export const quasiPoisson: IterativeRules = {
     }
     return exposures.map((value) => (value * units) / exposure);
   },
-  meanInterval({ linearPredictor, standardError, quantile }) {
-    const half = quantile * standardError;
-    return { lower: exponential(linearPredictor - half), upper: exponential(linearPredictor + half) };
-  },
+  estimateTheta: null,
+  meanInterval: logLinkInterval,
   observationInterval: countInterval,
 };
 

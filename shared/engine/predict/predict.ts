@@ -1,8 +1,9 @@
 import { outsideRows } from "../basis/term-basis";
 import { EngineError } from "../errors";
 import { familyRules } from "../family/family";
+import type { FamilyRules, Interval, RowUncertainty } from "../family/family-rules";
 import { addRowsTimes } from "../linalg/sparse-rows";
-import type { FittedModel, ModelData, PredictOptions, Prediction } from "../types";
+import type { Family, FittedModel, ModelData, PredictOptions, Prediction } from "../types";
 import { designRows, rowStandardErrors } from "./design-rows";
 import { normalQuantile } from "./level";
 
@@ -13,7 +14,7 @@ const defaultLevel = 0.95;
  * beyond the range they were fitted to, flagged in `outside`; nothing is clamped or capped.
  * Interval "mean": of the expected value, coefficients' uncertainty only. "observation": of a new row's value, noise and
  * coefficients' uncertainty together (quasi-poisson: negative binomial of size mu / (dispersion - 1), Poisson where the
- * dispersion is 1 or less, gamma for fractional units; log-gaussian: lognormal).
+ * dispersion is 1 or less, gamma for fractional units; negative-binomial: of size theta; log-gaussian: lognormal; binomial: none).
  *
  * @param data the columns of the terms and the offset, n rows; the response is not needed.
  * @returns arrays of length n; contributions per term id, "intercept" and "offset" sum to `linearPredictor`.
@@ -23,8 +24,8 @@ const defaultLevel = 0.95;
 export function predict(model: FittedModel, data: ModelData, options: PredictOptions = {}): Prediction {
   const level = options.level ?? defaultLevel;
   const quantile = normalQuantile(level);
-  const kind = checkInterval(options.interval ?? "mean");
   const family = familyRules(model.spec.family);
+  const intervalOf = intervalRule(family, model.spec.family, options.interval ?? "mean");
   const rows = designRows(model, data);
   const contributions: Record<string, Float64Array> = {};
   const linearPredictor = rows.offset.slice();
@@ -37,16 +38,11 @@ export function predict(model: FittedModel, data: ModelData, options: PredictOpt
   contributions.offset = rows.offset.slice();
   const standardError = rowStandardErrors(model, rows.parts, rows.count);
   const { dispersion } = model;
+  const common = { dispersion, theta: model.theta ?? 1, level, quantile, fractional: model.fractionalResponse };
   const lower = new Float64Array(rows.count);
   const upper = new Float64Array(rows.count);
-  const intervalOf = kind === "mean" ? family.meanInterval : family.observationInterval;
   for (let row = 0; row < rows.count; row++) {
-    const interval = intervalOf({
-      linearPredictor: linearPredictor[row],
-      standardError: standardError[row],
-      dispersion, level, quantile,
-      fractional: model.fractionalResponse,
-    });
+    const interval = intervalOf({ ...common, linearPredictor: linearPredictor[row], standardError: standardError[row] });
     lower[row] = interval.lower;
     upper[row] = interval.upper;
   }
@@ -58,7 +54,11 @@ export function predict(model: FittedModel, data: ModelData, options: PredictOpt
   };
 }
 
-function checkInterval(interval: string): "mean" | "observation" {
-  if (interval === "mean" || interval === "observation") return interval;
-  throw new EngineError("option-invalid", `interval is ${JSON.stringify(interval)}; it must be "mean" or "observation".`);
+function intervalRule(rules: FamilyRules, family: Family, interval: string): (row: RowUncertainty) => Interval {
+  if (interval === "mean") return rules.meanInterval;
+  if (interval !== "observation") {
+    throw new EngineError("option-invalid", `interval is ${JSON.stringify(interval)}; it must be "mean" or "observation".`);
+  }
+  if (rules.observationInterval !== null) return rules.observationInterval;
+  throw new EngineError("option-invalid", `interval is "observation"; for ${family} only the interval of the mean exists ("mean").`);
 }

@@ -1,0 +1,73 @@
+import gammaln from "@stdlib/math-base-special-gammaln";
+import { exponential } from "./exponential";
+import type { IterativeRules, LikelihoodRows, WorkingRows } from "./family-rules";
+import { countInterval } from "./count-interval";
+import { checkUnits, logLinkInterval, logLinkStart } from "./log-link";
+import { gammaRatio, logOfRatio } from "./gamma-ratio";
+import { estimateTheta } from "./negative-binomial-theta";
+import { nullMean } from "./null-mean";
+import { pearsonStatistic } from "./pearson-statistic";
+
+const mean = (linearPredictor: number): number => exponential(linearPredictor);
+const variance = (mu: number, theta: number): number => mu * (1 + mu / theta);
+
+/**
+ * Counts with variance mean + mean^2 / theta, log link; theta by maximum likelihood at each working model. Fractional units are
+ * allowed, as for quasi-Poisson: the likelihood is then that of the same formula.
+ * Source: Lawless (1987), Canadian J. Statist. 15, 209-225; McCullagh & Nelder (1989), section 11.2.
+ */
+export const negativeBinomial: IterativeRules = {
+  fitting: "iterative",
+  scale: "known",
+  check: (response, column) => checkUnits(response, { column, family: "negative-binomial" }),
+  start: logLinkStart,
+  mean,
+  median: null,
+  logLikelihood,
+  variance,
+  unitDeviance(response, mu, theta) {
+    const own = response > 0 ? response * Math.log(response / mu) : 0;
+    return Math.max(0, 2 * (own - (response + theta) * logOfRatio(response, mu, theta)));
+  },
+  working: fillWorking,
+  pearson: pearsonStatistic(variance),
+  nullMean(rows) {
+    let units = 0;
+    let weight = 0;
+    for (let row = 0; row < rows.response.length; row++) {
+      units += rows.weights[row] * rows.response[row];
+      weight += rows.weights[row];
+    }
+    return nullMean({ mean, working: fillWorking }, rows, Math.log(units / weight));
+  },
+  estimateTheta,
+  meanInterval: logLinkInterval,
+  observationInterval: countInterval,
+};
+
+/** Working response eta - offset + (y - mu) / mu, working weight mu / (1 + mu / theta). */
+function fillWorking(rows: WorkingRows): void {
+  const { response, offset, weights, linearPredictor, mean: means, theta, workingResponse, workingWeights } = rows;
+  for (let row = 0; row < response.length; row++) {
+    const mu = means[row];
+    workingResponse[row] = linearPredictor[row] - offset[row] + (response[row] - mu) / mu;
+    workingWeights[row] = (weights[row] * mu) / (1 + mu / theta);
+  }
+}
+
+/**
+ * Sum of weight x [ln Gamma(y + theta) - ln Gamma(theta) - ln y! + theta ln theta + y ln mu - (y + theta) ln(mu + theta)], in
+ * differences that keep their digits for large theta.
+ */
+function logLikelihood({ response, linearPredictor, weights, theta }: LikelihoodRows): number {
+  let sum = 0;
+  for (let row = 0; row < response.length; row++) {
+    const units = response[row];
+    const mu = mean(linearPredictor[row]);
+    const logMean = Math.log(mu);
+    // gammaRatio is ln[Gamma(y + theta) / Gamma(theta)] + theta ln theta - (y + theta) ln(y + theta).
+    const term = gammaRatio(units, theta) + (units + theta) * logOfRatio(units, mu, theta) + units * logMean - gammaln(units + 1);
+    sum += weights[row] * term;
+  }
+  return sum;
+}
