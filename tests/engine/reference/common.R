@@ -29,7 +29,7 @@ write_result <- function(result) {
 tight_control <- function() {
   mgcv::gam.control(
     epsilon = 1e-12, maxit = 500,
-    newton = list(conv.tol = 1e-12, maxNstep = 5, maxSstep = 2, maxHalf = 30, use.svd = FALSE)
+    newton = list(conv.tol = 1e-9, maxNstep = 5, maxSstep = 2, maxHalf = 30, use.svd = FALSE)
   )
 }
 

@@ -24,7 +24,8 @@ function fresh<Name extends keyof References>(name: Name): References[Name] {
 }
 
 const names: (keyof References)[] = [
-  "additive-models", "linear-models", "splines", "counts-and-shares", "varying-curves", "natural-and-local",
+  "additive-models", "linear-models", "splines", "counts-and-shares", "varying-curves", "natural-and-local", "groups", "local-models",
+  "tests-of-terms",
 ];
 
 describe("The committed references are what R gives now", () => {

@@ -3,7 +3,9 @@ import { mkdtempSync, readFileSync, rmSync } from "node:fs";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { fileURLToPath } from "node:url";
-import type { CountsAndShares, MadeWith, NaturalAndLocal, VaryingCurves } from "./reference-shapes";
+import type {
+  CountsAndShares, Groups, LocalModels, MadeWith, NaturalAndLocal, TestsOfTerms, VaryingCurves,
+} from "./reference-shapes";
 
 export type FitSummary = {
   linearPredictor: number[];
@@ -32,6 +34,9 @@ export type References = {
   "counts-and-shares": CountsAndShares;
   "varying-curves": VaryingCurves;
   "natural-and-local": NaturalAndLocal;
+  groups: Groups;
+  "local-models": LocalModels;
+  "tests-of-terms": TestsOfTerms;
   "additive-models": { madeWith: MadeWith; series: SeriesReference[] };
   "linear-models": {
     madeWith: MadeWith;

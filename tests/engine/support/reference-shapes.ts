@@ -64,3 +64,60 @@ export type NaturalAndLocal = {
     }[];
   };
 };
+
+export type Groups = {
+  madeWith: MadeWith;
+  stores: {
+    data: { x: number[]; store: string[]; depth: number[]; y: number[] };
+    /** `storeLevels`: coefficients of the stores in sorted order. */
+    levels: GamSummary & { storeLevels: number[] };
+    slopes: GamSummary;
+  };
+  walk: { data: { week: number[]; x: number[]; y: number[] }; fit: GamSummary; walkEdf: number };
+  curves: GroupCurves;
+  curvesOfCounts: GroupCurves;
+};
+
+export type GroupCurves = {
+  size: number;
+  data: { x: number[]; store: string[]; y: number[] };
+  fit: GamSummary;
+  partsEdf: { level: number; slope: number; wiggly: number };
+};
+
+export type LocalModels = {
+  madeWith: MadeWith;
+  splines: {
+    data: { x: number[]; z: number[]; y: number[] };
+    /** Degrees of freedom without the constant. */
+    oneTerm: { df: number; terms: number[][] }[];
+    twoTerms: { df: [number, number]; terms: number[][] };
+  };
+  local: {
+    data: { x: number[]; z: number[]; promotion: string[]; line: number[]; y: number[] };
+    cases: { name: string; fitted: number[]; terms: number[][] }[];
+  };
+};
+
+export type TestsOfFit = {
+  fit: GamSummary;
+  /** Per curve, in order. */
+  smooth: { referenceDegreesOfFreedom: number[]; statistic: number[]; pValue: number[] };
+  factor: { degreesOfFreedom: number; statistic: number; pValue: number };
+  /** Of the fit by restricted likelihood. */
+  criteria: { aic: number; logLikelihood: number; degreesOfFreedom: number; edf: number };
+};
+
+export type TestsOfTerms = {
+  madeWith: MadeWith;
+  data: {
+    price: number[]; yearFraction: number[]; temperature: number[]; promotion: string[];
+    logUnits: number[]; units: number[]; bought: number[];
+  };
+  /** Multipliers of the three curves' difference penalties where they are given. */
+  given: [number, number, number];
+  gaussian: TestsOfFit;
+  negativeBinomial: TestsOfFit;
+  binomial: TestsOfFit;
+  nested: { df: number; statistic: number; degreesOfFreedom: number; residualDegreesOfFreedom: number; pValue: number };
+};
