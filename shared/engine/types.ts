@@ -159,6 +159,8 @@ export type LocalRegressionBasis = {
 export type TensorProductBasis = {
   kind: "tensor-product";
   margins: [SmoothBasis, SmoothBasis];
+  /** Smallest and largest value of each column. */
+  ranges: [[number, number], [number, number]];
 };
 
 /** One column per week from `first` to `last`, weeks without rows too. */
@@ -179,8 +181,16 @@ export type TermBasis =
   | LinearBasis | FactorBasis | SmoothBasis | ScaledSmoothBasis | LevelledSmoothBasis | CyclicSmoothBasis | NaturalSplineBasis
   | LocalRegressionBasis | TensorProductBasis | RandomWalkBasis | RandomEffectBasis | FactorSmoothBasis;
 
-/** Values seen in the fitted rows, ascending (levels: in order of `levels`), and how many rows had each. */
-export type SeenValues = { values: Float64Array | string[]; counts: Float64Array };
+/**
+ * Values seen in the fitted rows, ascending (levels: in order of `levels`), and how many rows had each. Of a tensor product
+ * the pairs seen, the second column's values in `second`; of curves per level or group also what each of them saw.
+ */
+export type SeenValues = {
+  values: Float64Array | string[];
+  counts: Float64Array;
+  second?: Float64Array;
+  byLevel?: { values: Float64Array; counts: Float64Array }[];
+};
 
 export type FittedTerm = {
   id: string;
@@ -257,6 +267,7 @@ export type WarningCode =
   | "straight-line"
   | "level-without-units"
   | "separation"
+  | "concurvity"
   | "perfect-fit"
   | "not-converged";
 
@@ -367,6 +378,31 @@ export type TermReport = {
   penalties: number[];
   /** Smallest and largest contribution over the fitted rows' values. */
   contributionRange: [number, number];
+  /** That the term is zero; null with `testReason`. */
+  test: TermTest | null;
+  /** Why there is no test; null where there is one. */
+  testReason: string | null;
+  /** That a line would do in place of the curve; null for terms without a penalised curve around a line. */
+  curveTest: TermTest | null;
+  /**
+   * Share of the term's fitted values that all other terms reproduce, 0 to 1; null where its estimate is zero, and with
+   * local regression.
+   */
+  concurvity: number | null;
+};
+
+/** A test of some of a model's coefficients being zero. */
+export type TermTest = {
+  /** F where the dispersion is estimated (the quadratic form over its degrees of freedom), chi-square where it is known. */
+  statistic: number;
+  distribution: "F" | "chi-square";
+  /** Numerator degrees of freedom; 0 where a penalty went to its limit and left nothing to test. */
+  referenceDegreesOfFreedom: number;
+  /** n - edf; null where the dispersion is known. */
+  residualDegreesOfFreedom: number | null;
+  pValue: number;
+  /** False only where the response is normal and the model has no penalties: then the test is exact. */
+  approximate: boolean;
 };
 
 export type ModelReport = {
@@ -376,7 +412,12 @@ export type ModelReport = {
   /** Share of the null deviance, 0 to 1 (below 0 for a model worse than its mean). */
   devianceExplained: number;
   dispersion: number;
+  /** Conditional AIC, corrected for the choice of penalties; null with `aicReason`. */
+  aic: number | null;
+  /** Why there is no AIC, or what its correction leaves out; null otherwise. */
+  aicReason: string | null;
   criterion: number;
   converged: boolean;
+  /** The model's, and those about terms that others reproduce. */
   warnings: ModelWarning[];
 };
