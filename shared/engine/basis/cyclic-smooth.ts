@@ -2,18 +2,20 @@ import { EngineError } from "../errors";
 import type { CyclicSmoothBasis, CyclicSmoothTerm } from "../types";
 import type { BasisKind } from "./basis-kind";
 import { numberColumn } from "./columns";
+import { checkDistinct, checkSize, fewValuesWarning } from "./curve-checks";
 import { rangeOf } from "./ranges";
 import { seenNumbers } from "./seen-values";
-import { checkDistinct, checkSize, fewValuesWarning } from "./smooth";
+import { scaleSplines } from "./spline-grid";
 import { splineRows, splineSlopeRows } from "./uniform-spline";
 
 const role = "cyclic-smooth";
-const defaultSize = 12;
+/** Splines of a circle that names no size. */
+export const defaultCyclicSize = 12;
 
 /** Cubic B-splines on a circle: `size` equal intervals over the period, as many splines (Eilers & Marx 2010, section 6). */
 export const cyclicSmooth: BasisKind<CyclicSmoothTerm, CyclicSmoothBasis> = {
   learn(term, id, data) {
-    const size = checkSize(term.size ?? defaultSize, id);
+    const size = checkSize(term.size ?? defaultCyclicSize, id);
     const [lower, upper] = checkPeriod(term.period, id);
     const x = numberColumn(data, term.column, role);
     const seen = seenNumbers(x);
@@ -30,8 +32,7 @@ export const cyclicSmooth: BasisKind<CyclicSmoothTerm, CyclicSmoothBasis> = {
   rows: (basis, data) => splineRows(numberColumn(data, basis.column, role), gridOf(basis)),
   logSlopeRows(basis, data) {
     const x = numberColumn(data, basis.column, role);
-    const rows = splineSlopeRows(x, gridOf(basis));
-    return rows.storage === "spline" ? { ...rows, values: rows.values.map((slope, at) => slope * x[at >> 2]) } : rows;
+    return scaleSplines(splineSlopeRows(x, gridOf(basis)), x);
   },
   // Every position on a circle has neighbours on both sides: nothing is extrapolated; support counts tell where it is thin.
   outside: (_range, basis, data) => new Uint8Array(numberColumn(data, basis.column, role).length),

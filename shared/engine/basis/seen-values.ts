@@ -30,3 +30,40 @@ export function seenLevels(levels: readonly string[], index: Int32Array): SeenVa
   for (let row = 0; row < index.length; row++) counts[index[row]]++;
   return { values: [...levels], counts };
 }
+
+/**
+ * Distinct values of a column within each level, and how many rows have each. O(n log n).
+ *
+ * @param index per row, the position of its level, below `count`.
+ * @example seenPerLevel(Float64Array.of(2, 1, 2), Int32Array.of(0, 1, 0), 2)[0]; // values 2; counts 2
+ */
+export function seenPerLevel(values: Float64Array, index: Int32Array, count: number): { values: Float64Array; counts: Float64Array }[] {
+  const lengths = new Int32Array(count);
+  for (let row = 0; row < index.length; row++) lengths[index[row]]++;
+  const perLevel = Array.from(lengths, (length) => new Float64Array(length));
+  const used = new Int32Array(count);
+  for (let row = 0; row < index.length; row++) perLevel[index[row]][used[index[row]]++] = values[row];
+  return perLevel.map(seenNumbers);
+}
+
+/**
+ * Distinct pairs of two columns, ascending by the first, then the second, and how many rows have each. O(n log n).
+ *
+ * @param left length n. Not changed. right likewise.
+ * @example seenPairs(Float64Array.of(2, 1), Float64Array.of(3, 4)); // values 1, 2; second 4, 3; counts 1, 1
+ */
+export function seenPairs(left: Float64Array, right: Float64Array): SeenValues & { values: Float64Array; second: Float64Array } {
+  const order = Array.from(left, (_, row) => row).sort((a, b) => left[a] - left[b] || right[a] - right[b]);
+  const starts = order.filter((row, k) => k === 0 || left[row] !== left[order[k - 1]] || right[row] !== right[order[k - 1]]);
+  const counts = new Float64Array(starts.length);
+  let used = -1;
+  for (const row of order) {
+    if (row === starts[used + 1]) used++;
+    counts[used]++;
+  }
+  return {
+    values: Float64Array.from(starts, (row) => left[row]),
+    second: Float64Array.from(starts, (row) => right[row]),
+    counts,
+  };
+}

@@ -1,13 +1,30 @@
 import type { SparseRows } from "../linalg/sparse-rows";
-import type { FittedTerm, ModelData, TermBasis, TermSpec } from "../types";
-import type { LearntBasis } from "./basis-kind";
+import type { FittedTerm, ModelData, SmoothTerm, TermBasis, TermSpec } from "../types";
+import type { BasisKind, LearntBasis } from "./basis-kind";
 import { cyclicSmooth } from "./cyclic-smooth";
 import { factor } from "./factor";
+import { factorSmooth } from "./factor-smooth";
+import { levelledSmooth } from "./levelled-smooth";
 import { linear } from "./linear";
+import { localRegression } from "./local-regression";
+import { naturalSpline } from "./natural-spline";
+import { randomEffect } from "./random-effect";
+import { randomWalk } from "./random-walk";
+import { scaledSmooth } from "./scaled-smooth";
+import type { ScaledSmoothTerm } from "./scaled-smooth";
 import { smooth } from "./smooth";
+import { tensorProduct } from "./tensor-product";
 
 /** Columns a term reads. */
-export const columnsOf = (term: TermSpec): string[] => [term.column];
+export function columnsOf(term: TermSpec): string[] {
+  switch (term.kind) {
+    case "tensor-product": return [...term.columns];
+    case "factor-smooth": return [term.column, term.group];
+    case "smooth":
+    case "random-effect": return term.by === undefined ? [term.column] : [term.column, term.by];
+    default: return [term.column];
+  }
+}
 
 /** Name of a term: its own, or its column names joined by ":". */
 export const termId = (term: TermSpec): string => term.id ?? columnsOf(term).join(":");
@@ -23,10 +40,43 @@ export function learnBasis(term: TermSpec, data: ModelData): LearntBasis<TermBas
   switch (term.kind) {
     case "linear": return linear.learn(term, id, data);
     case "factor": return factor.learn(term, id, data);
-    case "smooth": return smooth.learn(term, id, data);
+    case "smooth": return learnSmooth(term, id, data);
     case "cyclic-smooth": return cyclicSmooth.learn(term, id, data);
+    case "natural-spline": return naturalSpline.learn(term, id, data);
+    case "local-regression": return localRegression.learn(term, id, data);
+    case "tensor-product": return tensorProduct.learn(term, id, data);
+    case "random-walk": return randomWalk.learn(term, id, data);
+    case "random-effect": return randomEffect.learn(term, id, data);
+    case "factor-smooth": return factorSmooth.learn(term, id, data);
   }
 }
+
+/** A smooth by itself, times a column of numbers, or one per level of a column of text. */
+function learnSmooth(term: SmoothTerm, id: string, data: ModelData): LearntBasis<TermBasis> {
+  if (!isVarying(term)) return smooth.learn(term, id, data);
+  const by = Object.hasOwn(data, term.by) ? data[term.by] : [];
+  return typeof by[0] === "string" ? levelledSmooth.learn(term, id, data) : scaledSmooth.learn(term, id, data);
+}
+
+const isVarying = (term: SmoothTerm): term is ScaledSmoothTerm => term.by !== undefined;
+
+type Learnt<Basis> = Pick<BasisKind<never, Basis>, "rows" | "logSlopeRows" | "outside" | "names">;
+
+const kinds: { [Kind in TermBasis["kind"]]: Learnt<Extract<TermBasis, { kind: Kind }>> } = {
+  linear, factor, smooth,
+  "scaled-smooth": scaledSmooth,
+  "levelled-smooth": levelledSmooth,
+  "cyclic-smooth": cyclicSmooth,
+  "natural-spline": naturalSpline,
+  "local-regression": localRegression,
+  "tensor-product": tensorProduct,
+  "random-walk": randomWalk,
+  "random-effect": randomEffect,
+  "factor-smooth": factorSmooth,
+};
+
+/** The kind of a learnt basis takes that basis: the table's type says so, but only entry by entry. */
+const kindOf = (basis: TermBasis): Learnt<TermBasis> => kinds[basis.kind] as Learnt<TermBasis>;
 
 /**
  * A learnt term's rows for any data, in the coordinates of the model's coefficients.
@@ -34,50 +84,21 @@ export function learnBasis(term: TermSpec, data: ModelData): LearntBasis<TermBas
  * @throws EngineError for missing or unusable columns and levels never seen.
  * @example basisRows(model.terms[0].basis, { price: [1.49] });
  */
-export function basisRows(basis: TermBasis, data: ModelData): SparseRows {
-  switch (basis.kind) {
-    case "linear": return linear.rows(basis, data);
-    case "factor": return factor.rows(basis, data);
-    case "smooth": return smooth.rows(basis, data);
-    case "cyclic-smooth": return cyclicSmooth.rows(basis, data);
-  }
-}
+export const basisRows = (basis: TermBasis, data: ModelData): SparseRows => kindOf(basis).rows(basis, data);
 
 /**
  * Rows of d / d ln x, or null for a term without a number behind it.
  *
  * @example basisLogSlopeRows(model.terms[0].basis, { price: [1.49] });
  */
-export function basisLogSlopeRows(basis: TermBasis, data: ModelData): SparseRows | null {
-  switch (basis.kind) {
-    case "linear": return linear.logSlopeRows(basis, data);
-    case "factor": return factor.logSlopeRows(basis, data);
-    case "smooth": return smooth.logSlopeRows(basis, data);
-    case "cyclic-smooth": return cyclicSmooth.logSlopeRows(basis, data);
-  }
-}
+export const basisLogSlopeRows = (basis: TermBasis, data: ModelData): SparseRows | null => kindOf(basis).logSlopeRows(basis, data);
 
 /**
  * Per row, 1 where the term is used outside the range it was fitted to.
  *
  * @example outsideRows(model.terms[0], { price: [0.01] }); // 1
  */
-export function outsideRows(term: FittedTerm, data: ModelData): Uint8Array {
-  const { basis, observedRange } = term;
-  switch (basis.kind) {
-    case "linear": return linear.outside(observedRange, basis, data);
-    case "factor": return factor.outside(observedRange, basis, data);
-    case "smooth": return smooth.outside(observedRange, basis, data);
-    case "cyclic-smooth": return cyclicSmooth.outside(observedRange, basis, data);
-  }
-}
+export const outsideRows = (term: FittedTerm, data: ModelData): Uint8Array => kindOf(term.basis).outside(term.observedRange, term.basis, data);
 
 /** One name per coefficient of a term. */
-export function coefficientNames(basis: TermBasis, id: string): string[] {
-  switch (basis.kind) {
-    case "linear": return linear.names(basis, id);
-    case "factor": return factor.names(basis, id);
-    case "smooth": return smooth.names(basis, id);
-    case "cyclic-smooth": return cyclicSmooth.names(basis, id);
-  }
-}
+export const coefficientNames = (basis: TermBasis, id: string): string[] => kindOf(basis).names(basis, id);

@@ -1,4 +1,4 @@
-import type { SparseRows } from "../linalg/sparse-rows";
+import type { SplineRows } from "../linalg/sparse-rows";
 
 /**
  * Rows of cubic B-splines on equally spaced knots. With the position u = (x - lower) / step, interval i = floor(u) and
@@ -48,7 +48,7 @@ function wrapPosition(u: number, intervals: number): number {
  * @returns four values a row (they sum to one) and the first one's column.
  * @example splineRows(Float64Array.of(0.5), { lower: 0, upper: 1, intervals: 1, wraps: false }).values; // 1/48, 23/48, 23/48, 1/48
  */
-export function splineRows(x: Float64Array, grid: Grid): SparseRows {
+export function splineRows(x: Float64Array, grid: Grid): SplineRows {
   const { lower, upper, intervals, wraps } = grid;
   const scale = intervals / (upper - lower);
   const first = new Int32Array(x.length);
@@ -79,7 +79,7 @@ export function splineRows(x: Float64Array, grid: Grid): SparseRows {
  * @returns rows as `splineRows` gives, with derivatives in place of values (they sum to zero).
  * @example splineSlopeRows(Float64Array.of(0), { lower: 0, upper: 1, intervals: 1, wraps: false }).values; // -0.5, 0, 0.5, 0
  */
-export function splineSlopeRows(x: Float64Array, grid: Grid): SparseRows {
+export function splineSlopeRows(x: Float64Array, grid: Grid): SplineRows {
   const { lower, upper, intervals, wraps } = grid;
   const scale = intervals / (upper - lower);
   const first = new Int32Array(x.length);

@@ -1,0 +1,51 @@
+import { EngineError } from "../errors";
+import type { SplineRows } from "../linalg/sparse-rows";
+import { quoted } from "./columns";
+
+/** The levels of a column in sorted order, numbers by size. O(n). */
+export const sortedLevels = (perRow: readonly string[]): string[] => [...new Set(perRow)].sort(byNumberThenText);
+
+function byNumberThenText(left: string, right: string): number {
+  const difference = Number(left) - Number(right);
+  if (Number.isFinite(difference) && difference !== 0) return difference;
+  return left < right ? -1 : Number(left > right);
+}
+
+/**
+ * Position of each row's level, -1 where it is not among them. O(n).
+ *
+ * @example levelPositions(["a", "b"], ["b", "c"]); // 1, -1
+ */
+export function levelPositions(levels: readonly string[], perRow: readonly string[]): Int32Array {
+  const positions = new Map(levels.map((level, position) => [level, position]));
+  return Int32Array.from(perRow, (level) => positions.get(level) ?? -1);
+}
+
+/**
+ * Position of each row's level, which must be among those of the fit.
+ *
+ * @throws EngineError level-unknown, with the level and its row.
+ * @example knownPositions({ column: "promotion", levels: ["none"] }, ["none"]); // 0
+ */
+export function knownPositions(of: { column: string; levels: readonly string[] }, perRow: readonly string[]): Int32Array {
+  const index = levelPositions(of.levels, perRow);
+  const row = index.indexOf(-1);
+  if (row < 0) return index;
+  throw new EngineError(
+    "level-unknown",
+    `Level "${perRow[row]}" of factor "${of.column}" (row ${row + 1}) was never seen in the fit; seen were ${quoted(of.levels)}.`,
+  );
+}
+
+/**
+ * Splines of one curve as those of a curve per level: column level x size + k. Rows of no level (-1) are zero.
+ *
+ * @param rows of a curve of `rows.width` splines. Not changed.
+ * @param index per row, the position of its level.
+ * @example splinesPerLevel(rows, Int32Array.of(0, 1), 2).width; // 2 x rows.width
+ */
+export function splinesPerLevel(rows: SplineRows, index: Int32Array, count: number): SplineRows {
+  const values = index.includes(-1) ? rows.values.map((value, at) => (index[at >> 2] < 0 ? 0 : value)) : rows.values;
+  const first = rows.first.map((column, row) => (index[row] < 0 ? 0 : index[row] * rows.width + column));
+  return { storage: "spline", width: count * rows.width, wraps: false, first, values };
+}
