@@ -4,7 +4,7 @@ import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { fileURLToPath } from "node:url";
 import type {
-  CountsAndShares, Groups, LocalModels, MadeWith, NaturalAndLocal, TestsOfTerms, VaryingCurves,
+  AllSeries, CountsAndShares, Groups, LocalModels, MadeWith, NaturalAndLocal, TestsOfTerms, VaryingCurves,
 } from "./reference-shapes";
 
 export type FitSummary = {
@@ -70,13 +70,16 @@ const folder = fileURLToPath(new URL("../reference/", import.meta.url));
 export const committedReference = <Name extends keyof References>(name: Name): References[Name] =>
   JSON.parse(readFileSync(join(folder, `${name}.json`), "utf8")) as References[Name];
 
+/** References too big to be committed. */
+type FreshReferences = References & { "all-series": AllSeries };
+
 /** Runs the reference script now. */
-export function freshReference<Name extends keyof References>(name: Name): References[Name] {
+export function freshReference<Name extends keyof FreshReferences>(name: Name): FreshReferences[Name] {
   const output = mkdtempSync(join(tmpdir(), "engine-reference-"));
   try {
     const file = join(output, "result.json");
     execFileSync("Rscript", ["--vanilla", join(folder, `${name}.R`), file], { stdio: ["ignore", "ignore", "inherit"] });
-    return JSON.parse(readFileSync(file, "utf8")) as References[Name];
+    return JSON.parse(readFileSync(file, "utf8")) as FreshReferences[Name];
   } finally {
     rmSync(output, { recursive: true });
   }

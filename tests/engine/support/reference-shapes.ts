@@ -121,3 +121,21 @@ export type TestsOfTerms = {
   binomial: TestsOfFit;
   nested: { df: number; statistic: number; degreesOfFreedom: number; residualDegreesOfFreedom: number; pValue: number };
 };
+
+type SeriesFit = {
+  linearPredictor: number[];
+  totalEdf: number;
+  dispersion: number;
+  /** Of price and season, as multipliers of our difference penalties. */
+  penalties: [number, number];
+};
+
+export type SeriesOfAll = {
+  store: number;
+  product: number;
+  data: { logmove: number[]; units: number[]; price: number[]; woy: number[]; deal: number[]; feat: number[] };
+  gaussian: SeriesFit;
+  quasiPoisson: SeriesFit;
+};
+
+export type AllSeries = { madeWith: MadeWith; series: SeriesOfAll[] };
