@@ -9,15 +9,7 @@ here <- dirname(sub("--file=", "", grep("--file=", commandArgs(), value = TRUE))
 source(file.path(here, "common.R"))
 suppressPackageStartupMessages(library(mgcv))
 
-data("orangeJuice", package = "bayesm", envir = environment())
-rows <- orangeJuice$yx
-prices <- as.matrix(rows[paste0("price", 1:11)])
-rows$price <- prices[cbind(seq_len(nrow(rows)), rows$brand)]
-rows$lp <- log(rows$price)
-rows$woy <- ((rows$week - 40 + 23) %% 52) + 1
-rows$units <- round(exp(rows$logmove) / 64)
-rows$dealFactor <- factor(rows$deal)
-
+rows <- orange_juice_rows()
 right_side <- ~ s(lp, k = 8, bs = "ps") + s(woy, bs = "cp", k = 12) + dealFactor + feat
 knots <- list(woy = c(0.5, 52.5))
 

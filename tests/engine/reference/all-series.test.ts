@@ -17,8 +17,8 @@ function report(family: string, comparisons: SeriesComparison[]): void {
   const at = (share: number) => gaps[Math.floor(share * (gaps.length - 1))].toExponential(1);
   const apart = comparisons.filter(({ gap }) => gap > 1e-3);
   const worse = apart.filter(({ oursIsWorse }) => oursIsWorse).length;
-  console.log(`${family}: ${gaps.length} series, gap ${at(0.5)} median, ${at(0.9)} nine in ten, ${at(0.95)} nineteen in twenty; `
-    + `${apart.length} beyond 1e-3, our criterion the worse in ${worse} of them`);
+  process.stdout.write(`${family}: ${gaps.length} series, gap ${at(0.5)} median, ${at(0.9)} nine in ten, ${at(0.95)} nineteen in twenty; `
+    + `${apart.length} beyond 1e-3, our criterion the worse in ${worse} of them\n`);
 }
 
 describe("All 913 series agree with the reference package", () => {

@@ -43,3 +43,16 @@ summarise_gam <- function(fit) {
     deviance = ten_digits(fit$deviance), nullDeviance = ten_digits(fit$null.deviance)
   )
 }
+
+# The orange-juice data of Debian's r-cran-bayesm: 83 stores x 11 products x up to 121 weeks, 106,139 rows.
+orange_juice_rows <- function() {
+  data("orangeJuice", package = "bayesm", envir = environment())
+  rows <- orangeJuice$yx
+  # The price columns stand in the order of the brand numbers: row i's own price is price<brand_i>.
+  rows$price <- as.matrix(rows[paste0("price", 1:11)])[cbind(seq_len(nrow(rows)), rows$brand)]
+  rows$lp <- log(rows$price)
+  rows$woy <- ((rows$week - 40 + 23) %% 52) + 1
+  rows$units <- round(exp(rows$logmove) / 64)
+  rows$dealFactor <- factor(rows$deal)
+  rows
+}
