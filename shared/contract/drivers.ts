@@ -10,19 +10,35 @@ const smoothness = z.union([
   z.strictObject({ df: z.number().positive() }),
   z.strictObject({ penalty: z.number().positive() }),
 ]).optional();
+const log = z.boolean().optional();
 const size = z.number().int().min(4).max(40).optional();
 
 /** One additive term; the engine's `TermSpec` says what each means. */
 export const termSpecSchema = z.discriminatedUnion("kind", [
-  z.strictObject({ kind: z.literal("linear"), id, column, log: z.boolean().optional() }),
+  z.strictObject({ kind: z.literal("linear"), id, column, log }),
   z.strictObject({ kind: z.literal("factor"), id, column, reference: z.string().max(60).optional() }),
-  z.strictObject({ kind: z.literal("smooth"), id, column, log: z.boolean().optional(), size, smoothness }),
+  z.strictObject({
+    kind: z.literal("smooth"), id, column, log, size, smoothness,
+    shape: z.enum(["decreasing", "increasing"]).optional(), by: column.optional(),
+  }),
   z.strictObject({ kind: z.literal("cyclic-smooth"), id, column, period: z.tuple([z.number(), z.number()]), size, smoothness }),
+  z.strictObject({ kind: z.literal("natural-spline"), id, column, log, df: z.number().int().min(1).max(40) }),
+  z.strictObject({
+    kind: z.literal("local-regression"), id, column, log, span: z.number().positive().max(1),
+    degree: z.union([z.literal(0), z.literal(1), z.literal(2)]).optional(),
+  }),
+  z.strictObject({
+    kind: z.literal("tensor-product"), id, columns: z.tuple([column, column]),
+    sizes: z.tuple([z.number().int().min(4).max(12), z.number().int().min(4).max(12)]).optional(), smoothness,
+  }),
+  z.strictObject({ kind: z.literal("random-walk"), id, column, smoothness }),
+  z.strictObject({ kind: z.literal("random-effect"), id, column, by: column.optional(), smoothness }),
+  z.strictObject({ kind: z.literal("factor-smooth"), id, column, log, group: column, size, smoothness }),
 ]);
 
 export const modelSpecSchema = z.strictObject({
   response: column,
-  family: z.enum(["gaussian", "log-gaussian", "quasi-poisson"]),
+  family: z.enum(["gaussian", "log-gaussian", "quasi-poisson", "negative-binomial", "binomial"]),
   offset: column.optional(),
   weights: column.optional(),
   terms: z.array(termSpecSchema).max(20),
@@ -126,7 +142,9 @@ export const curveSchema = z.object({
   term: z.string(),
   /** What it stands for on screens: price, season, temperature, promotion, mechanic, event, trend … */
   driver: z.string(),
-  kind: z.enum(["linear", "factor", "smooth", "cyclic-smooth"]),
+  kind: z.enum([
+    "linear", "factor", "smooth", "cyclic-smooth", "natural-spline", "local-regression", "random-walk", "random-effect",
+  ]),
   column: z.string(),
   /** Numbers, or the levels of a factor. */
   x: z.union([z.array(z.number()), z.array(z.string())]),

@@ -8,6 +8,7 @@ export type EngineErrorCode =
   | "length-mismatch"
   | "value-not-finite"
   | "value-not-positive"
+  | "value-out-of-range"
   | "response-invalid"
   | "weights-invalid"
   | "level-unknown"

@@ -1,12 +1,12 @@
 export type * from "./types";
+export { columnsOf } from "./basis/term-basis";
 export { EngineError } from "./errors";
 export type { EngineErrorCode } from "./errors";
 export { fitModel } from "./fit/fit-model";
 export { modelReport } from "./inference/model-report";
-export {
-  covarianceQuadratic, designRows, designTransposeTimes, designTransposeTimesMany, transposeTimes,
-} from "./predict/design-rows";
+export { designRows, designTransposeTimes, designTransposeTimesMany, transposeTimes } from "./predict/design-rows";
 export type { DesignRows } from "./predict/design-rows";
+export { covarianceQuadratic } from "./predict/model-covariance";
 export { normalQuantile } from "./predict/level";
 export { predict } from "./predict/predict";
 export { supportCounts } from "./predict/support";

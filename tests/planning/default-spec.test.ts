@@ -1,3 +1,4 @@
+import { columnsOf as columnNames } from "@shared/engine";
 import { describe, expect, it } from "vitest";
 import { PlanningError, defaultSpec, describeVariation, toModelData } from "@shared/planning";
 import type { SalesRow, Variation } from "@shared/planning";
@@ -12,7 +13,7 @@ const describeRows = (count: number, changes: (index: number) => Partial<SalesRo
   describeVariation(toModelData(salesRows(count, changes)).data);
 
 const columnsOf = (variation: Variation) =>
-  defaultSpec(variation).spec.terms.map((term) => `${term.kind} ${term.column}`);
+  defaultSpec(variation).spec.terms.map((term) => `${term.kind} ${columnNames(term).join(" ")}`);
 
 describe("the default specification", () => {
   it("has curves of log price and temperature, a circle of the year and levels of promotion", () => {
@@ -42,7 +43,7 @@ describe("the default specification", () => {
 
   it("leaves a driver out that never varied or is not known", () => {
     const { spec, leftOut } = defaultSpec({ ...twoYears, distinctPrices: 1, distinctTemperatures: null });
-    expect(spec.terms.map((term) => term.column)).toEqual(["promotion", "yearFraction"]);
+    expect(spec.terms.flatMap(columnNames)).toEqual(["promotion", "yearFraction"]);
     expect(leftOut).toContainEqual({ driver: "price", reason: "The price never varied." });
     expect(leftOut).toContainEqual({ driver: "temperature", reason: "The temperature of too many weeks is not known." });
   });

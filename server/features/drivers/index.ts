@@ -1,6 +1,6 @@
 export * from "./drivers.entities";
 export { requireProduct, requireStores, type ProductReference, type StoreReference } from "./catalogue-lookup";
-export { isPriceTerm, seenWeekByWeek, type DriverCurve } from "./curves/model-curves";
+export { hasOneCurve, isPriceTerm, seenWeekByWeek, type DriverCurve } from "./curves/model-curves";
 export { presentCurve } from "./curves/curves.presenter";
 export { fitProduct } from "./models/fit-product.service";
 export { findFits, type LoadedModel, type StoredFit } from "./models/models.repository";

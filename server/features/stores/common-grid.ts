@@ -15,7 +15,7 @@ export function commonGrid(terms: readonly FittedTerm[], points: number): number
   const ranges = terms.map((term) => term.observedRange).filter((range) => range !== null);
   const from = Math.min(...ranges.map(([lowest]) => lowest));
   const to = Math.max(...ranges.map(([, highest]) => highest));
-  return evenly({ from, to, points, isByRatio: basis.log });
+  return evenly({ from, to, points, isByRatio: "log" in basis && basis.log });
 }
 
 function commonLevels(terms: readonly FittedTerm[]): string[] {

@@ -1,8 +1,8 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
 import { setImmediate } from "node:timers/promises";
-import { parseModel, type FittedModel, type FittedTerm } from "@shared/engine";
+import { parseModel, type FittedModel } from "@shared/engine";
 import { driverOfTerm } from "@shared/planning";
-import { requireProduct, storesThatSold, type SellingStore, type StoredFit } from "../drivers";
+import { hasOneCurve, requireProduct, storesThatSold, type DriverCurve, type SellingStore, type StoredFit } from "../drivers";
 import { anchorPrice } from "./anchor-price";
 import { chainCurve, type ChainCurve, type WeightedCurve } from "./chain-curve";
 import { commonGrid } from "./common-grid";
@@ -36,7 +36,7 @@ export type ComparisonOutcome = {
   chain: ChainCurve | null;
 };
 
-type Learner = { stored: StoredFit; model: FittedModel; term: FittedTerm | undefined };
+type Learner = { stored: StoredFit; model: FittedModel; term: DriverCurve["term"] | undefined };
 
 /**
  * One driver's curve of a product for all its stores on common values, relative to a common anchor price for the price
@@ -75,8 +75,9 @@ async function learnersOf(fits: readonly StoredFit[], driver: string): Promise<M
   const learners = new Map<string, Learner>();
   for (const stored of fits) {
     const model = parseModel(stored.fit);
-    const ofDriver = model.terms.find((term) => driverOfTerm(term) === driver);
-    learners.set(stored.store, { stored, model, term: ofDriver ?? model.terms.find(({ id }) => id === driver) });
+    const curves = model.terms.filter(hasOneCurve);
+    const ofDriver = curves.find((term) => driverOfTerm(term) === driver);
+    learners.set(stored.store, { stored, model, term: ofDriver ?? curves.find(({ id }) => id === driver) });
     await setImmediate();
   }
   return learners;

@@ -15,7 +15,7 @@ export type StoreCurve = { curve: DriverCurve; elasticity: (Interval & { standar
 export function storeCurve(
   { model, term, grid, anchor, level }: {
     model: FittedModel;
-    term: FittedTerm;
+    term: DriverCurve["term"];
     grid: readonly number[] | readonly string[];
     anchor: number | null;
     level: number;

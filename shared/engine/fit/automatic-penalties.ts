@@ -1,47 +1,47 @@
 import { backwardSolve, choleskyInPlace, forwardSolve } from "../linalg/cholesky";
 import type { PenaltySearch } from "./penalty-search";
-import { tryPenalties, withinBounds } from "./penalty-search";
-import type { ReducedSystem } from "./reduced-system";
+import { derivatives, tryPenalties, withinBounds } from "./penalty-search";
 
 /** Largest change of a log penalty in one step. */
 const longestStep = 5;
 const gradientTolerance = 1e-7;
 
 /**
- * One Fellner-Schall step on the automatic penalties: penalty x b'b / scale moves to the block's effective degrees of
+ * One Fellner-Schall step on the automatic penalties: penalty x b'b / scale moves to the penalty's effective degrees of
  * freedom. Sure in direction, but slow near the end. Source: Wood & Fasiolo (2017), Biometrics 73, equation 6.
  *
- * @param automatic the blocks whose penalty is to be chosen.
+ * @param automatic the penalties to be chosen.
  */
-export function fellnerSchallStep(search: PenaltySearch, reduced: ReducedSystem, automatic: readonly number[]): void {
-  const { current } = search;
-  const scale = current.penalisedResidual / (reduced.rowCount - reduced.unpenalisedKept);
+export function fellnerSchallStep(search: PenaltySearch, automatic: readonly number[]): void {
+  const current = derivatives(search, "gradient");
+  const { system, scale: known } = search.problem;
+  const scale = known === "known" ? 1 : current.penalisedResidual / (system.rowCount - system.unpenalisedKept);
   const next = current.logPenalties.slice();
-  for (const block of automatic) {
-    const wanted = Math.log((scale * Math.max(current.edf[block], 1e-12)) / Math.max(current.squares[block], Number.MIN_VALUE * 1e30));
-    const step = Math.min(longestStep, Math.max(-longestStep, wanted - next[block]));
-    if (Number.isFinite(step)) next[block] = withinBounds(search, block, next[block] + step);
+  for (const penalty of automatic) {
+    const wanted = Math.log((scale * Math.max(current.edf[penalty], 1e-12)) / Math.max(current.squares[penalty], Number.MIN_VALUE * 1e30));
+    const step = Math.min(longestStep, Math.max(-longestStep, wanted - next[penalty]));
+    if (Number.isFinite(step)) next[penalty] = withinBounds(search, penalty, next[penalty] + step);
   }
-  tryPenalties(search, reduced, next, (trial) => Number.isFinite(trial.criterion));
+  tryPenalties(search, next, (trial) => Number.isFinite(trial.criterion));
 }
 
-/** Blocks still free to move: not at a bound that the gradient points beyond. */
+/** Penalties still free to move: not at a bound that the gradient points beyond. */
 function movable(search: PenaltySearch, automatic: readonly number[]): number[] {
-  const { gradient, logPenalties } = search.current;
-  return automatic.filter((block) => {
-    const isHeldAbove = logPenalties[block] >= search.highest[block] && gradient[block] <= 0;
-    const isHeldBelow = logPenalties[block] <= search.lowest[block] && gradient[block] >= 0;
+  const { gradient, logPenalties } = derivatives(search, "hessian");
+  return automatic.filter((penalty) => {
+    const isHeldAbove = logPenalties[penalty] >= search.highest[penalty] && gradient[penalty] <= 0;
+    const isHeldBelow = logPenalties[penalty] <= search.lowest[penalty] && gradient[penalty] >= 0;
     return !isHeldAbove && !isHeldBelow;
   });
 }
 
-/** Step of a block whose criterion bends downwards: any length that lowers it will do, and shorter is slower. */
+/** Step of a penalty whose criterion bends downwards: any length that lowers it will do, and shorter is slower. */
 const downhillStep = 3;
 
-/** Newton direction of the movable blocks; where the Hessian is not positive definite, each by its own curvature. */
+/** Newton direction of the movable penalties; where the Hessian is not positive definite, each by its own curvature. */
 function newtonDirection(search: PenaltySearch, free: readonly number[]): Float64Array {
   const { gradient, hessian } = search.current;
-  const count = search.blocks.length;
+  const count = search.penalties.length;
   const size = free.length;
   const matrix = new Float64Array(size * size);
   const direction = new Float64Array(size);
@@ -69,11 +69,11 @@ function newtonDirection(search: PenaltySearch, free: readonly number[]): Float6
 }
 
 /**
- * Whether a block's criterion falls towards its limit as exp(-log penalty), which Newton would follow one unit a step:
+ * Whether a penalty's criterion falls towards its limit as exp(-log penalty), which Newton would follow one unit a step:
  * the penalty goes to its limit at once.
  */
-function isInTail(search: PenaltySearch, block: number, step: number): boolean {
-  return Math.abs(step - 1) < 0.1 && search.current.edf[block] < 0.5;
+function isInTail(search: PenaltySearch, penalty: number, step: number): boolean {
+  return Math.abs(step - 1) < 0.1 && search.current.edf[penalty] < 0.5;
 }
 
 /**
@@ -82,22 +82,23 @@ function isInTail(search: PenaltySearch, block: number, step: number): boolean {
  *
  * @param options.maxSteps steps allowed. options.stopNear penalties of an optimum known already: the search stops once
  * it is drawn to that one.
- * @returns true when the gradient of every movable block vanished.
+ * @returns true when the gradient of every movable penalty vanished.
  */
 export function newtonSteps(
-  search: PenaltySearch, reduced: ReducedSystem, automatic: readonly number[], options: { maxSteps: number; stopNear?: Float64Array },
+  search: PenaltySearch, automatic: readonly number[], options: { maxSteps: number; stopNear?: Float64Array },
 ): boolean {
   for (let step = 0; step <= options.maxSteps; step++) {
+    if (!Number.isFinite(search.current.criterion)) return false;
     const free = movable(search, automatic);
-    if (free.every((block) => Math.abs(search.current.gradient[block]) < gradientTolerance)) return true;
+    if (free.every((penalty) => Math.abs(search.current.gradient[penalty]) < gradientTolerance)) return true;
     if (options.stopNear !== undefined && isNear(search, automatic, options.stopNear)) return true;
-    if (step === options.maxSteps || !descend(search, reduced, free)) return false;
+    if (step === options.maxSteps || !descend(search, free)) return false;
   }
   return false;
 }
 
 /** @returns false where no fraction of the step lowers the criterion: rounding is all that is left, or the system is singular. */
-function descend(search: PenaltySearch, reduced: ReducedSystem, free: readonly number[]): boolean {
+function descend(search: PenaltySearch, free: readonly number[]): boolean {
   const direction = newtonDirection(search, free);
   const from = search.current.logPenalties.slice();
   const before = search.current.criterion;
@@ -105,15 +106,15 @@ function descend(search: PenaltySearch, reduced: ReducedSystem, free: readonly n
   for (let fraction = 1; fraction > 1e-7; fraction /= 2) {
     const next = from.slice();
     for (let i = 0; i < free.length; i++) next[free[i]] = withinBounds(search, free[i], from[free[i]] + fraction * direction[i]);
-    if (tryPenalties(search, reduced, next, (trial) => trial.criterion <= before + allowance)) return true;
+    if (tryPenalties(search, next, (trial) => trial.criterion <= before + allowance)) return true;
   }
   return false;
 }
 
 function isNear(search: PenaltySearch, automatic: readonly number[], known: Float64Array): boolean {
-  const { logPenalties, gradient, edf } = search.current;
-  return automatic.every((block) => {
-    const bothGoToTheLimit = known[block] >= search.highest[block] && edf[block] < 0.1 && gradient[block] < 0;
-    return bothGoToTheLimit || Math.abs(logPenalties[block] - known[block]) < 0.25;
+  const { logPenalties, gradient, edf } = derivatives(search, "gradient");
+  return automatic.every((penalty) => {
+    const bothGoToTheLimit = known[penalty] >= search.highest[penalty] && edf[penalty] < 0.1 && gradient[penalty] < 0;
+    return bothGoToTheLimit || Math.abs(logPenalties[penalty] - known[penalty]) < 0.25;
   });
 }

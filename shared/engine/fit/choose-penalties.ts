@@ -1,27 +1,39 @@
 import { fellnerSchallStep, newtonSteps } from "./automatic-penalties";
 import type { Design } from "./design";
+import type { AskedTerm } from "./fixed-degrees";
 import { solveDegrees } from "./fixed-degrees";
 import type { PenaltySearch } from "./penalty-search";
-import { createSearch, evaluateAt } from "./penalty-search";
-import type { ReducedSystem } from "./reduced-system";
+import { evaluateAt, exchangeKept } from "./penalty-search";
 
-/** Which blocks have their penalty chosen, which are held to degrees of freedom, which are given. */
+/** Which penalties are chosen, which terms are held to degrees of freedom, which penalties are given. */
 export type PenaltyPlan = {
   automatic: number[];
-  fixedDegrees: { block: number; firstUnpenalised: number }[];
-  given: { block: number; logPenalty: number }[];
+  asked: AskedTerm[];
+  given: { penalty: number; logPenalty: number }[];
 };
 
 /** @example planPenalties(design).automatic.length; // dimensions of the search */
 export function planPenalties(design: Design): PenaltyPlan {
-  const plan: PenaltyPlan = { automatic: [], fixedDegrees: [], given: [] };
-  design.blocks.forEach(({ smoothness, id }, block) => {
-    const firstUnpenalised = design.parts.find((part) => part.id === id)?.unpenalisedFirst ?? 0;
-    if (typeof smoothness === "string") plan.automatic.push(block);
-    else if ("df" in smoothness) plan.fixedDegrees.push({ block, firstUnpenalised });
-    else plan.given.push({ block, logPenalty: Math.log(smoothness.penalty) });
+  const plan: PenaltyPlan = { automatic: [], asked: [], given: [] };
+  design.penalties.forEach(({ smoothness, id }, penalty) => {
+    if (typeof smoothness === "string") plan.automatic.push(penalty);
+    else if ("penalty" in smoothness) plan.given.push({ penalty, logPenalty: Math.log(smoothness.penalty) });
+    else {
+      const known = plan.asked.find((term) => term.id === id);
+      if (known !== undefined) known.penalties.push(penalty);
+      else plan.asked.push(askedTerm(design, { id, penalty, asked: smoothness.df }));
+    }
   });
   return plan;
+}
+
+function askedTerm(design: Design, of: { id: string; penalty: number; asked: number }): AskedTerm {
+  const part = design.parts.find(({ id }) => id === of.id);
+  return {
+    id: of.id, penalties: [of.penalty], asked: of.asked,
+    firstUnpenalised: part?.unpenalisedFirst ?? 0,
+    unpenalised: part?.coordinates.unpenalised ?? 0,
+  };
 }
 
 /**
@@ -31,44 +43,44 @@ export function planPenalties(design: Design): PenaltyPlan {
  */
 export function startPenalties(search: PenaltySearch, plan: PenaltyPlan, logFactor: number): Float64Array {
   const start = search.defaults.map((value) => value + logFactor);
-  for (const { block } of plan.fixedDegrees) start[block] = search.defaults[block];
-  for (const { block, logPenalty } of plan.given) start[block] = logPenalty;
+  for (const { penalties } of plan.asked) for (const penalty of penalties) start[penalty] = search.defaults[penalty];
+  for (const { penalty, logPenalty } of plan.given) start[penalty] = logPenalty;
   return start;
 }
 
-type RefineOptions = { start: Float64Array; fellnerSchallSteps: number; maxSteps: number; stopNear?: Float64Array };
+export type RefineOptions = { start: Float64Array; fellnerSchallSteps: number; maxSteps: number; stopNear?: Float64Array };
 
 /**
  * Chooses penalties for one working model from one start: Fellner-Schall steps, then Newton; degrees of freedom asked for
  * are solved in turn with it until neither moves.
  *
  * @returns whether the search came to rest; the result is `search.current`.
- * @example refinePenalties(search, reduced, plan, { start, fellnerSchallSteps: 2, maxSteps: 50 });
+ * @example refinePenalties(search, plan, { start, fellnerSchallSteps: 2, maxSteps: 50 });
  */
-export function refinePenalties(search: PenaltySearch, reduced: ReducedSystem, plan: PenaltyPlan, options: RefineOptions): boolean {
-  evaluateAt(search, reduced, options.start);
-  liftUntilRegular(search, reduced, options.start);
-  const { automatic, fixedDegrees } = plan;
-  if (fixedDegrees.length > 0) solveDegrees(search, reduced, fixedDegrees);
+export function refinePenalties(search: PenaltySearch, plan: PenaltyPlan, options: RefineOptions): boolean {
+  evaluateAt(search, options.start);
+  liftUntilRegular(search, options.start);
+  const { automatic, asked } = plan;
+  if (asked.length > 0) solveDegrees(search, asked);
   if (automatic.length === 0) return true;
-  for (let step = 0; step < options.fellnerSchallSteps; step++) fellnerSchallStep(search, reduced, automatic);
-  if (fixedDegrees.length === 0) return newtonSteps(search, reduced, automatic, options);
+  for (let step = 0; step < options.fellnerSchallSteps; step++) fellnerSchallStep(search, automatic);
+  if (asked.length === 0) return newtonSteps(search, automatic, options);
   for (let turn = 0; turn < 60; turn++) {
     const before = search.current.logPenalties.slice();
-    solveDegrees(search, reduced, fixedDegrees);
-    const rested = newtonSteps(search, reduced, automatic, options);
-    const moved = search.current.logPenalties.some((value, block) => Math.abs(value - before[block]) > 1e-8);
+    solveDegrees(search, asked);
+    const rested = newtonSteps(search, automatic, options);
+    const moved = search.current.logPenalties.some((value, penalty) => Math.abs(value - before[penalty]) > 1e-8);
     if (rested && !moved) return true;
   }
   return false;
 }
 
 /** Where rounding makes the system singular at a small penalty, raises all of them until it is not. */
-function liftUntilRegular(search: PenaltySearch, reduced: ReducedSystem, start: Float64Array): void {
+function liftUntilRegular(search: PenaltySearch, start: Float64Array): void {
   const lifted = start.slice();
   for (let step = 0; step < 40 && !Number.isFinite(search.current.criterion); step++) {
-    for (let block = 0; block < lifted.length; block++) lifted[block] += 2;
-    evaluateAt(search, reduced, lifted);
+    for (let penalty = 0; penalty < lifted.length; penalty++) lifted[penalty] += 2;
+    evaluateAt(search, lifted);
   }
 }
 
@@ -76,20 +88,17 @@ function liftUntilRegular(search: PenaltySearch, reduced: ReducedSystem, start: 
  * Chooses penalties for one working model from two starts, stiff (e^6 times the default) and loose (e^-6): about one
  * series in nine has several optima, and the better criterion wins.
  *
- * @returns the search at its result, and whether it came to rest.
- * @example const { search } = bestPenalties(reduced, design.blocks, plan);
+ * @returns whether it came to rest; the result is `search.current`.
+ * @example const rested = bestPenalties(search, plan);
  */
-export function bestPenalties(
-  reduced: ReducedSystem, design: Design, plan: PenaltyPlan,
-): { search: PenaltySearch; rested: boolean } {
-  const search = createSearch(reduced, design.blocks);
+export function bestPenalties(search: PenaltySearch, plan: PenaltyPlan): boolean {
   const options = { fellnerSchallSteps: 2, maxSteps: 60 };
-  const stiffRested = refinePenalties(search, reduced, plan, { ...options, start: startPenalties(search, plan, 6) });
-  if (plan.automatic.length === 0) return { search, rested: stiffRested };
-  const stiff = search.current.logPenalties.slice();
-  const stiffCriterion = search.current.criterion;
-  const looseRested = refinePenalties(search, reduced, plan, { ...options, start: startPenalties(search, plan, -6), stopNear: stiff });
-  if (search.current.criterion < stiffCriterion - 1e-9 * Math.abs(stiffCriterion)) return { search, rested: looseRested };
-  evaluateAt(search, reduced, stiff);
-  return { search, rested: stiffRested };
+  const stiffRested = refinePenalties(search, plan, { ...options, start: startPenalties(search, plan, 6) });
+  if (plan.automatic.length === 0) return stiffRested;
+  const { logPenalties: stiff, criterion } = search.current;
+  exchangeKept(search);
+  const looseRested = refinePenalties(search, plan, { ...options, start: startPenalties(search, plan, -6), stopNear: stiff });
+  if (search.current.criterion < criterion - 1e-9 * Math.abs(criterion)) return looseRested;
+  exchangeKept(search);
+  return stiffRested;
 }

@@ -1,12 +1,13 @@
 import { bestPenalties, planPenalties } from "./choose-penalties";
-import { solveCoordinates } from "./coefficients";
-import type { CoefficientMap } from "./coefficients";
+import type { CoefficientMap } from "./coefficient-map";
 import type { Design } from "./design";
 import { createScratch, normalEquations } from "./normal-equations";
-import { predictorOf } from "./predictor";
-import { eliminateUnpenalised } from "./reduced-system";
-import { checkRowsSuffice } from "./row-budget";
+import { layOutPenalties } from "./penalties";
+import { coefficientsAt, predictorOf } from "./predictor";
+import { shapeConstraints } from "./shape-constraints";
+import { shiftedCoordinates } from "./working-fit";
 import type { WorkingFit } from "./working-fit";
+import { solveWorking } from "./working-model";
 
 /** Response on the link scale, offset and prior weights of the fitted rows. */
 export type ExactRows = { response: Float64Array; offset: Float64Array; weights: Float64Array };
@@ -22,16 +23,20 @@ export function fitExact(design: Design, rows: ExactRows, map: CoefficientMap): 
   const { response, offset, weights } = rows;
   const working = response.map((value, row) => value - offset[row]);
   const equations = normalEquations(design, { response: working, weights }, createScratch(design));
-  const reduced = eliminateUnpenalised(equations, design, null);
-  checkRowsSuffice(reduced);
-  const { search, rested } = bestPenalties(reduced, design, planPenalties(design));
-  const coordinates = solveCoordinates(reduced, search.current);
-  coordinates[0] += equations.shift;
+  const plan = planPenalties(design);
+  const problem = {
+    design, plan, scale: "unknown" as const,
+    layout: layOutPenalties(design.penalties, design.groups?.count ?? 1),
+    constraints: shapeConstraints(design),
+  };
+  const solution = solveWorking(problem, equations, { dropped: null, search: null, held: null }, (search) => bestPenalties(search, plan));
+  const coordinates = shiftedCoordinates(solution, equations);
   return {
-    reduced, search, coordinates,
-    linearPredictor: predictorOf(design, map, coordinates, offset),
-    criterion: search.current.criterion,
-    converged: rested,
+    solution, equations, coordinates,
+    linearPredictor: predictorOf(design, coefficientsAt(design, map, coordinates), offset),
+    theta: null,
+    criterion: solution.search.current.criterion,
+    converged: solution.rested,
     iterations: 1,
   };
 }

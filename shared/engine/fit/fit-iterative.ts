@@ -1,29 +1,25 @@
 import type { IterativeRules } from "../family/family-rules";
-import type { DroppedColumn } from "../linalg/dropping-cholesky";
 import { planPenalties, refinePenalties, startPenalties } from "./choose-penalties";
-import type { PenaltyPlan } from "./choose-penalties";
-import { solveCoordinates } from "./coefficients";
-import type { CoefficientMap } from "./coefficients";
+import type { CoefficientMap } from "./coefficient-map";
 import type { Design } from "./design";
 import { createScratch, normalEquations } from "./normal-equations";
-import type { Scratch } from "./normal-equations";
+import type { NormalEquations, Scratch } from "./normal-equations";
+import { layOutPenalties } from "./penalties";
 import { createSearch } from "./penalty-search";
-import type { PenaltySearch } from "./penalty-search";
-import { predictorOf } from "./predictor";
-import { eliminateUnpenalised } from "./reduced-system";
-import type { ReducedSystem } from "./reduced-system";
-import { checkRowsSuffice } from "./row-budget";
-import { penaltyValue } from "./working-fit";
+import type { Coordinates } from "./predictor";
+import { coefficientsAt, predictorOf } from "./predictor";
+import { shapeConstraints } from "./shape-constraints";
+import { penaltyValue, shiftedCoordinates } from "./working-fit";
 import type { WorkingFit } from "./working-fit";
+import { solveWorking } from "./working-model";
+import type { Before, WorkingProblem, WorkingSolution } from "./working-model";
 
 export type IterativeRows = { response: Float64Array; offset: Float64Array; weights: Float64Array };
 
-type Problem = {
-  design: Design;
+type Problem = WorkingProblem & {
   family: IterativeRules;
   rows: IterativeRows;
   map: CoefficientMap;
-  plan: PenaltyPlan;
   scratch: Scratch;
   maxIterations: number;
   workingResponse: Float64Array;
@@ -31,13 +27,14 @@ type Problem = {
   mean: Float64Array;
 };
 
-/** Weighted mean square by which the linear predictor may still move at convergence. */
+/** Weighted mean square by which the linear predictor may still move at convergence, and theta as a share of itself. */
 const movementTolerance = 1e-14;
+const thetaTolerance = 1e-8;
 
 /**
- * Fits by iterated working models, the penalties by restricted likelihood of the working model, until predictor and
- * penalties rest. From the stiff start first; then the loose start is searched in the working model found, and, where it
- * is drawn to another optimum, followed to its own rest; the better criterion (with the deviance as D) wins.
+ * Fits by iterated working models, the penalties by restricted likelihood of the working model, until predictor, penalties
+ * (and theta, where the family has one) rest. From the stiff start first; then the loose start is searched in the working
+ * model found, and, where it is drawn to another optimum, followed to its own rest; the better criterion wins.
  * Source: Breslow & Clayton (1993), J. Am. Statist. Assoc. 88, 9-25; Wood, Goude & Shaw (2015), J. R. Statist. Soc. C 64.
  *
  * @param map coefficients from coordinates, as `coefficientMap` gives.
@@ -51,101 +48,119 @@ export function fitIterative(
   const problem: Problem = {
     design, family, rows, ...options,
     plan: planPenalties(design),
+    layout: layOutPenalties(design.penalties, design.groups?.count ?? 1),
+    scale: family.scale,
+    constraints: shapeConstraints(design),
     scratch: createScratch(design),
     workingResponse: new Float64Array(count),
     workingWeights: new Float64Array(count),
     mean: new Float64Array(count),
   };
-  const predictor = rows.response.map(family.start);
-  const stiff = iterate(problem, { predictor, logFactor: 6 });
+  const nothing: Before = { dropped: null, search: null, held: null };
+  const stiff = iterate(problem, { predictor: family.start(rows), theta: 1, logFactor: 6, before: nothing });
   if (problem.plan.automatic.length === 0) return stiff;
   const loosePenalties = looseOptimum(problem, stiff);
   if (loosePenalties === null) return stiff;
-  const loose = iterate(problem, { predictor: stiff.linearPredictor, penalties: loosePenalties, known: stiff.reduced.dropped });
+  const { held, system: { dropped } } = stiff.solution;
+  const loose = iterate(problem, {
+    predictor: stiff.linearPredictor, theta: stiff.theta ?? 1, penalties: loosePenalties, before: { dropped, search: null, held },
+  });
   return loose.converged && loose.criterion < stiff.criterion ? loose : stiff;
 }
 
 /** Log penalties of another optimum of the working model at rest, or null where the loose start is drawn to the same. */
 function looseOptimum(problem: Problem, stiff: WorkingFit): Float64Array | null {
-  const { plan, design } = problem;
-  const search = createSearch(stiff.reduced, design.blocks);
-  const known = stiff.search.current.logPenalties;
+  const { plan } = problem;
+  const search = createSearch(stiff.solution.search.problem);
+  const known = stiff.solution.search.current.logPenalties;
   const start = startPenalties(search, plan, -6);
-  for (const { block } of plan.fixedDegrees) start[block] = known[block];
-  refinePenalties(search, stiff.reduced, plan, { start, fellnerSchallSteps: 2, maxSteps: 60, stopNear: known });
+  for (const { penalties } of plan.asked) for (const penalty of penalties) start[penalty] = known[penalty];
+  refinePenalties(search, plan, { start, fellnerSchallSteps: 2, maxSteps: 60, stopNear: known });
   const found = search.current.logPenalties;
-  const isSame = plan.automatic.every((block) => {
-    const bothStraight = found[block] > search.highest[block] - 4 && known[block] > search.highest[block] - 4;
-    return bothStraight || Math.abs(found[block] - known[block]) < 0.25;
+  const isSame = plan.automatic.every((penalty) => {
+    const bothStraight = found[penalty] > search.highest[penalty] - 4 && known[penalty] > search.highest[penalty] - 4;
+    return bothStraight || Math.abs(found[penalty] - known[penalty]) < 0.25;
   });
   return isSame ? null : found.slice();
 }
 
-type Start = { predictor: Float64Array; logFactor?: number; penalties?: Float64Array; known?: DroppedColumn[] };
+type Start = { predictor: Float64Array; theta: number; logFactor?: number; penalties?: Float64Array; before: Before };
 
 function iterate(problem: Problem, start: Start): WorkingFit {
-  const { design, plan } = problem;
-  let predictor: Float64Array = start.predictor.slice();
-  let dropped = start.known ?? null;
-  let search: PenaltySearch | null = null;
+  const { plan, family } = problem;
+  let { predictor, theta, before } = start;
   let penalties = start.penalties ?? null;
-  let coordinates: Float64Array | null = null;
+  let coordinates: Coordinates | null = null;
   let converged: boolean;
   let iterations = 0;
-  let reduced: ReducedSystem;
+  let equations: NormalEquations;
+  let solution: WorkingSolution;
   do {
     iterations++;
-    const equations = workingEquations(problem, predictor);
-    reduced = eliminateUnpenalised(equations, design, dropped);
-    dropped = reduced.dropped;
-    if (iterations === 1) checkRowsSuffice(reduced);
-    search ??= createSearch(reduced, design.blocks);
-    penalties ??= startPenalties(search, plan, start.logFactor ?? 0);
-    const rested = refinePenalties(search, reduced, plan, {
-      start: penalties, fellnerSchallSteps: iterations === 1 ? 2 : 0, maxSteps: 4,
+    equations = workingEquations(problem, predictor, theta);
+    solution = solveWorking(problem, equations, before, (search) => {
+      penalties ??= startPenalties(search, plan, start.logFactor ?? 0);
+      const rested = refinePenalties(search, plan, { start: penalties, fellnerSchallSteps: iterations === 1 ? 2 : 0, maxSteps: 4 });
+      penalties = search.current.logPenalties.slice();
+      return rested;
     });
-    penalties = search.current.logPenalties.slice();
-    const next = solveCoordinates(reduced, search.current);
-    next[0] += equations.shift;
-    const accepted = acceptableStep(problem, { from: coordinates, to: next, predictor, penalty: penaltyValue(search) });
-    converged = rested && iterations > 1 && movement(accepted.predictor, predictor, problem.workingWeights) < movementTolerance;
+    before = { dropped: solution.system.dropped, search: solution.search, held: solution.held };
+    const accepted = acceptableStep(problem, {
+      from: coordinates, to: shiftedCoordinates(solution, equations), predictor, theta, penalty: penaltyValue(solution.search),
+    });
+    const nextTheta = nextThetaOf(problem, accepted.predictor, theta);
+    const rests = movement(accepted.predictor, predictor, problem.workingWeights) < movementTolerance
+      && Math.abs(nextTheta / theta - 1) < thetaTolerance;
+    converged = solution.rested && iterations > 1 && rests;
+    theta = nextTheta;
     ({ predictor, coordinates } = accepted);
   } while (!converged && iterations < problem.maxIterations);
-  const criterion = devianceCriterion(problem, { predictor, reduced, search });
-  return { reduced, search, coordinates, linearPredictor: predictor, criterion, converged, iterations };
+  const criterion = criterionAtRest(problem, { predictor, solution, theta });
+  return {
+    solution, equations, coordinates, linearPredictor: predictor, criterion, converged, iterations,
+    theta: family.estimateTheta === null ? null : theta,
+  };
 }
 
-function workingEquations(problem: Problem, predictor: Float64Array) {
+function nextThetaOf({ family, rows, mean }: Problem, predictor: Float64Array, theta: number): number {
+  if (family.estimateTheta === null) return theta;
+  for (let row = 0; row < mean.length; row++) mean[row] = family.mean(predictor[row], 1);
+  return family.estimateTheta({ response: rows.response, mean, weights: rows.weights, start: theta });
+}
+
+function workingEquations(problem: Problem, predictor: Float64Array, theta: number): NormalEquations {
   const { family, rows, mean, workingResponse, workingWeights } = problem;
   for (let row = 0; row < mean.length; row++) mean[row] = family.mean(predictor[row], 1);
-  family.working({ ...rows, linearPredictor: predictor, mean, workingResponse, workingWeights });
+  family.working({ ...rows, linearPredictor: predictor, mean, theta, workingResponse, workingWeights });
   return normalEquations(problem.design, { response: workingResponse, weights: workingWeights }, problem.scratch);
 }
 
+type Step = { from: Coordinates | null; to: Coordinates; predictor: Float64Array; theta: number; penalty: number };
+
 /** Halves a step that raises the penalised deviance beyond reason: far from the answer a full step can overshoot. */
-function acceptableStep(
-  problem: Problem, step: { from: Float64Array | null; to: Float64Array; predictor: Float64Array; penalty: number },
-): { predictor: Float64Array; coordinates: Float64Array } {
+function acceptableStep(problem: Problem, step: Step): { predictor: Float64Array; coordinates: Coordinates } {
   const { design, map, rows } = problem;
+  const predict = (at: Coordinates) => predictorOf(design, coefficientsAt(design, map, at), rows.offset);
   let coordinates = step.to;
-  let predictor = predictorOf(design, map, coordinates, rows.offset);
-  const { from } = step;
+  let predictor = predict(coordinates);
+  const { from, theta } = step;
   if (from === null) return { predictor, coordinates };
-  const before = devianceOf(problem, step.predictor) + step.penalty;
+  const before = devianceOf(problem, step.predictor, theta) + step.penalty;
   for (let halving = 0; halving < 20; halving++) {
-    const deviance = devianceOf(problem, predictor);
+    const deviance = devianceOf(problem, predictor, theta);
     if (Number.isFinite(deviance) && deviance <= 2 * before + 1e-8) break;
-    coordinates = coordinates.map((value, k) => (value + from[k]) / 2);
-    predictor = predictorOf(design, map, coordinates, rows.offset);
+    coordinates = { shared: middle(coordinates.shared, from.shared), groups: coordinates.groups && from.groups && middle(coordinates.groups, from.groups) };
+    predictor = predict(coordinates);
   }
   return { predictor, coordinates };
 }
 
-function devianceOf(problem: Problem, predictor: Float64Array): number {
-  const { family, rows } = problem;
+const middle = (left: Float64Array, right: Float64Array): Float64Array => left.map((value, k) => (value + right[k]) / 2);
+
+function devianceOf({ family, rows }: Problem, predictor: Float64Array, theta: number): number {
   let sum = 0;
   for (let row = 0; row < predictor.length; row++) {
-    sum += rows.weights[row] * family.unitDeviance(rows.response[row], family.mean(predictor[row], 1));
+    sum += rows.weights[row] * family.unitDeviance(rows.response[row], family.mean(predictor[row], 1), theta);
   }
   return sum;
 }
@@ -161,12 +176,21 @@ function movement(next: Float64Array, before: Float64Array, weights: Float64Arra
   return moved / total;
 }
 
-/** 1/2 [(n - Mp) ln(D + b'Sb) + ln|X'WX + S| - ln|S|+] with the deviance as D: the same yardstick for every working model. */
-function devianceCriterion(
-  problem: Problem, at: { predictor: Float64Array; reduced: ReducedSystem; search: PenaltySearch },
+/**
+ * The same yardstick for every working model: unknown scale, 1/2 [(n - Mp) ln(D + b'Sb) + ln|X'WX + S| - ln|S|+] with the
+ * deviance as D; known scale, 1/2 [-2 log-likelihood + b'Sb + ln|X'WX + S| - ln|S|+].
+ */
+function criterionAtRest(
+  problem: Problem, at: { predictor: Float64Array; solution: WorkingSolution; theta: number },
 ): number {
-  const { reduced, search } = at;
-  const deviance = Math.max(devianceOf(problem, at.predictor) + penaltyValue(search), Number.MIN_VALUE * 1e30);
+  const { family, rows } = problem;
+  const { solution: { search, system }, predictor, theta } = at;
   const { penalisedResidual, criterion } = search.current;
-  return criterion + 0.5 * (reduced.rowCount - reduced.unpenalisedKept) * (Math.log(deviance) - Math.log(penalisedResidual));
+  const penalty = penaltyValue(search);
+  if (family.scale === "known" && family.logLikelihood !== null) {
+    const likelihood = family.logLikelihood({ response: rows.response, linearPredictor: predictor, weights: rows.weights, theta });
+    return criterion + 0.5 * (penalty - 2 * likelihood - penalisedResidual);
+  }
+  const deviance = Math.max(devianceOf(problem, predictor, theta) + penalty, Number.MIN_VALUE * 1e30);
+  return criterion + 0.5 * (system.rowCount - system.unpenalisedKept) * (Math.log(deviance) - Math.log(penalisedResidual));
 }

@@ -1,4 +1,4 @@
-import { basisRows, coefficientNames } from "../basis/term-basis";
+import { basisRows, coefficientNames, columnsOf } from "../basis/term-basis";
 import { numberColumn } from "../basis/columns";
 import { EngineError } from "../errors";
 import { familyRules } from "../family/family";
@@ -6,16 +6,21 @@ import type { FamilyRules } from "../family/family-rules";
 import { addRowsTimes } from "../linalg/sparse-rows";
 import type { FitOptions, FittedModel, FittedTerm, ModelData, ModelSpec } from "../types";
 import { checkSpec } from "./check-spec";
-import { applyMap, coefficientMap, coordinateCovariance, mapCovariance } from "./coefficients";
-import type { CoefficientMap } from "./coefficients";
+import { coefficientMap, mapCovariance } from "./coefficient-map";
+import type { CoefficientMap } from "./coefficient-map";
+import { coordinateCovariance } from "./coordinates";
 import type { Design } from "./design";
 import { buildDesign } from "./design";
 import { fitExact } from "./fit-exact";
 import { fitIterative } from "./fit-iterative";
 import type { FittedRows } from "./fitted-rows";
 import { fittedRows } from "./fitted-rows";
-import { goodness } from "./goodness";
 import { fitWarnings } from "./fit-warnings";
+import { goodness } from "./goodness";
+import { groupCovariance } from "./group-covariance";
+import { modelInformation } from "./model-information";
+import { derivatives } from "./penalty-search";
+import { coefficientsAt } from "./predictor";
 import type { WorkingFit } from "./working-fit";
 
 const defaultMaxIterations = 200;
@@ -23,14 +28,15 @@ const defaultMaxIterations = 200;
 /**
  * Fits an additive model y_i ~ family(mu_i), g(mu_i) = intercept + sum_j f_j(x_ij) + offset_i, smoothness chosen by
  * restricted likelihood, as asked by degrees of freedom, or given. Curves are centred over the rows; bands come from
- * the Bayesian posterior covariance (X'WX + S)^-1 x dispersion.
+ * the Bayesian posterior covariance (X'WX + S)^-1 x dispersion (of the curve without its shape, where it has one).
  * Sources: Hastie & Tibshirani (1990); Eilers & Marx (1996); Wood (2011); Wahba (1983); Marra & Wood (2012).
  *
  * @param spec what to fit; checked.
  * @param data columns of equal length, units as the caller has them; not changed. Rows of weight zero are left out.
  * @returns plain data; `fitted` has one value per row of `data`. `converged` false comes with a warning that says why.
  * @throws EngineError for every bad input: missing or unequal columns, values not finite, negative counts, constant columns ...
- * Cost: O(n x pairs of terms) + O(coefficients^3) per working model; never n x coefficients of memory.
+ * Cost: O(n x pairs of terms) + O(coefficients^3) per working model, linear in the number of groups; never n x coefficients
+ * of memory.
  * @example
  * const model = fitModel(
  *   { response: "units", family: "quasi-poisson", terms: [{ kind: "smooth", column: "price", log: true, size: 8 }] },
@@ -68,23 +74,28 @@ type Parts = {
 
 function assembleModel(parts: Parts): FittedModel {
   const { spec, family, rows, design, map, fit } = parts;
-  const { current } = fit.search;
-  const edf = fit.reduced.unpenalisedKept + current.edf.reduce((sum, value) => sum + value, 0);
+  const { system, search, edf: edfs } = fit.solution;
+  const state = derivatives(search, "gradient");
+  const edf = system.unpenalisedKept + edfs.reduce((sum, value) => sum + value, 0);
   const measures = goodness(family, rows, fit, edf);
-  const coefficients = applyMap(map, fit.coordinates);
-  const covariance = mapCovariance(map, coordinateCovariance(fit.reduced, current), design.size, measures.dispersion);
+  const { dispersion } = measures;
+  const coefficients = coefficientsAt(design, map, fit.coordinates);
   const terms = fittedTerms(design, fit);
-  const warnings = [...design.warnings, ...fitWarnings({ design, fit, rows, family: spec.family, isPerfect: measures.isPerfect })];
+  const fitted = fittedMeans(parts, coefficients, terms, dispersion);
   return {
     format: 1,
     spec: structuredClone(spec),
     rowCount: rows.count,
     coefficients,
-    coefficientNames: ["intercept", ...terms.flatMap((term) => coefficientNames(term.basis, term.id))],
-    covariance,
+    coefficientNames: namesOf(design),
+    covariance: mapCovariance(map, coordinateCovariance(system, state), design.size, dispersion),
+    groupCovariance: groupCovariance(design, map, state, dispersion),
     terms,
-    fitted: fittedMeans(parts, coefficients, terms, measures.dispersion),
-    dispersion: measures.dispersion,
+    information: modelInformation(design, fit),
+    fitted,
+    dispersion,
+    theta: fit.theta,
+    logLikelihood: measures.logLikelihood,
     edf,
     deviance: measures.deviance,
     nullDeviance: measures.nullDeviance,
@@ -92,26 +103,33 @@ function assembleModel(parts: Parts): FittedModel {
     fractionalResponse: rows.response.some((value) => !Number.isInteger(value)),
     converged: fit.converged,
     iterations: fit.iterations,
-    warnings,
+    warnings: [...design.warnings, ...fitWarnings({ design, fit, rows, family: spec.family, fitted, isPerfect: measures.isPerfect })],
   };
 }
 
+/** In the order of the coefficients: shared terms, then terms on eliminated groups. */
+function namesOf(design: Design): string[] {
+  const ordered = [...design.terms].sort((left, right) => left.design.rawFirst - right.design.rawFirst);
+  return ["intercept", ...ordered.flatMap(({ basis, design: part }) => coefficientNames(basis, part.id))];
+}
+
 function fittedTerms(design: Design, fit: WorkingFit): FittedTerm[] {
-  const { edf, logPenalties } = fit.search.current;
+  const { system: { dropped }, edf, search: { current: { multipliers } } } = fit.solution;
   return design.terms.map(({ spec, design: part, basis, seen, observedRange }) => {
-    const { coordinates, id, rawFirst, unpenalisedFirst } = part;
+    const { coordinates, id, rawFirst, unpenalisedFirst, penalisedFirst, groupFirst } = part;
     const last = unpenalisedFirst + coordinates.unpenalised;
-    const dropped = fit.reduced.dropped.filter(({ column }) => column >= unpenalisedFirst && column < last).length;
-    const blocks = design.blocks.flatMap((block, position) => (block.id === id ? [position] : []));
+    const left = dropped.filter(({ column }) => column >= unpenalisedFirst && column < last).length;
+    const own = design.penalties.flatMap((penalty, position) => (penalty.id === id ? [position] : []));
     return {
       id,
       kind: spec.kind,
-      columns: [spec.column],
+      columns: columnsOf(spec),
       first: rawFirst,
       count: coordinates.rawWidth,
-      edf: blocks.reduce((sum, block) => sum + edf[block], coordinates.unpenalised - dropped),
-      penalties: blocks.map((block) => Math.exp(logPenalties[block])),
+      edf: own.reduce((sum, penalty) => sum + edf[penalty], groupFirst === null ? coordinates.unpenalised - left : 0),
+      penalties: own.map((penalty) => multipliers[penalty]),
       basis, observedRange, seen,
+      layout: { unpenalisedFirst, penalisedFirst, groupFirst },
     };
   });
 }

@@ -1,17 +1,16 @@
 import { coefficientNames } from "../basis/term-basis";
 import { quoted } from "../basis/columns";
 import type { Family, ModelWarning } from "../types";
-import type { Design } from "./design";
+import type { Design, LearntTerm } from "./design";
 import type { FittedRows } from "./fitted-rows";
-import { isAtLimit } from "./penalty-search";
 import type { WorkingFit } from "./working-fit";
 
-type Situation = { design: Design; fit: WorkingFit; rows: FittedRows; family: Family; isPerfect: boolean };
+type Situation = { design: Design; fit: WorkingFit; rows: FittedRows; family: Family; fitted: Float64Array; isPerfect: boolean };
 
 /** What a person should know about a fit before trusting it. */
 export function fitWarnings(situation: Situation): ModelWarning[] {
   const { fit, isPerfect } = situation;
-  const warnings = [...indistinguishable(situation), ...straightLines(situation), ...emptyLevels(situation)];
+  const warnings = [...indistinguishable(situation), ...straightLines(situation), ...emptyLevels(situation), ...separation(situation)];
   if (isPerfect) {
     warnings.push({ code: "perfect-fit", message: "The model reproduces the response exactly; its bands say nothing about new rows." });
   }
@@ -26,8 +25,10 @@ export function fitWarnings(situation: Situation): ModelWarning[] {
 
 /** Names each dropped column and the ones it cannot be told apart from. */
 function indistinguishable({ design, fit }: Situation): ModelWarning[] {
+  const { dropped } = fit.solution.system;
+  if (dropped.length === 0) return [];
   const names = unpenalisedNames(design);
-  return fit.reduced.dropped.map(({ column, dependsOn }) => {
+  return dropped.map(({ column, dependsOn }) => {
     const own = names[column];
     // A straight line beside its own column differs by a constant, which is no news.
     const others = dependsOn.filter((earlier) => earlier > 0).map((earlier) => names[earlier].name);
@@ -42,26 +43,42 @@ function indistinguishable({ design, fit }: Situation): ModelWarning[] {
 
 function unpenalisedNames(design: Design): { name: string; term: string }[] {
   const names = [{ name: "intercept", term: "intercept" }];
-  for (const { design: part, basis } of design.terms) {
-    const { unpenalised, transform } = part.coordinates;
-    const raw = coefficientNames(basis, part.id);
-    const own = transform.form === "without" ? raw.filter((_name, k) => k !== transform.leftOut) : [`${part.id}${transform.form === "dense" ? " (straight line)" : ""}`];
-    for (let k = 0; k < unpenalised; k++) names.push({ name: own[k], term: part.id });
+  for (const term of design.terms) {
+    if (term.design.groupFirst !== null) continue;
+    const own = ownNames(term);
+    for (let k = 0; k < term.design.coordinates.unpenalised; k++) names.push({ name: own[k], term: term.design.id });
   }
   return names;
 }
 
+function ownNames({ basis, design: part }: LearntTerm): string[] {
+  const { transform } = part.coordinates;
+  if (transform.form === "without") return coefficientNames(basis, part.id).filter((_name, k) => k !== transform.leftOut);
+  switch (basis.kind) {
+    case "smooth": return [`${part.id} (straight line)`];
+    case "levelled-smooth": return basis.levels.map((level) => `${part.id} (straight line, ${level})`);
+    case "scaled-smooth": return [`${part.id} (level)`, `${part.id} (straight line)`];
+    case "tensor-product": return [`${part.id} (product of straight lines)`];
+    case "natural-spline": return Array.from({ length: part.coordinates.unpenalised }, (_, k) => `${part.id} (${k + 1})`);
+    default: return [part.id];
+  }
+}
+
 function straightLines({ design, fit }: Situation): ModelWarning[] {
-  return design.blocks.flatMap(({ id, smoothness, unpenalised }, block): ModelWarning[] => {
-    if (smoothness !== "auto" || !isAtLimit(fit.search, block)) return [];
-    const shape = unpenalised > 0 ? "a straight line" : "no effect";
+  return design.penalties.flatMap(({ id, smoothness, grouped }, penalty): ModelWarning[] => {
+    if (smoothness !== "auto" || !(fit.solution.edf[penalty] < 1e-3)) return [];
+    const term = design.terms.find(({ design: part }) => part.id === id);
+    if (term === undefined || !isCurve(term) || grouped) return [];
+    const shape = term.design.coordinates.unpenalised > 0 ? "a straight line" : "no effect";
     return [{ code: "straight-line", term: id, message: `Term "${id}": the data show ${shape}; its penalty went to its limit.` }];
   });
 }
 
+const isCurve = ({ basis }: LearntTerm): boolean => basis.kind === "smooth" || basis.kind === "cyclic-smooth" || basis.kind === "scaled-smooth";
+
 /** A level that never sold has no finite logarithm: its coefficient runs off, harmlessly, and must not be read. */
 function emptyLevels({ design, rows, family }: Situation): ModelWarning[] {
-  if (family !== "quasi-poisson") return [];
+  if (family !== "quasi-poisson" && family !== "negative-binomial") return [];
   return design.terms.flatMap(({ basis, design: part }): ModelWarning[] => {
     if (basis.kind !== "factor" || part.rows.storage !== "index") return [];
     const totals = new Float64Array(basis.levels.length);
@@ -73,4 +90,19 @@ function emptyLevels({ design, rows, family }: Situation): ModelWarning[] {
       message: `Level "${level}" of factor "${part.id}" has only zeros: its effect is "none sold", and its coefficient has no meaningful size.`,
     }));
   });
+}
+
+/** A probability this near to 0 or 1 is what a coefficient on its way to infinity gives. */
+const certain = 1e-8;
+
+function separation({ family, fitted }: Situation): ModelWarning[] {
+  if (family !== "binomial") return [];
+  let sure = 0;
+  for (const share of fitted) if (share < certain || share > 1 - certain) sure++;
+  if (sure === 0) return [];
+  const rows = sure === 1 ? "1 row has a fitted share" : `${sure} rows have fitted shares`;
+  return [{
+    code: "separation",
+    message: `The terms separate the response: ${rows} of 0 or 1, and some coefficients have no finite value; their size and bands must not be read.`,
+  }];
 }

@@ -1,68 +1,81 @@
 import { EngineError } from "../errors";
 import type { PenaltySearch } from "./penalty-search";
-import { evaluateAt } from "./penalty-search";
-import type { ReducedSystem } from "./reduced-system";
+import { derivatives, evaluateAt } from "./penalty-search";
 
 /** Log units beyond the default in which a penalty for given degrees of freedom is looked for. */
 const reach = 30;
 const tolerance = 1e-10;
 
-/** Penalised degrees of freedom that block's term is asked for: its own less those of its unpenalised coordinates. */
-function wantedEdf(search: PenaltySearch, reduced: ReducedSystem, block: number, firstUnpenalised: number): number {
-  const { smoothness, unpenalised } = search.blocks[block];
-  if (typeof smoothness === "string" || !("df" in smoothness)) return 0;
-  const dropped = reduced.dropped.filter(({ column }) => column >= firstUnpenalised && column < firstUnpenalised + unpenalised).length;
-  return smoothness.df - (unpenalised - dropped);
+/** Penalties of one term that is asked for degrees of freedom, and how many of them its unpenalised coordinates take. */
+export type AskedTerm = { id: string; penalties: number[]; asked: number; firstUnpenalised: number; unpenalised: number };
+
+/** Effective degrees of freedom wanted under the term's penalties: what is asked for less its unpenalised coordinates. */
+function wantedEdf(search: PenaltySearch, term: AskedTerm): number {
+  const { firstUnpenalised, unpenalised } = term;
+  const { dropped } = search.problem.system;
+  const left = dropped.filter(({ column }) => column >= firstUnpenalised && column < firstUnpenalised + unpenalised).length;
+  return term.asked - (unpenalised - left);
 }
 
+const edfOf = (search: PenaltySearch, { penalties }: AskedTerm): number => {
+  const { edf, criterion } = derivatives(search, "hessian");
+  return Number.isFinite(criterion) ? penalties.reduce((sum, j) => sum + edf[j], 0) : Infinity;
+};
+
 /**
- * Moves the penalty of each block of given degrees of freedom to where its trace in the joint fit equals the number asked
- * for: Newton within a bracket, block by block until all hold. The trace falls as the penalty rises (Hastie & Tibshirani
- * 1990, section 5.4.5).
+ * Moves the penalty of each term of given degrees of freedom to where its trace in the joint fit equals the number asked
+ * for: Newton within a bracket, term by term until all hold; a term's several penalties move together. The trace falls as
+ * the penalty rises (Hastie & Tibshirani 1990, section 5.4.5).
  *
- * @param fixed blocks and the first unpenalised coordinate of each one's term.
  * @throws EngineError smoothness-out-of-range where the data's values allow fewer than asked.
- * @example solveDegrees(search, reduced, [{ block: 0, firstUnpenalised: 1 }]);
+ * @example solveDegrees(search, plan.asked);
  */
-export function solveDegrees(
-  search: PenaltySearch, reduced: ReducedSystem, fixed: readonly { block: number; firstUnpenalised: number }[],
-): void {
+export function solveDegrees(search: PenaltySearch, asked: readonly AskedTerm[]): void {
   for (let sweep = 0; sweep < 50; sweep++) {
     let worst = 0;
-    for (const { block, firstUnpenalised } of fixed) {
-      const wanted = wantedEdf(search, reduced, block, firstUnpenalised);
-      worst = Math.max(worst, Math.abs(search.current.edf[block] - wanted));
-      if (Math.abs(search.current.edf[block] - wanted) > tolerance) solveOne(search, reduced, block, wanted);
+    for (const term of asked) {
+      const wanted = wantedEdf(search, term);
+      const excess = Math.abs(edfOf(search, term) - wanted);
+      worst = Math.max(worst, excess);
+      if (excess > tolerance) solveOne(search, term, wanted);
     }
     if (worst <= tolerance) return;
   }
 }
 
-function solveOne(search: PenaltySearch, reduced: ReducedSystem, block: number, wanted: number): void {
-  const count = search.blocks.length;
-  let low = search.defaults[block] - reach;
-  let high = search.defaults[block] + reach;
-  const logPenalties = search.current.logPenalties.slice();
+function solveOne(search: PenaltySearch, term: AskedTerm, wanted: number): void {
+  const start = search.current.logPenalties.slice();
+  const { penalties } = term;
+  const middle = penalties.reduce((sum, j) => sum + search.defaults[j] - start[j], 0) / penalties.length;
+  let low = middle - reach;
+  let high = middle + reach;
+  let shift = 0;
   for (let step = 0; step < 200 && high - low > 1e-13; step++) {
-    const excess = search.current.edf[block] - wanted;
-    if (!Number.isFinite(search.current.criterion) || excess > 0) low = Math.max(low, logPenalties[block]);
-    else high = Math.min(high, logPenalties[block]);
+    const excess = edfOf(search, term) - wanted;
+    if (excess > 0) low = Math.max(low, shift);
+    else high = Math.min(high, shift);
     if (Math.abs(excess) <= tolerance / 10) return;
-    const slope = -search.current.determinantHessian[block * count + block];
-    const newton = logPenalties[block] - excess / slope;
-    const isInside = newton > low && newton < high && Number.isFinite(search.current.criterion);
-    logPenalties[block] = isInside ? newton : (low + high) / 2;
-    evaluateAt(search, reduced, logPenalties);
+    const newton = shift - excess / slopeOf(search, penalties);
+    shift = newton > low && newton < high ? newton : (low + high) / 2;
+    const logPenalties = start.slice();
+    for (const j of penalties) logPenalties[j] += shift;
+    evaluateAt(search, logPenalties);
   }
-  if (Math.abs(search.current.edf[block] - wanted) > 1e-6) refuse(search, block, wanted);
+  if (Math.abs(edfOf(search, term) - wanted) > 1e-6) refuse(search, term, wanted);
 }
 
-function refuse(search: PenaltySearch, block: number, wanted: number): never {
-  const { id, smoothness } = search.blocks[block];
-  const asked = typeof smoothness === "object" && "df" in smoothness ? smoothness.df : wanted;
-  const reached = asked - wanted + search.current.edf[block];
+/** Change of the term's effective degrees of freedom as all its log penalties rise together. */
+function slopeOf(search: PenaltySearch, penalties: readonly number[]): number {
+  const count = search.penalties.length;
+  let slope = 0;
+  for (const j of penalties) for (const k of penalties) slope -= search.current.determinantHessian[j * count + k];
+  return slope;
+}
+
+function refuse(search: PenaltySearch, term: AskedTerm, wanted: number): never {
+  const reached = term.asked - wanted + edfOf(search, term);
   throw new EngineError(
     "smoothness-out-of-range",
-    `Term "${id}": df is ${asked}, which these data cannot give; the nearest the term comes to is ${reached.toFixed(2)}.`,
+    `Term "${term.id}": df is ${term.asked}, which these data cannot give; the nearest the term comes to is ${reached.toFixed(2)}.`,
   );
 }

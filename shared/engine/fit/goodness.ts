@@ -3,39 +3,51 @@ import type { FittedRows } from "./fitted-rows";
 import { perfectShare } from "./restricted-likelihood";
 import type { WorkingFit } from "./working-fit";
 
-export type Goodness = { deviance: number; nullDeviance: number; dispersion: number; isPerfect: boolean };
+export type Goodness = { deviance: number; nullDeviance: number; dispersion: number; isPerfect: boolean; logLikelihood: number | null };
 
 /**
- * Deviance, null deviance (intercept and offset only) and dispersion: Pearson's statistic over n - edf.
+ * Deviance, null deviance (intercept and offset only), log-likelihood, and dispersion: Pearson's statistic over n - edf, or
+ * 1 where the scale is known.
  *
  * @param edf total effective degrees of freedom.
  * @example goodness(family, rows, fit, 5.2).dispersion;
  */
 export function goodness(family: FamilyRules, rows: FittedRows, fit: WorkingFit, edf: number): Goodness {
-  const { weights, offset } = rows;
-  let deviance: number;
-  let nullDeviance: number;
-  let pearson: number;
-  if (family.fitting === "exact") {
-    const response = family.transform(rows.response);
-    deviance = weightedSquares(response, fit.linearPredictor, weights);
-    nullDeviance = weightedSquares(response, meanAndOffset(response, offset, weights), weights);
-    pearson = deviance;
-  } else {
-    const mean = fit.linearPredictor.map((value) => family.mean(value, 1));
-    const nullMean = family.nullMean(rows.response, offset, weights);
-    const total = (means: Float64Array) =>
-      rows.response.reduce((sum, value, row) => sum + weights[row] * family.unitDeviance(value, means[row]), 0);
-    deviance = total(mean);
-    nullDeviance = total(nullMean);
-    pearson = family.pearson(rows.response, mean, weights);
-  }
-  const isPerfect = !(deviance > perfectShare * fit.reduced.yardstick);
+  const { deviance, nullDeviance, pearson } = family.fitting === "exact" ? exactSums(family, rows, fit) : iterativeSums(family, rows, fit);
+  const { solution: { system, search } } = fit;
   const freedom = rows.count - edf;
   // With as many effective parameters as rows, what the restricted likelihood takes for the scale is all there is.
-  const likelihoodScale = fit.search.current.penalisedResidual / (rows.count - fit.reduced.unpenalisedKept);
-  const dispersion = freedom > 1e-6 * rows.count ? pearson / freedom : likelihoodScale;
-  return { deviance, nullDeviance, dispersion, isPerfect };
+  const likelihoodScale = search.current.penalisedResidual / (rows.count - system.unpenalisedKept);
+  const estimated = freedom > 1e-6 * rows.count ? pearson / freedom : likelihoodScale;
+  return {
+    deviance, nullDeviance,
+    dispersion: family.scale === "known" ? 1 : estimated,
+    isPerfect: family.scale === "unknown" && !(deviance > perfectShare * system.yardstick),
+    logLikelihood: family.logLikelihood?.({
+      response: rows.response, linearPredictor: fit.linearPredictor, weights: rows.weights, theta: fit.theta ?? 1,
+    }) ?? null,
+  };
+}
+
+type Sums = { deviance: number; nullDeviance: number; pearson: number };
+
+function exactSums(family: Extract<FamilyRules, { fitting: "exact" }>, { response, offset, weights }: FittedRows, fit: WorkingFit): Sums {
+  const values = family.transform(response);
+  const deviance = weightedSquares(values, fit.linearPredictor, weights);
+  return { deviance, pearson: deviance, nullDeviance: weightedSquares(values, meanAndOffset(values, offset, weights), weights) };
+}
+
+function iterativeSums(family: Extract<FamilyRules, { fitting: "iterative" }>, rows: FittedRows, fit: WorkingFit): Sums {
+  const { response, offset, weights } = rows;
+  const theta = fit.theta ?? 1;
+  const mean = fit.linearPredictor.map((value) => family.mean(value, 1));
+  const total = (means: Float64Array) =>
+    response.reduce((sum, value, row) => sum + weights[row] * family.unitDeviance(value, means[row], theta), 0);
+  return {
+    deviance: total(mean),
+    nullDeviance: total(family.nullMean({ response, offset, weights, theta })),
+    pearson: family.pearson({ response, mean, weights, theta }),
+  };
 }
 
 function weightedSquares(values: Float64Array, around: Float64Array, weights: Float64Array): number {

@@ -1,60 +1,86 @@
-import { crossProduct, isSwapped } from "../linalg/cross-products";
-import { addTransposeTimes } from "../linalg/sparse-rows";
-import type { TermCoordinates } from "../penalty/term-transform";
-import type { Design, DesignTerm } from "./design";
+import { crossProduct, groupSquare, isSwapped } from "../linalg/cross-products";
+import { addTransposeTimes, paddedWidth } from "../linalg/sparse-rows";
+import { coordinateWidth, transformColumns, transformRows } from "./change-coordinates";
+import type { Design, DesignGroups, DesignTerm } from "./design";
 
 /** X'WX and X'Wz in fitting coordinates. z is taken less its weighted mean `shift`, which keeps digits. */
 export type NormalEquations = {
-  /** Row-major size x size, lower triangle. */
+  /** Row-major size x size over the shared coordinates, lower triangle. */
   matrix: Float64Array;
   vector: Float64Array;
+  groups: GroupEquations | null;
   /** z'Wz about the shift. */
   total: number;
   shift: number;
 };
 
-/** Arrays reused from one working model to the next. */
+/** The same for groups: per group X_g'WX_g (both triangles), X_g'WX_shared and X_g'Wz, one after the other. */
+export type GroupEquations = { count: number; size: number; own: Float64Array; cross: Float64Array; vector: Float64Array };
+
+/** Arrays reused from one working model to the next; what they hold is overwritten by each call. */
 export type Scratch = { raw: Float64Array; half: Float64Array; weighted: Float64Array; rawVector: Float64Array };
 
 /** @example const scratch = createScratch(design); */
 export function createScratch(design: Design): Scratch {
-  const square = design.widest * design.widest;
+  const widths = [...design.parts, ...(design.groups?.parts ?? [])].map(({ rows }) => paddedWidth(rows));
+  const widest = Math.max(...widths);
+  const square = Math.max(design.widest * widest, squareOfGroups(design.groups));
   return {
     raw: new Float64Array(square),
     half: new Float64Array(square),
     weighted: new Float64Array(design.rowCount),
-    rawVector: new Float64Array(design.widest),
+    rawVector: new Float64Array(widest),
   };
 }
+
+function squareOfGroups(groups: DesignGroups | null): number {
+  if (groups === null) return 0;
+  const widest = Math.max(...groups.parts.map(ownWidth));
+  return Math.max(groups.count, 2) * widest * widest;
+}
+
+/** Raw columns of one group of a grouped term. */
+const ownWidth = ({ coordinates }: DesignTerm): number => (coordinates.transform.form === "blocks" ? coordinates.transform.rows : 1);
+
+type Rows = { response: Float64Array; weights: Float64Array };
 
 /**
  * Builds X'WX and X'Wz by a kernel per pair of terms on their raw columns, and turns each block into fitting
  * coordinates afterwards. O(n x pairs), plus small products that do not depend on n.
  *
- * @param response working response z, length n. Not changed.
- * @param weights working weights, length n, above zero. Not changed.
+ * @param rows.response working response z, length n. Not changed.
+ * @param rows.weights working weights, length n, above zero. Not changed.
  * @example const equations = normalEquations(design, { response, weights }, createScratch(design));
  */
-export function normalEquations(
-  design: Design, rows: { response: Float64Array; weights: Float64Array }, scratch: Scratch,
-): NormalEquations {
+export function normalEquations(design: Design, rows: Rows, scratch: Scratch): NormalEquations {
   const { parts, size } = design;
   const { response, weights } = rows;
   const matrix = new Float64Array(size * size);
+  const target = { weights, scratch, matrix, size };
   for (let a = 0; a < parts.length; a++) {
-    for (let b = 0; b <= a; b++) addPair(parts[a], parts[b], { weights, scratch, matrix, size });
+    for (let b = 0; b <= a; b++) addPair(parts[a], parts[b], target);
   }
-  const { weighted } = scratch;
   const shift = weightedMean(response, weights);
+  const total = centredResponse({ response, weights, shift }, scratch.weighted);
+  const vector = new Float64Array(size);
+  for (const part of parts) {
+    const own = transformedVector(part, scratch);
+    for (let k = 0; k < part.positions.length; k++) vector[part.positions[k]] = own[k];
+  }
+  const groups = design.groups === null ? null : groupEquations(design, design.groups, { weights, scratch });
+  return { matrix, vector, groups, total, shift };
+}
+
+/** Fills `weighted` with W(z - shift) and returns its product with z - shift. */
+function centredResponse(rows: { response: Float64Array; weights: Float64Array; shift: number }, weighted: Float64Array): number {
+  const { response, weights, shift } = rows;
   let total = 0;
   for (let row = 0; row < response.length; row++) {
     const value = response[row] - shift;
     weighted[row] = weights[row] * value;
     total += weighted[row] * value;
   }
-  const vector = new Float64Array(size);
-  for (const part of parts) addVector(part, scratch, vector);
-  return { matrix, vector, total, shift };
+  return total;
 }
 
 function weightedMean(values: Float64Array, weights: Float64Array): number {
@@ -72,78 +98,99 @@ type PairTarget = { weights: Float64Array; scratch: Scratch; matrix: Float64Arra
 function addPair(one: DesignTerm, other: DesignTerm, target: PairTarget): void {
   const [left, right] = isSwapped(one.rows, other.rows) ? [other, one] : [one, other];
   const { raw, half } = target.scratch;
+  const { matrix, size } = target;
   crossProduct(left.rows, right.rows, target.weights, raw);
-  const columns = right.coordinates.unpenalised + right.coordinates.penalised;
-  const rows = left.coordinates.unpenalised + left.coordinates.penalised;
+  const columns = coordinateWidth(right.coordinates);
   transformColumns(raw, left.coordinates.rawWidth, right.coordinates, half);
   transformRows(half, columns, left.coordinates, raw);
-  for (let i = 0; i < rows; i++) {
-    const row = coordinateAt(left, i);
+  for (let i = 0; i < left.positions.length; i++) {
+    const row = left.positions[i];
     for (let j = 0; j < columns; j++) {
-      const column = coordinateAt(right, j);
-      target.matrix[row >= column ? row * target.size + column : column * target.size + row] = raw[i * columns + j];
+      const column = right.positions[j];
+      matrix[row >= column ? row * size + column : column * size + row] = raw[i * columns + j];
     }
   }
 }
 
-function addVector(part: DesignTerm, scratch: Scratch, vector: Float64Array): void {
-  const { rawVector, half, weighted } = scratch;
+/** T'X'W(z - shift) of one term, left in `scratch.half`. */
+function transformedVector(part: DesignTerm, { rawVector, half, weighted }: Scratch): Float64Array {
   rawVector.fill(0);
   addTransposeTimes(part.rows, weighted, rawVector, 0);
   transformRows(rawVector, 1, part.coordinates, half);
-  const count = part.coordinates.unpenalised + part.coordinates.penalised;
-  for (let k = 0; k < count; k++) vector[coordinateAt(part, k)] = half[k];
+  return half;
 }
 
-/** Where a term's own coordinate stands among all. */
-export const coordinateAt = (part: DesignTerm, own: number): number =>
-  own < part.coordinates.unpenalised ? part.unpenalisedFirst + own : part.penalisedFirst + own - part.coordinates.unpenalised;
-
-/** out = block x T: rows x raw columns become rows x coordinates. */
-function transformColumns(block: Float64Array, rows: number, to: TermCoordinates, out: Float64Array): void {
-  const { transform, rawWidth } = to;
-  const width = to.unpenalised + to.penalised;
-  if (transform.form === "scaled") {
-    for (let at = 0; at < rows; at++) out[at] = block[at] * transform.factor;
-  } else if (transform.form === "without") {
-    for (let row = 0; row < rows; row++) {
-      let at = row * width;
-      for (let k = 0; k < rawWidth; k++) if (k !== transform.leftOut) out[at++] = block[row * rawWidth + k];
+function groupEquations(
+  design: Design, groups: DesignGroups, rows: { weights: Float64Array; scratch: Scratch },
+): GroupEquations {
+  const { count, size, parts } = groups;
+  const out: GroupEquations = {
+    count, size,
+    own: new Float64Array(count * size * size),
+    cross: new Float64Array(count * size * design.size),
+    vector: new Float64Array(count * size),
+  };
+  for (let a = 0; a < parts.length; a++) {
+    for (let b = 0; b <= a; b++) addOwnPair(parts[a], parts[b], { ...rows, out });
+    for (const shared of design.parts) addCrossPair(parts[a], shared, { ...rows, out, sharedSize: design.size });
+    const vector = transformedVector(parts[a], rows.scratch);
+    const { positions } = parts[a];
+    for (let group = 0; group < count; group++) {
+      for (let k = 0; k < positions.length; k++) out.vector[group * size + positions[k]] = vector[group * positions.length + k];
     }
-  } else {
-    const { matrix } = transform;
-    out.fill(0, 0, rows * width);
-    for (let row = 0; row < rows; row++) {
-      const start = row * width;
-      for (let k = 0; k < rawWidth; k++) {
-        const value = block[row * rawWidth + k];
-        if (value === 0) continue;
-        for (let column = 0; column < width; column++) out[start + column] += value * matrix[k * width + column];
+  }
+  return out;
+}
+
+type GroupTarget = { weights: Float64Array; scratch: Scratch; out: GroupEquations };
+
+/** Diagonal blocks of two terms on the same groups. */
+function addOwnPair(left: DesignTerm, right: DesignTerm, target: GroupTarget): void {
+  const { raw, half } = target.scratch;
+  const { count, size, own } = target.out;
+  groupSquare({ rows: left.rows, width: ownWidth(left) }, { rows: right.rows, width: ownWidth(right) }, { count, weights: target.weights }, raw);
+  const leftWidth = ownWidth(left);
+  const columns = right.positions.length;
+  const oneGroup = (part: DesignTerm) => oneGroupOf(part);
+  const square = leftWidth * ownWidth(right);
+  for (let group = 0; group < count; group++) {
+    const block = raw.subarray(group * square, (group + 1) * square);
+    transformColumns(block, leftWidth, oneGroup(right), half);
+    const result = half.subarray(leftWidth * columns);
+    transformRows(half, columns, oneGroup(left), result);
+    for (let i = 0; i < left.positions.length; i++) {
+      for (let j = 0; j < columns; j++) {
+        const value = result[i * columns + j];
+        own[(group * size + left.positions[i]) * size + right.positions[j]] = value;
+        own[(group * size + right.positions[j]) * size + left.positions[i]] = value;
       }
     }
   }
 }
 
-/** out = T' x block: raw rows x columns become coordinates x columns. */
-function transformRows(block: Float64Array, columns: number, to: TermCoordinates, out: Float64Array): void {
-  const { transform, rawWidth } = to;
-  const width = to.unpenalised + to.penalised;
-  if (transform.form === "scaled") {
-    for (let at = 0; at < columns; at++) out[at] = block[at] * transform.factor;
-  } else if (transform.form === "without") {
-    let row = 0;
-    for (let k = 0; k < rawWidth; k++) {
-      if (k === transform.leftOut) continue;
-      for (let column = 0; column < columns; column++) out[row * columns + column] = block[k * columns + column];
-      row++;
-    }
-  } else {
-    const { matrix } = transform;
-    out.fill(0, 0, width * columns);
-    for (let k = 0; k < rawWidth; k++) {
-      for (let row = 0; row < width; row++) {
-        const value = matrix[k * width + row];
-        for (let column = 0; column < columns; column++) out[row * columns + column] += value * block[k * columns + column];
+/** A grouped term's coordinates as if it had one group only. */
+function oneGroupOf(part: DesignTerm): DesignTerm["coordinates"] {
+  const { transform } = part.coordinates;
+  if (transform.form !== "blocks") return part.coordinates;
+  return { ...part.coordinates, transform: { ...transform, count: 1 }, rawWidth: transform.rows, penalised: transform.columns };
+}
+
+function addCrossPair(grouped: DesignTerm, shared: DesignTerm, target: GroupTarget & { sharedSize: number }): void {
+  const swapped = isSwapped(grouped.rows, shared.rows);
+  const [left, right] = swapped ? [shared, grouped] : [grouped, shared];
+  const { raw, half } = target.scratch;
+  crossProduct(left.rows, right.rows, target.weights, raw);
+  const columns = coordinateWidth(right.coordinates);
+  transformColumns(raw, left.coordinates.rawWidth, right.coordinates, half);
+  transformRows(half, columns, left.coordinates, raw);
+  const { size, count, cross } = target.out;
+  const own = grouped.positions.length;
+  for (let group = 0; group < count; group++) {
+    for (let i = 0; i < own; i++) {
+      const at = (group * size + grouped.positions[i]) * target.sharedSize;
+      const from = group * own + i;
+      for (let j = 0; j < shared.positions.length; j++) {
+        cross[at + shared.positions[j]] = swapped ? raw[j * columns + from] : raw[from * columns + j];
       }
     }
   }

@@ -1,7 +1,10 @@
-import type { PenaltyBlock } from "./design";
-import type { ReducedSystem } from "./reduced-system";
-import { createState, evaluateLikelihood } from "./restricted-likelihood";
-import type { LikelihoodState } from "./restricted-likelihood";
+import { createArrowState } from "./arrow-system";
+import type { LikelihoodState } from "./likelihood-state";
+import { createState } from "./likelihood-state";
+import type { Penalty } from "./penalties";
+import { weightAt } from "./penalties";
+import type { LikelihoodProblem, PenalisedSystem } from "./restricted-likelihood";
+import { differentiate, evaluateLikelihood } from "./restricted-likelihood";
 
 /** How far, in log units, a penalty may go from its default before it is frozen there: a straight line, or no penalty. */
 const upwards = 16;
@@ -10,45 +13,73 @@ const downwards = 20;
 const ownShareOfDefault = 1e-8;
 const ownShareOfLowest = 1e-12;
 
-/** The penalties of one model while they are searched for; holds two states, so that a trial can be refused. */
+/** The penalties of one model while they are searched for; holds three states, so that a trial can be refused and a result kept. */
 export type PenaltySearch = {
-  blocks: readonly PenaltyBlock[];
-  /** Mean diagonal of each block of X'WX in coordinates where the penalty is the identity: a penalty of this size halves. */
+  problem: LikelihoodProblem;
+  penalties: readonly Penalty[];
+  /** Mean diagonal of each penalty's part of X'WX: a penalty of this size halves. */
   defaults: Float64Array;
   lowest: Float64Array;
   highest: Float64Array;
   current: LikelihoodState;
   trial: LikelihoodState;
-  work: Float64Array;
+  kept: LikelihoodState;
 };
 
-/** @example const search = createSearch(reduced, design.blocks); */
-export function createSearch(reduced: ReducedSystem, blocks: readonly PenaltyBlock[]): PenaltySearch {
-  const scales = blocks.map(({ start, end }) => {
-    let own = 0;
-    let before = 0;
-    for (let k = start; k < end; k++) {
-      own += reduced.matrix[k * reduced.size + k];
-      before += reduced.diagonal[k];
-    }
-    const whole = Math.max(before / (end - start), Number.MIN_VALUE * 1e60);
-    return { own: Math.max(own / (end - start), ownShareOfDefault * whole), whole };
-  });
+/** @example const search = createSearch({ system, layout, scale: "unknown" }); */
+export function createSearch(problem: LikelihoodProblem): PenaltySearch {
+  const { system, layout: { penalties } } = problem;
+  const scales = penalties.map((penalty) => scaleOf(system, penalty));
   const defaults = Float64Array.from(scales, ({ own }) => Math.log(own));
+  const state = () => createState({
+    size: system.size,
+    penalties: penalties.length,
+    arrow: system.form === "arrow" ? createArrowState(system.groups, system.size) : null,
+  });
   return {
-    blocks,
-    defaults,
+    problem, penalties, defaults,
     lowest: Float64Array.from(scales, ({ own, whole }) => Math.max(Math.log(own) - downwards, Math.log(whole * ownShareOfLowest))),
     highest: defaults.map((value) => value + upwards),
-    current: createState(reduced.size, blocks.length),
-    trial: createState(reduced.size, blocks.length),
-    work: new Float64Array(reduced.size * reduced.size),
+    current: state(), trial: state(), kept: state(),
   };
 }
 
+function scaleOf(system: PenalisedSystem, penalty: Penalty): { own: number; whole: number } {
+  const { start, end } = penalty;
+  let own = 0;
+  let before = 0;
+  let weights = 0;
+  const offset = system.form === "arrow" ? system.unpenalised : 0;
+  for (let k = start; k < end; k++) {
+    const weight = weightAt(penalty, k);
+    weights += weight;
+    // A weighted penalty halves where its weighted diagonal equals that of X'WX.
+    const share = weight > 0 ? 1 : 0;
+    if (penalty.grouped) before += share * (system.form === "arrow" ? system.groupDiagonal[k] : 0);
+    else {
+      before += share * system.diagonal[offset + k];
+      if (system.form === "dense") own += share * system.matrix[k * (system.size + 1)];
+    }
+  }
+  const whole = Math.max(before / weights, Number.MIN_VALUE * 1e60);
+  return { own: system.form === "dense" ? Math.max(own / weights, ownShareOfDefault * whole) : whole, whole };
+}
+
+/** Points a search at another working model of the same design. */
+export function repoint(search: PenaltySearch, system: PenalisedSystem): void {
+  search.problem = { ...search.problem, system };
+}
+
 /** Evaluates into `current`. */
-export function evaluateAt(search: PenaltySearch, reduced: ReducedSystem, logPenalties: Float64Array): void {
-  evaluateLikelihood(reduced, { blocks: search.blocks, logPenalties, work: search.work }, search.current);
+export function evaluateAt(search: PenaltySearch, logPenalties: Float64Array): void {
+  evaluateLikelihood(search.problem, logPenalties, search.current);
+}
+
+/** The current state with its gradient, and its Hessian where asked for; an infinite criterion has neither. */
+export function derivatives(search: PenaltySearch, level: "gradient" | "hessian"): LikelihoodState {
+  const { current } = search;
+  if (Number.isFinite(current.criterion)) differentiate(search.problem, current, level);
+  return current;
 }
 
 /**
@@ -56,10 +87,8 @@ export function evaluateAt(search: PenaltySearch, reduced: ReducedSystem, logPen
  *
  * @returns whether it was accepted.
  */
-export function tryPenalties(
-  search: PenaltySearch, reduced: ReducedSystem, logPenalties: Float64Array, accept: (trial: LikelihoodState) => boolean,
-): boolean {
-  evaluateLikelihood(reduced, { blocks: search.blocks, logPenalties, work: search.work }, search.trial);
+export function tryPenalties(search: PenaltySearch, logPenalties: Float64Array, accept: (trial: LikelihoodState) => boolean): boolean {
+  evaluateLikelihood(search.problem, logPenalties, search.trial);
   if (!accept(search.trial)) return false;
   const before = search.current;
   search.current = search.trial;
@@ -67,9 +96,16 @@ export function tryPenalties(
   return true;
 }
 
-/** Keeps a log penalty of a block within its bounds. */
-export const withinBounds = (search: PenaltySearch, block: number, logPenalty: number): number =>
-  Math.min(search.highest[block], Math.max(search.lowest[block], logPenalty));
+/** Sets the current state aside (`keep`), or brings back what was set aside (`restore`). */
+export function exchangeKept(search: PenaltySearch): void {
+  const { current } = search;
+  search.current = search.kept;
+  search.kept = current;
+}
 
-/** Whether a block's penalty went to its limit: the curve is the penalty's straight line (a circle: no curve). */
-export const isAtLimit = (search: PenaltySearch, block: number): boolean => search.current.edf[block] < 1e-3;
+/** Keeps a log penalty within its bounds. */
+export const withinBounds = (search: PenaltySearch, penalty: number, logPenalty: number): number =>
+  Math.min(search.highest[penalty], Math.max(search.lowest[penalty], logPenalty));
+
+/** Whether a penalty went to its limit: the curve is the penalty's straight line (a circle: no curve). */
+export const isAtLimit = (search: PenaltySearch, penalty: number): boolean => search.current.edf[penalty] < 1e-3;

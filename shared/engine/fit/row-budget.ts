@@ -1,9 +1,9 @@
 import { EngineError } from "../errors";
-import type { ReducedSystem } from "./reduced-system";
+import type { PenalisedSystem } from "./restricted-likelihood";
 
 /** @throws EngineError too-few-rows unless there are more rows than unpenalised coefficients. */
-export function checkRowsSuffice(reduced: ReducedSystem): void {
-  const { rowCount, unpenalisedKept } = reduced;
+export function checkRowsSuffice(system: PenalisedSystem): void {
+  const { rowCount, unpenalisedKept } = system;
   if (rowCount > unpenalisedKept) return;
   throw new EngineError(
     "too-few-rows",

@@ -1,21 +1,34 @@
+import type { NormalEquations } from "./normal-equations";
+import type { Coordinates } from "./predictor";
 import type { PenaltySearch } from "./penalty-search";
-import type { ReducedSystem } from "./reduced-system";
+import type { WorkingSolution } from "./working-model";
 
-/** A fit as the solvers leave it: the last working model, its penalties, and the coordinates in the design's layout. */
+/** A fit as the solvers leave it: the last working model solved, its equations, and what follows for the rows. */
 export type WorkingFit = {
-  reduced: ReducedSystem;
-  search: PenaltySearch;
-  /** Fitting coordinates; the intercept's includes the shift of the working response. */
-  coordinates: Float64Array;
+  solution: WorkingSolution;
+  equations: NormalEquations;
+  /** The intercept's includes the shift of the working response. */
+  coordinates: Coordinates;
   /** Linear predictor per fitted row, offset included. */
   linearPredictor: Float64Array;
+  /** Of the negative binomial; null for other families. */
+  theta: number | null;
   criterion: number;
   converged: boolean;
   iterations: number;
 };
 
-/** b'Sb over all blocks. */
+/** b'Sb over all penalties. */
 export function penaltyValue(search: PenaltySearch): number {
-  const { logPenalties, squares } = search.current;
-  return search.blocks.reduce((sum, _block, j) => sum + Math.exp(logPenalties[j]) * squares[j], 0);
+  const { multipliers, squares } = search.current;
+  let sum = 0;
+  for (let j = 0; j < multipliers.length; j++) sum += multipliers[j] * squares[j];
+  return sum;
+}
+
+/** Estimates of a solved working model, the response's shift given back to the intercept. */
+export function shiftedCoordinates(solution: WorkingSolution, equations: NormalEquations): Coordinates {
+  const shared = solution.coordinates.slice();
+  shared[0] += equations.shift;
+  return { shared, groups: solution.groupCoordinates };
 }

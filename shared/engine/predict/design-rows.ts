@@ -1,9 +1,9 @@
 import { basisRows, columnsOf } from "../basis/term-basis";
 import { numberColumn, rowCount } from "../basis/columns";
-import { addTransposeTimes, gatherRow } from "../linalg/sparse-rows";
+import { addTransposeTimes, entriesPerRow, gatherRow } from "../linalg/sparse-rows";
 import type { SparseRows } from "../linalg/sparse-rows";
-import { packedQuadratic, sparseVariance } from "../linalg/packed-symmetric";
 import type { FittedModel, ModelData } from "../types";
+import { sparseVarianceOf } from "./model-covariance";
 
 /** Rows of a model's design for any data, sparse per term, in the coordinates of `FittedModel.coefficients`. */
 export type DesignRows = {
@@ -71,24 +71,19 @@ export function designTransposeTimesMany(model: FittedModel, data: ModelData, ve
 }
 
 /**
- * left' V right with V the coefficients' covariance: a variance where both are the same gradient. O(coefficients^2).
- *
- * @param left one value per coefficient. right likewise.
- * @example Math.sqrt(covarianceQuadratic(model, gradient, gradient)); // a standard error
+ * Standard error of each row's linear predictor (or of the parts given). O(n x entries^2), entries about 4 a curve; with
+ * groups O(n x shared coefficients^2).
  */
-export const covarianceQuadratic = (model: FittedModel, left: Float64Array, right: Float64Array): number =>
-  packedQuadratic(model.covariance, left, right);
-
-/** Standard error of each row's linear predictor (or of the parts given). O(n x entries^2), entries about 4 a curve. */
 export function rowStandardErrors(model: FittedModel, parts: DesignRows["parts"], count: number): Float64Array {
-  const entries = parts.reduce((sum, part) => sum + (part.rows.storage === "spline" ? 4 : 1), 0);
+  const entries = parts.reduce((sum, part) => sum + entriesPerRow(part.rows), 0);
   const indices = new Int32Array(entries);
   const values = new Float64Array(entries);
   const errors = new Float64Array(count);
+  const varianceOf = sparseVarianceOf(model);
   for (let row = 0; row < count; row++) {
     let used = 0;
     for (const part of parts) used = gatherRow(part.rows, row, part.first, { indices, values, count: used });
-    errors[row] = Math.sqrt(sparseVariance(model.covariance, indices, values, used));
+    errors[row] = Math.sqrt(varianceOf(indices, values, used));
   }
   return errors;
 }

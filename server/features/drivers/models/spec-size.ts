@@ -2,10 +2,11 @@ import type { ModelSpec, TermSpec } from "@shared/engine";
 import { unusable } from "../../../errors";
 
 /** A fit of a store's weeks with this many coefficients takes well under a second; the work grows with their cube. */
-const mostCoefficients = 160;
+const mostCoefficients = 240;
 
-/** Basis sizes the engine takes where a term gives none. */
-const defaultSizes = { smooth: 10, "cyclic-smooth": 12 } as const;
+/** What the engine takes where a term gives no size; a level per week of three years, or per store of a chain. */
+const usualSize = { smooth: 10, "cyclic-smooth": 12, "factor-smooth": 6, "random-walk": 156, "random-effect": 1 } as const;
+const usualMargin = 5;
 
 /**
  * Refuses a specification that would keep a process busy for minutes: no store's weeks can tell so many coefficients apart.
@@ -22,6 +23,16 @@ export function requireModestSpec({ terms }: ModelSpec): void {
 }
 
 function sizeOf(term: TermSpec): number {
-  if (term.kind === "smooth" || term.kind === "cyclic-smooth") return term.size ?? defaultSizes[term.kind];
-  return 1;
+  switch (term.kind) {
+    case "smooth":
+    case "cyclic-smooth":
+    case "factor-smooth": return term.size ?? usualSize[term.kind];
+    case "natural-spline": return term.df;
+    case "tensor-product": return (term.sizes?.[0] ?? usualMargin) * (term.sizes?.[1] ?? usualMargin);
+    case "random-walk":
+    case "random-effect": return usualSize[term.kind];
+    case "linear":
+    case "factor":
+    case "local-regression": return 1;
+  }
 }

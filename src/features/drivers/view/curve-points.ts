@@ -5,8 +5,11 @@ import type { FactorLevel } from "@/components/charts/factor-lane/factor-level";
 type NumberCurve = Curve & { x: number[] };
 type LevelCurve = Curve & { x: string[] };
 
-export const isLevelCurve = (curve: Curve): curve is LevelCurve => curve.kind === "factor";
-export const isNumberCurve = (curve: Curve): curve is NumberCurve => curve.kind !== "factor";
+/** Kinds whose values are names, not numbers. */
+const levelKinds = new Set<Curve["kind"]>(["factor", "random-effect"]);
+
+export const isLevelCurve = (curve: Curve): curve is LevelCurve => levelKinds.has(curve.kind);
+export const isNumberCurve = (curve: Curve): curve is NumberCurve => !levelKinds.has(curve.kind);
 
 /** From the link scale to multipliers of an average week. */
 export const curvePoints = (curve: NumberCurve): CurvePoint[] =>

@@ -1,0 +1,103 @@
+import type { TermCoordinates } from "../penalty/term-transform";
+
+/** Number of columns a term's transform gives. */
+export const coordinateWidth = ({ unpenalised, penalised }: TermCoordinates): number => unpenalised + penalised;
+
+/**
+ * out = block x T: each row of raw columns becomes a row of coordinates, in the order of the transform's columns.
+ *
+ * @param block row-major rows x rawWidth. Not changed.
+ * @param out receives rows x coordinates.
+ * @example transformColumns(raw, 8, term.coordinates, half);
+ */
+export function transformColumns(block: Float64Array, rows: number, to: TermCoordinates, out: Float64Array): void {
+  const { transform, rawWidth } = to;
+  const width = coordinateWidth(to);
+  if (transform.form === "scaled") {
+    for (let at = 0; at < rows; at++) out[at] = block[at] * transform.factor;
+  } else if (transform.form === "without") {
+    for (let row = 0; row < rows; row++) {
+      let at = row * width;
+      for (let k = 0; k < rawWidth; k++) if (k !== transform.leftOut) out[at++] = block[row * rawWidth + k];
+    }
+  } else if (transform.form === "dense") {
+    for (let row = 0; row < rows; row++) {
+      rowTimes({ from: block, at: row * rawWidth, length: rawWidth }, { matrix: transform.matrix, columns: width }, out, row * width);
+    }
+  } else {
+    const { matrix, rows: blockRows, columns, count } = transform;
+    if (blockRows === 1 && columns === 1) scale(block, rows * count, matrix[0], out);
+    else {
+      for (let at = 0; at < rows * count; at++) {
+        rowTimes({ from: block, at: at * blockRows, length: blockRows }, { matrix, columns }, out, at * columns);
+      }
+    }
+  }
+}
+
+function rowTimes(
+  row: { from: Float64Array; at: number; length: number }, by: { matrix: Float64Array; columns: number }, out: Float64Array, to: number,
+): void {
+  const { from, at, length } = row;
+  const { matrix, columns } = by;
+  for (let column = 0; column < columns; column++) out[to + column] = 0;
+  for (let k = 0; k < length; k++) {
+    const value = from[at + k];
+    if (value === 0) continue;
+    const start = k * columns;
+    for (let column = 0; column < columns; column++) out[to + column] += value * matrix[start + column];
+  }
+}
+
+function scale(values: Float64Array, count: number, factor: number, out: Float64Array): void {
+  for (let at = 0; at < count; at++) out[at] = values[at] * factor;
+}
+
+/**
+ * out = T' x block: raw rows x columns become coordinates x columns.
+ *
+ * @param block row-major rawWidth x columns. Not changed.
+ * @example transformRows(half, 11, term.coordinates, raw);
+ */
+export function transformRows(block: Float64Array, columns: number, to: TermCoordinates, out: Float64Array): void {
+  const { transform, rawWidth } = to;
+  if (transform.form === "scaled") {
+    for (let at = 0; at < columns; at++) out[at] = block[at] * transform.factor;
+  } else if (transform.form === "without") {
+    let row = 0;
+    for (let k = 0; k < rawWidth; k++) {
+      if (k === transform.leftOut) continue;
+      for (let column = 0; column < columns; column++) out[row * columns + column] = block[k * columns + column];
+      row++;
+    }
+  } else if (transform.form === "dense") {
+    transposeTimes({ block, at: 0 }, { matrix: transform.matrix, rows: rawWidth, width: coordinateWidth(to) }, { out, at: 0, columns });
+  } else {
+    const { matrix, rows, columns: width, count } = transform;
+    if (rows === 1 && width === 1) scale(block, count * columns, matrix[0], out);
+    else {
+      for (let level = 0; level < count; level++) {
+        transposeTimes({ block, at: level * rows * columns }, { matrix, rows, width }, { out, at: level * width * columns, columns });
+      }
+    }
+  }
+}
+
+function transposeTimes(
+  from: { block: Float64Array; at: number }, by: { matrix: Float64Array; rows: number; width: number },
+  to: { out: Float64Array; at: number; columns: number },
+): void {
+  const { block } = from;
+  const { matrix, rows, width } = by;
+  const { out, columns } = to;
+  out.fill(0, to.at, to.at + width * columns);
+  for (let k = 0; k < rows; k++) {
+    const source = from.at + k * columns;
+    for (let row = 0; row < width; row++) {
+      const value = matrix[k * width + row];
+      if (value === 0) continue;
+      const target = to.at + row * columns;
+      for (let column = 0; column < columns; column++) out[target + column] += value * block[source + column];
+    }
+  }
+}

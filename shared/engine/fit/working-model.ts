@@ -1,0 +1,119 @@
+import type { DroppedColumn } from "../linalg/dropping-cholesky";
+import { arrowSystem } from "./arrow-system";
+import type { PenaltyPlan } from "./choose-penalties";
+import { coordinateCovariance, sharedCoordinates } from "./coordinates";
+import { eliminateUnpenalised } from "./dense-system";
+import type { Design } from "./design";
+import type { LikelihoodState } from "./likelihood-state";
+import type { NormalEquations } from "./normal-equations";
+import type { PenaltyLayout } from "./penalties";
+import { createSearch, derivatives, evaluateAt, repoint } from "./penalty-search";
+import type { PenaltySearch } from "./penalty-search";
+import type { PenalisedSystem, Scale } from "./restricted-likelihood";
+import { checkRowsSuffice } from "./row-budget";
+import type { ShapeConstraints } from "./shape-constraints";
+import { holdConstraints, projectOntoShape } from "./shape-constraints";
+
+/** What stays the same from one working model to the next. */
+export type WorkingProblem = {
+  design: Design;
+  plan: PenaltyPlan;
+  layout: PenaltyLayout;
+  scale: Scale;
+  constraints: ShapeConstraints | null;
+};
+
+/** A working model solved: penalties chosen, estimates found. */
+export type WorkingSolution = {
+  system: PenalisedSystem;
+  /** Its current state is the posterior: estimates and inverse without the shapes. */
+  search: PenaltySearch;
+  /** Effective degrees of freedom under each penalty; with shapes, of the model whose touched constraints are held. */
+  edf: Float64Array;
+  /** Estimates of the shared coordinates and, group after group, of the groups'. */
+  coordinates: Float64Array;
+  groupCoordinates: Float64Array | null;
+  /** 1 per constraint the curve touches; null without shapes. */
+  held: Uint8Array | null;
+  rested: boolean;
+};
+
+/** From the last working model: what to begin with. */
+export type Before = { dropped: DroppedColumn[] | null; search: PenaltySearch | null; held: Uint8Array | null };
+
+const mostTurns = 30;
+
+/**
+ * Solves one working model: penalties by `choose`, estimates, and, where curves have a shape, both in turn until the
+ * constraints touched are the same twice.
+ *
+ * @param choose moves the search's penalties and says whether they came to rest.
+ * @throws EngineError too-few-rows.
+ * @example solveWorking(problem, equations, before, (search) => bestPenalties(search, plan)).coordinates;
+ */
+export function solveWorking(
+  problem: WorkingProblem, equations: NormalEquations, before: Before, choose: (search: PenaltySearch) => boolean,
+): WorkingSolution {
+  const { design, layout, scale, constraints } = problem;
+  const system = createSystem(equations, design, before.dropped);
+  if (before.dropped === null) checkRowsSuffice(system);
+  const search = before.search ?? createSearch({ system, layout, scale });
+  repoint(search, system);
+  if (constraints === null) {
+    const rested = choose(search);
+    const state = derivatives(search, "gradient");
+    return { system, search, edf: state.edf, ...estimates(system, state), held: null, rested };
+  }
+  return solveShaped({ problem, equations, system, search, constraints, choose, held: before.held ?? new Uint8Array(constraints.count) });
+}
+
+function createSystem(equations: NormalEquations, design: Design, known: DroppedColumn[] | null): PenalisedSystem {
+  return equations.groups === null
+    ? eliminateUnpenalised(equations, design, known)
+    : arrowSystem(equations, equations.groups, design, known);
+}
+
+function estimates(system: PenalisedSystem, state: LikelihoodState): { coordinates: Float64Array; groupCoordinates: Float64Array | null } {
+  return { coordinates: sharedCoordinates(system, state), groupCoordinates: state.arrow?.coefficients.slice() ?? null };
+}
+
+type Shaped = {
+  problem: WorkingProblem; equations: NormalEquations; system: PenalisedSystem; search: PenaltySearch;
+  constraints: ShapeConstraints; choose: (search: PenaltySearch) => boolean; held: Uint8Array;
+};
+
+function solveShaped(of: Shaped): WorkingSolution {
+  const { problem, equations, system, search, constraints, choose } = of;
+  let { held } = of;
+  for (let turn = 1; ; turn++) {
+    const isHeld = held.includes(1);
+    if (isHeld) repoint(search, createSystem(holdConstraints(equations, constraints, held), problem.design, system.dropped));
+    const rested = choose(search);
+    const edf = derivatives(search, "gradient").edf.slice();
+    repoint(search, system);
+    if (isHeld) evaluateAt(search, search.current.logPenalties.slice());
+    const state = derivatives(search, "gradient");
+    const free = estimates(system, state);
+    const projected = projectOntoShape({ estimate: free.coordinates, covariance: coordinateCovariance(system, state) }, constraints, held);
+    const isSame = projected.held.every((value, at) => value === held[at]);
+    ({ held } = projected);
+    if (isSame || turn === mostTurns) {
+      const coordinates = projected.estimate;
+      const groupCoordinates = follow({ system, state, from: free.coordinates, to: coordinates, own: free.groupCoordinates });
+      return { system, search, edf, coordinates, groupCoordinates, held, rested: rested && isSame };
+    }
+  }
+}
+
+/** Groups' estimates given shared ones that moved: each by -K_g times the move. */
+function follow(of: {
+  system: PenalisedSystem; state: LikelihoodState; from: Float64Array; to: Float64Array; own: Float64Array | null;
+}): Float64Array | null {
+  const { system, state, from, to, own } = of;
+  if (own === null || state.arrow === null || system.form !== "arrow") return own;
+  const moved = own.slice();
+  for (let row = 0; row < moved.length; row++) {
+    for (let k = 0; k < from.length; k++) moved[row] -= state.arrow.link[row * from.length + k] * (to[k] - from[k]);
+  }
+  return moved;
+}
