@@ -137,11 +137,11 @@ const fitCases: Case[] = [
   },
   {
     rule: "a kind that is none", spec: untypedTerm('{"kind":"wavelet","column":"price"}'), code: "spec-invalid",
-    message: 'Term kind "wavelet" is not one of linear, factor, smooth, cyclic-smooth.',
+    message: 'Term kind "wavelet" is not one of linear, factor, smooth, cyclic-smooth, natural-spline, local-regression, tensor-product, random-walk, random-effect, factor-smooth.',
   },
   {
     rule: "a term that is none", spec: untyped('{"response":"logUnits","family":"gaussian","terms":[null]}'), code: "spec-invalid",
-    message: "Term kind missing is not one of linear, factor, smooth, cyclic-smooth.",
+    message: "Term kind missing is not one of linear, factor, smooth, cyclic-smooth, natural-spline, local-regression, tensor-product, random-walk, random-effect, factor-smooth.",
   },
   {
     rule: "terms that are no list", spec: untyped('{"response":"logUnits","family":"gaussian"}'), code: "spec-invalid",
@@ -153,7 +153,7 @@ const fitCases: Case[] = [
   },
   {
     rule: "a family that is none", spec: untyped('{"response":"logUnits","family":"cauchy","terms":[]}'), code: "spec-invalid",
-    message: 'Family "cauchy" is not one of gaussian, log-gaussian, quasi-poisson.',
+    message: 'Family "cauchy" is not one of gaussian, log-gaussian, quasi-poisson, negative-binomial, binomial.',
   },
   {
     rule: "no iterations", spec: { ...quasiPoissonSpec, terms: [price] }, options: { maxIterations: 0 }, code: "option-invalid",

@@ -1,18 +1,19 @@
 import { termId } from "../basis/term-basis";
 import { EngineError } from "../errors";
-import type { ModelSpec, TermSpec } from "../types";
+import type { FactorSmoothTerm, ModelData, ModelSpec, RandomEffectTerm, SmoothTerm } from "../types";
+import { checkTerm, requireName } from "./check-term";
 
-const kinds: readonly string[] = ["linear", "factor", "smooth", "cyclic-smooth"] satisfies TermSpec["kind"][];
 /** Names of contributions that are no term's. */
 const reserved = ["intercept", "offset"];
 
 /**
- * Checks a specification by itself, without data: it may come from outside as JSON.
+ * Checks a specification: it may come from outside as JSON. Every term by itself, then what terms need of one another.
  *
+ * @param data where given, also checks what depends on a column holding text or numbers.
  * @throws EngineError spec-invalid, smoothness-out-of-range; the message names the value and the rule.
  * @example checkSpec({ response: "units", family: "gaussian", terms: [] });
  */
-export function checkSpec(spec: ModelSpec): void {
+export function checkSpec(spec: ModelSpec, data?: ModelData): void {
   requireName(spec.response, "response");
   if (spec.offset !== undefined) requireName(spec.offset, "offset");
   if (spec.weights !== undefined) requireName(spec.weights, "weights");
@@ -25,39 +26,39 @@ export function checkSpec(spec: ModelSpec): void {
     if (seen.has(id)) throw new EngineError("spec-invalid", `Two terms have the id "${id}"; give one of them another id.`);
     seen.add(id);
   }
-}
-
-function requireName(value: unknown, role: string): void {
-  if (typeof value === "string" && value !== "") return;
-  throw new EngineError("spec-invalid", `${role} is ${JSON.stringify(value) ?? "missing"}; it must be a column name.`);
-}
-
-function checkTerm(term: TermSpec): void {
-  if (typeof term !== "object" || term === null || !kinds.includes(term.kind)) {
-    const kind = JSON.stringify((term as { kind?: unknown } | null)?.kind) ?? "missing";
-    throw new EngineError("spec-invalid", `Term kind ${kind} is not one of ${kinds.join(", ")}.`);
+  for (const term of spec.terms) {
+    if (term.kind === "factor-smooth") checkDeviation(term, spec);
+    if (term.kind === "smooth" && term.by !== undefined && data !== undefined) checkVarying(term, term.by, { spec, data });
   }
-  requireName(term.column, `column of a ${term.kind} term`);
-  if (term.id !== undefined) requireName(term.id, `id of a ${term.kind} term`);
-  if ("smoothness" in term) checkSmoothness(term);
 }
 
-function checkSmoothness(term: Extract<TermSpec, { smoothness?: unknown }>): void {
-  const { smoothness } = term;
+/** Curves per group are deviations from the chain's curve, and hold the groups' levels. */
+function checkDeviation(term: FactorSmoothTerm, { terms }: ModelSpec): void {
   const id = termId(term);
-  if (smoothness === undefined || smoothness === "auto") return;
-  if (typeof smoothness === "object" && smoothness !== null && "penalty" in smoothness) {
-    if (Number.isFinite(smoothness.penalty) && smoothness.penalty >= 1e-12 && smoothness.penalty <= 1e15) return;
-    throw new EngineError("smoothness-out-of-range", `Term "${id}": penalty is ${smoothness.penalty}; it must be from 1e-12 to 1e15.`);
-  }
-  if (typeof smoothness === "object" && smoothness !== null && "df" in smoothness) {
-    const lowest = term.kind === "smooth" ? 1 : 0;
-    const highest = (term.size ?? (term.kind === "smooth" ? 10 : 12)) - 1;
-    if (smoothness.df > lowest && smoothness.df < highest) return;
+  const isLog = term.log === true;
+  const hasOwnCurve = terms.some((other) =>
+    other.kind === "smooth" && other.by === undefined && other.column === term.column && (other.log === true) === isLog);
+  if (!hasOwnCurve) {
     throw new EngineError(
-      "smoothness-out-of-range",
-      `Term "${id}": df is ${smoothness.df}; it must be above ${lowest} and below ${highest} (size - 1).`,
+      "spec-invalid",
+      `Term "${id}" is curves per "${term.group}" around a common one; the terms must have a smooth of "${term.column}"${isLog ? " (log)" : ""} too.`,
     );
   }
-  throw new EngineError("spec-invalid", `Term "${id}": smoothness is ${JSON.stringify(smoothness)}; it must be "auto", { df } or { penalty }.`);
+  const level = terms.find((other): other is RandomEffectTerm =>
+    other.kind === "random-effect" && other.by === undefined && other.column === term.group);
+  if (level !== undefined) {
+    throw new EngineError("spec-invalid", `Term "${termId(level)}" is a level per "${term.group}", which the curves of "${id}" have already; leave it out.`);
+  }
+}
+
+/** A curve per level leaves the levels themselves to a factor; a curve times a number is neither rising nor falling. */
+function checkVarying(term: SmoothTerm, by: string, { spec, data }: { spec: ModelSpec; data: ModelData }): void {
+  const id = termId(term);
+  const isText = Object.hasOwn(data, by) && typeof data[by][0] === "string";
+  if (isText && !spec.terms.some((other) => other.kind === "factor" && other.column === by)) {
+    throw new EngineError("spec-invalid", `Term "${id}" is a curve per level of "${by}", each centred; the terms must have the factor "${by}" too.`);
+  }
+  if (!isText && term.shape !== undefined) {
+    throw new EngineError("spec-invalid", `Term "${id}": shape is "${term.shape}"; a curve times the numbers of "${by}" cannot have one.`);
+  }
 }
