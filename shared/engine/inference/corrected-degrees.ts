@@ -1,0 +1,176 @@
+import { EigenvalueDecomposition, Matrix } from "ml-matrix";
+import { arrowRoot, conjugatedPenalty } from "./arrow-root";
+import type { Arrow } from "./arrow-root";
+import { rankDegrees } from "./penalty-share";
+import type { Posterior } from "./posterior";
+import { splineBasis } from "./spline-basis";
+import type { PlacedPenalty, TermPlace } from "./term-places";
+
+/** Degrees of freedom of a whole model; `isCorrected` false where `corrected` is no more than its upper bound. */
+export type ModelDegrees = { plain: number; bound: number; corrected: number; isCorrected: boolean };
+
+/** A prior standard deviation of about 3 for each log penalty, in the second-order term: its expansion is not made for more. */
+const priorPrecision = 0.1;
+/** Bound on the curvature of the criterion in the first-order term. */
+const leastCurvature = 1e-4;
+/** Penalised degrees of freedom below which a penalty is at its limit: it moves nothing, and its log has no variance. */
+const leastDegrees = 1e-4;
+/** Shared coordinates beyond which the correction would take longer than the fit. */
+const mostCoordinates = 500;
+
+/**
+ * Effective degrees of freedom with and without the uncertainty of the penalties: tr(F), its bound 2 tr(F) - tr(FF), and
+ * tr(V' X'WX) with V' = C + J V_rho J' + sum_jk (V_rho)_jk dB_j dB_k', where J = db/drho, B B' = C, V_rho the inverse of the
+ * criterion's Hessian by the log penalties; no more than the bound. Working weights are taken as fixed. With B's inverse
+ * transpose triangular dB_j = -B P_j', P_j the lower triangle of B'S_jB, its diagonal halved.
+ * Source: Wood, Pya & Saefken (2016), J. Am. Statist. Assoc. 111, 1548-1575, sections 4 and 5.
+ *
+ * @returns O(size^3 x penalties + penalties^2 x groups x group size x size).
+ * @example modelDegrees(posterior, places, model.dispersion).corrected;
+ */
+export function modelDegrees(posterior: Posterior, places: readonly TermPlace[], dispersion: number): ModelDegrees {
+  const { size, information, groups, covariance, shared, grouped } = posterior;
+  const ranks = rankDegrees(posterior);
+  const bound = total(ranks.shared) + total(ranks.grouped);
+  let plain = size - information.dropped.length + (groups === null ? 0 : groups.count * groups.size);
+  for (let k = 0; k < size; k++) plain -= shared[k] * covariance[k * size + k];
+  for (let row = 0; groups !== null && row < groups.count * groups.size; row++) plain -= grouped[row % groups.size] * ownVariance(posterior, row);
+  const root = size > mostCoordinates ? null : arrowRoot(posterior, splineBasis(posterior, places));
+  if (root === null) return { plain, bound, corrected: bound, isCorrected: false };
+  const conjugated = posterior.penalties.map((penalty) => conjugatedPenalty(posterior, root, penalty));
+  const moving = posterior.penalties.flatMap((penalty, j) => (penalty.isEstimated && blockDegrees(posterior, penalty, conjugated[j]) > leastDegrees ? [j] : []));
+  if (moving.length === 0) return { plain, bound, corrected: plain, isCorrected: true };
+  const hessian = new Matrix(moving.map((j) => moving.map((k) => information.criterionHessian[j * posterior.penalties.length + k])));
+  const variance = inverseBounded(hessian, (value) => Math.max(value, leastCurvature));
+  const tempered = inverseBounded(hessian, (value) => Math.max(value, 0) + priorPrecision);
+  const halved = moving.map((j) => lowerHalf(conjugated[j], size, grouped.length));
+  const kept = remainder(posterior, conjugated);
+  const slopes = moving.map((j) => penaltySlope(posterior, posterior.penalties[j]));
+  const times = halved.map((half) => timesSymmetric(half, kept, size, grouped.length));
+  let corrected = plain;
+  moving.forEach((_j, a) => moving.forEach((_k, b) => {
+    corrected += (variance.get(a, b) * slopeProduct(posterior, slopes[a], slopes[b])) / dispersion;
+    corrected += tempered.get(a, b) * entryProduct(times[a], halved[b]);
+  }));
+  return { plain, bound, corrected: Math.max(plain, Math.min(corrected, bound)), isCorrected: true };
+}
+
+const total = (values: Float64Array): number => values.reduce((sum, value) => sum + value, 0);
+
+/** Variance of a group's coordinate over the dispersion. */
+function ownVariance({ groups, covariance, size }: Posterior, row: number): number {
+  if (groups === null) return 0;
+  const link = groups.link.subarray(row * size, (row + 1) * size);
+  let sum = groups.own[row * groups.size + (row % groups.size)];
+  for (let k = 0; k < size; k++) for (let l = 0; l < size; l++) sum += link[k] * covariance[k * size + l] * link[l];
+  return sum;
+}
+
+/** Penalised degrees of freedom under one penalty: its rank less tr(C S_j) = tr(B'S_jB). */
+function blockDegrees({ size, grouped, groups }: Posterior, { positions, diagonal, isGrouped }: PlacedPenalty, { own, shared }: Arrow): number {
+  let trace = 0;
+  for (let k = 0; k < size; k++) trace += shared[k * size + k];
+  for (let row = 0; row * grouped.length < own.length; row++) trace += own[row * grouped.length + (row % grouped.length)];
+  const rank = diagonal.reduce((sum, value) => sum + (value > 0 ? 1 : 0), 0);
+  return rank * (isGrouped && positions.length > 0 ? (groups?.count ?? 1) : 1) - trace;
+}
+
+/** Inverse of a symmetric matrix with each eigenvalue replaced by its bounded one. */
+function inverseBounded(matrix: Matrix, bounded: (eigenvalue: number) => number): Matrix {
+  const { realEigenvalues, eigenvectorMatrix } = new EigenvalueDecomposition(matrix, { assumeSymmetric: true });
+  const inverse = Matrix.diag(realEigenvalues.map((value) => 1 / bounded(value)));
+  return eigenvectorMatrix.mmul(inverse).mmul(eigenvectorMatrix.transpose());
+}
+
+/** Lower triangle with the diagonal halved; with groups first, `cross` (their meeting with later rows) is all of it lower. */
+function lowerHalf({ own, cross, shared }: Arrow, size: number, width: number): Arrow {
+  const cut = (matrix: Float64Array, columns: number) => matrix.map((value, at) => {
+    const column = at % columns;
+    const row = Math.floor(at / columns) % columns;
+    return column < row ? value : column === row ? value / 2 : 0;
+  });
+  return { own: width === 0 ? own : cut(own, width), cross, shared: cut(shared, size) };
+}
+
+/** B'X'WXB = I - sum_j B'S_jB, zero for dropped coordinates. */
+function remainder({ size, grouped, information }: Posterior, conjugated: readonly Arrow[]): Arrow {
+  const first = conjugated[0];
+  const out: Arrow = { own: new Float64Array(first.own.length), cross: new Float64Array(first.cross.length), shared: new Float64Array(first.shared.length) };
+  for (let k = 0; k < size; k++) out.shared[k * size + k] = 1;
+  for (const position of information.dropped) out.shared[position * size + position] = 0;
+  for (let row = 0; row * grouped.length < out.own.length; row++) out.own[row * grouped.length + (row % grouped.length)] = 1;
+  for (const { own, cross, shared } of conjugated) {
+    for (let at = 0; at < own.length; at++) out.own[at] -= own[at];
+    for (let at = 0; at < cross.length; at++) out.cross[at] -= cross[at];
+    for (let at = 0; at < shared.length; at++) out.shared[at] -= shared[at];
+  }
+  return out;
+}
+
+/** (lower half) x (symmetric), only the entries that meet another lower half's: own, cross (as the shared rows hold it) and shared. */
+function timesSymmetric(half: Arrow, kept: Arrow, size: number, width: number): Arrow {
+  const out: Arrow = { own: new Float64Array(half.own.length), cross: new Float64Array(half.cross.length), shared: new Float64Array(half.shared.length) };
+  for (let row = 0; row < size; row++) {
+    for (let k = 0; k <= row; k++) {
+      const value = half.shared[row * size + k];
+      if (value === 0) continue;
+      for (let column = 0; column < size; column++) out.shared[row * size + column] += value * kept.shared[k * size + column];
+      for (let line = 0; line * size < kept.cross.length; line++) out.cross[line * size + row] += value * kept.cross[line * size + k];
+    }
+  }
+  for (let line = 0; line * size < half.cross.length; line++) {
+    const start = line - (line % width);
+    for (let row = 0; row < size; row++) {
+      const value = half.cross[line * size + row];
+      if (value === 0) continue;
+      for (let column = 0; column < size; column++) out.shared[row * size + column] += value * kept.cross[line * size + column];
+      for (let k = 0; k < width; k++) out.cross[(start + k) * size + row] += value * kept.own[line * width + k];
+    }
+    for (let k = 0; k < width; k++) {
+      const value = half.own[line * width + k];
+      for (let column = 0; column < width; column++) out.own[line * width + column] += value * kept.own[(start + k) * width + column];
+    }
+  }
+  return out;
+}
+
+function entryProduct(left: Arrow, right: Arrow): number {
+  let sum = 0;
+  for (let at = 0; at < left.own.length; at++) sum += left.own[at] * right.own[at];
+  for (let at = 0; at < left.cross.length; at++) sum += left.cross[at] * right.cross[at];
+  for (let at = 0; at < left.shared.length; at++) sum += left.shared[at] * right.shared[at];
+  return sum;
+}
+
+/** db/drho_j = -C S_j b over the dispersion's root, with the right-hand side -S_j b it solves for. */
+type Slope = { shared: Float64Array; grouped: Float64Array; sharedRight: Float64Array; groupedRight: Float64Array };
+
+function penaltySlope({ information, size, covariance, groups }: Posterior, penalty: PlacedPenalty): Slope {
+  const width = groups?.size ?? 0;
+  const lines = (groups?.count ?? 0) * width;
+  const slope: Slope = { shared: new Float64Array(size), grouped: new Float64Array(lines), sharedRight: new Float64Array(size), groupedRight: new Float64Array(lines) };
+  penalty.positions.forEach((position, k) => {
+    const weight = -penalty.multiplier * penalty.diagonal[k];
+    if (!penalty.isGrouped) slope.sharedRight[position] = weight * information.coordinates[position];
+    else for (let line = position; line < lines; line += width) slope.groupedRight[line] = weight * (information.groups?.coordinates[line] ?? 0);
+  });
+  const right = slope.sharedRight.slice();
+  for (let line = 0; line < lines; line++) for (let k = 0; k < size; k++) right[k] -= (groups?.link[line * size + k] ?? 0) * slope.groupedRight[line];
+  for (let row = 0; row < size; row++) for (let k = 0; k < size; k++) slope.shared[row] += covariance[row * size + k] * right[k];
+  for (let line = 0; line < lines; line++) {
+    const start = line - (line % width);
+    let sum = 0;
+    for (let k = 0; k < width; k++) sum += (groups?.own[line * width + k] ?? 0) * slope.groupedRight[start + k];
+    for (let k = 0; k < size; k++) sum -= (groups?.link[line * size + k] ?? 0) * slope.shared[k];
+    slope.grouped[line] = sum;
+  }
+  return slope;
+}
+
+/** J_j' X'WX J_k = J_j' (right side of J_k) - J_j' S J_k. The dispersion is put in by the caller. */
+function slopeProduct({ shared, grouped }: Posterior, left: Slope, right: Slope): number {
+  let sum = 0;
+  for (let k = 0; k < shared.length; k++) sum += left.shared[k] * (right.sharedRight[k] - shared[k] * right.shared[k]);
+  for (let line = 0; line < left.grouped.length; line++) sum += left.grouped[line] * (right.groupedRight[line] - grouped[line % grouped.length] * right.grouped[line]);
+  return sum;
+}
