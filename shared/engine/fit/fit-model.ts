@@ -44,7 +44,7 @@ const defaultMaxIterations = 200;
  * );
  */
 export function fitModel(spec: ModelSpec, data: ModelData, options: FitOptions = {}): FittedModel {
-  checkSpec(spec);
+  checkSpec(spec, data);
   const family = familyRules(spec.family);
   const rows = fittedRows(spec, data);
   family.check(rows.response, spec.response);
