@@ -1,5 +1,6 @@
 import type { ThetaRows } from "./family-rules";
 import { gammaRatioCurvature, gammaRatioSlope, logOfRatio } from "./gamma-ratio";
+import { logExcess } from "./log-excess";
 
 const [smallest, largest] = [1e-3, 1e7];
 const mostSteps = 100;
@@ -50,11 +51,4 @@ function logDerivatives({ response, mean, weights }: ThetaRows, theta: number): 
     second += weights[row] * (gammaRatioCurvature(units, theta) + (change * change) / (units + theta));
   }
   return { slope: theta * first, curvature: theta * first + theta * theta * second };
-}
-
-/** ln(1 + x) - x by its series, without the cancellation, for small x. */
-function logExcess(x: number): number {
-  let sum = 0;
-  for (let power = 10; power >= 2; power--) sum = 1 / power - x * sum;
-  return -x * x * sum;
 }

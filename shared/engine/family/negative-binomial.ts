@@ -1,9 +1,9 @@
-import gammaln from "@stdlib/math-base-special-gammaln";
 import { exponential } from "./exponential";
 import type { IterativeRules, LikelihoodRows, WorkingRows } from "./family-rules";
+import { countLogDensity } from "./count-distribution";
 import { countInterval } from "./count-interval";
 import { checkUnits, logLinkInterval, logLinkStart } from "./log-link";
-import { gammaRatio, logOfRatio } from "./gamma-ratio";
+import { logOfRatio } from "./gamma-ratio";
 import { estimateTheta } from "./negative-binomial-theta";
 import { nullMean } from "./null-mean";
 import { pearsonStatistic } from "./pearson-statistic";
@@ -42,7 +42,7 @@ export const negativeBinomial: IterativeRules = {
   },
   estimateTheta,
   meanInterval: logLinkInterval,
-  observationInterval: countInterval,
+  observationInterval: (row) => countInterval(row, (mu) => 1 + mu / row.theta),
 };
 
 /** Working response eta - offset + (y - mu) / mu, working weight mu / (1 + mu / theta). */
@@ -55,19 +55,10 @@ function fillWorking(rows: WorkingRows): void {
   }
 }
 
-/**
- * Sum of weight x [ln Gamma(y + theta) - ln Gamma(theta) - ln y! + theta ln theta + y ln mu - (y + theta) ln(mu + theta)], in
- * differences that keep their digits for large theta.
- */
 function logLikelihood({ response, linearPredictor, weights, theta }: LikelihoodRows): number {
   let sum = 0;
   for (let row = 0; row < response.length; row++) {
-    const units = response[row];
-    const mu = mean(linearPredictor[row]);
-    const logMean = Math.log(mu);
-    // gammaRatio is ln[Gamma(y + theta) / Gamma(theta)] + theta ln theta - (y + theta) ln(y + theta).
-    const term = gammaRatio(units, theta) + (units + theta) * logOfRatio(units, mu, theta) + units * logMean - gammaln(units + 1);
-    sum += weights[row] * term;
+    sum += weights[row] * countLogDensity(response[row], mean(linearPredictor[row]), theta);
   }
   return sum;
 }

@@ -35,7 +35,7 @@ export const quasiPoisson: IterativeRules = {
   },
   estimateTheta: null,
   meanInterval: logLinkInterval,
-  observationInterval: countInterval,
+  observationInterval: (row) => countInterval(row, () => row.dispersion),
 };
 
 /** Working response eta - offset + (y - mu) / mu, working weight mu (Green & Silverman 1994, section 5.1.2). */
