@@ -11,4 +11,5 @@ export { normalQuantile } from "./predict/level";
 export { predict } from "./predict/predict";
 export { supportCounts } from "./predict/support";
 export { termCurve } from "./predict/term-curve";
+export { termSurface } from "./predict/term-surface";
 export { parseModel, serialiseModel } from "./model-text";

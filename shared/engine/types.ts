@@ -338,8 +338,10 @@ export type Prediction = {
 export type TermCurveOptions = {
   /** Number of evenly spaced points over the observed range (default 100); on the log scale for log terms. */
   points?: number;
-  /** Values to evaluate at instead, in the column's own unit; level names for a factor. */
+  /** Values to evaluate at instead, in the column's own unit; level names for a factor, group names for a random effect. */
   at?: Float64Array | readonly number[] | readonly string[];
+  /** Which curve, where a term has several: a level of a smooth's `by`, or a group, whose deviation alone is drawn. */
+  group?: string;
   /** Probability of the band (default 0.95). */
   level?: number;
   /** Also give the derivative with respect to ln x: an elasticity, for log links and price-like columns. */
@@ -369,6 +371,30 @@ export type TermCurve = {
   outside: Uint8Array;
   /** d estimate / d ln x, where asked for. */
   derivative?: CurveDerivative;
+};
+
+export type TermSurfaceOptions = {
+  /** Evenly spaced points over each column's observed range (default 30). */
+  points?: number;
+  /** Probability of the band (default 0.95). */
+  level?: number;
+};
+
+/**
+ * A tensor product's contribution on the link scale over a grid of its two columns; arrays are row-major, the value at
+ * x[i] and y[j] at i x (number of y) + j.
+ */
+export type TermSurface = {
+  termId: string;
+  /** In each column's own unit. */
+  x: Float64Array;
+  y: Float64Array;
+  estimate: Float64Array;
+  standardError: Float64Array;
+  lower: Float64Array;
+  upper: Float64Array;
+  /** Fitted rows within a twentieth of both ranges' widths. */
+  supportCount: Float64Array;
 };
 
 export type TermReport = {
