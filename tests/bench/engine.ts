@@ -1,91 +1,76 @@
-import { execFileSync } from "node:child_process";
-import { mkdtempSync, readFileSync, rmSync } from "node:fs";
+import { mkdtempSync, rmSync } from "node:fs";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
-import { performance } from "node:perf_hooks";
-import { fileURLToPath } from "node:url";
-import { fitModel } from "@shared/engine";
-import type { ModelSpec } from "@shared/engine";
+import { ensureR } from "../../infra/lib/r-packages.mjs";
+import { measureWork, type MeasuredWork } from "./engine/measure-work";
+import { timeReference, type Reference } from "./engine/reference";
+import { readRows } from "./engine/rows";
+import { works } from "./engine/works";
+import { growthLines, measureGrowth } from "./engine/growth";
+import { saveGrowthPicture } from "./engine/growth-picture";
 
 /**
- * Times fits of one store and product against R's mgcv, in one run on the same rows: warm medians on both sides.
- * Needs R with mgcv, bayesm and jsonlite, and Debian's reference BLAS.
+ * Times this engine and R's mgcv on the same rows in one run: warm medians of processor time on both sides, our first fit by
+ * the clock, and the memory of the largest fit. Then shows how our time grows.
+ * `npm run bench -- engine [--json] [--only WORK,WORK]`: with --only, those works alone and no growth.
  */
-type Reference = {
-  lapack: string; blas: string; mgcv: string; normalMs: number; quasiPoissonMs: number;
-  data: { logmove: number[]; units: number[]; price: number[]; woy: number[]; deal: number[]; feat: number[] };
-};
+type Figure = { value: number; limit: number | null; unit: string };
 
-const [store, product] = ["2", "7"];
-/** How many times quicker than R a fit must be. */
-const required = { normal: 100, quasiPoisson: 35 };
+const memoryLimitMb = 200;
 
-const terms: ModelSpec["terms"] = [
-  { kind: "smooth", column: "price", log: true, size: 8 },
-  { kind: "cyclic-smooth", column: "woy", period: [0.5, 52.5], size: 12 },
-  { kind: "factor", column: "deal" },
-  { kind: "linear", column: "feat" },
-];
-const normal: ModelSpec = { response: "logmove", family: "gaussian", terms };
-const quasiPoisson: ModelSpec = { response: "units", family: "quasi-poisson", terms };
-
-function timeReference(): Reference {
+function measure(names: readonly string[]): { reference: Reference; measured: MeasuredWork[] } {
   const folder = mkdtempSync(join(tmpdir(), "engine-bench-"));
   try {
-    const output = join(folder, "reference.json");
-    const script = fileURLToPath(new URL("./engine-reference.R", import.meta.url));
-    execFileSync("Rscript", ["--vanilla", script, output, store, product], {
-      stdio: ["ignore", "ignore", "inherit"],
-      env: { ...process.env, OMP_NUM_THREADS: "1", OPENBLAS_NUM_THREADS: "1" },
-    });
-    return JSON.parse(readFileSync(output, "utf8")) as Reference;
+    const reference = timeReference({ folder, works: names });
+    const rows = readRows(folder);
+    const chosen = works.filter(({ name }) => names.includes(name));
+    return { reference, measured: chosen.map((work) => measureWork(work, { rows, folder, reference: reference.works[work.name] })) };
   } finally {
     rmSync(folder, { recursive: true });
   }
 }
 
-const batch = 20;
-
-/** Processor time on both sides, so that what else the machine does does not count; the cold fit by the clock. */
-function timeFits(spec: ModelSpec, data: Reference["data"]): { coldMs: number; warmMs: number } {
-  const start = performance.now();
-  fitModel(spec, data);
-  const coldMs = performance.now() - start;
-  const time = () => {
-    const before = process.cpuUsage();
-    for (let turn = 0; turn < batch; turn++) fitModel(spec, data);
-    const { user, system } = process.cpuUsage(before);
-    return (user + system) / 1000 / batch;
-  };
-  for (let turn = 0; turn < 25; turn++) time();
-  const times = Array.from({ length: 41 }, time).sort((left, right) => left - right);
-  return { coldMs, warmMs: times[20] };
-}
-
-export function run({ json }: { json: boolean }): void {
-  const reference = timeReference();
-  const ours = { normal: timeFits(normal, reference.data), quasiPoisson: timeFits(quasiPoisson, reference.data) };
-  const ratios = {
-    normal: reference.normalMs / ours.normal.warmMs,
-    quasiPoisson: reference.quasiPoissonMs / ours.quasiPoisson.warmMs,
-  };
-  const figures = {
-    normalRatio: { value: ratios.normal, limit: required.normal, unit: "times quicker than gam" },
-    quasiPoissonRatio: { value: ratios.quasiPoisson, limit: required.quasiPoisson, unit: "times quicker than gam" },
-    normalMs: { value: ours.normal.warmMs, limit: reference.normalMs / required.normal, unit: "ms" },
-    quasiPoissonMs: { value: ours.quasiPoisson.warmMs, limit: reference.quasiPoissonMs / required.quasiPoisson, unit: "ms" },
-    normalColdMs: { value: ours.normal.coldMs, limit: null, unit: "ms" },
-    quasiPoissonColdMs: { value: ours.quasiPoisson.coldMs, limit: null, unit: "ms" },
-    referenceNormalMs: { value: reference.normalMs, limit: null, unit: "ms" },
-    referenceQuasiPoissonMs: { value: reference.quasiPoissonMs, limit: null, unit: "ms" },
-  };
-  const ok = ratios.normal >= required.normal && ratios.quasiPoisson >= required.quasiPoisson;
-  console.log(`Store ${store}, product ${product}, ${reference.data.price.length} rows; mgcv ${reference.mgcv}, ${reference.lapack}, ${reference.blas}`);
-  for (const [name, { value, limit, unit }] of Object.entries(figures)) {
-    console.log(`${name.padEnd(26)}${value.toFixed(3).padStart(10)} ${unit}${limit === null ? "" : `  (limit ${limit.toFixed(3)})`}`);
+function figuresOf(measured: readonly MeasuredWork[]): Record<string, Figure> {
+  const figures: Record<string, Figure> = {};
+  for (const { work, ratio, requiredRatio, oursMs, coldMs, referenceMs, memoryMb } of measured) {
+    figures[`${work}Ratio`] = { value: ratio, limit: requiredRatio, unit: "times quicker than mgcv" };
+    figures[`${work}Ms`] = { value: oursMs, limit: referenceMs / requiredRatio, unit: "ms" };
+    figures[`${work}ColdMs`] = { value: coldMs, limit: null, unit: "ms" };
+    figures[`${work}ReferenceMs`] = { value: referenceMs, limit: null, unit: "ms" };
+    if (work === "everything") figures.everythingMemoryMb = { value: memoryMb, limit: memoryLimitMb, unit: "MB" };
   }
-  if (json) console.log(JSON.stringify({ bench: "engine", ok, figures }));
-  if (!ok) process.exitCode = 1;
+  return figures;
 }
 
-if (process.argv[1] === fileURLToPath(import.meta.url)) run({ json: process.argv.includes("--json") });
+function print(measured: readonly MeasuredWork[]): void {
+  const line = (cells: string[]) => console.log(cells[0].padEnd(50) + cells.slice(1).map((cell) => cell.padStart(11)).join(""));
+  line(["per model", "rows", "ours ms", "cold ms", "mgcv ms", "ratio", "required", "fitted gap", "edf gap", "memory MB"]);
+  for (const { title, rows, models, oursMs, coldMs, referenceMs, ratio, requiredRatio, largestDifferences, memoryMb } of measured) {
+    line([
+      title, String(Math.round(rows / models)), oursMs.toFixed(3), coldMs.toFixed(1), referenceMs.toFixed(1), `1/${ratio.toFixed(0)}`,
+      `1/${requiredRatio}`, largestDifferences.fitted.toExponential(1), largestDifferences.edf.toExponential(1), memoryMb.toFixed(0),
+    ]);
+  }
+}
+
+const option = process.argv.indexOf("--only");
+const only = option < 0 ? null : (process.argv[option + 1] ?? "").split(",");
+const unknown = only?.filter((name) => !works.some((work) => work.name === name)) ?? [];
+if (unknown.length > 0) throw new Error(`There is no work ${unknown.join(", ")}: choose among ${works.map(({ name }) => name).join(", ")}.`);
+
+await ensureR({ say: (text: string) => console.error(text), stopping: new AbortController().signal });
+const { reference: { madeWith, blas }, measured } = measure(only ?? works.map(({ name }) => name));
+console.log(`mgcv ${madeWith.packages.mgcv}, R ${madeWith.r}, ${madeWith.lapack}, ${blas}; Node.js ${process.versions.node}`);
+print(measured);
+
+const growth = only ? [] : measureGrowth();
+if (!only) {
+  growthLines(growth).forEach((line) => console.log(line));
+  saveGrowthPicture(growth);
+}
+
+const figures = figuresOf(measured);
+const isOk = measured.every(({ ratio, requiredRatio }) => ratio >= requiredRatio)
+  && (figures.everythingMemoryMb?.value ?? 0) <= memoryLimitMb;
+if (process.argv.includes("--json")) console.log(JSON.stringify({ bench: "engine", ok: isOk, figures, works: measured, growth }));
+process.exitCode = isOk ? 0 : 1;
