@@ -100,9 +100,9 @@ describe("Splines and distributions agree with R's", () => {
     mean.forEach((value, row) => {
       const upper = probability[row] > 0.5;
       const level = upper ? 2 * probability[row] - 1 : 1 - 2 * probability[row];
-      const certain = { linearPredictor: Math.log(value), standardError: 0, dispersion: dispersion[row], level, quantile: 0 };
-      const whole = countInterval({ ...certain, fractional: false });
-      const continuous = countInterval({ ...certain, fractional: true });
+      const certain = { linearPredictor: Math.log(value), standardError: 0, level, quantile: 0 };
+      const whole = countInterval({ ...certain, fractional: false }, () => dispersion[row]);
+      const continuous = countInterval({ ...certain, fractional: true }, () => dispersion[row]);
       expect(upper ? whole.upper : whole.lower).toBe(Math.abs(count[row]));
       const difference = (upper ? continuous.upper : continuous.lower) - weight[row];
       expect(Math.abs(difference)).toBeLessThan(1e-8 * weight[row] + 1e-12);
