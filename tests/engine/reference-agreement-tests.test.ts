@@ -1,0 +1,10 @@
+import { describe, it } from "vitest";
+import { expectCriterionAgreement, expectTestAgreement, testedCases } from "./support/agreement-tests";
+import { committedReference } from "./support/reference-files";
+
+const reference = committedReference("tests-of-terms");
+
+describe("Tests of terms and information criteria agree with the reference package's", () => {
+  it.each(testedCases)("Wald-type tests of curves, and of a factor's levels: $name", (one) => expectTestAgreement(reference, one));
+  it.each(testedCases)("conditional AIC: $name", (one) => expectCriterionAgreement(reference, one));
+});
