@@ -4,7 +4,8 @@ import type { ModelData } from "../types";
 /** Quotes names for a message: "price", "depth". */
 export const quoted = (names: readonly string[]): string => names.map((name) => `"${name}"`).join(", ");
 
-function rawColumn(data: ModelData, name: string, role: string): ModelData[string] {
+/** A column as given. @throws EngineError column-missing. */
+export function rawColumn(data: ModelData, name: string, role: string): ModelData[string] {
   if (!Object.hasOwn(data, name)) {
     throw new EngineError("column-missing", `Column "${name}" (${role}) is missing; the data has ${quoted(Object.keys(data)) || "no columns"}.`);
   }
@@ -91,15 +92,25 @@ export function covariate(data: ModelData, from: { column: string; log?: boolean
 export function levelColumn(data: ModelData, name: string, role: string): string[] {
   const raw = rawColumn(data, name, role);
   const levels = new Array<string>(raw.length);
-  for (let row = 0; row < raw.length; row++) {
-    const value = raw[row];
-    if (typeof value === "number" && !Number.isFinite(value)) {
-      throw new EngineError("value-not-finite", `Column "${name}" (${role}) must be finite; row ${row + 1} is ${value}.`);
-    }
-    if (typeof value !== "number" && typeof value !== "string") {
-      throw new EngineError("column-kind", `Column "${name}" (${role}) must hold text or numbers; row ${row + 1} is ${JSON.stringify(value)}.`);
-    }
-    levels[row] = String(value);
-  }
+  for (let row = 0; row < raw.length; row++) levels[row] = levelName(raw[row], { column: name, role, row });
   return levels;
+}
+
+/**
+ * Name of one row's level.
+ *
+ * @param at.row counted from 0.
+ * @throws EngineError column-kind, value-not-finite.
+ * @example levelName(1, { column: "deal", role: "factor", row: 0 }); // "1"
+ */
+export function levelName(value: unknown, at: { column: string; role: string; row: number }): string {
+  if (typeof value === "string") return value;
+  const { column, role, row } = at;
+  if (typeof value !== "number") {
+    throw new EngineError("column-kind", `Column "${column}" (${role}) must hold text or numbers; row ${row + 1} is ${JSON.stringify(value)}.`);
+  }
+  if (!Number.isFinite(value)) {
+    throw new EngineError("value-not-finite", `Column "${column}" (${role}) must be finite; row ${row + 1} is ${value}.`);
+  }
+  return String(value);
 }

@@ -3,7 +3,7 @@ import type { SplineRows } from "../linalg/sparse-rows";
 import type { FactorSmoothBasis, FactorSmoothTerm, ModelData } from "../types";
 import type { BasisKind } from "./basis-kind";
 import { levelColumn, numberColumn } from "./columns";
-import { levelPositions, sortedLevels, splinesPerLevel } from "./levels";
+import { learnLevels, levelPositions, splinesPerLevel } from "./levels";
 import { outsideRange } from "./ranges";
 import { seenPerLevel } from "./seen-values";
 import { gridLogSlopes, gridRows, learnGrid } from "./spline-grid";
@@ -22,9 +22,7 @@ export const defaultFactorSmoothSize = 6;
 export const factorSmooth: BasisKind<FactorSmoothTerm, FactorSmoothBasis> = {
   learn(term, id, data) {
     const learnt = learnGrid({ ...term, size: term.size ?? defaultFactorSmoothSize, id, role }, data);
-    const perRow = levelColumn(data, term.group, groupRole);
-    const levels = sortedLevels(perRow);
-    const index = levelPositions(levels, perRow);
+    const { levels, index } = learnLevels(data, term.group, groupRole);
     return {
       basis: { kind: "factor-smooth", ...learnt.grid, group: term.group, levels, toCoefficients: partsOf(learnt.grid, learnt.rows, learnt.x) },
       rows: splinesPerLevel(learnt.rows, index, levels.length),

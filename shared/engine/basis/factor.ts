@@ -2,7 +2,7 @@ import { EngineError } from "../errors";
 import type { FactorBasis, FactorTerm } from "../types";
 import type { BasisKind } from "./basis-kind";
 import { levelColumn, quoted } from "./columns";
-import { knownPositions, levelPositions, sortedLevels } from "./levels";
+import { knownPositions, learnLevels } from "./levels";
 import { seenLevels } from "./seen-values";
 
 const role = "factor";
@@ -13,8 +13,7 @@ const role = "factor";
  */
 export const factor: BasisKind<FactorTerm, FactorBasis> = {
   learn(term, _id, data) {
-    const perRow = levelColumn(data, term.column, role);
-    const levels = sortedLevels(perRow);
+    const { levels, index } = learnLevels(data, term.column, role);
     const reference = term.reference ?? levels[0];
     if (!levels.includes(reference)) {
       throw new EngineError(
@@ -22,7 +21,6 @@ export const factor: BasisKind<FactorTerm, FactorBasis> = {
         `Reference level "${reference}" of factor "${term.column}" is not among its levels ${quoted(levels)}.`,
       );
     }
-    const index = levelPositions(levels, perRow);
     return {
       basis: { kind: "factor", column: term.column, levels, reference },
       rows: { storage: "index", width: levels.length, index, values: null },

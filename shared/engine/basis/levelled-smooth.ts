@@ -3,7 +3,7 @@ import type { SplineRows } from "../linalg/sparse-rows";
 import type { LevelledSmoothBasis, ModelData } from "../types";
 import type { BasisKind } from "./basis-kind";
 import { levelColumn, numberColumn } from "./columns";
-import { knownPositions, levelPositions, sortedLevels, splinesPerLevel } from "./levels";
+import { knownPositions, learnLevels, splinesPerLevel } from "./levels";
 import { outsideRange } from "./ranges";
 import type { ScaledSmoothTerm } from "./scaled-smooth";
 import { seenPerLevel } from "./seen-values";
@@ -17,9 +17,7 @@ const byRole = "smooth's by";
 export const levelledSmooth: BasisKind<ScaledSmoothTerm, LevelledSmoothBasis> = {
   learn(term, id, data) {
     const learnt = learnGrid({ ...term, size: term.size ?? defaultSmoothSize, id, role }, data);
-    const perRow = levelColumn(data, term.by, byRole);
-    const levels = sortedLevels(perRow);
-    const index = levelPositions(levels, perRow);
+    const { levels, index } = learnLevels(data, term.by, byRole);
     const rows = splinesPerLevel(learnt.rows, index, levels.length);
     const basis: LevelledSmoothBasis = { kind: "levelled-smooth", ...learnt.grid, by: term.by, levels, centring: levelMeans(rows, index, levels.length) };
     const seen = { ...learnt.seen, byLevel: seenPerLevel(numberColumn(data, term.column, role), index, levels.length) };

@@ -1,9 +1,35 @@
 import { EngineError } from "../errors";
 import type { SplineRows } from "../linalg/sparse-rows";
-import { quoted } from "./columns";
+import type { ModelData } from "../types";
+import { levelName, quoted, rawColumn } from "./columns";
 
-/** The levels of a column in sorted order, numbers by size. O(n). */
-export const sortedLevels = (perRow: readonly string[]): string[] => [...new Set(perRow)].sort(byNumberThenText);
+/**
+ * The levels of a column in sorted order (numbers by size), and the position of each row's. O(n): a value is looked at
+ * closely the first time it is met only.
+ *
+ * @throws EngineError column-missing, column-kind, value-not-finite.
+ * @example learnLevels({ deal: [1, 0, 1] }, "deal", "factor"); // levels "0", "1"; index 1, 0, 1
+ */
+export function learnLevels(data: ModelData, column: string, role: string): { levels: string[]; index: Int32Array } {
+  const raw = rawColumn(data, column, role);
+  const codes = new Map<string | number, number>();
+  const met: string[] = [];
+  const index = new Int32Array(raw.length);
+  for (let row = 0; row < raw.length; row++) {
+    const value = raw[row];
+    let code = codes.get(value);
+    if (code === undefined) {
+      code = met.push(levelName(value, { column, role, row })) - 1;
+      codes.set(value, code);
+    }
+    index[row] = code;
+  }
+  // A number and its text are the same level.
+  const levels = [...new Set(met)].sort(byNumberThenText);
+  const positions = met.map((level) => levels.indexOf(level));
+  for (let row = 0; row < index.length; row++) index[row] = positions[index[row]];
+  return { levels, index };
+}
 
 function byNumberThenText(left: string, right: string): number {
   const difference = Number(left) - Number(right);
@@ -18,7 +44,9 @@ function byNumberThenText(left: string, right: string): number {
  */
 export function levelPositions(levels: readonly string[], perRow: readonly string[]): Int32Array {
   const positions = new Map(levels.map((level, position) => [level, position]));
-  return Int32Array.from(perRow, (level) => positions.get(level) ?? -1);
+  const index = new Int32Array(perRow.length);
+  for (let row = 0; row < index.length; row++) index[row] = positions.get(perRow[row]) ?? -1;
+  return index;
 }
 
 /**

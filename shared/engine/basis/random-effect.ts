@@ -2,7 +2,7 @@ import type { IndexRows } from "../linalg/sparse-rows";
 import type { ModelData, RandomEffectBasis, RandomEffectTerm } from "../types";
 import type { BasisKind } from "./basis-kind";
 import { levelColumn, numberColumn } from "./columns";
-import { levelPositions, sortedLevels } from "./levels";
+import { learnLevels, levelPositions } from "./levels";
 import { seenLevels } from "./seen-values";
 
 const role = "random-effect";
@@ -14,10 +14,8 @@ const byRole = "random-effect's by";
  */
 export const randomEffect: BasisKind<RandomEffectTerm, RandomEffectBasis> = {
   learn(term, _id, data) {
-    const perRow = levelColumn(data, term.column, role);
-    const levels = sortedLevels(perRow);
+    const { levels, index } = learnLevels(data, term.column, role);
     const basis: RandomEffectBasis = { kind: "random-effect", column: term.column, by: term.by ?? null, levels };
-    const index = levelPositions(levels, perRow);
     return { basis, rows: rowsAt(basis, index, data), seen: seenLevels(levels, index), observedRange: null, warnings: [] };
   },
   rows: (basis, data) => rowsAt(basis, positionsIn(basis, data), data),

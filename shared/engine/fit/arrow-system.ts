@@ -1,4 +1,5 @@
 import { backwardSolve, choleskyInPlace, forwardSolve, invertFactored, logDeterminant } from "../linalg/cholesky";
+import { multiplyRows, subtractSquare } from "../linalg/dense-products";
 import type { DroppedColumn } from "../linalg/dropping-cholesky";
 import { addPenalty, factorUnpenalised, traceOwn } from "./dense-system";
 import type { LikelihoodState } from "./likelihood-state";
@@ -151,8 +152,9 @@ function eliminateGroups(
     forwardSolveRows(block, size, rows, shared);
     forwardSolve(block, size, right);
     for (let k = 0; k < size; k++) explained += right[k] * right[k];
-    subtractProducts({ rows, right, size, shared }, state);
+    subtractVector({ rows, right, shared }, state.coefficients);
   }
+  subtractSquare(link, { count: count * size, width: shared }, state.factor);
   return { logDeterminant: determinant, explained };
 }
 
@@ -169,22 +171,11 @@ function forwardSolveRows(factor: Float64Array, size: number, rows: Float64Array
   }
 }
 
-/** Takes the group's part off the shared matrix (lower triangle) and vector. */
-function subtractProducts(
-  of: { rows: Float64Array; right: Float64Array; size: number; shared: number }, state: LikelihoodState,
-): void {
-  const { rows, right, size, shared } = of;
-  const { factor, coefficients } = state;
-  for (let k = 0; k < size; k++) {
-    const from = k * shared;
+/** Takes the group's part off the shared vector. */
+function subtractVector({ rows, right, shared }: { rows: Float64Array; right: Float64Array; shared: number }, vector: Float64Array): void {
+  for (let k = 0; k < right.length; k++) {
     const value = right[k];
-    for (let i = 0; i < shared; i++) {
-      const left = rows[from + i];
-      if (left === 0) continue;
-      coefficients[i] -= left * value;
-      const to = i * shared;
-      for (let j = 0; j <= i; j++) factor[to + j] -= left * rows[from + j];
-    }
+    for (let i = 0; i < shared; i++) vector[i] -= value * rows[k * shared + i];
   }
 }
 
@@ -199,8 +190,9 @@ export function traceArrow(system: ArrowSystem, penalties: readonly Penalty[], s
   invertFactored(state.factor, shared, state.inverse);
   const traces = new Float64Array(size);
   const squares = new Float64Array(size);
+  for (let group = 0; group < count; group++) goBack({ state, arrow, group, size, shared });
+  multiplyRows(arrow.link, { count: count * size, width: shared }, state.inverse, arrow.spread);
   for (let group = 0; group < count; group++) {
-    goBack({ state, arrow, group, size, shared });
     for (let k = 0; k < size; k++) {
       const at = (group * size + k) * shared;
       let variance = arrow.inner[(group * size + k) * size + k];
@@ -221,28 +213,18 @@ export function traceArrow(system: ArrowSystem, penalties: readonly Penalty[], s
   });
 }
 
-/** One group: K_g = L^-T (L^-1 C_g), its estimates, (B_g + S_g)^-1 and K_g M^-1. */
+/** One group: K_g = L^-T (L^-1 C_g), its estimates and (B_g + S_g)^-1. */
 function goBack(of: { state: LikelihoodState; arrow: ArrowState; group: number; size: number; shared: number }): void {
-  const { state, arrow, group, size, shared } = of;
+  const { state: { coefficients }, arrow, group, size, shared } = of;
   const block = arrow.inner.subarray(group * size * size, (group + 1) * size * size);
   const rows = arrow.link.subarray(group * size * shared, (group + 1) * size * shared);
-  const spread = arrow.spread.subarray(group * size * shared, (group + 1) * size * shared);
   const own = arrow.coefficients.subarray(group * size, (group + 1) * size);
   backwardSolveRows(block, size, rows, shared);
   backwardSolve(block, size, own);
   const factor = block.slice();
   invertFactored(factor, size, block);
-  const { coefficients, inverse } = state;
-  spread.fill(0);
   for (let k = 0; k < size; k++) {
-    const from = k * shared;
-    for (let i = 0; i < shared; i++) {
-      const weight = rows[from + i];
-      if (weight === 0) continue;
-      own[k] -= weight * coefficients[i];
-      const at = i * shared;
-      for (let j = 0; j < shared; j++) spread[from + j] += weight * inverse[at + j];
-    }
+    for (let i = 0; i < shared; i++) own[k] -= rows[k * shared + i] * coefficients[i];
   }
 }
 

@@ -25,9 +25,22 @@ export function fellnerSchallStep(search: PenaltySearch, automatic: readonly num
   tryPenalties(search, next, (trial) => Number.isFinite(trial.criterion));
 }
 
+/**
+ * A step that promises the criterion no more than this is the last: Newton's error being squared each time, what is left
+ * after it is below the gradient's tolerance.
+ */
+const lastFall = 1e-8;
+
+/** Minus gradient x step: twice what a Newton step takes off the criterion. */
+function expectedFall({ current: { gradient } }: PenaltySearch, free: readonly number[], direction: Float64Array): number {
+  let fall = 0;
+  for (let i = 0; i < free.length; i++) fall -= gradient[free[i]] * direction[i];
+  return fall;
+}
+
 /** Penalties still free to move: not at a bound that the gradient points beyond. */
 function movable(search: PenaltySearch, automatic: readonly number[]): number[] {
-  const { gradient, logPenalties } = derivatives(search, "hessian");
+  const { gradient, logPenalties } = derivatives(search, "gradient");
   return automatic.filter((penalty) => {
     const isHeldAbove = logPenalties[penalty] >= search.highest[penalty] && gradient[penalty] <= 0;
     const isHeldBelow = logPenalties[penalty] <= search.lowest[penalty] && gradient[penalty] >= 0;
@@ -40,7 +53,7 @@ const downhillStep = 3;
 
 /** Newton direction of the movable penalties; where the Hessian is not positive definite, each by its own curvature. */
 function newtonDirection(search: PenaltySearch, free: readonly number[]): Float64Array {
-  const { gradient, hessian } = search.current;
+  const { gradient, hessian } = derivatives(search, "hessian");
   const count = search.penalties.length;
   const size = free.length;
   const matrix = new Float64Array(size * size);
@@ -92,14 +105,17 @@ export function newtonSteps(
     const free = movable(search, automatic);
     if (free.every((penalty) => Math.abs(search.current.gradient[penalty]) < gradientTolerance)) return true;
     if (options.stopNear !== undefined && isNear(search, automatic, options.stopNear)) return true;
-    if (step === options.maxSteps || !descend(search, free)) return false;
+    if (step === options.maxSteps) return false;
+    const direction = newtonDirection(search, free);
+    const fall = expectedFall(search, free, direction);
+    if (!descend(search, free, direction)) return false;
+    if (fall < lastFall) return true;
   }
   return false;
 }
 
 /** @returns false where no fraction of the step lowers the criterion: rounding is all that is left, or the system is singular. */
-function descend(search: PenaltySearch, free: readonly number[]): boolean {
-  const direction = newtonDirection(search, free);
+function descend(search: PenaltySearch, free: readonly number[], direction: Float64Array): boolean {
   const from = search.current.logPenalties.slice();
   const before = search.current.criterion;
   const allowance = 1e-13 * Math.abs(before);

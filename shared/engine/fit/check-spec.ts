@@ -1,6 +1,7 @@
 import { termId } from "../basis/term-basis";
 import { EngineError } from "../errors";
 import type { FactorSmoothTerm, ModelData, ModelSpec, RandomEffectTerm, SmoothTerm } from "../types";
+import { checkVaryingDegrees } from "./check-smoothness";
 import { checkTerm, requireName } from "./check-term";
 
 /** Names of contributions that are no term's. */
@@ -61,4 +62,5 @@ function checkVarying(term: SmoothTerm, by: string, { spec, data }: { spec: Mode
   if (!isText && term.shape !== undefined) {
     throw new EngineError("spec-invalid", `Term "${id}": shape is "${term.shape}"; a curve times the numbers of "${by}" cannot have one.`);
   }
+  checkVaryingDegrees(term, id, isText ? new Set(Array.from<string | number>(data[by])).size : null);
 }

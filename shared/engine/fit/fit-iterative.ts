@@ -28,7 +28,7 @@ type Problem = WorkingProblem & {
 };
 
 /** Weighted mean square by which the linear predictor may still move at convergence, and theta as a share of itself. */
-const movementTolerance = 1e-14;
+const movementTolerance = 1e-13;
 const thetaTolerance = 1e-8;
 
 /**

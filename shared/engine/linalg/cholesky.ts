@@ -64,24 +64,55 @@ export function backwardSolve(factor: Float64Array, size: number, vector: Float6
  * @example invertFactored(factor, size, inverse);
  */
 export function invertFactored(factor: Float64Array, size: number, inverse: Float64Array): void {
+  invertLower(factor, size);
+  for (let row = 0; row < size; row++) inverse.fill(0, row * size, row * size + row + 1);
+  // L^-T L^-1, a row of L^-1 at a time: its products go to the lower triangle.
+  let k = 0;
+  for (; k + 1 < size; k += 2) addTwoRows(factor, k, size, inverse);
+  if (k < size) addRow(factor, k, size, inverse);
   for (let row = 0; row < size; row++) {
-    const rowStart = row * size;
-    const reciprocal = 1 / factor[rowStart + row];
-    for (let column = 0; column < row; column++) {
-      let sum = 0;
-      for (let k = column; k < row; k++) sum += factor[rowStart + k] * factor[k * size + column];
-      factor[rowStart + column] = -sum * reciprocal;
-    }
-    factor[rowStart + row] = reciprocal;
+    for (let column = 0; column < row; column++) inverse[column * size + row] = inverse[row * size + column];
   }
+}
+
+/** L^-1 in place, row by row from the rows above. */
+function invertLower(factor: Float64Array, size: number): void {
   for (let row = 0; row < size; row++) {
-    for (let column = 0; column <= row; column++) {
-      let sum = 0;
-      for (let k = row; k < size; k++) sum += factor[k * size + row] * factor[k * size + column];
-      inverse[row * size + column] = sum;
-      inverse[column * size + row] = sum;
+    const start = row * size;
+    const reciprocal = 1 / factor[start + row];
+    for (let k = 0; k < row; k++) {
+      const weight = -factor[start + k] * reciprocal;
+      const from = k * size;
+      factor[start + k] = 0;
+      if (weight === 0) continue;
+      for (let column = 0; column <= k; column++) factor[start + column] += weight * factor[from + column];
     }
+    factor[start + row] = reciprocal;
   }
+}
+
+function addRow(factor: Float64Array, k: number, size: number, inverse: Float64Array): void {
+  const from = k * size;
+  for (let row = 0; row <= k; row++) {
+    const weight = factor[from + row];
+    const to = row * size;
+    for (let column = 0; column <= row; column++) inverse[to + column] += weight * factor[from + column];
+  }
+}
+
+/** Rows k and k + 1 of L^-1 at once; row k has nothing in column k + 1. */
+function addTwoRows(factor: Float64Array, k: number, size: number, inverse: Float64Array): void {
+  const upper = k * size;
+  const lower = upper + size;
+  for (let row = 0; row <= k; row++) {
+    const first = factor[upper + row];
+    const second = factor[lower + row];
+    const to = row * size;
+    for (let column = 0; column <= row; column++) inverse[to + column] += first * factor[upper + column] + second * factor[lower + column];
+  }
+  const weight = factor[lower + k + 1];
+  const to = (k + 1) * size;
+  for (let column = 0; column <= k + 1; column++) inverse[to + column] += weight * factor[lower + column];
 }
 
 /**

@@ -110,9 +110,7 @@ export function addTransposeTimes(rows: SparseRows, vector: Float64Array, out: F
     if (values === null) for (let row = 0; row < count; row++) out[first + index[row]] += vector[row];
     else for (let row = 0; row < count; row++) out[first + index[row]] += values[row] * vector[row];
   } else if (rows.storage === "spline") {
-    for (let row = 0; row < count; row++) {
-      for (let k = 0; k < 4; k++) out[first + columnOf(rows, row, k)] += rows.values[4 * row + k] * vector[row];
-    }
+    addSplineTranspose(rows, vector, out, first);
   } else if (rows.storage === "dense") {
     const { width, values } = rows;
     for (let row = 0, at = 0; row < count; row++) {
@@ -121,6 +119,22 @@ export function addTransposeTimes(rows: SparseRows, vector: Float64Array, out: F
   } else {
     addTensorTranspose(rows, vector, out, first);
   }
+}
+
+/** Summed over the padded columns first, so that no row asks for the circle. */
+function addSplineTranspose(rows: SplineRows, vector: Float64Array, out: Float64Array, first: number): void {
+  const { width, values, first: columns } = rows;
+  const sums = new Float64Array(width + 3);
+  for (let row = 0, at = 0; row < vector.length; row++, at += 4) {
+    const weight = vector[row];
+    const to = columns[row];
+    sums[to] += values[at] * weight;
+    sums[to + 1] += values[at + 1] * weight;
+    sums[to + 2] += values[at + 2] * weight;
+    sums[to + 3] += values[at + 3] * weight;
+  }
+  for (let k = 0; k < width; k++) out[first + k] += sums[k];
+  if (rows.wraps) for (let k = 0; k < 3; k++) out[first + k] += sums[width + k];
 }
 
 function addTensorTranspose({ left, right }: TensorRows, vector: Float64Array, out: Float64Array, first: number): void {
