@@ -1,5 +1,7 @@
+import betainc from "@stdlib/math-base-special-betainc";
 import gammaln from "@stdlib/math-base-special-gammaln";
 import { EngineError } from "../errors";
+import { betweenQuantile } from "./between-quantile";
 import type { IterativeRules, LikelihoodRows, WorkingRows } from "./family-rules";
 import { nullMean } from "./null-mean";
 import { pearsonStatistic } from "./pearson-statistic";
@@ -19,6 +21,7 @@ export const binomial: IterativeRules = {
   fitting: "iterative",
   scale: "known",
   check: checkShares,
+  checkValues: checkShares,
   start: ({ response, weights }) => response.map((share, row) => {
     const successes = weights[row] * share + 0.5;
     return Math.log(successes / (weights[row] + 1 - successes));
@@ -45,7 +48,18 @@ export const binomial: IterativeRules = {
     return { lower: mean(linearPredictor - half), upper: mean(linearPredictor + half) };
   },
   observationInterval: null,
+  quantileResidual({ response, linearPredictor, weight }, uniform) {
+    const successes = weight * response;
+    const mu = mean(linearPredictor);
+    return betweenQuantile({ below: sharesAtMost(successes - 1, weight, mu), atMost: sharesAtMost(successes, weight, mu) }, uniform);
+  },
 };
+
+/** Probability of at most so many successes; the beta function carries on where they are not whole. */
+function sharesAtMost(successes: number, trials: number, mu: number): number {
+  if (successes <= -1) return 0;
+  return successes >= trials ? 1 : betainc(1 - mu, trials - successes, successes + 1);
+}
 
 function checkShares(response: Float64Array, column: string): void {
   for (let row = 0; row < response.length; row++) {

@@ -25,12 +25,33 @@ export type LikelihoodRows = {
   theta: number;
 };
 
+/** A row and what its model says of it, to judge it by. */
+export type ResidualRow = {
+  response: number;
+  linearPredictor: number;
+  /** Prior weight: divides the dispersion; binomial: trials; of no meaning to the negative binomial. */
+  weight: number;
+  dispersion: number;
+  theta: number;
+  fractional: boolean;
+};
+
 /** What every family says about responses and predictions; functions of single rows take and return plain numbers. */
 type CommonRules = {
   /** "known": variance is a function of the mean (and theta) alone, dispersion 1. "unknown": times a dispersion to be estimated. */
   scale: "known" | "unknown";
-  /** @throws EngineError response-invalid, with row, value and rule. */
+  /**
+   * Whether a model can be fitted to these responses.
+   *
+   * @throws EngineError response-invalid, with row, value and rule.
+   */
   check(response: Float64Array, column: string): void;
+  /**
+   * Whether each could be a response by itself.
+   *
+   * @throws EngineError as `check`.
+   */
+  checkValues(response: Float64Array, column: string): void;
   /** Expected response at a linear predictor. */
   mean(linearPredictor: number, dispersion: number): number;
   /** Value half of new rows fall below, or null where the family gives none (counts, shares and quasi families). */
@@ -43,6 +64,11 @@ type CommonRules = {
   meanInterval(row: RowUncertainty): Interval;
   /** Interval of a new row's value, the coefficients' uncertainty mixed in; null where only the mean can be predicted. */
   observationInterval: ((row: RowUncertainty) => Interval) | null;
+  /**
+   * Standard normal quantile of the response's place in its distribution; between the two ends of a count's place at `uniform`,
+   * from 0 to 1. Counts, amounts and shares stay within 8.2 of 0.
+   */
+  quantileResidual(row: ResidualRow, uniform: number): number;
 };
 
 /** A family whose transformed response is normal: the restricted likelihood is exact and one solve is enough. */

@@ -1,4 +1,5 @@
 import type { ExactRules } from "./family-rules";
+import { standardised } from "./standardised";
 import { normalLogLikelihood } from "./normal-log-likelihood";
 
 /** Normal response, identity link. */
@@ -6,6 +7,7 @@ export const gaussian: ExactRules = {
   fitting: "exact",
   scale: "unknown",
   check: () => undefined,
+  checkValues: () => undefined,
   transform: (response) => response.slice(),
   mean: (linearPredictor) => linearPredictor,
   median: (linearPredictor) => linearPredictor,
@@ -18,4 +20,5 @@ export const gaussian: ExactRules = {
     const half = quantile * Math.hypot(standardError, Math.sqrt(dispersion));
     return { lower: linearPredictor - half, upper: linearPredictor + half };
   },
+  quantileResidual: ({ response, linearPredictor, weight, dispersion }) => standardised(response - linearPredictor, dispersion / weight),
 };

@@ -1,6 +1,7 @@
 import { EngineError } from "../errors";
 import { exponential } from "./exponential";
 import type { ExactRules } from "./family-rules";
+import { standardised } from "./standardised";
 import { normalLogLikelihood } from "./normal-log-likelihood";
 
 /**
@@ -10,16 +11,8 @@ import { normalLogLikelihood } from "./normal-log-likelihood";
 export const logGaussian: ExactRules = {
   fitting: "exact",
   scale: "unknown",
-  check(response, column) {
-    for (let row = 0; row < response.length; row++) {
-      if (!(response[row] > 0)) {
-        throw new EngineError(
-          "response-invalid",
-          `Response "${column}" must be above 0 for log-gaussian; row ${row + 1} is ${response[row]}.`,
-        );
-      }
-    }
-  },
+  check: checkPositive,
+  checkValues: checkPositive,
   transform: (response) => response.map(Math.log),
   mean: (linearPredictor, dispersion) => exponential(linearPredictor + dispersion / 2),
   median: exponential,
@@ -37,4 +30,17 @@ export const logGaussian: ExactRules = {
     const half = quantile * Math.hypot(standardError, Math.sqrt(dispersion));
     return { lower: exponential(linearPredictor - half), upper: exponential(linearPredictor + half) };
   },
+  quantileResidual: ({ response, linearPredictor, weight, dispersion }) =>
+    standardised(Math.log(response) - linearPredictor, dispersion / weight),
 };
+
+function checkPositive(response: Float64Array, column: string): void {
+  for (let row = 0; row < response.length; row++) {
+    if (!(response[row] > 0)) {
+      throw new EngineError(
+        "response-invalid",
+        `Response "${column}" must be above 0 for log-gaussian; row ${row + 1} is ${response[row]}.`,
+      );
+    }
+  }
+}

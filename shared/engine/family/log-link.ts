@@ -22,13 +22,12 @@ export function logLinkInterval(row: Pick<RowUncertainty, "linearPredictor" | "s
 export const logLinkStart = ({ response }: { response: Float64Array }): Float64Array => response.map((value) => Math.log(value + 0.1));
 
 /**
- * Counts, whole or fractional (goods sold by weight), must not be negative, and not all zero.
+ * Counts, whole or fractional (goods sold by weight), must not be negative.
  *
  * @throws EngineError response-invalid, with row, value and rule.
  * @example checkUnits(Float64Array.of(3, 0, 2), { column: "units", family: "quasi-poisson" });
  */
 export function checkUnits(response: Float64Array, { column, family }: { column: string; family: Family }): void {
-  let total = 0;
   for (let row = 0; row < response.length; row++) {
     if (response[row] < 0) {
       throw new EngineError(
@@ -36,9 +35,18 @@ export function checkUnits(response: Float64Array, { column, family }: { column:
         `Response "${column}" must not be negative for ${family}; row ${row + 1} is ${response[row]}.`,
       );
     }
-    total += response[row];
   }
-  if (response.length > 0 && !(total > 0)) {
-    throw new EngineError("response-invalid", `Response "${column}" is 0 in every row; ${family} needs a value above 0.`);
+}
+
+/**
+ * A logarithm needs something sold somewhere.
+ *
+ * @throws EngineError as `checkUnits`, and where all are zero.
+ * @example checkSomeUnits(Float64Array.of(3, 0, 2), { column: "units", family: "quasi-poisson" });
+ */
+export function checkSomeUnits(response: Float64Array, of: { column: string; family: Family }): void {
+  checkUnits(response, of);
+  if (response.length > 0 && response.every((value) => value === 0)) {
+    throw new EngineError("response-invalid", `Response "${of.column}" is 0 in every row; ${of.family} needs a value above 0.`);
   }
 }

@@ -1,8 +1,10 @@
+import { betweenQuantile } from "./between-quantile";
 import { exponential } from "./exponential";
 import type { IterativeRules, LikelihoodRows, WorkingRows } from "./family-rules";
 import { countLogDensity } from "./count-distribution";
 import { countInterval } from "./count-interval";
-import { checkUnits, logLinkInterval, logLinkStart } from "./log-link";
+import { countPlace } from "./count-place";
+import { checkSomeUnits, checkUnits, logLinkInterval, logLinkStart } from "./log-link";
 import { logOfRatio } from "./gamma-ratio";
 import { estimateTheta } from "./negative-binomial-theta";
 import { nullMean } from "./null-mean";
@@ -19,7 +21,8 @@ const variance = (mu: number, theta: number): number => mu * (1 + mu / theta);
 export const negativeBinomial: IterativeRules = {
   fitting: "iterative",
   scale: "known",
-  check: (response, column) => checkUnits(response, { column, family: "negative-binomial" }),
+  check: (response, column) => checkSomeUnits(response, { column, family: "negative-binomial" }),
+  checkValues: (response, column) => checkUnits(response, { column, family: "negative-binomial" }),
   start: logLinkStart,
   mean,
   median: null,
@@ -43,6 +46,10 @@ export const negativeBinomial: IterativeRules = {
   estimateTheta,
   meanInterval: logLinkInterval,
   observationInterval: (row) => countInterval(row, (mu) => 1 + mu / row.theta),
+  quantileResidual({ response, linearPredictor, theta, fractional }, uniform) {
+    const mu = mean(linearPredictor);
+    return betweenQuantile(countPlace({ response, mean: mu, ratio: 1 + mu / theta, fractional }), uniform);
+  },
 };
 
 /** Working response eta - offset + (y - mu) / mu, working weight mu / (1 + mu / theta). */

@@ -1,7 +1,9 @@
+import { betweenQuantile } from "./between-quantile";
 import { exponential } from "./exponential";
 import type { IterativeRules, WorkingRows } from "./family-rules";
 import { countInterval } from "./count-interval";
-import { checkUnits, logLinkInterval, logLinkStart } from "./log-link";
+import { countPlace } from "./count-place";
+import { checkSomeUnits, checkUnits, logLinkInterval, logLinkStart } from "./log-link";
 import { pearsonStatistic } from "./pearson-statistic";
 
 const variance = (mean: number): number => mean;
@@ -13,7 +15,8 @@ const variance = (mean: number): number => mean;
 export const quasiPoisson: IterativeRules = {
   fitting: "iterative",
   scale: "unknown",
-  check: (response, column) => checkUnits(response, { column, family: "quasi-poisson" }),
+  check: (response, column) => checkSomeUnits(response, { column, family: "quasi-poisson" }),
+  checkValues: (response, column) => checkUnits(response, { column, family: "quasi-poisson" }),
   start: logLinkStart,
   mean: (linearPredictor) => exponential(linearPredictor),
   median: null,
@@ -36,6 +39,9 @@ export const quasiPoisson: IterativeRules = {
   estimateTheta: null,
   meanInterval: logLinkInterval,
   observationInterval: (row) => countInterval(row, () => row.dispersion),
+  quantileResidual({ response, linearPredictor, weight, dispersion, fractional }, uniform) {
+    return betweenQuantile(countPlace({ response, mean: exponential(linearPredictor), ratio: dispersion / weight, fractional }), uniform);
+  },
 };
 
 /** Working response eta - offset + (y - mu) / mu, working weight mu (Green & Silverman 1994, section 5.1.2). */
