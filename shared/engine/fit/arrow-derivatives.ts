@@ -1,3 +1,4 @@
+import { rowProducts } from "../linalg/dense-products";
 import type { ArrowState, ArrowSystem } from "./arrow-system";
 import { pairProducts } from "./dense-system";
 import type { LikelihoodState } from "./likelihood-state";
@@ -151,17 +152,14 @@ function addBetweenGroups(system: ArrowSystem, penalties: readonly Penalty[], st
 }
 
 function directSquares(system: ArrowSystem, state: LikelihoodState): Float64Array {
-  const { size: shared, groups: { count, size } } = system;
+  const { size: width, groups: { count, size } } = system;
   const { link, spread } = state.arrow as ArrowState;
+  const rows = count * size;
+  const between = new Float64Array(rows * rows);
+  rowProducts({ values: spread, count: rows, width }, { values: link, count: rows, width }, between);
   const squares = new Float64Array(size * size);
-  for (let row = 0; row < count * size; row++) {
-    for (let other = 0; other <= row; other++) {
-      let sum = 0;
-      for (let i = 0; i < shared; i++) sum += spread[row * shared + i] * link[other * shared + i];
-      const square = sum * sum;
-      squares[(row % size) * size + (other % size)] += square;
-      if (other !== row) squares[(other % size) * size + (row % size)] += square;
-    }
+  for (let row = 0; row < rows; row++) {
+    for (let other = 0; other < rows; other++) squares[(row % size) * size + (other % size)] += between[row * rows + other] ** 2;
   }
   return squares;
 }

@@ -1,5 +1,5 @@
 import { backwardSolve, choleskyInPlace, forwardSolve, invertFactored, logDeterminant } from "../linalg/cholesky";
-import { multiplyRows, subtractSquare } from "../linalg/dense-products";
+import { rowProducts, subtractSquare } from "../linalg/dense-products";
 import type { DroppedColumn } from "../linalg/dropping-cholesky";
 import { addPenalty, factorUnpenalised, traceOwn } from "./dense-system";
 import type { LikelihoodState } from "./likelihood-state";
@@ -154,7 +154,7 @@ function eliminateGroups(
     for (let k = 0; k < size; k++) explained += right[k] * right[k];
     subtractVector({ rows, right, shared }, state.coefficients);
   }
-  subtractSquare(link, { count: count * size, width: shared }, state.factor);
+  subtractSquare({ values: link, count: count * size, width: shared }, state.factor);
   return { logDeterminant: determinant, explained };
 }
 
@@ -191,7 +191,8 @@ export function traceArrow(system: ArrowSystem, penalties: readonly Penalty[], s
   const traces = new Float64Array(size);
   const squares = new Float64Array(size);
   for (let group = 0; group < count; group++) goBack({ state, arrow, group, size, shared });
-  multiplyRows(arrow.link, { count: count * size, width: shared }, state.inverse, arrow.spread);
+  const links = { values: arrow.link, count: count * size, width: shared };
+  rowProducts(links, { values: state.inverse, count: shared, width: shared }, arrow.spread);
   for (let group = 0; group < count; group++) {
     for (let k = 0; k < size; k++) {
       const at = (group * size + k) * shared;

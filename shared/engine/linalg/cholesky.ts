@@ -1,3 +1,5 @@
+import { squareOfLower } from "./dense-products";
+
 /**
  * Dense Cholesky factorisation and what follows from it, on row-major square matrices in a Float64Array.
  * Plain loops: at the 20 to 60 columns of a sales model they are quicker than a library's general matrices.
@@ -65,11 +67,7 @@ export function backwardSolve(factor: Float64Array, size: number, vector: Float6
  */
 export function invertFactored(factor: Float64Array, size: number, inverse: Float64Array): void {
   invertLower(factor, size);
-  for (let row = 0; row < size; row++) inverse.fill(0, row * size, row * size + row + 1);
-  // L^-T L^-1, a row of L^-1 at a time: its products go to the lower triangle.
-  let k = 0;
-  for (; k + 1 < size; k += 2) addTwoRows(factor, k, size, inverse);
-  if (k < size) addRow(factor, k, size, inverse);
+  squareOfLower(factor, size, inverse);
   for (let row = 0; row < size; row++) {
     for (let column = 0; column < row; column++) inverse[column * size + row] = inverse[row * size + column];
   }
@@ -88,31 +86,8 @@ function invertLower(factor: Float64Array, size: number): void {
       for (let column = 0; column <= k; column++) factor[start + column] += weight * factor[from + column];
     }
     factor[start + row] = reciprocal;
+    factor.fill(0, start + row + 1, start + size);
   }
-}
-
-function addRow(factor: Float64Array, k: number, size: number, inverse: Float64Array): void {
-  const from = k * size;
-  for (let row = 0; row <= k; row++) {
-    const weight = factor[from + row];
-    const to = row * size;
-    for (let column = 0; column <= row; column++) inverse[to + column] += weight * factor[from + column];
-  }
-}
-
-/** Rows k and k + 1 of L^-1 at once; row k has nothing in column k + 1. */
-function addTwoRows(factor: Float64Array, k: number, size: number, inverse: Float64Array): void {
-  const upper = k * size;
-  const lower = upper + size;
-  for (let row = 0; row <= k; row++) {
-    const first = factor[upper + row];
-    const second = factor[lower + row];
-    const to = row * size;
-    for (let column = 0; column <= row; column++) inverse[to + column] += first * factor[upper + column] + second * factor[lower + column];
-  }
-  const weight = factor[lower + k + 1];
-  const to = (k + 1) * size;
-  for (let column = 0; column <= k + 1; column++) inverse[to + column] += weight * factor[lower + column];
 }
 
 /**
