@@ -1,11 +1,13 @@
-import type { FittedModel, FittedTerm, ModelReport, TermReport } from "../types";
-import { basisRows } from "../basis/term-basis";
-import { addRowsTimes } from "../linalg/sparse-rows";
+import type { FittedModel, ModelInformation, ModelReport, TermReport } from "../types";
 import { concurvity } from "./concurvity";
+import { contributionRange } from "./contribution-range";
 import { informationCriterion } from "./information-criterion";
+import { withCentredLevels } from "./level-centring";
 import { rankDegrees } from "./penalty-share";
 import { posteriorOf } from "./posterior";
+import type { Posterior } from "./posterior";
 import { termPlaces } from "./term-places";
+import type { TermPlace } from "./term-places";
 import { testTerm } from "./term-tests";
 
 /**
@@ -18,7 +20,8 @@ import { testTerm } from "./term-tests";
  * @example modelReport(model).terms.map(({ id, edf, test }) => `${id}: ${edf.toFixed(1)}, p = ${test?.pValue.toFixed(3)}`);
  */
 export function modelReport(model: FittedModel): ModelReport {
-  const { deviance, nullDeviance, information } = model;
+  const { deviance, nullDeviance } = model;
+  const information = model.information === null ? null : withCentredLevels(model, model.information);
   const places = information === null ? [] : termPlaces(model, information);
   const posterior = information === null ? null : posteriorOf(model, information);
   const { aic, reason: aicReason } = informationCriterion(model, posterior === null ? null : { posterior, places });
@@ -26,7 +29,7 @@ export function modelReport(model: FittedModel): ModelReport {
   return {
     rowCount: model.rowCount,
     edf: model.edf,
-    terms: termReports(model, { places, posterior, shares: shared?.shares ?? [] }),
+    terms: termReports(model, { information, places, posterior, shares: shared?.shares ?? [] }),
     devianceExplained: nullDeviance > 0 ? 1 - deviance / nullDeviance : 0,
     dispersion: model.dispersion,
     aic, aicReason,
@@ -36,10 +39,14 @@ export function modelReport(model: FittedModel): ModelReport {
   };
 }
 
-type Findings = { places: ReturnType<typeof termPlaces>; posterior: ReturnType<typeof posteriorOf>; shares: (number | null)[] };
+type Findings = {
+  information: ModelInformation | null;
+  places: readonly TermPlace[];
+  posterior: Posterior | null;
+  shares: readonly (number | null)[];
+};
 
-function termReports(model: FittedModel, { places, posterior, shares }: Findings): TermReport[] {
-  const { information } = model;
+function termReports(model: FittedModel, { information, places, posterior, shares }: Findings): TermReport[] {
   const setting = information === null || posterior === null
     ? null
     : { model, information, posterior, places, degrees: rankDegrees(posterior) };
@@ -59,14 +66,4 @@ function termReports(model: FittedModel, { places, posterior, shares }: Findings
       concurvity: shares[at] ?? null,
     };
   });
-}
-
-function contributionRange(model: FittedModel, term: FittedTerm): [number, number] {
-  const rows = basisRows(term.basis, { [term.columns[0]]: term.seen.values });
-  const contributions = new Float64Array(term.seen.values.length);
-  addRowsTimes(rows, model.coefficients, term.first, contributions);
-  return [
-    contributions.reduce((least, value) => Math.min(least, value), Infinity),
-    contributions.reduce((most, value) => Math.max(most, value), -Infinity),
-  ];
 }

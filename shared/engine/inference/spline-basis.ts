@@ -5,8 +5,11 @@ import type { TermPlace } from "./term-places";
 /** A change of the shared coordinates: a = forwards x c, c = backwards x a, both row-major size x size. */
 export type CoordinateBasis = { forwards: Float64Array; backwards: Float64Array };
 
-/** One centred curve: its coordinates' positions, and its splines' coefficients = matrix x coordinates, rows x columns. */
-type Curve = { positions: number[]; matrix: Float64Array; rows: number; columns: number; centring: Float64Array };
+/**
+ * One curve: its coordinates' positions, and its splines' coefficients = matrix x coordinates, rows x columns; `centring`
+ * null where it keeps its constant.
+ */
+type Curve = { positions: number[]; matrix: Float64Array; rows: number; columns: number; centring: Float64Array | null };
 
 /**
  * The basis in which the published correction for chosen penalties takes its Cholesky factor, which depends on it: the
@@ -39,13 +42,13 @@ export function splineBasis({ size }: Posterior, places: readonly TermPlace[]): 
 function curvesOf(place: TermPlace): Curve[] {
   const { term, positions, own, isGrouped } = place;
   const { basis } = term;
-  if (isGrouped || !("centring" in basis) || place.unpenalised === positions.length) return [];
   const { transform, unpenalised, penalised } = termCoordinates(basis);
-  if (positions.length < unpenalised + penalised || basis.kind === "random-walk") return [];
-  if (transform.form === "dense") {
-    return [{ positions, matrix: transform.matrix, rows: basis.centring.length, columns: own.length, centring: basis.centring }];
+  if (isGrouped || positions.length < unpenalised + penalised) return [];
+  if (transform.form === "dense" && (basis.kind === "smooth" || basis.kind === "cyclic-smooth" || basis.kind === "scaled-smooth")) {
+    const centring = basis.kind === "scaled-smooth" ? null : basis.centring;
+    return [{ positions, matrix: transform.matrix, rows: basis.size, columns: own.length, centring }];
   }
-  if (transform.form !== "blocks") return [];
+  if (transform.form !== "blocks" || basis.kind !== "levelled-smooth") return [];
   const { rows, columns, count, matrix, unpenalised: lines } = transform;
   return Array.from({ length: count }, (_, level) => ({
     matrix, rows, columns,
@@ -61,9 +64,12 @@ function curvesOf(place: TermPlace): Curve[] {
  */
 function writeCurve(curve: Curve, first: number, { forwards, backwards }: CoordinateBasis, size: number): void {
   const { positions, matrix, rows, columns, centring } = curve;
-  const length = Math.sqrt(centring.reduce((sum, value) => sum + value * value, 0));
-  const reflected = Float64Array.from(centring, (value, k) => (k === 0 ? value + length : value));
-  const halfSquare = length * (length + centring[0]);
+  // Without centring nothing is reflected, and no spline's coefficient is left out.
+  const means = centring ?? new Float64Array(rows);
+  const length = Math.sqrt(means.reduce((sum, value) => sum + value * value, 0));
+  const reflected = means.map((value, k) => (k === 0 ? value + length : value));
+  const halfSquare = centring === null ? 1 : length * (length + means[0]);
+  const skipped = centring === null ? 0 : 1;
   for (let k = 0; k < columns; k++) {
     let square = 0;
     let mean = 0;
@@ -72,13 +78,13 @@ function writeCurve(curve: Curve, first: number, { forwards, backwards }: Coordi
     for (let i = 0; i < rows; i++) {
       const value = matrix[i * columns + k];
       square += value * value;
-      mean += centring[i] * value;
+      mean += means[i] * value;
       along += reflected[i] * value;
       alongOnes += reflected[i];
     }
     for (let j = 0; j < columns; j++) {
-      const value = matrix[(j + 1) * columns + k];
-      const weight = reflected[j + 1] / halfSquare;
+      const value = matrix[(j + skipped) * columns + k];
+      const weight = reflected[j + skipped] / halfSquare;
       forwards[positions[k] * size + first + j] = (value - along * weight) / square;
       backwards[(first + j) * size + positions[k]] = value - mean - (along - mean * alongOnes) * weight;
     }

@@ -54,7 +54,7 @@ export function testTerm(setting: TestSetting, place: TermPlace): TermTests {
   if (unpenalised === positions.length) return settle(setting, wald(setting, place));
   const columns = positions.map((_position, k) => k);
   const hasLine = term.basis.kind !== "tensor-product";
-  const test = settle(setting, testFunction(setting, place, { columns, information: centredInformation(setting.model, setting.information, place) }));
+  const test = settle(setting, testFunction(setting, place, { columns, information: centredInformation(setting.information, place) }));
   return hasLine ? { ...test, curveTest: settle(setting, testCurve(setting, place)).test } : test;
 }
 
@@ -113,7 +113,7 @@ function testFunction(
 /** The part of a curve that no line (of its own columns, and no constant) reproduces. */
 function testCurve(setting: TestSetting, place: TermPlace): TruncatedTest | null {
   const { unpenalised, positions } = place;
-  const all = centredInformation(setting.model, setting.information, place);
+  const all = centredInformation(setting.information, place);
   const columns = positions.flatMap((_position, k) => (k < unpenalised ? [] : [k]));
   return testFunction(setting, place, { columns, information: withoutSpan(all, positions.length, unpenalised) });
 }
