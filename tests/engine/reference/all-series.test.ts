@@ -6,6 +6,9 @@ import { freshReference } from "../support/reference-files";
  * All 913 series of the orange-juice data, against mgcv as it runs now (about two minutes; see all-series.R). Gaps are the
  * largest difference of a series' linear predictor, in standard deviations. The two programs stop at different optima in some
  * series: one counts against the engine only where its own criterion there is the worse.
+ *
+ * With R 4.2.2 and mgcv 1.8-41: normal, median 1.6e-8, 28 series beyond 1e-3, our criterion the worse in 1 of them;
+ * quasi-Poisson, median 1.8e-7, 47 beyond, the worse in 8.
  */
 const { series } = freshReference("all-series");
 

@@ -1,5 +1,10 @@
 import { describe, expect, it } from "vitest";
 import { expectGaussianAgreement, expectIceCreamAgreement, expectQuasiPoissonAgreement } from "../support/agreement";
+import { expectCountAgreement, expectShareAgreement } from "../support/agreement-families";
+import { groupChecks } from "../support/agreement-groups";
+import { expectNaturalAgreement, expectSplineTerms } from "../support/agreement-local";
+import { expectCriterionAgreement, expectTestAgreement, testedCases } from "../support/agreement-tests";
+import { expectLevelAgreement, expectNumberAgreement, expectSurfaceAgreement } from "../support/agreement-varying";
 import { committedReference, freshReference } from "../support/reference-files";
 import type { References } from "../support/reference-files";
 
@@ -43,4 +48,36 @@ describe("The engine agrees with R as it runs now", () => {
   });
 
   it("on the ice-cream demand regression", () => expectIceCreamAgreement(fresh("linear-models")));
+
+  it("on counts and shares", () => {
+    const { negativeBinomial, binomial } = fresh("counts-and-shares");
+    negativeBinomial.forEach(expectCountAgreement);
+    binomial.forEach(expectShareAgreement);
+  });
+
+  it("on curves per level, times a number and of two columns", () => {
+    const reference = fresh("varying-curves");
+    expectLevelAgreement(reference);
+    expectNumberAgreement(reference);
+    reference.surfaces.forEach(expectSurfaceAgreement);
+  });
+
+  it("on terms on groups and over time", () => {
+    const reference = fresh("groups");
+    for (const check of groupChecks) check(reference);
+  });
+
+  it("on regression and smoothing splines", () => {
+    const { natural } = fresh("natural-and-local");
+    natural.fits.forEach((fit) => expectNaturalAgreement(natural, fit));
+    const { splines } = fresh("local-models");
+    splines.oneTerm.forEach(({ df, terms }) => expectSplineTerms(splines, { x: df }, terms));
+  });
+
+  it("on tests of terms and information criteria", () => {
+    for (const one of testedCases) {
+      expectTestAgreement(fresh("tests-of-terms"), one);
+      expectCriterionAgreement(fresh("tests-of-terms"), one);
+    }
+  });
 });

@@ -59,3 +59,8 @@ function fitCurves(family: ModelSpec["family"], { data, size }: GroupCurves): Fi
 }
 
 const edfOfParts = ({ partsEdf: { level, slope, wiggly } }: GroupCurves): number => level + slope + wiggly;
+
+/** Every check of this file. */
+export const groupChecks = [
+  expectLevelsAgreement, expectSlopesAgreement, expectWalkAgreement, expectCurvesAgreement, expectCurvesOfCountsAgreement,
+] as const;
