@@ -2,8 +2,11 @@ import { choleskyInPlace, forwardSolve, backwardSolve } from "../linalg/cholesky
 import type { Design } from "./design";
 import type { NormalEquations } from "./normal-equations";
 
-/** Rows c over the shared coordinates, row-major count x size: the curve keeps its shape where every c'b is at most 0. */
-export type ShapeConstraints = { rows: Float64Array; count: number; size: number };
+/**
+ * Rows c over the shared coordinates, row-major count x size: the curve keeps its shape where every c'b is at most 0.
+ * `penalty`: per constraint, the penalty of its curve.
+ */
+export type ShapeConstraints = { rows: Float64Array; count: number; size: number; penalty: Int32Array };
 
 /**
  * What a model's shaped curves demand: differences of neighbouring spline coefficients have the right sign, which makes the
@@ -14,6 +17,7 @@ export type ShapeConstraints = { rows: Float64Array; count: number; size: number
  */
 export function shapeConstraints(design: Design): ShapeConstraints | null {
   const rows: Float64Array[] = [];
+  const penalties: number[] = [];
   for (const { spec, basis, design: part } of design.terms) {
     if (spec.kind !== "smooth" || spec.shape === undefined || !("size" in basis)) continue;
     const { transform } = part.coordinates;
@@ -21,6 +25,7 @@ export function shapeConstraints(design: Design): ShapeConstraints | null {
     const sign = spec.shape === "decreasing" ? 1 : -1;
     const levels = transform.form === "blocks" ? transform.count : 1;
     const width = part.positions.length / levels;
+    const firstPenalty = design.penalties.findIndex(({ id }) => id === part.id);
     for (let level = 0; level < levels; level++) {
       for (let k = 1; k < basis.size; k++) {
         const row = new Float64Array(design.size);
@@ -28,13 +33,26 @@ export function shapeConstraints(design: Design): ShapeConstraints | null {
           row[part.positions[level * width + own]] = sign * (transform.matrix[k * width + own] - transform.matrix[(k - 1) * width + own]);
         }
         rows.push(row);
+        penalties.push(firstPenalty + level);
       }
     }
   }
   if (rows.length === 0) return null;
   const all = new Float64Array(rows.length * design.size);
   rows.forEach((row, at) => all.set(row, at * design.size));
-  return { rows: all, count: rows.length, size: design.size };
+  return { rows: all, count: rows.length, size: design.size, penalty: Int32Array.from(penalties) };
+}
+
+/**
+ * How many constraints of each penalty's curve are held. With any, the curve's straight line is no longer free: the penalty
+ * has full rank on what is left.
+ *
+ * @example heldPerPenalty(constraints, Uint8Array.of(1, 0, 1), 1); // 2
+ */
+export function heldPerPenalty({ penalty }: ShapeConstraints, held: Uint8Array, count: number): Int32Array {
+  const numbers = new Int32Array(count);
+  for (let at = 0; at < held.length; at++) numbers[penalty[at]] += held[at];
+  return numbers;
 }
 
 /** Weight, against the largest diagonal, by which a held constraint enters as a penalty. */

@@ -12,7 +12,7 @@ import type { PenaltySearch } from "./penalty-search";
 import type { PenalisedSystem, Scale } from "./restricted-likelihood";
 import { checkRowsSuffice } from "./row-budget";
 import type { ShapeConstraints } from "./shape-constraints";
-import { holdConstraints, projectOntoShape } from "./shape-constraints";
+import { heldPerPenalty, holdConstraints, projectOntoShape } from "./shape-constraints";
 
 /** What stays the same from one working model to the next. */
 export type WorkingProblem = {
@@ -83,15 +83,18 @@ type Shaped = {
 };
 
 function solveShaped(of: Shaped): WorkingSolution {
-  const { problem, equations, system, search, constraints, choose } = of;
+  const { problem, system, search, constraints, choose } = of;
   let { held } = of;
   for (let turn = 1; ; turn++) {
     const isHeld = held.includes(1);
-    if (isHeld) repoint(search, createSystem(holdConstraints(equations, constraints, held), problem.design, system.dropped));
+    if (isHeld) holdCurves(of, held);
     const rested = choose(search);
     const edf = derivatives(search, "gradient").edf.slice();
-    repoint(search, system);
-    if (isHeld) evaluateAt(search, search.current.logPenalties.slice());
+    search.problem = { system, layout: problem.layout, scale: problem.scale };
+    if (isHeld) {
+      heldPerPenalty(constraints, held, edf.length).forEach((count, j) => { if (count > 0) edf[j] -= 1; });
+      evaluateAt(search, search.current.logPenalties.slice());
+    }
     const state = derivatives(search, "gradient");
     const free = estimates(system, state);
     const projected = projectOntoShape({ estimate: free.coordinates, covariance: coordinateCovariance(system, state) }, constraints, held);
@@ -103,6 +106,22 @@ function solveShaped(of: Shaped): WorkingSolution {
       return { system, search, edf, coordinates, groupCoordinates, held, rested: rested && isSame };
     }
   }
+}
+
+/**
+ * Points the search at the problem on the touched face: held constraints as a heavy penalty, which leaves each curve's own
+ * penalty the coordinates that are still free; of a curve that touches any, the straight line is among the penalised.
+ */
+function holdCurves({ problem, equations, system, search, constraints }: Shaped, held: Uint8Array): void {
+  const { design, layout, scale } = problem;
+  const numbers = heldPerPenalty(constraints, held, layout.penalties.length);
+  const onFace = createSystem(holdConstraints(equations, constraints, held), design, system.dropped);
+  const curves = numbers.reduce((sum, count) => sum + (count > 0 ? 1 : 0), 0);
+  search.problem = {
+    scale,
+    system: { ...onFace, unpenalisedKept: onFace.unpenalisedKept - curves },
+    layout: { ...layout, alone: layout.alone.map((rank, j) => (numbers[j] > 0 ? rank + 1 - numbers[j] : rank)) },
+  };
 }
 
 /** Groups' estimates given shared ones that moved: each by -K_g times the move. */

@@ -5,13 +5,15 @@ import type { FamilyRules, Interval, RowUncertainty } from "../family/family-rul
 import { addRowsTimes } from "../linalg/sparse-rows";
 import type { Family, FittedModel, ModelData, PredictOptions, Prediction } from "../types";
 import { designRows, rowStandardErrors } from "./design-rows";
+import { extendModel } from "./extend-model";
 import { normalQuantile } from "./level";
 
 const defaultLevel = 0.95;
 
 /**
  * Predicts rows: expected value with an interval, and the parts of the linear predictor. Curves go on as straight lines
- * beyond the range they were fitted to, flagged in `outside`; nothing is clamped or capped.
+ * beyond the range they were fitted to, flagged in `outside`; nothing is clamped or capped. Weeks beyond a slowly moving
+ * level's last and groups never seen are predicted as `extendModel` says.
  * Interval "mean": of the expected value, coefficients' uncertainty only. "observation": of a new row's value, noise and
  * coefficients' uncertainty together (quasi-poisson: negative binomial of size mu / (dispersion - 1), Poisson where the
  * dispersion is 1 or less, gamma for fractional units; negative-binomial: of size theta; log-gaussian: lognormal; binomial: none).
@@ -21,7 +23,8 @@ const defaultLevel = 0.95;
  * @throws EngineError as `designRows`; option-invalid.
  * @example predict(model, { price: [1.49], promotion: ["feature"] }, { level: 0.8 }).mean[0];
  */
-export function predict(model: FittedModel, data: ModelData, options: PredictOptions = {}): Prediction {
+export function predict(fitted: FittedModel, data: ModelData, options: PredictOptions = {}): Prediction {
+  const model = extendModel(fitted, data);
   const level = options.level ?? defaultLevel;
   const quantile = normalQuantile(level);
   const family = familyRules(model.spec.family);
@@ -50,7 +53,7 @@ export function predict(model: FittedModel, data: ModelData, options: PredictOpt
     mean: linearPredictor.map((value) => family.mean(value, dispersion)),
     median: family.median === null ? null : linearPredictor.map(family.median),
     lower, upper, linearPredictor, standardError, contributions,
-    outside: Object.fromEntries(model.terms.map((term) => [term.id, outsideRows(term, data)])),
+    outside: Object.fromEntries(fitted.terms.map((term) => [term.id, outsideRows(term, data)])),
   };
 }
 
