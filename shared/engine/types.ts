@@ -447,3 +447,20 @@ export type ModelReport = {
   /** The model's, and those about terms that others reproduce. */
   warnings: ModelWarning[];
 };
+
+/** A larger model against a smaller one that is a special case of it, on the same rows. */
+export type ModelComparison = {
+  /** F where the dispersion is estimated, chi-square where it is known; null where there is nothing to judge by. */
+  statistic: number | null;
+  distribution: "F" | "chi-square";
+  /** By how many the larger model has more: of 2 tr(F) - tr(FF), or of tr(F) with local regression. */
+  degreesOfFreedom: number;
+  /** n - edf of the larger model; null where the dispersion is known. */
+  residualDegreesOfFreedom: number | null;
+  /** Null below half a degree of freedom, and where the larger model reproduces the response exactly. */
+  pValue: number | null;
+  /** AIC of the larger less that of the smaller: below 0 the larger predicts better. Null where either has none. */
+  aicDifference: number | null;
+  /** One plain sentence. */
+  verdict: string;
+};
