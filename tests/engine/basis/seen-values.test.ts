@@ -1,6 +1,7 @@
 import fc from "fast-check";
 import { describe, expect, it } from "vitest";
-import { knownPositions, levelPositions, sortedLevels, splinesPerLevel } from "@shared/engine/basis/levels";
+import type { ModelData } from "@shared/engine";
+import { knownPositions, learnLevels, levelPositions, splinesPerLevel } from "@shared/engine/basis/levels";
 import { perUnit } from "@shared/engine/basis/per-unit";
 import { seenRows } from "@shared/engine/basis/seen-rows";
 import { seenPairs, seenPerLevel } from "@shared/engine/basis/seen-values";
@@ -58,7 +59,7 @@ describe("Levels", () => {
   });
 
   it("are the same as a number and as its text", () => {
-    const mixed = JSON.parse('{"deal":[1,"1",0]}') as { deal: number[] };
+    const mixed: ModelData = JSON.parse('{"deal":[1,"1",0]}') as ModelData;
     expect(learnLevels(mixed, "deal", "factor")).toEqual({ levels: ["0", "1"], index: Int32Array.of(1, 1, 0) });
   });
 
