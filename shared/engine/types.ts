@@ -207,7 +207,7 @@ export type FittedTerm = {
    */
   penalties: number[];
   basis: TermBasis;
-  /** Smallest and largest value fitted to, in the column's own unit; null for a factor, groups and tensor products. */
+  /** Smallest and largest value fitted to, in the column's own unit; null for a factor, a random effect and a tensor product. */
   observedRange: [number, number] | null;
   seen: SeenValues;
   /** Where its coordinates stand in `information`: first unpenalised and first penalised among the shared, or first within each group's block. */

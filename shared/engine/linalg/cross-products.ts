@@ -1,4 +1,5 @@
-import { gatherRow, paddedWidth, roomForRow } from "./sparse-rows";
+import { crossEntries, crossTensor } from "./cross-entries";
+import { paddedWidth } from "./sparse-rows";
 import type { IndexRows as Index, SingleRows as Single, SparseRows, SplineRows as Spline } from "./sparse-rows";
 
 export { groupSquare } from "./group-square";
@@ -20,6 +21,10 @@ export const isSwapped = (left: SparseRows, right: SparseRows): boolean => rank[
  */
 export function crossProduct(left: SparseRows, right: SparseRows, weights: Float64Array, out: Float64Array): void {
   out.fill(0, 0, paddedWidth(left) * paddedWidth(right));
+  if (right.storage === "tensor" && !right.left.wraps && !right.right.wraps) {
+    crossTensor(left, right, weights, out);
+    return;
+  }
   if (isGeneral(left) || isGeneral(right)) {
     crossEntries(left, right, weights, out);
     return;
@@ -42,22 +47,6 @@ function withValues(rows: SparseRows, weights: Float64Array): Float64Array {
   const scaled = new Float64Array(weights.length);
   for (let row = 0; row < scaled.length; row++) scaled[row] = weights[row] * values[row];
   return scaled;
-}
-
-/** Any pair, by the rows' entries. */
-function crossEntries(left: SparseRows, right: SparseRows, weights: Float64Array, out: Float64Array): void {
-  const { width } = right;
-  const own = roomForRow(left);
-  const other = roomForRow(right);
-  for (let row = 0; row < weights.length; row++) {
-    const rows = gatherRow(left, row, 0, own);
-    const columns = gatherRow(right, row, 0, other);
-    for (let i = 0; i < rows; i++) {
-      const scaled = weights[row] * own.values[i];
-      const start = own.indices[i] * width;
-      for (let j = 0; j < columns; j++) out[start + other.indices[j]] += scaled * other.values[j];
-    }
-  }
 }
 
 function crossSingle(left: Single, right: Single | Index | Spline, weights: Float64Array, out: Float64Array): void {

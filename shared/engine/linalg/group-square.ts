@@ -28,7 +28,10 @@ export function groupSquare(
 type GroupedSplines = { rows: SplineRows; width: number };
 
 function splineBlocks(left: GroupedSplines, right: GroupedSplines, weights: Float64Array, out: Float64Array): void {
+  const { width } = left;
   const stride = right.width;
+  const starts = left.rows.first;
+  const otherStarts = right.rows.first;
   const own = left.rows.values;
   const other = right.rows.values;
   for (let row = 0; row < weights.length; row++) {
@@ -37,9 +40,9 @@ function splineBlocks(left: GroupedSplines, right: GroupedSplines, weights: Floa
     const r1 = other[at + 1];
     const r2 = other[at + 2];
     const r3 = other[at + 3];
-    const first = left.rows.first[row];
-    const group = Math.floor(first / left.width);
-    let to = first * stride + right.rows.first[row] - group * stride;
+    const first = starts[row];
+    const group = (first / width) | 0;
+    let to = (first - group) * stride + otherStarts[row];
     for (let k = 0; k < 4; k++, to += stride) {
       const scaled = weights[row] * own[at + k];
       out[to] += scaled * r0;
