@@ -29,7 +29,7 @@ export function fellnerSchallStep(search: PenaltySearch, automatic: readonly num
  * A step that promises the criterion no more than this is the last: Newton's error being squared each time, what is left
  * after it is below the gradient's tolerance.
  */
-const lastFall = 1e-8;
+const lastFall = 1e-7;
 
 /** Minus gradient x step: twice what a Newton step takes off the criterion. */
 function expectedFall({ current: { gradient } }: PenaltySearch, free: readonly number[], direction: Float64Array): number {
@@ -49,7 +49,7 @@ function movable(search: PenaltySearch, automatic: readonly number[]): number[] 
 }
 
 /** Step of a penalty whose criterion bends downwards: any length that lowers it will do, and shorter is slower. */
-const downhillStep = 3;
+const downhillStep = 4.5;
 
 /** Newton direction of the movable penalties; where the Hessian is not positive definite, each by its own curvature. */
 function newtonDirection(search: PenaltySearch, free: readonly number[]): Float64Array {
@@ -86,7 +86,7 @@ function newtonDirection(search: PenaltySearch, free: readonly number[]): Float6
  * the penalty goes to its limit at once.
  */
 function isInTail(search: PenaltySearch, penalty: number, step: number): boolean {
-  return Math.abs(step - 1) < 0.1 && search.current.edf[penalty] < 0.5;
+  return Math.abs(step - 1) < 0.25 && search.current.edf[penalty] < 0.5;
 }
 
 /**
@@ -107,6 +107,7 @@ export function newtonSteps(
     if (options.stopNear !== undefined && isNear(search, automatic, options.stopNear)) return true;
     if (step === options.maxSteps) return false;
     const direction = newtonDirection(search, free);
+    if (options.stopNear !== undefined && pointsTo(search, { free, direction, automatic }, options.stopNear)) return true;
     const fall = expectedFall(search, free, direction);
     if (!descend(search, free, direction)) return false;
     if (fall < lastFall) return true;
@@ -128,9 +129,30 @@ function descend(search: PenaltySearch, free: readonly number[], direction: Floa
 }
 
 function isNear(search: PenaltySearch, automatic: readonly number[], known: Float64Array): boolean {
-  const { logPenalties, gradient, edf } = derivatives(search, "gradient");
+  const { logPenalties } = search.current;
+  return automatic.every((penalty) => goesToLimit(search, penalty, known) || Math.abs(logPenalties[penalty] - known[penalty]) < near);
+}
+
+/** Log units within which two points belong to one optimum, and the longest Newton step whose end is trusted for that. */
+const near = 0.25;
+const trusted = 2.5;
+
+/** Both are on their way to the limit: the known optimum is there, and nothing but a falling criterion lies ahead. */
+function goesToLimit(search: PenaltySearch, penalty: number, known: Float64Array): boolean {
+  const { gradient, edf } = derivatives(search, "gradient");
+  return known[penalty] >= search.highest[penalty] && edf[penalty] < 0.3 && gradient[penalty] < 0;
+}
+
+/** Whether a short Newton step ends at the known optimum. */
+function pointsTo(
+  search: PenaltySearch, step: { free: readonly number[]; direction: Float64Array; automatic: readonly number[] }, known: Float64Array,
+): boolean {
+  const { free, direction, automatic } = step;
+  const { logPenalties } = search.current;
   return automatic.every((penalty) => {
-    const bothGoToTheLimit = known[penalty] >= search.highest[penalty] && edf[penalty] < 0.1 && gradient[penalty] < 0;
-    return bothGoToTheLimit || Math.abs(logPenalties[penalty] - known[penalty]) < 0.25;
+    if (goesToLimit(search, penalty, known)) return true;
+    const at = free.indexOf(penalty);
+    const move = at < 0 ? 0 : direction[at];
+    return Math.abs(move) < trusted && Math.abs(logPenalties[penalty] + move - known[penalty]) < near;
   });
 }

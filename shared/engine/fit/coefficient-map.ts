@@ -112,18 +112,30 @@ export function applyMap(map: CoefficientMap, coordinates: Float64Array): Float6
   return coefficients;
 }
 
-/** map x covariance x map' x scale, packed lower triangle; the covariance is row-major size x size. */
+/**
+ * map x covariance x map' x scale, packed lower triangle; the covariance is row-major size x size.
+ * A row's product with the covariance is needed only in the columns that this and earlier rows read.
+ */
 export function mapCovariance(map: CoefficientMap, covariance: Float64Array, size: number, scale: number): Float64Array {
   const { rows, starts, columns, values } = map;
   const packed = new Float64Array((rows * (rows + 1)) / 2);
   const half = new Float64Array(size);
+  const isRead = new Uint8Array(size);
+  const read = new Int32Array(size);
+  let readCount = 0;
   let at = 0;
   for (let row = 0; row < rows; row++) {
-    half.fill(0);
     for (let k = starts[row]; k < starts[row + 1]; k++) {
-      const weight = values[k] * scale;
-      const from = columns[k] * size;
-      for (let column = 0; column < size; column++) half[column] += weight * covariance[from + column];
+      if (isRead[columns[k]] === 1) continue;
+      isRead[columns[k]] = 1;
+      read[readCount++] = columns[k];
+    }
+    for (let r = 0; r < readCount; r++) {
+      const column = read[r];
+      let sum = 0;
+      // Symmetric: down the column's own row, which lies together in memory.
+      for (let k = starts[row]; k < starts[row + 1]; k++) sum += values[k] * covariance[column * size + columns[k]];
+      half[column] = sum * scale;
     }
     for (let other = 0; other <= row; other++) {
       let sum = 0;

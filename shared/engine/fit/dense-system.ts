@@ -60,11 +60,11 @@ export function eliminateUnpenalised(
   for (let k = 0; k < unpenalised; k++) total -= solved[k] * solved[k];
   const diagonal = new Float64Array(penalised);
   for (let k = 0; k < penalised; k++) diagonal[k] = equations.matrix[(unpenalised + k) * (size + 1)];
+  const { matrix, vector } = schurComplement(equations, { cross, solved, unpenalised, size });
   return {
     form: "dense",
     size: penalised,
-    diagonal,
-    ...schurComplement(equations, { cross, solved, unpenalised, size }),
+    diagonal, matrix, vector,
     total, factor, cross, solved, unpenalised, dropped, rowCount,
     yardstick: equations.total,
     logDeterminant: logDeterminant(factor, unpenalised),

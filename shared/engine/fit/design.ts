@@ -76,11 +76,13 @@ export function buildDesign(termSpecs: readonly TermSpec[], data: ModelData, row
     if ("centring" in result.basis && result.basis.kind !== "levelled-smooth" && result.basis.kind !== "local-regression") {
       centreOver(result.basis.centring, result.rows, ones);
     }
-    return { ...result, spec, coordinates: termCoordinates(result.basis), eliminated: false };
+    // Named one by one: spreading objects costs more than all the rest of the layout.
+    const { basis, rows, seen, observedRange } = result;
+    return { spec, basis, rows, seen, observedRange, coordinates: termCoordinates(basis), eliminated: false };
   });
   const group = largestGroup(learnt);
   for (const term of learnt) term.eliminated = term.coordinates.grouped && groupColumn(term.spec) === group;
-  return { rowCount, warnings, ...layOut(learnt, { storage: "single", width: 1, values: ones }) };
+  return layOut(learnt, { rowCount, warnings, intercept: { storage: "single", width: 1, values: ones } });
 }
 
 /** The mean of each column over the rows, which centres the curve. */
@@ -105,7 +107,8 @@ function largestGroup(learnt: readonly Learnt[]): string | null {
 
 type Next = { unpenalised: number; penalised: number; group: number; raw: number };
 
-function layOut(learnt: readonly Learnt[], intercept: SparseRows): Omit<Design, "rowCount" | "warnings"> {
+function layOut(learnt: readonly Learnt[], of: { rowCount: number; warnings: ModelWarning[]; intercept: SparseRows }): Design {
+  const { rowCount, warnings, intercept } = of;
   const shared = learnt.filter((term) => !term.eliminated);
   const unpenalised = shared.reduce((sum, { coordinates }) => sum + coordinates.unpenalised, 1);
   const next: Next = { unpenalised: 0, penalised: unpenalised, group: 0, raw: 0 };
@@ -128,7 +131,7 @@ function layOut(learnt: readonly Learnt[], intercept: SparseRows): Omit<Design, 
     spec: term.spec, basis: term.basis, seen: term.seen, observedRange: term.observedRange, design: placed.get(term) as DesignTerm,
   }));
   return {
-    parts, terms, unpenalised, sharedRawSize,
+    rowCount, warnings, parts, terms, unpenalised, sharedRawSize,
     groups: groupParts.length === 0 ? null : { count: groupCountOf(groupParts[0]), size: next.group, parts: groupParts },
     penalties: terms.flatMap((term) => penaltiesOf(term, unpenalised)),
     size: next.penalised,
@@ -140,38 +143,38 @@ function layOut(learnt: readonly Learnt[], intercept: SparseRows): Omit<Design, 
 const groupCountOf = ({ coordinates }: DesignTerm): number => (coordinates.transform.form === "blocks" ? coordinates.transform.count : 1);
 
 function place(term: Pick<DesignTerm, "id" | "rows" | "coordinates">, next: Next): DesignTerm {
-  const { coordinates } = term;
-  const at = { unpenalisedFirst: next.unpenalised, penalisedFirst: next.penalised, groupFirst: null, rawFirst: next.raw };
+  const { id, rows, coordinates } = term;
+  const unpenalisedFirst = next.unpenalised;
+  const penalisedFirst = next.penalised;
+  const rawFirst = next.raw;
   next.unpenalised += coordinates.unpenalised;
   next.penalised += coordinates.penalised;
   next.raw += coordinates.rawWidth;
-  return { ...term, ...at, positions: positionsOf(coordinates, at) };
+  const positions = positionsOf(coordinates, { unpenalisedFirst, penalisedFirst });
+  return { id, rows, coordinates, unpenalisedFirst, penalisedFirst, groupFirst: null, positions, rawFirst };
 }
 
 function placeInGroup(term: Pick<DesignTerm, "id" | "rows" | "coordinates">, next: Next): DesignTerm {
-  const { transform, rawWidth } = term.coordinates;
+  const { id, rows, coordinates } = term;
+  const { transform, rawWidth } = coordinates;
   const own = transform.form === "blocks" ? transform.columns : 1;
   const groupFirst = next.group;
   const rawFirst = next.raw;
   next.group += own;
   next.raw += rawWidth;
-  return {
-    ...term, unpenalisedFirst: 0, penalisedFirst: 0, groupFirst, rawFirst,
-    positions: Int32Array.from({ length: own }, (_, k) => groupFirst + k),
-  };
+  const positions = Int32Array.from({ length: own }, (_, k) => groupFirst + k);
+  return { id, rows, coordinates, unpenalisedFirst: 0, penalisedFirst: 0, groupFirst, positions, rawFirst };
 }
 
 function positionsOf(coordinates: TermCoordinates, at: { unpenalisedFirst: number; penalisedFirst: number }): Int32Array {
   const { transform, unpenalised, penalised } = coordinates;
   const positions = new Int32Array(unpenalised + penalised);
-  const blocks = transform.form === "blocks" ? transform : { columns: unpenalised + penalised, count: 1, unpenalised };
-  const penalisedEach = blocks.columns - blocks.unpenalised;
-  for (let column = 0; column < positions.length; column++) {
-    const level = Math.floor(column / blocks.columns);
-    const own = column % blocks.columns;
-    positions[column] = own < blocks.unpenalised
-      ? at.unpenalisedFirst + level * blocks.unpenalised + own
-      : at.penalisedFirst + level * penalisedEach + own - blocks.unpenalised;
+  const blocks = transform.form === "blocks" ? transform : { columns: positions.length, count: 1, unpenalised };
+  let nextUnpenalised = at.unpenalisedFirst;
+  let nextPenalised = at.penalisedFirst;
+  let column = 0;
+  for (let level = 0; level < blocks.count; level++) {
+    for (let own = 0; own < blocks.columns; own++) positions[column++] = own < blocks.unpenalised ? nextUnpenalised++ : nextPenalised++;
   }
   return positions;
 }

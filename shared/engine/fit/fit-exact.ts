@@ -21,7 +21,8 @@ export type ExactRows = { response: Float64Array; offset: Float64Array; weights:
  */
 export function fitExact(design: Design, rows: ExactRows, map: CoefficientMap): WorkingFit {
   const { response, offset, weights } = rows;
-  const working = response.map((value, row) => value - offset[row]);
+  const working = response.slice();
+  for (let row = 0; row < working.length; row++) working[row] -= offset[row];
   const equations = normalEquations(design, { response: working, weights }, createScratch(design));
   const plan = planPenalties(design);
   const problem = {

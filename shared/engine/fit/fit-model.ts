@@ -4,7 +4,7 @@ import { EngineError } from "../errors";
 import { familyRules } from "../family/family";
 import type { FamilyRules } from "../family/family-rules";
 import { addRowsTimes } from "../linalg/sparse-rows";
-import type { FitOptions, FittedModel, FittedTerm, ModelData, ModelSpec } from "../types";
+import type { FitOptions, FittedModel, FittedTerm, ModelData, ModelSpec, TermSpec } from "../types";
 import { checkSpec } from "./check-spec";
 import { coefficientMap, mapCovariance } from "./coefficient-map";
 import type { CoefficientMap } from "./coefficient-map";
@@ -84,7 +84,7 @@ function assembleModel(parts: Parts): FittedModel {
   const fitted = fittedMeans(parts, coefficients, terms, dispersion);
   return {
     format: 1,
-    spec: structuredClone(spec),
+    spec: copySpec(spec),
     rowCount: rows.count,
     coefficients,
     coefficientNames: namesOf(design),
@@ -105,6 +105,19 @@ function assembleModel(parts: Parts): FittedModel {
     iterations: fit.iterations,
     warnings: [...design.warnings, ...fitWarnings({ design, fit, rows, family: spec.family, fitted, isPerfect: measures.isPerfect })],
   };
+}
+
+/** Its own, down to the terms' lists, so that a caller may go on changing the one given. */
+function copySpec(spec: ModelSpec): ModelSpec {
+  return { ...spec, terms: spec.terms.map((term) => structuredCopy(term)) };
+}
+
+function structuredCopy<Term extends TermSpec>(term: Term): Term {
+  const copy: Record<string, unknown> = {};
+  for (const [key, value] of Object.entries(term)) {
+    copy[key] = Array.isArray(value) ? [...(value as unknown[])] : typeof value === "object" ? { ...(value as object) } : value;
+  }
+  return copy as Term;
 }
 
 /** In the order of the coefficients: shared terms, then terms on eliminated groups. */

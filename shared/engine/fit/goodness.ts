@@ -66,5 +66,7 @@ function meanAndOffset(response: Float64Array, offset: Float64Array, weights: Fl
     sum += weights[row] * (response[row] - offset[row]);
     weight += weights[row];
   }
-  return offset.map((value) => value + sum / weight);
+  const mean = offset.slice();
+  for (let row = 0; row < mean.length; row++) mean[row] += sum / weight;
+  return mean;
 }

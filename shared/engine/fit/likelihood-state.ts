@@ -34,8 +34,6 @@ export type LikelihoodState = {
   coefficients: Float64Array;
   factor: Float64Array;
   inverse: Float64Array;
-  /** Scratch of one value per coordinate and penalty. */
-  weighted: Float64Array;
   arrow: ArrowState | null;
 };
 
@@ -51,7 +49,6 @@ export function createState(of: { size: number; penalties: number; arrow: ArrowS
     gradient: vector(), hessian: square(), determinantHessian: square(), edf: vector(),
     squares: vector(), traces: vector(), forms: square(), norms: square(),
     coefficients: new Float64Array(size), factor: new Float64Array(size * size), inverse: new Float64Array(size * size),
-    weighted: new Float64Array(size * penalties),
     arrow: of.arrow,
   };
 }

@@ -62,7 +62,8 @@ export function solveWorking(
   if (constraints === null) {
     const rested = choose(search);
     const state = derivatives(search, "gradient");
-    return { system, search, edf: state.edf, ...estimates(system, state), held: null, rested };
+    const { coordinates, groupCoordinates } = estimates(system, state);
+    return { system, search, edf: state.edf, coordinates, groupCoordinates, held: null, rested };
   }
   return solveShaped({ problem, equations, system, search, constraints, choose, held: before.held ?? new Uint8Array(constraints.count) });
 }
