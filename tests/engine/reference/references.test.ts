@@ -3,7 +3,7 @@ import { expectGaussianAgreement, expectIceCreamAgreement, expectQuasiPoissonAgr
 import { expectCountAgreement, expectShareAgreement } from "../support/agreement-families";
 import { groupChecks } from "../support/agreement-groups";
 import { expectNaturalAgreement, expectSplineTerms } from "../support/agreement-local";
-import { expectCriterionAgreement, expectTestAgreement, testedCases } from "../support/agreement-tests";
+import { expectCriterionAgreement, expectNestedAgreement, expectTestAgreement, testedCases } from "../support/agreement-tests";
 import { expectLevelAgreement, expectNumberAgreement, expectSurfaceAgreement } from "../support/agreement-varying";
 import { committedReference, freshReference } from "../support/reference-files";
 import type { References } from "../support/reference-files";
@@ -79,5 +79,6 @@ describe("The engine agrees with R as it runs now", () => {
       expectTestAgreement(fresh("tests-of-terms"), one);
       expectCriterionAgreement(fresh("tests-of-terms"), one);
     }
+    expectNestedAgreement(fresh("tests-of-terms"));
   });
 });

@@ -5,7 +5,8 @@
 # tests: summary's statistic, reference degrees of freedom and p-value per curve (Wood 2013) and Wald's test of the factor;
 # gaussian by gam(method = "REML"), binomial and negative binomial at given penalties (of our difference penalties), so that
 # both sides test the same fit. criteria: AIC with the correction for smoothing parameters, its degrees of freedom, by
-# gam(method = "REML"). nested: anova's F of a straight line within a natural spline.
+# gam(method = "REML"). nested: anova's F, and the difference in
+# AIC, of a straight line within a natural spline.
 
 here <- dirname(sub("--file=", "", grep("--file=", commandArgs(), value = TRUE)))
 source(file.path(here, "common.R"))
@@ -66,6 +67,7 @@ write_result(list(
   negativeBinomial = c(tests_of(at_given("units", nb()), TRUE), list(criteria = criteria_of(by_reml("units", nb(), gam.control(epsilon = 1e-9))))),
   binomial = c(tests_of(at_given("bought", binomial()), TRUE), list(criteria = criteria_of(by_reml("bought", binomial(), gam.control(epsilon = 1e-9))))),
   nested = list(
-    df = 4, statistic = ten_digits(nested$F[2]), degreesOfFreedom = nested$Df[2], residualDegreesOfFreedom = nested$Res.Df[2], pValue = ten_digits(nested[["Pr(>F)"]][2])
+    df = 4, statistic = ten_digits(nested$F[2]), degreesOfFreedom = nested$Df[2], residualDegreesOfFreedom = nested$Res.Df[2], pValue = ten_digits(nested[["Pr(>F)"]][2]),
+    aicDifference = ten_digits(AIC(curve) - AIC(line))
   )
 ))

@@ -1,5 +1,5 @@
-import { fitModel, modelReport } from "@shared/engine";
-import type { FittedModel, ModelReport, ModelSpec, Smoothness } from "@shared/engine";
+import { compareModels, fitModel, modelReport } from "@shared/engine";
+import type { FittedModel, ModelReport, ModelSpec, Smoothness, TermSpec } from "@shared/engine";
 import { expect } from "vitest";
 import { expectGamAgreement, gaussianTolerances } from "./gam-agreement";
 import type { TestsOfTerms } from "./reference-shapes";
@@ -67,3 +67,17 @@ export function expectCriterionAgreement(reference: TestsOfTerms, one: Case): vo
  * families' penalties (and theta) are not quite the same: by less than half a unit of AIC, which decides nothing.
  */
 const aicTolerance: Record<Case["name"], number> = { gaussian: 1e-4, negativeBinomial: 0.5, binomial: 0.5 };
+
+/** anova's F of a straight line within a natural spline, and the difference of their AIC: both closed formulas. */
+export function expectNestedAgreement({ data, nested }: TestsOfTerms): void {
+  const fit = (term: TermSpec) =>
+    fitModel({ response: "logUnits", family: "gaussian", terms: [term, { kind: "factor", column: "promotion", reference: "none" }] }, data);
+  const line = fit({ kind: "linear", column: "temperature" });
+  const comparison = compareModels(line, fit({ kind: "natural-spline", column: "temperature", df: nested.df }));
+  expect(comparison.distribution).toBe("F");
+  expect((comparison.statistic ?? Number.NaN) / nested.statistic).toBeCloseTo(1, 8);
+  expect(comparison.degreesOfFreedom).toBeCloseTo(nested.degreesOfFreedom, 8);
+  expect(comparison.residualDegreesOfFreedom).toBeCloseTo(nested.residualDegreesOfFreedom, 8);
+  expect((comparison.pValue ?? Number.NaN) / nested.pValue).toBeCloseTo(1, 8);
+  expect(comparison.aicDifference).toBeCloseTo(nested.aicDifference, 7);
+}

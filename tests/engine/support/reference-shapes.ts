@@ -119,7 +119,9 @@ export type TestsOfTerms = {
   gaussian: TestsOfFit;
   negativeBinomial: TestsOfFit;
   binomial: TestsOfFit;
-  nested: { df: number; statistic: number; degreesOfFreedom: number; residualDegreesOfFreedom: number; pValue: number };
+  nested: {
+    df: number; statistic: number; degreesOfFreedom: number; residualDegreesOfFreedom: number; pValue: number; aicDifference: number;
+  };
 };
 
 type SeriesFit = {
