@@ -1,7 +1,9 @@
 import { EigenvalueDecomposition, Matrix } from "ml-matrix";
+import { entryProduct, lowerHalf, remainder, timesSymmetric } from "./arrow-products";
 import { arrowRoot, conjugatedPenalty } from "./arrow-root";
 import type { Arrow } from "./arrow-root";
 import { rankDegrees } from "./penalty-share";
+import { penaltySlope, slopeProduct } from "./penalty-slope";
 import type { Posterior } from "./posterior";
 import { splineBasis } from "./spline-basis";
 import type { PlacedPenalty, TermPlace } from "./term-places";
@@ -80,97 +82,4 @@ function inverseBounded(matrix: Matrix, bounded: (eigenvalue: number) => number)
   const { realEigenvalues, eigenvectorMatrix } = new EigenvalueDecomposition(matrix, { assumeSymmetric: true });
   const inverse = Matrix.diag(realEigenvalues.map((value) => 1 / bounded(value)));
   return eigenvectorMatrix.mmul(inverse).mmul(eigenvectorMatrix.transpose());
-}
-
-/** Lower triangle with the diagonal halved; with groups first, `cross` (their meeting with later rows) is all of it lower. */
-function lowerHalf({ own, cross, shared }: Arrow, size: number, width: number): Arrow {
-  const cut = (matrix: Float64Array, columns: number) => matrix.map((value, at) => {
-    const column = at % columns;
-    const row = Math.floor(at / columns) % columns;
-    return column < row ? value : column === row ? value / 2 : 0;
-  });
-  return { own: width === 0 ? own : cut(own, width), cross, shared: cut(shared, size) };
-}
-
-/** B'X'WXB = I - sum_j B'S_jB, zero for dropped coordinates. */
-function remainder({ size, grouped, information }: Posterior, conjugated: readonly Arrow[]): Arrow {
-  const first = conjugated[0];
-  const out: Arrow = { own: new Float64Array(first.own.length), cross: new Float64Array(first.cross.length), shared: new Float64Array(first.shared.length) };
-  for (let k = 0; k < size; k++) out.shared[k * size + k] = 1;
-  for (const position of information.dropped) out.shared[position * size + position] = 0;
-  for (let row = 0; row * grouped.length < out.own.length; row++) out.own[row * grouped.length + (row % grouped.length)] = 1;
-  for (const { own, cross, shared } of conjugated) {
-    for (let at = 0; at < own.length; at++) out.own[at] -= own[at];
-    for (let at = 0; at < cross.length; at++) out.cross[at] -= cross[at];
-    for (let at = 0; at < shared.length; at++) out.shared[at] -= shared[at];
-  }
-  return out;
-}
-
-/** (lower half) x (symmetric), only the entries that meet another lower half's: own, cross (as the shared rows hold it) and shared. */
-function timesSymmetric(half: Arrow, kept: Arrow, size: number, width: number): Arrow {
-  const out: Arrow = { own: new Float64Array(half.own.length), cross: new Float64Array(half.cross.length), shared: new Float64Array(half.shared.length) };
-  for (let row = 0; row < size; row++) {
-    for (let k = 0; k <= row; k++) {
-      const value = half.shared[row * size + k];
-      if (value === 0) continue;
-      for (let column = 0; column < size; column++) out.shared[row * size + column] += value * kept.shared[k * size + column];
-      for (let line = 0; line * size < kept.cross.length; line++) out.cross[line * size + row] += value * kept.cross[line * size + k];
-    }
-  }
-  for (let line = 0; line * size < half.cross.length; line++) {
-    const start = line - (line % width);
-    for (let row = 0; row < size; row++) {
-      const value = half.cross[line * size + row];
-      if (value === 0) continue;
-      for (let column = 0; column < size; column++) out.shared[row * size + column] += value * kept.cross[line * size + column];
-      for (let k = 0; k < width; k++) out.cross[(start + k) * size + row] += value * kept.own[line * width + k];
-    }
-    for (let k = 0; k < width; k++) {
-      const value = half.own[line * width + k];
-      for (let column = 0; column < width; column++) out.own[line * width + column] += value * kept.own[(start + k) * width + column];
-    }
-  }
-  return out;
-}
-
-function entryProduct(left: Arrow, right: Arrow): number {
-  let sum = 0;
-  for (let at = 0; at < left.own.length; at++) sum += left.own[at] * right.own[at];
-  for (let at = 0; at < left.cross.length; at++) sum += left.cross[at] * right.cross[at];
-  for (let at = 0; at < left.shared.length; at++) sum += left.shared[at] * right.shared[at];
-  return sum;
-}
-
-/** db/drho_j = -C S_j b over the dispersion's root, with the right-hand side -S_j b it solves for. */
-type Slope = { shared: Float64Array; grouped: Float64Array; sharedRight: Float64Array; groupedRight: Float64Array };
-
-function penaltySlope({ information, size, covariance, groups }: Posterior, penalty: PlacedPenalty): Slope {
-  const width = groups?.size ?? 0;
-  const lines = (groups?.count ?? 0) * width;
-  const slope: Slope = { shared: new Float64Array(size), grouped: new Float64Array(lines), sharedRight: new Float64Array(size), groupedRight: new Float64Array(lines) };
-  penalty.positions.forEach((position, k) => {
-    const weight = -penalty.multiplier * penalty.diagonal[k];
-    if (!penalty.isGrouped) slope.sharedRight[position] = weight * information.coordinates[position];
-    else for (let line = position; line < lines; line += width) slope.groupedRight[line] = weight * (information.groups?.coordinates[line] ?? 0);
-  });
-  const right = slope.sharedRight.slice();
-  for (let line = 0; line < lines; line++) for (let k = 0; k < size; k++) right[k] -= (groups?.link[line * size + k] ?? 0) * slope.groupedRight[line];
-  for (let row = 0; row < size; row++) for (let k = 0; k < size; k++) slope.shared[row] += covariance[row * size + k] * right[k];
-  for (let line = 0; line < lines; line++) {
-    const start = line - (line % width);
-    let sum = 0;
-    for (let k = 0; k < width; k++) sum += (groups?.own[line * width + k] ?? 0) * slope.groupedRight[start + k];
-    for (let k = 0; k < size; k++) sum -= (groups?.link[line * size + k] ?? 0) * slope.shared[k];
-    slope.grouped[line] = sum;
-  }
-  return slope;
-}
-
-/** J_j' X'WX J_k = J_j' (right side of J_k) - J_j' S J_k. The dispersion is put in by the caller. */
-function slopeProduct({ shared, grouped }: Posterior, left: Slope, right: Slope): number {
-  let sum = 0;
-  for (let k = 0; k < shared.length; k++) sum += left.shared[k] * (right.sharedRight[k] - shared[k] * right.shared[k]);
-  for (let line = 0; line < left.grouped.length; line++) sum += left.grouped[line] * (right.groupedRight[line] - grouped[line % grouped.length] * right.grouped[line]);
-  return sum;
 }

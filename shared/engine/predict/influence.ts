@@ -1,8 +1,8 @@
+import { numberColumn } from "../basis/columns";
 import { EngineError } from "../errors";
 import { familyRules } from "../family/family";
-import { numberColumn } from "../basis/columns";
-import type { FittedModel, ModelData } from "../types";
 import { addRowsTimes } from "../linalg/sparse-rows";
+import type { FittedModel, ModelData } from "../types";
 import { designRows, rowStandardErrors } from "./design-rows";
 import type { DesignRows } from "./design-rows";
 import { residuals } from "./residuals";

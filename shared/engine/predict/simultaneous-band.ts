@@ -2,8 +2,8 @@ import { EigenvalueDecomposition, Matrix } from "ml-matrix";
 import { basisRows } from "../basis/term-basis";
 import { EngineError } from "../errors";
 import { seededRandom } from "../inference/random";
-import { entriesPerRow, gatherRow } from "../linalg/sparse-rows";
 import { packedIndex } from "../linalg/packed-symmetric";
+import { entriesPerRow, gatherRow } from "../linalg/sparse-rows";
 import type { FittedModel, TermCurve, TermCurveOptions } from "../types";
 import { curveData } from "./curve-data";
 import { curvePoints } from "./curve-points";
@@ -25,6 +25,8 @@ const fewestDraws = 100;
 const mostDraws = 1_000_000;
 /** Eigenvectors of more coefficients than this are too slow for a curve on a screen. */
 const mostCoefficients = 400;
+/** Eigenvalues of a covariance below this share of the largest are rounding. */
+const smallestEigenvalue = 1e-13;
 /** Standard errors below this share of the largest are rounding: there the curve is known, as a line's at its centre. */
 const smallestShare = 1e-9;
 
@@ -35,7 +37,7 @@ const smallestShare = 1e-9;
  * Source: Ruppert, Wand & Carroll (2003), Semiparametric Regression, section 6.5.
  *
  * @param options points, at and group as `termCurve`; level; draws and seed.
- * @returns about `normalQuantile(level)` for a straight line, more the more a curve can bend. Its own error by simulation is
+ * @returns `normalQuantile(level)` for a straight line, more the more a curve can bend. Its own error by simulation is
  * about 0.01 to 0.02 at 10,000 draws.
  * @throws EngineError as `termCurve`; option-invalid for draws, seed, or more than 400 coefficients.
  * Cost: O(draws x points x coefficients of the curve).
@@ -48,7 +50,8 @@ export function simultaneousQuantile(model: FittedModel, termId: string, options
   const random = seededRandom(options.seed ?? 1);
   const standardised = standardisedRoot(model, termId, options);
   const { rows, columns } = standardised;
-  if (rows === 0) return pointwise;
+  // Nothing bends: all points stray together, as those of a straight line do.
+  if (rows === 0 || columns === 1) return pointwise;
   const entries = standardised.to1DArray();
   const normals = new Float64Array(columns);
   const largest = new Float64Array(draws);
@@ -127,7 +130,9 @@ function covarianceRoot(model: FittedModel, termId: string, indices: readonly nu
   }
   if (size === 0) return Matrix.zeros(0, 0);
   const { realEigenvalues, eigenvectorMatrix } = new EigenvalueDecomposition(coefficientCovariance(model, indices), { assumeSymmetric: true });
-  return eigenvectorMatrix.mmul(Matrix.diag(realEigenvalues.map((value) => Math.sqrt(Math.max(value, 0)))));
+  const largest = Math.max(...realEigenvalues);
+  const kept = realEigenvalues.flatMap((value, k) => (value > smallestEigenvalue * largest ? [k] : []));
+  return new Matrix(indices.map((_index, row) => kept.map((k) => eigenvectorMatrix.get(row, k) * Math.sqrt(realEigenvalues[k]))));
 }
 
 function coefficientCovariance(model: FittedModel, indices: readonly number[]): Matrix {
