@@ -16,15 +16,16 @@ const [smallestLog, largestLog] = [-700, 700];
  * are close to straight, within a bracket; halving where a step leaves it. Relative error about 1e-12.
  *
  * @param nodes means, ratios of variance to mean, weights.
- * @example amountQuantiles(nodes, { lower: { wanted: 0.1, guess: 3 }, upper: { wanted: 0.9, guess: 9 } });
+ * @returns one amount per end.
+ * @example amountQuantiles(nodes, [{ wanted: 0.1, guess: 3 }, { wanted: 0.9, guess: 9 }]);
  */
-export function amountQuantiles(nodes: MixtureNodes, ends: { lower: End; upper: End }): { lower: number; upper: number } {
+export function amountQuantiles(nodes: MixtureNodes, ends: readonly End[]): number[] {
   // ln(x density) = constant - shape (x / mean - 1 - ln(x / mean)).
   for (let j = 0; j < nodes.count; j++) {
     const shape = nodes.means[j] / nodes.ratios[j];
     constants[j] = shape * Math.log(shape) - shape - gammaln(shape);
   }
-  return { lower: search(nodes, ends.lower), upper: search(nodes, ends.upper) };
+  return ends.map((end) => search(nodes, end));
 }
 
 const constants = new Float64Array(mostNodes);

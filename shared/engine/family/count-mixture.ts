@@ -12,7 +12,10 @@ export type End = {
 /** With no more counts than these up to the guess of the upper end, all probabilities below it are summed up. */
 const mostSummed = 1500;
 /** Probabilities that are nothing beside one. */
-const negligible = 1e-18;
+const negligible = 1e-15;
+const logNegligible = Math.log(negligible);
+/** A falling mass below this adds nothing any more. */
+const runOut = 1e-17;
 /** Counts stepped through one by one before the search jumps. */
 const mostSteps = 300;
 const mostJumps = 200;
@@ -23,14 +26,16 @@ const mostJumps = 200;
  * P(k + 1) = P(k) (k + size) / (k + 1) x mean / (mean + size) costs next to nothing beside a distribution function.
  *
  * @param nodes means ascending, ratios of variance to mean, weights.
- * @returns what a search of the distribution function by bisection returns, ties within rounding (1e-12) aside.
- * @example countQuantiles(nodes, { lower: { wanted: 0.1, guess: 3 }, upper: { wanted: 0.9, guess: 9 } });
+ * @param ends probabilities wanted, ascending.
+ * @returns one count per end: what a search of the distribution function by bisection returns, ties within rounding (1e-10) aside.
+ * @example countQuantiles(nodes, [{ wanted: 0.1, guess: 3 }, { wanted: 0.9, guess: 9 }]);
  */
-export function countQuantiles(nodes: MixtureNodes, ends: { lower: End; upper: End }): { lower: number; upper: number } {
+export function countQuantiles(nodes: MixtureNodes, ends: readonly End[]): number[] {
+  if (ends.length === 0) return [];
   const own = prepare(nodes);
-  const { lower, upper } = ends;
-  const found = upper.guess - own.beginnings[0] < mostSummed ? sumUpwards(own, lower.wanted, upper.wanted) : null;
-  return found ?? { lower: search(own, lower), upper: search(own, upper) };
+  const isNear = ends[ends.length - 1].guess - own.beginnings[0] < mostSummed;
+  const found = isNear ? sumUpwards(own, ends) : null;
+  return found ?? ends.map((end) => search(own, end));
 }
 
 type Mixture = MixtureNodes & {
@@ -69,16 +74,20 @@ const massAt = ({ means, sizes, weights }: Mixture, node: number, count: number)
 
 /** Sets the masses to those of `count`; returns their sum. */
 function placeAt(own: Mixture, count: number): number {
+  const { means, sizes, masses } = own;
   let sum = 0;
-  for (let j = 0; j < own.count; j++) sum += own.masses[j] = massAt(own, j, count);
+  for (let j = 0; j < own.count; j++) {
+    masses[j] = logTailBound(count, means[j], sizes[j]) > logNegligible ? massAt(own, j, count) : 0;
+    sum += masses[j];
+  }
   return sum;
 }
 
-/** Moves the first `active` masses from `count` to the next count; returns their sum. */
-function moveUp({ masses, slope, base }: Mixture, count: number, active: number): number {
+/** Moves the masses of nodes from `first` to `last` (left out) from `count` to the next count; returns their sum. */
+function moveUp({ masses, slope, base }: Mixture, count: number, { first, last }: { first: number; last: number }): number {
   const share = 1 / (count + 1);
   let sum = 0;
-  for (let j = 0; j < active; j++) sum += masses[j] *= (slope[j] * count + base[j]) * share;
+  for (let j = first; j < last; j++) sum += masses[j] *= (slope[j] * count + base[j]) * share;
   return sum;
 }
 
@@ -102,21 +111,25 @@ function fillBeginnings({ count, means, ratios, weights, beginnings }: Mixture):
   }
 }
 
-/** Each node joins where its probabilities begin. Null where the upper end is further up than this way is good for. */
-function sumUpwards(own: Mixture, lowerWanted: number, upperWanted: number): { lower: number; upper: number } | null {
-  const { masses, beginnings } = own;
-  const first = beginnings[0];
-  let active = 0;
+/**
+ * Each node joins where its probabilities begin and leaves where they have run out. Null where an end is further up than this way
+ * is good for.
+ */
+function sumUpwards(own: Mixture, ends: readonly End[]): number[] | null {
+  const { masses, means, beginnings } = own;
+  const begun = { first: 0, last: 0 };
+  const found: number[] = [];
   let below = 0;
-  let lower = -1;
-  for (let count = first; count <= first + 2 * mostSummed; count++) {
-    if (active > 0) below += moveUp(own, count - 1, active);
-    while (beginnings[active] <= count) {
-      below += masses[active] = massAt(own, active, count);
-      active++;
+  for (let count = beginnings[0]; count <= beginnings[0] + 2 * mostSummed; count++) {
+    if (begun.last > 0) below += moveUp(own, count - 1, begun);
+    while (beginnings[begun.last] <= count) {
+      below += masses[begun.last] = massAt(own, begun.last, count);
+      begun.last++;
     }
-    if (lower < 0 && below >= lowerWanted) lower = count;
-    if (below >= upperWanted) return { lower, upper: count };
+    while (begun.first < begun.last && masses[begun.first] < runOut && count > means[begun.first]) begun.first++;
+    while (below >= ends[found.length].wanted) {
+      if (found.push(count) === ends.length) return found;
+    }
   }
   return null;
 }
@@ -124,7 +137,7 @@ function sumUpwards(own: Mixture, lowerWanted: number, upperWanted: number): { l
 function atMost({ count: nodes, means, ratios, sizes, weights }: Mixture, count: number): number {
   let sum = 0;
   for (let j = 0; j < nodes; j++) {
-    if (logTailBound(count, means[j], sizes[j]) > Math.log(negligible)) sum += weights[j] * countAtMost(count, means[j], ratios[j]);
+    if (logTailBound(count, means[j], sizes[j]) > logNegligible) sum += weights[j] * countAtMost(count, means[j], ratios[j]);
     else if (count > means[j]) sum += weights[j];
   }
   return sum;
@@ -166,8 +179,9 @@ function stepwise(own: Mixture, from: { count: number; below: number; mass: numb
     }
     return null;
   }
+  const all = { first: 0, last: own.count };
   for (let step = 0; step < 2 * mostSteps; step++) {
-    below += moveUp(own, count, own.count);
+    below += moveUp(own, count, all);
     count++;
     if (below >= wanted) return count;
   }
