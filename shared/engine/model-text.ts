@@ -49,7 +49,8 @@ function restore(value: unknown): unknown {
 function isModel(value: unknown): value is FittedModel {
   if (typeof value !== "object" || value === null) return false;
   const candidate = value as Partial<FittedModel>;
-  const { coefficients, covariance, terms } = candidate;
+  const { coefficients, covariance, groupCovariance, terms } = candidate;
+  const grouped = groupCovariance == null ? 0 : groupCovariance.count * groupCovariance.size;
   return candidate.format === 1
     && typeof candidate.spec === "object"
     && Array.isArray(terms)
@@ -57,7 +58,7 @@ function isModel(value: unknown): value is FittedModel {
     && candidate.fitted instanceof Float64Array
     && coefficients instanceof Float64Array
     && covariance instanceof Float64Array
-    && covariance.length === (coefficients.length * (coefficients.length + 1)) / 2;
+    && covariance.length === ((coefficients.length - grouped) * (coefficients.length - grouped + 1)) / 2;
 }
 
 function toBase64(values: Float64Array): string {

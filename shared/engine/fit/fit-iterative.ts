@@ -31,6 +31,9 @@ type Problem = WorkingProblem & {
 const movementTolerance = 1e-13;
 const thetaTolerance = 1e-8;
 
+/** Working models after which a constraint once held is not let go any more. */
+const settlingIterations = 5;
+
 /**
  * Fits by iterated working models, the penalties by restricted likelihood of the working model, until predictor, penalties
  * (and theta, where the family has one) rest. From the stiff start first; then the loose start is searched in the working
@@ -104,7 +107,10 @@ function iterate(problem: Problem, start: Start): WorkingFit {
       penalties = search.current.logPenalties.slice();
       return rested;
     });
-    before = { dropped: solution.system.dropped, search: solution.search, held: solution.held };
+    before = {
+      dropped: solution.system.dropped, search: solution.search,
+      held: iterations < settlingIterations ? solution.touched : solution.held,
+    };
     const accepted = acceptableStep(problem, {
       from: coordinates, to: shiftedCoordinates(solution, equations), predictor, theta, penalty: penaltyValue(solution.search),
     });

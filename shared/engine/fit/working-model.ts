@@ -33,7 +33,8 @@ export type WorkingSolution = {
   /** Estimates of the shared coordinates and, group after group, of the groups'. */
   coordinates: Float64Array;
   groupCoordinates: Float64Array | null;
-  /** 1 per constraint the curve touches; null without shapes. */
+  /** 1 per constraint the curves touch, and per constraint held while penalties were chosen; null without shapes. */
+  touched: Uint8Array | null;
   held: Uint8Array | null;
   rested: boolean;
 };
@@ -41,11 +42,10 @@ export type WorkingSolution = {
 /** From the last working model: what to begin with. */
 export type Before = { dropped: DroppedColumn[] | null; search: PenaltySearch | null; held: Uint8Array | null };
 
-const mostTurns = 30;
-
 /**
- * Solves one working model: penalties by `choose`, estimates, and, where curves have a shape, both in turn until the
- * constraints touched are the same twice.
+ * Solves one working model: penalties by `choose`, estimates, and, where curves have a shape, both in turn until no
+ * further constraint is touched. A constraint once held stays so while penalties are chosen: letting it go could loosen the
+ * penalty, which would touch it again, without end.
  *
  * @param choose moves the search's penalties and says whether they came to rest.
  * @throws EngineError too-few-rows.
@@ -63,7 +63,7 @@ export function solveWorking(
     const rested = choose(search);
     const state = derivatives(search, "gradient");
     const { coordinates, groupCoordinates } = estimates(system, state);
-    return { system, search, edf: state.edf, coordinates, groupCoordinates, held: null, rested };
+    return { system, search, edf: state.edf, coordinates, groupCoordinates, touched: null, held: null, rested };
   }
   return solveShaped({ problem, equations, system, search, constraints, choose, held: before.held ?? new Uint8Array(constraints.count) });
 }
@@ -85,28 +85,38 @@ type Shaped = {
 
 function solveShaped(of: Shaped): WorkingSolution {
   const { problem, system, search, constraints, choose } = of;
-  let { held } = of;
-  for (let turn = 1; ; turn++) {
-    const isHeld = held.includes(1);
-    if (isHeld) holdCurves(of, held);
+  const held = of.held.slice();
+  for (;;) {
+    if (held.includes(1)) holdCurves(of, held);
     const rested = choose(search);
-    const edf = derivatives(search, "gradient").edf.slice();
     search.problem = { system, layout: problem.layout, scale: problem.scale };
-    if (isHeld) {
-      heldPerPenalty(constraints, held, edf.length).forEach((count, j) => { if (count > 0) edf[j] -= 1; });
-      evaluateAt(search, search.current.logPenalties.slice());
-    }
+    evaluateAt(search, search.current.logPenalties.slice());
     const state = derivatives(search, "gradient");
     const free = estimates(system, state);
     const projected = projectOntoShape({ estimate: free.coordinates, covariance: coordinateCovariance(system, state) }, constraints, held);
-    const isSame = projected.held.every((value, at) => value === held[at]);
-    ({ held } = projected);
-    if (isSame || turn === mostTurns) {
-      const coordinates = projected.estimate;
+    const { held: touched, estimate: coordinates } = projected;
+    if (touched.every((value, at) => value <= held[at])) {
       const groupCoordinates = follow({ system, state, from: free.coordinates, to: coordinates, own: free.groupCoordinates });
-      return { system, search, edf, coordinates, groupCoordinates, held, rested: rested && isSame };
+      return { system, search, edf: edfOnFace(of, touched), coordinates, groupCoordinates, touched, held, rested };
     }
+    touched.forEach((value, at) => { held[at] = Math.max(held[at], value); });
   }
+}
+
+/** Effective degrees of freedom under each penalty, at the penalties found, of the curves on the face they touch. */
+function edfOnFace(of: Shaped, touched: Uint8Array): Float64Array {
+  const { search, system, problem, constraints } = of;
+  if (!touched.includes(1)) return search.current.edf.slice();
+  const logPenalties = search.current.logPenalties.slice();
+  holdCurves(of, touched);
+  evaluateAt(search, logPenalties);
+  const edf = derivatives(search, "gradient").edf.slice();
+  // A curve that touches any constraint has no free line, which is counted elsewhere.
+  heldPerPenalty(constraints, touched, edf.length).forEach((count, j) => { if (count > 0) edf[j] -= 1; });
+  search.problem = { system, layout: problem.layout, scale: problem.scale };
+  evaluateAt(search, logPenalties);
+  derivatives(search, "gradient");
+  return edf;
 }
 
 /**
