@@ -9,7 +9,7 @@ const warnAbove = 0.8;
 /** Share of the predictor's variance below which a term's estimate is rounding. */
 const smallestShare = 1e-12;
 /** Shared coordinates beyond which shares would take longer than the fit. */
-const mostCoordinates = 500;
+const mostCoordinates = 300;
 
 export type Concurvity = { shares: (number | null)[]; warnings: ModelWarning[] };
 

@@ -18,7 +18,7 @@ const leastCurvature = 1e-4;
 /** Penalised degrees of freedom below which a penalty is at its limit: it moves nothing, and its log has no variance. */
 const leastDegrees = 1e-4;
 /** Shared coordinates beyond which the correction would take longer than the fit. */
-const mostCoordinates = 500;
+const mostCoordinates = 300;
 
 /**
  * Effective degrees of freedom with and without the uncertainty of the penalties: tr(F), its bound 2 tr(F) - tr(FF), and
@@ -37,6 +37,7 @@ export function modelDegrees(posterior: Posterior, places: readonly TermPlace[],
   let plain = size - information.dropped.length + (groups === null ? 0 : groups.count * groups.size);
   for (let k = 0; k < size; k++) plain -= shared[k] * covariance[k * size + k];
   for (let row = 0; groups !== null && row < groups.count * groups.size; row++) plain -= grouped[row % groups.size] * ownVariance(posterior, row);
+  if (!posterior.penalties.some(({ isEstimated }) => isEstimated)) return { plain, bound, corrected: plain, isCorrected: true };
   const root = size > mostCoordinates ? null : arrowRoot(posterior, splineBasis(posterior, places));
   if (root === null) return { plain, bound, corrected: bound, isCorrected: false };
   const conjugated = posterior.penalties.map((penalty) => conjugatedPenalty(posterior, root, penalty));
