@@ -86,19 +86,47 @@ function liftUntilRegular(search: PenaltySearch, start: Float64Array): void {
 
 /**
  * Chooses penalties for one working model from two starts, stiff (e^6 times the default) and loose (e^-6): about one
- * series in nine has several optima, and the better criterion wins.
+ * series in nine has several optima, and the better criterion wins. Where a penalty went to its limit, it is let go from
+ * its default once more: an optimum between may be hidden from both.
  *
  * @returns whether it came to rest; the result is `search.current`.
  * @example const rested = bestPenalties(search, plan);
  */
 export function bestPenalties(search: PenaltySearch, plan: PenaltyPlan): boolean {
-  const options = { fellnerSchallSteps: 2, maxSteps: 60 };
-  const stiffRested = refinePenalties(search, plan, { ...options, start: startPenalties(search, plan, 6) });
-  if (plan.automatic.length === 0) return stiffRested;
-  const { logPenalties: stiff, criterion } = search.current;
-  exchangeKept(search);
-  const looseRested = refinePenalties(search, plan, { ...options, start: startPenalties(search, plan, -6), stopNear: stiff });
-  if (search.current.criterion < criterion - 1e-9 * Math.abs(criterion)) return looseRested;
-  exchangeKept(search);
-  return stiffRested;
+  let rested = refinePenalties(search, plan, { fellnerSchallSteps: 2, maxSteps, start: startPenalties(search, plan, 6) });
+  if (plan.automatic.length === 0) return rested;
+  const loose = startPenalties(search, plan, -6);
+  rested = betterOf(search, plan, { start: loose, fellnerSchallSteps: 2, maxSteps }, rested);
+  const freed = freedPenalties(search, plan);
+  return freed === null ? rested : betterOf(search, plan, { start: freed, fellnerSchallSteps: 0, maxSteps }, rested);
 }
+
+/** Newton steps allowed from one start. */
+export const maxSteps = 60;
+
+/** Searches from another start, and goes back to the optimum known already unless the new one's criterion is lower. */
+function betterOf(search: PenaltySearch, plan: PenaltyPlan, options: RefineOptions, knownRested: boolean): boolean {
+  const { logPenalties, criterion } = search.current;
+  exchangeKept(search);
+  const rested = refinePenalties(search, plan, { ...options, stopNear: logPenalties });
+  if (search.current.criterion < criterion - 1e-9 * Math.abs(criterion)) return rested;
+  exchangeKept(search);
+  return knownRested;
+}
+
+/**
+ * Log penalties as they are, but those at their limit back at the default; null where none is.
+ *
+ * @example freedPenalties(search, plan); // a third start
+ */
+export function freedPenalties(search: PenaltySearch, plan: PenaltyPlan): Float64Array | null {
+  const { logPenalties } = search.current;
+  const atLimit = plan.automatic.filter((penalty) => logPenalties[penalty] >= search.highest[penalty] - limitMargin);
+  if (atLimit.length === 0) return null;
+  const freed = logPenalties.slice();
+  for (const penalty of atLimit) freed[penalty] = search.defaults[penalty];
+  return freed;
+}
+
+/** Log units below the highest penalty from which a curve is the penalty's straight line for all purposes. */
+const limitMargin = 4;

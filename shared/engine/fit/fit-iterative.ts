@@ -1,11 +1,13 @@
 import type { IterativeRules } from "../family/family-rules";
-import { planPenalties, refinePenalties, startPenalties } from "./choose-penalties";
+import { freedPenalties, maxSteps, planPenalties, refinePenalties, startPenalties } from "./choose-penalties";
+import type { PenaltyPlan } from "./choose-penalties";
 import type { CoefficientMap } from "./coefficient-map";
 import type { Design } from "./design";
 import { createScratch, normalEquations } from "./normal-equations";
 import type { NormalEquations, Scratch } from "./normal-equations";
 import { layOutPenalties } from "./penalties";
 import { createSearch } from "./penalty-search";
+import type { PenaltySearch } from "./penalty-search";
 import type { Coordinates } from "./predictor";
 import { coefficientsAt, predictorOf } from "./predictor";
 import { shapeConstraints } from "./shape-constraints";
@@ -62,29 +64,39 @@ export function fitIterative(
   const nothing: Before = { dropped: null, search: null, held: null };
   const stiff = iterate(problem, { predictor: family.start(rows), theta: 1, logFactor: 6, before: nothing });
   if (problem.plan.automatic.length === 0) return stiff;
-  const loosePenalties = looseOptimum(problem, stiff);
-  if (loosePenalties === null) return stiff;
-  const { held, system: { dropped } } = stiff.solution;
-  const loose = iterate(problem, {
-    predictor: stiff.linearPredictor, theta: stiff.theta ?? 1, penalties: loosePenalties, before: { dropped, search: null, held },
-  });
-  return loose.converged && loose.criterion < stiff.criterion ? loose : stiff;
+  return [looseStart, freedPenalties].reduce((best, startOf) => anotherOptimum(problem, best, startOf) ?? best, stiff);
 }
 
-/** Log penalties of another optimum of the working model at rest, or null where the loose start is drawn to the same. */
-function looseOptimum(problem: Problem, stiff: WorkingFit): Float64Array | null {
-  const { plan } = problem;
-  const search = createSearch(stiff.solution.search.problem);
-  const known = stiff.solution.search.current.logPenalties;
+/** The loose start, but what is held to degrees of freedom or given stays as it is. */
+function looseStart(search: PenaltySearch, plan: PenaltyPlan): Float64Array {
   const start = startPenalties(search, plan, -6);
-  for (const { penalties } of plan.asked) for (const penalty of penalties) start[penalty] = known[penalty];
-  refinePenalties(search, plan, { start, fellnerSchallSteps: 2, maxSteps: 60, stopNear: known });
+  for (const { penalties } of plan.asked) for (const penalty of penalties) start[penalty] = search.current.logPenalties[penalty];
+  return start;
+}
+
+/**
+ * Searches from another start in the working model at rest; where that is drawn to another optimum, follows it to its own
+ * rest. Null where it is drawn to the same, or to one of a higher criterion.
+ */
+function anotherOptimum(
+  problem: Problem, best: WorkingFit, startOf: (search: PenaltySearch, plan: PenaltyPlan) => Float64Array | null,
+): WorkingFit | null {
+  const { plan } = problem;
+  const { solution: { search: { current: { logPenalties: known } }, touched, system: { dropped } } } = best;
+  const start = startOf(best.solution.search, plan);
+  if (start === null) return null;
+  const search = createSearch(best.solution.search.problem);
+  refinePenalties(search, plan, { start, fellnerSchallSteps: startOf === looseStart ? 2 : 0, maxSteps, stopNear: known });
   const found = search.current.logPenalties;
   const isSame = plan.automatic.every((penalty) => {
     const bothStraight = found[penalty] > search.highest[penalty] - 4 && known[penalty] > search.highest[penalty] - 4;
     return bothStraight || Math.abs(found[penalty] - known[penalty]) < 0.25;
   });
-  return isSame ? null : found.slice();
+  if (isSame) return null;
+  const other = iterate(problem, {
+    predictor: best.linearPredictor, theta: best.theta ?? 1, penalties: found.slice(), before: { dropped, search: null, held: touched },
+  });
+  return other.converged && other.criterion < best.criterion ? other : null;
 }
 
 type Start = { predictor: Float64Array; theta: number; logFactor?: number; penalties?: Float64Array; before: Before };

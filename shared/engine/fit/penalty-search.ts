@@ -8,7 +8,7 @@ import { differentiate, evaluateLikelihood } from "./restricted-likelihood";
 
 /** How far, in log units, a penalty may go from its default before it is frozen there: a straight line, or no penalty. */
 const upwards = 16;
-const downwards = 20;
+const downwards = 27;
 /** A block the unpenalised columns all but reproduce keeps rounding only; penalties are not let near that. */
 const ownShareOfDefault = 1e-8;
 const ownShareOfLowest = 1e-12;
