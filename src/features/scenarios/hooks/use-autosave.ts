@@ -26,6 +26,7 @@ export function useAutosave({ scenario, edit, enabled }: Asked) {
   const queryClient = useQueryClient();
   const [state, setState] = useState<SaveState>({ kind: "saved", at: scenario.updatedAt });
   const saved = useRef(edit);
+  const savedAt = useRef(scenario.updatedAt);
   const version = useRef(scenario.version);
   const isSaving = useRef(false);
   const latest = useRef(edit);
@@ -43,6 +44,7 @@ export function useAutosave({ scenario, edit, enabled }: Asked) {
         const answer = await saveScenario({ id: scenario.id, version: version.current, draft: draftOf(scenario, sent) });
         version.current = answer.version;
         saved.current = sent;
+        savedAt.current = answer.updatedAt;
         queryClient.setQueryData(scenarioQuery(scenario.id).queryKey, answer);
         void queryClient.invalidateQueries({ queryKey: ["scenarios"] });
         setState({ kind: "saved", at: answer.updatedAt });
@@ -58,7 +60,12 @@ export function useAutosave({ scenario, edit, enabled }: Asked) {
 
   const stopped = state.kind === "conflict";
   useEffect(() => {
-    if (!enabled || stopped || edit === saved.current) return;
+    if (!enabled || stopped) return;
+    if (edit === saved.current) {
+      // Undone before it was sent: nothing is left to save.
+      setState((now) => (now.kind === "waiting" ? { kind: "saved", at: savedAt.current } : now));
+      return;
+    }
     setState((now) => (now.kind === "saving" ? now : { kind: "waiting" }));
     const timer = setTimeout(() => void save(), patienceMs);
     return () => clearTimeout(timer);
@@ -76,6 +83,7 @@ export function useAutosave({ scenario, edit, enabled }: Asked) {
     accept: useCallback((theirs: Scenario, taken: ScenarioEdit) => {
       version.current = theirs.version;
       saved.current = taken;
+      savedAt.current = theirs.updatedAt;
       latest.current = taken;
       setState({ kind: "saved", at: theirs.updatedAt });
     }, []),
