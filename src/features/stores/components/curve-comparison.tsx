@@ -62,7 +62,7 @@ export const CurveComparison = ({ comparison, driver, groups, groupOf, selected,
   };
   const table = { rows, chain: chainRow, selected, onSelect };
   return (
-    <div className="grid grid-cols-[minmax(0,1fr)] items-start gap-5 xl:grid-cols-[minmax(0,1.3fr)_minmax(0,1fr)]">
+    <div className="grid grid-cols-[minmax(0,1fr)] items-start gap-5 xl:grid-cols-[minmax(0,1.1fr)_minmax(0,1fr)]">
       <div className="flex min-w-0 flex-col gap-5">
         <Sheet>
           <CurveOverlay

@@ -24,14 +24,14 @@ const unitElastic = -1;
 const columnsFor = (format: ChainFormat, domain: [number, number], level: number): TableColumn<PriceRow>[] => [
   {
     id: "interval",
-    header: `Elasticity, ${formatPercent(level)} interval`,
+    header: `${formatPercent(level)} interval`,
     value: (row) => row.elasticity?.estimate ?? null,
     cell: (row) =>
       row.elasticity && (
-        <IntervalMark {...row.elasticity} domain={domain} group={row.group} reference={unitElastic} width={168} />
+        <IntervalMark {...row.elasticity} domain={domain} group={row.group} reference={unitElastic} width={120} />
       ),
     sortable: false,
-    width: "12rem",
+    width: "9rem",
     from: "sm",
   },
   {
