@@ -4,6 +4,7 @@ import { EmptyState } from "@/components/ui/empty-state";
 import { ErrorState } from "@/components/ui/error-state";
 import { LinkButton } from "@/components/ui/link-button";
 import { LoadingState } from "@/components/ui/skeleton";
+import { ApiError } from "@/lib/api-error";
 import { paths } from "@/lib/paths";
 import { planningContextQuery } from "../api/planning-context";
 import { scenarioQuery } from "../api/scenario";
@@ -13,6 +14,17 @@ import { ScenarioBench } from "./scenario-bench";
 export const ScenarioPage = ({ scenarioId }: { scenarioId: string }) => {
   const scenario = useQuery(scenarioQuery(scenarioId));
   if (scenario.isPending) return <LoadingState label="Opening the scenario" rows={8} />;
+  if (scenario.error instanceof ApiError && scenario.error.status === 404) {
+    return (
+      <EmptyState
+        heading="h1"
+        title="There is no such scenario"
+        action={<LinkButton to={paths.scenarios.href()}>Go to the scenarios</LinkButton>}
+      >
+        It was deleted, or the link has lost a part on its way.
+      </EmptyState>
+    );
+  }
   if (scenario.isError) {
     return <ErrorState error={scenario.error} title="The scenario could not be opened." onRetry={() => void scenario.refetch()} />;
   }

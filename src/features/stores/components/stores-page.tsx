@@ -47,7 +47,7 @@ export const StoresPage = () => {
       <PageHeader
         title={known ? `${known.name} across ${learnt || "all"} stores` : "Stores"}
         facts={[
-          "each store learnt apart",
+          "each store learnt by itself",
           "coloured by region",
           query.data?.anchor != null && `anchor ${format.price(query.data.anchor)}`,
         ].filter(Boolean)}
@@ -83,12 +83,20 @@ export const StoresPage = () => {
       {noModel || products.data?.length === 0 ? (
         <Sheet>
           <EmptyState
-            title={known ? `Nothing is learnt of ${known.name} yet` : "No products yet"}
+            title={
+              known
+                ? `Nothing is learnt of ${known.name} yet`
+                : products.data?.length
+                  ? "There is no such product"
+                  : "No products yet"
+            }
             action={known && <LinkButton to={paths.drivers.href({ product })}>Go to its drivers</LinkButton>}
           >
             {known
               ? "Stores can be compared once a model of it is in use."
-              : "Once sales are loaded and drivers learnt, stores can be compared here."}
+              : products.data?.length
+                ? `No product has the code "${product}". Choose one above.`
+                : "Once sales are loaded and drivers learnt, stores can be compared here."}
           </EmptyState>
         </Sheet>
       ) : (
