@@ -112,9 +112,12 @@ describe("a driver's lane", () => {
     await userEvent.clear(field);
     await userEvent.type(field, "9{Enter}");
     expect(slider().getAttribute("aria-valuenow")).toBe("2");
+    expect(screen.getByRole("alert").textContent).toBe("The curve ends at €2.00.");
     await userEvent.clear(field);
+    expect(screen.queryByRole("alert")).toBeNull();
     await userEvent.type(field, "cheap{Enter}");
     expect(slider().getAttribute("aria-valuenow")).toBe("2");
+    expect(screen.getByRole("alert").textContent).toBe("That is no value for it.");
     expect(onCommit.mock.calls.map(([value]) => value)).toEqual([1.25, 2]);
   });
 

@@ -5,6 +5,7 @@ import { beginHistory, redo, stepTo, undo } from "@/features/scenarios/view/hist
 import { nearestWeek } from "@/features/scenarios/view/nearest-week";
 import { changeAll } from "@/features/scenarios/view/plan-changes";
 import { laneNumber } from "@/features/scenarios/view/plan-values";
+import { readPrice } from "@/features/scenarios/view/read-price";
 import { lowestRecentPrice, pastWeeks } from "@/features/scenarios/view/history-weeks";
 import { sumParts } from "@/features/scenarios/view/sum-parts";
 import { nextWeek } from "@/features/scenarios/view/new-scenario";
@@ -48,6 +49,15 @@ describe("what a lane stands for", () => {
   it("has a price axis of whole coins that holds every price and a tenth beyond what was seen", () => {
     const axis = priceAxis({ seen: [1.19, 1.99], prices: [2.4], digits: 2 });
     expect(axis).toEqual({ min: 1.07, max: 2.4, step: 0.01 });
+  });
+
+  it("reads a typed price, and a signed percentage as a change on the regular price", () => {
+    expect(readPrice("1,43", 1.79)).toBe(1.43);
+    // Whole coins come from the lane's steps; here only rounding of the machine is allowed for.
+    expect(readPrice("−20 %", 1.79)).toBeCloseTo(1.432, 10);
+    expect(readPrice("+5%", 2)).toBeCloseTo(2.1, 10);
+    expect(readPrice("20 %", 1.79)).toBeNull();
+    expect(readPrice("cheap", 1.79)).toBeNull();
   });
 
   it("moves to the neighbouring week by a small step, also over the end of a year", () => {

@@ -36,6 +36,8 @@ export type DriverLaneProps = {
   format: (value: number) => string;
   /** Lets the value be typed. */
   parse?: (text: string) => number | null;
+  /** What can be typed, where that is more than a number. */
+  hint?: string;
   /** On the axis; by default as `format`. */
   formatTick?: (value: number) => string;
   /** By default at round values; a year's axis gives months. */
@@ -101,6 +103,8 @@ export const DriverLane = (props: DriverLaneProps) => {
           isMixed={mixed !== undefined}
           steps={steps}
           parse={props.readOnly ? undefined : props.parse}
+          format={format}
+          hint={props.hint}
           onCommit={commit}
         />
       }

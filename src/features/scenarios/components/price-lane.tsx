@@ -6,11 +6,11 @@ import { Term } from "@/components/ui/term";
 import { useChain } from "@/lib/chain";
 import { currencyDigits } from "@/lib/format/money";
 import { useChainFormat } from "@/lib/format/chain-format";
-import { parseNumber } from "@/lib/format/parse-number";
 import { laneEffect } from "../view/lane-effect";
 import { axisValues, lanePoints, supportFor } from "../view/lane-points";
 import { laneNumber, pricesOf, regularPricesOf } from "../view/plan-values";
 import { priceAxis } from "../view/price-axis";
+import { readPrice } from "../view/read-price";
 import { seenValues } from "../view/seen-values";
 import type { BenchProps } from "./bench-lanes";
 import { UnlearntLane } from "./unlearnt-lane";
@@ -41,6 +41,7 @@ export const PriceLane = ({ figures, level, readOnly, preview, set }: BenchProps
   }, [laneStores, baseCells, level, digits, regular]);
 
   if (!still || !planned || !baseline) return <UnlearntLane driver="price" label="Price" />;
+  const isMoved = !planned.mixed && planned.value !== baseline.value;
   const elasticity = elasticityAt({ stores: laneStores, price: planned.value, level });
   return (
     <DriverLane
@@ -55,12 +56,14 @@ export const PriceLane = ({ figures, level, readOnly, preview, set }: BenchProps
       onCommit={(price) => set("price", price)}
       readOnly={readOnly}
       format={format.price}
-      parse={parseNumber}
+      parse={(text) => readPrice(text, baseline.value)}
+      hint="A price, or a change on the base such as −20 %."
       effect={laneEffect(prediction.split.find((row) => row.driver === "price"), { format })}
       detail={
         <>
           base {baseline.mixed ? "mixed, mean " : ""}
           {format.price(baseline.value)}
+          {isMoved && ` · ${format.percent(planned.value / baseline.value - 1, { signed: true })}`}
           {elasticity && (
             <>
               {" · "}
