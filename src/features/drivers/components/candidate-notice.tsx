@@ -7,10 +7,16 @@ import { useChainFormat } from "@/lib/format/chain-format";
 import { countOf } from "@/lib/format/number";
 import { usePutModelInUse } from "../api/put-in-use";
 
-type CandidateNoticeProps = { model: Model; isShown: boolean; onShow: () => void };
+type CandidateNoticeProps = {
+  model: Model;
+  isShown: boolean;
+  onShow: () => void;
+  /** Back to the model in use, where there is one. */
+  onLeave?: () => void;
+};
 
 /** A fit that is not in use: a person looks at its curves and puts it in use, or leaves it. */
-export const CandidateNotice = ({ model, isShown, onShow }: CandidateNoticeProps) => {
+export const CandidateNotice = ({ model, isShown, onShow, onLeave }: CandidateNoticeProps) => {
   const format = useChainFormat();
   const status = useStatusLine();
   const putInUse = usePutModelInUse(model.product);
@@ -20,11 +26,17 @@ export const CandidateNotice = ({ model, isShown, onShow }: CandidateNoticeProps
         <span>
           {isShown ? "You are looking at a fit that is not in use" : "A newer fit waits to be looked at"}: made{" "}
           {format.moment(model.createdAt)} by {model.createdBy}, {countOf(model.fits.length, "store")}.
+          {isShown && !model.may.use && " A category manager can put it in use."}
         </span>
         <span className="flex gap-2">
           {!isShown && (
             <Button size="small" onClick={onShow}>
               Look at its curves
+            </Button>
+          )}
+          {isShown && onLeave && (
+            <Button size="small" onClick={onLeave}>
+              Back to the model in use
             </Button>
           )}
           {isShown && model.may.use && (

@@ -29,6 +29,7 @@ export const ProductDrivers = (props: ProductDriversProps) => {
   const nameOf = (code: string) => stores.find((store) => store.code === code)?.name ?? code;
   const fit = chooseFit(model, wantedStore);
   const waiting = model.state === "candidate" ? model : newerCandidate(models, model);
+  const inUse = models.find(({ state }) => state === "in-use");
   const skipped = wantedStore ? model.skipped.find(({ store }) => store === wantedStore) : undefined;
   const isUnknown = wantedStore !== null && fit?.store !== wantedStore;
   return (
@@ -42,7 +43,12 @@ export const ProductDrivers = (props: ProductDriversProps) => {
         {mayFit && <FitButton product={model.product} label="Fit anew" jobId={models[0].jobId} />}
       </div>
       {waiting && (
-        <CandidateNotice model={waiting} isShown={waiting.id === model.id} onShow={() => onModel(waiting.id)} />
+        <CandidateNotice
+          model={waiting}
+          isShown={waiting.id === model.id}
+          onShow={() => onModel(waiting.id)}
+          onLeave={inUse && (() => onModel(inUse.id))}
+        />
       )}
       {isUnknown || !fit ? (
         <Sheet>
