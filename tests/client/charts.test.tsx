@@ -169,6 +169,26 @@ describe("a driver of levels", () => {
     expect(bar).toBeLessThan(number(band, "y") + number(band, "height"));
   });
 
+  it("hatches a level that most of several stores hardly saw, however many weeks they have together", () => {
+    const hatched = (isHardlySeen: boolean) => {
+      const { container, unmount } = renderInPage(
+        <FactorLane
+          driver="promotion"
+          label="Promotion"
+          title="Demand by promotion"
+          levels={levels.map((level) => ({ ...level, weeks: 9, isHardlySeen }))}
+          value="feature"
+          baseline="none"
+          onChange={vi.fn()}
+        />,
+      );
+      const count = container.querySelectorAll('[data-level="feature"] [fill^="url(#"]').length;
+      unmount();
+      return count;
+    };
+    expect([hatched(true), hatched(false)]).toEqual([1, 0]);
+  });
+
   it("has stores in the order of their estimates within each level", () => {
     const dots = [1.5, 1.2, 1.9].map((estimate, index) => ({
       id: `s${index}`,

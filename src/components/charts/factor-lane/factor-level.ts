@@ -8,6 +8,8 @@ export type FactorLevel = {
   upper: number | null;
   /** Weeks seen with this level. */
   weeks: number;
+  /** Whether to hatch it, where that is not told by `weeks` alone: several stores, some of which hardly saw it. */
+  isHardlySeen?: boolean;
 };
 
 export type LearntLevel = FactorLevel & { estimate: number; lower: number; upper: number };

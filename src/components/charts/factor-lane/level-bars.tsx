@@ -36,7 +36,7 @@ export const LevelBars = ({ levels, geometry, baseline, value, hatchId }: LevelB
     const height = y.toPixel(level.estimate);
     const [top, bottom] = [inside(y.toPixel(level.upper)), inside(y.toPixel(level.lower))];
     const left = middle - barWidth / 2;
-    const isThin = level.weeks < fewestWeeks && level.value !== baseline;
+    const isThin = (level.isHardlySeen ?? level.weeks < fewestWeeks) && level.value !== baseline;
     return (
       <g key={level.value} data-level={level.value}>
         {isThin && <rect x={left - 8} y={0} width={barWidth + 16} height={innerHeight} fill={`url(#${hatchId})`} />}

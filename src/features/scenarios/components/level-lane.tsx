@@ -27,7 +27,8 @@ export const LevelLane = ({ figures, level, readOnly, set, driver, field, levels
       const weeks = index < 0 ? 0 : Math.round(curve.supportCount[index]);
       if (index < 0) return { value, label, weeks, estimate: null, lower: null, upper: null };
       const at = (numbers: Float64Array) => Math.exp(numbers[index]);
-      return { value, label, weeks, estimate: at(curve.estimate), lower: at(curve.lower), upper: at(curve.upper) };
+      const isHardlySeen = curve.hardlySeen[index] === 1;
+      return { value, label, weeks, isHardlySeen, estimate: at(curve.estimate), lower: at(curve.lower), upper: at(curve.upper) };
     });
   }, [laneStores, driver, level, levels]);
 
