@@ -19,7 +19,7 @@ export const NewScenarioRoute = () => {
   const preset = { product: search.get("product") ?? undefined, store: search.get("store") ?? undefined };
   return (
     <div className="mx-auto max-w-4xl">
-      <PageHeader title="New scenario" facts={["Prices and promotions are set on its page, by dragging"]} />
+      <PageHeader title="New scenario" facts={["Prices and promotions are set on its own page next"]} />
       <NewScenario today={today} preset={preset} onCreated={(scenario) => void navigate(paths.scenario.href(scenario.id), { replace: true })} />
     </div>
   );

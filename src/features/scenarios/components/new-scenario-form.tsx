@@ -1,6 +1,7 @@
 import { useQuery } from "@tanstack/react-query";
 import { useMemo, useState } from "react";
 import type { FormEvent } from "react";
+import { flushSync } from "react-dom";
 import type { Product, Store } from "@shared/contract/catalogue";
 import type { Chain } from "@shared/contract/chain";
 import type { Scenario } from "@shared/contract/scenarios";
@@ -67,10 +68,14 @@ const NewScenarioForm = ({ today, preset, onCreated, products, stores, chain }: 
     stores: chosen.size > 0 ? undefined : "Choose at least one store.",
   };
   const shown: Partial<typeof faults> = isTried ? faults : {};
-  const submit = (event: FormEvent) => {
+  const submit = (event: FormEvent<HTMLFormElement>) => {
     event.preventDefault();
-    setTried(true);
-    if (!product || faults.name || faults.stores) return;
+    // The messages stand before the first of them takes the focus.
+    flushSync(() => setTried(true));
+    if (!product || faults.name || faults.stores) {
+      event.currentTarget.querySelector<HTMLElement>('[aria-invalid="true"], [data-invalid] input')?.focus();
+      return;
+    }
     const order = stores.map((store) => store.code).filter((code) => chosen.has(code));
     const draft = { name: name.trim(), product, stores: order, weeks: { first, last: lastWeekOf(first, count) }, cells: [], fixedCost: 0 };
     create.mutate(draft, { onSuccess: onCreated });

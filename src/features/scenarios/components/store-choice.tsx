@@ -23,7 +23,7 @@ export const StoreChoice = ({ stores, chosen, onChange, error }: StoreChoiceProp
   };
   const all = stores.map((store) => store.code);
   return (
-    <fieldset aria-describedby={error ? "stores-error" : undefined}>
+    <fieldset data-invalid={error ? "" : undefined} aria-describedby={error ? "stores-error" : undefined}>
       <legend className="mb-1.5 font-medium">
         Stores <span className="font-normal text-muted">{chosen.size === 0 ? "none chosen" : `${chosen.size} of ${stores.length}`}</span>
       </legend>
