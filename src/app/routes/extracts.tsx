@@ -27,7 +27,7 @@ export const ExtractsRoute = () => {
   const extracts = query.data?.pages.flatMap((page) => page.items) ?? [];
   return (
     <>
-      <PageHeader title="Extracts" facts={["Files with stores, products and weekly sales, as they arrived"]} />
+      <PageHeader title="Extracts" facts={["Files as they arrived: stores, products, weekly sales, events and temperatures"]} />
       <div className="flex flex-col gap-5">
         {mayUpload && (
           <UploadPanel
