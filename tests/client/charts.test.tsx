@@ -182,9 +182,9 @@ describe("a driver of levels", () => {
           onChange={vi.fn()}
         />,
       );
-      const count = container.querySelectorAll('[data-level="feature"] [fill^="url(#"]').length;
+      const fills = [...container.querySelectorAll('[data-level="feature"] rect')].map((rect) => rect.getAttribute("fill"));
       unmount();
-      return count;
+      return fills.filter((fill) => fill?.startsWith("url(#")).length;
     };
     expect([hatched(true), hatched(false)]).toEqual([1, 0]);
   });
