@@ -35,6 +35,7 @@ export const nastyForms: NastyFile[] = [
   { what: "a header alone", file: `${salesHeader}\n`, unusable: ["no-rows", /header, but no rows/] },
   { what: "blank lines alone", file: "\n\n \n\n", unusable: ["missing-columns", /week/] },
   { what: "a header without units and net sales", file: "week,store,product,regular_price\n2026-06-01,S1,P1,1.79", unusable: ["missing-columns", /the columns units and net_sales/] },
+  { what: "rows without a header", file: `${first}\n${second}\n`, unusable: ["missing-columns", /put a line with the columns' names above it/] },
   { what: "a file of stores sent as sales", file: storesFile, unusable: ["missing-columns", /looks like a file of stores/] },
   { what: "a header with units twice", file: `${salesHeader},Units\n${first},3`, unusable: ["repeated-column", /units more than once/] },
   { what: "semicolons between columns", file: salesFile(first).replaceAll(",", ";"), unusable: ["not-comma-separated", /semicolons/] },

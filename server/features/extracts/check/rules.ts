@@ -11,7 +11,7 @@ export const rules = {
   // The row as text
   "open-quote": error("Quotes in this line do not close, or do not close before a comma", "Write a quote inside a value twice, and close each value that begins with one."),
   "ragged-row": error("The row has more or fewer fields than the header", "A comma inside a value needs quotes around the value."),
-  "unknown-column": warning("Columns that are not ours are passed over", "Nothing, unless a column was meant to be one of ours: then correct its name."),
+  "unknown-column": warning("Columns that are not ours are passed over", "Nothing to do, unless a column was meant to be one of ours: then correct its name."),
   "control-character": error("The value holds control characters", atTheSource),
   "missing-value": error("The value is missing", "Fill it in, or leave the row out."),
   "too-long": error("The value is longer than can be kept", "Shorten it."),
@@ -19,7 +19,7 @@ export const rules = {
   "not-a-number": error("The value is not a number", "Write numbers like 1234.5: a point for decimals, no thousands separators, no currency sign."),
   "too-many-decimals": error("Units have at most 3 decimals", "Round them to 3 decimals."),
   "too-large": error("The number is larger than can be kept", "Check the unit it is given in."),
-  rounded: warning("Amounts are kept with 4 decimals", "Nothing, if rounding to 4 decimals is right."),
+  rounded: warning("Amounts are kept with 4 decimals", "Nothing to do if rounding to 4 decimals is right."),
   "not-a-flag": error("The value is neither 0 nor 1", "Write 1 for yes, and 0 or nothing for no."),
   "not-days": error("The value is not a number of days of a week", "Write a whole number from 0 to 7."),
   "negative-amount": error("The amount is negative", atTheSource),
@@ -43,10 +43,10 @@ export const rules = {
   // What values say together
   "sales-without-units": error("There are net sales, but no units", atTheSource),
   "negative-net-sales": error("Units were sold, but net sales are negative", atTheSource),
-  "units-without-sales": warning("Units were sold, but net sales are 0: no price was paid", "Nothing, if they were given away."),
-  "net-returns": warning("More was returned than sold; the week is modelled as 0 units", "Nothing, if it is so."),
+  "units-without-sales": warning("Units were sold, but net sales are 0: no price was paid", "Nothing to do if they were given away."),
+  "net-returns": warning("More was returned than sold; the week is modelled as 0 units", "Nothing to do if it is so."),
   "sold-out-too-long": error("It was sold out on more days than the store was open", atTheSource),
-  "repeated-row": warning("The same row stands in the file again", "Nothing: it is taken once."),
+  "repeated-row": warning("The same row stands in the file again", "Nothing to do: it is taken once."),
   "contradicting-rows": error("Rows of the file contradict each other", "Leave only the right one in the file."),
 } satisfies Record<string, Rule>;
 

@@ -40,9 +40,15 @@ function missingColumns({ kind, names, missing }: { kind: ExtractKind; names: st
     return new UnreadableFile("not-comma-separated", detail);
   }
   const other = extractKindSchema.options.find((option) => option !== kind && hasAll(option, names));
-  const hint = other ? `It looks like a file of ${other}: upload it as that.` : `The first line has: ${listOf(names.slice(0, 30)).slice(0, 300)}.`;
+  const hint = other ? `It looks like a file of ${other}: upload it as that.` : hintFromFirstLine(kind, names);
   const columns = missing.length === 1 ? "the column" : "the columns";
   return new UnreadableFile("missing-columns", `The header of a ${kind} file needs ${columns} ${listOf(missing)}, which this one lacks. ${hint}`);
+}
+
+function hintFromFirstLine(kind: ExtractKind, names: readonly string[]): string {
+  const first = `The first line has: ${listOf(names.slice(0, 30)).slice(0, 300)}.`;
+  const hasNone = extractColumns[kind].every(({ name }) => !names.includes(name));
+  return hasNone ? `${first} If that is a row already, put a line with the columns' names above it.` : first;
 }
 
 const hasAll = (kind: ExtractKind, names: string[]) =>
