@@ -12,6 +12,7 @@ import { formatBytes } from "@/lib/format/bytes";
 import { kindFromName, kindNames } from "../view/extract-state";
 import { uploadProblem } from "../view/upload-problem";
 import { useUploadExtract } from "../api/upload-extract";
+import { ColumnGuide } from "./column-guide";
 import { UploadProgress } from "./upload-progress";
 
 const kindChoices = (Object.keys(kindNames) as ExtractKind[]).map((value) => ({ value, label: kindNames[value] }));
@@ -125,6 +126,7 @@ export const UploadPanel = ({ limitBytes, onUploaded }: UploadPanelProps) => {
           </Notice>
         </div>
       )}
+      {!upload.isPending && <ColumnGuide key={kind} kind={kind} />}
     </Sheet>
   );
 };
