@@ -5,8 +5,10 @@ import { sumOf } from "@/components/ui/data-table-columns";
 import type { TableColumn } from "@/components/ui/data-table-columns";
 import { QueryView } from "@/components/ui/query-view";
 import { Sheet } from "@/components/ui/sheet";
+import { TextLink } from "@/components/ui/text-link";
 import { useChainFormat } from "@/lib/format/chain-format";
 import type { ChainFormat } from "@/lib/format/chain-format";
+import { paths } from "@/lib/paths";
 import { extractChangesQuery } from "../api/extract-changes";
 import { changesSentence } from "../view/changes-summary";
 
@@ -74,7 +76,15 @@ export const ChangesPreview = ({ extractId, isLoaded }: { extractId: string; isL
       >
         {(changes) => (
           <>
-            <p className="px-4 pb-4 text-muted sm:px-5">{changesSentence(changes, isLoaded)}</p>
+            <p className="px-4 pb-4 text-muted sm:px-5">
+              {changesSentence(changes, isLoaded)}
+              {isLoaded && (
+                <>
+                  {" Curves take them in when a planner or category manager fits anew under "}
+                  <TextLink to={paths.drivers.href()}>Drivers</TextLink>.
+                </>
+              )}
+            </p>
             {changes.weeks.length > 0 && (
               <div className="border-t border-hairline">
                 <DataTable
