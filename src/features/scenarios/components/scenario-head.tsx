@@ -4,8 +4,10 @@ import type { Scenario } from "@shared/contract/scenarios";
 import { IconButton } from "@/components/ui/icon-button";
 import { PageHeader } from "@/components/ui/page-header";
 import { SegmentedControl } from "@/components/ui/segmented-control";
+import { TextLink } from "@/components/ui/text-link";
 import { useChainFormat } from "@/lib/format/chain-format";
 import { countOf } from "@/lib/format/number";
+import { paths } from "@/lib/paths";
 import type { SaveState } from "../hooks/use-autosave";
 import type { ScenarioEditing } from "../hooks/use-scenario-edit";
 import { SaveLine } from "./save-line";
@@ -26,36 +28,41 @@ export const ScenarioHead = ({ scenario, product, editing, saving, level, levels
   const format = useChainFormat();
   const { may, stores, weeks, state } = scenario;
   return (
-    <PageHeader
-      title={editing.edit.name}
-      heading={<ScenarioName name={editing.edit.name} readOnly={!may.edit} onRename={(name) => editing.change({ name })} />}
-      facts={[
-        product?.name ?? scenario.product,
-        stores.length === 1 ? `store ${stores[0]}` : countOf(stores.length, "store"),
-        format.weekSpan(weeks.first, weeks.last),
-        may.edit ? <SaveLine state={saving.state} onRetry={saving.retry} /> : `${state}, can be read only`,
-      ]}
-      actions={
-        <>
-          {may.edit && (
-            <div className="flex gap-1">
-              <IconButton label="Undo (Ctrl Z)" disabled={!editing.canUndo} onClick={editing.undo}>
-                <Undo2 />
-              </IconButton>
-              <IconButton label="Redo (Ctrl Y)" disabled={!editing.canRedo} onClick={editing.redo}>
-                <Redo2 />
-              </IconButton>
-            </div>
-          )}
-          <SegmentedControl
-            label="Level of the intervals"
-            segments={levels.map((one) => ({ value: String(one), label: `${format.percent(one)} interval` }))}
-            value={String(level)}
-            onChange={(text) => onLevel(Number(text))}
-          />
-          <ScenarioMenu scenario={scenario} />
-        </>
-      }
-    />
+    <>
+      <p className="mb-1 text-sm print:hidden">
+        <TextLink to={paths.scenarios.href()}>Scenarios</TextLink>
+      </p>
+      <PageHeader
+        title={editing.edit.name}
+        heading={<ScenarioName name={editing.edit.name} readOnly={!may.edit} onRename={(name) => editing.change({ name })} />}
+        facts={[
+          product?.name ?? scenario.product,
+          stores.length === 1 ? `store ${stores[0]}` : countOf(stores.length, "store"),
+          format.weekSpan(weeks.first, weeks.last),
+          may.edit ? <SaveLine state={saving.state} onRetry={saving.retry} /> : `${state}, can be read only`,
+        ]}
+        actions={
+          <>
+            {may.edit && (
+              <div className="flex gap-1">
+                <IconButton label="Undo (Ctrl Z)" disabled={!editing.canUndo} onClick={editing.undo}>
+                  <Undo2 />
+                </IconButton>
+                <IconButton label="Redo (Ctrl Y)" disabled={!editing.canRedo} onClick={editing.redo}>
+                  <Redo2 />
+                </IconButton>
+              </div>
+            )}
+            <SegmentedControl
+              label="Level of the intervals"
+              segments={levels.map((one) => ({ value: String(one), label: `${format.percent(one)} interval` }))}
+              value={String(level)}
+              onChange={(text) => onLevel(Number(text))}
+            />
+            <ScenarioMenu scenario={scenario} />
+          </>
+        }
+      />
+    </>
   );
 };
