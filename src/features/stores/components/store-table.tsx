@@ -64,7 +64,7 @@ export const StoreTable = <Row extends StoreRow>(props: StoreTableProps<Row>) =>
       value: (row) => row.meanWeeklyUnits,
       cell: (row) => format.units(row.meanWeeklyUnits),
       align: "right",
-      width: "5.5rem",
+      width: "4.75rem",
     },
   ];
   return (
