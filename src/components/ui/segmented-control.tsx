@@ -38,7 +38,7 @@ export const SegmentedControl = <Value extends string>(props: SegmentedControlPr
           value={segment.value}
           data-driver={segment.driver}
           className={classNames(
-            "h-[34px] shrink-0 border-r border-hairline px-3.5 font-medium text-muted transition-colors last:border-r-0",
+            "h-[34px] shrink-0 border-r border-hairline px-3.5 font-medium text-muted transition-colors last:border-r-0 max-sm:px-2 max-sm:text-sm",
             "first:rounded-l-[5px] last:rounded-r-[5px] hover:bg-hover hover:text-ink focus-visible:-outline-offset-2",
             segment.driver
               ? "data-[state=on]:bg-driver-soft data-[state=on]:text-driver-text"
