@@ -44,7 +44,7 @@ const columnsFor = (format: ChainFormat, domain: [number, number], level: number
       row.elasticity && (
         <span className="whitespace-nowrap">
           {format.number(row.elasticity.estimate, { digits: 1 })}{" "}
-          <span className="text-sm font-normal text-muted">
+          <span className="text-sm font-normal text-muted max-sm:block">
             {format.number(row.elasticity.lower, { digits: 1 })} to {format.number(row.elasticity.upper, { digits: 1 })}
           </span>
         </span>
