@@ -411,8 +411,8 @@ export type TermReport = {
   /** That a line would do in place of the curve; null for terms without a penalised curve around a line. */
   curveTest: TermTest | null;
   /**
-   * Share of the term's fitted values that all other terms reproduce, 0 to 1; null where its estimate is zero, and with
-   * local regression.
+   * Share of the term's fitted values that all other terms reproduce, 0 to 1; null where its estimate is zero, with local
+   * regression, and beyond 300 shared coordinates, where it would take longer than the fit.
    */
   concurvity: number | null;
 };
