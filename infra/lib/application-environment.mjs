@@ -17,7 +17,8 @@ export const standInStore = { bucket: "shelftide", region: "us-east-1", key: "S3
  */
 export function applicationEnvironment({ settings, state, hasDemo, mode = "production", publicUrl, env = process.env }) {
   const { port, embedsDatabase, embedsFiles, embedsMail } = settings;
-  const { database = 0, files, smtp } = state.ports;
+  // A part that was never started has no port yet: commands that need only the database leave it so.
+  const { database = 0, files = 0, smtp = 0 } = state.ports;
   // Whether demo accounts may exist is decided here alone; an empty variable counts as one that is not set.
   const own = Object.fromEntries(Object.entries(env).filter(([name, value]) => value && name !== "SHELFTIDE_EMBEDDED"));
   return {
