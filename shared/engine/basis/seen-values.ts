@@ -1,7 +1,6 @@
 import type { SeenValues } from "../types";
-
-/** Sorting is quicker than counting where almost every value is another. */
-const mostCounted = 2000;
+import { distinctValues } from "./distinct-values";
+import type { DistinctValues } from "./distinct-values";
 
 /**
  * Distinct values of a column, ascending, and how many rows have each. O(n) for few distinct values, else O(n log n).
@@ -10,20 +9,8 @@ const mostCounted = 2000;
  * @example seenNumbers(Float64Array.of(2, 1, 2)); // values 1, 2; counts 1, 2
  */
 export function seenNumbers(values: Float64Array): { values: Float64Array; counts: Float64Array } {
-  const counted = values.length < mostCounted ? null : countValues(values);
-  if (counted === null) return seenBySorting(values);
-  const distinct = Float64Array.from(counted.keys()).sort();
-  return { values: distinct, counts: distinct.map((value) => counted.get(value) ?? 0) };
-}
-
-function countValues(values: Float64Array): Map<number, number> | null {
-  const counts = new Map<number, number>();
-  for (let row = 0; row < values.length; row++) {
-    const value = values[row];
-    counts.set(value, (counts.get(value) ?? 0) + 1);
-    if (counts.size > mostCounted) return null;
-  }
-  return counts;
+  const found = distinctValues(values);
+  return found === null ? seenBySorting(values) : { values: found.values, counts: found.counts };
 }
 
 function seenBySorting(values: Float64Array): { values: Float64Array; counts: Float64Array } {
@@ -58,12 +45,36 @@ export function seenLevels(levels: readonly string[], index: Int32Array): SeenVa
  * @example seenPerLevel(Float64Array.of(2, 1, 2), Int32Array.of(0, 1, 0), 2)[0]; // values 2; counts 2
  */
 export function seenPerLevel(values: Float64Array, index: Int32Array, count: number): { values: Float64Array; counts: Float64Array }[] {
+  const found = distinctValues(values);
+  if (found !== null && found.values.length * count <= mostCells) return fromTable(found, index, count);
   const lengths = new Int32Array(count);
   for (let row = 0; row < index.length; row++) lengths[index[row]]++;
   const perLevel = Array.from(lengths, (length) => new Float64Array(length));
   const used = new Int32Array(count);
   for (let row = 0; row < index.length; row++) perLevel[index[row]][used[index[row]]++] = values[row];
   return perLevel.map(seenNumbers);
+}
+
+/** Levels times distinct values up to which a table of their counts is made. */
+const mostCells = 1_000_000;
+
+function fromTable({ values, codes }: DistinctValues, index: Int32Array, count: number): { values: Float64Array; counts: Float64Array }[] {
+  const width = values.length;
+  const table = new Int32Array(count * width);
+  for (let row = 0; row < index.length; row++) table[index[row] * width + codes[row]]++;
+  return Array.from({ length: count }, (_, level) => {
+    const own = table.subarray(level * width, (level + 1) * width);
+    let distinct = 0;
+    for (let k = 0; k < width; k++) if (own[k] > 0) distinct++;
+    const seen = { values: new Float64Array(distinct), counts: new Float64Array(distinct) };
+    let used = 0;
+    for (let k = 0; k < width; k++) {
+      if (own[k] === 0) continue;
+      seen.values[used] = values[k];
+      seen.counts[used++] = own[k];
+    }
+    return seen;
+  });
 }
 
 /**
