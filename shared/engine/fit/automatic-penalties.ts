@@ -4,6 +4,8 @@ import { derivatives, tryPenalties, withinBounds } from "./penalty-search";
 
 /** Largest change of a log penalty in one step. */
 const longestStep = 5;
+/** The same for a Fellner-Schall step, which is sure in direction: from a stiff start there is far to go. */
+const longestSureStep = 8;
 const gradientTolerance = 1e-7;
 
 /**
@@ -19,7 +21,7 @@ export function fellnerSchallStep(search: PenaltySearch, automatic: readonly num
   const next = current.logPenalties.slice();
   for (const penalty of automatic) {
     const wanted = Math.log((scale * Math.max(current.edf[penalty], 1e-12)) / Math.max(current.squares[penalty], Number.MIN_VALUE * 1e30));
-    const step = Math.min(longestStep, Math.max(-longestStep, wanted - next[penalty]));
+    const step = Math.min(longestSureStep, Math.max(-longestSureStep, wanted - next[penalty]));
     if (Number.isFinite(step)) next[penalty] = withinBounds(search, penalty, next[penalty] + step);
   }
   tryPenalties(search, next, (trial) => Number.isFinite(trial.criterion));
@@ -130,7 +132,17 @@ function descend(search: PenaltySearch, free: readonly number[], direction: Floa
 
 function isNear(search: PenaltySearch, automatic: readonly number[], known: Float64Array): boolean {
   const { logPenalties } = search.current;
-  return automatic.every((penalty) => goesToLimit(search, penalty, known) || Math.abs(logPenalties[penalty] - known[penalty]) < near);
+  return automatic.every((penalty) =>
+    Math.abs(logPenalties[penalty] - known[penalty]) < near || goesToLimit(search, penalty, known));
+}
+
+/** What a penalty's way to the known optimum may change of the criterion, by its slope and bend here, to be of no account. */
+const flat = 1e-3;
+
+/** Whether the criterion is all but level between a penalty and the known optimum, as where a curve is unpenalised anyway. */
+function isLevel({ current: { gradient, hessian, logPenalties }, penalties }: PenaltySearch, penalty: number, known: Float64Array): boolean {
+  const way = known[penalty] - logPenalties[penalty];
+  return Math.abs(gradient[penalty] * way) + Math.abs(hessian[penalty * (penalties.length + 1)]) * way * way < flat;
 }
 
 /** Log units within which two points belong to one optimum, and the longest Newton step whose end is trusted for that. */
@@ -150,7 +162,7 @@ function pointsTo(
   const { free, direction, automatic } = step;
   const { logPenalties } = search.current;
   return automatic.every((penalty) => {
-    if (goesToLimit(search, penalty, known)) return true;
+    if (goesToLimit(search, penalty, known) || isLevel(search, penalty, known)) return true;
     const at = free.indexOf(penalty);
     const move = at < 0 ? 0 : direction[at];
     return Math.abs(move) < trusted && Math.abs(logPenalties[penalty] + move - known[penalty]) < near;

@@ -29,6 +29,9 @@ type Problem = WorkingProblem & {
   mean: Float64Array;
 };
 
+/** What deviance and criterion are measured by. */
+export type FamilyRows = { family: IterativeRules; rows: IterativeRows };
+
 /** Weighted mean square by which the linear predictor may still move at convergence, and theta as a share of itself. */
 const movementTolerance = 1e-13;
 const thetaTolerance = 1e-8;
@@ -175,7 +178,13 @@ function acceptableStep(problem: Problem, step: Step): { predictor: Float64Array
 
 const middle = (left: Float64Array, right: Float64Array): Float64Array => left.map((value, k) => (value + right[k]) / 2);
 
-function devianceOf({ family, rows }: Problem, predictor: Float64Array, theta: number): number {
+/**
+ * Weighted sum of unit deviances.
+ *
+ * @param predictor linear predictors, offset included.
+ * @example devianceOf({ family, rows }, predictor, 1);
+ */
+export function devianceOf({ family, rows }: FamilyRows, predictor: Float64Array, theta: number): number {
   let sum = 0;
   for (let row = 0; row < predictor.length; row++) {
     sum += rows.weights[row] * family.unitDeviance(rows.response[row], family.mean(predictor[row], 1), theta);
@@ -183,7 +192,12 @@ function devianceOf({ family, rows }: Problem, predictor: Float64Array, theta: n
   return sum;
 }
 
-function movement(next: Float64Array, before: Float64Array, weights: Float64Array): number {
+/**
+ * Weighted mean square by which a linear predictor moved.
+ *
+ * @example movement(next, before, workingWeights) < 1e-13; // at rest
+ */
+export function movement(next: Float64Array, before: Float64Array, weights: Float64Array): number {
   let moved = 0;
   let total = 0;
   for (let row = 0; row < next.length; row++) {
@@ -197,9 +211,12 @@ function movement(next: Float64Array, before: Float64Array, weights: Float64Arra
 /**
  * The same yardstick for every working model: unknown scale, 1/2 [(n - Mp) ln(D + b'Sb) + ln|X'WX + S| - ln|S|+] with the
  * deviance as D; known scale, 1/2 [-2 log-likelihood + b'Sb + ln|X'WX + S| - ln|S|+].
+ *
+ * @example criterionAtRest({ family, rows }, { predictor, solution, theta: 1 });
  */
-function criterionAtRest(
-  problem: Problem, at: { predictor: Float64Array; solution: WorkingSolution; theta: number },
+export function criterionAtRest(
+  problem: FamilyRows,
+  at: { predictor: Float64Array; solution: Pick<WorkingSolution, "search" | "system">; theta: number },
 ): number {
   const { family, rows } = problem;
   const { solution: { search, system }, predictor, theta } = at;
