@@ -39,6 +39,26 @@ export function splineBasis({ size }: Posterior, places: readonly TermPlace[]): 
   return { forwards, backwards };
 }
 
+/**
+ * A direction in a term's coordinates that is no one's choice: of each of its curves the first coefficient of the basis
+ * above; the first coordinate for kinds without.
+ *
+ * @returns one value per entry of `place.positions`.
+ * @example firstDirection(place)[0];
+ */
+export function firstDirection(place: TermPlace): Float64Array {
+  const { positions } = place;
+  const width = positions.length;
+  const curves = curvesOf(place);
+  if (curves.length === 0) return Float64Array.from(positions, (_position, k) => (k === 0 ? 1 : 0));
+  const forwards = new Float64Array(width * width);
+  const at = new Map(positions.map((position, k) => [position, k]));
+  for (const curve of curves) {
+    writeCurve({ ...curve, positions: curve.positions.map((position) => at.get(position) ?? 0) }, 0, { forwards, backwards: new Float64Array(width * width) }, width);
+  }
+  return Float64Array.from(positions, (_position, k) => forwards[k * width]);
+}
+
 function curvesOf(place: TermPlace): Curve[] {
   const { term, positions, own, isGrouped } = place;
   const { basis } = term;

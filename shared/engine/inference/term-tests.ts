@@ -1,6 +1,5 @@
 import { choleskyInPlace, forwardSolve } from "../linalg/cholesky";
 import { familyRules } from "../family/family";
-import { identityTransform } from "../penalty/difference-penalty";
 import type { FittedModel, ModelInformation, TermTest } from "../types";
 import { centredInformation } from "./centred-information";
 import { withoutSpan } from "./without-span";
@@ -8,6 +7,7 @@ import { block, groupedBlocks, sharedBlocks } from "./group-blocks";
 import type { CoordinateBlocks } from "./group-blocks";
 import type { Diagonals } from "./penalty-share";
 import type { Posterior } from "./posterior";
+import { firstDirection } from "./spline-basis";
 import { simpleTail, truncatedTest } from "./truncated-test";
 import type { TruncatedTest } from "./truncated-test";
 import type { TermPlace } from "./term-places";
@@ -99,7 +99,7 @@ function testFunction(
   const positions = of.columns.map((k) => place.positions[k]);
   const rank = positions.reduce((sum, position) => sum + degrees.shared[position], 0);
   if (rank < leastDegrees) return nothingLeft;
-  const towards = orientation(place);
+  const towards = firstDirection(place);
   return truncatedTest({
     estimate: Float64Array.from(positions, (position) => information.coordinates[position]),
     covariance: block(posterior.covariance, posterior.size, positions).map((value) => value * model.dispersion),
@@ -116,32 +116,6 @@ function testCurve(setting: TestSetting, place: TermPlace): TruncatedTest | null
   const all = centredInformation(setting.information, place);
   const columns = positions.flatMap((_position, k) => (k < unpenalised ? [] : [k]));
   return testFunction(setting, place, { columns, information: withoutSpan(all, positions.length, unpenalised) });
-}
-
-/**
- * The curve that eigenvectors are turned towards: its second spline, less what centring takes (the first column that
- * Householder's reflection leaves of a centred basis). Any fixed direction would do; this one is common.
- */
-function orientation({ term, own }: TermPlace): Float64Array {
-  const { basis } = term;
-  if (basis.kind !== "smooth") return Float64Array.from(own, (_own, k) => (k === 0 ? 1 : 0));
-  const { size, centring } = basis;
-  const length = Math.sqrt(centring.reduce((sum, value) => sum + value * value, 0));
-  const reflected = centring.slice();
-  reflected[0] += length;
-  const factor = reflected[1] / (length * (length + centring[0]));
-  const raw = reflected.map((value, k) => (k === 1 ? 1 : 0) - factor * value);
-  const { matrix } = identityTransform(size, false);
-  return Float64Array.from(own, (column) => {
-    let product = 0;
-    let square = 0;
-    for (let k = 0; k < size; k++) {
-      const value = matrix[k * (size - 1) + column];
-      product += value * raw[k];
-      square += value * value;
-    }
-    return product / square;
-  });
 }
 
 const randomKinds = ["random-effect", "factor-smooth"];

@@ -50,8 +50,8 @@ export function simultaneousQuantile(model: FittedModel, termId: string, options
   const random = seededRandom(options.seed ?? 1);
   const standardised = standardisedRoot(model, termId, options);
   const { rows, columns } = standardised;
-  // Nothing bends: all points stray together, as those of a straight line do.
-  if (rows === 0 || columns === 1) return pointwise;
+  // Nothing bends: one point alone, or all straying together as those of a straight line do.
+  if (rows <= 1 || columns === 1) return pointwise;
   const entries = standardised.to1DArray();
   const normals = new Float64Array(columns);
   const largest = new Float64Array(draws);
