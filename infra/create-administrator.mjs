@@ -6,13 +6,15 @@ import { migrate } from "./lib/prepare.mjs";
 import { Problem } from "./lib/problem.mjs";
 import { runScript } from "./lib/script.mjs";
 
-// npm run create-administrator -- EMAIL: prints a one-time password, whether or not the application runs.
+// npm run create-administrator -- EMAIL [--roles ROLE,ROLE]: prints a one-time password, whether or not the application
+// runs. The script that makes the person reads the roles.
 const say = (/** @type {string} */ line) => console.error(line);
 
 await runCommand(async (context) => {
-  const [email, ...more] = process.argv.slice(2);
-  if (!email || more.length > 0 || !/^\S+@\S+$/.test(email)) {
-    throw new Problem("Give one e-mail address: npm run create-administrator -- EMAIL");
+  const args = process.argv.slice(2);
+  const [email] = args;
+  if (!email || !/^\S+@\S+$/.test(email)) {
+    throw new Problem("Give one e-mail address first: npm run create-administrator -- EMAIL [--roles ROLE,ROLE]");
   }
   const { stopping } = context;
   await ensurePackages({ say, stopping });
@@ -21,7 +23,7 @@ await runCommand(async (context) => {
   const env = applicationEnvironment({ settings, state, hasDemo: state.demo === "loaded" && settings.embedsDatabase });
   await migrate(database, env);
   await runScript({
-    script: "server/features/accounts/create-administrator.ts", args: [email], env, stopping, show: true,
+    script: "server/features/accounts/create-administrator.ts", args, env, stopping, show: true,
     failure: `No administrator was made for ${email}`,
   });
 });

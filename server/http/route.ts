@@ -10,7 +10,7 @@ export type Caller = {
   name: string;
   /** The role's permissions, cut to the token's where a token calls. */
   permissions: ReadonlySet<Permission>;
-  /** Codes of the categories this person decides on. */
+  /** Codes of the categories this person decides on; "*" is every one. */
   categories: readonly string[];
   tokenId: string | null;
   /** Signed in with a one-time password: nothing but a new password is allowed. */

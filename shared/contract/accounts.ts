@@ -15,7 +15,7 @@ export const sessionSchema = z.object({
     email: z.string(),
     name: z.string(),
     roles: z.array(roleSchema),
-    /** Codes of the categories a category manager decides on. */
+    /** Codes of the categories a category manager decides on; "*" is every one. */
     categories: z.array(z.string()),
     mustChangePassword: z.boolean(),
   }),

@@ -31,3 +31,11 @@ export function permissionsOf(roles: readonly Role[]): Permission[] {
   const given = new Set(roles.flatMap((role) => permissionsByRole[role]));
   return permissionSchema.options.filter((permission) => given.has(permission));
 }
+
+/** In a person's categories it stands for every category, also those that products bring later. */
+export const everyCategory = "*";
+
+/** Whether a category is among those a person decides on. */
+export function decidesOn(categories: readonly string[], categoryCode: string): boolean {
+  return categories.includes(everyCategory) || categories.includes(categoryCode);
+}

@@ -3,8 +3,10 @@ import { once } from "node:events";
 import { fileURLToPath } from "node:url";
 import request from "supertest";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
+import { everyCategory, permissionsOf } from "@shared/contract/permissions";
 import { AuditEntryEntity, PersonEntity } from "../../server/features/accounts";
 import { ChainEntity, defaultChain } from "../../server/features/chain";
+import { mayUseModels } from "../../server/features/drivers/drivers.policy";
 import { startTestApp, type TestApp } from "../support/test-app";
 
 const script = fileURLToPath(new URL("../../server/features/accounts/create-administrator.ts", import.meta.url));
@@ -46,6 +48,36 @@ describe("the command that creates an administrator", { timeout: 120_000 }, () =
     expect((await agent.get("/api/chain").expect(200)).body).toEqual(defaultChain);
     const entries = await test.services.orm.em.fork().find(AuditEntryEntity, { action: "person.created" });
     expect(entries).toMatchObject([{ person: null, subjectId: body.person.id, detail: { roles: ["administrator"] } }]);
+  });
+
+  it("gives the roles asked for besides, so that one person can begin: with every category where they manage some", async () => {
+    const { code, output } = await run("oda@chain.example", "--roles", "category-manager, data-admin,planner");
+    expect(code).toBe(0);
+    expect(output).toContain("Created oda@chain.example (data-admin, planner, category-manager, administrator).");
+    const person = await test.services.orm.em.fork().findOneOrFail(PersonEntity, { email: "oda@chain.example" });
+    expect(person).toMatchObject({
+      roles: ["data-admin", "planner", "category-manager", "administrator"],
+      categories: [everyCategory],
+    });
+    const caller = { permissions: new Set(permissionsOf(person.roles)), categories: person.categories };
+    expect(mayUseModels(caller, "drinks, loaded later")).toBe(true);
+    expect(mayUseModels({ ...caller, categories: ["dairy"] }, "drinks, loaded later")).toBe(false);
+  });
+
+  it("makes nobody of a role that is none or of arguments it does not know", async () => {
+    const unknown = await run("ida@chain.example", "--roles", "planner,king");
+    expect(unknown).toMatchObject({
+      code: 1,
+      output: "",
+      errors: 'There is no role "king": there are data-admin, planner, category-manager, administrator.\n',
+    });
+    const second = await run("ida@chain.example", "planner");
+    expect(second).toMatchObject({ code: 1, output: "" });
+    expect(second.errors).toContain('Give one e-mail address, not also "planner"');
+    const option = await run("ida@chain.example", "--role=planner");
+    expect(option).toMatchObject({ code: 1, output: "" });
+    expect(option.errors).toContain("These arguments cannot be read");
+    expect(await test.services.orm.em.fork().count(PersonEntity, { email: "ida@chain.example" })).toBe(0);
   });
 
   it("changes nothing where the address is taken or none, and says so in a sentence", async () => {

@@ -15,7 +15,7 @@ export const PersonEntity = defineEntity({
     name: p.string().length(120),
     passwordHash: p.string().length(255).hidden().lazy(),
     roles: p.array().$type<Role[]>(),
-    /** Codes of the categories a category manager decides on. */
+    /** Codes of the categories a category manager decides on; "*" is every one. */
     categories: p.array().$type<string[]>().default([]),
     mustChangePassword: p.boolean().default(false),
     /** Goes up with every new password; a session made under an earlier one has ended. */

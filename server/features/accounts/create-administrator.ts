@@ -3,11 +3,12 @@ import { createOrm } from "../../database/orm";
 import { readEnvironment } from "../../environment";
 import { ProblemError } from "../../errors";
 import { ensureChain } from "../chain";
+import { readArguments, type AskedPerson } from "./administrator-arguments";
 import { audit } from "./audit";
 import { createPerson } from "./people.service";
 
 /** Command: creates an administrator (and the chain where there is none) and prints a one-time password. */
-async function createAdministrator(email: string): Promise<string> {
+async function createAdministrator({ email, roles, categories }: AskedPerson): Promise<string> {
   const orm = await createOrm(readEnvironment());
   try {
     const password = randomBytes(12).toString("base64url");
@@ -17,7 +18,8 @@ async function createAdministrator(email: string): Promise<string> {
       const person = await createPerson(em, {
         email,
         name,
-        roles: ["administrator"],
+        roles,
+        categories,
         password,
         mustChangePassword: true,
       });
@@ -34,17 +36,15 @@ async function createAdministrator(email: string): Promise<string> {
   }
 }
 
-const email = process.argv[2];
-if (!email) {
-  process.stderr.write("Give the administrator's e-mail address: npm run create-administrator -- ada@chain.example\n");
+try {
+  const asked = readArguments(process.argv.slice(2));
+  const password = await createAdministrator(asked);
+  const roles = asked.roles.join(", ");
+  process.stdout.write(
+    `Created ${asked.email} (${roles}). Password for the first sign-in, which asks for a new one:\n${password}\n`,
+  );
+} catch (error) {
+  if (!(error instanceof ProblemError)) throw error;
+  process.stderr.write(`${error.message}\n`);
   process.exitCode = 1;
-} else {
-  try {
-    const password = await createAdministrator(email);
-    process.stdout.write(`Created ${email}. Password for the first sign-in, which asks for a new one:\n${password}\n`);
-  } catch (error) {
-    if (!(error instanceof ProblemError)) throw error;
-    process.stderr.write(`${error.message}\n`);
-    process.exitCode = 1;
-  }
 }

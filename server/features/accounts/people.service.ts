@@ -11,7 +11,7 @@ export type NewPerson = {
   email: string;
   name: string;
   roles: Role[];
-  /** Codes of the categories a category manager decides on. */
+  /** Codes of the categories a category manager decides on; "*" is every one. */
   categories?: string[];
   password: string;
   mustChangePassword?: boolean;
