@@ -1,8 +1,13 @@
-import { screen } from "@testing-library/react";
+import { QueryClientProvider } from "@tanstack/react-query";
+import { render, screen, waitFor } from "@testing-library/react";
 import userEvent from "@testing-library/user-event";
+import { createMemoryRouter, RouterProvider } from "react-router-dom";
 import { afterEach, describe, expect, it, vi } from "vitest";
 import type { Session } from "@shared/contract/accounts";
+import { Shell } from "@/app/shell/shell";
+import { StatusLineProvider } from "@/components/ui/status-line";
 import { PersonMenu } from "@/features/accounts/components/person-menu";
+import { createQueryClient } from "@/lib/query-client";
 import { sessionQuery, useSession } from "@/lib/session";
 import { answerRequests } from "./support/answer";
 import { renderInPage } from "./support/render";
@@ -21,7 +26,7 @@ const session: Session = { person, permissions: ["read"], by: "session" };
 
 const Page = () => {
   const known = useSession();
-  return known ? <PersonMenu person={known.person} onChangePassword={vi.fn()} /> : <p>Nobody is signed in.</p>;
+  return known ? <PersonMenu person={known.person} onChangePassword={vi.fn()} onSignedOut={vi.fn()} /> : <p>Nobody is signed in.</p>;
 };
 
 describe("signing out", () => {
@@ -36,6 +41,35 @@ describe("signing out", () => {
     expect(await screen.findByText("Nobody is signed in.")).toBeTruthy();
     expect(queryClient.getQueryData(["sales", "P1", "S1"])).toBeUndefined();
     expect(queryClient.getQueryData(sessionQuery().queryKey)).toBeNull();
+  });
+
+  it("leads to the plain sign-in page, so that the next person lands on their own first page", async () => {
+    const chain = { status: 404, body: "" };
+    answerRequests((address, options) => {
+      if (!address.includes("/api/session")) return chain;
+      return options.method === "DELETE" ? { status: 204 } : { status: 200, body: session };
+    });
+    const queryClient = createQueryClient();
+    queryClient.setQueryData(sessionQuery().queryKey, session);
+    const router = createMemoryRouter(
+      [
+        { element: <Shell />, children: [{ path: "/scenarios/:id", element: <p>A plan</p> }] },
+        { path: "/sign-in", element: <p>Who are you?</p> },
+      ],
+      { initialEntries: ["/scenarios/7?week=3"] },
+    );
+    render(
+      <QueryClientProvider client={queryClient}>
+        <StatusLineProvider>
+          <RouterProvider router={router} />
+        </StatusLineProvider>
+      </QueryClientProvider>,
+    );
+    await userEvent.click(screen.getByRole("button", { name: "AK: account of Ada Kale" }));
+    await userEvent.click(screen.getByRole("menuitem", { name: "Sign out" }));
+    expect(await screen.findByText("Who are you?")).toBeTruthy();
+    await waitFor(() => expect(queryClient.getQueryData(sessionQuery().queryKey)).toBeNull());
+    expect(`${router.state.location.pathname}${router.state.location.search}`).toBe("/sign-in");
   });
 
   it("that the server did not hear of says that the person is still signed in", async () => {

@@ -3,11 +3,14 @@ import { signOut } from "@shared/contract/accounts";
 import { call } from "@/lib/api-client";
 import { forgetOthersData, sessionQuery } from "@/lib/session";
 
-export const useSignOut = () => {
+/** Signs out and leaves the page by `leave`, which the person's own data outlive only until it is done. */
+export const useSignOut = (leave: () => void | Promise<void>) => {
   const queryClient = useQueryClient();
   return useMutation({
     mutationFn: () => call(signOut, {}),
-    onSuccess: () => {
+    onSuccess: async () => {
+      // First away: a page that loses its session on its own brings the next person back to it.
+      await leave();
       forgetOthersData(queryClient);
       queryClient.setQueryData(sessionQuery().queryKey, null);
     },

@@ -13,12 +13,17 @@ const themes = [
   { value: "dark", label: "Dark" },
 ] as const;
 
-type PersonMenuProps = { person: Session["person"]; onChangePassword: () => void };
+type PersonMenuProps = {
+  person: Session["person"];
+  onChangePassword: () => void;
+  /** Goes where the next person signs in. */
+  onSignedOut: () => void | Promise<void>;
+};
 
 /** Who is signed in, as what, in which theme; and the way out. */
-export const PersonMenu = ({ person, onChangePassword }: PersonMenuProps) => {
+export const PersonMenu = ({ person, onChangePassword, onSignedOut }: PersonMenuProps) => {
   const theme = useThemeChoice();
-  const signOut = useSignOut();
+  const signOut = useSignOut(onSignedOut);
   const status = useStatusLine();
   return (
     <Menu
