@@ -6,7 +6,7 @@ import type { Scenario } from "@shared/contract/scenarios";
 import { useAutosave } from "@/features/scenarios/hooks/use-autosave";
 import { editOf } from "@/features/scenarios/view/scenario-draft";
 import { createQueryClient } from "@/lib/query-client";
-import { answerRequests } from "./support/answer";
+import { answerRequests, refusal } from "./support/answer";
 
 beforeEach(() => void vi.useFakeTimers());
 afterEach(() => {
@@ -73,5 +73,46 @@ describe("a scenario that is worked on", () => {
     await pass(2000);
     expect(result.current.state).toEqual({ kind: "saved", at: scenario.updatedAt });
     expect(asked).not.toHaveBeenCalled();
+  });
+
+  it("counts as saved again once a change that could not be saved is undone, and saves the next one", async () => {
+    const next = { ...scenario, fixedCost: 7, version: 2, updatedAt: "2026-06-01T08:06:00.000Z" };
+    let isDown = true;
+    answerRequests(() => (isDown ? refusal(422, "No such price.") : { status: 200, body: next }));
+    const { result, rerender } = start();
+    rerender({ edit: { ...asOpened, fixedCost: 5 } });
+    await pass(1000);
+    expect(result.current.state).toEqual({ kind: "failed", detail: "No such price." });
+    rerender({ edit: asOpened });
+    await pass(2000);
+    expect(result.current.state).toEqual({ kind: "saved", at: scenario.updatedAt });
+    isDown = false;
+    rerender({ edit: { ...asOpened, fixedCost: 7 } });
+    await pass(1000);
+    expect(result.current.state).toEqual({ kind: "saved", at: next.updatedAt });
+  });
+
+  it("sends an undone change again where the server had not answered, since it may hold the change", async () => {
+    const again = { ...scenario, version: 2, updatedAt: "2026-06-01T08:07:00.000Z" };
+    let isDown = true;
+    const asked = answerRequests(() => (isDown ? "no answer" : { status: 200, body: again }));
+    const { result, rerender } = start();
+    rerender({ edit: { ...asOpened, fixedCost: 5 } });
+    await pass(1000);
+    expect(result.current.state.kind).toBe("failed");
+    isDown = false;
+    rerender({ edit: asOpened });
+    expect(result.current.state).toEqual({ kind: "waiting" });
+    await pass(1000);
+    expect(result.current.state).toEqual({ kind: "saved", at: again.updatedAt });
+    expect(JSON.parse(String(asked.mock.lastCall?.[1]?.body))).toMatchObject({ fixedCost: 0 });
+  });
+
+  it("keeps saying what went wrong while the change that could not be saved stands", async () => {
+    answerRequests(() => "no answer");
+    const { result, rerender } = start();
+    rerender({ edit: { ...asOpened, fixedCost: 5 } });
+    await pass(5000);
+    expect(result.current.state.kind).toBe("failed");
   });
 });

@@ -18,6 +18,9 @@ const patienceMs = 800;
 
 type Asked = { scenario: Scenario; edit: ScenarioEdit; enabled: boolean };
 
+/** Whether the server said that it kept nothing. */
+const isRefusal = (error: unknown) => error instanceof ApiError && error.status >= 400 && error.status < 500;
+
 /**
  * Saves an edit a moment after the last change, one save at a time, each over the version the one before made. When
  * someone else saved meanwhile it stops and says so: which of the two stays is for a person to choose.
@@ -25,7 +28,8 @@ type Asked = { scenario: Scenario; edit: ScenarioEdit; enabled: boolean };
 export function useAutosave({ scenario, edit, enabled }: Asked) {
   const queryClient = useQueryClient();
   const [state, setState] = useState<SaveState>({ kind: "saved", at: scenario.updatedAt });
-  const saved = useRef(edit);
+  /** What the server holds; null where that is not known. */
+  const saved = useRef<ScenarioEdit | null>(edit);
   const savedAt = useRef(scenario.updatedAt);
   const version = useRef(scenario.version);
   const isSaving = useRef(false);
@@ -51,6 +55,8 @@ export function useAutosave({ scenario, edit, enabled }: Asked) {
       }
     } catch (error) {
       const isConflict = error instanceof ApiError && error.status === 412;
+      // Without an answer it may have been saved all the same: an edit that is undone then is sent again.
+      if (!isConflict && !isRefusal(error)) saved.current = null;
       const detail = error instanceof ApiError ? error.detail : "Something went wrong in this page.";
       setState(isConflict ? { kind: "conflict" } : { kind: "failed", detail });
     } finally {
@@ -62,8 +68,8 @@ export function useAutosave({ scenario, edit, enabled }: Asked) {
   useEffect(() => {
     if (!enabled || stopped) return;
     if (edit === saved.current) {
-      // Undone before it was sent: nothing is left to save.
-      setState((now) => (now.kind === "waiting" ? { kind: "saved", at: savedAt.current } : now));
+      // Undone before it was sent, or after it was refused: nothing is left to save.
+      setState((now) => (now.kind === "waiting" || now.kind === "failed" ? { kind: "saved", at: savedAt.current } : now));
       return;
     }
     setState((now) => (now.kind === "saving" ? now : { kind: "waiting" }));
