@@ -55,7 +55,7 @@ function widened(own: TermSpec, { spec, perLevel }: WiderTerm): string {
   const [column] = columnsOf(own);
   if (spec.kind === "factor") return own.kind === "linear" ? `a level for each value of "${column}"` : `a level for each "${column}" without shrinkage`;
   if (spec.kind === "factor-smooth") return `a curve of "${spec.column}" for each "${spec.group}"`;
-  if (own.kind === "smooth" && own.shape !== undefined && "shape" in spec === false) return `a curve of "${column}" of any shape`;
+  if (own.kind === "smooth" && spec.kind === "smooth" && own.shape !== spec.shape) return `a curve of "${column}" of any shape`;
   if (perLevel && spec.kind === "smooth") return `a curve of "${column}" for each "${spec.by}"`;
   return own.kind === "linear" ? `a curve instead of a line in "${column}"` : `a finer curve of "${column}"`;
 }

@@ -30,6 +30,13 @@ export function informationCriterion(
   return {
     aic: 2 * (degreesOfFreedom - model.logLikelihood),
     degreesOfFreedom,
-    reason: isCorrected ? null : "with so many coefficients its degrees of freedom are taken at their upper bound",
+    reason: reservation(model, isCorrected),
   };
+}
+
+/** What the degrees of freedom leave out. */
+function reservation({ spec }: FittedModel, isCorrected: boolean): string | null {
+  if (!isCorrected) return "with so many coefficients its degrees of freedom are taken at their upper bound";
+  const hasShape = spec.terms.some((term) => term.kind === "smooth" && term.shape !== undefined);
+  return hasShape ? "a curve of given shape is counted as if it were free to bend" : null;
 }

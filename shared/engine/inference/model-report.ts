@@ -15,8 +15,10 @@ import { testTerm } from "./term-tests";
  * Deviance explained is 1 - deviance / null deviance (of the model with intercept and offset only).
  *
  * @returns per term its size, tests and what others reproduce of it (see `testTerm`, `concurvity`); in all the conditional
- * AIC (see `informationCriterion`). Numbers that a model cannot have are null, with the reason beside.
- * Cost: some products of size^3, of the order of one step of the fit.
+ * AIC (see `informationCriterion`). A curve of given shape is judged as if it were free to bend. Numbers that a model
+ * cannot have are null, with the reason beside.
+ * Cost: some products of size^3 per penalty: about a millisecond for one series, some tenths of a second for 100 shared
+ * coordinates and 83 groups.
  * @example modelReport(model).terms.map(({ id, edf, test }) => `${id}: ${edf.toFixed(1)}, p = ${test?.pValue.toFixed(3)}`);
  */
 export function modelReport(model: FittedModel): ModelReport {

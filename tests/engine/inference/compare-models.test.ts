@@ -79,6 +79,13 @@ describe("A comparison", () => {
     expect(compareModels(fit([line]), large).pValue).toBeCloseTo(1, 9);
   });
 
+  it("is by plain degrees of freedom where a model has none of the others, as with local regression", () => {
+    const [small, large] = [fit([line]), { ...fit([curve]), information: null }];
+    const { degreesOfFreedom, statistic } = compareModels(small, large);
+    expect(degreesOfFreedom).toBeCloseTo(large.edf - 2, 9);
+    expect(statistic).toBeCloseTo((small.deviance - large.deviance) / degreesOfFreedom / large.dispersion, 9);
+  });
+
   it("has no AIC difference for quasi families", () => {
     const change = { response: "units", family: "quasi-poisson" } as const;
     expect(compareModels(fit([line], change), fit([line, promotion], change)).aicDifference).toBe(null);
@@ -99,11 +106,12 @@ describe("The verdict", () => {
     { smaller: [area, curve], larger: [area, { ...curve, by: "area" }], verdict: `A curve of "price" for each "area"${worth}` },
     { response: "apart", smaller: [curve, store], larger: [curve, { kind: "factor-smooth", column: "price", group: "store" }], verdict: `A curve of "price" for each "store"${worth}` },
     { smaller: [{ ...curve, size: 5, smoothness: { penalty: 1e-6 } }], larger: [{ ...curve, size: 9, smoothness: { penalty: 1e-6 } }, { kind: "random-walk", column: "week" }], verdict: `A finer curve of "price" together with the moving level "week"${worth}` },
-    { smaller: [line], larger: [line, { kind: "tensor-product", columns: ["price", "temperature"], smoothness: { df: 2 } }], verdict: "" },
+    { smaller: [{ ...curve, shape: "decreasing", smoothness: { penalty: 100 } }], larger: [{ ...curve, smoothness: { penalty: 1e-6 } }], verdict: 'a curve of "price" of any shape explains more than chance would (p = 0.' },
+    { smaller: [line], larger: [line, { kind: "tensor-product", columns: ["price", "temperature"], smoothness: { df: 2 } }], verdict: 'the interaction of "price" and "temperature"' },
   ])("says what is added: $verdict", ({ smaller, larger, response, verdict }) => {
     const comparison = compareModels(on(smaller, response), on(larger, response));
-    if (verdict !== "") expect(comparison.verdict).toBe(verdict);
-    else expect(comparison.verdict).toContain('the interaction of "price" and "temperature"');
+    if (verdict.endsWith(").")) expect(comparison.verdict).toBe(verdict);
+    else expect(comparison.verdict).toContain(verdict);
   });
 
   it("says that there is no evidence, with the p-value", () => {
