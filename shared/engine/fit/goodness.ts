@@ -40,9 +40,13 @@ function exactSums(family: Extract<FamilyRules, { fitting: "exact" }>, { respons
 function iterativeSums(family: Extract<FamilyRules, { fitting: "iterative" }>, rows: FittedRows, fit: WorkingFit): Sums {
   const { response, offset, weights } = rows;
   const theta = fit.theta ?? 1;
-  const mean = fit.linearPredictor.map((value) => family.mean(value, 1));
-  const total = (means: Float64Array) =>
-    response.reduce((sum, value, row) => sum + weights[row] * family.unitDeviance(value, means[row], theta), 0);
+  const mean = new Float64Array(response.length);
+  for (let row = 0; row < mean.length; row++) mean[row] = family.mean(fit.linearPredictor[row], 1);
+  const total = (means: Float64Array) => {
+    let sum = 0;
+    for (let row = 0; row < means.length; row++) sum += weights[row] * family.unitDeviance(response[row], means[row], theta);
+    return sum;
+  };
   return {
     deviance: total(mean),
     nullDeviance: total(family.nullMean({ response, offset, weights, theta })),

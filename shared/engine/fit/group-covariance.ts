@@ -1,4 +1,5 @@
 import { choleskyInPlace, invertFactored } from "../linalg/cholesky";
+import { rowProducts } from "../linalg/dense-products";
 import type { GroupCovariance } from "../types";
 import type { CoefficientMap } from "./coefficient-map";
 import type { Design, DesignTerm } from "./design";
@@ -44,15 +45,17 @@ export function groupCovariance(design: Design, map: CoefficientMap, state: Like
   const transform = groupTransform(groups.parts, groups.size);
   const { rows } = transform;
   const inverse = leftInverse(map, design.size);
-  const link = new Float64Array(groups.count * rows * map.rows);
+  const onCoefficients = new Float64Array(groups.count * rows * design.size);
   const own = new Float64Array((groups.count * rows * (rows + 1)) / 2);
   for (let group = 0; group < groups.count; group++) {
     const from = { group, size: groups.size, shared: design.size };
     const linkCoordinates = arrow.link.subarray(group * groups.size * design.size, (group + 1) * groups.size * design.size);
     const inCoefficients = multiply({ values: transform.matrix, rows, columns: groups.size }, { values: linkCoordinates, columns: design.size });
-    link.set(multiply({ values: inCoefficients, rows, columns: design.size }, { values: inverse, columns: map.rows }), group * rows * map.rows);
+    onCoefficients.set(inCoefficients, group * rows * design.size);
     packOwn({ ...from, transform, inner: arrow.inner, scale }, own.subarray((group * rows * (rows + 1)) / 2));
   }
+  const link = new Float64Array(groups.count * rows * map.rows);
+  rowProducts({ values: onCoefficients, count: groups.count * rows, width: design.size }, { values: inverse, count: map.rows, width: design.size }, link);
   const places = groups.parts.flatMap((part) => {
     const { rows: step } = blockOf(part);
     return Array.from({ length: step }, (_, k) => ({ first: part.rawFirst + k, step }));
@@ -89,7 +92,7 @@ function groupTransform(parts: readonly DesignTerm[], size: number): { matrix: F
   return { matrix, rows };
 }
 
-/** (B'B)^-1 B' of the shared map B, row-major size x rows. */
+/** B (B'B)^-1 of the shared map B, the transpose of its left inverse, row-major rows x size. */
 function leftInverse(map: CoefficientMap, size: number): Float64Array {
   const { rows, starts, columns, values } = map;
   const square = new Float64Array(size * size);
@@ -104,7 +107,7 @@ function leftInverse(map: CoefficientMap, size: number): Float64Array {
   const out = new Float64Array(size * rows);
   for (let row = 0; row < rows; row++) {
     for (let a = starts[row]; a < starts[row + 1]; a++) {
-      for (let k = 0; k < size; k++) out[k * rows + row] += inverse[k * size + columns[a]] * values[a];
+      for (let k = 0; k < size; k++) out[row * size + k] += inverse[k * size + columns[a]] * values[a];
     }
   }
   return out;
