@@ -9,9 +9,11 @@ const hugeShape = 100;
 
 /**
  * Regularised incomplete gamma function P(shape, x): the probability that a gamma variable of this shape and scale 1 is below x.
- * Small shapes by the power series or, in the upper tail, by the continued fraction; large shapes by Temme's uniform expansion: Q = 1/2 erfc(eta sqrt(a / 2)) + exp(-a eta^2 / 2) / sqrt(2 pi a) S(eta), with
- * eta^2 / 2 = x / a - 1 - ln(x / a); the power series S solves S' - a eta S = a (1 - eta / (lambda - 1) / Gamma*(a)).
- * Sources: Abramowitz & Stegun (1964), 6.5.29 and 6.5.31; Temme (1979), SIAM J. Math. Anal. 10, 757-766; Gil, Segura & Temme (2012), SIAM J. Sci. Comput. 34, A2965-A2981.
+ * Small shapes by the power series or, in the upper tail, by the continued fraction; large shapes by Temme's uniform expansion:
+ * Q = 1/2 erfc(eta sqrt(a / 2)) + exp(-a eta^2 / 2) / sqrt(2 pi a) S(eta), with eta^2 / 2 = x / a - 1 - ln(x / a); the power
+ * series S solves S' - a eta S = a (1 - eta / (lambda - 1) / Gamma*(a)).
+ * Sources: Abramowitz & Stegun (1964), 6.5.29 and 6.5.31; Temme (1979), SIAM J. Math. Anal. 10, 757-766; Gil, Segura & Temme
+ * (2012), SIAM J. Sci. Comput. 34, A2965-A2981.
  *
  * @param shape above 0.
  * @returns absolute error below 1e-13.
@@ -22,7 +24,8 @@ export function gammaBelow(x: number, shape: number): number {
   const halfSquare = -logRatioExcess(x, shape);
   const square = shape * halfSquare;
   if (square > negligible && x > shape) return 1;
-  if (shape < largeShape || (shape < hugeShape && halfSquare > 0.5)) return x < shape + 1 ? seriesBelow(x, shape) : 1 - fractionAbove(x, shape);
+  const isExpanded = shape >= hugeShape || (shape >= largeShape && halfSquare <= 0.5);
+  if (!isExpanded) return x < shape + 1 ? seriesBelow(x, shape) : 1 - fractionAbove(x, shape);
   if (square > negligible) return 0;
   const eta = Math.sign(x - shape) * Math.sqrt(2 * halfSquare);
   const above = normalAbove(eta, square) + (Math.exp(-square) / Math.sqrt(2 * Math.PI * shape)) * correction(eta, shape);

@@ -73,7 +73,8 @@ type JudgedRows = { response: Float64Array; linearPredictor: Float64Array; weigh
 
 function judgedRows(model: FittedModel, data: ModelData): JudgedRows {
   const { spec } = model;
-  const columns: [string, string][] = [[spec.response, "response"], ...spec.terms.flatMap((term) => columnsOf(term).map((name): [string, string] => [name, term.kind]))];
+  const columns: [string, string][] = [[spec.response, "response"]];
+  for (const term of spec.terms) for (const column of columnsOf(term)) columns.push([column, term.kind]);
   if (spec.offset !== undefined) columns.push([spec.offset, "offset"]);
   if (spec.weights !== undefined) columns.push([spec.weights, "weights"]);
   rowCount(data, columns);

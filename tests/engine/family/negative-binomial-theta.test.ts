@@ -55,6 +55,15 @@ describe("Theta", () => {
     expect(Math.abs(Math.log(found / theta))).toBeLessThan(4 * Math.sqrt(2 / 20_000) * (1 + theta / 12) * 1.5);
   });
 
+  it("is the same by tables of counts, for many rows, as row by row, for few or fractional ones", () => {
+    const many = (values: Float64Array) => Float64Array.from({ length: 48 }, (_, k) => values[k % 12]);
+    const tabled = estimateTheta({ response: many(response), mean: many(mean), weights: many(weights), start: 1 });
+    const plain = estimateTheta({ response, mean, weights, start: 1 });
+    const shifted = estimateTheta({ response: many(response).map((units) => units + 1e-12), mean: many(mean), weights: many(weights), start: 1 });
+    expect(Math.abs(tabled / plain - 1)).toBeLessThan(1e-9);
+    expect(Math.abs(tabled / shifted - 1)).toBeLessThan(1e-9);
+  });
+
   it("belongs to the negative binomial alone", () => {
     expect(quasiPoisson.estimateTheta).toBe(null);
     expect(binomial.estimateTheta).toBe(null);
