@@ -1,24 +1,23 @@
-import { basisRows, coefficientNames, columnsOf } from "../basis/term-basis";
-import { numberColumn } from "../basis/columns";
+import { columnsOf } from "../basis/term-basis";
 import { EngineError } from "../errors";
 import { familyRules } from "../family/family";
-import type { FamilyRules } from "../family/family-rules";
-import { addRowsTimes } from "../linalg/sparse-rows";
-import type { FitOptions, FittedModel, FittedTerm, ModelData, ModelSpec, TermSpec } from "../types";
+import type { FitOptions, FittedModel, FittedTerm, ModelData, ModelSpec } from "../types";
 import { checkSpec } from "./check-spec";
 import { coefficientMap, mapCovariance } from "./coefficient-map";
-import type { CoefficientMap } from "./coefficient-map";
 import { coordinateCovariance } from "./coordinates";
 import type { Design } from "./design";
 import { buildDesign } from "./design";
 import { fitExact } from "./fit-exact";
 import { fitIterative } from "./fit-iterative";
-import type { FittedRows } from "./fitted-rows";
 import { fittedRows } from "./fitted-rows";
 import { fitWarnings } from "./fit-warnings";
 import { goodness } from "./goodness";
 import { groupCovariance } from "./group-covariance";
+import { checkBesideLocal, hasLocal } from "./local/check-local";
+import { fitLocalModel } from "./local/local-model";
 import { modelInformation } from "./model-information";
+import { copySpec, fittedMeans, hasFractions, namesOf } from "./model-parts";
+import type { ModelParts } from "./model-parts";
 import { derivatives } from "./penalty-search";
 import { coefficientsAt } from "./predictor";
 import type { WorkingFit } from "./working-fit";
@@ -45,11 +44,13 @@ const defaultMaxIterations = 200;
  */
 export function fitModel(spec: ModelSpec, data: ModelData, options: FitOptions = {}): FittedModel {
   checkSpec(spec, data);
+  checkBesideLocal(spec.terms);
   const family = familyRules(spec.family);
   const rows = fittedRows(spec, data);
   family.check(rows.response, spec.response);
   const design = buildDesign(spec.terms, rows.data, rows.count);
   const map = coefficientMap(design);
+  if (hasLocal(spec.terms)) return fitLocalModel({ spec, data, family, rows, design, map }, iterationLimit(options));
   const fit = family.fitting === "exact"
     ? fitExact(design, { ...rows, response: family.transform(rows.response) }, map)
     : fitIterative(design, family, rows, { map, maxIterations: iterationLimit(options) });
@@ -62,17 +63,7 @@ function iterationLimit(options: FitOptions): number {
   throw new EngineError("option-invalid", `maxIterations is ${limit}; it must be a whole number of at least 1.`);
 }
 
-type Parts = {
-  spec: ModelSpec;
-  data: ModelData;
-  family: FamilyRules;
-  rows: FittedRows;
-  design: Design;
-  map: CoefficientMap;
-  fit: WorkingFit;
-};
-
-function assembleModel(parts: Parts): FittedModel {
+function assembleModel(parts: ModelParts): FittedModel {
   const { spec, family, rows, design, map, fit } = parts;
   const { system, search, edf: edfs } = fit.solution;
   const state = derivatives(search, "gradient");
@@ -100,30 +91,11 @@ function assembleModel(parts: Parts): FittedModel {
     deviance: measures.deviance,
     nullDeviance: measures.nullDeviance,
     criterion: fit.criterion,
-    fractionalResponse: rows.response.some((value) => !Number.isInteger(value)),
+    fractionalResponse: hasFractions(rows.response),
     converged: fit.converged,
     iterations: fit.iterations,
     warnings: [...design.warnings, ...fitWarnings({ design, fit, rows, family: spec.family, fitted, isPerfect: measures.isPerfect })],
   };
-}
-
-/** Its own, down to the terms' lists, so that a caller may go on changing the one given. */
-function copySpec(spec: ModelSpec): ModelSpec {
-  return { ...spec, terms: spec.terms.map((term) => structuredCopy(term)) };
-}
-
-function structuredCopy<Term extends TermSpec>(term: Term): Term {
-  const copy: Record<string, unknown> = {};
-  for (const [key, value] of Object.entries(term)) {
-    copy[key] = Array.isArray(value) ? [...(value as unknown[])] : typeof value === "object" ? { ...(value as object) } : value;
-  }
-  return copy as Term;
-}
-
-/** In the order of the coefficients: shared terms, then terms on eliminated groups. */
-function namesOf(design: Design): string[] {
-  const ordered = [...design.terms].sort((left, right) => left.design.rawFirst - right.design.rawFirst);
-  return ["intercept", ...ordered.flatMap(({ basis, design: part }) => coefficientNames(basis, part.id))];
 }
 
 function fittedTerms(design: Design, fit: WorkingFit): FittedTerm[] {
@@ -145,15 +117,4 @@ function fittedTerms(design: Design, fit: WorkingFit): FittedTerm[] {
       layout: { unpenalisedFirst, penalisedFirst, groupFirst },
     };
   });
-}
-
-/** Per row of the data given, rows of weight zero too. */
-function fittedMeans(parts: Parts, coefficients: Float64Array, terms: FittedTerm[], dispersion: number): Float64Array {
-  const { spec, data, family, rows, fit } = parts;
-  const all = data[spec.response].length;
-  if (all === rows.count) return fit.linearPredictor.map((value) => family.mean(value, dispersion));
-  const predictor = spec.offset === undefined ? new Float64Array(all) : numberColumn(data, spec.offset, "offset").slice();
-  for (let row = 0; row < all; row++) predictor[row] += coefficients[0];
-  for (const term of terms) addRowsTimes(basisRows(term.basis, data), coefficients, term.first, predictor);
-  return predictor.map((value) => family.mean(value, dispersion));
 }

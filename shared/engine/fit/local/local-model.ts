@@ -1,0 +1,101 @@
+import { columnsOf } from "../../basis/term-basis";
+import type { FittedModel, FittedTerm } from "../../types";
+import { applyMap, mapCovariance } from "../coefficient-map";
+import type { CoefficientMap } from "../coefficient-map";
+import { fitWarnings } from "../fit-warnings";
+import { goodness } from "../goodness";
+import { copySpec, fittedMeans, hasFractions, namesOf } from "../model-parts";
+import type { ModelParts } from "../model-parts";
+import { centredPooled } from "./centred-pooled";
+import { fitLocal } from "./fit-local";
+import type { LocalFit } from "./fit-local";
+import { jointPosterior } from "./joint-posterior";
+import type { JointPosterior } from "./joint-posterior";
+
+/**
+ * Fits a model with local regressions as plain data. A local regression's coefficients are its pooled partial residuals at
+ * the distinct points, less the curve's mean over the rows; its basis keeps the working weights, so that the rows of any
+ * data times the coefficients give the curve. There is no X'WX in coordinates, so `information` is null.
+ *
+ * @throws EngineError as `fitLocal`.
+ * @example fitLocalModel({ spec, data, family, rows, design, map }, 200).terms[0].edf;
+ */
+export function fitLocalModel(given: Omit<ModelParts, "fit">, maxIterations: number): FittedModel {
+  const { spec, family, rows, design, map } = given;
+  const fit = fitLocal(design, family, rows, { map, maxIterations });
+  const parts: ModelParts<LocalFit> = { ...given, fit };
+  const posterior = jointPosterior(fit.joint);
+  const edf = [...posterior.coordinateEdf, ...posterior.localEdf].reduce((sum, value) => sum + value, 0);
+  const measures = goodness(family, rows, fit, edf);
+  const { dispersion } = measures;
+  const { unknowns, covariance } = centredPooled(fit.joint, posterior.covariance);
+  unknowns[0] += fit.equations.shift;
+  const toCoefficients = jointMap(parts);
+  const coefficients = applyMap(toCoefficients, unknowns);
+  const terms = localTerms(parts, posterior);
+  const fitted = fittedMeans(parts, coefficients, terms, dispersion);
+  return {
+    format: 1,
+    spec: copySpec(spec),
+    rowCount: rows.count,
+    coefficients,
+    coefficientNames: namesOf(design),
+    covariance: mapCovariance(toCoefficients, covariance, unknowns.length, dispersion),
+    groupCovariance: null,
+    terms,
+    information: null,
+    fitted,
+    dispersion,
+    theta: fit.theta,
+    logLikelihood: measures.logLikelihood,
+    edf,
+    deviance: measures.deviance,
+    nullDeviance: measures.nullDeviance,
+    criterion: fit.criterion,
+    fractionalResponse: hasFractions(rows.response),
+    converged: fit.converged,
+    iterations: fit.iterations,
+    warnings: [...design.warnings, ...fitWarnings({ design, fit, rows, family: spec.family, fitted, isPerfect: measures.isPerfect })],
+  };
+}
+
+/** The map of the other terms' coordinates, and one unknown for each coefficient of a local regression. */
+function jointMap({ map, fit: { joint: { system: { layout: { locals } } } } }: ModelParts<LocalFit>): CoefficientMap {
+  const unknownOf = new Map(locals.flatMap(({ part, first, count }) =>
+    Array.from({ length: count }, (_, k): [number, number] => [part.rawFirst + k, first + k])));
+  const starts = new Int32Array(map.rows + 1);
+  const columns: number[] = [];
+  const values: number[] = [];
+  for (let row = 0; row < map.rows; row++) {
+    const unknown = unknownOf.get(row);
+    if (unknown === undefined) {
+      columns.push(...map.columns.subarray(map.starts[row], map.starts[row + 1]));
+      values.push(...map.values.subarray(map.starts[row], map.starts[row + 1]));
+    } else {
+      columns.push(unknown);
+      values.push(1);
+    }
+    starts[row + 1] = columns.length;
+  }
+  return { rows: map.rows, starts, columns: Int32Array.from(columns), values: Float64Array.from(values) };
+}
+
+function localTerms({ design, fit }: ModelParts<LocalFit>, { coordinateEdf, localEdf }: JointPosterior): FittedTerm[] {
+  const { joint: { system: { layout, operators } }, solution: { search: { current: { multipliers } } } } = fit;
+  return design.terms.map(({ spec, design: part, basis, seen, observedRange }) => {
+    const { id, rawFirst, positions, coordinates: { rawWidth }, unpenalisedFirst, penalisedFirst } = part;
+    const at = layout.locals.findIndex((local) => local.part === part);
+    return {
+      id,
+      kind: spec.kind,
+      columns: columnsOf(spec),
+      first: rawFirst,
+      count: rawWidth,
+      edf: at < 0 ? positions.reduce((sum, position) => sum + coordinateEdf[position], 0) : localEdf[at],
+      penalties: design.penalties.flatMap((penalty, j) => (penalty.id === id ? [multipliers[j]] : [])),
+      basis: at < 0 ? basis : operators[at].basis,
+      observedRange, seen,
+      layout: { unpenalisedFirst, penalisedFirst, groupFirst: null },
+    };
+  });
+}
