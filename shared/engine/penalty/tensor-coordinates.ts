@@ -1,5 +1,6 @@
-import { EigenvalueDecomposition, Matrix, solve } from "ml-matrix";
+import { EigenvalueDecomposition, Matrix, SingularValueDecomposition, solve } from "ml-matrix";
 import { evenlySpaced, gridRowsAt } from "../basis/spline-grid";
+import { orthonormalComplement } from "../linalg/orthonormal-complement";
 import { addRowsTimes } from "../linalg/sparse-rows";
 import type { SmoothBasis, TensorProductBasis } from "../types";
 import type { TermCoordinates } from "./coordinates";
@@ -45,29 +46,36 @@ export function tensorCoordinates({ margins, ranges }: TensorProductBasis): Term
 
 function marginOf(basis: SmoothBasis, range: readonly [number, number]): Margin {
   const { size } = basis;
-  const byValues = coefficientsByValues(basis, range);
-  const penalty = byValues.transpose().mmul(Matrix.from1DArray(size, size, differencePenalty(size, false))).mmul(byValues);
+  const frame = centredFrame(basis, range);
+  const penalty = frame.transpose().mmul(Matrix.from1DArray(size, size, differencePenalty(size, false))).mmul(frame);
   const decomposition = new EigenvalueDecomposition(penalty, { assumeSymmetric: true });
   const diagonal = Float64Array.from(decomposition.realEigenvalues);
   // The centred line has no second differences: what is left of its eigenvalue is rounding.
   diagonal[0] = 0;
-  return { matrix: byValues.mmul(decomposition.eigenvectorMatrix), diagonal };
+  return { matrix: frame.mmul(decomposition.eigenvectorMatrix), diagonal };
 }
 
-/** The coefficients whose curve is 1 at one of the points, 0 at the others and 0 on average over the rows: one column each. */
-function coefficientsByValues(basis: SmoothBasis, range: readonly [number, number]): Matrix {
+/** Share of the largest singular value below which values at the points do not tell the centred curves apart. */
+const leastShare = 1e-6;
+
+/**
+ * Coefficients of curves that are 0 on average over the rows: each column's is 1 at one of the points and 0 at the others.
+ * Where all rows lie at the points, or almost all at one end, the mean is a combination of those values and no such curves
+ * exist; then any orthonormal set.
+ */
+function centredFrame(basis: SmoothBasis, range: readonly [number, number]): Matrix {
   const { size, centring } = basis;
+  const length = Math.hypot(...centring);
+  const complement = orthonormalComplement([centring.map((value) => value / length)], size);
+  const frame = Matrix.from1DArray(size, size - 1, complement);
   const rows = gridRowsAt(basis, evenlySpaced(range, size - 1));
-  const conditions = Matrix.zeros(size, size);
-  const unit = new Float64Array(size);
-  const values = new Float64Array(size - 1);
-  for (let column = 0; column < size; column++) {
-    unit.fill(0);
-    values.fill(0);
-    unit[column] = 1;
-    addRowsTimes(rows, unit, 0, values);
-    for (let point = 0; point < size - 1; point++) conditions.set(point, column, values[point]);
-    conditions.set(size - 1, column, centring[column]);
+  const values = Matrix.zeros(size - 1, size - 1);
+  for (let column = 0; column < size - 1; column++) {
+    const atPoints = new Float64Array(size - 1);
+    addRowsTimes(rows, Float64Array.from(frame.getColumn(column)), 0, atPoints);
+    values.setColumn(column, atPoints);
   }
-  return solve(conditions, Matrix.eye(size, size - 1));
+  const singular = new SingularValueDecomposition(values).diagonal;
+  if (!(Math.min(...singular) > leastShare * Math.max(...singular))) return frame;
+  return frame.mmul(solve(values, Matrix.eye(size - 1, size - 1)));
 }
