@@ -42,8 +42,11 @@ function additions(smaller: FittedModel, larger: FittedModel): string {
   return parts.length === 1 ? parts[0] : `${parts.slice(0, -1).join(", ")} together with ${parts[parts.length - 1]}`;
 }
 
-function added({ spec }: WiderTerm): string {
+function added({ spec, perLevel }: WiderTerm): string {
+  if (perLevel && spec.kind === "smooth") return `a curve of "${spec.column}" for each "${spec.by}"`;
   switch (spec.kind) {
+    case "factor-smooth": return `a curve of "${spec.column}" for each "${spec.group}"`;
+    case "random-effect": return spec.by === undefined ? `a level for each "${spec.column}"` : `a slope in "${spec.by}" for each "${spec.column}"`;
     case "smooth": case "cyclic-smooth": case "natural-spline": case "local-regression": return `the curve "${termId(spec)}"`;
     case "tensor-product": return `the interaction of ${spec.columns.map((column) => `"${column}"`).join(" and ")}`;
     case "random-walk": return `the moving level "${termId(spec)}"`;

@@ -106,6 +106,9 @@ describe("The verdict", () => {
     { smaller: [area, curve], larger: [area, { ...curve, by: "area" }], verdict: `A curve of "price" for each "area"${worth}` },
     { response: "apart", smaller: [curve, store], larger: [curve, { kind: "factor-smooth", column: "price", group: "store" }], verdict: `A curve of "price" for each "store"${worth}` },
     { smaller: [{ ...curve, size: 5, smoothness: { penalty: 1e-6 } }], larger: [{ ...curve, size: 9, smoothness: { penalty: 1e-6 } }, { kind: "random-walk", column: "week" }], verdict: `A finer curve of "price" together with the moving level "week"${worth}` },
+    { smaller: [promotion], larger: [promotion, area, { ...curve, by: "area" }], verdict: `"area" together with a curve of "price" for each "area"${worth}` },
+    { smaller: [promotion], larger: [promotion, store], verdict: 'a level for each "store"' },
+    { smaller: [line], larger: [line, { ...store, by: "price", smoothness: { penalty: 1 } }], verdict: 'a slope in "price" for each "store"' },
     { smaller: [{ ...curve, shape: "decreasing", smoothness: { penalty: 100 } }], larger: [{ ...curve, smoothness: { penalty: 1e-6 } }], verdict: 'a curve of "price" of any shape explains more than chance would (p = 0.' },
     { smaller: [line], larger: [line, { kind: "tensor-product", columns: ["price", "temperature"], smoothness: { df: 2 } }], verdict: 'the interaction of "price" and "temperature"' },
   ])("says what is added: $verdict", ({ smaller, larger, response, verdict }) => {

@@ -39,7 +39,7 @@ describe("A chain of 60 stores", () => {
     expect(report.aic!).toBeLessThan(plain.aic! - 100);
     const { verdict, aicDifference } = compareModels(without, curves);
     expect(aicDifference).toBeCloseTo(report.aic! - plain.aic!, 9);
-    expect(verdict).toBe('"price:store" is worth it: it explains more than chance would (p below 0.001).');
+    expect(verdict).toBe('A curve of "price" for each "store" is worth it: it explains more than chance would (p below 0.001).');
   });
 
   it("has levels of stores tested, where there are no more than 150", () => {
