@@ -107,9 +107,9 @@ function solveStep(run: Run, step: Step): State {
 }
 
 /** Linear predictor of the fitted rows: other terms by their coefficients, local curves by their values at the points. */
-function predictorAt({ design, layout, map, rows }: Run, { unknowns, curves }: JointSolution, shift: number): Float64Array {
+function predictorAt({ design, layout, map, rows }: Run, { unknowns, curves, level }: JointSolution, shift: number): Float64Array {
   const coordinates = unknowns.slice(0, layout.fixed);
-  coordinates[0] += shift;
+  coordinates[0] += shift + level;
   const coefficients = applyMap(map, coordinates);
   for (const { part, first, count } of layout.locals) coefficients.set(curves.subarray(first, first + count), part.rawFirst);
   return predictorOf(design, coefficients, rows.offset);

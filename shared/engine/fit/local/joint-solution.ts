@@ -20,6 +20,8 @@ export type JointSolution = {
   unknowns: Float64Array;
   /** Per joint unknown of a local regression, the centred curve at its distinct point; zero for coordinates. */
   curves: Float64Array;
+  /** What the local regressions add to the model's level. */
+  level: number;
 };
 
 /**
@@ -61,7 +63,8 @@ export function solveJoint(system: JointSystem, penalty: Float64Array): JointSol
     const pooled = { values: unknowns.slice(first, first + count), count, width: 1 };
     addProduct({ values: operators[at].centred, count, width: count }, pooled, 1, curves.subarray(first, first + count));
   });
-  return { system, lu, penalty, unknowns, curves };
+  const level = system.level.reduce((sum, share, k) => sum + share * unknowns[k], 0);
+  return { system, lu, penalty, unknowns, curves, level };
 }
 
 function refuse({ layout: { locals } }: JointSystem): never {

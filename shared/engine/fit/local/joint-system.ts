@@ -10,6 +10,9 @@ import type { LocalPart, PooledDesign } from "./pooled-design";
  * at which backfitting rests, found exactly. With Z = [X, D_1, ..., D_L], G = Z'WZ and the curves' operators
  * K = diag(I, F_1 - 1c', ...), row i of the system A is that of G K, but for a local regression's own block, which is the
  * diagonal of its points' weights; the right side is Z'Wz. The last block being diagonal it is eliminated beforehand.
+ * Centred curves make the system regular and keep the response's mean, which a local regression by itself does not; what
+ * each adds to the mean of its partial residuals (`level`) is given to the intercept, so that a single one is the plain
+ * local regression F_1 P_1 z.
  * Sources: Hastie & Tibshirani (1990), sections 5.2 and 5.3; Speckman (1988), J. R. Statist. Soc. B 50 (one curve).
  */
 export type JointSystem = {
@@ -29,6 +32,8 @@ export type JointSystem = {
   below: Float64Array;
   /** r_u - A_uq W_q^-1 r_q. */
   reduced: Float64Array;
+  /** Per joint unknown, what it adds to the model's level: mean over the weights of F_l e_l - e_l; zero for coordinates. */
+  level: Float64Array;
   dropped: readonly DroppedColumn[];
 };
 
@@ -66,12 +71,24 @@ export function jointSystem(layout: PooledDesign, equations: NormalEquations, dr
   const wide = { values: above, count: size, width: last.count };
   addProduct(wide, { values: means, count: last.count, width: 1 }, -1, reduced);
   addProduct(wide, { values: below, count: last.count, width: size }, -1, matrix);
-  return { layout, operators, cross, vector, size, matrix, above, below, reduced, dropped };
+  return { layout, operators, cross, vector, size, matrix, above, below, reduced, level: levelOf(layout, operators), dropped };
 }
 
 /** Total working weight of the rows at each distinct point. */
 const pointWeights = (cross: Float64Array, all: number, { first, count }: Pick<LocalPart, "first" | "count">): Float64Array =>
   Float64Array.from({ length: count }, (_, k) => cross[(first + k) * (all + 1)]);
+
+function levelOf({ size, locals }: PooledDesign, operators: readonly LocalOperator[]): Float64Array {
+  const level = new Float64Array(size);
+  locals.forEach(({ first, count }, at) => {
+    const { centred, basis: { weights, centring } } = operators[at];
+    const total = weights.reduce((sum, weight) => sum + weight, 0);
+    const own = level.subarray(first, first + count);
+    addProduct({ values: weights, count: 1, width: count }, { values: centred, count, width: count }, 1 / total, own);
+    for (let k = 0; k < count; k++) own[k] += centring[k] - weights[k] / total;
+  });
+  return level;
+}
 
 function mirrored(matrix: Float64Array, size: number): Float64Array {
   for (let row = 0; row < size; row++) {

@@ -59,8 +59,11 @@ export function fitLocalModel(given: Omit<ModelParts, "fit">, maxIterations: num
   };
 }
 
-/** The map of the other terms' coordinates, and one unknown for each coefficient of a local regression. */
-function jointMap({ map, fit: { joint: { system: { layout: { locals } } } } }: ModelParts<LocalFit>): CoefficientMap {
+/**
+ * The map of the other terms' coordinates, and one unknown for each coefficient of a local regression, whose level is
+ * the intercept's.
+ */
+function jointMap({ map, fit: { joint: { system: { level, layout: { fixed, locals } } } } }: ModelParts<LocalFit>): CoefficientMap {
   const unknownOf = new Map(locals.flatMap(({ part, first, count }) =>
     Array.from({ length: count }, (_, k): [number, number] => [part.rawFirst + k, first + k])));
   const starts = new Int32Array(map.rows + 1);
@@ -74,6 +77,10 @@ function jointMap({ map, fit: { joint: { system: { layout: { locals } } } } }: M
     } else {
       columns.push(unknown);
       values.push(1);
+    }
+    if (row === 0) {
+      for (let k = fixed; k < level.length; k++) columns.push(k);
+      values.push(...level.subarray(fixed));
     }
     starts[row + 1] = columns.length;
   }
