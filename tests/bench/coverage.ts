@@ -9,8 +9,8 @@ import type { Shape } from "../engine/support/simulated-sales";
  * How often 95 % bands and intervals hold what they are of, over 200 sets of each family drawn from known curves: two of price, in
  * one store (156 weeks) and in twelve (1,872 rows); of means below 20, whether randomised quantile residuals are uniform.
  *
- * Judged is the band of a curve on its level, in twelve stores. Not judged, but shown: the centred curve's own band, which pinches;
- * and curves of one store, where a bend too slight for 156 rows to show is smoothed to a line in a third to six tenths of the sets,
+ * Judged is the band of a curve on its level, in twelve stores. Not judged, but shown: the centred curve's own band, which pinches,
+ * and the same with the mean's error added to its width; and curves of one store, where a bend too slight for 156 rows to show is smoothed to a line in a third to six tenths of the sets,
  * so that bands hold less (R's mgcv 1.8-41 has the same shares there).
  */
 const sets = 200;
@@ -36,6 +36,8 @@ function figuresOf(name: string, coverage: Coverage, isJudged: boolean): Record<
     [`${name}: season`]: isJudged ? share(season.onLevel) : shown(season.onLevel),
     [`${name}: price, centred`]: shown(price.centred),
     [`${name}: season, centred`]: shown(season.centred),
+    [`${name}: price, with the mean's error`]: shown(price.withMean),
+    [`${name}: season, with the mean's error`]: shown(season.withMean),
     ...(observation === null ? {} : { [`${name}: new rows`]: share(observation) }),
     ...(residuals === null ? {} : {
       [`${name}: residuals' distance`]: { value: residuals.distance, limit: farthest, unit: "from uniform" },

@@ -24,6 +24,8 @@ export type CurveCoverage = {
    * price curve: gaussian 0.82, quasi-Poisson 0.78, negative binomial 0.82.
    */
   centred: number;
+  /** The centred curve in a band as wide as that of the curve on its level (Marra & Wood 2012, section 3, recommend it). */
+  withMean: number;
 };
 
 export type Coverage = {
@@ -42,6 +44,7 @@ export function coverageStudy(family: Family, study: Study): Coverage {
   const curve = (term: "price" | "season"): CurveCoverage => ({
     onLevel: average(outcomes.map((outcome) => outcome[term].onLevel)),
     centred: average(outcomes.map((outcome) => outcome[term].centred)),
+    withMean: average(outcomes.map((outcome) => outcome[term].withMean)),
   });
   const judged = outcomes.flatMap(({ inside }) => inside);
   const tested = outcomes.map(({ places }) => places).filter(({ length }) => length > 0);
@@ -104,13 +107,16 @@ function sharesInside(model: FittedModel, { id, data, middle, level, curve }: Cu
     const point = new Float64Array(values.length);
     point[k] = 1;
     addTransposeTimes(rows, point, gradient, term.first);
-    const error = commonEstimate + estimate[k] - middle - curve(value);
+    const half = quantile * Math.sqrt(covarianceQuadratic(model, gradient, gradient));
+    const error = estimate[k] - curve(value);
     return {
-      onLevel: Number(Math.abs(error) <= quantile * Math.sqrt(covarianceQuadratic(model, gradient, gradient))),
+      onLevel: Number(Math.abs(commonEstimate - middle + error) <= half),
+      withMean: Number(Math.abs(error) <= half),
       centred: Number(lower[k] <= curve(value) && curve(value) <= upper[k]),
     };
   });
-  return { onLevel: average(held.map(({ onLevel }) => onLevel)), centred: average(held.map(({ centred }) => centred)) };
+  const share = (kind: keyof CurveCoverage) => average(held.map((one) => one[kind]));
+  return { onLevel: share("onLevel"), centred: share("centred"), withMean: share("withMean") };
 }
 
 const normalBelow = (value: number): number => 0.5 * (1 + Math.sign(value) * gammaBelow((value * value) / 2, 0.5));
