@@ -54,7 +54,7 @@ export const SumSheet = ({ scenario, figures, fixedCost, onFixedCost, cautions }
           <span data-testid="lift" data-lift={lift.estimate}>
             {format.percent(lift.estimate, { signed: true })}
           </span>{" "}
-          · {formatPercentInterval(lift.lower, lift.upper)}
+          · {formatPercentInterval(lift.lower, lift.upper)} ({format.percent(level)})
         </Fact>
         <MoneyFacts figures={figures} format={format} />
         <Fact name="Feature or display cost">
@@ -87,10 +87,10 @@ const Fact = ({ name, children }: { name: ReactNode; children: ReactNode }) => (
 
 const MoneyFacts = ({ figures, format }: { figures: ScenarioFigures; format: ChainFormat }) => {
   const { netSales, grossMargin, netGain } = figures.prediction.money;
-  const change = (amounts: { plan: number; base: number }) => format.money(amounts.plan - amounts.base, { signed: true });
+  const change = (amounts: { plan: number; base: number }) => `${format.money(amounts.plan - amounts.base, { signed: true })} on base`;
   return (
     <>
-      <Fact name={<Term meaning="Price times units, without tax; then the change against the base.">Net sales</Term>}>
+      <Fact name={<Term meaning="Price times units, without tax; then the change against the base: the same weeks at regular price, without promotion.">Net sales</Term>}>
         {format.money(netSales.plan)} · {change(netSales)}
       </Fact>
       <Fact name={<Term meaning="Net sales less unit costs, with the supplier's funding per unit; then the change against the base.">Gross margin</Term>}>
