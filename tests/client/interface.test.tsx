@@ -2,6 +2,7 @@ import { screen, within } from "@testing-library/react";
 import userEvent from "@testing-library/user-event";
 import { useState } from "react";
 import { describe, expect, it, vi } from "vitest";
+import type { Job } from "@shared/contract/jobs";
 import { Combobox } from "@/components/ui/combobox";
 import { matchOptions } from "@/components/ui/combobox-options";
 import { DataTable } from "@/components/ui/data-table";
@@ -9,6 +10,7 @@ import { sumOf } from "@/components/ui/data-table-columns";
 import type { TableColumn } from "@/components/ui/data-table-columns";
 import { NumberField } from "@/components/ui/number-field";
 import { ErrorState } from "@/components/ui/error-state";
+import { JobProgress } from "@/components/jobs/job-progress";
 import { ProgressBar } from "@/components/ui/progress-bar";
 import { Term } from "@/components/ui/term";
 import { Button } from "@/components/ui/button";
@@ -170,6 +172,26 @@ describe("fields, states and words", () => {
     renderInPage(<ProgressBar label="Checking" share={null} note="61,204 rows read" />);
     expect(screen.getByRole("progressbar").getAttribute("aria-valuenow")).toBeNull();
     expect(screen.getByText("61,204 rows read")).toBeTruthy();
+  });
+
+  it("work that waits for its turn shows an empty bar, and says so once", () => {
+    const job: Job = {
+      id: "0b7e3a44-3b1b-4a8e-9a0a-000000000009",
+      kind: "check",
+      state: "queued",
+      progress: { done: 0, total: null, message: "" },
+      subject: null,
+      result: null,
+      error: null,
+      attempt: 0,
+      createdAt: "2026-06-01T08:00:00.000Z",
+      startedAt: null,
+      finishedAt: null,
+    };
+    renderInPage(<JobProgress job={job} updatedAtMs={0} label="Checking the rows" />);
+    expect(screen.getByRole("progressbar").getAttribute("aria-valuenow")).toBe("0");
+    expect(screen.getByRole("progressbar").firstElementChild).toMatchObject({ style: { width: "0%" } });
+    expect(screen.getAllByText(/wait/i)).toHaveLength(1);
   });
 
   it("a trade word tells its meaning on focus and hides it on Escape", async () => {

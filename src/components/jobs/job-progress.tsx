@@ -12,7 +12,7 @@ export const JobProgress = ({ job, updatedAtMs, label }: JobProgressProps) => {
   return (
     <ProgressBar
       label={label}
-      share={isQueued || !total ? null : done / total}
+      share={isQueued ? 0 : total ? done / total : null}
       note={isQueued ? "Waiting for its turn" : message || "Starting"}
       secondsLeft={isQueued ? null : left}
     />

@@ -8,7 +8,7 @@ import { useJob } from "@/lib/use-job";
 import { useRefreshExtract } from "../api/extract-actions";
 import { isInWork } from "../view/extract-state";
 
-const labels = { received: "Waiting to be checked", checking: "Checking the rows", loading: "Loading, all or nothing" };
+const labels = { received: "Checking the rows", checking: "Checking the rows", loading: "Loading, all or nothing" };
 
 const labelOf = (state: Extract["state"]) =>
   state === "received" || state === "checking" || state === "loading" ? labels[state] : "Working";
