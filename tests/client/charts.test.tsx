@@ -13,6 +13,7 @@ import { runningSums, sumBars, sumScale } from "@/components/charts/sum-column/s
 import type { SumPart } from "@/components/charts/sum-column/sum-layout";
 import { WeekBars } from "@/components/charts/week-bars/week-bars";
 import { labelledPast, weekLayout } from "@/components/charts/week-bars/week-layout";
+import { yearSpans } from "@/components/charts/week-bars/year-spans";
 import { formatNumber } from "@/lib/format/number";
 import { renderInPage } from "./support/render";
 
@@ -63,13 +64,13 @@ describe("the sum column", () => {
 
 describe("weeks", () => {
   const past = [
-    { week: "2026-05-11", label: "wk 20", units: 400 },
-    { week: "2026-05-18", label: "wk 21", units: null },
-    { week: "2026-05-25", label: "wk 22", units: 500 },
+    { week: "2026-05-11", label: "wk 20", year: 2026, units: 400 },
+    { week: "2026-05-18", label: "wk 21", year: 2026, units: null },
+    { week: "2026-05-25", label: "wk 22", year: 2026, units: 500 },
   ];
   const plan = [
-    { week: "2026-06-08", label: "wk 24", units: 800, lower: 700, upper: 900, base: 450 },
-    { week: "2026-06-15", label: "wk 25", units: 750, lower: 650, upper: 850, base: 460 },
+    { week: "2026-06-08", label: "wk 24", year: 2026, units: 800, lower: 700, upper: 900, base: 450 },
+    { week: "2026-06-15", label: "wk 25", year: 2026, units: 750, lower: 650, upper: 850, base: 460 },
   ];
 
   it("leave a gap where nothing was recorded", () => {
@@ -78,6 +79,40 @@ describe("weeks", () => {
     );
     expect(document.querySelectorAll("rect[data-week]")).toHaveLength(2);
     expect(document.querySelector('rect[data-week="2026-05-18"]')).toBeNull();
+    const gap = document.querySelector('rect[data-gap="2026-05-18"]');
+    const [before, after] = ["2026-05-11", "2026-05-25"].map((week) => document.querySelector(`rect[data-week="${week}"]`));
+    expect(number(gap, "x")).toBeGreaterThan(number(before, "x") + number(before, "width"));
+    expect(number(gap, "x") + number(gap, "width")).toBeLessThan(number(after, "x"));
+    expect(screen.getByText("nothing recorded in that week")).toBeTruthy();
+  });
+
+  it("that sold nothing stand as a line on the axis, not as a gap", () => {
+    const quiet = [{ ...past[0], units: 0 }, past[2]];
+    renderInPage(
+      <WeekBars title="Weeks" past={quiet} plan={plan} selected={null} onSelect={vi.fn()} format={formatNumber} />,
+    );
+    expect(number(document.querySelector('rect[data-week="2026-05-11"]'), "height")).toBe(1);
+    expect(document.querySelector("rect[data-gap]")).toBeNull();
+    expect(screen.queryByText("nothing recorded in that week")).toBeNull();
+  });
+
+  it("carry their years where there are several, each from its first week on, and none where there is one", () => {
+    const turn = [{ ...past[0], year: 2025 }, { ...past[1], year: 2025 }, past[2]];
+    const { past: bars, plan: planned } = weekLayout({ past: turn, plan, left: 50, right: 850, range: [188, 12] });
+    const spans = yearSpans([...bars, ...planned]);
+    expect(spans.map(({ year }) => year)).toEqual([2025, 2026]);
+    expect(spans[1].left).toBe(bars[2].left);
+    expect(spans[1].right).toBeCloseTo(planned[1].left + planned[1].width, 8);
+    const { unmount } = renderInPage(
+      <WeekBars title="Weeks" past={turn} plan={plan} selected={null} onSelect={vi.fn()} format={formatNumber} />,
+    );
+    const years = () => [...document.querySelectorAll('[data-part="years"] text')].map((text) => text.textContent);
+    expect(years()).toEqual(["2025", "2026"]);
+    unmount();
+    renderInPage(
+      <WeekBars title="Weeks" past={past} plan={plan} selected={null} onSelect={vi.fn()} format={formatNumber} />,
+    );
+    expect(years()).toEqual([]);
   });
 
   it("stand on zero and share one scale, past and planned", () => {
@@ -88,7 +123,7 @@ describe("weeks", () => {
   });
 
   it("drop the oldest where there is no room for all", () => {
-    const many = Array.from({ length: 156 }, (_, index) => ({ week: `w${index}`, label: `${index}`, units: 1 }));
+    const many = Array.from({ length: 156 }, (_, index) => ({ week: `w${index}`, label: `${index}`, year: 2026, units: 1 }));
     const { past: kept } = weekLayout({ past: many, plan, left: 50, right: 350, range: [188, 12] });
     expect(kept.length).toBeLessThan(60);
     expect(kept[kept.length - 1].week).toBe("w155");
@@ -96,7 +131,7 @@ describe("weeks", () => {
   });
 
   it("carry labels that neither run into each other nor beyond the right end", () => {
-    const many = Array.from({ length: 60 }, (_, index) => ({ week: `w${index}`, label: "wk 22", units: 1 }));
+    const many = Array.from({ length: 60 }, (_, index) => ({ week: `w${index}`, label: "wk 22", year: 2026, units: 1 }));
     const { past: bars } = weekLayout({ past: many, plan: [], left: 50, right: 550, range: [188, 12] });
     const labelled = labelledPast(bars);
     expect(labelled.length).toBeGreaterThan(5);

@@ -94,6 +94,7 @@ describe("days and weeks", () => {
   it("are numbered by the chain's calendar", () => {
     const iso = createChainFormat(neutralSettings);
     expect(iso.weekSpan("2026-06-08", "2026-07-13")).toBe("weeks 24–29, 2026");
+    expect(iso.weekName("2025-12-29")).toEqual({ label: "wk 1", year: 2026 });
     expect(iso.weekSpan("2026-06-08", "2026-06-08")).toBe("week 24, 2026");
     expect(iso.weekSpan("2025-12-22", "2026-01-05")).toBe("week 52, 2025 – week 2, 2026");
     const retail = createChainFormat({ ...neutralSettings, calendar: "4-5-4", weekStart: 0 });

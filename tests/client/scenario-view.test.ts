@@ -74,12 +74,21 @@ const history = (week: string, store: string, units: number, price: number | nul
 });
 
 describe("the weeks before a plan", () => {
+  const name = (week: string) => ({ label: week, year: 2026 });
   const rows = [history("2026-05-04", "A", 5, 1.2), history("2026-05-18", "A", 3, 1.8), history("2026-05-18", "B", 4, 1.7)];
 
   it("are summed over stores, and a week nobody recorded stays a gap", () => {
-    expect(pastWeeks(rows, (week) => week).map(({ week, units }) => [week, units])).toEqual([
+    expect(pastWeeks(rows, { before: "2026-05-25", name }).map(({ week, units }) => [week, units])).toEqual([
       ["2026-05-04", 5], ["2026-05-11", null], ["2026-05-18", 7],
     ]);
+  });
+
+  it("reach to the plan, so that weeks not recorded yet are a gap, unless those are too many to draw", () => {
+    const weeks = (before: string) => pastWeeks(rows, { before, name }).map(({ week }) => week);
+    expect(weeks("2026-06-08").slice(2)).toEqual(["2026-05-18", "2026-05-25", "2026-06-01"]);
+    expect(weeks("2026-08-24")).toHaveLength(16);
+    expect(weeks("2026-08-31")).toHaveLength(3);
+    expect(weeks("2026-05-11")).toHaveLength(3);
   });
 
   it("tell the lowest price of the five weeks before", () => {

@@ -158,7 +158,7 @@ describe("drivers", () => {
       stockOutDays: null,
     });
     const sales = [week("2026-06-22", 3, null), week("2026-06-08", 5, 1.79)];
-    expect(pastWeeks(sales, (first) => first).map(({ units }) => units)).toEqual([5, null, 3]);
+    expect(pastWeeks(sales, (first) => ({ label: first, year: 2026 })).map(({ units }) => units)).toEqual([5, null, 3]);
     expect(newestRegularPrice(sales)).toBe(1.79);
     expect([medianOf([3, 1, 2]), medianOf([4, 1, 2, 3]), medianOf([])]).toEqual([2, 2, null]);
   });

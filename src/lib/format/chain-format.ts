@@ -43,6 +43,11 @@ export const createChainFormat = (settings: Settings) => {
     /** "week 26" of the week that begins on a day, by the chain's calendar. */
     week: (firstDay: string) => `week ${weekNumber(firstDay)}`,
     weekNumber,
+    /** "wk 24" and the year it is counted in, for the foot of a chart. */
+    weekName: (firstDay: string) => {
+      const { week, year } = weekNumberOf(calendar, firstDay);
+      return { label: `wk ${week}`, year };
+    },
     weekDays: formatWeekDays,
     /** "weeks 24–29, 2026" */
     weekSpan: (first: string, last: string) => {

@@ -19,9 +19,10 @@ export const PastBars = memo(function PastBars({ weeks, bars, y, foot }: PastBar
             key={bar.week}
             data-week={bar.week}
             x={bar.left}
-            y={top}
+            y={Math.min(top, zero - 1)}
             width={bar.width}
-            height={zero - top}
+            // A week that sold nothing is seen to have been recorded.
+            height={Math.max(1, zero - top)}
             rx={Math.min(2, bar.width / 4)}
             fill="var(--history-bar)"
           />

@@ -7,8 +7,11 @@ import { roundTicks } from "../scale/round-ticks";
 import { PastBars } from "./past-bars";
 import { PlanBars } from "./plan-bars";
 import { WeekChoices } from "./week-choices";
+import { GapNote, WeekGaps } from "./week-gaps";
 import { weekLayout } from "./week-layout";
 import type { PastWeek, PlanWeek } from "./week-layout";
+import { WeekYears } from "./week-years";
+import { yearSpans, yearsHeight } from "./year-spans";
 
 export type WeekBarsProps = {
   title: string;
@@ -25,22 +28,20 @@ export type WeekBarsProps = {
 
 const margin = { top: 12, right: 4, bottom: 28, left: 50 };
 
+const spanYears = (weeks: readonly { year: number }[]) => new Set(weeks.map(({ year }) => year)).size > 1;
+
 /** Units week by week: what was, in grey; what the plan gives, each with its interval and the base across it. */
 export const WeekBars = (props: WeekBarsProps) => {
   const { title, heading, past, plan, selected, onSelect, format, legend, height = 216 } = props;
   const [plot, width] = useElementWidth<HTMLDivElement>(900);
+  const foot = height - (spanYears([...past, ...plan]) ? yearsHeight : 0);
+  const axis = foot - margin.bottom;
   const layout = useMemo(
-    () =>
-      weekLayout({
-        past,
-        plan,
-        left: margin.left,
-        right: width - margin.right,
-        range: [height - margin.bottom, margin.top],
-      }),
-    [past, plan, width, height],
+    () => weekLayout({ past, plan, left: margin.left, right: width - margin.right, range: [axis, margin.top] }),
+    [past, plan, width, axis],
   );
   const { y, dividerX } = layout;
+  const hasGap = layout.past.some((bar) => past[bar.index].units === null);
   const ticks = roundTicks(y.domain[0], y.domain[1], 5).map((value) => ({ value, label: format(value) }));
   const table = () => ({
     columns: ["Week", "Units", "Lower", "Upper", "Base units"],
@@ -51,7 +52,7 @@ export const WeekBars = (props: WeekBarsProps) => {
     formats: [undefined, format, format, format, format],
   });
   return (
-    <ChartFrame title={title} heading={heading} table={table} height={height} legend={legend}>
+    <ChartFrame title={title} heading={heading} table={table} height={height} legend={hasGap ? <>{legend}<GapNote /></> : legend}>
       <div ref={plot} className="relative" style={{ height }}>
         <WeekChoices bars={layout.plan} selected={selected} onSelect={onSelect} height={height} />
         <svg
@@ -62,11 +63,13 @@ export const WeekBars = (props: WeekBarsProps) => {
           aria-label={title}
         >
           <LeftAxis scale={y} ticks={ticks} left={margin.left - 4} right={width - margin.right} />
-          <PastBars weeks={past} bars={layout.past} y={y} foot={height} />
+          <WeekGaps weeks={past} bars={layout.past} top={margin.top} bottom={axis} />
+          <PastBars weeks={past} bars={layout.past} y={y} foot={foot} />
           {dividerX !== null && (
-            <line className="chart-reference" x1={dividerX} x2={dividerX} y1={margin.top} y2={height - margin.bottom} />
+            <line className="chart-reference" x1={dividerX} x2={dividerX} y1={margin.top} y2={axis} />
           )}
-          <PlanBars weeks={plan} bars={layout.plan} y={y} foot={height} selected={selected} />
+          <PlanBars weeks={plan} bars={layout.plan} y={y} foot={foot} selected={selected} />
+          <WeekYears spans={yearSpans([...layout.past, ...layout.plan])} foot={height} />
         </svg>
       </div>
     </ChartFrame>

@@ -2,10 +2,10 @@ import { linearScale } from "../scale/scale";
 import type { Scale } from "../scale/scale";
 
 /** A week that was: null where nothing was recorded, which stays a gap. */
-export type PastWeek = { week: string; label: string; units: number | null };
-export type PlanWeek = { week: string; label: string; units: number; lower: number; upper: number; base: number };
+export type PastWeek = { week: string; label: string; year: number; units: number | null };
+export type PlanWeek = { week: string; label: string; year: number; units: number; lower: number; upper: number; base: number };
 
-export type WeekBar = { week: string; label: string; left: number; width: number; middle: number };
+export type WeekBar = { week: string; label: string; year: number; left: number; width: number; middle: number };
 
 export type WeekLayout = { past: (WeekBar & { index: number })[]; plan: WeekBar[]; y: Scale; dividerX: number | null };
 
@@ -47,9 +47,9 @@ export const weekLayout = ({ past, plan, left, right, range }: WeekLayoutOptions
   };
 };
 
-const barIn = ({ week, label }: { week: string; label: string }, start: number, place: number): WeekBar => {
+const barIn = ({ week, label, year }: Pick<PlanWeek, "week" | "label" | "year">, start: number, place: number): WeekBar => {
   const width = place * (place > 24 ? 0.78 : 0.72);
-  return { week, label, width, left: start + (place - width) / 2, middle: start + place / 2 };
+  return { week, label, year, width, left: start + (place - width) / 2, middle: start + place / 2 };
 };
 
 /** Every how many bars a label fits. */

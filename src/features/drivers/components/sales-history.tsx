@@ -14,7 +14,7 @@ export const SalesHistory = ({ product, store, storeName }: SalesHistoryProps) =
   const format = useChainFormat();
   const query = useQuery(salesWeeksQuery(product, store));
   const weeks = useMemo(
-    () => pastWeeks(query.data ?? [], (week) => `wk ${format.weekNumber(week)}`),
+    () => pastWeeks(query.data ?? [], format.weekName),
     [query.data, format],
   );
   return (

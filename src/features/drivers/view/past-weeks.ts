@@ -2,14 +2,16 @@ import { weeksBetween } from "@shared/calendar";
 import type { SalesWeek } from "@shared/contract/drivers";
 import type { PastWeek } from "@/components/charts/week-bars/week-layout";
 
+type WeekName = Pick<PastWeek, "label" | "year">;
+
 /** Every week from the first to the last recorded; one that is missing stays a gap. */
-export const pastWeeks = (sales: readonly SalesWeek[], label: (week: string) => string): PastWeek[] => {
+export const pastWeeks = (sales: readonly SalesWeek[], name: (week: string) => WeekName): PastWeek[] => {
   if (sales.length === 0) return [];
   const units = new Map(sales.map((row) => [row.week, row.units]));
   const recorded = [...units.keys()].sort();
   return weeksBetween(recorded[0], recorded[recorded.length - 1]).map((week) => ({
     week,
-    label: label(week),
+    ...name(week),
     units: units.get(week) ?? null,
   }));
 };

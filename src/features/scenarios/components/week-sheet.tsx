@@ -12,10 +12,11 @@ type WeekSheetProps = { figures: ScenarioFigures; context: PlanningContext; week
 export const WeekSheet = ({ figures, context, week, onWeek }: WeekSheetProps) => {
   const format = useChainFormat();
   const { prediction } = figures;
-  const past = useMemo(() => pastWeeks(context.history, (day) => `wk ${format.weekNumber(day)}`), [context, format]);
+  const [first] = prediction.weeks;
+  const past = useMemo(() => pastWeeks(context.history, { before: first?.week, name: format.weekName }), [context, format, first?.week]);
   const plan = prediction.weeks.map((row) => ({
     week: row.week,
-    label: `wk ${format.weekNumber(row.week)}`,
+    ...format.weekName(row.week),
     units: row.units.estimate,
     lower: row.units.lower,
     upper: row.units.upper,
