@@ -5,6 +5,7 @@ import { informationCriterion } from "./information-criterion";
 import { withCentredLevels } from "./level-centring";
 import { nestingFault } from "./nesting";
 import { rankDegrees } from "./penalty-share";
+import { isPerfectFit } from "./perfect-fit";
 import { posteriorOf } from "./posterior";
 import { termPlaces } from "./term-places";
 import { residualDegrees } from "./term-tests";
@@ -32,7 +33,7 @@ export function compareModels(smaller: FittedModel, larger: FittedModel): ModelC
   const hasBoth = small.rank !== null && large.rank !== null;
   const degreesOfFreedom = hasBoth ? (large.rank ?? 0) - (small.rank ?? 0) : larger.edf - smaller.edf;
   const residual = residualDegrees(larger);
-  const isPerfect = larger.warnings.some(({ code }) => code === "perfect-fit");
+  const isPerfect = isPerfectFit(larger);
   const isJudged = degreesOfFreedom >= leastDegrees && !isPerfect;
   const gain = likelihoodGain(smaller, larger);
   const form = gain / (residual === null ? 1 : larger.dispersion);

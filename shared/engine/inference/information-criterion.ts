@@ -1,6 +1,7 @@
 import { familyRules } from "../family/family";
 import type { FittedModel } from "../types";
 import { modelDegrees } from "./corrected-degrees";
+import { isPerfectFit } from "./perfect-fit";
 import type { Posterior } from "./posterior";
 import type { TermPlace } from "./term-places";
 
@@ -22,8 +23,7 @@ export function informationCriterion(
   if (model.spec.family === "quasi-poisson") return none("quasi families have no likelihood");
   if (model.spec.terms.some(({ kind }) => kind === "local-regression")) return none("local regression has no restricted likelihood to correct by");
   if (fitted === null) return none("the penalised system is singular to rounding");
-  const isPerfect = model.warnings.some(({ code }) => code === "perfect-fit");
-  if (model.logLikelihood === null || isPerfect) return none("the model reproduces the response exactly, and its likelihood has no bound");
+  if (model.logLikelihood === null || isPerfectFit(model)) return none("the model reproduces the response exactly, and its likelihood has no bound");
   const { corrected, isCorrected } = modelDegrees(fitted.posterior, fitted.places, model.dispersion);
   const scales = (familyRules(model.spec.family).scale === "unknown" ? 1 : 0) + (model.theta === null ? 0 : 1);
   const degreesOfFreedom = corrected + scales;

@@ -1,6 +1,7 @@
 import { numberColumn } from "../basis/columns";
 import { EngineError } from "../errors";
 import { familyRules } from "../family/family";
+import { isPerfectFit } from "../inference/perfect-fit";
 import { addRowsTimes } from "../linalg/sparse-rows";
 import type { FittedModel, ModelData } from "../types";
 import { designRows, rowStandardErrors } from "./design-rows";
@@ -34,7 +35,7 @@ const leastFreedom = 1e-10;
  * @example influence(model, data).cooksDistance.findIndex((distance) => distance > 1); // a row to look at
  */
 export function influence(model: FittedModel, data: ModelData): Influence {
-  if (model.warnings.some(({ code }) => code === "perfect-fit")) {
+  if (isPerfectFit(model)) {
     throw new EngineError("option-invalid", "The model reproduces the response exactly; no row's influence can be told.");
   }
   if (model.information === null) {

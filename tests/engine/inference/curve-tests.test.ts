@@ -90,6 +90,18 @@ describe("Every kind of term", () => {
     expect(terms.map(({ test }) => test!.pValue < 0.01)).toEqual([true, false, false, true]);
   });
 
+  it("has nothing to be judged by where the model reproduces the response exactly, whatever the response", () => {
+    const reason = "the model reproduces the response exactly, and nothing is left to judge it by";
+    for (const y of [x.map(() => 0), x.map(() => 7), x.map((value) => 3 - 2 * value)]) {
+      for (const kind of ["linear", "smooth", "natural-spline"] as const) {
+        const model = fitModel({ response: "y", family: "gaussian", terms: [{ kind, column: "x", df: 3 } as ModelSpec["terms"][number]] }, { x, y });
+        const report = modelReport(model);
+        expect(report.terms[0], kind).toMatchObject({ test: null, curveTest: null, testReason: reason });
+        expect(report.aic).toBe(null);
+      }
+    }
+  });
+
   it("says why there is no test where there is none", () => {
     const twice = fitModel({ response: "y", family: "gaussian", terms: [{ kind: "linear", column: "x" }, { kind: "linear", column: "x", id: "again" }] }, straight);
     expect(modelReport(twice).terms[1]).toMatchObject({ test: null, curveTest: null, testReason: "other terms reproduce it, and it is left out", concurvity: null });
