@@ -49,9 +49,8 @@ export function testTerm(setting: TestSetting, place: TermPlace): TermTests {
   const { term, positions, unpenalised } = place;
   const none = (reason: string): TermTests => ({ test: null, curveTest: null, reason });
   if (term.kind === "local-regression") return none("local regression is tested by comparing models");
-  if (setting.model.warnings.some(({ code }) => code === "perfect-fit")) return none("the model reproduces the response exactly, which leaves no noise to judge by");
   if (positions.length === 0) return none("other terms reproduce it, and it is left out");
-  if (isPerfectFit(setting.model)) return none("the model reproduces the response exactly, and nothing is left to judge it by");
+  if (isPerfectFit(setting.model)) return none("the model reproduces the response exactly, which leaves no noise to judge by");
   if (place.isGrouped || unpenalised === 0) return { ...testRandom(setting, place), curveTest: null };
   if (positions.length > mostCoefficients) return tooMany(positions.length, mostCoefficients);
   if (unpenalised === positions.length) return settle(setting, wald(setting, place));

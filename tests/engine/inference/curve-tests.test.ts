@@ -91,7 +91,7 @@ describe("Every kind of term", () => {
   });
 
   it("has nothing to be judged by where the model reproduces the response exactly, whatever the response", () => {
-    const reason = "the model reproduces the response exactly, and nothing is left to judge it by";
+    const reason = "the model reproduces the response exactly, which leaves no noise to judge by";
     for (const y of [x.map(() => 0), x.map(() => 7), x.map((value) => 3 - 2 * value)]) {
       for (const kind of ["linear", "smooth", "natural-spline"] as const) {
         const model = fitModel({ response: "y", family: "gaussian", terms: [{ kind, column: "x", df: 3 } as ModelSpec["terms"][number]] }, { x, y });
