@@ -2,10 +2,12 @@ import { describe, expect, it } from "vitest";
 import { expectGaussianAgreement, expectIceCreamAgreement, expectQuasiPoissonAgreement } from "../support/agreement";
 import { expectCountAgreement, expectShareAgreement } from "../support/agreement-families";
 import { groupChecks } from "../support/agreement-groups";
-import { expectNaturalAgreement, expectSplineTerms } from "../support/agreement-local";
+import {
+  expectBackfittedLines, expectLocalAgreement, expectLocalTerms, expectNaturalAgreement, expectOrthogonalLines, expectSplineTerms,
+} from "../support/agreement-local";
 import { expectCriterionAgreement, expectNestedAgreement, expectTestAgreement, testedCases } from "../support/agreement-tests";
 import { expectLevelAgreement, expectNumberAgreement, expectSurfaceAgreement } from "../support/agreement-varying";
-import { committedReference, freshReference } from "../support/reference-files";
+import { committedReference, freshReference, inferenceReference } from "../support/reference-files";
 import type { References } from "../support/reference-files";
 
 /** Numbers may differ in the digits another machine's arithmetic leaves open; texts and shapes may not. */
@@ -35,6 +37,7 @@ const names: (keyof References)[] = [
 
 describe("The committed references are what R gives now", () => {
   it.each(names)("%s", (name) => expectSame(fresh(name), committedReference(name), name));
+  it("those beside the tests of inference", () => expectSame(inferenceReference.fresh(), inferenceReference.committed(), "inference"));
 });
 
 describe("The engine agrees with R as it runs now", () => {
@@ -72,6 +75,15 @@ describe("The engine agrees with R as it runs now", () => {
     natural.fits.forEach((fit) => expectNaturalAgreement(natural, fit));
     const { splines } = fresh("local-models");
     splines.oneTerm.forEach(({ df, terms }) => expectSplineTerms(splines, { x: df }, terms));
+  });
+
+  it("on local regressions", () => {
+    const { local } = fresh("natural-and-local");
+    local.fits.forEach((fit) => expectLocalAgreement(local, fit));
+    const models = fresh("local-models");
+    models.local.cases.forEach((one) => expectLocalTerms(models.local, one));
+    expectOrthogonalLines(models);
+    expectBackfittedLines(models);
   });
 
   it("on tests of terms and information criteria", () => {

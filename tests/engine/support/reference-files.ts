@@ -74,12 +74,21 @@ export const committedReference = <Name extends keyof References>(name: Name): R
 type FreshReferences = References & { "all-series": AllSeries };
 
 /** Runs the reference script now. */
-export function freshReference<Name extends keyof FreshReferences>(name: Name): FreshReferences[Name] {
+export const freshReference = <Name extends keyof FreshReferences>(name: Name): FreshReferences[Name] =>
+  resultOf(join(folder, `${name}.R`)) as FreshReferences[Name];
+
+/** What tests/engine/inference holds of R: the committed results, and those its script gives now. */
+export const inferenceReference = {
+  committed: (): unknown => JSON.parse(readFileSync(join(folder, "../inference/reference.json"), "utf8")),
+  fresh: (): unknown => resultOf(join(folder, "../inference/reference.R")),
+};
+
+function resultOf(script: string): unknown {
   const output = mkdtempSync(join(tmpdir(), "engine-reference-"));
   try {
     const file = join(output, "result.json");
-    execFileSync("Rscript", ["--vanilla", join(folder, `${name}.R`), file], { stdio: ["ignore", "ignore", "inherit"] });
-    return JSON.parse(readFileSync(file, "utf8")) as FreshReferences[Name];
+    execFileSync("Rscript", ["--vanilla", script, file], { stdio: ["ignore", "ignore", "inherit"] });
+    return JSON.parse(readFileSync(file, "utf8"));
   } finally {
     rmSync(output, { recursive: true });
   }

@@ -96,6 +96,9 @@ export type LocalModels = {
   local: {
     data: { x: number[]; z: number[]; promotion: string[]; line: number[]; y: number[] };
     cases: { name: string; fitted: number[]; terms: number[][] }[];
+    /** Local lines of x and z: on the rows of `splines`, by package gam; on these rows, by exact backfitting. */
+    orthogonal: [number[], number[]];
+    backfitted: [number[], number[]];
   };
 };
 
