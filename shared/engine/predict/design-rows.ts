@@ -83,7 +83,18 @@ export function rowStandardErrors(model: FittedModel, parts: DesignRows["parts"]
   for (let row = 0; row < count; row++) {
     let used = 0;
     for (const part of parts) used = gatherRow(part.rows, row, part.first, { indices, values, count: used });
-    errors[row] = Math.sqrt(varianceOf(indices, values, used));
+    errors[row] = Math.sqrt(varianceOf(indices, values, withoutZeros(indices, values, used)));
   }
   return errors;
+}
+
+/** Moves entries that are not zero to the front: a local regression's row has many outside its window. */
+function withoutZeros(indices: Int32Array, values: Float64Array, count: number): number {
+  let used = 0;
+  for (let k = 0; k < count; k++) {
+    if (values[k] === 0) continue;
+    indices[used] = indices[k];
+    values[used++] = values[k];
+  }
+  return used;
 }

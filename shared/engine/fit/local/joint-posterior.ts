@@ -1,4 +1,4 @@
-import { addProduct } from "../../linalg/add-product";
+import { denseProduct, transposed } from "../../linalg/dense-product";
 import { rowProducts } from "../../linalg/dense-products";
 import { solveLu } from "../../linalg/pivoted-lu";
 import type { JointSolution } from "./joint-solution";
@@ -43,27 +43,27 @@ export function coordinateEdf({ system: { size, dropped, layout: { fixed } }, pe
  * Cost: O(unknowns^2 x size).
  */
 export function jointPosterior(solution: JointSolution): JointPosterior {
-  const { system: { layout } } = solution;
+  const { system: { layout: { size: all, locals }, size, below } } = solution;
   const inverse = reducedInverse(solution);
+  const points = all - size;
+  const through = denseProduct({ values: below, count: points, width: size }, { values: inverse, count: size, width: size });
   return {
-    covariance: covarianceOf(solution, inverse),
+    covariance: covarianceOf(solution, inverse, through),
     coordinateEdf: coordinateEdf(solution, inverse),
-    localEdf: layout.locals.map((_, at) => localEdf(solution, inverse, at)),
+    localEdf: locals.map((_, at) => localEdf(solution, { inverse, through }, at)),
   };
 }
 
-function covarianceOf(solution: JointSolution, inverse: Float64Array): Float64Array {
-  const { system: { layout: { size: all }, size, cross, below } } = solution;
-  const points = all - size;
+/** @param through W_q^-1 A_qu B^-1, row-major points x size. */
+function covarianceOf(solution: JointSolution, inverse: Float64Array, through: Float64Array): Float64Array {
+  const { system: { layout: { size: all }, size, cross } } = solution;
   const spread = new Float64Array(all * size);
   spread.set(inverse);
-  addProduct({ values: below, count: points, width: size }, { values: inverse, count: size, width: size }, -1, spread.subarray(size * size));
+  for (let at = 0; at < through.length; at++) spread[size * size + at] = -through[at];
   const [middle, mixed] = middleOf(solution);
-  const half = new Float64Array(all * size);
-  addProduct({ values: spread, count: all, width: size }, { values: middle, count: size, width: size }, 0.5, half);
-  for (let k = 0; k < points; k++) {
-    for (let u = 0; u < size; u++) half[(size + k) * size + u] += mixed[u * points + k];
-  }
+  const half = denseProduct({ values: spread, count: all, width: size }, { values: middle, count: size, width: size });
+  for (let at = 0; at < half.length; at++) half[at] /= 2;
+  for (let at = 0; at < mixed.length; at++) half[size * size + at] += mixed[at];
   const product = new Float64Array(all * all);
   rowProducts({ values: half, count: all, width: size }, { values: spread, count: all, width: size }, product);
   for (let row = 0; row < all; row++) {
@@ -77,16 +77,27 @@ function covarianceOf(solution: JointSolution, inverse: Float64Array): Float64Ar
   return product;
 }
 
-/** V Q V' (size x size) and V Q E (size x points), with Q = G + S. */
+/** V Q V' (size x size) and the transpose of V Q E (points x size), with Q = G + S. */
 function middleOf(solution: JointSolution): [Float64Array, Float64Array] {
-  const { system, penalty } = solution;
-  const { layout: { size: all }, size, cross, above, dropped } = system;
+  const { system: { layout: { size: all }, size, cross, above } } = solution;
   const points = all - size;
-  const shares = above.slice();
-  for (let u = 0; u < size; u++) for (let k = 0; k < points; k++) shares[u * points + k] /= cross[(size + k) * (all + 1)];
+  const shares = transposed(above, size, points);
+  for (let k = 0; k < points; k++) for (let u = 0; u < size; u++) shares[k * size + u] /= cross[(size + k) * (all + 1)];
+  const turned = turnedRows(solution, shares);
+  const tail = turned.subarray(size * size);
+  // (V Q V')_uv = (V Q)_uv - sum over k of (V Q)_uk shares_kv; `turned` is V Q transposed.
+  const middle = turned.slice(0, size * size);
+  const taken = denseProduct({ values: transposed(tail, points, size), count: size, width: points }, { values: shares, count: points, width: size });
+  for (let at = 0; at < middle.length; at++) middle[at] -= taken[at];
+  for (let k = 0; k < points; k++) for (let u = 0; u < size; u++) tail[k * size + u] /= cross[(size + k) * (all + 1)];
+  return [middle, tail];
+}
+
+/** Q V', row-major unknowns x size: Q is mostly zeros, which cost nothing. */
+function turnedRows({ system, penalty }: JointSolution, shares: Float64Array): Float64Array {
+  const { layout: { size: all }, size, cross, dropped } = system;
   const isDropped = new Uint8Array(all);
   for (const { column } of dropped) isDropped[column] = 1;
-  // V Q, row by row of V' Q': Q is symmetric and mostly zeros, so its rows are read as the left factor.
   const turned = new Float64Array(all * size);
   for (let row = 0; row < all; row++) {
     const own = turned.subarray(row * size, (row + 1) * size);
@@ -94,45 +105,34 @@ function middleOf(solution: JointSolution): [Float64Array, Float64Array] {
       const weight = cross[row * all + k] + (k === row && row < penalty.length ? penalty[row] : 0);
       if (weight === 0 || isDropped[row] === 1 || isDropped[k] === 1) continue;
       if (k < size) own[k] += weight;
-      else for (let u = 0; u < size; u++) own[u] -= weight * shares[u * points + (k - size)];
+      else for (let u = 0, from = (k - size) * size; u < size; u++) own[u] -= weight * shares[from + u];
     }
   }
-  const middle = turned.slice(0, size * size);
-  const mixed = new Float64Array(size * points);
-  const tail = turned.subarray(size * size);
-  for (let u = 0; u < size; u++) {
-    for (let k = 0; k < points; k++) mixed[u * points + k] = tail[k * size + u] / cross[(size + k) * (all + 1)];
-  }
-  // (V Q V')_uv = (VQ)_uv - sum over k of (VQ)_uk shares_vk; `turned` holds VQ transposed, which is as good: VQV' is symmetric.
-  addProduct({ values: shares, count: size, width: points }, { values: tail, count: points, width: size }, -1, middle);
-  return [middle, mixed];
+  return turned;
 }
 
 /** Sum over a local regression's unknowns of the diagonal of A^-1 Z'WZ K: count - sum of (A^-1)_ij w_j (I - F + 1c')_ji. */
-function localEdf(solution: JointSolution, inverse: Float64Array, at: number): number {
-  const { system: { layout: { size: all, locals }, operators, size, cross, above, below } } = solution;
+function localEdf(solution: JointSolution, of: { inverse: Float64Array; through: Float64Array }, at: number): number {
+  const { system: { layout: { size: all, locals }, operators, size, cross } } = solution;
   const { first, count } = locals[at];
-  const { centred } = operators[at];
-  const row = new Float64Array(count);
+  const turned = transposed(operators[at].centred, count, count);
+  const isLast = first === size;
+  const block = isLast ? lastBlock(solution, of.through) : null;
   let trace = 0;
   for (let i = 0; i < count; i++) {
-    if (first < size) for (let j = 0; j < count; j++) row[j] = inverse[(first + i) * size + first + j] * cross[(first + j) * (all + 1)];
-    else writeLastRow({ inverse, above, below, size, count }, i, row);
-    let own = 1 - row[i];
-    for (let j = 0; j < count; j++) own += row[j] * centred[j * count + i];
-    trace += own;
+    trace += 1;
+    for (let j = 0; j < count; j++) {
+      const entry = block === null ? of.inverse[(first + i) * size + first + j] * cross[(first + j) * (all + 1)] : block[i * count + j];
+      trace += entry * (turned[i * count + j] - (i === j ? 1 : 0));
+    }
   }
   return trace;
 }
 
-/** Row i of (A^-1)_qq W_q = I + W_q^-1 A_qu B^-1 A_uq. */
-function writeLastRow(
-  of: { inverse: Float64Array; above: Float64Array; below: Float64Array; size: number; count: number }, i: number, out: Float64Array,
-): void {
-  const { inverse, above, below, size, count } = of;
-  const through = new Float64Array(size);
-  addProduct({ values: below.subarray(i * size, (i + 1) * size), count: 1, width: size }, { values: inverse, count: size, width: size }, 1, through);
-  out.fill(0);
-  out[i] = 1;
-  addProduct({ values: through, count: 1, width: size }, { values: above, count: size, width: count }, 1, out);
+/** (A^-1)_qq W_q = I + W_q^-1 A_qu B^-1 A_uq. */
+function lastBlock({ system: { layout: { size: all }, size, above } }: JointSolution, through: Float64Array): Float64Array {
+  const points = all - size;
+  const block = denseProduct({ values: through, count: points, width: size }, { values: above, count: size, width: points });
+  for (let k = 0; k < points; k++) block[k * (points + 1)] += 1;
+  return block;
 }

@@ -1,4 +1,5 @@
 import { addProduct } from "../../linalg/add-product";
+import { denseProduct } from "../../linalg/dense-product";
 import type { DroppedColumn } from "../../linalg/dropping-cholesky";
 import type { NormalEquations } from "../normal-equations";
 import { localOperator } from "./local-operator";
@@ -70,7 +71,7 @@ export function jointSystem(layout: PooledDesign, equations: NormalEquations, dr
   const means = Float64Array.from({ length: last.count }, (_, k) => vector[size + k] / cross[(size + k) * (all + 1)]);
   const wide = { values: above, count: size, width: last.count };
   addProduct(wide, { values: means, count: last.count, width: 1 }, -1, reduced);
-  addProduct(wide, { values: below, count: last.count, width: size }, -1, matrix);
+  denseProduct(wide, { values: below, count: last.count, width: size }).forEach((value, at) => { matrix[at] -= value; });
   return { layout, operators, cross, vector, size, matrix, above, below, reduced, level: levelOf(layout, operators), dropped };
 }
 
