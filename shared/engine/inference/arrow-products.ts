@@ -1,6 +1,9 @@
 import type { Arrow } from "./arrow-root";
 import type { Posterior } from "./posterior";
 
+const emptyLike = ({ own, cross, shared }: Arrow): Arrow =>
+  ({ own: new Float64Array(own.length), cross: new Float64Array(cross.length), shared: new Float64Array(shared.length) });
+
 /**
  * Lower triangle with the diagonal halved; with groups first, `cross` (their meeting with later rows) is all of it lower.
  *
@@ -24,7 +27,7 @@ export function lowerHalf({ own, cross, shared }: Arrow, size: number, width: nu
  */
 export function remainder({ size, grouped, information }: Posterior, conjugated: readonly Arrow[]): Arrow {
   const first = conjugated[0];
-  const out: Arrow = { own: new Float64Array(first.own.length), cross: new Float64Array(first.cross.length), shared: new Float64Array(first.shared.length) };
+  const out = emptyLike(first);
   for (let k = 0; k < size; k++) out.shared[k * size + k] = 1;
   for (const position of information.dropped) out.shared[position * size + position] = 0;
   for (let row = 0; row * grouped.length < out.own.length; row++) out.own[row * grouped.length + (row % grouped.length)] = 1;
@@ -43,7 +46,7 @@ export function remainder({ size, grouped, information }: Posterior, conjugated:
  * @example timesSymmetric(half, kept, posterior.size, 0).shared;
  */
 export function timesSymmetric(half: Arrow, kept: Arrow, size: number, width: number): Arrow {
-  const out: Arrow = { own: new Float64Array(half.own.length), cross: new Float64Array(half.cross.length), shared: new Float64Array(half.shared.length) };
+  const out = emptyLike(half);
   for (let row = 0; row < size; row++) {
     for (let k = 0; k <= row; k++) {
       const value = half.shared[row * size + k];

@@ -46,7 +46,7 @@ function added({ spec, perLevel }: WiderTerm): string {
   if (perLevel && spec.kind === "smooth") return `a curve of "${spec.column}" for each "${spec.by}"`;
   switch (spec.kind) {
     case "factor-smooth": return `a curve of "${spec.column}" for each "${spec.group}"`;
-    case "random-effect": return spec.by === undefined ? `a level for each "${spec.column}"` : `a slope in "${spec.by}" for each "${spec.column}"`;
+    case "random-effect": return `a ${spec.by === undefined ? "level" : `slope in "${spec.by}"`} for each "${spec.column}"`;
     case "smooth": case "cyclic-smooth": case "natural-spline": case "local-regression": return `the curve "${termId(spec)}"`;
     case "tensor-product": return `the interaction of ${spec.columns.map((column) => `"${column}"`).join(" and ")}`;
     case "random-walk": return `the moving level "${termId(spec)}"`;

@@ -67,9 +67,11 @@ function centredSquares(information: ModelInformation, f: CoordinateVector) {
   return { squares, gradient, intercept };
 }
 
+const randomKinds: readonly string[] = ["random-effect", "factor-smooth", "random-walk"];
+
 /** Penalties of terms that stand for random deviations, by position. */
 function randomRidges(model: FittedModel, information: ModelInformation): { shared: Float64Array; grouped: Float64Array } {
-  const random = new Set(model.terms.filter(({ kind }) => kind === "random-effect" || kind === "factor-smooth" || kind === "random-walk").map(({ id }) => id));
+  const random = new Set(model.terms.filter(({ kind }) => randomKinds.includes(kind)).map(({ id }) => id));
   const ridges = { shared: new Float64Array(information.size), grouped: new Float64Array(information.groups?.size ?? 0) };
   for (const { termId, isGrouped, positions, diagonal, multiplier } of placedPenalties(model)) {
     if (!random.has(termId)) continue;
@@ -97,7 +99,8 @@ function warningOf({ term }: TermPlace, share: number, alone: { id: string; shar
   const most = alone.reduce((best, other) => (other.share > best.share ? other : best));
   return {
     code: "concurvity", term: term.id,
-    message: `Other terms reproduce ${percent(share)} of what "${term.id}" shows ("${most.id}" alone ${percent(most.share)}): these data can hardly tell them apart.`,
+    message: `Other terms reproduce ${percent(share)} of what "${term.id}" shows ("${most.id}" alone ${percent(most.share)}): `
+      + "these data can hardly tell them apart.",
   };
 }
 

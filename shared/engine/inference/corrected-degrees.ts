@@ -41,7 +41,8 @@ export function modelDegrees(posterior: Posterior, places: readonly TermPlace[],
   const root = size > mostCoordinates ? null : arrowRoot(posterior, splineBasis(posterior, places));
   if (root === null) return { plain, bound, corrected: bound, isCorrected: false };
   const conjugated = posterior.penalties.map((penalty) => conjugatedPenalty(posterior, root, penalty));
-  const moving = posterior.penalties.flatMap((penalty, j) => (penalty.isEstimated && blockDegrees(posterior, penalty, conjugated[j]) > leastDegrees ? [j] : []));
+  const moves = (penalty: PlacedPenalty, j: number) => penalty.isEstimated && blockDegrees(posterior, penalty, conjugated[j]) > leastDegrees;
+  const moving = posterior.penalties.flatMap((penalty, j) => (moves(penalty, j) ? [j] : []));
   if (moving.length === 0) return { plain, bound, corrected: plain, isCorrected: true };
   const hessian = new Matrix(moving.map((j) => moving.map((k) => information.criterionHessian[j * posterior.penalties.length + k])));
   const variance = inverseBounded(hessian, (value) => Math.max(value, leastCurvature));

@@ -41,7 +41,7 @@ export function groupedBlocks(posterior: Posterior, positions: readonly number[]
   const share = linked(groups.link, sharedPenaltyShare(posterior, penalty), total, size);
   const own = blockDiagonal(groups);
   const scaled = own.slice();
-  for (let row = 0; row < total; row++) for (let column = 0; column < total; column++) scaled[row * total + column] *= penalty.grouped[column % groups.size];
+  for (let at = 0; at < scaled.length; at++) scaled[at] *= penalty.grouped[(at % total) % groups.size];
   const once = product(scaled, between, total);
   const twice = product(scaled, own, total);
   const kept = Array.from({ length: groups.count }, (_, group) => positions.map((k) => group * groups.size + k)).flat();

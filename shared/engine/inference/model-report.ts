@@ -48,13 +48,15 @@ type Findings = {
   shares: readonly (number | null)[];
 };
 
+const ofLocalRegression = "local regression is tested by comparing models";
+
 function termReports(model: FittedModel, { information, places, posterior, shares }: Findings): TermReport[] {
   const setting = information === null || posterior === null
     ? null
     : { model, information, posterior, places, degrees: rankDegrees(posterior) };
   return model.terms.map((term, at): TermReport => {
     const tests = setting === null
-      ? { test: null, curveTest: null, reason: information === null ? "local regression is tested by comparing models" : "the penalised system is singular to rounding" }
+      ? { test: null, curveTest: null, reason: information === null ? ofLocalRegression : "the penalised system is singular to rounding" }
       : testTerm(setting, places[at]);
     return {
       id: term.id,

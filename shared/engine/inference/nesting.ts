@@ -46,10 +46,12 @@ export function isWithin(term: TermSpec, wider: WiderTerm): boolean {
   }
 }
 
+const passedOver = ["id", "smoothness", "reference"];
+
 /** Equal but for name, smoothness and a factor's reference, none of which changes what can be fitted. */
 export function isSame(term: TermSpec, wider: TermSpec): boolean {
   const bare = (spec: TermSpec) => {
-    const kept = Object.entries(spec).filter(([name, value]) => !["id", "smoothness", "reference"].includes(name) && value !== undefined && value !== false);
+    const kept = Object.entries(spec).filter(([name, value]) => !passedOver.includes(name) && value !== undefined && value !== false);
     return JSON.stringify(kept.sort(([one], [other]) => (one < other ? -1 : 1)));
   };
   return bare(term) === bare(wider);

@@ -14,7 +14,9 @@ export type Slope = { shared: Float64Array; grouped: Float64Array; sharedRight: 
 export function penaltySlope({ information, size, covariance, groups }: Posterior, penalty: PlacedPenalty): Slope {
   const width = groups?.size ?? 0;
   const lines = (groups?.count ?? 0) * width;
-  const slope: Slope = { shared: new Float64Array(size), grouped: new Float64Array(lines), sharedRight: new Float64Array(size), groupedRight: new Float64Array(lines) };
+  const slope: Slope = {
+    shared: new Float64Array(size), grouped: new Float64Array(lines), sharedRight: new Float64Array(size), groupedRight: new Float64Array(lines),
+  };
   penalty.positions.forEach((position, k) => {
     const weight = -penalty.multiplier * penalty.diagonal[k];
     if (!penalty.isGrouped) slope.sharedRight[position] = weight * information.coordinates[position];
@@ -41,6 +43,8 @@ export function penaltySlope({ information, size, covariance, groups }: Posterio
 export function slopeProduct({ shared, grouped }: Posterior, left: Slope, right: Slope): number {
   let sum = 0;
   for (let k = 0; k < shared.length; k++) sum += left.shared[k] * (right.sharedRight[k] - shared[k] * right.shared[k]);
-  for (let line = 0; line < left.grouped.length; line++) sum += left.grouped[line] * (right.groupedRight[line] - grouped[line % grouped.length] * right.grouped[line]);
+  for (let line = 0; line < left.grouped.length; line++) {
+    sum += left.grouped[line] * (right.groupedRight[line] - grouped[line % grouped.length] * right.grouped[line]);
+  }
   return sum;
 }

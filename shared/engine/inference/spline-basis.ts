@@ -54,7 +54,8 @@ export function firstDirection(place: TermPlace): Float64Array {
   const forwards = new Float64Array(width * width);
   const at = new Map(positions.map((position, k) => [position, k]));
   for (const curve of curves) {
-    writeCurve({ ...curve, positions: curve.positions.map((position) => at.get(position) ?? 0) }, 0, { forwards, backwards: new Float64Array(width * width) }, width);
+    const within = curve.positions.map((position) => at.get(position) ?? 0);
+    writeCurve({ ...curve, positions: within }, 0, { forwards, backwards: new Float64Array(width * width) }, width);
   }
   return Float64Array.from(positions, (_position, k) => forwards[k * width]);
 }

@@ -58,7 +58,9 @@ export const fTail = (x: number, numerator: number, denominator: number): number
 
 function check({ weights, degrees }: WeightedChiSquare, x: number): void {
   if (weights.length !== degrees.length) {
-    throw new EngineError("option-invalid", `A mixture has ${weights.length} weights and ${degrees.length} degrees of freedom; it needs as many of both.`);
+    throw new EngineError(
+      "option-invalid", `A mixture has ${weights.length} weights and ${degrees.length} degrees of freedom; it needs as many of both.`,
+    );
   }
   const bad = [...weights, ...degrees, x].find((value) => !Number.isFinite(value));
   if (bad !== undefined) throw new EngineError("option-invalid", `A mixture of chi-squares has the number ${bad}; all must be finite.`);

@@ -43,7 +43,10 @@ export function influence(model: FittedModel, data: ModelData): Influence {
   }
   const pearson = residuals(model, data, { kind: "pearson" });
   if (pearson.length !== model.fitted.length) {
-    throw new EngineError("length-mismatch", `The data have ${pearson.length} rows, the model was fitted to ${model.fitted.length}; influence is of the rows fitted to.`);
+    throw new EngineError(
+      "length-mismatch",
+      `The data have ${pearson.length} rows, the model was fitted to ${model.fitted.length}; influence is of the rows fitted to.`,
+    );
   }
   const design = designRows(model, data);
   const weights = workingWeights(model, data, design);

@@ -126,7 +126,11 @@ function standardisedRoot(model: FittedModel, termId: string, options: Simultane
 function covarianceRoot(model: FittedModel, termId: string, indices: readonly number[]): Matrix {
   const size = indices.length;
   if (size > mostCoefficients) {
-    throw new EngineError("option-invalid", `Term "${termId}" has ${size} coefficients at the values asked for; simultaneous bands are made of up to ${mostCoefficients}: ask for fewer by "at".`);
+    throw new EngineError(
+      "option-invalid",
+      `Term "${termId}" has ${size} coefficients at the values asked for; simultaneous bands are made of up to ${mostCoefficients}: `
+      + 'ask for fewer by "at".',
+    );
   }
   if (size === 0) return Matrix.zeros(0, 0);
   const { realEigenvalues, eigenvectorMatrix } = new EigenvalueDecomposition(coefficientCovariance(model, indices), { assumeSymmetric: true });
