@@ -169,7 +169,7 @@ describe("POST /api/models for one store", () => {
     await refused(
       { product: "JAM", stores: ["A1"], spec: { ...logLog, terms: curves } },
       "spec-too-large",
-      /800 coefficients: at most 160/,
+      /800 coefficients: at most 240/,
     );
     await refused(spec({ kind: "wavelet", column: "price" }), "invalid-request", /./);
   });
