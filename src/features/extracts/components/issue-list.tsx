@@ -5,6 +5,7 @@ import type { Extract, ExtractIssue } from "@shared/contract/extracts";
 import { Button } from "@/components/ui/button";
 import { DataTable } from "@/components/ui/data-table";
 import type { TableColumn } from "@/components/ui/data-table-columns";
+import { EmptyState } from "@/components/ui/empty-state";
 import { ErrorState } from "@/components/ui/error-state";
 import { Sheet } from "@/components/ui/sheet";
 import { LoadingState } from "@/components/ui/skeleton";
@@ -72,6 +73,7 @@ export const IssueList = ({ extract, rule, onRule }: IssueListProps) => {
     [query.data],
   );
   const counts = query.data?.pages[0]?.byRule ?? [];
+  const isUnknown = rule !== null && !counts.some((count) => count.rule === rule);
   const save = async () => {
     setSaving(true);
     try {
@@ -96,9 +98,11 @@ export const IssueList = ({ extract, rule, onRule }: IssueListProps) => {
       flush
       heading="What is wrong, line by line"
       actions={
-        <Button size="small" onClick={() => void save()} busy={isSaving}>
-          <FileDown aria-hidden="true" /> Save as CSV
-        </Button>
+        !isUnknown && (
+          <Button size="small" onClick={() => void save()} busy={isSaving}>
+            <FileDown aria-hidden="true" /> Save as CSV
+          </Button>
+        )
       }
     >
       {query.isPending ? (
@@ -111,14 +115,23 @@ export const IssueList = ({ extract, rule, onRule }: IssueListProps) => {
             <IssueRules counts={counts} chosen={rule} onChoose={onRule} />
           </div>
           <div className="min-w-0">
-            <DataTable
-              caption="Issues"
-              rows={issues}
-              columns={columns}
-              rowKey={(issue) => issue.id}
-              rowHeight={58}
-              maxHeight={560}
-            />
+            {isUnknown ? (
+              <EmptyState
+                title={`There is no rule “${rule}” here`}
+                action={<Button onClick={() => onRule(null)}>Show all rules</Button>}
+              >
+                No row of this file broke a rule of that name. The address may have lost a part on its way, or the file was checked again since.
+              </EmptyState>
+            ) : (
+              <DataTable
+                caption="Issues"
+                rows={issues}
+                columns={columns}
+                rowKey={(issue) => issue.id}
+                rowHeight={58}
+                maxHeight={560}
+              />
+            )}
             {query.hasNextPage && (
               <div className="border-t border-hairline p-3 text-center">
                 <Button size="small" onClick={() => void query.fetchNextPage()} busy={query.isFetchingNextPage}>

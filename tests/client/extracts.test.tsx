@@ -1,0 +1,50 @@
+import { screen } from "@testing-library/react";
+import userEvent from "@testing-library/user-event";
+import { afterEach, describe, expect, it, vi } from "vitest";
+import type { Extract } from "@shared/contract/extracts";
+import { IssueList } from "@/features/extracts/components/issue-list";
+import { answerRequests } from "./support/answer";
+import { renderInPage } from "./support/render";
+
+afterEach(() => vi.unstubAllGlobals());
+
+const extract: Extract = {
+  id: "0b7e3a44-3b1b-4a8e-9a0a-000000000001",
+  kind: "sales",
+  fileName: "week 24.csv",
+  sizeBytes: 100,
+  sha256: "0",
+  state: "checked",
+  rows: { read: 2, usable: 1, errors: 1, warnings: 0 },
+  firstWeek: "2026-06-08",
+  lastWeek: "2026-06-08",
+  uploadedBy: { id: "0b7e3a44-3b1b-4a8e-9a0a-000000000002", name: "Ada Kale" },
+  uploadedAt: "2026-06-15T08:00:00.000Z",
+  checkedAt: "2026-06-15T08:00:01.000Z",
+  loadedAt: null,
+  withdrawnAt: null,
+  jobId: null,
+  failure: null,
+  may: { check: true, load: true, withdraw: false },
+};
+const broken = { severity: "error", rule: "unknown-store", reason: "There is no store with this code", remedy: "Load it." };
+
+describe("what is wrong with an extract", () => {
+  it("says that there is no such rule where the address names none of the file, and leads back to all", async () => {
+    answerRequests(() => ({ status: 200, body: { items: [], nextCursor: null, byRule: [{ ...broken, count: 1 }] } }));
+    const onRule = vi.fn();
+    renderInPage(<IssueList extract={extract} rule="nonsense" onRule={onRule} />);
+    expect(await screen.findByText("There is no rule “nonsense” here")).toBeTruthy();
+    expect(screen.queryByRole("button", { name: "Save as CSV" })).toBeNull();
+    await userEvent.click(screen.getByRole("button", { name: "Show all rules" }));
+    expect(onRule).toHaveBeenCalledWith(null);
+  });
+
+  it("lists the rows of a rule that the file broke", async () => {
+    const row = { ...broken, line: 3, column: "store", value: "Z9" };
+    answerRequests(() => ({ status: 200, body: { items: [row], nextCursor: null, byRule: [{ ...broken, count: 1 }] } }));
+    renderInPage(<IssueList extract={extract} rule="unknown-store" onRule={vi.fn()} />);
+    expect(await screen.findByRole("button", { name: "Save as CSV" })).toBeTruthy();
+    expect(screen.queryByText(/There is no rule/)).toBeNull();
+  });
+});
