@@ -83,6 +83,8 @@ export const modelSchema = z.object({
   usedFrom: timestampSchema.nullable(),
   usedUntil: timestampSchema.nullable(),
   fits: z.array(fitSummarySchema),
+  /** Weeks of the product that were loaded, or loaded anew with other figures, since this model was asked for. */
+  newerWeeks: z.number().int(),
   /** Stores that could not be fitted, each with the reason. */
   skipped: z.array(z.object({ store: codeSchema, reason: z.string() })),
   /** Why plans cannot use it, in a sentence; null where they can. */

@@ -397,3 +397,30 @@ describe("fitProduct", () => {
     expect(body.items.map(({ id }: { id: string }) => id)).toEqual([outcome.modelId]);
   });
 });
+
+describe("a model's newer weeks", () => {
+  it("are those that were loaded since it was fitted, in its own product only", async () => {
+    const { body: fitted } = await fitAt("A1").expect(201);
+    const newerWeeks = async () => (await planner.get(`/api/models/${fitted.id}`).expect(200)).body.newerWeeks;
+    expect(await newerWeeks()).toBe(0);
+    const load = async (at: Date, first: string) => {
+      const { rows } = await test.services.pool.query<{ id: string }>(
+        `insert into extracts (id, kind, file_name, size_bytes, sha256, storage_key, state, uploaded_by_id, uploaded_at,
+           loaded_at, first_week, last_week)
+         values (gen_random_uuid(), 'sales', 'later.csv', 1, '0', 'k', 'loaded', $1, $2, $2, $3, $4) returning id`,
+        [plannerId, at, first, sample.lastWeek],
+      );
+      await test.services.pool.query("update weekly_sales set extract_id = $1 where week >= $2", [rows[0].id, first]);
+    };
+    await load(new Date(now.getTime() - 1000), "2025-12-01");
+    expect(await newerWeeks()).toBe(0);
+    await load(new Date(now.getTime() + 1000), "2025-12-15");
+    expect(await newerWeeks()).toBe(2);
+    const { body: listed } = await planner.get("/api/models?product=JAM").expect(200);
+    const same = listed.items.find(({ id }: { id: string }) => id === fitted.id);
+    expect(same.newerWeeks).toBe(2);
+    now = new Date(now.getTime() + 2000);
+    const { body: anew } = await fitAt("A1").expect(201);
+    expect((await planner.get(`/api/models/${anew.id}`).expect(200)).body.newerWeeks).toBe(0);
+  });
+});

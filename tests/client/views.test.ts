@@ -7,7 +7,7 @@ import { describeState, isInWork, kindFromName } from "@/features/extracts/view/
 import { issuesCsv } from "@/features/extracts/view/issues-csv";
 import { uploadProblem } from "@/features/extracts/view/upload-problem";
 import { cautionsOf } from "@/features/drivers/view/cautions";
-import { chooseFit, chooseModel, newerCandidate } from "@/features/drivers/view/choose-model";
+import { chooseFit, chooseModel, newerCandidate, weeksNotLearnt } from "@/features/drivers/view/choose-model";
 import { curvePoints, factorLevels, levelLabel, referenceLevel } from "@/features/drivers/view/curve-points";
 import { driverColour, driverLabel, inLaneOrder } from "@/features/drivers/view/driver-words";
 import { plainWarning } from "@/features/drivers/view/plain-warning";
@@ -191,6 +191,7 @@ describe("drivers", () => {
     usedFrom: null,
     usedUntil: null,
     fits: [fit("S1"), fit("S2")],
+    newerWeeks: 0,
     skipped: [],
     notForPlans: null,
     may: { use: false },
@@ -206,6 +207,13 @@ describe("drivers", () => {
     expect(newerCandidate(models, models[0])).toBeUndefined();
     expect(chooseFit(models[0], "S2")?.store).toBe("S2");
     expect(chooseFit(models[0], "S9")?.store).toBe("S1");
+  });
+
+  it("miss the weeks loaded since, unless a newer fit that waits knows them", () => {
+    const used = model("used", { state: "in-use", newerWeeks: 3 });
+    expect(weeksNotLearnt(used, undefined)).toBe(3);
+    expect(weeksNotLearnt(used, model("new", { newerWeeks: 1 }))).toBe(1);
+    expect(weeksNotLearnt(used, model("new", {}))).toBe(0);
   });
 
   it("warn in the words of the page", () => {

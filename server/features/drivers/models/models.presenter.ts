@@ -10,7 +10,7 @@ import type { ModelWithFits } from "./read-models.service";
 const timestamp = (at: Date | null | undefined) => at?.toISOString() ?? null;
 
 /** A model with its fits, and what the reader may do with it. */
-export function presentModel({ model, fits }: ModelWithFits, caller: Caller): Model {
+export function presentModel({ model, fits, newerWeeks }: ModelWithFits, caller: Caller): Model {
   const reason = model.spec ? notForPlans(model.spec) : null;
   const isUsable = model.fittedAt !== null && model.state !== "in-use" && reason === null;
   return {
@@ -24,6 +24,7 @@ export function presentModel({ model, fits }: ModelWithFits, caller: Caller): Mo
     usedFrom: timestamp(model.usedFrom),
     usedUntil: timestamp(model.usedUntil),
     fits,
+    newerWeeks,
     skipped: model.skipped,
     notForPlans: reason,
     may: { use: isUsable && mayUseModels(caller, model.product.category.code) },

@@ -49,6 +49,21 @@ export async function findFitSummaries(
   return summaries;
 }
 
+/** The product's weeks of which rows came with a load after a moment, each with its last such load. */
+export async function findWeekLoads(
+  em: EntityManager,
+  { productId, since }: { productId: number; since: Date },
+): Promise<{ week: string; loadedAt: Date }[]> {
+  // The weeks those extracts hold bound the scan: it touches their partitions only.
+  const rows = await em.execute<{ week: string; loadedAt: Date | string }[]>(
+    `with loads as materialized (select id, loaded_at, first_week from extracts where loaded_at > ?)
+     select w.week, max(e.loaded_at) as "loadedAt" from weekly_sales w join loads e on e.id = w.extract_id
+     where w.product_id = ? and w.week >= (select min(first_week) from loads) group by w.week`,
+    [since, productId],
+  );
+  return rows.map(({ week, loadedAt }) => ({ week, loadedAt: new Date(loadedAt) }));
+}
+
 export type StoredFit = { store: string; name: string; region: string; fit: string; summary: FitSummary };
 
 /** The fits of a model as the engine wrote them, by store code; all of them unless stores are named. */

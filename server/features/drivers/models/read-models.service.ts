@@ -9,12 +9,13 @@ import {
   findModel,
   findModelInUse,
   findModelsOfProduct,
+  findWeekLoads,
   type LoadedModel,
   type StoredFit,
 } from "./models.repository";
 
-/** A model and what can be said of its fits. */
-export type ModelWithFits = { model: LoadedModel; fits: FitSummary[] };
+/** A model, what can be said of its fits, and how many weeks were loaded since. */
+export type ModelWithFits = { model: LoadedModel; fits: FitSummary[]; newerWeeks: number };
 
 /** @throws ProblemError 404 where there is no such model. */
 export async function requireModel(em: EntityManager, id: string): Promise<LoadedModel> {
@@ -51,7 +52,8 @@ export async function requireModelOfProduct(
 export async function readModel(em: EntityManager, id: string): Promise<ModelWithFits> {
   const model = await requireModel(em, id);
   const summaries = await findFitSummaries(em, [id]);
-  return { model, fits: summaries.get(id) ?? [] };
+  const loads = await findWeekLoads(em, { productId: model.product.id, since: model.createdAt });
+  return { model, fits: summaries.get(id) ?? [], newerWeeks: loads.length };
 }
 
 /**
@@ -69,7 +71,13 @@ export async function listModelsOfProduct(
     em,
     models.map((model) => model.id),
   );
-  return models.map((model) => ({ model, fits: summaries.get(model.id) ?? [] }));
+  const oldest = models.at(-1);
+  const loads = oldest ? await findWeekLoads(em, { productId, since: oldest.createdAt }) : [];
+  return models.map((model) => ({
+    model,
+    fits: summaries.get(model.id) ?? [],
+    newerWeeks: loads.filter(({ loadedAt }) => loadedAt > model.createdAt).length,
+  }));
 }
 
 /**

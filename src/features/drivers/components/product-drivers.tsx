@@ -1,9 +1,11 @@
 import type { Store } from "@shared/contract/catalogue";
 import type { Model } from "@shared/contract/drivers";
 import { EmptyState } from "@/components/ui/empty-state";
+import { Notice } from "@/components/ui/notice";
 import { Sheet } from "@/components/ui/sheet";
 import { useChainFormat } from "@/lib/format/chain-format";
-import { chooseFit, chooseModel, newerCandidate } from "../view/choose-model";
+import { countOf } from "@/lib/format/number";
+import { chooseFit, chooseModel, newerCandidate, weeksNotLearnt } from "../view/choose-model";
 import { CandidateNotice } from "./candidate-notice";
 import { FitButton } from "./fit-button";
 import { StoreDrivers } from "./store-drivers";
@@ -31,6 +33,8 @@ export const ProductDrivers = (props: ProductDriversProps) => {
   const waiting = model.state === "candidate" ? model : newerCandidate(models, model);
   const inUse = models.find(({ state }) => state === "in-use");
   const skipped = wantedStore ? model.skipped.find(({ store }) => store === wantedStore) : undefined;
+  const newerWeeks = weeksNotLearnt(model, waiting);
+  const fitButton = mayFit && <FitButton product={model.product} label="Fit anew" jobId={models[0].jobId} />;
   const isUnknown = wantedStore !== null && fit?.store !== wantedStore;
   return (
     <div className="flex flex-col gap-5">
@@ -40,8 +44,19 @@ export const ProductDrivers = (props: ProductDriversProps) => {
           {model.usedFrom && ` since ${format.moment(model.usedFrom)}`} · fitted {format.moment(model.createdAt)} ·{" "}
           {model.fits.length} of {model.fits.length + model.skipped.length} stores learnt
         </p>
-        {mayFit && <FitButton product={model.product} label="Fit anew" jobId={models[0].jobId} />}
+        {newerWeeks === 0 && fitButton}
       </div>
+      {newerWeeks > 0 && (
+        <Notice tone="neutral">
+          <div className="flex flex-wrap items-center justify-between gap-3">
+            <span>
+              Newer weeks are loaded since this fit ({countOf(newerWeeks, "week")}): its curves do not know them yet.
+              {!mayFit && " A planner or category manager can fit it anew."}
+            </span>
+            {fitButton}
+          </div>
+        </Notice>
+      )}
       {waiting && (
         <CandidateNotice
           model={waiting}

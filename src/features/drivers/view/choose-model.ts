@@ -13,3 +13,7 @@ export const newerCandidate = (models: readonly Model[], shown: Model): Model | 
 /** The store to show: the one asked for if the model knows it, else its first. */
 export const chooseFit = (model: Model, wanted: string | null): FitSummary | undefined =>
   model.fits.find((fit) => fit.store === wanted) ?? model.fits[0];
+
+/** Weeks loaded since the model shown was fitted, less those that a newer fit has learnt from, which has a notice of its own. */
+export const weeksNotLearnt = (shown: Model, waiting: Model | undefined): number =>
+  Math.min(shown.newerWeeks, waiting?.newerWeeks ?? shown.newerWeeks);
