@@ -6,6 +6,7 @@ import { nearestWeek } from "@/features/scenarios/view/nearest-week";
 import { changeAll } from "@/features/scenarios/view/plan-changes";
 import { laneNumber } from "@/features/scenarios/view/plan-values";
 import { readPrice } from "@/features/scenarios/view/read-price";
+import { readOnlyReason, whoseScenario } from "@/features/scenarios/view/whose-scenario";
 import { lowestRecentPrice, pastWeeks } from "@/features/scenarios/view/history-weeks";
 import { sumParts } from "@/features/scenarios/view/sum-parts";
 import { nextWeek } from "@/features/scenarios/view/new-scenario";
@@ -118,5 +119,24 @@ describe("a new scenario", () => {
   it("begins with the chain's week after today", () => {
     expect(nextWeek("2026-12-01", 1)).toBe("2026-12-07");
     expect(nextWeek("2026-12-03", 4)).toBe("2026-12-10");
+  });
+});
+
+describe("whose scenario it is", () => {
+  const mine = { createdBy: { id: "me", name: "Ada Kale" }, state: "draft" as const, may: { edit: true } };
+  const theirs = { ...mine, createdBy: { id: "other", name: "Ivo Rusk" } };
+
+  it("is said with what the reader may do", () => {
+    expect(whoseScenario(mine, { personId: "me" })).toBe("yours");
+    expect(whoseScenario(theirs, { personId: "me" })).toBe("begun by Ivo Rusk, you may change it too");
+    expect(whoseScenario({ ...theirs, may: { edit: false } }, { personId: "me" })).toBe("begun by Ivo Rusk");
+  });
+
+  it("gives the reason where it can only be read", () => {
+    expect(readOnlyReason(theirs, { mayPlan: true })).toBeNull();
+    expect(readOnlyReason({ state: "approved", may: { edit: false } }, { mayPlan: true })).toBe("can be read only, because it is approved");
+    expect(readOnlyReason({ ...theirs, may: { edit: false } }, { mayPlan: false })).toBe(
+      "can be read only: planners and category managers change scenarios",
+    );
   });
 });

@@ -8,8 +8,10 @@ import { TextLink } from "@/components/ui/text-link";
 import { useChainFormat } from "@/lib/format/chain-format";
 import { countOf } from "@/lib/format/number";
 import { paths } from "@/lib/paths";
+import { usePermission, useSession } from "@/lib/session";
 import type { SaveState } from "../hooks/use-autosave";
 import type { ScenarioEditing } from "../hooks/use-scenario-edit";
+import { readOnlyReason, whoseScenario } from "../view/whose-scenario";
 import { SaveLine } from "./save-line";
 import { ScenarioMenu } from "./scenario-menu";
 import { ScenarioName } from "./scenario-name";
@@ -26,7 +28,9 @@ type ScenarioHeadProps = {
 
 export const ScenarioHead = ({ scenario, product, editing, saving, level, levels, onLevel }: ScenarioHeadProps) => {
   const format = useChainFormat();
-  const { may, stores, weeks, state } = scenario;
+  const session = useSession();
+  const mayPlan = usePermission("scenarios:write");
+  const { may, stores, weeks } = scenario;
   return (
     <>
       <p className="mb-1 text-sm print:hidden">
@@ -39,7 +43,8 @@ export const ScenarioHead = ({ scenario, product, editing, saving, level, levels
           product?.name ?? scenario.product,
           stores.length === 1 ? `store ${stores[0]}` : countOf(stores.length, "store"),
           format.weekSpan(weeks.first, weeks.last),
-          may.edit ? <SaveLine state={saving.state} onRetry={saving.retry} /> : `${state}, can be read only`,
+          whoseScenario(scenario, { personId: session?.person.id }),
+          readOnlyReason(scenario, { mayPlan }) ?? <SaveLine state={saving.state} onRetry={saving.retry} />,
         ]}
         actions={
           <>

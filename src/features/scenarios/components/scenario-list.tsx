@@ -88,6 +88,7 @@ const columnsOf = (format: ChainFormat, names: ReadonlyMap<string, string>): Tab
     from: "md",
   },
   { id: "state", header: "State", value: (row) => row.state },
+  { id: "whose", header: "Begun by", value: (row) => row.createdBy.name, from: "md" },
   { id: "by", header: "Changed by", value: (row) => row.updatedBy.name, from: "lg" },
   { id: "at", header: "Changed", value: (row) => row.updatedAt, cell: (row) => format.moment(row.updatedAt), align: "right", from: "sm" },
 ];
