@@ -1,4 +1,4 @@
-import type { FittedModel, ModelInformation, ModelReport, TermReport } from "../types";
+import type { FittedModel, FittedTerm, ModelInformation, ModelReport, TermReport } from "../types";
 import { concurvity } from "./concurvity";
 import { contributionRange } from "./contribution-range";
 import { informationCriterion } from "./information-criterion";
@@ -8,7 +8,8 @@ import { posteriorOf } from "./posterior";
 import type { Posterior } from "./posterior";
 import { termPlaces } from "./term-places";
 import type { TermPlace } from "./term-places";
-import { testTerm } from "./term-tests";
+import { testTerm, testWithoutInformation } from "./term-tests";
+import type { TermTests } from "./term-tests";
 
 /**
  * What a fitted model amounts to, per term and in all. Reads the model only.
@@ -48,16 +49,16 @@ type Findings = {
   shares: readonly (number | null)[];
 };
 
-const ofLocalRegression = "local regression is tested by comparing models";
-
 function termReports(model: FittedModel, { information, places, posterior, shares }: Findings): TermReport[] {
   const setting = information === null || posterior === null
     ? null
     : { model, information, posterior, places, degrees: rankDegrees(posterior) };
+  const testsOf = (term: FittedTerm, at: number): TermTests => {
+    if (information === null) return testWithoutInformation(model, term);
+    return setting === null ? { test: null, curveTest: null, reason: "the penalised system is singular to rounding" } : testTerm(setting, places[at]);
+  };
   return model.terms.map((term, at): TermReport => {
-    const tests = setting === null
-      ? { test: null, curveTest: null, reason: information === null ? ofLocalRegression : "the penalised system is singular to rounding" }
-      : testTerm(setting, places[at]);
+    const tests = testsOf(term, at);
     return {
       id: term.id,
       kind: term.kind,

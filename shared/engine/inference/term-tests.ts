@@ -1,8 +1,8 @@
 import { choleskyInPlace, forwardSolve } from "../linalg/cholesky";
 import { familyRules } from "../family/family";
-import type { FittedModel, ModelInformation, TermTest } from "../types";
+import type { FittedModel, FittedTerm, ModelInformation, TermTest } from "../types";
 import { centredInformation } from "./centred-information";
-import { withoutSpan } from "./without-span";
+import { coefficientTest } from "./coefficient-test";
 import { block, groupedBlocks, sharedBlocks } from "./group-blocks";
 import type { CoordinateBlocks } from "./group-blocks";
 import type { Diagonals } from "./penalty-share";
@@ -13,6 +13,7 @@ import { simpleTail, truncatedTest } from "./truncated-test";
 import type { TruncatedTest } from "./truncated-test";
 import type { TermPlace } from "./term-places";
 import { varianceComponentTest } from "./variance-component-test";
+import { withoutSpan } from "./without-span";
 
 /** Tests of a term; `reason` says why there is no `test`. */
 export type TermTests = { test: TermTest | null; curveTest: TermTest | null; reason: string | null };
@@ -48,9 +49,8 @@ const tooMany = (count: number, most: number): TermTests =>
 export function testTerm(setting: TestSetting, place: TermPlace): TermTests {
   const { term, positions, unpenalised } = place;
   const none = (reason: string): TermTests => ({ test: null, curveTest: null, reason });
-  if (term.kind === "local-regression") return none("local regression is tested by comparing models");
   if (positions.length === 0) return none("other terms reproduce it, and it is left out");
-  if (isPerfectFit(setting.model)) return none("the model reproduces the response exactly, which leaves no noise to judge by");
+  if (isPerfectFit(setting.model)) return none(nothingToJudgeBy);
   if (place.isGrouped || unpenalised === 0) return { ...testRandom(setting, place), curveTest: null };
   if (positions.length > mostCoefficients) return tooMany(positions.length, mostCoefficients);
   if (unpenalised === positions.length) return settle(setting, wald(setting, place));
@@ -64,10 +64,26 @@ export function testTerm(setting: TestSetting, place: TermPlace): TermTests {
 export const residualDegrees = ({ spec, rowCount, edf }: FittedModel): number | null =>
   (familyRules(spec.family).scale === "known" ? null : Math.max(rowCount - edf, 1e-3));
 
-function settle({ model }: TestSetting, result: TruncatedTest | null): TermTests {
+/**
+ * Tests of a term in a model without information, as local regression leaves it: of lines and factors by their coefficients.
+ *
+ * @example testWithoutInformation(model, model.terms[1]).test?.pValue;
+ */
+export function testWithoutInformation(model: FittedModel, term: FittedTerm): TermTests {
+  const none = (reason: string): TermTests => ({ test: null, curveTest: null, reason });
+  if (term.kind === "local-regression") return none("local regression is tested by comparing models");
+  if (isPerfectFit(model)) return none(nothingToJudgeBy);
+  const result = coefficientTest(model, term, residualDegrees(model));
+  return result === null ? none("beside local regression only lines and factors are tested") : settle({ model }, result);
+}
+
+const nothingToJudgeBy = "the model reproduces the response exactly, which leaves no noise to judge by";
+
+function settle({ model }: Pick<TestSetting, "model">, result: TruncatedTest | null): TermTests {
   if (result === null) return { test: null, curveTest: null, reason: "the covariance of its coefficients is singular" };
   const residual = residualDegrees(model);
-  const isExact = familyRules(model.spec.family).fitting === "exact" && model.terms.every(({ penalties }) => penalties.length === 0);
+  const isExact = familyRules(model.spec.family).fitting === "exact" && model.information !== null
+    && model.terms.every(({ penalties }) => penalties.length === 0);
   return {
     test: {
       statistic: residual === null || result.rank === 0 ? result.statistic : result.statistic / result.rank,
