@@ -1,5 +1,6 @@
 import { backwardSolve, choleskyInPlace, forwardSolve, invertFactored, logDeterminant } from "../linalg/cholesky";
 import { rowProducts, subtractSquare } from "../linalg/dense-products";
+import { ownShareNeeded } from "../linalg/dropping-cholesky";
 import type { DroppedColumn } from "../linalg/dropping-cholesky";
 import { addPenalty, factorUnpenalised, traceOwn } from "./dense-system";
 import type { LikelihoodState } from "./likelihood-state";
@@ -25,6 +26,8 @@ export type ArrowSystem = {
   /** Diagonal of A, and mean diagonal of the groups' blocks per own coordinate. */
   diagonal: Float64Array;
   groupDiagonal: Float64Array;
+  /** Per unpenalised coordinate, what elimination must leave of its diagonal: less is rounding, as for columns that are dropped. */
+  leastPivots: Float64Array;
   total: number;
   yardstick: number;
   logDeterminant: number;
@@ -81,6 +84,7 @@ export function arrowSystem(
     form: "arrow", size, unpenalised, matrix, vector, diagonal, rowCount, dropped,
     groups: { ...groups, cross },
     groupDiagonal: meanDiagonal(groups),
+    leastPivots: Float64Array.from({ length: unpenalised }, (_, k) => ownShareNeeded * matrix[k * (size + 1)]),
     total: equations.total, yardstick: equations.total, logDeterminant: 0,
     unpenalisedKept: unpenalised - dropped.length,
   };
@@ -120,7 +124,7 @@ export function solveArrow(system: ArrowSystem, penalties: readonly Penalty[], s
   for (let j = 0; j < penalties.length; j++) {
     if (!penalties[j].grouped) addPenalty(shifted(penalties[j], unpenalised), multipliers[j], factor, size);
   }
-  if (!choleskyInPlace(factor, size)) return false;
+  if (!choleskyInPlace(factor, size, system.leastPivots)) return false;
   forwardSolve(factor, size, coefficients);
   let { explained } = eliminated;
   for (let k = 0; k < size; k++) explained += coefficients[k] * coefficients[k];

@@ -11,11 +11,12 @@ import { squareOfLower } from "./dense-products";
  * The upper triangle is neither read nor changed. O(size^3 / 6).
  *
  * @param matrix row-major, size x size; only its lower triangle is used. Changed in place.
+ * @param least pivots of the first rows, below which rounding is all there is: smaller ones are raised to them. Not changed.
  * @returns false if the matrix is not positive definite; the content is then of no use.
  * @example
  * const factor = Float64Array.of(4, 0, 2, 5); choleskyInPlace(factor, 2); // factor: 2, 0, 1, 2
  */
-export function choleskyInPlace(matrix: Float64Array, size: number): boolean {
+export function choleskyInPlace(matrix: Float64Array, size: number, least?: Float64Array): boolean {
   for (let row = 0; row < size; row++) {
     const rowStart = row * size;
     for (let column = 0; column < row; column++) {
@@ -26,6 +27,7 @@ export function choleskyInPlace(matrix: Float64Array, size: number): boolean {
     }
     let pivot = matrix[rowStart + row];
     for (let k = 0; k < row; k++) pivot -= matrix[rowStart + k] * matrix[rowStart + k];
+    if (least !== undefined && row < least.length && pivot < least[row]) pivot = least[row];
     if (!(pivot > 0)) return false;
     matrix[rowStart + row] = Math.sqrt(pivot);
   }

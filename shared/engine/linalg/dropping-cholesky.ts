@@ -2,7 +2,7 @@
 export type DroppedColumn = { column: number; dependsOn: number[] };
 
 /** Share of a column's sum of squares that must be its own; below it, cross-products cannot tell it from rounding. */
-const ownShareNeeded = 1e-11;
+export const ownShareNeeded = 1e-11;
 
 /**
  * Cholesky factorisation that leaves out each column the earlier ones reproduce, in order: of two columns that
