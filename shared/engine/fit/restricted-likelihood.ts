@@ -15,6 +15,8 @@ export type Scale = "unknown" | "known";
 
 /** Below this share of z'Wz a residual sum of squares is rounding: the fit is perfect. */
 export const perfectShare = 1e-13;
+/** Of a response without any variation z'Wz is zero too; the square of its reciprocal must stay finite. */
+const leastResidual = 1e-100;
 
 export type LikelihoodProblem = { system: PenalisedSystem; layout: PenaltyLayout; scale: Scale };
 
@@ -37,7 +39,7 @@ export function evaluateLikelihood(problem: LikelihoodProblem, logPenalties: Flo
     return;
   }
   penaltyDeterminant(layout, logPenalties, state.determinant);
-  state.penalisedResidual = Math.max(state.penalisedResidual, perfectShare * system.yardstick, Number.MIN_VALUE * 1e30);
+  state.penalisedResidual = Math.max(state.penalisedResidual, perfectShare * system.yardstick, leastResidual);
   const fit = scale === "known" ? state.penalisedResidual : (system.rowCount - system.unpenalisedKept) * Math.log(state.penalisedResidual);
   state.criterion = 0.5 * (fit + system.logDeterminant + state.logDeterminant - state.determinant.value);
 }
