@@ -61,26 +61,35 @@ function partsOf(grid: SplineGrid, rows: SplineRows, x: Float64Array): Float64Ar
     parts[k * size + 1] = (grid.lower + step * (k - 1) - mean) / spread;
     for (let j = 2; j < size; j++) parts[k * size + j] = Math.max(0, k - j + 1);
   }
+  const before = parts.slice();
   for (let j = 2; j < size; j++) {
     // The second pass takes off what rounding left.
     for (const part of [0, 1, 0, 1]) takeOff(parts, { size, square, part, column: j });
+    if (across(square, parts, { size, left: j, right: j }) > leastShare * across(square, before, { size, left: j, right: j })) continue;
+    // Of rows in two places level and slope are all there is: nothing but rounding would be left.
+    for (let k = 0; k < size; k++) parts[k * size + j] = before[k * size + j];
   }
   return parts;
 }
 
-/** Takes from a column its projection on `part` in the metric of the rows, B'B. */
+/** Share of a column's sum of squares that must be left of it. */
+const leastShare = 1e-10;
+
+/** Product of two columns over the rows, in the metric B'B. */
+function across(square: Float64Array, parts: Float64Array, of: { size: number; left: number; right: number }): number {
+  const { size, left, right } = of;
+  let sum = 0;
+  for (let i = 0; i < size; i++) {
+    for (let k = 0; k < size; k++) sum += parts[i * size + left] * square[i * size + k] * parts[k * size + right];
+  }
+  return sum;
+}
+
+/** Takes from a column its projection on `part`. */
 function takeOff(parts: Float64Array, at: { size: number; square: Float64Array; part: number; column: number }): void {
   const { size, square, part, column } = at;
-  let across = 0;
-  let own = 0;
-  for (let i = 0; i < size; i++) {
-    for (let k = 0; k < size; k++) {
-      const weighted = parts[i * size + part] * square[i * size + k];
-      across += weighted * parts[k * size + column];
-      own += weighted * parts[k * size + part];
-    }
-  }
-  for (let k = 0; k < size; k++) parts[k * size + column] -= (across / own) * parts[k * size + part];
+  const share = across(square, parts, { size, left: part, right: column }) / across(square, parts, { size, left: part, right: part });
+  for (let k = 0; k < size; k++) parts[k * size + column] -= share * parts[k * size + part];
 }
 
 function momentsOf(x: Float64Array): { mean: number; spread: number } {
