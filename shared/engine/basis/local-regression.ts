@@ -10,6 +10,8 @@ import { seenNumbers } from "./seen-values";
 const role = "local-regression";
 const mostRows = 2000;
 const defaultDegree = 1;
+/** Share of the column's range below which the values of a window are one value for rounding's purposes. */
+const leastReach = 1e-12;
 
 /**
  * A local polynomial (Cleveland 1979; Cleveland & Devlin 1988). Its coefficients are values at the distinct points, which
@@ -65,7 +67,8 @@ function neighboursOf(term: LocalRegressionTerm, rowCount: number, id: string): 
 }
 
 function checkReach(basis: LocalRegressionBasis, id: string): void {
-  const stuck = basis.at.find((value) => windowAt(basis, value).reach === 0);
+  const width = basis.at[basis.at.length - 1] - basis.at[0];
+  const stuck = basis.at.find((value) => !(windowAt(basis, value).reach > leastReach * width));
   if (stuck === undefined) return;
   const shown = basis.log ? Math.exp(stuck) : stuck;
   throw new EngineError(
