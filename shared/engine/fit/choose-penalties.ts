@@ -65,7 +65,7 @@ export function refinePenalties(search: PenaltySearch, plan: PenaltyPlan, option
   if (automatic.length === 0) return true;
   for (let step = 0; step < options.fellnerSchallSteps; step++) fellnerSchallStep(search, automatic);
   if (asked.length === 0) return newtonSteps(search, automatic, options);
-  for (let turn = 0; turn < 60; turn++) {
+  for (let turn = 0; turn < options.maxSteps; turn++) {
     const before = search.current.logPenalties.slice();
     solveDegrees(search, asked);
     const rested = newtonSteps(search, automatic, options);

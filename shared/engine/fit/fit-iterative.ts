@@ -128,6 +128,7 @@ function iterate(problem: Problem, start: Start): WorkingFit {
     };
     const accepted = acceptableStep(problem, {
       from: coordinates, to: shiftedCoordinates(solution, equations), predictor, theta, penalty: penaltyValue(solution.search),
+      share: shareOfStep(iterations),
     });
     const nextTheta = nextThetaOf(problem, accepted.predictor, theta);
     const rests = movement(accepted.predictor, predictor, problem.workingWeights) < movementTolerance
@@ -156,27 +157,36 @@ function workingEquations(problem: Problem, predictor: Float64Array, theta: numb
   return normalEquations(problem.design, { response: workingResponse, weights: workingWeights }, problem.scratch);
 }
 
-type Step = { from: Coordinates | null; to: Coordinates; predictor: Float64Array; theta: number; penalty: number };
+/** Few fits take as many working models; those that do swing between two, and come to rest by shorter steps. */
+const patience = 40;
+
+/** Share of the way to a working model's estimates that is gone: a half after `patience` working models, then a quarter. */
+const shareOfStep = (iterations: number): number => (iterations <= patience ? 1 : iterations <= 2 * patience ? 0.5 : 0.25);
+
+type Step = { from: Coordinates | null; to: Coordinates; predictor: Float64Array; theta: number; penalty: number; share: number };
 
 /** Halves a step that raises the penalised deviance beyond reason: far from the answer a full step can overshoot. */
 function acceptableStep(problem: Problem, step: Step): { predictor: Float64Array; coordinates: Coordinates } {
   const { design, map, rows } = problem;
   const predict = (at: Coordinates) => predictorOf(design, coefficientsAt(design, map, at), rows.offset);
-  let coordinates = step.to;
+  const { from, theta, share } = step;
+  let coordinates = from === null || share === 1 ? step.to : between(from, step.to, share);
   let predictor = predict(coordinates);
-  const { from, theta } = step;
   if (from === null) return { predictor, coordinates };
   const before = devianceOf(problem, step.predictor, theta) + step.penalty;
   for (let halving = 0; halving < 20; halving++) {
     const deviance = devianceOf(problem, predictor, theta);
     if (Number.isFinite(deviance) && deviance <= 2 * before + 1e-8) break;
-    coordinates = { shared: middle(coordinates.shared, from.shared), groups: coordinates.groups && from.groups && middle(coordinates.groups, from.groups) };
+    coordinates = between(from, coordinates, 0.5);
     predictor = predict(coordinates);
   }
   return { predictor, coordinates };
 }
 
-const middle = (left: Float64Array, right: Float64Array): Float64Array => left.map((value, k) => (value + right[k]) / 2);
+function between(from: Coordinates, to: Coordinates, share: number): Coordinates {
+  const part = (left: Float64Array, right: Float64Array) => left.map((value, k) => value + share * (right[k] - value));
+  return { shared: part(from.shared, to.shared), groups: to.groups && from.groups && part(from.groups, to.groups) };
+}
 
 /**
  * Weighted sum of unit deviances.
