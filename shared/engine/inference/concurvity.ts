@@ -32,8 +32,10 @@ export function concurvity(model: FittedModel, information: ModelInformation, pl
   const shares = places.map((place) => {
     const f = estimateOf(information, [place]);
     const { squares, gradient, intercept } = centredSquares(information, f);
-    if (!(squares > smallestShare * whole.squares)) return null;
+    // Taking the intercept off costs digits: what is left must be more than their rounding.
+    if (!(squares > smallestShare * Math.max(whole.squares, intercept))) return null;
     const others = places.filter((other) => other !== place && !isDeviationOf(other, place));
+    if (others.length === 0) return 0;
     const shareOf = (among: readonly TermPlace[]) =>
       clamp((projectedSquares(information, gradient, targetOf(among, ridges)) - intercept) / squares);
     const share = shareOf(others);
