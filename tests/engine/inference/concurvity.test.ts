@@ -73,6 +73,17 @@ describe("Concurvity", () => {
     expect(modelReport(model).terms.map(({ concurvity: share }) => share === null)).toEqual([false, true]);
   });
 
+  it("is no rounding's doing: 0 for a term alone, null for one that is nothing beside its own mean", () => {
+    const level = rows.a.map(() => 7);
+    for (const kind of ["linear", "smooth"] as const) {
+      const report = modelReport(fitModel({ response: "level", family: "gaussian", terms: [{ kind, column: "a" }] }, { ...rows, level }));
+      expect([0, null]).toContain(report.terms[0].concurvity);
+      expect(report.warnings.filter(({ code }) => code === "concurvity")).toEqual([]);
+    }
+    const promoted = modelReport(fitModel({ response: "y", family: "gaussian", terms: [{ kind: "factor", column: "promotion" }] }, rows));
+    expect(promoted.terms[0].concurvity).toBe(0);
+  });
+
   it("leaves a chain's own deviations by store out, and lets levels of stores reproduce at their penalty's price only", () => {
     expect(shareOf(exampleModel("a curve per store", { terms: exampleModel("a curve per store").spec.terms.slice(0, 2) }), "price")).toBe(0);
     const each = storeRows(3);
