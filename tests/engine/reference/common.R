@@ -56,3 +56,21 @@ orange_juice_rows <- function() {
   rows$dealFactor <- factor(rows$deal)
   rows
 }
+
+# One group's splines as level, slope and a wiggly part that no constant and no line over all rows shares, under unit ridges.
+curve_parts <- function(x, group, size = 6) {
+  margin <- 0.001 * diff(range(x))
+  step <- (diff(range(x)) + 2 * margin) / (size - 3)
+  knots <- min(x) - margin + step * ((0:(size + 3)) - 3)
+  rows <- splines::splineDesign(knots, x)
+  shared <- rbind(colSums(rows), colSums(x * rows))
+  free <- qr.Q(qr(t(shared)), complete = TRUE)[, -(1:2)]
+  root <- chol(crossprod(diff(diag(size), differences = 2) %*% free))
+  wiggles <- rows %*% free %*% solve(root)
+  member <- outer(group, sort(unique(group)), "==") * 1
+  list(
+    level = member, slope = member * (x - mean(x)) / sd(x),
+    wiggly = do.call(cbind, lapply(seq_len(ncol(wiggles)), function(k) member * wiggles[, k]))
+  )
+}
+ridges <- function(parts) lapply(parts, function(part) list(diag(ncol(part))))

@@ -4,7 +4,7 @@ import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { fileURLToPath } from "node:url";
 import type {
-  AllSeries, CountsAndShares, Groups, LocalModels, MadeWith, NaturalAndLocal, TestsOfTerms, VaryingCurves,
+  AllRows, AllSeries, CountsAndShares, Groups, LocalModels, MadeWith, NaturalAndLocal, TestsOfTerms, VaryingCurves,
 } from "./reference-shapes";
 
 export type FitSummary = {
@@ -71,7 +71,7 @@ export const committedReference = <Name extends keyof References>(name: Name): R
   JSON.parse(readFileSync(join(folder, `${name}.json`), "utf8")) as References[Name];
 
 /** References too big to be committed. */
-type FreshReferences = References & { "all-series": AllSeries };
+type FreshReferences = References & { "all-series": AllSeries; "all-rows": AllRows };
 
 /** Runs the reference script now. */
 export const freshReference = <Name extends keyof FreshReferences>(name: Name): FreshReferences[Name] =>

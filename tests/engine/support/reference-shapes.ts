@@ -144,3 +144,13 @@ export type SeriesOfAll = {
 };
 
 export type AllSeries = { madeWith: MadeWith; series: SeriesOfAll[] };
+
+type LargeFit = { linearPredictor: number[]; totalEdf: number; dispersion: number };
+
+export type AllRows = {
+  madeWith: MadeWith;
+  data: Record<"logmove" | "units" | "price" | "woy" | "deal" | "feat" | "store" | "brand", number[]>;
+  everything: LargeFit;
+  /** Of the rows of product 7. */
+  stores: LargeFit;
+};
