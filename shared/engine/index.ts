@@ -15,6 +15,8 @@ export { normalQuantile } from "./predict/level";
 export { predict } from "./predict/predict";
 export { residuals } from "./predict/residuals";
 export type { ResidualKind, ResidualOptions } from "./predict/residuals";
+export { influence } from "./predict/influence";
+export { simultaneousBand, simultaneousQuantile } from "./predict/simultaneous-band";
 export { supportCounts } from "./predict/support";
 export { termCurve } from "./predict/term-curve";
 export { termSurface } from "./predict/term-surface";
