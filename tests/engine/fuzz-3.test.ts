@@ -1,0 +1,3 @@
+import { expectFuzz } from "./fuzz/fuzz";
+
+expectFuzz(20240213);
