@@ -26,11 +26,14 @@ import type { WorkingRows } from "./working-rows";
 /** A fit with local regressions: the other terms' working model beside the curves, and the joint solution. */
 export type LocalFit = WorkingFit & { joint: JointSolution };
 
-/** At rest: change of a log penalty, missing degrees of freedom, theta as a share; the predictor's weighted mean square. */
+/**
+ * At rest: change of a log penalty, missing degrees of freedom, theta as a share, and the predictor's weighted mean square.
+ * Kernels move with the working weights, so that steps shrink by a share each and not, as Newton's, by squares.
+ */
 const penaltyTolerance = 1e-6;
 const degreesTolerance = 1e-7;
 const thetaTolerance = 1e-8;
-const movementTolerance = 1e-13;
+const movementTolerance = 1e-16;
 
 /** Turns of penalties and curves where the working model does not change. */
 const mostTurns = 50;
