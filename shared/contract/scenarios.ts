@@ -1,7 +1,7 @@
 import { z } from "zod";
 import { codeSchema, idParams, idSchema, levelSchema, pageOf, pageQuery, personReferenceSchema, timestampSchema, weekSchema } from "./common";
 import { defineEndpoint } from "./endpoint";
-import { salesWeekSchema } from "./drivers";
+import { modelStateSchema, salesWeekSchema } from "./drivers";
 
 export const promotionSchema = z.enum(["none", "feature", "display", "both"]);
 export const mechanicSchema = z.enum(["none", "multi_buy", "coupon", "other"]);
@@ -35,6 +35,8 @@ export const scenarioStateSchema = z.enum(["draft", "sent", "approved", "returne
 export const scenarioSchema = scenarioDraftSchema.extend({
   id: idSchema,
   modelId: idSchema,
+  /** The model it is predicted with, when it was fitted, and whether it is the product's model in use now. */
+  model: z.object({ id: idSchema, fittedAt: timestampSchema, state: modelStateSchema }),
   state: scenarioStateSchema,
   /** Goes up with every save; send it back as If-Match: "version". */
   version: z.number().int(),

@@ -221,13 +221,17 @@ describe("PUT /api/scenarios/:id", () => {
     const { id } = await create();
     const next = await fitProduct(test.services, { product: "JAM", personId: plannerId, putInUse: true });
     const kept = await planner.put(`/api/scenarios/${id}`).set("If-Match", '"1"').send(draft).expect(200);
-    expect(kept.body.modelId).toBe(modelId);
+    expect(kept.body).toMatchObject({ modelId, model: { id: modelId, state: "retired" } });
     const moved = await planner
       .put(`/api/scenarios/${id}`)
       .set("If-Match", '"2"')
       .send({ ...draft, modelId: next.modelId })
       .expect(200);
-    expect(moved.body.modelId).toBe(next.modelId);
+    const taken = { id: next.modelId, state: "in-use", fittedAt: expect.stringMatching(/^20/) };
+    expect(moved.body).toMatchObject({ modelId: next.modelId, model: taken });
+    const { body: listed } = await planner.get("/api/scenarios").expect(200);
+    expect(listed.items.find((item: { id: string }) => item.id === id)).toMatchObject({ model: taken });
+    expect((await planner.get(`/api/scenarios/${id}`).expect(200)).body.model).toEqual(moved.body.model);
     modelId = next.modelId;
   });
 
@@ -247,6 +251,9 @@ describe("PUT /api/scenarios/:id", () => {
     const wrong = { ...draft, name: "Wrong", weeks: { first: "2026-01-13", last: weeks.last } };
     await planner.put(`/api/scenarios/${id}`).set("If-Match", '"1"').send(wrong).expect(422);
     await request(test.app).put(`/api/scenarios/${id}`).set("If-Match", '"1"').send(draft).expect(401);
+    const { email } = await addPerson(test.services, { roles: ["data-admin"], email: "dora@chain.example" });
+    const dataAdmin = await signedIn(test.app, email);
+    await dataAdmin.put(`/api/scenarios/${id}`).set("If-Match", '"1"').send(draft).expect(403);
     await planner.put(`/api/scenarios/${unknown}`).set("If-Match", '"1"').send(draft).expect(404);
     expect((await planner.get(`/api/scenarios/${id}`)).body).toMatchObject({ name: "Winter jam", version: 1 });
   });

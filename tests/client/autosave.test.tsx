@@ -24,6 +24,7 @@ const scenario: Scenario = {
   cells: [],
   fixedCost: 0,
   modelId: "0b7e3a44-3b1b-4a8e-9a0a-000000000003",
+  model: { id: "0b7e3a44-3b1b-4a8e-9a0a-000000000003", fittedAt: "2026-05-30T08:00:00.000Z", state: "in-use" },
   state: "draft",
   version: 1,
   createdBy: person,

@@ -19,6 +19,7 @@ export function presentListedScenario(scenario: ScenarioRow, caller: Caller): Om
     weeks: { first: firstWeek, last: lastWeek },
     fixedCost,
     modelId: model.id,
+    model: { id: model.id, fittedAt: model.createdAt.toISOString(), state: model.state },
     state,
     version,
     createdBy: { id: createdBy.id, name: createdBy.name },

@@ -4,7 +4,7 @@ import { ScenarioEntity, type ScenarioRow } from "./scenarios.entities";
 
 /** A scenario with all that is shown of it. */
 export async function findScenario(em: EntityManager, id: string): Promise<ScenarioRow | null> {
-  return em.findOne(ScenarioEntity, { id }, { populate: ["product", "createdBy", "updatedBy", "cells"] });
+  return em.findOne(ScenarioEntity, { id }, { populate: ["product", "model", "createdBy", "updatedBy", "cells"] });
 }
 
 /** The cells of a scenario that `findScenario` read; lists leave them out. */
@@ -29,7 +29,7 @@ export async function findScenarios(
     ScenarioEntity,
     { ...(product !== undefined && { product: { code: product } }), ...older },
     {
-      populate: ["product", "createdBy", "updatedBy"],
+      populate: ["product", "model", "createdBy", "updatedBy"],
       orderBy: { updatedAt: "desc", id: "desc" },
       limit: limit + 1,
     },

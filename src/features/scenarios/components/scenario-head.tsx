@@ -1,3 +1,4 @@
+import { useQuery } from "@tanstack/react-query";
 import { Redo2, Undo2 } from "lucide-react";
 import type { Product } from "@shared/contract/catalogue";
 import type { Scenario } from "@shared/contract/scenarios";
@@ -11,7 +12,10 @@ import { paths } from "@/lib/paths";
 import { usePermission, useSession } from "@/lib/session";
 import type { SaveState } from "../hooks/use-autosave";
 import type { ScenarioEditing } from "../hooks/use-scenario-edit";
+import { modelInUseQuery } from "../api/model-in-use";
+import { modelOffer } from "../view/model-offer";
 import { readOnlyReason, whoseScenario } from "../view/whose-scenario";
+import { ModelNotice } from "./model-notice";
 import { SaveLine } from "./save-line";
 import { ScenarioMenu } from "./scenario-menu";
 import { ScenarioName } from "./scenario-name";
@@ -31,6 +35,10 @@ export const ScenarioHead = ({ scenario, product, editing, saving, level, levels
   const session = useSession();
   const mayPlan = usePermission("scenarios:write");
   const { may, stores, weeks } = scenario;
+  // Asked for only where the plan's own model is not the one in use: nothing changes by itself.
+  const isOther = scenario.model.state !== "in-use" || editing.edit.modelId !== scenario.modelId;
+  const inUse = useQuery({ ...modelInUseQuery(scenario.product), enabled: isOther });
+  const offer = isOther ? modelOffer(scenario, { modelId: editing.edit.modelId, inUse: inUse.data }) : null;
   return (
     <>
       <p className="mb-1 text-sm print:hidden">
@@ -43,6 +51,7 @@ export const ScenarioHead = ({ scenario, product, editing, saving, level, levels
           product?.name ?? scenario.product,
           stores.length === 1 ? `store ${stores[0]}` : countOf(stores.length, "store"),
           format.weekSpan(weeks.first, weeks.last),
+          scenario.modelId === editing.edit.modelId ? `model fitted ${format.moment(scenario.model.fittedAt)}` : "changing the model …",
           whoseScenario(scenario, { personId: session?.person.id }),
           readOnlyReason(scenario, { mayPlan }) ?? <SaveLine state={saving.state} onRetry={saving.retry} />,
         ]}
@@ -68,6 +77,9 @@ export const ScenarioHead = ({ scenario, product, editing, saving, level, levels
           </>
         }
       />
+      {offer && (
+        <ModelNotice offer={offer} mayEdit={may.edit} onTake={() => editing.change({ modelId: offer.id })} />
+      )}
     </>
   );
 };

@@ -1,4 +1,4 @@
-import { useQuery } from "@tanstack/react-query";
+import { keepPreviousData, useQuery } from "@tanstack/react-query";
 import type { Scenario } from "@shared/contract/scenarios";
 import { EmptyState } from "@/components/ui/empty-state";
 import { ErrorState } from "@/components/ui/error-state";
@@ -32,7 +32,8 @@ export const ScenarioPage = ({ scenarioId }: { scenarioId: string }) => {
 };
 
 const WithContext = ({ scenario }: { scenario: Scenario }) => {
-  const context = useQuery(planningContextQuery(scenario));
+  // Where the plan takes another model, what it had stays on the page until the other has come.
+  const context = useQuery({ ...planningContextQuery(scenario), placeholderData: keepPreviousData });
   if (context.isPending) return <LoadingState label="Reading models and past weeks" rows={8} />;
   if (context.isError) {
     return <ErrorState error={context.error} title="What the scenario is predicted from could not be read." onRetry={() => void context.refetch()} />;

@@ -91,7 +91,8 @@ export function useAutosave({ scenario, edit, enabled }: Asked) {
       saved.current = taken;
       savedAt.current = theirs.updatedAt;
       latest.current = taken;
+      queryClient.setQueryData(scenarioQuery(theirs.id).queryKey, theirs);
       setState({ kind: "saved", at: theirs.updatedAt });
-    }, []),
+    }, [queryClient]),
   };
 }
