@@ -33,7 +33,7 @@ type Problem = WorkingProblem & {
 export type FamilyRows = { family: IterativeRules; rows: IterativeRows };
 
 /** Weighted mean square by which the linear predictor may still move at convergence, and theta as a share of itself. */
-const movementTolerance = 1e-13;
+const movementTolerance = 1e-12;
 const thetaTolerance = 1e-8;
 
 /** Working models after which a constraint once held is not let go any more. */
