@@ -105,7 +105,7 @@ function solveStep(run: Run, step: Step): State {
   const nextTheta = thetaAt(run, predictor, theta);
   const penaltiesRest = !turns.isFree || (rested && turns.moved < penaltyTolerance && missing < degreesTolerance);
   const rests = run.family.fitting === "exact" || (iterations > 1
-    && movement(predictor, step.from, step.working.weights) < movementTolerance && Math.abs(nextTheta / theta - 1) < thetaTolerance);
+    && movement(predictor, step.from, step.working.plain) < movementTolerance && Math.abs(nextTheta / theta - 1) < thetaTolerance);
   return { equations, system, joint, predictor, theta: nextTheta, iterations, atRest: penaltiesRest && rests };
 }
 

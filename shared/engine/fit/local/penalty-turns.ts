@@ -83,22 +83,36 @@ export function settle(turns: PenaltyTurns, equations: NormalEquations): Working
 }
 
 /**
- * Moves the degrees of freedom that terms have by themselves towards those that give the joint fit what is asked for: the
- * local curves take part of what a term draws, so that its trace in the joint fit is smaller than alone.
+ * Sets the degrees of freedom that terms have by themselves to those that give the joint fit what is asked for: the local
+ * curves take part of what a term draws, so that its trace in the joint fit differs from the one alone.
  *
  * @param coordinateEdf trace of the joint fit per coordinate.
  * @returns by how much the joint fit still misses, at most.
  */
 export function adjustAsked(turns: PenaltyTurns, coordinateEdf: Float64Array): number {
-  const { plan: { asked }, problem: { design } } = turns;
+  const { plan: { asked }, problem: { design }, solution, turn } = turns;
+  // The first turn is at the defaults.
+  if (solution === null || turn === 1) return Infinity;
   let worst = 0;
   asked.forEach((term, at) => {
     const part = design.parts.find(({ id }) => id === term.id);
     if (part === undefined) return;
-    const joint = part.positions.reduce((sum, position) => sum + coordinateEdf[position], 0);
-    const miss = turns.wanted[at] - joint;
-    worst = Math.max(worst, Math.abs(miss));
-    term.asked = Math.min(term.asked + miss, (term.asked + part.positions.length) / 2);
+    const fixed = sumOver(part.positions, coordinateEdf, (position) => position < design.unpenalised);
+    const joint = sumOver(part.positions, coordinateEdf, (position) => position >= design.unpenalised);
+    const wanted = turns.wanted[at] - fixed;
+    worst = Math.max(worst, Math.abs(wanted - joint));
+    const { penalised } = part.coordinates;
+    const place = logit((term.asked - fixed) / penalised) + logit(wanted / penalised) - logit(joint / penalised);
+    term.asked = fixed + penalised / (1 + Math.exp(-place));
   });
   return worst;
+}
+
+const sumOver = (positions: Int32Array, values: Float64Array, isCounted: (position: number) => boolean): number =>
+  positions.reduce((sum, position) => (isCounted(position) ? sum + values[position] : sum), 0);
+
+/** A share of a penalty's coordinates, on a scale on which neither end can be passed. */
+function logit(share: number): number {
+  const inside = Math.min(Math.max(share, 1e-12), 1 - 1e-12);
+  return Math.log(inside / (1 - inside));
 }
