@@ -176,11 +176,20 @@ function acceptableStep(problem: Problem, step: Step): { predictor: Float64Array
   const before = devianceOf(problem, step.predictor, theta) + step.penalty;
   for (let halving = 0; halving < 20; halving++) {
     const deviance = devianceOf(problem, predictor, theta);
-    if (Number.isFinite(deviance) && deviance <= 2 * before + 1e-8) break;
+    if (Number.isFinite(deviance) && deviance <= 2 * before + 1e-8 && farthest(predictor, step.predictor) <= longestMove) break;
     coordinates = between(from, coordinates, 0.5);
     predictor = predict(coordinates);
   }
   return { predictor, coordinates };
+}
+
+/** Factor exp(6) of a mean in one step: a deviance that rises with its logarithm only would not stop it. */
+const longestMove = 6;
+
+function farthest(next: Float64Array, before: Float64Array): number {
+  let most = 0;
+  for (let row = 0; row < next.length; row++) most = Math.max(most, Math.abs(next[row] - before[row]));
+  return most;
 }
 
 function between(from: Coordinates, to: Coordinates, share: number): Coordinates {
