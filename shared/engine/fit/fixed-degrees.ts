@@ -5,6 +5,8 @@ import { derivatives, evaluateAt } from "./penalty-search";
 /** Log units beyond the default in which a penalty for given degrees of freedom is looked for. */
 const reach = 30;
 const tolerance = 1e-10;
+/** A sweep that leaves more than this share of the worst excess shows that rounding is all that is left. */
+const stalled = 0.9;
 
 /** Penalties of one term that is asked for degrees of freedom, and how many of them its unpenalised coordinates take. */
 export type AskedTerm = { id: string; penalties: number[]; asked: number; firstUnpenalised: number; unpenalised: number };
@@ -31,6 +33,7 @@ const edfOf = (search: PenaltySearch, { penalties }: AskedTerm): number => {
  * @example solveDegrees(search, plan.asked);
  */
 export function solveDegrees(search: PenaltySearch, asked: readonly AskedTerm[]): void {
+  let before = Infinity;
   for (let sweep = 0; sweep < 50; sweep++) {
     let worst = 0;
     for (const term of asked) {
@@ -39,7 +42,8 @@ export function solveDegrees(search: PenaltySearch, asked: readonly AskedTerm[])
       worst = Math.max(worst, excess);
       if (excess > tolerance) solveOne(search, term, wanted);
     }
-    if (worst <= tolerance) return;
+    if (worst <= tolerance || (sweep > (asked.length === 1 ? 1 : 5) && worst > stalled * before)) return;
+    before = worst;
   }
 }
 
