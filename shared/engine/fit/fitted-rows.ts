@@ -37,11 +37,17 @@ export function fittedRows(spec: ModelSpec, data: ModelData): FittedRows {
   return kept === all ? rows : keepWeighted(rows, columns.map(([name]) => name));
 }
 
+/** Reciprocals of products of three must stay finite. */
+const smallestWeight = 1e-50;
+
 function priorWeights(data: ModelData, name: string): Float64Array {
   const weights = numberColumn(data, name, "weights");
   for (let row = 0; row < weights.length; row++) {
     if (weights[row] < 0) {
       throw new EngineError("weights-invalid", `Column "${name}" (weights) must not be negative; row ${row + 1} is ${weights[row]}.`);
+    }
+    if (weights[row] > 0 && weights[row] < smallestWeight) {
+      throw new EngineError("weights-invalid", `Column "${name}" (weights) must be 0 or at least ${smallestWeight}; row ${row + 1} is ${weights[row]}.`);
     }
   }
   return weights;
