@@ -91,6 +91,10 @@ const fitCases: Case[] = [
     message: 'Column "weight" (weights) must not be negative; row 6 is -1.',
   },
   {
+    rule: "weights all but zero", spec: only(price, { weights: "weight" }), data: with_({ weight: at(rows.price, 5, 1e-60) }), code: "weights-invalid",
+    message: 'Column "weight" (weights) must be 0 or at least 1e-50; row 6 is 1e-60.',
+  },
+  {
     rule: "weights of nothing but zero", spec: only(price, { weights: "weight" }), data: with_({ weight: rows.price.map(() => 0) }), code: "too-few-rows",
     message: "The data has 0 rows of weight above 0; a fit needs at least 2.",
   },
