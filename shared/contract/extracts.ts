@@ -73,6 +73,23 @@ export const extractChangesSchema = z.object({
 });
 export type ExtractChanges = z.infer<typeof extractChangesSchema>;
 
+/** Which weeks of sales are loaded and which are not, by the chain's weeks and today's date where the chain is. */
+export const loadedWeeksSchema = z.object({
+  first: weekSchema.nullable(),
+  last: weekSchema.nullable(),
+  /** Weeks between the first and the last of which nothing is loaded, oldest first; of the newest twenty years. */
+  missing: z.array(weekSchema),
+  /** The week after the last; null where nothing is loaded. */
+  expected: weekSchema.nullable(),
+  /** How many weeks after the last have ended; the one expected is the first of them. */
+  overdue: z.number().int(),
+});
+export type LoadedWeeks = z.infer<typeof loadedWeeksSchema>;
+
+export const getLoadedWeeks = defineEndpoint({
+  method: "GET", path: "/api/loaded-weeks", summary: "Which weeks of sales are loaded, missing and expected next", permission: "read",
+  response: loadedWeeksSchema,
+});
 export const listExtracts = defineEndpoint({
   method: "GET", path: "/api/extracts", summary: "Extracts, newest first", permission: "read", query: pageQuery, response: pageOf(extractSchema),
 });

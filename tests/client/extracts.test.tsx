@@ -3,6 +3,8 @@ import userEvent from "@testing-library/user-event";
 import { afterEach, describe, expect, it, vi } from "vitest";
 import type { Extract } from "@shared/contract/extracts";
 import { IssueList } from "@/features/extracts/components/issue-list";
+import { loadedWeeksLine } from "@/features/extracts/view/loaded-weeks";
+import { createChainFormat, neutralSettings } from "@/lib/format/chain-format";
 import { answerRequests } from "./support/answer";
 import { renderInPage } from "./support/render";
 
@@ -46,5 +48,25 @@ describe("what is wrong with an extract", () => {
     renderInPage(<IssueList extract={extract} rule="unknown-store" onRule={vi.fn()} />);
     expect(await screen.findByRole("button", { name: "Save as CSV" })).toBeTruthy();
     expect(screen.queryByText(/There is no rule/)).toBeNull();
+  });
+});
+
+describe("the line over the list of extracts", () => {
+  const format = createChainFormat(neutralSettings);
+  const weeks = { first: "2026-01-05", last: "2026-06-01", missing: [], expected: "2026-06-08", overdue: 0 };
+
+  it("says which week is expected, and whether it has ended", () => {
+    const loaded = "Sales are loaded to week 23, 2026. Expected next: week 24, 2026 (8–14 June 2026)";
+    expect(loadedWeeksLine(weeks, format)).toBe(`${loaded}, which has not ended yet.`);
+    expect(loadedWeeksLine({ ...weeks, overdue: 1 }, format)).toBe(`${loaded}, which has ended.`);
+    expect(loadedWeeksLine({ ...weeks, overdue: 3 }, format)).toBe(`${loaded}; 3 weeks have ended that are not loaded.`);
+    expect(loadedWeeksLine({ ...weeks, first: null, last: null, expected: null }, format)).toBeNull();
+  });
+
+  it("names the weeks missing in between, those that follow each other together, and counts what is beyond three", () => {
+    const missing = ["2026-01-12", "2026-01-19", "2026-02-09", "2026-03-09", "2026-04-06", "2026-04-13"];
+    const line = loadedWeeksLine({ ...weeks, missing }, format);
+    expect(line).toContain("Missing in between: weeks 3–4, 2026; week 7, 2026; week 11, 2026; and 2 more weeks.");
+    expect(loadedWeeksLine({ ...weeks, missing: missing.slice(0, 2) }, format)).toMatch(/Missing in between: weeks 3–4, 2026\.$/);
   });
 });

@@ -63,3 +63,12 @@ export async function changesOf(em: EntityManager, extract: Extract): Promise<Ex
 export async function removeIssues(em: EntityManager, extractId: string): Promise<void> {
   await em.nativeDelete(ExtractIssueEntity, { extract: extractId });
 }
+
+/** The weeks of which some extract that is loaded holds sales; told by the extracts, which are few, not by their rows. */
+export async function findLoadedWeeks(em: EntityManager): Promise<string[]> {
+  const rows = await em.execute<{ week: string }[]>(
+    `select distinct w->>'week' as week from extracts e, jsonb_array_elements(e.changes->'weeks') w
+     where e.kind = 'sales' and e.state = 'loaded'`,
+  );
+  return rows.map(({ week }) => week);
+}

@@ -4,7 +4,7 @@ import * as contract from "@shared/contract/extracts";
 import { route, type Route, type SignedInCall } from "../../http/route";
 import type { Endpoint } from "@shared/contract/endpoint";
 import { presentExtract, presentIssue } from "./extracts.presenter";
-import { getChanges, getExtract, listExtracts, listIssues, openOriginal } from "./extracts.service";
+import { getChanges, getExtract, listExtracts, listIssues, openOriginal, readLoadedWeeks } from "./extracts.service";
 import type { Actor } from "./load/load-extract.service";
 import { requestCheck, requestLoad, requestWithdrawal } from "./requests.service";
 import { registerExtract } from "./upload/receive-extract.service";
@@ -40,6 +40,8 @@ const readIssues = route(contract.listExtractIssues, async ({ em, params, query 
 
 const readChanges = route(contract.getExtractChanges, ({ em, params }) => getChanges(em, params.id));
 
+const readWeeks = route(contract.getLoadedWeeks, ({ em, now }) => readLoadedWeeks(em, now));
+
 const readOriginal = route(contract.getExtractOriginal, async (call) => {
   const { em, services, params, response } = call;
   const { extract, body } = await openOriginal(em, services, params.id);
@@ -64,4 +66,4 @@ const load = route(contract.loadExtract, async (call) =>
 const withdraw = route(contract.withdrawExtract, async (call) =>
   accepted(call.response, await requestWithdrawal(call.em, { services: call.services, extractId: call.params.id, actor: actorOf(call) })));
 
-export const extractsRoutes: readonly Route[] = [list, upload, read, readIssues, readChanges, readOriginal, check, load, withdraw];
+export const extractsRoutes: readonly Route[] = [list, upload, readWeeks, read, readIssues, readChanges, readOriginal, check, load, withdraw];

@@ -1,11 +1,14 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
 import type { Readable } from "node:stream";
 import { z } from "zod";
-import type { ExtractChanges, IssueCount } from "@shared/contract/extracts";
+import type { WeekStart } from "@shared/calendar";
+import type { ExtractChanges, IssueCount, LoadedWeeks } from "@shared/contract/extracts";
 import { conflict, notFound, ProblemError } from "../../errors";
 import type { Services } from "../../services";
+import { dayIn, getChain } from "../chain";
 import type { Extract, ExtractIssue } from "./extracts.entities";
-import { changesOf, findExtract, findExtracts, findIssues, issueCountsOf } from "./extracts.repository";
+import { changesOf, findExtract, findExtracts, findIssues, findLoadedWeeks, issueCountsOf } from "./extracts.repository";
+import { standingOf } from "./loaded-weeks";
 import { readCursor, writeCursor } from "./page-cursor";
 
 export type Page<Item> = { items: Item[]; nextCursor: string | null };
@@ -52,6 +55,12 @@ export async function getChanges(em: EntityManager, extractId: string): Promise<
   const changes = await changesOf(em, extract);
   if (changes) return changes;
   throw conflict("not-checked", "What loading would change is known once the file is checked and has rows that can be used.");
+}
+
+/** Which weeks of sales are loaded, missing and expected next, at a moment. */
+export async function readLoadedWeeks(em: EntityManager, now: Date): Promise<LoadedWeeks> {
+  const { timeZone, weekStart } = await getChain(em);
+  return standingOf(await findLoadedWeeks(em), { today: dayIn(timeZone, now), weekStart: weekStart as WeekStart });
 }
 
 /** The file as it arrived. @throws ProblemError 404, or 503 where the file store does not give it out. */

@@ -8,7 +8,9 @@ import { PageHeader } from "@/components/ui/page-header";
 import { Sheet } from "@/components/ui/sheet";
 import { LoadingState } from "@/components/ui/skeleton";
 import { extractsQuery } from "@/features/extracts/api/list-extracts";
+import { loadedWeeksQuery } from "@/features/extracts/api/loaded-weeks";
 import { ExtractList } from "@/features/extracts/components/extract-list";
+import { LoadedWeeksLine } from "@/features/extracts/components/loaded-weeks-line";
 import { UploadPanel } from "@/features/extracts/components/upload-panel";
 import { useChain } from "@/lib/chain";
 import { paths } from "@/lib/paths";
@@ -16,6 +18,7 @@ import { usePermission } from "@/lib/session";
 
 export const loaderFor = (queryClient: QueryClient) => () => {
   void queryClient.prefetchInfiniteQuery(extractsQuery());
+  void queryClient.prefetchQuery(loadedWeeksQuery());
   return null;
 };
 
@@ -49,7 +52,12 @@ export const ExtractsRoute = () => {
             />
           )}
           {query.data && extracts.length === 0 && <NoExtracts mayUpload={mayUpload} />}
-          {extracts.length > 0 && <ExtractList extracts={extracts} />}
+          {extracts.length > 0 && (
+            <>
+              <LoadedWeeksLine />
+              <ExtractList extracts={extracts} />
+            </>
+          )}
           {query.hasNextPage && (
             <div className="border-t border-hairline p-3 text-center">
               <Button size="small" onClick={() => void query.fetchNextPage()} busy={query.isFetchingNextPage}>

@@ -27,6 +27,7 @@ export const useRefreshExtract = (id: string) => {
         extractIssuesKey(id),
         extractChangesKey(id),
         ["extracts"],
+        ["loaded-weeks"],
         ["products"],
         ["stores"],
       ].map((queryKey) => queryClient.invalidateQueries({ queryKey })),
