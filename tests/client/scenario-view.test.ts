@@ -126,10 +126,9 @@ describe("whose scenario it is", () => {
   const mine = { createdBy: { id: "me", name: "Ada Kale" }, state: "draft" as const, may: { edit: true } };
   const theirs = { ...mine, createdBy: { id: "other", name: "Ivo Rusk" } };
 
-  it("is said with what the reader may do", () => {
+  it("is said as yours, or by who began it", () => {
     expect(whoseScenario(mine, { personId: "me" })).toBe("yours");
-    expect(whoseScenario(theirs, { personId: "me" })).toBe("begun by Ivo Rusk, you may change it too");
-    expect(whoseScenario({ ...theirs, may: { edit: false } }, { personId: "me" })).toBe("begun by Ivo Rusk");
+    expect(whoseScenario(theirs, { personId: "me" })).toBe("begun by Ivo Rusk");
   });
 
   it("gives the reason where it can only be read", () => {

@@ -28,18 +28,26 @@ export type WeekBarsProps = {
 
 const margin = { top: 12, right: 4, bottom: 28, left: 50 };
 
-const spanYears = (weeks: readonly { year: number }[]) => new Set(weeks.map(({ year }) => year)).size > 1;
-
 /** Units week by week: what was, in grey; what the plan gives, each with its interval and the base across it. */
 export const WeekBars = (props: WeekBarsProps) => {
   const { title, heading, past, plan, selected, onSelect, format, legend, height = 216 } = props;
   const [plot, width] = useElementWidth<HTMLDivElement>(900);
-  const foot = height - (spanYears([...past, ...plan]) ? yearsHeight : 0);
+  const { layout, years } = useMemo(() => {
+    const at = (foot: number) =>
+      weekLayout({
+        past,
+        plan,
+        left: margin.left,
+        right: width - margin.right,
+        range: [foot - margin.bottom, margin.top],
+      });
+    const whole = at(height);
+    // Which weeks there is room for, and so their years, does not depend on the height.
+    const spans = yearSpans([...whole.past, ...whole.plan]);
+    return { layout: spans.length === 0 ? whole : at(height - yearsHeight), years: spans };
+  }, [past, plan, width, height]);
+  const foot = height - (years.length === 0 ? 0 : yearsHeight);
   const axis = foot - margin.bottom;
-  const layout = useMemo(
-    () => weekLayout({ past, plan, left: margin.left, right: width - margin.right, range: [axis, margin.top] }),
-    [past, plan, width, axis],
-  );
   const { y, dividerX } = layout;
   const hasGap = layout.past.some((bar) => past[bar.index].units === null);
   const ticks = roundTicks(y.domain[0], y.domain[1], 5).map((value) => ({ value, label: format(value) }));
@@ -69,7 +77,7 @@ export const WeekBars = (props: WeekBarsProps) => {
             <line className="chart-reference" x1={dividerX} x2={dividerX} y1={margin.top} y2={axis} />
           )}
           <PlanBars weeks={plan} bars={layout.plan} y={y} foot={foot} selected={selected} />
-          <WeekYears spans={yearSpans([...layout.past, ...layout.plan])} foot={height} />
+          <WeekYears spans={years} foot={height} />
         </svg>
       </div>
     </ChartFrame>

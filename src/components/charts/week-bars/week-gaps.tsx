@@ -16,7 +16,8 @@ export const WeekGaps = ({ weeks, bars, top, bottom }: WeekGapsProps) => {
             y={top}
             width={place}
             height={bottom - top}
-            fill="var(--grid)"
+            fill="var(--muted)"
+            fillOpacity="0.22"
           />
         ) : null,
       )}
@@ -27,7 +28,7 @@ export const WeekGaps = ({ weeks, bars, top, bottom }: WeekGapsProps) => {
 /** Says what the bands mean, in words that hold for one as for many. */
 export const GapNote = () => (
   <span className="flex items-center gap-2 text-sm text-muted">
-    <span aria-hidden="true" className="inline-block h-4 w-3 bg-grid" />
+    <span aria-hidden="true" className="inline-block h-4 w-3 bg-muted/22" />
     nothing recorded in that week
   </span>
 );

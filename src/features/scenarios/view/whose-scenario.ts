@@ -2,11 +2,9 @@ import type { Scenario } from "@shared/contract/scenarios";
 
 type Reader = { personId: string | undefined; mayPlan: boolean };
 
-/** Whose scenario it is: "yours", or who began it; everyone who plans may work on it. */
-export const whoseScenario = ({ createdBy, may }: Pick<Scenario, "createdBy" | "may">, { personId }: Pick<Reader, "personId">): string => {
-  if (createdBy.id === personId) return "yours";
-  return may.edit ? `begun by ${createdBy.name}, you may change it too` : `begun by ${createdBy.name}`;
-};
+/** Whose scenario it is: "yours", or who began it. Everyone who plans may work on it. */
+export const whoseScenario = ({ createdBy }: Pick<Scenario, "createdBy">, { personId }: Pick<Reader, "personId">): string =>
+  createdBy.id === personId ? "yours" : `begun by ${createdBy.name}`;
 
 /** Why it can only be read; null where it can be changed. */
 export const readOnlyReason = ({ state, may }: Pick<Scenario, "state" | "may">, { mayPlan }: Pick<Reader, "mayPlan">): string | null => {
