@@ -27,14 +27,30 @@ const edfOf = (search: PenaltySearch, { penalties }: AskedTerm): number => {
 /**
  * Moves the penalty of each term of given degrees of freedom to where its trace in the joint fit equals the number asked
  * for: Newton within a bracket, term by term until all hold; a term's several penalties move together. The trace falls as
- * the penalty rises (Hastie & Tibshirani 1990, section 5.4.5).
+ * the penalty rises (Hastie & Tibshirani 1990, section 5.4.5). A curve that its shape holds is asked by its trace without the
+ * shape: on the face it touches it may not have as many, and spends what it can.
  *
  * @throws EngineError smoothness-out-of-range where the data's values allow fewer than asked.
  * @example solveDegrees(search, plan.asked);
  */
 export function solveDegrees(search: PenaltySearch, asked: readonly AskedTerm[]): void {
+  const { problem } = search;
+  const { held } = problem;
+  const isHeld = ({ penalties }: AskedTerm) => held !== undefined && penalties.some((penalty) => held.perPenalty[penalty] > 0);
+  const shaped = asked.filter(isHeld);
+  if (held !== undefined && shaped.length > 0) {
+    search.problem = held.unshaped;
+    evaluateAt(search, search.current.logPenalties.slice());
+    sweep(search, shaped);
+    search.problem = problem;
+    evaluateAt(search, search.current.logPenalties.slice());
+  }
+  sweep(search, asked.filter((term) => !isHeld(term)));
+}
+
+function sweep(search: PenaltySearch, asked: readonly AskedTerm[]): void {
   let before = Infinity;
-  for (let sweep = 0; sweep < 50; sweep++) {
+  for (let turn = 0; turn < 50; turn++) {
     let worst = 0;
     for (const term of asked) {
       const wanted = wantedEdf(search, term);
@@ -42,7 +58,7 @@ export function solveDegrees(search: PenaltySearch, asked: readonly AskedTerm[])
       worst = Math.max(worst, excess);
       if (excess > tolerance) solveOne(search, term, wanted);
     }
-    if (worst <= tolerance || (sweep > (asked.length === 1 ? 1 : 5) && worst > stalled * before)) return;
+    if (worst <= tolerance || (turn > (asked.length === 1 ? 1 : 5) && worst > stalled * before)) return;
     before = worst;
   }
 }

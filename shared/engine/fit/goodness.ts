@@ -9,7 +9,7 @@ export type Goodness = { deviance: number; nullDeviance: number; dispersion: num
  * Deviance, null deviance (intercept and offset only), log-likelihood, and dispersion: Pearson's statistic over n - edf, or
  * 1 where the scale is known.
  *
- * @param edf total effective degrees of freedom.
+ * @param edf total effective degrees of freedom (with local curves, what they take of the residuals).
  * @example goodness(family, rows, fit, 5.2).dispersion;
  */
 export function goodness(family: FamilyRules, rows: FittedRows, fit: WorkingFit, edf: number): Goodness {

@@ -18,7 +18,13 @@ export const perfectShare = 1e-13;
 /** Of a response without any variation z'Wz is zero too; the square of its reciprocal must stay finite. */
 const leastResidual = 1e-100;
 
-export type LikelihoodProblem = { system: PenalisedSystem; layout: PenaltyLayout; scale: Scale };
+export type LikelihoodProblem = {
+  system: PenalisedSystem;
+  layout: PenaltyLayout;
+  scale: Scale;
+  /** Where shapes hold some curves: how many constraints per penalty are held, and the problem without them. */
+  held?: { perPenalty: Int32Array; unshaped: LikelihoodProblem };
+};
 
 /**
  * Evaluates estimates and the restricted likelihood criterion at given log penalties; the derivatives follow by `differentiate`.

@@ -130,6 +130,7 @@ function holdCurves({ problem, equations, system, search, constraints }: Shaped,
   const curves = numbers.reduce((sum, count) => sum + (count > 0 ? 1 : 0), 0);
   search.problem = {
     scale,
+    held: { perPenalty: numbers, unshaped: { system, layout, scale } },
     system: { ...onFace, unpenalisedKept: onFace.unpenalisedKept - curves },
     layout: { ...layout, alone: layout.alone.map((rank, j) => (numbers[j] > 0 ? rank + 1 - numbers[j] : rank)) },
   };

@@ -68,16 +68,19 @@ describe("A model with local regressions is where plain backfitting rests", () =
   });
 
   it.each(cases)("in its degrees of freedom, by the operators' traces, to 1e-8: $name", (one) => {
-    const { fit } = plainOf(one);
+    const { own, fit } = plainOf(one);
     const model = fitted(one);
-    expect(Math.abs(model.edf - trace(plainOperator(count, (response) => fit(response).predictor)))).toBeLessThan(1e-8);
+    const operator = plainOperator(count, (response) => fit(response).predictor);
+    expect(Math.abs(model.edf - trace(operator))).toBeLessThan(1e-8);
     ["x", "z"].forEach((id, at) => {
       const term = model.terms.find((candidate) => candidate.id === id);
       if (term === undefined) return;
       const own = trace(plainOperator(count, (response) => fit(response).curves[at]));
       expect(Math.abs(term.edf - own)).toBeLessThan(1e-8);
     });
-    expect(model.dispersion).toBeCloseTo(model.deviance / (count - model.edf), 12);
+    // tr(LL') in the rows' weights (Cleveland & Devlin 1988).
+    const squares = operator.reduce((total, row, at) => total + row.reduce((sum, value, k) => sum + (own[at] * value ** 2) / own[k], 0), 0);
+    expect(model.dispersion / (model.deviance / (count - 2 * model.edf + squares))).toBeCloseTo(1, 9);
   });
 });
 

@@ -24,7 +24,7 @@ import { createWorkingRows, writeWorkingRows } from "./working-rows";
 import type { WorkingRows } from "./working-rows";
 
 /** A fit with local regressions: the other terms' working model beside the curves, and the joint solution. */
-export type LocalFit = WorkingFit & { joint: JointSolution };
+export type LocalFit = WorkingFit & { joint: JointSolution; /** Working weights of the rows at rest. */ workingWeights: Float64Array };
 
 /**
  * At rest: change of a log penalty, missing degrees of freedom, theta as a share, and the predictor's weighted mean square.
@@ -58,7 +58,7 @@ export function fitLocal(
   const working = createWorkingRows(family, rows);
   let state = firstStep(run, working);
   while (!state.atRest && state.iterations < limit) state = nextStep(run, working, state);
-  return finish(run, state);
+  return finish(run, state, working.weights);
 }
 
 type Run = {
@@ -139,7 +139,7 @@ function thetaAt({ family, rows }: Run, predictor: Float64Array, theta: number):
   return family.estimateTheta({ response: rows.response, mean, weights: rows.weights, start: theta });
 }
 
-function finish(run: Run, state: State): LocalFit {
+function finish(run: Run, state: State, workingWeights: Float64Array): LocalFit {
   const { layout, turns, family, rows } = run;
   const { equations, joint, iterations, theta, atRest } = state;
   const others = lessCurves(layout, equations, joint.curves);
@@ -148,7 +148,7 @@ function finish(run: Run, state: State): LocalFit {
   const solution = { ...settled, system: { ...settled.system, yardstick: equations.total } };
   const linearPredictor = predictorAt(run, joint, equations.shift);
   return {
-    solution, equations: others, joint, linearPredictor, iterations,
+    solution, equations: others, joint, linearPredictor, iterations, workingWeights,
     coordinates: shiftedCoordinates(solution, others),
     theta: family.fitting === "exact" || family.estimateTheta === null ? null : theta,
     criterion: family.fitting === "exact" ? solution.search.current.criterion : criterionAtRest({ family, rows }, { predictor: linearPredictor, solution, theta }),

@@ -7,6 +7,7 @@ import { goodness } from "../goodness";
 import { copySpec, fittedMeans, hasFractions, namesOf } from "../model-parts";
 import type { ModelParts } from "../model-parts";
 import { centredPooled } from "./centred-pooled";
+import { weightedVariances } from "./weighted-variances";
 import { fitLocal } from "./fit-local";
 import type { LocalFit } from "./fit-local";
 import { jointPosterior } from "./joint-posterior";
@@ -15,7 +16,9 @@ import type { JointPosterior } from "./joint-posterior";
 /**
  * Fits a model with local regressions as plain data. A local regression's coefficients are its pooled partial residuals at
  * the distinct points, less the curve's mean over the rows; its basis keeps the working weights, so that the rows of any
- * data times the coefficients give the curve. There is no X'WX in coordinates, so `information` is null.
+ * data times the coefficients give the curve. There is no X'WX in coordinates, so `information` is null. A local curve's
+ * operator L is no projection: the dispersion divides by n - tr(2L - LL'), whose expectation is right (Hastie & Tibshirani
+ * 1990, section 3.5; Cleveland & Devlin 1988), and which is n - edf where nothing is local.
  *
  * @throws EngineError as `fitLocal`.
  * @example fitLocalModel({ spec, data, family, rows, design, map }, 200).terms[0].edf;
@@ -26,13 +29,14 @@ export function fitLocalModel(given: Omit<ModelParts, "fit">, maxIterations: num
   const parts: ModelParts<LocalFit> = { ...given, fit };
   const posterior = jointPosterior(fit.joint);
   const edf = [...posterior.coordinateEdf, ...posterior.localEdf].reduce((sum, value) => sum + value, 0);
-  const measures = goodness(family, rows, fit, edf);
-  const { dispersion } = measures;
   const { unknowns, covariance } = centredPooled(fit.joint, posterior.covariance);
   unknowns[0] += fit.equations.shift;
   const toCoefficients = jointMap(parts);
   const coefficients = applyMap(toCoefficients, unknowns);
   const terms = localTerms(parts, posterior);
+  const perDispersion = mapCovariance(toCoefficients, covariance, unknowns.length, 1);
+  const measures = goodness(family, rows, fit, 2 * edf - weightedVariances(terms, perDispersion, { data: rows.data, weights: fit.workingWeights }));
+  const { dispersion } = measures;
   const fitted = fittedMeans(parts, coefficients, terms, dispersion);
   return {
     format: 1,
@@ -40,7 +44,7 @@ export function fitLocalModel(given: Omit<ModelParts, "fit">, maxIterations: num
     rowCount: rows.count,
     coefficients,
     coefficientNames: namesOf(design),
-    covariance: mapCovariance(toCoefficients, covariance, unknowns.length, dispersion),
+    covariance: perDispersion.map((value) => value * dispersion),
     groupCovariance: null,
     terms,
     information: null,
