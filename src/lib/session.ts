@@ -28,6 +28,12 @@ export const sessionQuery = () =>
 export const forgetOthersData = (queryClient: QueryClient): void =>
   queryClient.removeQueries({ predicate: ({ queryKey }) => queryKey[0] !== sessionQuery().queryKey[0] });
 
+/**
+ * Set where a person signed out, and forgotten with the rest once someone signs in: a session that merely ended brings
+ * its person back to the page they were on, but the next person starts at their own.
+ */
+export const signedOutKey = ["signed-out"] as const;
+
 export const useSession = (): Session | null => useQuery(sessionQuery()).data ?? null;
 
 /** What the person may do. Hiding a button is a courtesy: the server decides. */

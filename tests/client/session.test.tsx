@@ -1,5 +1,5 @@
 import { QueryClientProvider } from "@tanstack/react-query";
-import { render, screen, waitFor } from "@testing-library/react";
+import { act, render, screen } from "@testing-library/react";
 import userEvent from "@testing-library/user-event";
 import { createMemoryRouter, RouterProvider } from "react-router-dom";
 import { afterEach, describe, expect, it, vi } from "vitest";
@@ -8,7 +8,7 @@ import { Shell } from "@/app/shell/shell";
 import { StatusLineProvider } from "@/components/ui/status-line";
 import { PersonMenu } from "@/features/accounts/components/person-menu";
 import { createQueryClient } from "@/lib/query-client";
-import { sessionQuery, useSession } from "@/lib/session";
+import { forgetOthersData, sessionQuery, signedOutKey, useSession } from "@/lib/session";
 import { answerRequests } from "./support/answer";
 import { renderInPage } from "./support/render";
 
@@ -26,8 +26,35 @@ const session: Session = { person, permissions: ["read"], by: "session" };
 
 const Page = () => {
   const known = useSession();
-  return known ? <PersonMenu person={known.person} onChangePassword={vi.fn()} onSignedOut={vi.fn()} /> : <p>Nobody is signed in.</p>;
+  return known ? <PersonMenu person={known.person} onChangePassword={vi.fn()} /> : <p>Nobody is signed in.</p>;
 };
+
+/** A page inside what surrounds every page, as someone signed in sees it. */
+const openPlan = () => {
+  answerRequests((address, options) => {
+    if (!address.includes("/api/session")) return { status: 404 };
+    return options.method === "DELETE" ? { status: 204 } : { status: 200, body: session };
+  });
+  const queryClient = createQueryClient();
+  queryClient.setQueryData(sessionQuery().queryKey, session);
+  const router = createMemoryRouter(
+    [
+      { element: <Shell />, children: [{ path: "/scenarios/:id", element: <p>A plan</p> }] },
+      { path: "/sign-in", element: <p>Who are you?</p> },
+    ],
+    { initialEntries: ["/scenarios/7?week=3"] },
+  );
+  render(
+    <QueryClientProvider client={queryClient}>
+      <StatusLineProvider>
+        <RouterProvider router={router} />
+      </StatusLineProvider>
+    </QueryClientProvider>,
+  );
+  return { queryClient, router };
+};
+
+const addressOf = ({ state }: ReturnType<typeof createMemoryRouter>) => `${state.location.pathname}${state.location.search}`;
 
 describe("signing out", () => {
   it("tells the page at once and forgets what the person has read", async () => {
@@ -44,32 +71,20 @@ describe("signing out", () => {
   });
 
   it("leads to the plain sign-in page, so that the next person lands on their own first page", async () => {
-    const chain = { status: 404, body: "" };
-    answerRequests((address, options) => {
-      if (!address.includes("/api/session")) return chain;
-      return options.method === "DELETE" ? { status: 204 } : { status: 200, body: session };
-    });
-    const queryClient = createQueryClient();
-    queryClient.setQueryData(sessionQuery().queryKey, session);
-    const router = createMemoryRouter(
-      [
-        { element: <Shell />, children: [{ path: "/scenarios/:id", element: <p>A plan</p> }] },
-        { path: "/sign-in", element: <p>Who are you?</p> },
-      ],
-      { initialEntries: ["/scenarios/7?week=3"] },
-    );
-    render(
-      <QueryClientProvider client={queryClient}>
-        <StatusLineProvider>
-          <RouterProvider router={router} />
-        </StatusLineProvider>
-      </QueryClientProvider>,
-    );
+    const { queryClient, router } = openPlan();
     await userEvent.click(screen.getByRole("button", { name: "AK: account of Ada Kale" }));
     await userEvent.click(screen.getByRole("menuitem", { name: "Sign out" }));
     expect(await screen.findByText("Who are you?")).toBeTruthy();
-    await waitFor(() => expect(queryClient.getQueryData(sessionQuery().queryKey)).toBeNull());
-    expect(`${router.state.location.pathname}${router.state.location.search}`).toBe("/sign-in");
+    expect(addressOf(router)).toBe("/sign-in");
+    forgetOthersData(queryClient);
+    expect(queryClient.getQueryData(signedOutKey)).toBeUndefined();
+  });
+
+  it("leads back to the page where the session merely ended", async () => {
+    const { queryClient, router } = openPlan();
+    act(() => void queryClient.setQueryData(sessionQuery().queryKey, null));
+    expect(await screen.findByText("Who are you?")).toBeTruthy();
+    expect(addressOf(router)).toBe(`/sign-in?returnTo=${encodeURIComponent("/scenarios/7?week=3")}`);
   });
 
   it("that the server did not hear of says that the person is still signed in", async () => {

@@ -1,10 +1,11 @@
+import { useQueryClient } from "@tanstack/react-query";
 import { useEffect, useMemo, useRef } from "react";
 import { Navigate, Outlet, useLocation, useNavigation } from "react-router-dom";
 import { SkipLink } from "@/components/ui/skip-link";
 import { useChain } from "@/lib/chain";
 import { ChainFormatContext, createChainFormat, neutralSettings } from "@/lib/format/chain-format";
 import { paths } from "@/lib/paths";
-import { useSession } from "@/lib/session";
+import { signedOutKey, useSession } from "@/lib/session";
 import { TopBar } from "./top-bar";
 
 const contentId = "content";
@@ -12,6 +13,7 @@ const contentId = "content";
 /** What surrounds every page of someone signed in. */
 export const Shell = () => {
   const session = useSession();
+  const queryClient = useQueryClient();
   const chain = useChain();
   const location = useLocation();
   const navigation = useNavigation();
@@ -27,7 +29,10 @@ export const Shell = () => {
     content.current?.focus({ preventScroll: true });
   }, [location.pathname]);
 
-  if (!session) return <Navigate to={paths.signIn.href(`${location.pathname}${location.search}`)} replace />;
+  if (!session) {
+    const here = queryClient.getQueryData(signedOutKey) ? undefined : `${location.pathname}${location.search}`;
+    return <Navigate to={paths.signIn.href(here)} replace />;
+  }
   if (session.person.mustChangePassword && location.pathname !== paths.password.path) {
     return <Navigate to={paths.password.href()} replace />;
   }

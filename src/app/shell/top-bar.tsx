@@ -55,11 +55,7 @@ export const TopBar = ({ session, chainName }: TopBarProps) => {
         </nav>
         <div className="ml-auto flex min-w-0 items-center gap-3">
           {chainName && <span className="truncate text-muted max-sm:hidden">{chainName}</span>}
-          <PersonMenu
-            person={session.person}
-            onChangePassword={() => void navigate(paths.password.href())}
-            onSignedOut={() => navigate(paths.signIn.href())}
-          />
+          <PersonMenu person={session.person} onChangePassword={() => void navigate(paths.password.href())} />
         </div>
       </div>
       <nav id="pages" aria-label="Pages" hidden={!isOpen} className="border-t border-hairline px-3 py-2 md:hidden">

@@ -13,17 +13,12 @@ const themes = [
   { value: "dark", label: "Dark" },
 ] as const;
 
-type PersonMenuProps = {
-  person: Session["person"];
-  onChangePassword: () => void;
-  /** Goes where the next person signs in. */
-  onSignedOut: () => void | Promise<void>;
-};
+type PersonMenuProps = { person: Session["person"]; onChangePassword: () => void };
 
 /** Who is signed in, as what, in which theme; and the way out. */
-export const PersonMenu = ({ person, onChangePassword, onSignedOut }: PersonMenuProps) => {
+export const PersonMenu = ({ person, onChangePassword }: PersonMenuProps) => {
   const theme = useThemeChoice();
-  const signOut = useSignOut(onSignedOut);
+  const signOut = useSignOut();
   const status = useStatusLine();
   return (
     <Menu
