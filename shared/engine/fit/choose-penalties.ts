@@ -59,7 +59,7 @@ export type RefineOptions = { start: Float64Array; fellnerSchallSteps: number; m
  */
 export function refinePenalties(search: PenaltySearch, plan: PenaltyPlan, options: RefineOptions): boolean {
   evaluateAt(search, options.start);
-  liftUntilRegular(search, options.start);
+  liftUntilRegular(search, plan, options.start);
   const { automatic, asked } = plan;
   if (asked.length > 0) solveDegrees(search, asked);
   if (automatic.length === 0) return true;
@@ -75,12 +75,16 @@ export function refinePenalties(search: PenaltySearch, plan: PenaltyPlan, option
   return false;
 }
 
-/** Where rounding makes the system singular at a small penalty, raises all of them until it is not. */
-function liftUntilRegular(search: PenaltySearch, start: Float64Array): void {
+/** Where rounding makes the system singular at a small penalty, raises those that are chosen until it is not; else all. */
+function liftUntilRegular(search: PenaltySearch, plan: PenaltyPlan, start: Float64Array): void {
   const lifted = start.slice();
-  for (let step = 0; step < 40 && !Number.isFinite(search.current.criterion); step++) {
-    for (let penalty = 0; penalty < lifted.length; penalty++) lifted[penalty] += 2;
-    evaluateAt(search, lifted);
+  const all = Array.from(lifted.keys());
+  const given = new Set(plan.given.map(({ penalty }) => penalty));
+  for (const penalties of [all.filter((penalty) => !given.has(penalty)), all]) {
+    for (let step = 0; step < 40 && penalties.length > 0 && !Number.isFinite(search.current.criterion); step++) {
+      for (const penalty of penalties) lifted[penalty] = Math.max(lifted[penalty], Math.min(lifted[penalty] + 2, search.highest[penalty]));
+      evaluateAt(search, lifted);
+    }
   }
 }
 
