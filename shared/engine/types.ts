@@ -335,6 +335,14 @@ export type Prediction = {
   outside: Record<string, Uint8Array>;
 };
 
+/**
+ * What a curve's band allows for. pointwise: the coefficients' error, penalties taken as known; zero where a line crosses its
+ * mean. with-mean: also the error of the level the curve stands on, for centred curves. corrected: with-mean, and the error
+ * of chosen penalties by Taylor expansion. averaged: the curve's own error, averaged over all penalties that the rows
+ * leave possible. Slopes have no level: for them with-mean is pointwise.
+ */
+export type BandKind = "pointwise" | "with-mean" | "corrected" | "averaged";
+
 export type TermCurveOptions = {
   /** Number of evenly spaced points over the observed range (default 100); on the log scale for log terms. */
   points?: number;
@@ -344,6 +352,8 @@ export type TermCurveOptions = {
   group?: string;
   /** Probability of the band (default 0.95). */
   level?: number;
+  /** What the band allows for (default "pointwise"). */
+  band?: BandKind;
   /** Also give the derivative with respect to ln x: an elasticity, for log links and price-like columns. */
   derivative?: boolean;
 };

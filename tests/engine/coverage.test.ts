@@ -14,8 +14,10 @@ const error = (share: number) => Math.sqrt((share * (1 - share)) / (4 * sets));
 describe.each(families)("Of simulated %s sales", (family) => {
   it("95 % bands hold the curves they were drawn from", () => {
     const { price, season, observation, residuals, converged } = coverageStudy(family, { sets, rows: 1872, seed: 77, shape: "threshold", level: 0.95 });
-    expect(price.onLevel).toBeGreaterThan(0.93 - 3 * error(0.93));
-    expect(season.onLevel).toBeGreaterThan(0.93 - 3 * error(0.93));
+    for (const band of ["averaged", "with-mean, on its level"] as const) {
+      expect(price[band], band).toBeGreaterThan(0.93 - 3 * error(0.93));
+      expect(season[band], band).toBeGreaterThan(0.93 - 3 * error(0.93));
+    }
     expect(converged).toBe(1);
     // New rows are thousands: the bar itself, 93 to 97.
     if (family === "binomial") expect(observation).toBe(null);
@@ -27,7 +29,7 @@ describe.each(families)("Of simulated %s sales", (family) => {
 
   it("50 % bands hold half of them, and 50 % intervals half of new rows", () => {
     const { price, season, observation } = coverageStudy(family, { sets, rows: 1872, seed: 78, shape: "threshold", level: 0.5 });
-    for (const { onLevel } of [price, season]) expect(Math.abs(onLevel - 0.5)).toBeLessThan(3 * error(0.5));
+    for (const held of [price, season]) expect(Math.abs(held["with-mean, on its level"] - 0.5)).toBeLessThan(3 * error(0.5));
     // A count's interval holds a little more, as it ends on whole numbers.
     if (family !== "binomial") expect(Math.abs((observation ?? 0) - 0.51)).toBeLessThan(0.03);
   });

@@ -5,10 +5,12 @@ import { seededRandom } from "../inference/random";
 import { packedIndex } from "../linalg/packed-symmetric";
 import { entriesPerRow, gatherRow } from "../linalg/sparse-rows";
 import type { FittedModel, TermCurve, TermCurveOptions } from "../types";
+import { bandModel, hasMean } from "./band-model";
 import { curveData } from "./curve-data";
 import { curvePoints } from "./curve-points";
 import { extendModel } from "./extend-model";
 import { normalQuantile } from "./level";
+import { levelParts } from "./level-parts";
 import { covarianceQuadratic, sharedCount } from "./model-covariance";
 import { findTerm, termCurve } from "./term-curve";
 
@@ -36,7 +38,7 @@ const smallestShare = 1e-9;
  * N(0, V). Points where the curve is known exactly count for nothing.
  * Source: Ruppert, Wand & Carroll (2003), Semiparametric Regression, section 6.5.
  *
- * @param options points, at and group as `termCurve`; level; draws and seed.
+ * @param options points, at, group and band as `termCurve`; level; draws and seed.
  * @returns `normalQuantile(level)` for a straight line, more the more a curve can bend. Its own error by simulation is
  * about 0.01 to 0.02 at 10,000 draws.
  * @throws EngineError as `termCurve`; option-invalid for draws, seed, or more than 400 coefficients.
@@ -75,7 +77,8 @@ export function simultaneousQuantile(model: FittedModel, termId: string, options
  * @example simultaneousBand(model, "price", { points: 60, seed: 7 }).lower;
  */
 export function simultaneousBand(model: FittedModel, termId: string, options: SimultaneousOptions = {}): TermCurve {
-  const curve = termCurve(model, termId, { points: options.points, at: options.at, group: options.group, level: options.level });
+  const { points, at, group, level, band } = options;
+  const curve = termCurve(model, termId, { points, at, group, level, band });
   const quantile = simultaneousQuantile(model, termId, options);
   return {
     ...curve,
@@ -94,15 +97,18 @@ function standardisedRoot(model: FittedModel, termId: string, options: Simultane
   const term = findTerm(model, termId);
   const x = curvePoints(term, options);
   const { basis, data } = curveData(model, term, { x, group: options.group });
-  const extended = extendModel(model, data);
+  const extended = extendModel(bandModel(model, options.band), data);
   const at = findTerm(extended, termId);
   const rows = basisRows(basis.kind === "random-walk" ? at.basis : basis, data);
-  const entries = entriesPerRow(rows);
+  const beside = hasMean(options.band) ? levelParts(extended, at, { count: x.length, group: options.group }) : [];
+  const parts = [...beside, { id: termId, first: at.first, rows }];
+  const entries = parts.reduce((sum, part) => sum + entriesPerRow(part.rows), 0);
   const into = { indices: new Int32Array(entries), values: new Float64Array(entries), count: 0 };
   const columnOf = new Map<number, number>();
   const cells: [row: number, column: number, value: number][] = [];
   for (let row = 0; row < x.length; row++) {
-    const count = gatherRow(rows, row, at.first, into);
+    let count = 0;
+    for (const part of parts) count = gatherRow(part.rows, row, part.first, { ...into, count });
     for (let k = 0; k < count; k++) {
       if (into.values[k] === 0) continue;
       const index = into.indices[k];

@@ -4,11 +4,14 @@ import { EngineError } from "../errors";
 import { addRowsTimes } from "../linalg/sparse-rows";
 import type { SparseRows } from "../linalg/sparse-rows";
 import type { CurveDerivative, FittedModel, FittedTerm, TermBasis, TermCurve, TermCurveOptions } from "../types";
+import { bandModel, hasMean } from "./band-model";
 import { curveData } from "./curve-data";
 import { curvePoints } from "./curve-points";
 import { rowStandardErrors } from "./design-rows";
+import type { DesignRows } from "./design-rows";
 import { extendModel } from "./extend-model";
 import { normalQuantile } from "./level";
+import { levelParts } from "./level-parts";
 import { supportCounts } from "./support";
 
 const defaultLevel = 0.95;
@@ -18,6 +21,7 @@ const defaultLevel = 0.95;
  * (a factor: relative to its reference level). A straight line's band is zero at its centre. A smooth times a column of
  * numbers and a slope per group are drawn per unit of that column; a group's curve is its deviation alone; a random effect
  * is drawn over its groups, a random walk over its weeks (later ones with the growing band of an unknown week).
+ * `band` says what the band allows for (see `BandKind`).
  * With `derivative` also d contribution / d ln x: for a log link and a price, the own-price elasticity at x.
  *
  * @param options.points evenly spaced over the observed range (on the log scale for log terms; a circle: over its period);
@@ -25,7 +29,7 @@ const defaultLevel = 0.95;
  * curves.
  * @returns arrays of one length; `supportCount` fitted rows near each x.
  * @throws EngineError term-unknown, option-invalid, level-unknown, and as `predict` for `at`.
- * Cost: O(points x 16).
+ * Cost: O(points x 16); other bands than the pointwise one first that of `bandModel`.
  * @example termCurve(model, "price", { at: [1.49, 1.99], level: 0.8, derivative: true }).derivative?.estimate;
  */
 export function termCurve(model: FittedModel, termId: string, options: TermCurveOptions = {}): TermCurve {
@@ -33,17 +37,18 @@ export function termCurve(model: FittedModel, termId: string, options: TermCurve
   const quantile = normalQuantile(options.level ?? defaultLevel);
   const x = curvePoints(term, options);
   const { basis, data } = curveData(model, term, { x, group: options.group });
-  const extended = extendModel(model, data);
+  const extended = extendModel(bandModel(model, options.band), data);
   const at = findTerm(extended, termId);
   const drawn = at === term ? basis : withNewLevels(basis, at.basis);
-  const bandOf = (rows: SparseRows) => bandOver(extended, { rows, first: at.first, count: x.length, quantile });
+  const bandOf = (rows: SparseRows, beside: DesignRows["parts"]) => bandOver(extended, { rows, first: at.first, count: x.length, quantile, beside });
+  const level = hasMean(options.band) ? levelParts(extended, at, { count: x.length, group: options.group }) : [];
   const slopes = options.derivative === true ? basisLogSlopeRows(drawn, data) : null;
   return {
-    termId, x, ...bandOf(basisRows(drawn, data)),
+    termId, x, ...bandOf(basisRows(drawn, data), level),
     observedRange: term.observedRange,
     supportCount: supportCounts(term, x, options.group),
     outside: outsideRows(term, data),
-    ...(slopes === null ? {} : { derivative: bandOf(slopes) }),
+    ...(slopes === null ? {} : { derivative: bandOf(slopes, []) }),
   };
 }
 
@@ -68,16 +73,17 @@ function withNewLevels(drawn: TermBasis, extended: TermBasis): TermBasis {
 /**
  * Estimate and band of combinations of one term's coefficients.
  *
- * @param at.rows over the term's own coefficients, `count` rows; at.first the first of them in the model.
+ * @param at.rows over the term's own coefficients, `count` rows; at.first the first of them in the model; at.beside parts
+ * whose error the band has too, though the estimate is the term's alone.
  * @example bandOver(model, { rows, first: term.first, count: 100, quantile: 1.96 }).upper;
  */
 export function bandOver(
-  model: FittedModel, at: { rows: SparseRows; first: number; count: number; quantile: number },
+  model: FittedModel, at: { rows: SparseRows; first: number; count: number; quantile: number; beside?: DesignRows["parts"] },
 ): CurveDerivative {
-  const { rows, first, count, quantile } = at;
+  const { rows, first, count, quantile, beside = [] } = at;
   const estimate = new Float64Array(count);
   addRowsTimes(rows, model.coefficients, first, estimate);
-  const standardError = rowStandardErrors(model, [{ id: "", first, rows }], count);
+  const standardError = rowStandardErrors(model, [...beside, { id: "", first, rows }], count);
   return {
     estimate,
     standardError,

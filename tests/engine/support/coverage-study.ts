@@ -1,9 +1,7 @@
-import { covarianceQuadratic, designRows, fitModel, normalQuantile, predict, termCurve, transposeTimes } from "@shared/engine";
-import type { Family, FittedModel } from "@shared/engine";
+import { designRows, fitModel, normalQuantile, predict, termCurve, transposeTimes } from "@shared/engine";
+import type { BandKind, Family, FittedModel } from "@shared/engine";
 import { gammaBelow } from "@shared/engine/family/gamma-below";
-import { addTransposeTimes } from "@shared/engine/linalg/sparse-rows";
 import { residuals } from "@shared/engine/predict/residuals";
-import { basisRows } from "@shared/engine/basis/term-basis";
 import { simulatedSales, simulatedSpec, truth } from "./simulated-sales";
 import type { Shape } from "./simulated-sales";
 
@@ -12,25 +10,19 @@ const smallestMean = 20;
 
 export type Study = { sets: number; rows: number; seed: number; shape: Shape; level: number };
 
-export type CurveCoverage = {
-  /**
-   * Share of the curve inside its pointwise band, averaged over curve and sets: the curve on its level, the other drivers as on
-   * average.
-   */
-  onLevel: number;
-  /**
-   * The centred curve in its own band, which pinches where the curve crosses its mean. It holds less where a curve is all but a
-   * line, as the mean's error is missing there (Marra & Wood 2012, section 3). R's mgcv 1.8-41 on 100 sets of 156 rows, gentle
-   * price curve: gaussian 0.82, quasi-Poisson 0.78, negative binomial 0.82.
-   */
-  centred: number;
-  /** The centred curve in a band as wide as that of the curve on its level (Marra & Wood 2012, section 3, recommend it). */
-  withMean: number;
-};
+/** Kinds of band, as `BandKind` has them, of the centred curve; and two of the curve on its level, the other drivers as on average. */
+export const judgedBands = ["pointwise", "with-mean", "corrected", "averaged", "with-mean, on its level", "corrected, on its level"] as const;
+
+/** Share of the curve inside its band, averaged over curve and sets. */
+export type CurveCoverage = Record<(typeof judgedBands)[number], number>;
 
 export type Coverage = {
   price: CurveCoverage;
   season: CurveCoverage;
+  /** Standard error, by simulation, of the averaged band's share. */
+  error: { price: number; season: number };
+  /** Share of sets whose price curve was smoothed to a line (less than 1.05 degrees of freedom). */
+  straight: number;
   /** Share of new rows inside their interval, of those with a mean of at least 20; null where there is no such interval. */
   observation: number | null;
   /** Kolmogorov-Smirnov's distance from uniform of fitted rows' residuals with lower means, and the share of sets it rejects at 5 %. */
@@ -41,24 +33,32 @@ export type Coverage = {
 /** Fits models to sets drawn from known curves, and counts how often their bands and intervals hold the truth. O(sets) fits. */
 export function coverageStudy(family: Family, study: Study): Coverage {
   const outcomes = Array.from({ length: study.sets }, (_, set) => judge(family, { ...study, seed: study.seed + 1000 * set }));
-  const curve = (term: "price" | "season"): CurveCoverage => ({
-    onLevel: average(outcomes.map((outcome) => outcome[term].onLevel)),
-    centred: average(outcomes.map((outcome) => outcome[term].centred)),
-    withMean: average(outcomes.map((outcome) => outcome[term].withMean)),
-  });
+  const curve = (term: "price" | "season") => perBand((band) => average(outcomes.map((outcome) => outcome[term][band])));
   const judged = outcomes.flatMap(({ inside }) => inside);
   const tested = outcomes.map(({ places }) => places).filter(({ length }) => length > 0);
   return {
     price: curve("price"), season: curve("season"),
+    error: { price: standardError(outcomes.map(({ price }) => price.averaged)), season: standardError(outcomes.map(({ season }) => season.averaged)) },
+    straight: average(outcomes.map(({ isStraight }) => Number(isStraight))),
     observation: judged.length === 0 ? null : average(judged.map(Number)),
     residuals: tested.length === 0 ? null : { distance: uniformDistance(tested.flat()), rejected: average(tested.map((places) => Number(isRejected(places)))) },
     converged: average(outcomes.map(({ converged }) => Number(converged))),
   };
 }
 
+const perBand = (share: (band: keyof CurveCoverage) => number): CurveCoverage => ({
+  pointwise: share("pointwise"), "with-mean": share("with-mean"), corrected: share("corrected"), averaged: share("averaged"),
+  "with-mean, on its level": share("with-mean, on its level"), "corrected, on its level": share("corrected, on its level"),
+});
+
 const average = (values: number[]): number => values.reduce((sum, value) => sum + value, 0) / values.length;
 
-type Outcome = { price: CurveCoverage; season: CurveCoverage; inside: boolean[]; places: number[]; converged: boolean };
+function standardError(values: number[]): number {
+  const mean = average(values);
+  return Math.sqrt(average(values.map((value) => (value - mean) ** 2)) / values.length);
+}
+
+type Outcome = { price: CurveCoverage; season: CurveCoverage; isStraight: boolean; inside: boolean[]; places: number[]; converged: boolean };
 
 function judge(family: Family, study: Study): Outcome {
   const { seed, shape, rows: count } = study;
@@ -74,6 +74,7 @@ function judge(family: Family, study: Study): Outcome {
   return {
     price: of("price", data.price, truth.price[shape]),
     season: of("yearFraction", data.yearFraction, truth.season),
+    isStraight: model.terms[0].edf < 1.05,
     inside: family === "binomial" ? [] : newRowsInside(model, family, { ...study, seed: seed + 500 }),
     places: places.filter((_place, row) => mean[row] < smallestMean),
     converged: model.converged,
@@ -92,31 +93,21 @@ type CurveTruth = {
 };
 
 function sharesInside(model: FittedModel, { id, data, middle, level, curve }: CurveTruth): CurveCoverage {
-  const { x, lower, upper, estimate } = termCurve(model, id, { points: 100, level });
-  const quantile = normalQuantile(level);
-  const values = Float64Array.from(Array.from<number | string>(x), Number);
   const term = model.terms.find((candidate) => candidate.id === id);
   if (term === undefined) throw new Error(`No term "${id}".`);
   // The average row, the curve's own part left out.
   const common = transposeTimes(model, designRows(model, data), new Float64Array(data.price.length).fill(1 / data.price.length));
   common.fill(0, term.first, term.first + term.count);
-  const commonEstimate = common.reduce((sum, value, k) => sum + value * model.coefficients[k], 0);
-  const rows = basisRows(term.basis, { [term.columns[0]]: values });
-  const held = Array.from(values, (value, k) => {
-    const gradient = common.slice();
-    const point = new Float64Array(values.length);
-    point[k] = 1;
-    addTransposeTimes(rows, point, gradient, term.first);
-    const half = quantile * Math.sqrt(covarianceQuadratic(model, gradient, gradient));
-    const error = estimate[k] - curve(value);
-    return {
-      onLevel: Number(Math.abs(commonEstimate - middle + error) <= half),
-      withMean: Number(Math.abs(error) <= half),
-      centred: Number(lower[k] <= curve(value) && curve(value) <= upper[k]),
-    };
+  const levelError = common.reduce((sum, value, k) => sum + value * model.coefficients[k], 0) - middle;
+  const quantile = normalQuantile(level);
+  const share = (band: BandKind, shift: number) => {
+    const { x, estimate, standardError } = termCurve(model, id, { points: 100, level, band });
+    return average(Array.from<number | string, number>(x, (value, k) => Number(Math.abs(estimate[k] + shift - curve(Number(value))) <= quantile * standardError[k])));
+  };
+  return perBand((kind) => {
+    if (kind === "with-mean, on its level") return share("with-mean", levelError);
+    return kind === "corrected, on its level" ? share("corrected", levelError) : share(kind, 0);
   });
-  const share = (kind: keyof CurveCoverage) => average(held.map((one) => one[kind]));
-  return { onLevel: share("onLevel"), centred: share("centred"), withMean: share("withMean") };
 }
 
 const normalBelow = (value: number): number => 0.5 * (1 + Math.sign(value) * gammaBelow((value * value) / 2, 0.5));
