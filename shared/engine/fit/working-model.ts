@@ -111,8 +111,9 @@ function edfOnFace(of: Shaped, touched: Uint8Array): Float64Array {
   holdCurves(of, touched);
   evaluateAt(search, logPenalties);
   const edf = derivatives(search, "gradient").edf.slice();
-  // A curve that touches any constraint has no free line, which is counted elsewhere.
-  heldPerPenalty(constraints, touched, edf.length).forEach((count, j) => { if (count > 0) edf[j] -= 1; });
+  // A curve that touches any constraint has no free line, which is counted elsewhere; held by a finite weight, a flat one
+  // would come out a little below nothing.
+  heldPerPenalty(constraints, touched, edf.length).forEach((count, j) => { if (count > 0) edf[j] = Math.max(edf[j] - 1, -1); });
   search.problem = { system, layout: problem.layout, scale: problem.scale };
   evaluateAt(search, logPenalties);
   derivatives(search, "gradient");

@@ -68,7 +68,9 @@ export function notFinite(value: unknown, path: string): string[] {
   return Object.entries(value).flatMap(([key, own]) => (own === undefined && path.startsWith("report") ? [] : notFinite(own, `${path}.${key}`)));
 }
 
-function aboutEnd({ converged, warnings }: FittedModel): string[] {
+function aboutEnd({ converged, warnings, terms }: FittedModel): string[] {
+  const spent = terms.find(({ edf }) => edf < -1e-6);
+  if (spent !== undefined) return [`${spent.id} has ${spent.edf} degrees of freedom`];
   const isSaid = warnings.some(({ code }) => code === "not-converged");
   return converged === isSaid ? [`converged is ${converged}, and the warnings are ${JSON.stringify(warnings)}`] : [];
 }
