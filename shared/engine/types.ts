@@ -265,6 +265,7 @@ export type WarningCode =
   | "columns-indistinguishable"
   | "few-distinct-values"
   | "straight-line"
+  | "penalty-raised"
   | "level-without-units"
   | "separation"
   | "concurvity"

@@ -10,7 +10,7 @@ type Situation = { design: Design; fit: WorkingFit; rows: FittedRows; family: Fa
 /** What a person should know about a fit before trusting it. */
 export function fitWarnings(situation: Situation): ModelWarning[] {
   const { fit, isPerfect } = situation;
-  const warnings = [...indistinguishable(situation), ...straightLines(situation), ...emptyLevels(situation), ...separation(situation)];
+  const warnings = [...indistinguishable(situation), ...straightLines(situation), ...raisedPenalties(situation), ...emptyLevels(situation), ...separation(situation)];
   if (isPerfect) {
     warnings.push({ code: "perfect-fit", message: "The model reproduces the response exactly; its bands say nothing about new rows." });
   }
@@ -72,6 +72,20 @@ function straightLines({ design, fit }: Situation): ModelWarning[] {
     const shape = term.design.coordinates.unpenalised > 0 ? "a straight line" : "no effect";
     return [{ code: "straight-line", term: id, message: `Term "${id}": the data show ${shape}; its penalty went to its limit.` }];
   });
+}
+
+/** A penalty given, too small for rounding, is raised until the system is regular: each term once. */
+function raisedPenalties({ design, fit }: Situation): ModelWarning[] {
+  const { multipliers } = fit.solution.search.current;
+  const raised = new Map<string, ModelWarning>();
+  design.penalties.forEach(({ id, smoothness }, penalty) => {
+    if (typeof smoothness === "string" || !("penalty" in smoothness) || !(multipliers[penalty] > smoothness.penalty * (1 + 1e-6))) return;
+    raised.set(id, {
+      code: "penalty-raised", term: id,
+      message: `Term "${id}": with penalty ${smoothness.penalty} these rows leave its curve undetermined; it is fitted with ${Number(multipliers[penalty].toPrecision(3))}.`,
+    });
+  });
+  return [...raised.values()];
 }
 
 const isCurve = ({ basis }: LearntTerm): boolean => basis.kind === "smooth" || basis.kind === "cyclic-smooth" || basis.kind === "scaled-smooth";
