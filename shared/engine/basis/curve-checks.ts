@@ -14,6 +14,9 @@ export function checkSize(size: number, id: string): number {
   return size;
 }
 
+/** Squares of a column's width must not vanish. */
+const leastWidth = 1e-50;
+
 /**
  * Whether a column varies enough to carry a curve.
  *
@@ -25,6 +28,12 @@ export function checkDistinct(distinct: Float64Array, column: string, id: string
   const count = distinct.length;
   if (count === 1) {
     throw new EngineError("column-constant", `Term "${id}": column "${column}" is constant (${distinct[0]}); a curve needs values that vary.`);
+  }
+  if (distinct[count - 1] - distinct[0] < leastWidth) {
+    throw new EngineError(
+      "column-constant",
+      `Term "${id}": column "${column}" runs from ${distinct[0]} to ${distinct[count - 1]}; a curve needs values at least ${leastWidth} apart.`,
+    );
   }
   if (count < 4) {
     throw new EngineError(
