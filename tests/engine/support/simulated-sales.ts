@@ -2,10 +2,12 @@ import type { Family, ModelData, ModelSpec } from "@shared/engine";
 import { gammaDraw, poissonDraw } from "./draws";
 import { seededUniform } from "./generator";
 
-/** Prices that units fall with: gently bent, and with a threshold that shoppers mind. */
+/** Prices that units fall with: gently bent, with a threshold that shoppers mind, straight, and steep before it levels off. */
 const priceCurves = {
   gentle: (value: number) => -2 * Math.log(value) - 0.8 * Math.log(value) ** 2,
   threshold: (value: number) => -1.2 * Math.log(value) - 0.5 * Math.tanh((value - 1.5) / 0.25),
+  straight: (value: number) => -2.2 * Math.log(value),
+  saturating: (value: number) => 1.6 * Math.exp(-5 * (value - 1)) - 1.6,
 };
 
 export type Shape = keyof typeof priceCurves;
