@@ -1,5 +1,5 @@
 import { isUtf8 } from "node:buffer";
-import { isUtf16, sniffedBytes, whatInsteadOfText } from "../upload/sniff-content";
+import { isGzip, isUtf16, sniffedBytes, whatInsteadOfText } from "../upload/sniff-content";
 import { UnreadableFile } from "./unreadable-file";
 
 const byteOrderMark = "\ufeff";
@@ -32,7 +32,7 @@ function requireText(head: Buffer): void {
   if (isUtf16(head)) {
     throw new UnreadableFile("utf-16", "The file is encoded in UTF-16. Save it as CSV UTF-8 and upload that.");
   }
-  const what = whatInsteadOfText(head);
+  const what = isGzip(head) ? "another compressed file" : whatInsteadOfText(head);
   if (what) throw new UnreadableFile("not-a-csv-file", `The file holds ${what}, no CSV text. Export it as CSV (comma separated, UTF-8).`);
 }
 
