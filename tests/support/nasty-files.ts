@@ -2,21 +2,31 @@ import { gzipSync } from "node:zlib";
 import type { ExtractKind } from "@shared/contract/extracts";
 import { productsFile, salesFile, salesHeader, storesFile } from "./extracts";
 
-/** What must come of a file: rows read and usable, and the issues as "line column rule". */
+/**
+ * What must come of a file: rows read and usable, and the issues as "line column rule". One whose rows are all usable
+ * loads.
+ */
 export type NastyFile = {
   what: string;
   kind?: ExtractKind;
   file: string | Buffer;
+  /** What its sender calls it, where that matters, and what we keep of the name. */
+  name?: [given: string, kept: string];
+  /** Status and code where the upload is refused. */
+  refused?: [status: number, code: string];
   /** Code of the reason where no row can be used, and a part of its sentence. */
   unusable?: [code: string, sentence: RegExp];
   rows?: [read: number, usable: number];
   issues?: string[];
 };
 
-const good = (week: string, product = "P1") => `${week},S1,${product},12,21.48,1.79,1.79,0,0,none`;
+/** A sales row of product P1 in store S1. */
+export const good = (week: string, product = "P1") => `${week},S1,${product},12,21.48,1.79,1.79,0,0,none`;
 const [first, second] = [good("2026-06-01"), good("2026-06-08")];
-const utf8 = (...parts: (string | number[])[]) => Buffer.concat(parts.map((part) => Buffer.from(part as string)));
-const withCells = (cells: Partial<Record<string, string>>) => {
+/** A file of texts and bytes, one behind the other. */
+export const utf8 = (...parts: (string | number[])[]) => Buffer.concat(parts.map((part) => Buffer.from(part as string)));
+/** A sales file of every column: the first row with these cells, the second good. */
+export const withCells = (cells: Partial<Record<string, string>>) => {
   const plain: Record<string, string> = {
     week: "2026-06-01", store: "S1", product: "P1", units: "12", net_sales: "21.48", regular_price: "1.79", shelf_price: "1.79",
     feature: "0", display: "0", mechanic: "none", promotion_days: "", open_days: "", stock_out_days: "", unit_cost: "", temperature_c: "", event: "",
@@ -25,7 +35,7 @@ const withCells = (cells: Partial<Record<string, string>>) => {
   return `${Object.keys(row).join(",")}\n${Object.values(row).join(",")}\n${Object.values({ ...plain, week: "2026-06-08" }).join(",")}\n`;
 };
 /** A file whose first row has this cell, with what is found there; the second row is good. */
-const cell = (column: string, value: string, rule: string, isUsable = false): NastyFile => ({
+export const cell = (column: string, value: string, rule: string, isUsable = false): NastyFile => ({
   what: `${JSON.stringify(value).slice(0, 60)} in ${column}`, file: withCells({ [column]: value }),
   rows: [2, isUsable ? 2 : 1], issues: [`2 ${column} ${rule}`],
 });
@@ -85,7 +95,7 @@ export const nastyCells: NastyFile[] = [
   { what: "no row without an error", file: salesFile(first.replace("S1", "S9")), unusable: ["no-usable-row", /The one row has an error/], rows: [1, 0], issues: ["2 store unknown-store"] },
 ];
 
-const lines = (...rows: string[]) => rows.join("\n");
+export const lines = (...rows: string[]) => rows.join("\n");
 
 /** Files of the catalogue's kinds. */
 export const nastyCatalogue: NastyFile[] = [
