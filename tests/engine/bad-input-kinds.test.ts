@@ -49,6 +49,10 @@ const cases: Case[] = [
     message: 'Term "week": column "week" runs from -1500 to 40, 1541 weeks; a random walk has at most 1500.',
   },
   {
+    rule: "a column all but constant", spec: models(price), data: with_({ price: base.price.map((own) => own * 1e-60) }), code: "column-constant",
+    message: `Term "price": column "price" runs from ${Math.min(...base.price) * 1e-60} to ${Math.max(...base.price) * 1e-60}; a curve needs values at least 1e-50 apart.`,
+  },
+  {
     rule: "a constant column in a surface", spec: models(surface), data: with_({ depth: base.price.map(() => 0.2) }), code: "column-constant",
     message: 'Term "price:depth": column "depth" is constant (0.2); a curve needs values that vary.',
   },
