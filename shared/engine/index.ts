@@ -9,6 +9,7 @@ export { compareModels } from "./inference/compare-models";
 export { modelReport } from "./inference/model-report";
 export { designRows, designTransposeTimes, designTransposeTimesMany, transposeTimes } from "./predict/design-rows";
 export type { DesignRows } from "./predict/design-rows";
+export { bandModel } from "./predict/band-model";
 export { extendModel } from "./predict/extend-model";
 export { covarianceQuadratic } from "./predict/model-covariance";
 export { normalQuantile } from "./predict/level";

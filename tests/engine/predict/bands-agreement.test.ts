@@ -1,25 +1,15 @@
-import { readFileSync } from "node:fs";
-import { fileURLToPath } from "node:url";
 import { fitModel, termCurve } from "@shared/engine";
 import type { FittedModel, ModelSpec } from "@shared/engine";
 import { correctedModel } from "@shared/engine/predict/corrected-model";
 import { describe, expect, it } from "vitest";
 import { largestDifference } from "../support/measures";
 import { committedReference } from "../support/reference-files";
-
-type Errors = { price: number[]; woy: number[] };
-type Bands = {
-  madeWith: { r: string; packages: { mgcv: string } };
-  series: {
-    series: number;
-    gaussian: { pointwise: Errors; withMean: Errors; unconditional: Errors; corrected: Errors };
-    quasiPoisson: { pointwise: Errors; withMean: Errors };
-  }[];
-};
+import type { Bands } from "../support/reference-shapes";
 
 /** What tests/engine/reference/bands.R wrote; the calls are in it. */
-const bands = JSON.parse(readFileSync(fileURLToPath(new URL("../reference/bands.json", import.meta.url)), "utf8")) as Bands;
+const bands = committedReference("bands");
 const { series } = committedReference("additive-models");
+type CurveErrors = Bands["series"][number]["gaussian"]["pointwise"];
 const terms: ModelSpec["terms"] = [
   { kind: "smooth", column: "price", log: true, size: 8 },
   { kind: "cyclic-smooth", column: "woy", period: [0.5, 52.5], size: 12 },
@@ -28,7 +18,7 @@ const terms: ModelSpec["terms"] = [
 ];
 
 /** Largest difference of standard errors at every sixth row, over the largest error. */
-function distance(model: FittedModel, expected: Errors, at: { data: Errors; band: "pointwise" | "with-mean" | "corrected" }): number {
+function distance(model: FittedModel, expected: CurveErrors, at: { data: CurveErrors; band: "pointwise" | "with-mean" | "corrected" }): number {
   return Math.max(...(["price", "woy"] as const).map((column) => {
     const some = at.data[column].filter((_value, row) => row % 6 === 0);
     const { standardError } = termCurve(model, column, { at: some, band: at.band });

@@ -32,7 +32,7 @@ function fresh<Name extends keyof References>(name: Name): References[Name] {
 
 const names: (keyof References)[] = [
   "additive-models", "linear-models", "splines", "counts-and-shares", "varying-curves", "natural-and-local", "groups", "local-models",
-  "tests-of-terms",
+  "tests-of-terms", "bands",
 ];
 
 describe("The committed references are what R gives now", () => {

@@ -4,7 +4,7 @@ import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { fileURLToPath } from "node:url";
 import type {
-  AllRows, AllSeries, CountsAndShares, Groups, LocalModels, MadeWith, NaturalAndLocal, TestsOfTerms, VaryingCurves,
+  AllRows, AllSeries, Bands, CountsAndShares, Groups, LocalModels, MadeWith, NaturalAndLocal, TestsOfTerms, VaryingCurves,
 } from "./reference-shapes";
 
 export type FitSummary = {
@@ -37,6 +37,7 @@ export type References = {
   groups: Groups;
   "local-models": LocalModels;
   "tests-of-terms": TestsOfTerms;
+  bands: Bands;
   "additive-models": { madeWith: MadeWith; series: SeriesReference[] };
   "linear-models": {
     madeWith: MadeWith;

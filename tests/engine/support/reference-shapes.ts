@@ -102,6 +102,18 @@ export type LocalModels = {
   };
 };
 
+type CurveErrors = { price: number[]; woy: number[] };
+
+/** Standard errors of two curves at every sixth row of some series of `additive-models`, per kind of band. */
+export type Bands = {
+  madeWith: MadeWith;
+  series: {
+    series: number;
+    gaussian: { pointwise: CurveErrors; withMean: CurveErrors; unconditional: CurveErrors; corrected: CurveErrors };
+    quasiPoisson: { pointwise: CurveErrors; withMean: CurveErrors };
+  }[];
+};
+
 export type TestsOfFit = {
   fit: GamSummary;
   /** Per curve, in order. */
