@@ -1,8 +1,8 @@
-import { backwardSolve, choleskyInPlace, forwardSolve, invertFactored, logDeterminant } from "../linalg/cholesky";
-import { rowProducts, subtractSquare } from "../linalg/dense-products";
+import { backwardSolve, choleskyInPlace, forwardSolve, logDeterminant } from "../linalg/cholesky";
+import { subtractSquare } from "../linalg/dense-products";
 import { ownShareNeeded } from "../linalg/dropping-cholesky";
 import type { DroppedColumn } from "../linalg/dropping-cholesky";
-import { addPenalty, factorUnpenalised, traceOwn } from "./dense-system";
+import { addPenalty, factorUnpenalised } from "./dense-system";
 import type { LikelihoodState } from "./likelihood-state";
 import type { GroupEquations, NormalEquations } from "./normal-equations";
 import type { Penalty } from "./penalties";
@@ -180,67 +180,5 @@ function subtractVector({ rows, right, shared }: { rows: Float64Array; right: Fl
   for (let k = 0; k < right.length; k++) {
     const value = right[k];
     for (let i = 0; i < shared; i++) vector[i] -= value * rows[k * shared + i];
-  }
-}
-
-/**
- * Inverse of the shared part, K_g, K_g M^-1, the groups' estimates, squares and traces. O(groups x size x shared^2).
- *
- * @param state at level criterion; its factors are spent.
- */
-export function traceArrow(system: ArrowSystem, penalties: readonly Penalty[], state: LikelihoodState): void {
-  const { size: shared, unpenalised, groups: { count, size } } = system;
-  const arrow = state.arrow as ArrowState;
-  invertFactored(state.factor, shared, state.inverse);
-  const traces = new Float64Array(size);
-  const squares = new Float64Array(size);
-  for (let group = 0; group < count; group++) goBack({ state, arrow, group, size, shared });
-  const links = { values: arrow.link, count: count * size, width: shared };
-  rowProducts(links, { values: state.inverse, count: shared, width: shared }, arrow.spread);
-  for (let group = 0; group < count; group++) {
-    for (let k = 0; k < size; k++) {
-      const at = (group * size + k) * shared;
-      let variance = arrow.inner[(group * size + k) * size + k];
-      for (let i = 0; i < shared; i++) variance += arrow.link[at + i] * arrow.spread[at + i];
-      traces[k] += variance;
-      squares[k] += arrow.coefficients[group * size + k] ** 2;
-    }
-  }
-  penalties.forEach((penalty, j) => {
-    if (!penalty.grouped) return traceOwn(penalty, { state, size: shared, offset: unpenalised, j });
-    state.traces[j] = 0;
-    state.squares[j] = 0;
-    for (let k = 0; k < size; k++) {
-      const weight = weightAt(penalty, k);
-      state.traces[j] += weight * traces[k];
-      state.squares[j] += weight * squares[k];
-    }
-  });
-}
-
-/** One group: K_g = L^-T (L^-1 C_g), its estimates and (B_g + S_g)^-1. */
-function goBack(of: { state: LikelihoodState; arrow: ArrowState; group: number; size: number; shared: number }): void {
-  const { state: { coefficients }, arrow, group, size, shared } = of;
-  const block = arrow.inner.subarray(group * size * size, (group + 1) * size * size);
-  const rows = arrow.link.subarray(group * size * shared, (group + 1) * size * shared);
-  const own = arrow.coefficients.subarray(group * size, (group + 1) * size);
-  backwardSolveRows(block, size, rows, shared);
-  backwardSolve(block, size, own);
-  const factor = block.slice();
-  invertFactored(factor, size, block);
-  for (let k = 0; k < size; k++) {
-    for (let i = 0; i < shared; i++) own[k] -= rows[k * shared + i] * coefficients[i];
-  }
-}
-
-function backwardSolveRows(factor: Float64Array, size: number, rows: Float64Array, width: number): void {
-  for (let row = size - 1; row >= 0; row--) {
-    const to = row * width;
-    for (let k = row + 1; k < size; k++) {
-      const weight = factor[k * size + row];
-      for (let column = 0; column < width; column++) rows[to + column] -= weight * rows[k * width + column];
-    }
-    const reciprocal = 1 / factor[row * size + row];
-    for (let column = 0; column < width; column++) rows[to + column] *= reciprocal;
   }
 }

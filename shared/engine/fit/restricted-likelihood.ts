@@ -1,6 +1,7 @@
 import { crossArrow } from "./arrow-derivatives";
 import type { ArrowSystem } from "./arrow-system";
-import { solveArrow, traceArrow } from "./arrow-system";
+import { solveArrow } from "./arrow-system";
+import { traceArrow } from "./arrow-trace";
 import type { DenseSystem } from "./dense-system";
 import { crossDense, solveDense, traceDense } from "./dense-system";
 import type { LikelihoodState } from "./likelihood-state";

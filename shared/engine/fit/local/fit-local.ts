@@ -2,7 +2,7 @@ import type { FamilyRules } from "../../family/family-rules";
 import { applyMap } from "../coefficient-map";
 import type { CoefficientMap } from "../coefficient-map";
 import type { Design } from "../design";
-import { criterionAtRest, devianceOf, movement } from "../fit-iterative";
+import { criterionAtRest, devianceOf, movement } from "../rest";
 import type { FittedRows } from "../fitted-rows";
 import { createScratch, normalEquations } from "../normal-equations";
 import type { NormalEquations } from "../normal-equations";
