@@ -9,7 +9,7 @@ const alias = { "@shared": at("./shared"), "@": at("./src") };
 export default defineConfig({
   test: {
     projects: [
-      { resolve: { alias }, test: { name: "unit", environment: "node", include: ["tests/{engine,planning,calendar,contract,demo,infra}/**/*.test.ts"], exclude: ["tests/engine/reference/**"], testTimeout: 30_000 } },
+      { resolve: { alias }, test: { name: "unit", environment: "node", include: ["tests/{engine,planning,calendar,contract,layouts,demo,infra}/**/*.test.ts"], exclude: ["tests/engine/reference/**"], testTimeout: 30_000 } },
       { plugins: [react()], resolve: { alias }, test: { name: "client", environment: "jsdom", include: ["tests/client/**/*.test.{ts,tsx}"], testTimeout: 15_000 } },
       // MikroORM loads TypeScript migrations by itself, so the workers need tsx's loader.
       { resolve: { alias }, test: { name: "api", environment: "node", include: ["tests/api/**/*.test.ts"], execArgv: ["--import", "tsx"], testTimeout: 30_000, hookTimeout: 60_000, maxWorkers: 2 } },

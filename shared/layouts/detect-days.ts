@@ -1,0 +1,90 @@
+import type { DateOrder, WeekDay } from "../contract/layouts";
+import { most, type ColumnProfile } from "./column-profile";
+import { firstDayWords, lastDayWords } from "./column-words";
+import type { Detected, LayoutWarning } from "./detected";
+import { normalName } from "./normal-name";
+import { readDay, weekdayOf, yearLastParts } from "./read-day";
+
+/** Columns whose values are days or weeks. */
+export const isDayColumn = ({ days, values }: ColumnProfile) => values.length > 0 && days >= most;
+
+/**
+ * The order of day and month in a file: by days that one order does not have, over all values; else by the order in which the
+ * values of a column fall on one day of the week, as first or last days of weeks do; else by dots, which no month-first
+ * writing uses. What stays open is said.
+ *
+ * @example detectDateOrder(profileColumns([["13/06/2026"]], ["week"])).value // "dmy"
+ */
+export function detectDateOrder(profiles: readonly ColumnProfile[]): Detected<DateOrder> {
+  const columns = profiles.filter(isDayColumn).map(({ values }) => [...new Set(values.filter((value) => yearLastParts(value)))]);
+  const values = columns.flat();
+  if (values.length === 0) return { value: "iso", confidence: profiles.some(isDayColumn) ? 1 : 0.5, warnings: [] };
+  const [dayFirst, monthFirst] = [countDays(values, "dmy"), countDays(values, "mdy")];
+  if (dayFirst !== monthFirst) {
+    const [value, readable]: [DateOrder, number] = dayFirst > monthFirst ? ["dmy", dayFirst] : ["mdy", monthFirst];
+    return { value, confidence: readable / values.length, warnings: readable < values.length ? [mixed(values.length - readable)] : [] };
+  }
+  if (values.every((value) => day(value, "dmy") === day(value, "mdy"))) return { value: "dmy", confidence: 0.5, warnings: [openOrder(values)] };
+  return byWeekday(columns) ?? bySign(values);
+}
+
+const day = (value: string, order: DateOrder): string | null => {
+  const reading = readDay(value, order);
+  return "day" in reading ? reading.day : null;
+};
+
+const countDays = (values: readonly string[], order: DateOrder) => values.filter((value) => day(value, order) !== null).length;
+
+function byWeekday(columns: readonly string[][]): Detected<DateOrder> | null {
+  for (const values of columns.filter(({ length }) => length > 1)) {
+    const fallOnOneDay = (order: DateOrder) => new Set(values.map((value) => weekdayOf(day(value, order) ?? "1970-01-01"))).size === 1;
+    const [dayFirst, monthFirst] = [fallOnOneDay("dmy"), fallOnOneDay("mdy")];
+    if (dayFirst !== monthFirst) return { value: dayFirst ? "dmy" : "mdy", confidence: values.length > 2 ? 0.95 : 0.85, warnings: [] };
+  }
+  return null;
+}
+
+function bySign(values: readonly string[]): Detected<DateOrder> {
+  const isDotted = values.every((value) => yearLastParts(value)?.sign === ".");
+  return isDotted ? { value: "dmy", confidence: 0.9, warnings: [] } : { value: "dmy", confidence: 0.5, warnings: [openOrder(values)] };
+}
+
+const openOrder = ([example = ""]: readonly string[]): LayoutWarning => ({
+  code: "dates-ambiguous",
+  message: `No date tells whether the day or the month comes first; "${example}" is taken as ${day(example, "dmy") ?? "a day"}.`,
+});
+
+const mixed = (count: number): LayoutWarning => ({
+  code: "dates-mixed", message: `${count} of the first dates cannot be read in the order of the others.`,
+});
+
+/**
+ * Whether a file gives the first or the last day of a week: by the column's name, else by the day of the week. A Sunday can be
+ * either, so a warning says what is taken.
+ *
+ * @example detectWeekDay({ ...profile, name: "Week ending" }, "iso").value // "last"
+ */
+export function detectWeekDay(profile: ColumnProfile | undefined, order: DateOrder): Detected<WeekDay> {
+  const days = profile?.values.map((value) => day(value, order)).filter((value) => value !== null) ?? [];
+  if (!profile || days.length === 0) return { value: "first", confidence: 0.5, warnings: [] };
+  const name = ` ${normalName(profile.name)} `;
+  const isNamed = (words: readonly string[]) => words.some((word) => name.includes(` ${word} `));
+  if (isNamed(lastDayWords)) return { value: "last", confidence: 0.95, warnings: [] };
+  if (isNamed(firstDayWords)) return { value: "first", confidence: 0.95, warnings: [] };
+  const weekdays = new Set(days.map(weekdayOf));
+  const [only] = weekdays;
+  if (weekdays.size > 1) return { value: "first", confidence: 0.3, warnings: [severalWeekdays(profile.position)] };
+  if (only === saturday) return { value: "last", confidence: 0.7, warnings: [] };
+  if (only === sunday) return { value: "last", confidence: 0.5, warnings: [sundays(profile.position)] };
+  return { value: "first", confidence: only === monday ? 0.9 : 0.6, warnings: [] };
+}
+
+const [sunday, monday, saturday] = [0, 1, 6];
+
+const sundays = (position: number): LayoutWarning => ({
+  code: "week-day-ambiguous", message: "All weeks are given by Sundays, which are taken as their last days. Correct it if they are the first.", position,
+});
+
+const severalWeekdays = (position: number): LayoutWarning => ({
+  code: "not-weekly", message: "The dates fall on several days of the week: the file seems to be daily, not weekly.", position,
+});

@@ -1,0 +1,13 @@
+export { applyLayout } from "./apply-layout";
+export type { FieldProblem, LayoutReader, OurRecord } from "./apply-layout";
+export { defaultWords } from "./default-words";
+export { detectLayout } from "./detect-layout";
+export type { DetectedColumn, DetectedLayout, LayoutConfidence } from "./detect-layout";
+export { headBytes } from "./detected";
+export type { LayoutWarning } from "./detected";
+export { isGtin } from "./gtin";
+export { LayoutError } from "./layout-error";
+export type { LayoutErrorCode } from "./layout-error";
+export { recognise } from "./recognise";
+export type { Recognised } from "./recognise";
+export { decodeWindows1252 } from "./windows-1252";

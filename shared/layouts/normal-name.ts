@@ -1,0 +1,15 @@
+/**
+ * A column's name for comparing: lower case, without accents, its words (also those of "netSales") apart by one blank.
+ *
+ * @example normalName(" Net_Sales (€) ") // "net sales"
+ */
+export function normalName(name: string): string {
+  return name
+    .replace(/(\p{Ll})(\p{Lu})/gu, "$1 $2")
+    .toLowerCase()
+    .replaceAll("ß", "ss")
+    .normalize("NFD")
+    .replace(/\p{Mn}/gu, "")
+    .replace(/[^\p{L}\p{N}]+/gu, " ")
+    .trim();
+}
