@@ -4,9 +4,9 @@ import type { NormalEquations } from "./normal-equations";
 
 /**
  * Rows c over the shared coordinates, row-major count x size: the curve keeps its shape where every c'b is at most 0.
- * `penalty`: per constraint, the penalty of its curve.
+ * `penalty`: per constraint, the penalty of its curve; `line`: the coordinate of its straight line.
  */
-export type ShapeConstraints = { rows: Float64Array; count: number; size: number; penalty: Int32Array };
+export type ShapeConstraints = { rows: Float64Array; count: number; size: number; penalty: Int32Array; line: Int32Array };
 
 /**
  * What a model's shaped curves demand: differences of neighbouring spline coefficients have the right sign, which makes the
@@ -18,6 +18,7 @@ export type ShapeConstraints = { rows: Float64Array; count: number; size: number
 export function shapeConstraints(design: Design): ShapeConstraints | null {
   const rows: Float64Array[] = [];
   const penalties: number[] = [];
+  const lines: number[] = [];
   for (const { spec, basis, design: part } of design.terms) {
     if (spec.kind !== "smooth" || spec.shape === undefined || !("size" in basis)) continue;
     const { transform } = part.coordinates;
@@ -34,13 +35,14 @@ export function shapeConstraints(design: Design): ShapeConstraints | null {
         }
         rows.push(row);
         penalties.push(firstPenalty + level);
+        lines.push(part.positions[level * width]);
       }
     }
   }
   if (rows.length === 0) return null;
   const all = new Float64Array(rows.length * design.size);
   rows.forEach((row, at) => all.set(row, at * design.size));
-  return { rows: all, count: rows.length, size: design.size, penalty: Int32Array.from(penalties) };
+  return { rows: all, count: rows.length, size: design.size, penalty: Int32Array.from(penalties), line: Int32Array.from(lines) };
 }
 
 /**
@@ -53,6 +55,17 @@ export function heldPerPenalty({ penalty }: ShapeConstraints, held: Uint8Array, 
   const numbers = new Int32Array(count);
   for (let at = 0; at < held.length; at++) numbers[penalty[at]] += held[at];
   return numbers;
+}
+
+/**
+ * Per penalty 1 where its curve is held and had a straight line of its own, not one that is left out (`dropped`).
+ *
+ * @example linesHeld(constraints, Uint8Array.of(1, 0, 1), { dropped: [], count: 1 }); // 1
+ */
+export function linesHeld({ penalty, line }: ShapeConstraints, held: Uint8Array, of: { dropped: readonly number[]; count: number }): Int32Array {
+  const lines = new Int32Array(of.count);
+  for (let at = 0; at < held.length; at++) if (held[at] === 1 && !of.dropped.includes(line[at])) lines[penalty[at]] = 1;
+  return lines;
 }
 
 /** Weight, against the largest diagonal, by which a held constraint enters as a penalty. */

@@ -12,7 +12,7 @@ import type { PenaltySearch } from "./penalty-search";
 import type { PenalisedSystem, Scale } from "./restricted-likelihood";
 import { checkRowsSuffice } from "./row-budget";
 import type { ShapeConstraints } from "./shape-constraints";
-import { heldPerPenalty, holdConstraints, projectOntoShape } from "./shape-constraints";
+import { heldPerPenalty, holdConstraints, linesHeld, projectOntoShape } from "./shape-constraints";
 
 /** What stays the same from one working model to the next. */
 export type WorkingProblem = {
@@ -113,7 +113,8 @@ function edfOnFace(of: Shaped, touched: Uint8Array): Float64Array {
   const edf = derivatives(search, "gradient").edf.slice();
   // A curve that touches any constraint has no free line, which is counted elsewhere; held by a finite weight, a flat one
   // would come out a little below nothing.
-  heldPerPenalty(constraints, touched, edf.length).forEach((count, j) => { if (count > 0) edf[j] = Math.max(edf[j] - 1, -1); });
+  const lines = linesHeld(constraints, touched, { dropped: system.dropped.map(({ column }) => column), count: edf.length });
+  heldPerPenalty(constraints, touched, edf.length).forEach((count, j) => { if (count > 0) edf[j] = Math.max(edf[j] - lines[j], -lines[j]); });
   search.problem = { system, layout: problem.layout, scale: problem.scale };
   evaluateAt(search, logPenalties);
   derivatives(search, "gradient");
@@ -128,12 +129,13 @@ function holdCurves({ problem, equations, system, search, constraints }: Shaped,
   const { design, layout, scale } = problem;
   const numbers = heldPerPenalty(constraints, held, layout.penalties.length);
   const onFace = createSystem(holdConstraints(equations, constraints, held), design, system.dropped);
-  const curves = numbers.reduce((sum, count) => sum + (count > 0 ? 1 : 0), 0);
+  const lines = linesHeld(constraints, held, { dropped: system.dropped.map(({ column }) => column), count: numbers.length });
+  const linesInAll = lines.reduce((sum, count) => sum + count, 0);
   search.problem = {
     scale,
     held: { perPenalty: numbers, unshaped: { system, layout, scale } },
-    system: { ...onFace, unpenalisedKept: onFace.unpenalisedKept - curves },
-    layout: { ...layout, alone: layout.alone.map((rank, j) => (numbers[j] > 0 ? rank + 1 - numbers[j] : rank)) },
+    system: { ...onFace, unpenalisedKept: onFace.unpenalisedKept - linesInAll },
+    layout: { ...layout, alone: layout.alone.map((rank, j) => rank + lines[j] - numbers[j]) },
   };
 }
 

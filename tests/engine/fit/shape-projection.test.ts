@@ -20,7 +20,7 @@ function problemOf(seed: number, size: number, count: number): Problem {
   return {
     size, count, precision, covariance: inverseOf(precision, size),
     estimate: Float64Array.from({ length: size }, normal),
-    constraints: { rows: Float64Array.from({ length: count * size }, normal), count, size, penalty: new Int32Array(count) },
+    constraints: { rows: Float64Array.from({ length: count * size }, normal), count, size, penalty: new Int32Array(count), line: new Int32Array(count) },
   };
 }
 

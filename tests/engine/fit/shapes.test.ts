@@ -76,6 +76,16 @@ describe.each(families)("A curve of a given shape, %s,", (family) => {
     }
   });
 
+  it("whose straight line another term has already spends no less than nothing", () => {
+    const line: TermSpec = { kind: "linear", column: "price", log: true, id: "line" };
+    for (const shape of shapes) {
+      const model = fitModel(modelOf(family, [line, shaped(shape, { smoothness: { penalty: 1 } })]), rows);
+      expect(model.warnings.map(({ code }) => code)).toContain("columns-indistinguishable");
+      expect(model.terms[1].edf).toBeGreaterThan(-1e-3);
+      expect(model.edf).toBeLessThan(9);
+    }
+  });
+
   it("goes on beyond the range with its shape", () => {
     const model = fitModel(modelOf(family, [shaped("decreasing")]), rows);
     const { linearPredictor } = predict(model, { price: [0.01, 0.2, 0.9, 2.2, 5, 80] });
