@@ -6,7 +6,7 @@ import type { Design } from "./design";
 import { createScratch, normalEquations } from "./normal-equations";
 import type { NormalEquations, Scratch } from "./normal-equations";
 import { layOutPenalties } from "./penalties";
-import { createSearch } from "./penalty-search";
+import { searchBeside } from "./penalty-search";
 import type { PenaltySearch } from "./penalty-search";
 import type { Coordinates } from "./predictor";
 import { coefficientsAt, predictorOf } from "./predictor";
@@ -85,7 +85,7 @@ function anotherOptimum(
   const { solution: { search: { current: { logPenalties: known } }, touched, system: { dropped } } } = best;
   const start = startOf(best.solution.search, plan);
   if (start === null) return null;
-  const search = createSearch(best.solution.search.problem);
+  const search = searchBeside(best.solution.search);
   refinePenalties(search, plan, { start, fellnerSchallSteps: startOf === looseStart ? 2 : 0, maxSteps, stopNear: known });
   const found = search.current.logPenalties;
   const isSame = plan.automatic.every((penalty) => {

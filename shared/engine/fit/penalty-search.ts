@@ -29,19 +29,35 @@ export type PenaltySearch = {
 /** @example const search = createSearch({ system, layout, scale: "unknown" }); */
 export function createSearch(problem: LikelihoodProblem): PenaltySearch {
   const { system, layout: { penalties } } = problem;
-  const scales = penalties.map((penalty) => scaleOf(system, penalty));
-  const defaults = Float64Array.from(scales, ({ own }) => Math.log(own));
   const state = () => createState({
     size: system.size,
     penalties: penalties.length,
     arrow: system.form === "arrow" ? createArrowState(system.groups, system.size) : null,
   });
-  return {
-    problem, penalties, defaults,
-    lowest: Float64Array.from(scales, ({ own, whole }) => Math.max(Math.log(own) - downwards, Math.log(whole * ownShareOfLowest))),
-    highest: defaults.map((value) => value + upwards),
-    current: state(), trial: state(), kept: state(),
-  };
+  const { defaults, lowest, highest } = boundsOf(system, penalties);
+  return { problem, penalties, defaults, lowest, highest, current: state(), trial: state(), kept: state() };
+}
+
+/**
+ * Another search of the same working model, in the states that the first has to spare: its current one stays as it is, so long
+ * as the second is used alone. Nothing is kept in it.
+ *
+ * @example const other = searchBeside(search);
+ */
+export function searchBeside({ problem, penalties, trial, kept }: PenaltySearch): PenaltySearch {
+  const { defaults, lowest, highest } = boundsOf(problem.system, penalties);
+  return { problem, penalties, defaults, lowest, highest, current: kept, trial, kept };
+}
+
+function boundsOf(system: PenalisedSystem, penalties: readonly Penalty[]): Pick<PenaltySearch, "defaults" | "lowest" | "highest"> {
+  const bounds = { defaults: new Float64Array(penalties.length), lowest: new Float64Array(penalties.length), highest: new Float64Array(penalties.length) };
+  penalties.forEach((penalty, j) => {
+    const { own, whole } = scaleOf(system, penalty);
+    bounds.defaults[j] = Math.log(own);
+    bounds.lowest[j] = Math.max(bounds.defaults[j] - downwards, Math.log(whole * ownShareOfLowest));
+    bounds.highest[j] = bounds.defaults[j] + upwards;
+  });
+  return bounds;
 }
 
 function scaleOf(system: PenalisedSystem, penalty: Penalty): { own: number; whole: number } {
