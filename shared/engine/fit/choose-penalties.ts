@@ -75,14 +75,23 @@ export function refinePenalties(search: PenaltySearch, plan: PenaltyPlan, option
   return false;
 }
 
-/** Where rounding makes the system singular at a small penalty, raises those that are chosen until it is not; else all. */
+/** Log units beyond the highest penalty to which one is raised where nothing else makes the system regular. */
+const lastResort = 30;
+
+/**
+ * Where rounding makes the system singular at a small penalty, raises those that are chosen until it is not; else all, and
+ * at last beyond what a search would choose.
+ */
 function liftUntilRegular(search: PenaltySearch, plan: PenaltyPlan, start: Float64Array): void {
   const lifted = start.slice();
   const all = Array.from(lifted.keys());
   const given = new Set(plan.given.map(({ penalty }) => penalty));
-  for (const penalties of [all.filter((penalty) => !given.has(penalty)), all]) {
+  const stages = [{ penalties: all.filter((penalty) => !given.has(penalty)), beyond: 0 }, { penalties: all, beyond: 0 }, { penalties: all, beyond: lastResort }];
+  for (const { penalties, beyond } of stages) {
     for (let step = 0; step < 40 && penalties.length > 0 && !Number.isFinite(search.current.criterion); step++) {
-      for (const penalty of penalties) lifted[penalty] = Math.max(lifted[penalty], Math.min(lifted[penalty] + 2, search.highest[penalty]));
+      for (const penalty of penalties) {
+        lifted[penalty] = Math.max(lifted[penalty], Math.min(lifted[penalty] + 2, search.highest[penalty] + beyond));
+      }
       evaluateAt(search, lifted);
     }
   }

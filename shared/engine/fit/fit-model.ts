@@ -20,6 +20,7 @@ import { copySpec, fittedMeans, hasFractions, namesOf } from "./model-parts";
 import type { ModelParts } from "./model-parts";
 import { derivatives } from "./penalty-search";
 import { coefficientsAt } from "./predictor";
+import { checkDetermined } from "./row-budget";
 import type { WorkingFit } from "./working-fit";
 
 const defaultMaxIterations = 200;
@@ -66,6 +67,7 @@ function iterationLimit(options: FitOptions): number {
 function assembleModel(parts: ModelParts): FittedModel {
   const { spec, family, rows, design, map, fit } = parts;
   const { system, search, edf: edfs } = fit.solution;
+  checkDetermined(fit.criterion, rows.count, design.terms.map(({ design: { id } }) => id));
   const state = derivatives(search, "gradient");
   const edf = system.unpenalisedKept + edfs.reduce((sum, value) => sum + value, 0);
   const measures = goodness(family, rows, fit, edf);

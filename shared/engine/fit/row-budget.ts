@@ -1,3 +1,4 @@
+import { quoted } from "../basis/columns";
 import { EngineError } from "../errors";
 import type { PenalisedSystem } from "./restricted-likelihood";
 
@@ -8,5 +9,19 @@ export function checkRowsSuffice(system: PenalisedSystem): void {
   throw new EngineError(
     "too-few-rows",
     `${rowCount} rows (of weight above 0) cannot carry ${unpenalisedKept} unpenalised coefficients; at least ${unpenalisedKept + 1} are needed.`,
+  );
+}
+
+/**
+ * Whether the fit ended in a criterion: without one its system stayed singular under any penalty.
+ *
+ * @param ids of the model's terms.
+ * @throws EngineError too-few-rows.
+ */
+export function checkDetermined(criterion: number, rowCount: number, ids: readonly string[]): void {
+  if (Number.isFinite(criterion)) return;
+  throw new EngineError(
+    "too-few-rows",
+    `${rowCount} rows (of weight above 0) leave the terms ${quoted(ids)} undetermined together, whatever their penalties; leave one out or give it fewer degrees of freedom.`,
   );
 }
