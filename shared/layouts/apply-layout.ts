@@ -3,7 +3,7 @@ import { promotionColumn } from "../contract/layouts";
 import { columnType } from "./column-types";
 import { LayoutError } from "./layout-error";
 import { normalName } from "./normal-name";
-import { daysAfter, readDay } from "./read-day";
+import { daysAfter, readDay, readWeek } from "./read-day";
 import { numberReader } from "./read-number";
 import { remembered, wordReader, type Promotion, type WordReader } from "./read-words";
 
@@ -119,7 +119,7 @@ function valueReader(column: string, layout: Layout, words: WordReader): (text: 
 const unknownWord = "The word is in none of the layout's lists of promotions";
 
 function weekOf(text: string, layout: Layout): Reading {
-  const reading = readDay(text, layout.dateOrder);
+  const reading = readWeek(text, layout.dateOrder);
   if ("problem" in reading) return { reason: reading.problem };
   if ("isoWeek" in reading) return { text: reading.isoWeek };
   return { text: layout.weekDay === "last" ? daysAfter(reading.day, -6) : reading.day };

@@ -1,15 +1,15 @@
 import { extractColumns } from "../contract/extract-columns";
 import type { ExtractKind } from "../contract/extracts";
 import { mappableColumns, type ColumnSource, type Layout } from "../contract/layouts";
-import { profileColumns, type ColumnProfile } from "./column-profile";
+import { most, profileColumns, type ColumnProfile } from "./column-profile";
 import { defaultWords } from "./default-words";
 import { detectDateOrder, detectWeekDay } from "./detect-days";
 import { detectEncoding } from "./detect-encoding";
 import { detectHeader } from "./detect-header";
 import { detectNumbers } from "./detect-numbers";
-import { detectSeparator } from "./detect-separator";
+import { commonest, detectSeparator } from "./detect-separator";
 import { detectTax } from "./detect-tax";
-import type { LayoutWarning } from "./detected";
+import { shareOf, type LayoutWarning } from "./detected";
 import { mappingWarnings } from "./mapping-warnings";
 import { proposeByValues } from "./propose-by-values";
 import { knownNames, proposeByName, type Proposal } from "./propose-mapping";
@@ -64,6 +64,7 @@ export function detectLayout(head: Uint8Array, kind: ExtractKind, knownColumns: 
     columns: profiles.map((profile) => describe(profile, proposals)),
     warnings: [
       ...(text.separatorLine ? [separatorLineWarning] : []),
+      ...titleWarnings(records, header.value),
       ...parts.flatMap(({ warnings }) => warnings),
       ...mappingWarnings({ kind, profiles, proposals, columns: knownColumns }),
     ],
@@ -74,10 +75,20 @@ const separatorLineWarning: LayoutWarning = {
   code: "separator-line", message: "The first line only names the separator; the columns are taken from the line below it.",
 };
 
-/** Empty fields at the end of the header are what spreadsheets leave. */
-function namesOf([first = []]: readonly string[][], hasHeader: boolean): string[] {
-  const names = first.slice(0, mostColumns).map((name) => (hasHeader ? name.trim().slice(0, longestName) : ""));
-  return names.length > 0 ? names : [""];
+/** Without a header each column has an empty name. */
+function namesOf(records: readonly string[][], hasHeader: boolean): string[] {
+  const [first = []] = records;
+  const width = commonest(records.map(({ length }) => length));
+  const names = hasHeader ? first.map((name) => name.trim().slice(0, longestName)) : Array.from({ length: width }, () => "");
+  return names.length > 0 ? names.slice(0, mostColumns) : [""];
+}
+
+/** A title above the header is taken for it, and then has fewer fields than most rows have values. */
+function titleWarnings([first = [], ...below]: readonly string[][], hasHeader: boolean): LayoutWarning[] {
+  const isWider = (row: readonly string[]) => row.slice(first.length).some((value) => value.trim() !== "");
+  if (!hasHeader || below.length === 0 || shareOf(below, isWider) < most) return [];
+  const message = `The first line has ${first.length === 1 ? "1 field" : `${first.length} fields`}, the lines below have more. Remove what stands above the columns' names.`;
+  return [{ code: "lines-above-header", message }];
 }
 
 type Proposing = { profiles: readonly ColumnProfile[]; columns: readonly string[]; format: { decimal: "." | ","; thousands: Layout["thousands"] }; hasHeader: boolean };

@@ -41,7 +41,8 @@ function judge(separator: Separator, records: string[][]): Judged {
   return { separator, width, consistency, score: consistency * (1 + typed) + Math.min(width, 50) / 1_000 };
 }
 
-function commonest(lengths: readonly number[]): number {
+/** The commonest of some lengths, the first of equals; 0 where there is none. */
+export function commonest(lengths: readonly number[]): number {
   const counts = new Map<number, number>();
   for (const length of lengths) counts.set(length, (counts.get(length) ?? 0) + 1);
   return [...counts].reduce((best, [length, count]) => (count > best[1] ? [length, count] : best), [0, 0])[0] ?? 0;

@@ -3,6 +3,7 @@ import { columnType, type ColumnType } from "./column-types";
 import { columnWords } from "./column-words";
 import { shareOf } from "./detected";
 import { normalName } from "./normal-name";
+import { isYearAndWeek } from "./read-day";
 import type { WordReader } from "./read-words";
 
 export type Proposal = { position: number; column: string; score: number; why: string };
@@ -72,7 +73,7 @@ function canHold(profile: ColumnProfile, column: string, words: WordReader): boo
   if (profile.values.length === 0) return true;
   const isMost = (holds: (value: string) => boolean) => shareOf(profile.values, holds) >= most;
   const tests: Record<ColumnType, () => boolean> = {
-    week: () => profile.days >= most || profile.serialDays >= most,
+    week: () => profile.days >= most || profile.serialDays >= most || isMost(isYearAndWeek),
     day: () => profile.days >= most || profile.serialDays >= most,
     number: () => profile.numbers >= most && profile.days < most,
     share: () => isMost((value) => /^[\d.,]+\s*%?$/.test(value)),

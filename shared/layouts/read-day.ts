@@ -51,6 +51,22 @@ export function readDay(text: string, order: DateOrder): DayReading {
   return readYearLast(value, order);
 }
 
+/** "202624", which is a week only where one is expected. */
+const yearAndWeek = /^(20\d{2})(0[1-9]|[1-4]\d|5[0-3])$/;
+
+/**
+ * Reads a value of a column of weeks: as `readDay`, and a year with the number of an ISO week behind it.
+ *
+ * @example readWeek("202624", "iso") // { isoWeek: "2026-W24" }
+ */
+export function readWeek(text: string, order: DateOrder): DayReading {
+  const parts = yearAndWeek.exec(text.trim());
+  return parts ? isoWeek(parts[1] ?? "", parts[2] ?? "") : readDay(text, order);
+}
+
+/** Whether a text is a year with the number of a week behind it. */
+export const isYearAndWeek = (text: string): boolean => yearAndWeek.test(text.trim());
+
 function readYearLast(value: string, order: DateOrder): DayReading {
   const parts = yearLastParts(value);
   if (!parts) return { problem: serial.test(value) ? serialProblem(value) : "The value is not a day" };

@@ -95,7 +95,7 @@ describe("a day or week", () => {
     expect([read("opened", "01.01.69", { kind: "stores", dateOrder: "dmy" }), read("opened", "01.01.70", { kind: "stores", dateOrder: "dmy" })]).toEqual(["2069-01-01", "1970-01-01"]);
   });
 
-  it.each(["2026-W24", "2026W24", "2026-KW24", "KW 24/2026", "W24 2026", "S24-2026"])("%s stays an ISO week, whichever day weeks are given by", (text) => {
+  it.each(["2026-W24", "2026W24", "2026-KW24", "KW 24/2026", "W24 2026", "S24-2026", "202624"])("%s stays an ISO week, whichever day weeks are given by", (text) => {
     expect(read("week", text, { weekDay: "last" })).toBe("2026-W24");
   });
 
@@ -114,6 +114,7 @@ describe("a day or week", () => {
     ["08.06.2026", "iso", "The layout says that days begin with the year"],
     ["46181", "iso", "The value is a spreadsheet's day number, 2026-06-08 if counted from 1900; format the column as dates there"],
     ["2026-W54", "iso", "Weeks of a year are numbered from 1 to 53"],
+    ["202654", "iso", "The value is not a day"],
     ["soon", "dmy", "The value is not a day"],
     ["29.02.2025", "dmy", "There is no such day in the calendar"],
     ["8 Brumaire 2026", "dmy", "The value is not a day"],

@@ -127,6 +127,7 @@ const days: SampleHead[] = [
   { title: "years of two digits", head: salesIn("15/06/26", "22/06/26"), layout: { dateOrder: "dmy" }, mapping: ourNames },
   { title: "compact dates", head: salesIn("20260608", "20260615"), layout: {}, mapping: ourNames },
   { title: "ISO weeks", head: salesIn("2026-W24", "2026-W25"), layout: {}, mapping: ourNames },
+  { title: "years and weeks in one number, where the name says week", head: salesIn("202624", "202625"), layout: {}, mapping: ourNames },
   { title: "times behind the dates", head: salesIn("2026-06-08T00:00:00Z", "2026-06-15T00:00:00Z"), layout: {}, mapping: ourNames },
   { title: "names of months", head: salesIn("8 Jun 2026", "15 Jun 2026"), layout: {}, mapping: ourNames },
   { title: "day numbers of a spreadsheet", head: salesIn("46181", "46188"), layout: {}, mapping: ourNames, warnings: ["serial-days"] },
@@ -196,6 +197,32 @@ const names: SampleHead[] = [
   {
     title: "codes that a spreadsheet shortened", head: lines(ourHeader, "2026-06-08,S1,4.00638E+12,3,5.97,1.99", "2026-06-15,S1,4.00638E+12,4,7.96,1.99"),
     layout: {}, mapping: ourNames, warnings: ["shortened-codes"],
+  },
+  {
+    title: "a title above the header", head: lines("Sales report", ourHeader, ...ourRows),
+    layout: {}, mapping: {}, warnings: [...Array.from({ length: 6 }, () => "column-not-found"), "header-ambiguous", "lines-above-header", "ragged-rows"],
+  },
+  { title: "empty fields behind the last column", head: lines(ourHeader, ...ourRows.map((row) => `${row},,`)), layout: {}, mapping: ourNames, warnings: ["ragged-rows"] },
+  {
+    title: "a first row of another width, without a header", kind: "temperatures",
+    head: lines("2026-06-01,14.5,", ...Array.from({ length: 11 }, (_, at) => `2026-06-${String(1 + 7 * (at % 4)).padStart(2, "0")},${at}.5`)),
+    layout: { hasHeader: false }, mapping: { week: 0, temperature_c: 1 }, warnings: ["ragged-rows"],
+  },
+  {
+    title: "a number of the week beside its date", head: lines(`week,date,${ourHeader.slice(5)}`, ...ourRows.map((row, at) => `${24 + at},${row}`)),
+    layout: {}, mapping: { ...ourNames, week: "date" }, warnings: ["values-do-not-fit"],
+  },
+  {
+    title: "a surer name behind one that only has the word in it", kind: "stores", head: lines("Shop region,Region,Name,Store", "x,Coast,High Street,S1", "y,Moor,Mill,S2"),
+    layout: {}, mapping: { region: "Region", name: "Name", store: "Store" },
+  },
+  {
+    title: "names that share their words", head: lines("Week,Shop,SKU,Sales Volume,Value Sales,Regular Unit Price,Net Sales Price,Promo Days,Unit Cost", "2026-06-08,1,A7,3,5.97,1.99,1.99,0,0.80", "2026-06-15,1,A7,4,7.96,1.99,1.99,7,0.80"),
+    layout: {},
+    mapping: {
+      week: "Week", store: "Shop", product: "SKU", units: "Sales Volume", net_sales: "Value Sales", regular_price: "Regular Unit Price", shelf_price: "Net Sales Price",
+      promotion_days: "Promo Days", unit_cost: "Unit Cost",
+    },
   },
   {
     title: "a column for each week", head: lines("store,product,2026-06-08,2026-06-15,2026-06-22", "S1,P1,3,4,5", "S1,P2,6,7,8"),
