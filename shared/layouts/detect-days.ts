@@ -1,7 +1,7 @@
 import type { DateOrder, WeekDay } from "../contract/layouts";
 import { most, type ColumnProfile } from "./column-profile";
 import { firstDayWords, lastDayWords } from "./column-words";
-import type { Detected, LayoutWarning } from "./detected";
+import { shareOf, type Detected, type LayoutWarning } from "./detected";
 import { normalName } from "./normal-name";
 import { readDay, weekdayOf, yearLastParts } from "./read-day";
 
@@ -71,9 +71,8 @@ export function detectWeekDay(profile: ColumnProfile | undefined, order: DateOrd
   const isNamed = (words: readonly string[]) => words.some((word) => name.includes(` ${word} `));
   if (isNamed(lastDayWords)) return { value: "last", confidence: 0.95, warnings: [] };
   if (isNamed(firstDayWords)) return { value: "first", confidence: 0.95, warnings: [] };
-  const weekdays = new Set(days.map(weekdayOf));
-  const [only] = weekdays;
-  if (weekdays.size > 1) return { value: "first", confidence: 0.3, warnings: [severalWeekdays(profile.position)] };
+  const only = [sunday, monday, 2, 3, 4, 5, saturday].find((weekday) => shareOf(days, (value) => weekdayOf(value) === weekday) >= most);
+  if (only === undefined) return { value: "first", confidence: 0.3, warnings: [severalWeekdays(profile.position)] };
   if (only === saturday) return { value: "last", confidence: 0.7, warnings: [] };
   if (only === sunday) return { value: "last", confidence: 0.5, warnings: [sundays(profile.position)] };
   return { value: "first", confidence: only === monday ? 0.9 : 0.6, warnings: [] };
@@ -82,7 +81,7 @@ export function detectWeekDay(profile: ColumnProfile | undefined, order: DateOrd
 const [sunday, monday, saturday] = [0, 1, 6];
 
 const sundays = (position: number): LayoutWarning => ({
-  code: "week-day-ambiguous", message: "All weeks are given by Sundays, which are taken as their last days. Correct it if they are the first.", position,
+  code: "week-day-ambiguous", message: "Weeks are given by Sundays, which are taken as their last days. Correct it if they are the first.", position,
 });
 
 const severalWeekdays = (position: number): LayoutWarning => ({

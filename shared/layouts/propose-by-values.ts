@@ -88,8 +88,8 @@ const wholeness = (values: readonly number[]) => shareOf(values, Number.isIntege
 
 function areSale(units: readonly number[], prices: readonly number[], sales: readonly number[]): boolean {
   const rows = units.map((value, at) => ({ full: value * (prices[at] ?? Number.NaN), paid: sales[at] ?? Number.NaN })).filter(({ paid }) => paid > 0);
-  // Where all prices are 1, or all units, the numbers say nothing.
-  const differ = new Set(prices).size > 1 && new Set(units).size > 1 && rows.length >= 3;
+  // Where all prices are 1, or units and sales are the same throughout, the numbers say nothing.
+  const differ = prices.some((price) => price !== 1) && new Set(units).size > 1 && new Set(sales).size > 1 && rows.length >= 3;
   return differ && shareOf(rows, ({ full, paid }) => paid <= full * 1.02 && paid >= full * 0.3) >= 0.9;
 }
 

@@ -16,6 +16,11 @@ describe("a head", () => {
     expect(detectLayout(poisoned, "sales")).toEqual(detectLayout(head, "sales"));
   });
 
+  it("ends at byte 65,536", () => {
+    const withAccentAt = (at: number) => detectEncoding(Uint8Array.from({ length: 70_000 }, (_, index) => (index === at ? 0xe9 : 0x61))).value;
+    expect([withAccentAt(65_534), withAccentAt(65_536)]).toEqual(["windows-1252", "utf-8"]);
+  });
+
   it("may end in the middle of a row, which then counts for nothing", () => {
     for (const cut of [0, 1, 7, 15]) {
       const head = utf8(`${"x".repeat(cut)}${whole}`).subarray(0, headBytes);

@@ -139,6 +139,7 @@ const days: SampleHead[] = [
   { title: "Sundays", head: salesIn("2026-06-14", "2026-06-21"), layout: { weekDay: "last" }, mapping: ourNames, warnings: ["week-day-ambiguous"] },
   { title: "Sundays that are named as first days", head: sales(ourHeader.replace("week", "week starting"), "2026-06-14", "2026-06-21"), layout: {}, mapping: { ...ourNames, week: "week starting" } },
   { title: "days, not weeks", head: salesIn("2026-06-08", "2026-06-09", "2026-06-10"), layout: {}, mapping: ourNames, warnings: ["not-weekly"] },
+  { title: "one wrong day among weeks", head: salesIn("2026-06-01", "2026-06-08", "2026-06-15", "2026-06-22", "2026-06-30"), layout: {}, mapping: ourNames },
   { title: "one date in another order", head: salesIn("13/06/2026", "20/06/2026", "06/27/2026"), layout: { dateOrder: "dmy", weekDay: "last" }, mapping: ourNames, warnings: ["dates-mixed"] },
 ];
 
@@ -181,6 +182,24 @@ const names: SampleHead[] = [
     title: "no header: weeks, codes, GTINs, the numbers of a sale and flags",
     head: lines("2026-06-08,17,4006381333931,3,1.99,5.97,1,0", "2026-06-15,17,4006381333931,4,2.99,11.96,0,0", "2026-06-22,18,96385074,2,1.99,3.98,0,1"),
     layout: { hasHeader: false }, mapping: { week: 0, store: 1, product: 2, units: 3, regular_price: 4, net_sales: 5, feature: 6, display: 7 },
+  },
+  {
+    title: "no header and no GTINs: codes by their place, and a sale at one price",
+    head: lines("101;7001;2026-06-08;12;23,88;1,99", "101;7002;2026-06-08;9;17,91;1,99", "102;7001;2026-06-08;30;59,70;1,99"),
+    layout: { separator: ";", hasHeader: false, decimal: "," }, mapping: { store: 0, product: 1, week: 2, units: 3, net_sales: 4, regular_price: 5 },
+  },
+  {
+    title: "no header, and the price before the units",
+    head: lines("2026-06-08,S1,P1,1.99,12,23.88", "2026-06-15,S1,P1,2.49,9,22.41", "2026-06-22,S2,P1,2.99,30,89.70"),
+    layout: { hasHeader: false }, mapping: { week: 0, store: 1, product: 2, regular_price: 3, units: 4, net_sales: 5 },
+  },
+  {
+    title: "no header, and a spreadsheet's day numbers", head: lines("S1,P1,46181,12,1.99,23.88", "S1,P1,46188,9,2.49,22.41", "S2,P1,46195,30,2.99,89.70"),
+    layout: { hasHeader: false }, mapping: { store: 0, product: 1, week: 2, units: 3, regular_price: 4, net_sales: 5 }, warnings: ["serial-days"],
+  },
+  {
+    title: "no header, and words alone, of which one comes again", kind: "stores", head: lines("S1,High Street,Coast", "S2,Mill,Coast", "S3,Market,Moor"),
+    layout: { hasHeader: false }, mapping: { store: 0 }, warnings: ["column-not-found", "column-not-found"],
   },
   {
     title: "two columns of one name", head: lines("week,store,product,units,units,net_sales,regular_price", "2026-06-08,S1,P1,3,4,5.97,1.99", "2026-06-15,S1,P1,4,5,7.96,1.99"),
@@ -234,7 +253,7 @@ const names: SampleHead[] = [
 const kinds: SampleHead[] = [
   {
     title: "products with a GTIN, a tax in percent and a price", kind: "products",
-    head: lines("Artikelnummer;Bezeichnung;EAN;Marke;Warengruppe;MwSt;VK-Preis;EK", "A7;Tee;4006381333931;Halden;Heißes;7 %;1,99;0,80", "A8;Kaffee;96385074;Halden;Heißes;19 %;4,99;2,10"),
+    head: lines("EAN;Artikelnummer;Bezeichnung;Marke;Warengruppe;MwSt;VK-Preis;EK", "4006381333931;A7;Tee;Halden;Heißes;7 %;1,99;0,80", "96385074;A8;Kaffee;Halden;Heißes;19 %;4,99;2,10"),
     layout: { separator: ";", decimal: "," },
     mapping: { product: "Artikelnummer", name: "Bezeichnung", gtin: "EAN", brand: "Marke", category: "Warengruppe", tax_rate: "MwSt", regular_price: "VK-Preis", unit_cost: "EK" },
   },
