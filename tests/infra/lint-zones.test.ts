@@ -38,7 +38,7 @@ const refused = [
   { file: "shared/contract/new.ts", imported: "../engine/index", rule: "engine types only" },
   { file: "shared/calendar/new.ts", imported: "../engine/index", rule: "stands alone" },
   { file: "shared/layouts/new.ts", imported: "../calendar/week", rule: "contract only" },
-  { file: "shared/planning/new.ts", imported: "../layouts/layout", rule: "stand above" },
+  { file: "shared/planning/new.ts", imported: "../layouts/layout", rule: "Only what reads files knows layouts" },
   { file: "src/features/apples/new.ts", imported: "../pears/pear", rule: "never imports another feature" },
   { file: "src/features/apples/new.ts", imported: "../../app/routes", rule: "do not know the routes" },
   { file: "src/components/new.ts", imported: "../features/apples/apple", rule: "know no feature" },
