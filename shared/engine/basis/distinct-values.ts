@@ -16,7 +16,7 @@ export function distinctValues(values: Float64Array): DistinctValues | null {
   const table = createTable(values);
   const codes = new Int32Array(values.length);
   for (let row = 0; row < values.length; row++) {
-    const slot = findSlot(table, values[row], hashOf(table, row));
+    const slot = findSlot(table, values[row], hashOf(table.words, row));
     let code = table.slots[slot] - 1;
     if (code < 0) {
       if (table.count === table.known.length) return null;
@@ -41,12 +41,18 @@ function createTable(values: Float64Array): Table {
   };
 }
 
-/** From the bits of the row's value, but for zero, which has two patterns. */
-function hashOf({ words }: Table, row: number): number {
+/**
+ * From the bits of the row's value, but for zero, which has two patterns. Whole numbers differ in a few high bits only, so bits
+ * are shifted down before each multiplication (Appleby's finaliser of MurmurHash3).
+ */
+function hashOf(words: Uint32Array, row: number): number {
   const low = words[2 * row];
   const high = words[2 * row + 1];
   if (low === 0 && (high & 0x7fffffff) === 0) return 0;
-  return Math.imul(low ^ Math.imul(high, 0x85ebca6b), 0x9e3779b1) >>> 7;
+  let hash = low ^ high ^ (high >>> 16);
+  hash = Math.imul(hash ^ (hash >>> 16), 0x85ebca6b);
+  hash = Math.imul(hash ^ (hash >>> 13), 0xc2b2ae35);
+  return (hash ^ (hash >>> 16)) >>> 0;
 }
 
 /** The slot of a value, or the empty one where it belongs. */
@@ -60,8 +66,8 @@ function findSlot({ slots, known }: Table, value: number, hash: number): number 
 function inOrder(table: Table, codes: Int32Array): DistinctValues {
   const values = table.known.slice(0, table.count).sort();
   const position = new Int32Array(table.count);
-  const ordered: Table = { ...table, words: new Uint32Array(values.buffer, values.byteOffset, 2 * values.length) };
-  for (let k = 0; k < values.length; k++) position[table.slots[findSlot(table, values[k], hashOf(ordered, k))] - 1] = k;
+  const words = new Uint32Array(values.buffer, values.byteOffset, 2 * values.length);
+  for (let k = 0; k < values.length; k++) position[table.slots[findSlot(table, values[k], hashOf(words, k))] - 1] = k;
   const counts = new Float64Array(table.count);
   for (let row = 0; row < codes.length; row++) {
     const code = position[codes[row]];

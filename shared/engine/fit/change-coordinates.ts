@@ -12,40 +12,36 @@ export const coordinateWidth = ({ unpenalised, penalised }: TermCoordinates): nu
  */
 export function transformColumns(block: Float64Array, rows: number, to: TermCoordinates, out: Float64Array): void {
   const { transform, rawWidth } = to;
-  const width = coordinateWidth(to);
-  if (transform.form === "scaled") {
-    for (let at = 0; at < rows; at++) out[at] = block[at] * transform.factor;
-  } else if (transform.form === "without") {
+  if (transform.form === "scaled") scale(block, rows, transform.factor, out);
+  else if (transform.form === "without") {
+    let at = 0;
     for (let row = 0; row < rows; row++) {
-      let at = row * width;
-      for (let k = 0; k < rawWidth; k++) if (k !== transform.leftOut) out[at++] = block[row * rawWidth + k];
+      const from = row * rawWidth;
+      for (let k = 0; k < rawWidth; k++) if (k !== transform.leftOut) out[at++] = block[from + k];
     }
-  } else if (transform.form === "dense") {
-    for (let row = 0; row < rows; row++) {
-      rowTimes({ from: block, at: row * rawWidth, length: rawWidth }, { matrix: transform.matrix, columns: width }, out, row * width);
-    }
-  } else {
-    const { matrix, rows: blockRows, columns, count } = transform;
-    if (blockRows === 1 && columns === 1) scale(block, rows * count, matrix[0], out);
-    else {
-      for (let at = 0; at < rows * count; at++) {
-        rowTimes({ from: block, at: at * blockRows, length: blockRows }, { matrix, columns }, out, at * columns);
-      }
-    }
+  } else if (transform.form === "dense") rowsTimes(block, out, { rows, length: rawWidth, columns: coordinateWidth(to), matrix: transform.matrix });
+  else {
+    const { matrix, rows: length, columns, count } = transform;
+    if (length === 1 && columns === 1) scale(block, rows * count, matrix[0], out);
+    else rowsTimes(block, out, { rows: rows * count, length, columns, matrix });
   }
 }
 
-function rowTimes(
-  row: { from: Float64Array; at: number; length: number }, by: { matrix: Float64Array; columns: number }, out: Float64Array, to: number,
+/** Rows of `length` values times a matrix of `length` x `columns`. */
+function rowsTimes(
+  block: Float64Array, out: Float64Array, by: { rows: number; length: number; columns: number; matrix: Float64Array },
 ): void {
-  const { from, at, length } = row;
-  const { matrix, columns } = by;
-  for (let column = 0; column < columns; column++) out[to + column] = 0;
-  for (let k = 0; k < length; k++) {
-    const value = from[at + k];
-    if (value === 0) continue;
-    const start = k * columns;
-    for (let column = 0; column < columns; column++) out[to + column] += value * matrix[start + column];
+  const { rows, length, columns, matrix } = by;
+  for (let row = 0; row < rows; row++) {
+    const from = row * length;
+    const to = row * columns;
+    for (let column = 0; column < columns; column++) out[to + column] = 0;
+    for (let k = 0; k < length; k++) {
+      const value = block[from + k];
+      if (value === 0) continue;
+      const start = k * columns;
+      for (let column = 0; column < columns; column++) out[to + column] += value * matrix[start + column];
+    }
   }
 }
 
