@@ -26,5 +26,5 @@ export function coefficientTest(model: FittedModel, term: FittedTerm, residual: 
   const solved = Float64Array.from(indices, (index) => model.coefficients[index]);
   forwardSolve(factor, size, solved);
   const statistic = solved.reduce((sum, value) => sum + value * value, 0);
-  return { statistic, rank: size, pValue: simpleTail(statistic, size, residual) };
+  return { statistic, rank: size, pValue: Number.isFinite(statistic) ? simpleTail(statistic, size, residual) : NaN };
 }

@@ -81,6 +81,9 @@ const nothingToJudgeBy = "the model reproduces the response exactly, which leave
 
 function settle({ model }: Pick<TestSetting, "model">, result: TruncatedTest | null): TermTests {
   if (result === null) return { test: null, curveTest: null, reason: "the covariance of its coefficients is singular" };
+  if (!Number.isFinite(result.statistic) || !Number.isFinite(result.pValue)) {
+    return { test: null, curveTest: null, reason: "the fit ran off, and its statistic has no finite value" };
+  }
   const residual = residualDegrees(model);
   const isExact = familyRules(model.spec.family).fitting === "exact" && model.information !== null
     && model.terms.every(({ penalties }) => penalties.length === 0);
@@ -106,7 +109,8 @@ function wald({ model, information, posterior }: TestSetting, { positions }: Ter
   const solved = Float64Array.from(positions, (position) => information.coordinates[position]);
   forwardSolve(factor, count, solved);
   const statistic = solved.reduce((sum, value) => sum + value * value, 0) / model.dispersion;
-  return { statistic, rank: count, pValue: simpleTail(statistic, count, residualDegrees(model)) };
+  const pValue = Number.isFinite(statistic) ? simpleTail(statistic, count, residualDegrees(model)) : NaN;
+  return { statistic, rank: count, pValue };
 }
 
 const nothingLeft: TruncatedTest = { statistic: 0, rank: 0, pValue: 1 };

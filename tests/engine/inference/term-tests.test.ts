@@ -132,3 +132,13 @@ describe("Wald's test of a term under no penalty", () => {
     expect(terms[0].test).toMatchObject({ distribution: "chi-square", residualDegreesOfFreedom: null, referenceDegreesOfFreedom: 2, approximate: true });
   });
 });
+
+it("A test whose statistic has no finite value is none, with the reason", () => {
+  const { stores } = committedReference("groups");
+  const model = fitModel(gaussian([{ kind: "linear", column: "depth" }, { kind: "factor", column: "store" }]), stores.data);
+  const [runAway] = modelReport({ ...model, dispersion: Infinity, deviance: Infinity }).terms;
+  expect(runAway.test === null || Number.isFinite(runAway.test.pValue)).toBe(true);
+  const [none] = modelReport({ ...model, information: { ...model.information!, coordinates: model.information!.coordinates.map(() => NaN) } }).terms;
+  expect(none.test).toBeNull();
+  expect(none.testReason).toBe("the fit ran off, and its statistic has no finite value");
+});
