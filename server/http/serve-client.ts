@@ -14,10 +14,7 @@ export function serveClient(app: Express, environment: Environment): void {
     express.static(join(clientFolder, "assets"), { immutable: true, maxAge: "1y", fallthrough: false }),
   );
   app.use(express.static(clientFolder, { index: false, maxAge: 0 }));
-  app.get("/*splat", (_request, response) => {
-    response.set("Cache-Control", "no-cache").sendFile(join(clientFolder, "index.html"));
-  });
-  app.get("/", (_request, response) => {
+  app.get(["/", "/*splat"], (_request, response) => {
     response.set("Cache-Control", "no-cache").sendFile(join(clientFolder, "index.html"));
   });
 }

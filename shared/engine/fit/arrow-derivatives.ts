@@ -1,4 +1,4 @@
-import { rowProducts } from "../linalg/dense-products";
+import { rowProducts } from "../linalg/tiles";
 import type { ArrowState, ArrowSystem } from "./arrow-system";
 import { pairProducts } from "./dense-system";
 import type { LikelihoodState } from "./likelihood-state";

@@ -1,5 +1,5 @@
 import { backwardSolve, choleskyInPlace, forwardSolve, logDeterminant } from "../linalg/cholesky";
-import { subtractSquare } from "../linalg/dense-products";
+import { subtractSquare } from "../linalg/tiles";
 import { ownShareNeeded } from "../linalg/dropping-cholesky";
 import type { DroppedColumn } from "../linalg/dropping-cholesky";
 import { addPenalty, factorUnpenalised } from "./dense-system";

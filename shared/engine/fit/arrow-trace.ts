@@ -1,5 +1,5 @@
 import { backwardSolve, invertFactored } from "../linalg/cholesky";
-import { rowProducts } from "../linalg/dense-products";
+import { rowProducts } from "../linalg/tiles";
 import type { ArrowState, ArrowSystem } from "./arrow-system";
 import { traceOwn } from "./dense-system";
 import type { LikelihoodState } from "./likelihood-state";

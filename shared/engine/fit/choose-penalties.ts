@@ -134,7 +134,7 @@ function betterOf(search: PenaltySearch, plan: PenaltyPlan, options: RefineOptio
  */
 export function freedPenalties(search: PenaltySearch, plan: PenaltyPlan): Float64Array | null {
   const { logPenalties } = search.current;
-  const atLimit = plan.automatic.filter((penalty) => logPenalties[penalty] >= search.highest[penalty] - limitMargin);
+  const atLimit = plan.automatic.filter((penalty) => isLimit(search, penalty, logPenalties[penalty]));
   if (atLimit.length === 0) return null;
   const freed = logPenalties.slice();
   for (const penalty of atLimit) freed[penalty] = search.defaults[penalty];
@@ -143,3 +143,7 @@ export function freedPenalties(search: PenaltySearch, plan: PenaltyPlan): Float6
 
 /** Log units below the highest penalty from which a curve is the penalty's straight line for all purposes. */
 const limitMargin = 4;
+
+/** Whether a log penalty is as good as its limit. */
+export const isLimit = (search: PenaltySearch, penalty: number, logPenalty: number): boolean =>
+  logPenalty >= search.highest[penalty] - limitMargin;

@@ -1,5 +1,5 @@
 import type { IterativeRules } from "../family/family-rules";
-import { freedPenalties, maxSteps, planPenalties, refinePenalties, startPenalties } from "./choose-penalties";
+import { freedPenalties, isLimit, maxSteps, planPenalties, refinePenalties, startPenalties } from "./choose-penalties";
 import type { PenaltyPlan } from "./choose-penalties";
 import type { CoefficientMap } from "./coefficient-map";
 import type { Design } from "./design";
@@ -89,7 +89,7 @@ function anotherOptimum(
   refinePenalties(search, plan, { start, fellnerSchallSteps: startOf === looseStart ? 2 : 0, maxSteps, stopNear: known });
   const found = search.current.logPenalties;
   const isSame = plan.automatic.every((penalty) => {
-    const bothStraight = found[penalty] > search.highest[penalty] - 4 && known[penalty] > search.highest[penalty] - 4;
+    const bothStraight = isLimit(search, penalty, found[penalty]) && isLimit(search, penalty, known[penalty]);
     return bothStraight || Math.abs(found[penalty] - known[penalty]) < 0.25;
   });
   if (isSame) return null;

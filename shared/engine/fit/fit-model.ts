@@ -10,13 +10,12 @@ import { buildDesign } from "./design";
 import { fitExact } from "./fit-exact";
 import { fitIterative } from "./fit-iterative";
 import { fittedRows } from "./fitted-rows";
-import { fitWarnings } from "./fit-warnings";
 import { goodness } from "./goodness";
 import { groupCovariance } from "./group-covariance";
 import { checkBesideLocal, hasLocal } from "./local/check-local";
 import { fitLocalModel } from "./local/local-model";
 import { modelInformation } from "./model-information";
-import { copySpec, fittedMeans, hasFractions, namesOf } from "./model-parts";
+import { commonParts } from "./model-parts";
 import type { ModelParts } from "./model-parts";
 import { derivatives } from "./penalty-search";
 import { coefficientsAt } from "./predictor";
@@ -65,7 +64,7 @@ function iterationLimit(options: FitOptions): number {
 }
 
 function assembleModel(parts: ModelParts): FittedModel {
-  const { spec, family, rows, design, map, fit } = parts;
+  const { family, rows, design, map, fit } = parts;
   const { system, search, edf: edfs } = fit.solution;
   checkDetermined(fit.criterion, rows.count, design.terms.map(({ design: { id } }) => id));
   const state = derivatives(search, "gradient");
@@ -73,30 +72,11 @@ function assembleModel(parts: ModelParts): FittedModel {
   const measures = goodness(family, rows, fit, edf);
   const { dispersion } = measures;
   const coefficients = coefficientsAt(design, map, fit.coordinates);
-  const terms = fittedTerms(design, fit);
-  const fitted = fittedMeans(parts, coefficients, terms, dispersion);
   return {
-    format: 1,
-    spec: copySpec(spec),
-    rowCount: rows.count,
-    coefficients,
-    coefficientNames: namesOf(design),
+    ...commonParts(parts, { coefficients, terms: fittedTerms(design, fit), edf, measures }),
     covariance: mapCovariance(map, coordinateCovariance(system, state), design.size, dispersion),
     groupCovariance: groupCovariance(design, map, state, dispersion),
-    terms,
     information: modelInformation(design, fit),
-    fitted,
-    dispersion,
-    theta: fit.theta,
-    logLikelihood: measures.logLikelihood,
-    edf,
-    deviance: measures.deviance,
-    nullDeviance: measures.nullDeviance,
-    criterion: fit.criterion,
-    fractionalResponse: hasFractions(rows.response),
-    converged: fit.converged,
-    iterations: fit.iterations,
-    warnings: [...design.warnings, ...fitWarnings({ design, fit, rows, family: spec.family, fitted, isPerfect: measures.isPerfect })],
   };
 }
 

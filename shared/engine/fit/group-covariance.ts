@@ -1,5 +1,6 @@
 import { choleskyInPlace, invertFactored } from "../linalg/cholesky";
-import { rowProducts } from "../linalg/dense-products";
+import { addProduct, denseProduct } from "../linalg/dense-product";
+import { rowProducts } from "../linalg/tiles";
 import type { GroupCovariance } from "../types";
 import type { CoefficientMap } from "./coefficient-map";
 import type { Design, DesignTerm } from "./design";
@@ -48,11 +49,12 @@ export function groupCovariance(design: Design, map: CoefficientMap, state: Like
   const onCoefficients = new Float64Array(groups.count * rows * design.size);
   const own = new Float64Array((groups.count * rows * (rows + 1)) / 2);
   for (let group = 0; group < groups.count; group++) {
-    const from = { group, size: groups.size, shared: design.size };
     const linkCoordinates = arrow.link.subarray(group * groups.size * design.size, (group + 1) * groups.size * design.size);
-    const inCoefficients = multiply({ values: transform.matrix, rows, columns: groups.size }, { values: linkCoordinates, columns: design.size });
-    onCoefficients.set(inCoefficients, group * rows * design.size);
-    packOwn({ ...from, transform, inner: arrow.inner, scale }, own.subarray((group * rows * (rows + 1)) / 2));
+    addProduct(
+      { values: transform.matrix, count: rows, width: groups.size }, { values: linkCoordinates, count: groups.size, width: design.size },
+      1, onCoefficients.subarray(group * rows * design.size),
+    );
+    packOwn({ group, size: groups.size, transform, inner: arrow.inner, scale }, own.subarray((group * rows * (rows + 1)) / 2));
   }
   const link = new Float64Array(groups.count * rows * map.rows);
   rowProducts({ values: onCoefficients, count: groups.count * rows, width: design.size }, { values: inverse, count: map.rows, width: design.size }, link);
@@ -61,20 +63,6 @@ export function groupCovariance(design: Design, map: CoefficientMap, state: Like
     return Array.from({ length: step }, (_, k) => ({ first: part.rawFirst + k, step }));
   });
   return { count: groups.count, size: rows, first: places.map(({ first }) => first), step: places.map(({ step }) => step), link, own };
-}
-
-type Dense = { values: Float64Array; rows: number; columns: number };
-
-function multiply(left: Dense, right: { values: Float64Array; columns: number }): Float64Array {
-  const out = new Float64Array(left.rows * right.columns);
-  for (let row = 0; row < left.rows; row++) {
-    for (let k = 0; k < left.columns; k++) {
-      const weight = left.values[row * left.columns + k];
-      if (weight === 0) continue;
-      for (let column = 0; column < right.columns; column++) out[row * right.columns + column] += weight * right.values[k * right.columns + column];
-    }
-  }
-  return out;
 }
 
 /** Block-diagonal over the terms: coefficients of one group = matrix x its coordinates. */
@@ -118,7 +106,7 @@ function packOwn(
 ): void {
   const { group, size, transform: { matrix, rows }, inner, scale } = of;
   const block = inner.subarray(group * size * size, (group + 1) * size * size);
-  const half = multiply({ values: matrix, rows, columns: size }, { values: block, columns: size });
+  const half = denseProduct({ values: matrix, count: rows, width: size }, { values: block, count: size, width: size });
   let at = 0;
   for (let row = 0; row < rows; row++) {
     for (let column = 0; column <= row; column++) {

@@ -151,13 +151,13 @@ function addOwnPair(left: DesignTerm, right: DesignTerm, target: GroupTarget): v
   groupSquare({ rows: left.rows, width: ownWidth(left) }, { rows: right.rows, width: ownWidth(right) }, { count, weights: target.weights }, raw);
   const leftWidth = ownWidth(left);
   const columns = right.positions.length;
-  const oneGroup = (part: DesignTerm) => oneGroupOf(part);
+  const [ofLeft, ofRight] = [oneGroupOf(left), oneGroupOf(right)];
   const square = leftWidth * ownWidth(right);
   for (let group = 0; group < count; group++) {
     const block = raw.subarray(group * square, (group + 1) * square);
-    transformColumns(block, leftWidth, oneGroup(right), half);
+    transformColumns(block, leftWidth, ofRight, half);
     const result = half.subarray(leftWidth * columns);
-    transformRows(half, columns, oneGroup(left), result);
+    transformRows(half, columns, ofLeft, result);
     for (let i = 0; i < left.positions.length; i++) {
       for (let j = 0; j < columns; j++) {
         const value = result[i * columns + j];

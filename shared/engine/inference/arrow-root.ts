@@ -1,4 +1,5 @@
 import { choleskyInPlace } from "../linalg/cholesky";
+import { transposed } from "../linalg/dense-product";
 import { addScaled } from "./posterior";
 import type { Posterior } from "./posterior";
 import type { PlacedPenalty } from "./term-places";
@@ -42,17 +43,11 @@ export function arrowRoot(posterior: Posterior, basis: CoordinateBasis): Arrow |
 function sharedRoot({ covariance, size, information }: Posterior, { forwards, backwards }: CoordinateBasis): Float64Array | null {
   const whole = covariance.slice();
   for (const position of information.dropped) whole[position * size + position] = 1;
-  const turned = product(product(backwards, whole, size), transposed(backwards, size), size);
+  const turned = product(product(backwards, whole, size), transposed(backwards, size, size), size);
   if (!reversedRoot(turned, size)) return null;
   const root = product(forwards, turned, size);
   for (const position of information.dropped) root.fill(0, position * size, (position + 1) * size);
   return root;
-}
-
-function transposed(matrix: Float64Array, size: number): Float64Array {
-  const out = new Float64Array(size * size);
-  for (let row = 0; row < size; row++) for (let column = 0; column < size; column++) out[column * size + row] = matrix[row * size + column];
-  return out;
 }
 
 /** Replaces a covariance C by the upper triangular B with B B' = C: Cholesky's factor of C with its order reversed. */

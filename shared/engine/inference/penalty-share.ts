@@ -1,3 +1,4 @@
+import { denseProduct } from "../linalg/dense-product";
 import { addScaled } from "./posterior";
 import type { Posterior } from "./posterior";
 
@@ -25,13 +26,8 @@ export function sharedPenaltyShare(posterior: Posterior, { shared, grouped }: Di
 }
 
 /** Row-major left x right, all size x size. */
-export function product(left: Float64Array, right: Float64Array, size: number): Float64Array {
-  const out = new Float64Array(size * size);
-  for (let row = 0; row < size; row++) {
-    for (let k = 0; k < size; k++) addScaled(out, row * size, right, k * size, size, left[row * size + k]);
-  }
-  return out;
-}
+export const product = (left: Float64Array, right: Float64Array, size: number): Float64Array =>
+  denseProduct({ values: left, count: size, width: size }, { values: right, count: size, width: size });
 
 /**
  * Per coordinate its share of 2 tr(F) - tr(FF), F = (X'WX + S)^-1 X'WX = I - C S: the degrees of freedom that tests take

@@ -1,4 +1,4 @@
-import { squareOfLower } from "./dense-products";
+import { squareOfLower } from "./tiles";
 
 /**
  * Dense Cholesky factorisation and what follows from it, on row-major square matrices in a Float64Array.

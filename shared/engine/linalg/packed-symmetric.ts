@@ -56,3 +56,20 @@ export function sparseVariance(packed: Float64Array, indices: Int32Array, values
   }
   return Math.max(total, 0);
 }
+
+/**
+ * Moves the entries that are not zero to the front: a local regression's row has many outside its window.
+ *
+ * @param indices changed, and values with them, in the first `count` entries.
+ * @returns how many are left.
+ * @example withoutZeros(Int32Array.of(4, 7), Float64Array.of(0, 2), 2); // 1; indices 7, values 2
+ */
+export function withoutZeros(indices: Int32Array, values: Float64Array, count: number): number {
+  let used = 0;
+  for (let k = 0; k < count; k++) {
+    if (values[k] === 0) continue;
+    indices[used] = indices[k];
+    values[used++] = values[k];
+  }
+  return used;
+}

@@ -1,6 +1,7 @@
 import { basisRows, columnsOf } from "../basis/term-basis";
 import { numberColumn, rowCount } from "../basis/columns";
 import { addTransposeTimes, entriesPerRow, gatherRow } from "../linalg/sparse-rows";
+import { withoutZeros } from "../linalg/packed-symmetric";
 import type { SparseRows } from "../linalg/sparse-rows";
 import type { FittedModel, ModelData } from "../types";
 import { sparseVarianceOf } from "./model-covariance";
@@ -86,15 +87,4 @@ export function rowStandardErrors(model: FittedModel, parts: DesignRows["parts"]
     errors[row] = Math.sqrt(varianceOf(indices, values, withoutZeros(indices, values, used)));
   }
   return errors;
-}
-
-/** Moves entries that are not zero to the front: a local regression's row has many outside its window. */
-function withoutZeros(indices: Int32Array, values: Float64Array, count: number): number {
-  let used = 0;
-  for (let k = 0; k < count; k++) {
-    if (values[k] === 0) continue;
-    indices[used] = indices[k];
-    values[used++] = values[k];
-  }
-  return used;
 }

@@ -1,5 +1,4 @@
-import { addProduct } from "@shared/engine/linalg/add-product";
-import { denseProduct, transposed } from "@shared/engine/linalg/dense-product";
+import { addProduct, denseProduct, transposed } from "@shared/engine/linalg/dense-product";
 import { pivotedLu, solveLu } from "@shared/engine/linalg/pivoted-lu";
 import { describe, expect, it } from "vitest";
 import { seededNormal } from "../support/generator";

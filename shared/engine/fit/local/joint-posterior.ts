@@ -1,5 +1,5 @@
 import { denseProduct, transposed } from "../../linalg/dense-product";
-import { rowProducts } from "../../linalg/dense-products";
+import { rowProducts } from "../../linalg/tiles";
 import { solveLu } from "../../linalg/pivoted-lu";
 import type { JointSolution } from "./joint-solution";
 

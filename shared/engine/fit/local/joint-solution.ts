@@ -1,6 +1,6 @@
 import { quoted } from "../../basis/columns";
 import { EngineError } from "../../errors";
-import { addProduct } from "../../linalg/add-product";
+import { addProduct } from "../../linalg/dense-product";
 import type { PivotedLu } from "../../linalg/pivoted-lu";
 import { pivotedLu, solveLu } from "../../linalg/pivoted-lu";
 import type { Penalty } from "../penalties";

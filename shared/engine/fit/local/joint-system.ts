@@ -1,5 +1,4 @@
-import { addProduct } from "../../linalg/add-product";
-import { denseProduct } from "../../linalg/dense-product";
+import { addProduct, denseProduct } from "../../linalg/dense-product";
 import type { DroppedColumn } from "../../linalg/dropping-cholesky";
 import type { NormalEquations } from "../normal-equations";
 import { localOperator } from "./local-operator";

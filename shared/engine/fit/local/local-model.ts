@@ -2,9 +2,8 @@ import { columnsOf } from "../../basis/term-basis";
 import type { FittedModel, FittedTerm } from "../../types";
 import { applyMap, mapCovariance } from "../coefficient-map";
 import type { CoefficientMap } from "../coefficient-map";
-import { fitWarnings } from "../fit-warnings";
 import { goodness } from "../goodness";
-import { copySpec, fittedMeans, hasFractions, namesOf } from "../model-parts";
+import { commonParts } from "../model-parts";
 import type { ModelParts } from "../model-parts";
 import { centredPooled } from "./centred-pooled";
 import { weightedVariances } from "./weighted-variances";
@@ -24,7 +23,7 @@ import type { JointPosterior } from "./joint-posterior";
  * @example fitLocalModel({ spec, data, family, rows, design, map }, 200).terms[0].edf;
  */
 export function fitLocalModel(given: Omit<ModelParts, "fit">, maxIterations: number): FittedModel {
-  const { spec, family, rows, design, map } = given;
+  const { family, rows, design, map } = given;
   const fit = fitLocal(design, family, rows, { map, maxIterations });
   const parts: ModelParts<LocalFit> = { ...given, fit };
   const posterior = jointPosterior(fit.joint);
@@ -36,30 +35,11 @@ export function fitLocalModel(given: Omit<ModelParts, "fit">, maxIterations: num
   const terms = localTerms(parts, posterior);
   const perDispersion = mapCovariance(toCoefficients, covariance, unknowns.length, 1);
   const measures = goodness(family, rows, fit, 2 * edf - weightedVariances(terms, perDispersion, { data: rows.data, weights: fit.workingWeights }));
-  const { dispersion } = measures;
-  const fitted = fittedMeans(parts, coefficients, terms, dispersion);
   return {
-    format: 1,
-    spec: copySpec(spec),
-    rowCount: rows.count,
-    coefficients,
-    coefficientNames: namesOf(design),
-    covariance: perDispersion.map((value) => value * dispersion),
+    ...commonParts(parts, { coefficients, terms, edf, measures }),
+    covariance: perDispersion.map((value) => value * measures.dispersion),
     groupCovariance: null,
-    terms,
     information: null,
-    fitted,
-    dispersion,
-    theta: fit.theta,
-    logLikelihood: measures.logLikelihood,
-    edf,
-    deviance: measures.deviance,
-    nullDeviance: measures.nullDeviance,
-    criterion: fit.criterion,
-    fractionalResponse: hasFractions(rows.response),
-    converged: fit.converged,
-    iterations: fit.iterations,
-    warnings: [...design.warnings, ...fitWarnings({ design, fit, rows, family: spec.family, fitted, isPerfect: measures.isPerfect })],
   };
 }
 

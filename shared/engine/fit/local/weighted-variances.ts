@@ -1,5 +1,5 @@
 import { basisRows } from "../../basis/term-basis";
-import { sparseVariance } from "../../linalg/packed-symmetric";
+import { sparseVariance, withoutZeros } from "../../linalg/packed-symmetric";
 import { entriesPerRow, gatherRow } from "../../linalg/sparse-rows";
 import type { FittedTerm, ModelData } from "../../types";
 
@@ -25,13 +25,7 @@ export function weightedVariances(
     indices[0] = 0;
     let count = 1;
     for (const { first, rows } of parts) count = gatherRow(rows, row, first, { indices, values, count });
-    let used = 0;
-    for (let k = 0; k < count; k++) {
-      if (values[k] === 0) continue;
-      indices[used] = indices[k];
-      values[used++] = values[k];
-    }
-    total += of.weights[row] * sparseVariance(covariance, indices, values, used);
+    total += of.weights[row] * sparseVariance(covariance, indices, values, withoutZeros(indices, values, count));
   }
   return total;
 }

@@ -1,6 +1,6 @@
 import fc from "fast-check";
 import { describe, expect, it } from "vitest";
-import { rowProducts, squareOfLower, subtractSquare } from "@shared/engine/linalg/dense-products";
+import { rowProducts, squareOfLower, subtractSquare } from "@shared/engine/linalg/tiles";
 import { packLower, packedIndex, packedQuadratic, sparseVariance } from "@shared/engine/linalg/packed-symmetric";
 import { lowerPart, matrixOf, times, transposed } from "./matrices";
 import { unsigned } from "./storages";
