@@ -255,34 +255,7 @@ describe("many stores on one picture", () => {
     }),
   });
   const curves = [line("Ashgill", -3, [1.25, 1.75]), line("Yarrowby", -0.5, null)];
-
-  it("cut a curve where its store's own range ends", () => {
-    const { inside, before, after } = splitByRange(curves[0].points, [1.25, 1.75]);
-    expect(inside.map(({ x }) => x)).toEqual([1.25, 1.5, 1.75]);
-    expect(before.map(({ x }) => x)).toEqual([1, 1.25]);
-    expect(after.map(({ x }) => x)).toEqual([1.75, 2]);
-  });
-
-  it("draw what lies outside that range dashed", () => {
-    renderInPage(
-      <CurveOverlay
-        title="All stores"
-        xLabel="Price"
-        curves={curves}
-        chain={null}
-        domain={[1, 2]}
-        anchor={1.5}
-        format={String}
-        highlighted={null}
-        onHighlight={vi.fn()}
-      />,
-    );
-    const dashed = (id: string) => document.querySelectorAll(`[data-curve="${id}"] path[stroke-dasharray]`).length;
-    expect([dashed("Ashgill"), dashed("Yarrowby")]).toEqual([2, 0]);
-  });
-
-  it("name the store under the pointer and choose it when pressed", () => {
-    const onHighlight = vi.fn();
+  const renderOverlay = (onHighlight: (id: string | null) => void) =>
     renderInPage(
       <CurveOverlay
         title="All stores"
@@ -296,6 +269,23 @@ describe("many stores on one picture", () => {
         onHighlight={onHighlight}
       />,
     );
+
+  it("cut a curve where its store's own range ends", () => {
+    const { inside, before, after } = splitByRange(curves[0].points, [1.25, 1.75]);
+    expect(inside.map(({ x }) => x)).toEqual([1.25, 1.5, 1.75]);
+    expect(before.map(({ x }) => x)).toEqual([1, 1.25]);
+    expect(after.map(({ x }) => x)).toEqual([1.75, 2]);
+  });
+
+  it("draw what lies outside that range dashed", () => {
+    renderOverlay(vi.fn());
+    const dashed = (id: string) => document.querySelectorAll(`[data-curve="${id}"] path[stroke-dasharray]`).length;
+    expect([dashed("Ashgill"), dashed("Yarrowby")]).toEqual([2, 0]);
+  });
+
+  it("name the store under the pointer and choose it when pressed", () => {
+    const onHighlight = vi.fn();
+    renderOverlay(onHighlight);
     const geometry = overlayGeometry({
       width: 720,
       height: 420,

@@ -1,18 +1,9 @@
 import { fitModel, predict, termCurve, termSurface } from "@shared/engine";
-import type { ModelData, ModelSpec, TermSpec } from "@shared/engine";
+import type { ModelSpec, TermSpec } from "@shared/engine";
 import { describe, expect, it } from "vitest";
-import { gaussianSpec, salesRows } from "./support/sales-rows";
+import { gaussianSpec, rowsForEveryKind, salesRows } from "./support/sales-rows";
 
-const count = 40;
-const base = salesRows(5, count);
-const rows: ModelData = {
-  ...base,
-  week: base.price.map((_, row) => row + 1),
-  store: base.price.map((_, row) => ["north", "south", "east", "west"][row % 4]),
-  brand: base.price.map((_, row) => ["own", "rival"][row % 2]),
-  depth: base.price.map((_, row) => ((row * 7) % 10) / 20),
-  share: base.price.map((_, row) => ((row * 3) % 11) / 10),
-};
+const rows = rowsForEveryKind(40);
 const models = (...terms: TermSpec[]): ModelSpec => ({ response: "logUnits", family: "gaussian", terms });
 const price: TermSpec = { kind: "smooth", column: "price", size: 6 };
 const perStore: TermSpec = { kind: "factor-smooth", column: "price", group: "store", size: 4 };

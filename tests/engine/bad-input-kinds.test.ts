@@ -1,18 +1,10 @@
 import { fitModel } from "@shared/engine";
 import type { ModelData, ModelSpec, TermSpec } from "@shared/engine";
 import { describe, expect, it } from "vitest";
-import { salesRows } from "./support/sales-rows";
+import { rowsForEveryKind, salesRows } from "./support/sales-rows";
 
-const count = 40;
-const base = salesRows(5, count);
-const rows: ModelData = {
-  ...base,
-  week: base.price.map((_, row) => row + 1),
-  store: base.price.map((_, row) => ["north", "south", "east", "west"][row % 4]),
-  brand: base.price.map((_, row) => ["own", "rival"][row % 2]),
-  depth: base.price.map((_, row) => ((row * 7) % 10) / 20),
-  share: base.price.map((_, row) => ((row * 3) % 11) / 10),
-};
+const base = salesRows(5, 40);
+const rows = rowsForEveryKind(40);
 const with_ = (change: ModelData): ModelData => ({ ...rows, ...change });
 const at = (name: string, row: number, value: unknown): ModelData => with_({ [name]: Array.from<unknown>(rows[name]).map((old, k) => (k === row ? value : old)) as number[] });
 const models = (...terms: TermSpec[]): ModelSpec => ({ response: "logUnits", family: "gaussian", terms });

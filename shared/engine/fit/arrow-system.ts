@@ -3,6 +3,7 @@ import { subtractSquare } from "../linalg/tiles";
 import { ownShareNeeded } from "../linalg/dropping-cholesky";
 import type { DroppedColumn } from "../linalg/dropping-cholesky";
 import { addPenalty, factorUnpenalised } from "./dense-system";
+import type { SystemParts } from "./dense-system";
 import type { LikelihoodState } from "./likelihood-state";
 import type { GroupEquations, NormalEquations } from "./normal-equations";
 import type { Penalty } from "./penalties";
@@ -12,28 +13,16 @@ import { weightAt } from "./penalties";
  * The least-squares problem of a model with terms on groups. Groups meet only the shared coordinates, so its matrix is a
  * bordered block-diagonal one ("arrow"): each group is eliminated by itself, M = A - sum_g C_g'(B_g + S_g)^-1 C_g, and
  * solving, log-determinant, traces and their derivatives are linear in the number of groups.
+ * Its coordinates are the shared ones, unpenalised first; `matrix` is A, lower triangle, dropped columns the identity's.
  * Source: Golub & Van Loan (1996), section 4.2 and 3.2 (block elimination, partitioned inverse).
  */
-export type ArrowSystem = {
+export type ArrowSystem = SystemParts & {
   form: "arrow";
-  /** Shared coordinates, unpenalised first. */
-  size: number;
-  unpenalised: number;
-  /** A, row-major lower triangle; dropped columns are the identity's. */
-  matrix: Float64Array;
-  vector: Float64Array;
   groups: GroupEquations;
-  /** Diagonal of A, and mean diagonal of the groups' blocks per own coordinate. */
-  diagonal: Float64Array;
+  /** Mean diagonal of the groups' blocks per own coordinate. */
   groupDiagonal: Float64Array;
   /** Per unpenalised coordinate, what elimination must leave of its diagonal: less is rounding, as for columns that are dropped. */
   leastPivots: Float64Array;
-  total: number;
-  yardstick: number;
-  logDeterminant: number;
-  rowCount: number;
-  unpenalisedKept: number;
-  dropped: DroppedColumn[];
 };
 
 /** What elimination leaves per group, one group after the other. */

@@ -5,31 +5,35 @@ import type { LikelihoodState } from "./likelihood-state";
 import type { NormalEquations } from "./normal-equations";
 import type { Penalty } from "./penalties";
 
-/** The penalised coordinates' least-squares problem after the unpenalised ones are eliminated. */
-export type DenseSystem = {
-  form: "dense";
-  /** Penalised coordinates. */
+/** What every penalised least-squares problem has, whatever was eliminated from it before. */
+export type SystemParts = {
+  /** Coordinates that each trial of the penalties solves for. */
   size: number;
-  /** Schur complement, row-major size x size, both triangles. */
+  /** Coordinates without a penalty, and those of them that are kept (Mp). */
+  unpenalised: number;
+  unpenalisedKept: number;
+  dropped: DroppedColumn[];
+  /** Row-major size x size, and right-hand side. */
   matrix: Float64Array;
   vector: Float64Array;
-  /** Diagonal before the elimination: what is rounding in `matrix` is measured by it. */
+  /** Diagonal before any elimination: what is rounding in `matrix` is measured by it. */
   diagonal: Float64Array;
-  /** Weighted residual sum of squares of the unpenalised columns alone. */
+  /** Weighted residual sum of squares of what was eliminated alone (of nothing: z'Wz). */
   total: number;
   /** z'Wz, the yardstick for what is rounding in `total`. */
   yardstick: number;
-  /** Log-determinant of the unpenalised block. */
+  /** Log-determinant of what was eliminated. */
   logDeterminant: number;
   rowCount: number;
-  /** Unpenalised columns that are kept (Mp). */
-  unpenalisedKept: number;
-  dropped: DroppedColumn[];
+};
+
+/** The penalised coordinates' problem after the unpenalised ones are eliminated; `matrix` is the Schur complement, both triangles. */
+export type DenseSystem = SystemParts & {
+  form: "dense";
   /** Factor L of the unpenalised block, L^-1 A_0q and L^-1 b_0, for going back. */
   factor: Float64Array;
   cross: Float64Array;
   solved: Float64Array;
-  unpenalised: number;
 };
 
 /**

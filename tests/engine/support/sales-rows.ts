@@ -25,3 +25,16 @@ export const gaussianSpec: ModelSpec = {
 };
 
 export const quasiPoissonSpec: ModelSpec = { ...gaussianSpec, response: "units", family: "quasi-poisson" };
+
+/** The same with weeks, stores, brands, depths and shares: columns for every kind of term and family. */
+export function rowsForEveryKind(count: number): ModelData {
+  const base = salesRows(5, count);
+  return {
+    ...base,
+    week: base.price.map((_, row) => row + 1),
+    store: base.price.map((_, row) => ["north", "south", "east", "west"][row % 4]),
+    brand: base.price.map((_, row) => ["own", "rival"][row % 2]),
+    depth: base.price.map((_, row) => ((row * 7) % 10) / 20),
+    share: base.price.map((_, row) => ((row * 3) % 11) / 10),
+  };
+}
