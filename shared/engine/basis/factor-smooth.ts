@@ -26,7 +26,7 @@ export const factorSmooth: BasisKind<FactorSmoothTerm, FactorSmoothBasis> = {
     return {
       basis: { kind: "factor-smooth", ...learnt.grid, group: term.group, levels, toCoefficients: partsOf(learnt.grid, learnt.rows, learnt.x) },
       rows: splinesPerLevel(learnt.rows, index, levels.length),
-      seen: { ...learnt.seen, byLevel: seenPerLevel(numberColumn(data, term.column, role), index, levels.length) },
+      seen: { ...learnt.seen, byLevel: seenPerLevel(numberColumn(data, term.column, role), index, levels.length, learnt.distinct) },
       observedRange: learnt.observedRange,
       warnings: learnt.warnings,
     };

@@ -20,7 +20,7 @@ export const levelledSmooth: BasisKind<ScaledSmoothTerm, LevelledSmoothBasis> = 
     const { levels, index } = learnLevels(data, term.by, byRole);
     const rows = splinesPerLevel(learnt.rows, index, levels.length);
     const basis: LevelledSmoothBasis = { kind: "levelled-smooth", ...learnt.grid, by: term.by, levels, centring: levelMeans(rows, index, levels.length) };
-    const seen = { ...learnt.seen, byLevel: seenPerLevel(numberColumn(data, term.column, role), index, levels.length) };
+    const seen = { ...learnt.seen, byLevel: seenPerLevel(numberColumn(data, term.column, role), index, levels.length, learnt.distinct) };
     return { basis, rows, seen, observedRange: learnt.observedRange, warnings: learnt.warnings };
   },
   rows: (basis, data) => perLevel(basis, gridRows(basis, data, role), data),

@@ -15,12 +15,16 @@ export function learnLevels(data: ModelData, column: string, role: string): { le
   const codes = new Map<string | number, number>();
   const met: string[] = [];
   const index = new Int32Array(raw.length);
+  // Rows mostly come store by store and product by product: the level before is asked first.
+  let before: unknown = met;
+  let code = 0;
   for (let row = 0; row < raw.length; row++) {
     const value = raw[row];
-    let code = codes.get(value);
-    if (code === undefined) {
-      code = met.push(levelName(value, { column, role, row })) - 1;
-      codes.set(value, code);
+    if (value !== before) {
+      before = value;
+      const known = codes.get(value);
+      code = known ?? met.push(levelName(value, { column, role, row })) - 1;
+      if (known === undefined) codes.set(value, code);
     }
     index[row] = code;
   }

@@ -8,8 +8,7 @@ import type { DistinctValues } from "./distinct-values";
  * @param values length n. Not changed.
  * @example seenNumbers(Float64Array.of(2, 1, 2)); // values 1, 2; counts 1, 2
  */
-export function seenNumbers(values: Float64Array): { values: Float64Array; counts: Float64Array } {
-  const found = distinctValues(values);
+export function seenNumbers(values: Float64Array, found = distinctValues(values)): { values: Float64Array; counts: Float64Array } {
   return found === null ? seenBySorting(values) : { values: found.values, counts: found.counts };
 }
 
@@ -42,17 +41,19 @@ export function seenLevels(levels: readonly string[], index: Int32Array): SeenVa
  * Distinct values of a column within each level, and how many rows have each. O(n log n).
  *
  * @param index per row, the position of its level, below `count`.
+ * @param found the column's distinct values, where they are known already.
  * @example seenPerLevel(Float64Array.of(2, 1, 2), Int32Array.of(0, 1, 0), 2)[0]; // values 2; counts 2
  */
-export function seenPerLevel(values: Float64Array, index: Int32Array, count: number): { values: Float64Array; counts: Float64Array }[] {
-  const found = distinctValues(values);
+export function seenPerLevel(
+  values: Float64Array, index: Int32Array, count: number, found = distinctValues(values),
+): { values: Float64Array; counts: Float64Array }[] {
   if (found !== null && found.values.length * count <= mostCells) return fromTable(found, index, count);
   const lengths = new Int32Array(count);
   for (let row = 0; row < index.length; row++) lengths[index[row]]++;
   const perLevel = Array.from(lengths, (length) => new Float64Array(length));
   const used = new Int32Array(count);
   for (let row = 0; row < index.length; row++) perLevel[index[row]][used[index[row]]++] = values[row];
-  return perLevel.map(seenNumbers);
+  return perLevel.map((own) => seenNumbers(own));
 }
 
 /** Levels times distinct values up to which a table of their counts is made. */

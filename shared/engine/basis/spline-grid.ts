@@ -2,6 +2,8 @@ import type { SplineRows } from "../linalg/sparse-rows";
 import type { ModelData, ModelWarning } from "../types";
 import { covariate, numberColumn } from "./columns";
 import { checkDistinct, checkSize, fewValuesWarning } from "./curve-checks";
+import { distinctValues } from "./distinct-values";
+import type { DistinctValues } from "./distinct-values";
 import { rangeOf } from "./ranges";
 import { seenNumbers } from "./seen-values";
 import { splineRows, splineSlopeRows } from "./uniform-spline";
@@ -15,6 +17,8 @@ export type LearntGrid = {
   rows: SplineRows;
   x: Float64Array;
   seen: { values: Float64Array; counts: Float64Array };
+  /** With each row's code; null where there are too many to tell. */
+  distinct: DistinctValues | null;
   observedRange: [number, number];
   warnings: ModelWarning[];
 };
@@ -37,14 +41,16 @@ export function learnGrid(
   const size = checkSize(from.size, from.id);
   const x = covariate(data, from, from.role);
   const isLog = from.log === true;
-  const seen = seenNumbers(isLog ? numberColumn(data, from.column, from.role) : x);
+  const own = isLog ? numberColumn(data, from.column, from.role) : x;
+  const distinct = distinctValues(own);
+  const seen = seenNumbers(own, distinct);
   checkDistinct(seen.values, from.column, from.id);
   const observedRange = rangeOf(seen.values);
   const [smallest, largest] = isLog ? [Math.log(observedRange[0]), Math.log(observedRange[1])] : observedRange;
   const margin = widening * (largest - smallest);
   const grid: SplineGrid = { column: from.column, log: isLog, size, lower: smallest - margin, upper: largest + margin };
   return {
-    grid, x, seen, observedRange,
+    grid, x, seen, distinct, observedRange,
     rows: splineRows(x, intervalsOf(grid)),
     warnings: fewValuesWarning(seen.values.length, size, from.id),
   };
