@@ -1,5 +1,5 @@
 import { listProducts } from "@shared/contract/catalogue";
-import type { ExtractKind } from "@shared/contract/extracts";
+import type { ExtractKind } from "@shared/contract/extract-kinds";
 import { mkdtemp, rm } from "node:fs/promises";
 import { tmpdir } from "node:os";
 import { join } from "node:path";

@@ -1,6 +1,5 @@
-import {
-  getExtract, listExtractIssues, listExtracts, loadExtract, uploadExtract, type Extract, type ExtractKind,
-} from "@shared/contract/extracts";
+import { type ExtractKind } from "@shared/contract/extract-kinds";
+import { getExtract, listExtractIssues, listExtracts, loadExtract, uploadExtract, type Extract } from "@shared/contract/extracts";
 import { createHash } from "node:crypto";
 import { readFile } from "node:fs/promises";
 import { basename } from "node:path";

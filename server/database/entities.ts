@@ -4,14 +4,15 @@ import {
 } from "../features/catalogue";
 import { ChainEntity } from "../features/chain";
 import { ModelEntity, ModelFitEntity } from "../features/drivers";
-import { ExtractEntity, ExtractIssueEntity } from "../features/extracts";
+import { ExtractEntity, ExtractIssueEntity, SavedLayoutEntity, StoreWeekEntity } from "../features/extracts";
 import { JobEntity } from "../features/jobs";
 import { ScenarioEntity } from "../features/scenarios";
+import { SentNoticeEntity } from "../features/notices";
 import { OutboxMessageEntity } from "../mail/outbox.entity";
 
 /** Every mapped table; sales rows are not among them: they move in sets, by SQL. */
 export const entities = [
   ChainEntity, PersonEntity, AccessTokenEntity, AuditEntryEntity, JobEntity, OutboxMessageEntity,
   CategoryEntity, StoreEntity, ProductEntity, ProductTermsEntity, ProductFundingEntity, ListingEntity, EventEntity, TemperatureEntity,
-  ExtractEntity, ExtractIssueEntity, ModelEntity, ModelFitEntity, ScenarioEntity,
+  ExtractEntity, ExtractIssueEntity, SavedLayoutEntity, StoreWeekEntity, ModelEntity, ModelFitEntity, ScenarioEntity, SentNoticeEntity,
 ];

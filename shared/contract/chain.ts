@@ -17,6 +17,11 @@ export const chainSchema = z.object({
   intervalLevel: z.number().min(0.5).max(0.999),
   /** Largest upload that is accepted, in bytes. */
   uploadLimitBytes: z.number().int().positive(),
+  /** A load that changes a week's units, or leaves out rows it had, by more than this share must be confirmed in so many words. */
+  secondLookShare: z.number().min(0).max(1),
+  /** By when last week's sales are expected, where the chain is: day of the week, 0 Sunday to 6 Saturday, and full hour. */
+  salesDueDay: z.number().int().min(0).max(6),
+  salesDueHour: z.number().int().min(0).max(23),
 });
 export type Chain = z.infer<typeof chainSchema>;
 

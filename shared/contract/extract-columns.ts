@@ -1,4 +1,4 @@
-import type { ExtractKind } from "./extracts";
+import type { ExtractKind } from "./extract-kinds";
 
 /** A column of our own CSV. */
 export type ExtractColumn = {

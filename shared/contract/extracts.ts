@@ -1,10 +1,8 @@
 import { z } from "zod";
 import { idParams, idSchema, pageOf, pageQuery, personReferenceSchema, timestampSchema, weekSchema } from "./common";
 import { defineEndpoint } from "./endpoint";
+import { extractKindSchema } from "./extract-kinds";
 import { acceptedSchema } from "./jobs";
-
-export const extractKindSchema = z.enum(["sales", "stores", "products", "events", "temperatures"]);
-export type ExtractKind = z.infer<typeof extractKindSchema>;
 
 /**
  * received -> checking -> checked | unusable; checked -> loading -> loaded -> withdrawn.
@@ -32,6 +30,14 @@ export const extractSchema = z.object({
   withdrawnAt: timestampSchema.nullable(),
   /** The job that works on it now, or worked on it last. */
   jobId: idSchema.nullable(),
+  /**
+   * How the file is read. "own": it is in our own form; "saved": by a layout saved for its source; "chosen": as a person
+   * set it for this file; "proposed": as we worked it out ourselves, which a person must confirm before it is loaded.
+   * Null until the first check.
+   */
+  layout: z.object({
+    origin: z.enum(["own", "saved", "chosen", "proposed"]), id: idSchema.nullable(), name: z.string().nullable(), isConfirmed: z.boolean(),
+  }).nullable(),
   /** Why the file cannot be used at all, or why the last job broke down. */
   failure: z.object({ code: z.string(), detail: z.string() }).nullable(),
   /** What the reader may do next. */
@@ -62,14 +68,19 @@ export const issueCountSchema = z.object({
 });
 export type IssueCount = z.infer<typeof issueCountSchema>;
 
-/** Rows that loading adds, changes or leaves as they are; `weeks` has those of sales, and is empty for other kinds. */
+/**
+ * Rows that loading adds, changes or leaves as they are; `weeks` has those of sales, and is empty for other kinds. Missing
+ * are rows of the file's weeks and of the stores it names that are loaded already and that the file does not have: they stay.
+ */
 export const extractChangesSchema = z.object({
-  totals: z.object({ new: z.number(), changed: z.number(), same: z.number() }),
+  totals: z.object({ new: z.number(), changed: z.number(), same: z.number(), missing: z.number() }),
   weeks: z.array(z.object({
-    week: weekSchema, new: z.number(), changed: z.number(), same: z.number(),
+    week: weekSchema, new: z.number(), changed: z.number(), same: z.number(), missing: z.number(),
     /** Units of the file's rows as they stand in the database, and as the file has them. */
     unitsBefore: z.number(), unitsAfter: z.number(),
   })),
+  /** Why the load must be confirmed in so many words, by the chain's threshold; empty where it need not be. */
+  secondLook: z.array(z.string()),
 });
 export type ExtractChanges = z.infer<typeof extractChangesSchema>;
 
@@ -120,7 +131,10 @@ export const checkExtract = defineEndpoint({
 });
 export const loadExtract = defineEndpoint({
   method: "POST", path: "/api/extracts/:id/load", summary: "Load all usable rows, or none", permission: "extracts:write",
-  params: idParams, response: acceptedSchema, status: 202,
+  params: idParams,
+  /** `secondLook`: the caller has looked at what is unusual about it; needed where the changes ask for it. */
+  body: z.object({ secondLook: z.boolean().default(false) }).optional(),
+  response: acceptedSchema, status: 202,
 });
 export const withdrawExtract = defineEndpoint({
   method: "POST", path: "/api/extracts/:id/withdraw", summary: "Put back what was there before this extract was loaded", permission: "extracts:write",

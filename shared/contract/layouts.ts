@@ -1,6 +1,6 @@
 import { z } from "zod";
 import { extractColumns } from "./extract-columns";
-import { extractKindSchema, type ExtractKind } from "./extracts";
+import { extractKindSchema, type ExtractKind } from "./extract-kinds";
 
 export const encodingSchema = z.enum(["utf-8", "utf-16le", "utf-16be", "windows-1252"]);
 export type Encoding = z.infer<typeof encodingSchema>;

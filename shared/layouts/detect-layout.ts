@@ -1,5 +1,5 @@
 import { extractColumns } from "../contract/extract-columns";
-import type { ExtractKind } from "../contract/extracts";
+import type { ExtractKind } from "../contract/extract-kinds";
 import { mappableColumns, type ColumnSource, type Layout } from "../contract/layouts";
 import { most, profileColumns, type ColumnProfile } from "./column-profile";
 import { defaultWords } from "./default-words";

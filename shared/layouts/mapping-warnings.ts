@@ -1,5 +1,5 @@
 import { extractColumns } from "../contract/extract-columns";
-import type { ExtractKind } from "../contract/extracts";
+import type { ExtractKind } from "../contract/extract-kinds";
 import { most, type ColumnProfile } from "./column-profile";
 import type { LayoutWarning } from "./detected";
 import { normalName } from "./normal-name";

@@ -26,6 +26,7 @@ const extract: Extract = {
   loadedAt: null,
   withdrawnAt: null,
   jobId: null,
+  layout: null,
   failure: null,
   may: { check: true, load: true, withdraw: false },
 };

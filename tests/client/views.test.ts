@@ -49,7 +49,7 @@ describe("extracts", () => {
   });
 
   it("say what a load does in a sentence", () => {
-    const changes = (totals: { new: number; changed: number; same: number }) => ({ totals, weeks: [] });
+    const changes = (totals: { new: number; changed: number; same: number }) => ({ totals: { ...totals, missing: 0 }, weeks: [], secondLook: [] });
     expect(changesSentence(changes({ new: 1248, changed: 1, same: 0 }), false)).toBe("1,248 new rows, 1 row changed.");
     expect(changesSentence(changes({ new: 0, changed: 0, same: 0 }), false)).toBe("Loading it would change nothing.");
   });

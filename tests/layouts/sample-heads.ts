@@ -1,4 +1,4 @@
-import type { ExtractKind } from "@shared/contract/extracts";
+import type { ExtractKind } from "@shared/contract/extract-kinds";
 import type { Layout } from "@shared/contract/layouts";
 import { bytesIn } from "./bytes-in";
 

@@ -1,7 +1,8 @@
 import type { Express } from "express";
 import { Readable } from "node:stream";
 import request from "supertest";
-import type { Extract, ExtractKind } from "@shared/contract/extracts";
+import type { ExtractKind } from "@shared/contract/extract-kinds";
+import type { Extract } from "@shared/contract/extracts";
 import { ensureChain } from "../../server/features/chain";
 import { checkExtract, loadExtract, receiveExtract } from "../../server/features/extracts";
 import { hasEnded, waitForJob } from "./jobs";

@@ -1,5 +1,5 @@
 import { gzipSync } from "node:zlib";
-import type { ExtractKind } from "@shared/contract/extracts";
+import type { ExtractKind } from "@shared/contract/extract-kinds";
 import { productsFile, salesFile, salesHeader, storesFile } from "./extracts";
 
 /**

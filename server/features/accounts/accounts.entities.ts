@@ -1,5 +1,6 @@
 import { defineEntity, p, type InferEntity } from "@mikro-orm/core";
 import { randomUUID } from "node:crypto";
+import type { Notice } from "@shared/contract/notices";
 import type { Permission, Role } from "@shared/contract/permissions";
 
 export const PersonEntity = defineEntity({
@@ -17,6 +18,8 @@ export const PersonEntity = defineEntity({
     roles: p.array().$type<Role[]>(),
     /** Codes of the categories a category manager decides on; "*" is every one. */
     categories: p.array().$type<string[]>().default([]),
+    /** E-mails the person does not want; all others that concern them are sent. */
+    unwantedNotices: p.array().$type<Notice[]>().default([]),
     mustChangePassword: p.boolean().default(false),
     /** Goes up with every new password; a session made under an earlier one has ended. */
     passwordVersion: p.integer().default(1),

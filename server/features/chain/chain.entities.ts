@@ -15,6 +15,9 @@ export const ChainEntity = defineEntity({
     temperatureUnit: p.string().length(12).$type<"celsius" | "fahrenheit">(),
     intervalLevel: p.double().$type<number>().default(0.8),
     uploadLimitBytes: p.bigint("number"),
+    secondLookShare: p.double().$type<number>().default(0.25),
+    salesDueDay: p.smallint().default(1),
+    salesDueHour: p.smallint().default(12),
   },
 });
 export type ChainRow = InferEntity<typeof ChainEntity>;

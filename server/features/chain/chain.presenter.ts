@@ -4,5 +4,9 @@ import type { ChainRow } from "./chain.entities";
 export function presentChain(row: ChainRow): Chain {
   const { name, currency, locale, timeZone, calendar, weekStart, temperatureUnit, intervalLevel, uploadLimitBytes } =
     row;
-  return { name, currency, locale, timeZone, calendar, weekStart, temperatureUnit, intervalLevel, uploadLimitBytes };
+  const { secondLookShare, salesDueDay, salesDueHour } = row;
+  return {
+    name, currency, locale, timeZone, calendar, weekStart, temperatureUnit, intervalLevel, uploadLimitBytes,
+    secondLookShare, salesDueDay, salesDueHour,
+  };
 }

@@ -18,6 +18,9 @@ export const defaultChain: Chain = {
   temperatureUnit: "celsius",
   intervalLevel: 0.8,
   uploadLimitBytes: 2 * 1024 ** 3,
+  secondLookShare: 0.25,
+  salesDueDay: 1,
+  salesDueHour: 12,
 };
 
 /** The chain's settings. @throws ProblemError 404 before the chain was set up. */

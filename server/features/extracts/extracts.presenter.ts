@@ -17,9 +17,15 @@ export function presentExtract(extract: Extract, caller: Pick<Caller, "permissio
     loadedAt: extract.loadedAt?.toISOString() ?? null,
     withdrawnAt: extract.withdrawnAt?.toISOString() ?? null,
     jobId: extract.jobId ?? null,
+    layout: layoutOf(extract),
     failure: extract.failure ?? null,
     may: extractRights(extract, caller),
   };
+}
+
+function layoutOf({ layoutOrigin, savedLayout, layoutConfirmed }: Extract): contract.Extract["layout"] {
+  if (layoutOrigin == null) return null;
+  return { origin: layoutOrigin, id: savedLayout?.id ?? null, name: savedLayout?.name ?? null, isConfirmed: layoutConfirmed };
 }
 
 function rowsOf({ rowsRead, rowsUsable, errorCount, warningCount }: Extract): contract.Extract["rows"] {

@@ -4,7 +4,7 @@ import type { ExtractChanges, IssueCount } from "@shared/contract/extracts";
 import { ExtractEntity, ExtractIssueEntity, type Extract, type ExtractIssue } from "./extracts.entities";
 
 export function findExtract(em: EntityManager, id: string): Promise<Extract | null> {
-  return em.findOne(ExtractEntity, { id }, { populate: ["uploadedBy"] });
+  return em.findOne(ExtractEntity, { id }, { populate: ["uploadedBy", "savedLayout"] });
 }
 
 /** The extract as it is now, its row kept from others until the transaction ends: for short transactions, or at their end. */
@@ -31,7 +31,7 @@ export function findExtracts(em: EntityManager, { after, limit }: { after?: Extr
     ],
   };
   return em.find(ExtractEntity, older ?? {}, {
-    populate: ["uploadedBy"], orderBy: { uploadedAt: "desc", id: "desc" }, limit: limit + 1,
+    populate: ["uploadedBy", "savedLayout"], orderBy: { uploadedAt: "desc", id: "desc" }, limit: limit + 1,
   });
 }
 

@@ -3,7 +3,8 @@ import { Agent, request, type ClientRequest, type IncomingMessage } from "node:h
 import { text } from "node:stream/consumers";
 import { performance } from "node:perf_hooks";
 import { pause } from "../../../infra/lib/command.mjs";
-import type { Extract, ExtractKind } from "@shared/contract/extracts";
+import type { ExtractKind } from "@shared/contract/extract-kinds";
+import type { Extract } from "@shared/contract/extracts";
 import type { Job } from "@shared/contract/jobs";
 
 type Options = { url: string; token: string; stopping: AbortSignal };

@@ -2,6 +2,7 @@ import { compareEvents, mergeEvents } from "../../catalogue";
 import { copyRow } from "../check/copy-text";
 import { dayOf } from "../check/day-columns";
 import type { KindDefinition } from "./kind";
+import { withoutWeeks } from "./without-weeks";
 
 /** Files of the chain's events, a row an occurrence. */
 export const eventsKind: KindDefinition = {
@@ -28,6 +29,6 @@ export const eventsKind: KindDefinition = {
       ]);
     };
   },
-  compare: async ({ em, table }) => ({ totals: await compareEvents(em, table), weeks: [] }),
+  compare: async ({ em, table }) => withoutWeeks(await compareEvents(em, table)),
   load: ({ em, table }) => mergeEvents(em, table),
 };

@@ -1,6 +1,7 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
 import type { ChainCalendar } from "@shared/calendar";
-import type { ExtractChanges, ExtractKind } from "@shared/contract/extracts";
+import type { ExtractKind } from "@shared/contract/extract-kinds";
+import type { ExtractChanges } from "@shared/contract/extracts";
 import type { CatalogueCodes } from "../../catalogue";
 import type { IssueLog } from "../check/issue-log";
 import type { Row } from "../check/row";

@@ -1,4 +1,4 @@
-import type { ExtractKind } from "@shared/contract/extracts";
+import type { ExtractKind } from "@shared/contract/extract-kinds";
 import { eventsKind } from "./events";
 import type { KindDefinition } from "./kind";
 import { productsKind } from "./products";

@@ -4,6 +4,7 @@ import { dayOf } from "../check/day-columns";
 import type { Column } from "../check/row";
 import { rejectContradictingProducts } from "../check/together.repository";
 import type { KindDefinition } from "./kind";
+import { withoutWeeks } from "./without-weeks";
 
 /** From this day on terms hold for which a file gives none. */
 const beginning = "1970-01-01";
@@ -56,6 +57,6 @@ export const productsKind: KindDefinition = {
     ]);
   },
   checkTogether: rejectContradictingProducts,
-  compare: async ({ em, table }) => ({ totals: await compareProducts(em, table), weeks: [] }),
+  compare: async ({ em, table }) => withoutWeeks(await compareProducts(em, table)),
   load: ({ em, table }) => mergeProducts(em, table),
 };

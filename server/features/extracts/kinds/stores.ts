@@ -2,6 +2,7 @@ import { compareStores, mergeStores } from "../../catalogue";
 import { copyRow } from "../check/copy-text";
 import { dayOf } from "../check/day-columns";
 import type { KindDefinition } from "./kind";
+import { withoutWeeks } from "./without-weeks";
 
 /** Files of stores. */
 export const storesKind: KindDefinition = {
@@ -30,6 +31,6 @@ export const storesKind: KindDefinition = {
       ]);
     };
   },
-  compare: async ({ em, table }) => ({ totals: await compareStores(em, table), weeks: [] }),
+  compare: async ({ em, table }) => withoutWeeks(await compareStores(em, table)),
   load: ({ em, table }) => mergeStores(em, table),
 };

@@ -3,6 +3,7 @@ import { copyRow } from "../check/copy-text";
 import { WeekReader } from "../check/day-columns";
 import type { Column, Row } from "../check/row";
 import type { KindDefinition } from "./kind";
+import { withoutWeeks } from "./without-weeks";
 
 const mostDegrees = 60;
 
@@ -45,6 +46,6 @@ export const temperaturesKind: KindDefinition = {
     };
   },
   weekColumn: "week",
-  compare: async ({ em, table }) => ({ totals: await compareTemperatures(em, table), weeks: [] }),
+  compare: async ({ em, table }) => withoutWeeks(await compareTemperatures(em, table)),
   load: ({ em, table }) => mergeTemperatures(em, table),
 };

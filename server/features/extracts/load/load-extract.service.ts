@@ -37,7 +37,7 @@ export async function loadExtract(services: Services, { extractId, actor, progre
     if (extract.state === "loaded") return changesOf(em, extract);
     return load({ em, services, extract, actor, step });
   });
-  return changes?.totals ?? { new: 0, changed: 0, same: 0 };
+  return changes?.totals ?? { new: 0, changed: 0, same: 0, missing: 0 };
 }
 
 type Load = { em: EntityManager; services: Services; extract: Extract; actor?: Actor; step: (done: number, message: string) => Promise<void> };

@@ -26,18 +26,19 @@ async function weeksOf({ em, table }: StagedRows): Promise<WeekRange | undefined
 /** What loading would change, by week: rows that are new, that differ from what is there, and that are the same. */
 export async function compareSales({ em, table }: StagedRows): Promise<ExtractChanges> {
   const range = await weeksOf({ em, table });
-  if (!range) return { totals: { new: 0, changed: 0, same: 0 }, weeks: [] };
+  if (!range) return { totals: { new: 0, changed: 0, same: 0, missing: 0 }, weeks: [], secondLook: [] };
   const weeks = await em.execute<ExtractChanges["weeks"]>(`
     select staged.week::text as week,
       count(*) filter (where sales.product_id is null)::int as new,
       count(*) filter (where sales.product_id is not null and ${differs})::int as changed,
       count(*) filter (where sales.product_id is not null and not ${differs})::int as same,
+      0 as missing,
       coalesce(sum(sales.units), 0)::float8 as "unitsBefore", sum(staged.units)::float8 as "unitsAfter"
     from ${table} staged
     left join weekly_sales sales on ${sameKey} and ${within(range)}
     group by staged.week order by staged.week`);
-  const total = (count: "new" | "changed" | "same") => weeks.reduce((sum, week) => sum + week[count], 0);
-  return { totals: { new: total("new"), changed: total("changed"), same: total("same") }, weeks };
+  const total = (count: "new" | "changed" | "same" | "missing") => weeks.reduce((sum, week) => sum + week[count], 0);
+  return { totals: { new: total("new"), changed: total("changed"), same: total("same"), missing: total("missing") }, weeks, secondLook: [] };
 }
 
 /**

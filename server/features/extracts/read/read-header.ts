@@ -1,5 +1,5 @@
 import { extractColumns } from "@shared/contract/extract-columns";
-import { extractKindSchema, type ExtractKind } from "@shared/contract/extracts";
+import { extractKindSchema, type ExtractKind } from "@shared/contract/extract-kinds";
 import { UnreadableFile } from "./unreadable-file";
 
 /** Where each column of ours stands in a file. */

@@ -1,6 +1,6 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
 import type { Readable } from "node:stream";
-import type { ExtractKind } from "@shared/contract/extracts";
+import type { ExtractKind } from "@shared/contract/extract-kinds";
 import type { Services } from "../../../services";
 import { audit } from "../../accounts";
 import { getChain } from "../../chain";

@@ -5,14 +5,15 @@ import { extractChangesKey } from "./extract-changes";
 import { extractQuery } from "./extract";
 import { extractIssuesKey } from "./extract-issues";
 
-const endpoints = { check: checkExtract, load: loadExtract, withdraw: withdrawExtract };
-export type ExtractAction = keyof typeof endpoints;
+const endpoints = { check: checkExtract, withdraw: withdrawExtract };
+export type ExtractAction = "check" | "load" | "withdraw";
 
 /** Starts a check, a load or a withdrawal; each goes on in the background. */
 export const useExtractAction = (id: string) => {
   const queryClient = useQueryClient();
   return useMutation({
-    mutationFn: (action: ExtractAction) => call(endpoints[action], { params: { id } }),
+    mutationFn: (action: ExtractAction) =>
+      action === "load" ? call(loadExtract, { params: { id }, body: {} }) : call(endpoints[action], { params: { id } }),
     onSettled: () => queryClient.invalidateQueries({ queryKey: extractQuery(id).queryKey }),
   });
 };

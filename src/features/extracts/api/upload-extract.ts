@@ -1,6 +1,6 @@
 import { useMutation, useQueryClient } from "@tanstack/react-query";
 import { uploadExtract } from "@shared/contract/extracts";
-import type { ExtractKind } from "@shared/contract/extracts";
+import type { ExtractKind } from "@shared/contract/extract-kinds";
 import { upload } from "@/lib/upload";
 import type { UploadOptions } from "@/lib/upload";
 import { extractQuery } from "./extract";

@@ -1,6 +1,6 @@
 import { useState } from "react";
 import { extractColumns } from "@shared/contract/extract-columns";
-import type { ExtractKind } from "@shared/contract/extracts";
+import type { ExtractKind } from "@shared/contract/extract-kinds";
 import { SegmentedControl } from "@/components/ui/segmented-control";
 import { kindNames } from "../view/extract-state";
 

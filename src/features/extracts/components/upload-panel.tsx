@@ -1,7 +1,8 @@
 import { FileUp } from "lucide-react";
 import { useId, useState } from "react";
 import type { DragEvent } from "react";
-import type { Extract, ExtractKind } from "@shared/contract/extracts";
+import type { ExtractKind } from "@shared/contract/extract-kinds";
+import type { Extract } from "@shared/contract/extracts";
 import { Button } from "@/components/ui/button";
 import { Notice } from "@/components/ui/notice";
 import { SelectField } from "@/components/ui/select-field";

@@ -1,4 +1,5 @@
-import type { Extract, ExtractKind } from "@shared/contract/extracts";
+import type { ExtractKind } from "@shared/contract/extract-kinds";
+import type { Extract } from "@shared/contract/extracts";
 import type { TagTone } from "@/components/ui/tag";
 
 type State = Extract["state"];
