@@ -1,9 +1,10 @@
 import { EngineError } from "./errors";
-import type { FittedModel } from "./types";
+import type { FittedModel, ModelBand } from "./types";
 
 /** Key under which a typed array's bytes are kept; a number JSON cannot hold exactly is kept as text under the other. */
 const arrayKey = "$float64";
 const numberKey = "$number";
+const bands: readonly unknown[] = ["pointwise", "corrected", "averaged"] satisfies ModelBand[];
 const oddNumbers: Record<string, number> = { "-0": -0, NaN: Number.NaN, Infinity, "-Infinity": -Infinity };
 
 /**
@@ -22,7 +23,8 @@ export function serialiseModel(model: FittedModel): string {
 }
 
 /**
- * The model a text of `serialiseModel` holds, the same to the last bit.
+ * The model a text of `serialiseModel` holds, the same to the last bit. Texts from before models said which band their
+ * covariance is of hold the one they were fitted with, "pointwise".
  *
  * @throws EngineError model-text-invalid for text that is no such model.
  * @example parseModel(serialiseModel(model)).coefficients; // as model.coefficients
@@ -36,7 +38,7 @@ export function parseModel(text: string): FittedModel {
     throw new EngineError("model-text-invalid", `The text is not a model: ${error instanceof Error ? error.message : String(error)}.`);
   }
   if (!isModel(parsed)) throw new EngineError("model-text-invalid", "The text is not a model of format 1.");
-  return parsed;
+  return { ...parsed, band: parsed.band ?? "pointwise" };
 }
 
 function restore(value: unknown): unknown {
@@ -46,12 +48,15 @@ function restore(value: unknown): unknown {
   return value;
 }
 
-function isModel(value: unknown): value is FittedModel {
+type StoredModel = Omit<FittedModel, "band"> & { band?: ModelBand };
+
+function isModel(value: unknown): value is StoredModel {
   if (typeof value !== "object" || value === null) return false;
   const candidate = value as Partial<FittedModel>;
-  const { coefficients, covariance, groupCovariance, terms } = candidate;
+  const { band, coefficients, covariance, groupCovariance, terms } = candidate;
   const grouped = groupCovariance == null ? 0 : groupCovariance.count * groupCovariance.size;
   return candidate.format === 1
+    && (band === undefined || bands.includes(band))
     && typeof candidate.spec === "object"
     && Array.isArray(terms)
     && Array.isArray(candidate.warnings)

@@ -40,6 +40,7 @@ export function commonParts(
     coefficients,
     coefficientNames: namesOf(design),
     terms, fitted, dispersion,
+    band: "pointwise",
     theta: fit.theta,
     logLikelihood, edf, deviance, nullDeviance,
     criterion: fit.criterion,

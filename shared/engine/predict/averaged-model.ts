@@ -8,6 +8,7 @@ import { choleskyInPlace, invertFactored } from "../linalg/cholesky";
 import type { FittedModel } from "../types";
 import { withAdded } from "./corrected-model";
 import { averageOver } from "./penalty-average";
+import { pointwiseModel } from "./pointwise-model";
 import type { PenalisedBlock } from "./penalty-average";
 
 /** Coordinates under one penalty that are turned by eigenvectors within a few milliseconds. */
@@ -25,14 +26,17 @@ const fewestCoordinates = 2;
  * Bayesian Analysis 1, 515-534, for the prior.
  *
  * @returns a model whose bands and predictions have V'; coefficients stay. Left out: penalties on eliminated groups, those of
- * one coordinate or of more than 300. The model itself where none was chosen, with local regression, and for perfect fits.
+ * one coordinate or of more than 300. Where no penalty was chosen V' is V, and the model only says so. The model itself where
+ * its covariance is averaged already, where all chosen ones are left out, with local regression, and for perfect fits.
  * Cost: O(size^2 x coordinates of a penalty) per penalty; well below a millisecond for one series.
  * @example termCurve(averagedModel(model), "price").standardError;
  */
-export function averagedModel(model: FittedModel): FittedModel {
-  if (model.information === null) return model;
-  const posterior = posteriorOf(model, withCentredLevels(model, model.information));
+export function averagedModel(given: FittedModel): FittedModel {
+  if (given.band === "averaged" || given.information === null) return given;
+  const model = pointwiseModel(given);
+  const posterior = posteriorOf(model, withCentredLevels(model, given.information));
   if (posterior === null) return model;
+  if (!posterior.penalties.some(({ isEstimated }) => isEstimated)) return withAdded(model, { band: "averaged", added: null });
   const residual = penalisedResidual(model, posterior);
   if (!(residual > 0)) return model;
   const added = new Float64Array(posterior.size * posterior.size);
@@ -45,7 +49,7 @@ export function averagedModel(model: FittedModel): FittedModel {
     addSpread(added, posterior, block, averageOver(block, { multiplier: penalty.multiplier, dispersion: model.dispersion, residual, degreesOfFreedom }));
     any = true;
   }
-  return any ? withAdded(model, added) : model;
+  return any ? withAdded(model, { band: "averaged", added }) : model;
 }
 
 const unpenalisedKept = ({ information }: Posterior): number =>

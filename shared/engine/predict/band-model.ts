@@ -3,25 +3,26 @@ import { EngineError } from "../errors";
 import type { BandKind, FittedModel } from "../types";
 import { averagedModel } from "./averaged-model";
 import { correctedModel } from "./corrected-model";
+import { pointwiseModel } from "./pointwise-model";
 
 const kinds: readonly string[] = ["pointwise", "with-mean", "corrected", "averaged"] satisfies BandKind[];
 
 /**
  * The model whose covariance a kind of band is made of; curves, differences and predictions of it have that band.
- * Coefficients stay as they are.
+ * Coefficients stay as they are, and so does all that tests and criteria are made of: `modelReport` is the same.
  *
- * @param band default "pointwise".
- * @returns the model itself for bands that take penalties as known. What it returns is for the band "pointwise" (or
- * "with-mean", where it was made for "corrected"): its error is in it already, and would be added twice.
+ * @param band default: the model's own.
+ * @returns the model itself where its covariance is of that kind already, so that nothing is ever added twice; `band` of
+ * the model says which it is. A model without chosen penalties to average over (see `averagedModel`) stays as it is.
  * @throws EngineError option-invalid for other words.
- * Cost: nothing, or that of `correctedModel` or `averagedModel`: once for many curves of one model.
+ * Cost: nothing, or that of `correctedModel`, `averagedModel` or `pointwiseModel`: once for many curves of one model.
  * @example const honest = bandModel(model, "averaged"); termCurve(honest, "price"); covarianceQuadratic(honest, gradient, gradient);
  */
-export function bandModel(model: FittedModel, band: BandKind = "pointwise"): FittedModel {
+export function bandModel(model: FittedModel, band: BandKind = model.band): FittedModel {
   if (!kinds.includes(band)) throw new EngineError("option-invalid", `band is ${JSON.stringify(band)}; it must be one of ${quoted(kinds)}.`);
-  if (band === "corrected") return correctedModel(model);
-  return band === "averaged" ? averagedModel(model) : model;
+  if (band === "averaged") return averagedModel(model);
+  return band === "corrected" ? correctedModel(model) : pointwiseModel(model);
 }
 
 /** Whether a kind of band has the error of the curve's level in it. */
-export const hasMean = (band: BandKind = "pointwise"): boolean => band === "with-mean" || band === "corrected";
+export const hasMean = (band?: BandKind): boolean => band === "with-mean" || band === "corrected";

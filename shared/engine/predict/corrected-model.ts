@@ -9,7 +9,8 @@ import type { Posterior } from "../inference/posterior";
 import { splineBasis } from "../inference/spline-basis";
 import { termPlaces } from "../inference/term-places";
 import type { PlacedPenalty } from "../inference/term-places";
-import type { FittedModel } from "../types";
+import type { FittedModel, ModelBand } from "../types";
+import { pointwiseModel } from "./pointwise-model";
 import { coefficientMatrix } from "./shared-coefficients";
 
 /** As the corrected degrees of freedom have them: bounds for curvature, and a prior precision in the second-order term. */
@@ -28,29 +29,32 @@ const mostCoordinates = 300;
  * Source: Wood, Pya & Saefken (2016), J. Am. Statist. Assoc. 111, 1548-1575, section 4.
  *
  * @returns a model whose bands and predictions have V'; of groups' coefficients the part they share with all others. The
- * model itself where no penalty was chosen, with local regression, and beyond 300 shared coordinates.
+ * model itself where its covariance is of that kind already, where no penalty was chosen, with local regression, and beyond
+ * 300 shared coordinates.
  * Cost: O(size^3 x penalties^2); about a millisecond for one series.
  * @example termCurve(correctedModel(model), "price").standardError;
  */
-export function correctedModel(model: FittedModel): FittedModel {
-  if (model.information === null || model.information.size > mostCoordinates) return model;
-  const information = withCentredLevels(model, model.information);
+export function correctedModel(given: FittedModel): FittedModel {
+  if (given.band === "corrected" || given.information === null || given.information.size > mostCoordinates) return given;
+  const model = pointwiseModel(given);
+  const information = withCentredLevels(model, given.information);
   const posterior = posteriorOf(model, information);
   if (posterior === null || !posterior.penalties.some(({ isEstimated }) => isEstimated)) return model;
   const root = arrowRoot(posterior, splineBasis(posterior, termPlaces(model, information)));
-  return root === null ? model : withAdded(model, correction(posterior, root, model.dispersion));
+  return root === null ? model : withAdded(model, { band: "corrected", added: correction(posterior, root, model.dispersion) });
 }
 
 /**
- * The model with a matrix over its shared coordinates added to its covariance.
+ * The model with a matrix over its shared coordinates added to its covariance, which then is of another band.
  *
- * @param added symmetric, row-major; null adds nothing. Neither is changed.
- * @example withAdded(model, new Float64Array(information.size ** 2)).covariance; // as before
+ * @param to.added symmetric, row-major; null adds nothing. Neither is changed.
+ * @example withAdded(model, { band: "averaged", added: new Float64Array(information.size ** 2) }).covariance; // as before
  */
-export function withAdded(model: FittedModel, added: Float64Array | null): FittedModel {
-  if (added === null) return model;
+export function withAdded(model: FittedModel, to: { band: ModelBand; added: Float64Array | null }): FittedModel {
+  const { band, added } = to;
+  if (added === null) return { ...model, band };
   const onCoefficients = coefficientMatrix(model, added);
-  return { ...model, covariance: model.covariance.map((value, at) => value + onCoefficients[at]) };
+  return { ...model, band, covariance: model.covariance.map((value, at) => value + onCoefficients[at]) };
 }
 
 function correction(posterior: Posterior, root: Arrow, dispersion: number): Float64Array | null {

@@ -29,7 +29,7 @@ const defaultLevel = 0.95;
  * curves.
  * @returns arrays of one length; `supportCount` fitted rows near each x.
  * @throws EngineError term-unknown, option-invalid, level-unknown, and as `predict` for `at`.
- * Cost: O(points x 16); other bands than the pointwise one first that of `bandModel`.
+ * Cost: O(points x 16); bands other than the model's own first that of `bandModel`.
  * @example termCurve(model, "price", { at: [1.49, 1.99], level: 0.8, derivative: true }).derivative?.estimate;
  */
 export function termCurve(model: FittedModel, termId: string, options: TermCurveOptions = {}): TermCurve {

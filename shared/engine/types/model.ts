@@ -92,6 +92,12 @@ export type WarningCode =
   | "perfect-fit"
   | "not-converged";
 
+/**
+ * What a model's covariance allows for. pointwise: the coefficients' error, penalties taken as known, as a fit leaves it.
+ * corrected, averaged: the error of chosen penalties too, as `bandModel` makes it.
+ */
+export type ModelBand = "pointwise" | "corrected" | "averaged";
+
 export type ModelWarning = { code: WarningCode; message: string; term?: string };
 
 /** A fitted model as plain data. Coefficients: the intercept first, then each term's at `terms[].first`. */
@@ -104,9 +110,11 @@ export type FittedModel = {
   coefficientNames: string[];
   /**
    * Bayesian posterior covariance of the shared coefficients (all but those of eliminated groups, which come last), packed
-   * lower triangle: (i, j <= i) at i (i + 1) / 2 + j.
+   * lower triangle: (i, j <= i) at i (i + 1) / 2 + j. `band` says what it allows for.
    */
   covariance: Float64Array;
+  /** Which band predictions and curves have: nothing that is in the covariance is added again. */
+  band: ModelBand;
   /** Covariance of the coefficients of groups, where the model has terms on groups. */
   groupCovariance: GroupCovariance | null;
   terms: FittedTerm[];

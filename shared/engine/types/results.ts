@@ -42,7 +42,7 @@ export type TermCurveOptions = {
   group?: string;
   /** Probability of the band (default 0.95). */
   level?: number;
-  /** What the band allows for (default "pointwise"). */
+  /** What the band allows for (default: what the model's covariance does, the curve's own error). */
   band?: BandKind;
   /** Also give the derivative with respect to ln x: an elasticity, for log links and price-like columns. */
   derivative?: boolean;
