@@ -10,13 +10,17 @@ import { defineEndpoint } from "./endpoint";
 export const coverageStateSchema = z.enum(["there", "thin", "restated", "withdrawn", "missing", "closed"]);
 export type CoverageState = z.infer<typeof coverageStateSchema>;
 
-/** Store by week. `cells` of a store are in the order of `weeks`; `extract` is a place in `extracts`, of the file loaded last there. */
+/**
+ * Store by week. Of a store, `states`, `rows` and `files` are in the order of `weeks`: how it stands, how many rows are loaded,
+ * and the place in `extracts` of the file loaded last there (or withdrawn); null where there is none. Three lists and not a list
+ * of cells, since 500 stores in 160 weeks are 80,000 cells.
+ */
 export const coverageSchema = z.object({
   weeks: z.array(weekSchema),
   extracts: z.array(z.object({ id: idSchema, fileName: z.string() })),
   stores: z.array(z.object({
     code: codeSchema, name: z.string(), region: z.string(),
-    cells: z.array(z.object({ state: coverageStateSchema, rows: z.number().int(), extract: z.number().int().nullable() })),
+    states: z.array(coverageStateSchema), rows: z.array(z.number().int()), files: z.array(z.number().int().nullable()),
   })),
   /** Whether a file just loaded or withdrawn is not counted in yet. */
   isBehind: z.boolean(),
