@@ -25,14 +25,20 @@ export type SavedLayout = z.infer<typeof savedLayoutSchema>;
 export const fileColumnSchema = z.object({
   name: z.string(), position: z.number().int(), samples: z.array(z.string()),
   proposed: z.string().nullable(), why: z.string(),
+  /** How sure the proposal is: 1 certain, 0.5 a guess; absent where nothing is proposed. */
+  confidence: z.number().min(0).max(1).optional(),
 });
 
-/** The first rows as they stand in the file and as a layout reads them; `values` are in the order of `columns`. */
+/**
+ * The first rows as they stand in the file and as a layout reads them: `fields` are in the order of `fileColumns`, `values` in
+ * that of `columns`. The file's columns follow from the layout's encoding, separator and header, whatever its mapping says.
+ */
 export const layoutPreviewSchema = z.object({
   fileColumns: z.array(fileColumnSchema),
   columns: z.array(z.string()),
   rows: z.array(z.object({
     line: z.number().int(),
+    fields: z.array(z.string()),
     values: z.array(z.string()),
     problems: z.array(z.object({ column: z.string(), value: z.string(), reason: z.string() })),
   })),
