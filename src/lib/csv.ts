@@ -1,11 +1,6 @@
-import Papa from "papaparse";
+import { csvText, type CsvTable } from "@shared/csv";
 
-export type CsvCell = string | number | null;
-export type CsvTable = { columns: readonly string[]; rows: readonly (readonly CsvCell[])[] };
+export type { CsvCell, CsvTable } from "@shared/csv";
 
-/**
- * A table as CSV (RFC 4180). Text that a spreadsheet would run as a formula (it begins with = + - @, tab or
- * return) gets an apostrophe in front; numbers stay numbers, so that sums still work.
- */
-export const toCsv = ({ columns, rows }: CsvTable): string =>
-  Papa.unparse({ fields: [...columns], data: rows.map((row) => [...row]) }, { escapeFormulae: true, newline: "\r\n" });
+/** A table as CSV (RFC 4180) that is safe to open in a spreadsheet. */
+export const toCsv = (table: CsvTable): string => csvText(table);

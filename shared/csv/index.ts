@@ -1,0 +1,3 @@
+export { byteOrderMark, csvLine, csvLines, csvText } from "./csv-text";
+export type { CsvCell, CsvTable } from "./csv-text";
+export { harmless, withoutGuard } from "./harmless";
