@@ -2,7 +2,7 @@ import { accountsRoutes } from "./features/accounts";
 import { catalogueRoutes } from "./features/catalogue";
 import { chainRoutes } from "./features/chain";
 import { driversRoutes } from "./features/drivers";
-import { extractsRoutes } from "./features/extracts";
+import { coverageRoutes, extractsRoutes } from "./features/extracts";
 import { jobsRoutes } from "./features/jobs";
 import { scenariosRoutes } from "./features/scenarios";
 import { storesRoutes } from "./features/stores";
@@ -10,7 +10,7 @@ import { descriptionRoute } from "./http/description-route";
 import type { Route } from "./http/route";
 
 const features: readonly Route[] = [
-  ...chainRoutes, ...accountsRoutes, ...jobsRoutes, ...catalogueRoutes, ...extractsRoutes, ...driversRoutes, ...storesRoutes, ...scenariosRoutes,
+  ...chainRoutes, ...accountsRoutes, ...jobsRoutes, ...catalogueRoutes, ...extractsRoutes, ...coverageRoutes, ...driversRoutes, ...storesRoutes, ...scenariosRoutes,
 ];
 
 /** Every route of the HTTP interface. */

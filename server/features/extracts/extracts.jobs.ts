@@ -1,6 +1,7 @@
 import { z } from "zod";
 import { defineJob, type JobDefinition } from "../../jobs/job-queue";
 import { abandonCheck, checkExtract } from "./check/check-extract.service";
+import { refreshCoverageJob } from "./coverage/coverage.jobs";
 import { abandonLoad, loadExtract } from "./load/load-extract.service";
 import { abandonWithdrawal, withdrawExtract } from "./load/withdraw-extract.service";
 
@@ -37,4 +38,4 @@ export const withdrawExtractJob = defineJob({
   onGivenUp: ({ services, payload, error }) => abandonWithdrawal(services, { ...payload, error }),
 });
 
-export const extractsJobs: readonly JobDefinition[] = [checkExtractJob, loadExtractJob, withdrawExtractJob];
+export const extractsJobs: readonly JobDefinition[] = [checkExtractJob, loadExtractJob, withdrawExtractJob, refreshCoverageJob];

@@ -6,6 +6,7 @@ import { audit } from "../../accounts";
 import { quietly, type Progress } from "../check/progress";
 import { stageRows } from "../check/stage-rows";
 import { rejectRepeatedRows } from "../check/together.repository";
+import { countInLater } from "../coverage/count-in-later";
 import type { Extract } from "../extracts.entities";
 import { changesOf, findExtract, lockCheck, lockExtract } from "../extracts.repository";
 import { kinds } from "../kinds/kinds";
@@ -58,6 +59,7 @@ async function load({ em, services, extract: { id, kind }, actor, step }: Load):
   extract.failure = null;
   const by = actor ?? { personId: extract.uploadedBy.id };
   audit(em, { ...by, action: "extract.loaded", subject: { kind: "extract", id }, detail: { fileName: extract.fileName, ...changes.totals } });
+  await countInLater(em, { services, extract });
   // The last moment at which a cancellation or the loss of the job can still undo everything.
   await step(steps, "Loaded");
   return changes;

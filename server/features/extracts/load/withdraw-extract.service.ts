@@ -3,6 +3,8 @@ import { conflict, notFound, unusable } from "../../../errors";
 import type { Services } from "../../../services";
 import { audit } from "../../accounts";
 import { quietly, type Progress } from "../check/progress";
+import { countInLater } from "../coverage/count-in-later";
+import { lockCoverage, noteBeforeWithdrawal } from "../coverage/coverage.repository";
 import type { Extract } from "../extracts.entities";
 import { findExtract, lockExtract } from "../extracts.repository";
 import type { Actor } from "./load-extract.service";
@@ -49,7 +51,10 @@ export async function withdrawExtract(
     if (loaded.state === "withdrawn") return;
     await requireWithdrawable(em, loaded);
     await progress({ done: 1, total: 2, message: "Putting back what was there before" });
-    await restoreBefore(em, { id: extractId, firstWeek: loaded.firstWeek ?? "-infinity", lastWeek: loaded.lastWeek ?? "infinity" });
+    const range = { first: loaded.firstWeek ?? "-infinity", last: loaded.lastWeek ?? "infinity" };
+    await lockCoverage(em);
+    await noteBeforeWithdrawal(em, { extractId, range });
+    await restoreBefore(em, { id: extractId, firstWeek: range.first, lastWeek: range.last });
     const extract = await lockExtract(em, extractId);
     if (!extract) throw notFound("extract");
     extract.state = "withdrawn";
@@ -57,6 +62,7 @@ export async function withdrawExtract(
     extract.failure = null;
     const by = actor ?? { personId: extract.uploadedBy.id };
     audit(em, { ...by, action: "extract.withdrawn", subject: { kind: "extract", id: extract.id }, detail: { fileName: extract.fileName } });
+    await countInLater(em, { services, extract });
     await progress({ done: 2, total: 2, message: "Withdrawn" });
   });
 }
