@@ -167,7 +167,12 @@ export type Curve = z.infer<typeof curveSchema>;
 export const getModelCurves = defineEndpoint({
   method: "GET", path: "/api/models/:id/curves", summary: "Every driver's curve of one store with its band", permission: "read",
   params: idParams, query: z.object({ store: codeSchema, level: levelSchema, points: z.coerce.number().int().min(10).max(500).default(101) }),
-  response: z.object({ store: codeSchema, level: z.number(), intercept: z.number(), curves: z.array(curveSchema) }),
+  response: z.object({
+    store: codeSchema, level: z.number(),
+    /** What bands allow for: "averaged" the coefficients and how smooth curves are, "pointwise" the coefficients alone. */
+    band: z.enum(["pointwise", "corrected", "averaged"]),
+    intercept: z.number(), curves: z.array(curveSchema),
+  }),
 });
 
 /** One store-week as the model reads it. */

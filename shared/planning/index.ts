@@ -19,6 +19,7 @@ export { priceLearning } from "./price-learning";
 export type { PriceLearning } from "./price-learning";
 export { NO_EVENT, promotionOf } from "./sales-row";
 export type { FileMechanic, Mechanic, PriceSource, Promotion, SalesRow } from "./sales-row";
+export { readFit, SHOWN_BAND, shownModel } from "./shown-model";
 export { sharedValue } from "./shared-value";
 export type { SharedValue } from "./shared-value";
 export { exposureOf, toModelData } from "./to-model-data";

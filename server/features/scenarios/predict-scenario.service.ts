@@ -1,9 +1,10 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
-import { EngineError, parseModel } from "@shared/engine";
+import { EngineError } from "@shared/engine";
 import {
   planInput,
   PlanningError,
   predictScenario,
+  readFit,
   type LeftOutCells,
   type ScenarioPrediction,
 } from "@shared/planning";
@@ -30,7 +31,7 @@ export async function predictSavedScenario(
   const model = await requireModel(em, scenario.model.id);
   const weeks = { first: scenario.firstWeek, last: scenario.lastWeek };
   const { base, fits, notes } = await planBase(em, { productId: scenario.product.id, stores, weeks, model });
-  const models = new Map(fits.map(({ store, fit }) => [store, parseModel(fit)]));
+  const models = new Map(fits.map(({ store, fit }) => [store, readFit(fit)]));
   const { leftOut, ...input } = planInput({ base, changes: cellsOf(scenario), models });
   if (input.cells.length === 0)
     throw unusable("nothing-to-predict", `No store-week of this plan can be predicted. ${notes.join(" ")}`);

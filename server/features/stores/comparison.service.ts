@@ -1,7 +1,7 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
 import { setImmediate } from "node:timers/promises";
-import { parseModel, type FittedModel } from "@shared/engine";
-import { driverOfTerm } from "@shared/planning";
+import type { FittedModel } from "@shared/engine";
+import { driverOfTerm, readFit } from "@shared/planning";
 import { hasOneCurve, requireProduct, storesThatSold, type DriverCurve, type SellingStore, type StoredFit } from "../drivers";
 import { anchorPrice } from "./anchor-price";
 import { chainCurve, type ChainCurve, type WeightedCurve } from "./chain-curve";
@@ -74,7 +74,7 @@ export async function compareStores(em: EntityManager, request: ComparisonReques
 async function learnersOf(fits: readonly StoredFit[], driver: string): Promise<Map<string, Learner>> {
   const learners = new Map<string, Learner>();
   for (const stored of fits) {
-    const model = parseModel(stored.fit);
+    const model = readFit(stored.fit);
     const curves = model.terms.filter(hasOneCurve);
     const ofDriver = curves.find((term) => driverOfTerm(term) === driver);
     learners.set(stored.store, { stored, model, term: ofDriver ?? curves.find(({ id }) => id === driver) });

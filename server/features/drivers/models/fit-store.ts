@@ -6,6 +6,7 @@ import {
   modelColumns,
   NO_EVENT,
   priceLearning,
+  shownModel,
   toModelData,
   type DefaultSpec,
   type RowCounts,
@@ -13,11 +14,11 @@ import {
   type SalesRow,
 } from "@shared/planning";
 
-/** One store's fit: the model, the weeks it was fitted to (in the order of `model.fitted`), and what can be said of it. */
+/** One store's fit: the model with the band that intervals are shown with, the weeks it was fitted to (in the order of `model.fitted`), and what can be said of it. */
 export type StoreFit = { model: FittedModel; rows: SalesRow[]; summary: FitSummary };
 
 /**
- * Fits one product in one store; pure, and a matter of milliseconds.
+ * Fits one product in one store; pure, and a matter of milliseconds. Every fit that is kept comes from here.
  *
  * @param weeks stored weeks of the product in the store; at least one.
  * @param spec null for the default specification that these weeks allow.
@@ -29,7 +30,7 @@ export function fitStore(
   const learnt = toModelData(weeks);
   const chosen =
     spec === null ? defaultSpec(describeVariation(learnt.data)) : { spec, leftOut: [], straightLines: [] };
-  const model = fitModel(chosen.spec, learnt.data);
+  const model = shownModel(fitModel(chosen.spec, learnt.data));
   return { model, rows: learnt.rows, summary: summarise({ store, weeks, learnt, chosen, model }) };
 }
 

@@ -1,7 +1,6 @@
 import { useMemo } from "react";
 import type { PlanCell as PlanChange } from "@shared/contract/scenarios";
-import { parseModel } from "@shared/engine";
-import { planInput, prepareScenario } from "@shared/planning";
+import { planInput, prepareScenario, readFit } from "@shared/planning";
 import type { LaneStore, LeftOutCells, PlanCell, ScenarioPrediction } from "@shared/planning";
 import type { PlanningContext } from "../api/planning-context";
 
@@ -23,7 +22,7 @@ type Asked = { context: PlanningContext; changes: readonly PlanChange[]; fixedCo
  * a drag changes is computed again.
  */
 export function usePrediction({ context, changes, fixedCost, level }: Asked): ScenarioFigures | null {
-  const models = useMemo(() => new Map(context.fits.map(({ store, fit }) => [store, parseModel(fit)])), [context]);
+  const models = useMemo(() => new Map(context.fits.map(({ store, fit }) => [store, readFit(fit)])), [context]);
   const still = useMemo(() => {
     const base = planInput({ base: context.base, changes: [], models });
     if (base.cells.length === 0) return null;
