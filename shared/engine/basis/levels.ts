@@ -35,10 +35,18 @@ export function learnLevels(data: ModelData, column: string, role: string): { le
   return { levels, index };
 }
 
+/** Numbers first, by size: compared with one another both ways, "10", "1a" and "9" would go round in a circle. */
 function byNumberThenText(left: string, right: string): number {
-  const difference = Number(left) - Number(right);
-  if (Number.isFinite(difference) && difference !== 0) return difference;
+  const [one, other] = [numberIn(left), numberIn(right)];
+  if (one !== null && other !== null && one !== other) return one - other;
+  if ((one === null) !== (other === null)) return one === null ? 1 : -1;
   return left < right ? -1 : Number(left > right);
+}
+
+/** The finite number that a name stands for; null for words. */
+function numberIn(name: string): number | null {
+  const value = name.trim() === "" ? Number.NaN : Number(name);
+  return Number.isFinite(value) ? value : null;
 }
 
 /**
