@@ -9,7 +9,7 @@ import { dayIn, getChain } from "../chain";
 import type { Extract, ExtractIssue } from "./extracts.entities";
 import { changesOf, findExtract, findExtracts, findIssues, findLoadedWeeks, issueCountsOf } from "./extracts.repository";
 import { standingOf } from "./loaded-weeks";
-import { readCursor, writeCursor } from "./page-cursor";
+import { readCursor, writeCursor } from "../../http/page-cursor";
 
 export type Page<Item> = { items: Item[]; nextCursor: string | null };
 type PageQuery = { cursor?: string; limit: number };

@@ -1,5 +1,5 @@
 import type { z } from "zod";
-import { unusable } from "../../errors";
+import { unusable } from "../errors";
 
 /** A cursor as text: opaque to whoever passes it back. */
 export function writeCursor(position: Record<string, string | number>): string {
