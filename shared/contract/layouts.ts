@@ -57,6 +57,8 @@ const layoutFields = z.object({
   kind: extractKindSchema,
   encoding: encodingSchema,
   separator: separatorSchema,
+  /** Lines above the columns' names (or above the first row), such as a title, which are passed over. */
+  linesAbove: z.number().int().min(0).max(50).default(0),
   hasHeader: z.boolean(),
   /** The file's columns in its order, by which it is known again; "" for each column of a file without a header. */
   theirColumns: z.array(z.string().max(200)).min(1).max(500),

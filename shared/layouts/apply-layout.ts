@@ -20,6 +20,8 @@ export type OurRecord = {
 export type LayoutReader = {
   /** Names of our columns that come from the file or are fixed; `promotion` is split and not among them. */
   columns: readonly string[];
+  /** Where each of them stands in the file; null for one that is fixed. */
+  positions: readonly (number | null)[];
   read: (fields: readonly string[]) => OurRecord;
 };
 
@@ -45,13 +47,18 @@ export function applyLayout(layout: Layout, theirColumns: readonly string[] = la
     throw new LayoutError("missing-columns", `The file lacks columns that its layout reads: ${missing.join(", ")}.`);
   }
   const cells = new Map<string, Cell>();
+  const positions = new Map<string, number | null>();
   for (const { column, source } of sources) {
     if (column === promotionColumn || "missing" in source) continue;
+    positions.set(column, "value" in source ? null : source.position);
     cells.set(column, "value" in source ? () => source.value : cellOf({ column, position: source.position, read: valueReader(column, layout, words) }));
   }
   const promotion = sources.find(({ column }) => column === promotionColumn)?.source;
   if (promotion && !("missing" in promotion)) addPromotion(cells, promotion, words);
-  return { columns: [...cells.keys()], read: recordReader([...cells]) };
+  const fromPromotion = promotion && "position" in promotion ? promotion.position : null;
+  const columns = [...cells.keys()];
+  const positionOf = (column: string) => positions.get(column) ?? (positions.has(column) ? null : fromPromotion);
+  return { columns, positions: columns.map(positionOf), read: recordReader([...cells]) };
 }
 
 function recordReader(cells: readonly [string, Cell][]): LayoutReader["read"] {

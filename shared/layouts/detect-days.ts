@@ -11,11 +11,12 @@ export const isDayColumn = ({ days, values }: ColumnProfile) => values.length > 
 /**
  * The order of day and month in a file: by days that one order does not have, over all values; else by the order in which the
  * values of a column fall on one day of the week, as first or last days of weeks do; else by dots, which no month-first
- * writing uses. What stays open is said.
+ * writing uses. What stays open is said, also where the chain's weeks make one order the likelier.
  *
+ * @param weekStart the day on which the chain's weeks begin, 0 Sunday to 6 Saturday
  * @example detectDateOrder(profileColumns([["13/06/2026"]], ["week"])).value // "dmy"
  */
-export function detectDateOrder(profiles: readonly ColumnProfile[]): Detected<DateOrder> {
+export function detectDateOrder(profiles: readonly ColumnProfile[], weekStart?: number): Detected<DateOrder> {
   const columns = profiles.filter(isDayColumn).map(({ values }) => [...new Set(values.filter((value) => yearLastParts(value)))]);
   const values = columns.flat();
   if (values.length === 0) return { value: "iso", confidence: profiles.some(isDayColumn) ? 1 : 0.5, warnings: [] };
@@ -25,7 +26,7 @@ export function detectDateOrder(profiles: readonly ColumnProfile[]): Detected<Da
     return { value, confidence: readable / values.length, warnings: readable < values.length ? [mixed(values.length - readable)] : [] };
   }
   if (values.every((value) => day(value, "dmy") === day(value, "mdy"))) return { value: "dmy", confidence: 0.5, warnings: [openOrder(values)] };
-  return byWeekday(columns) ?? bySign(values);
+  return byWeekday(columns) ?? bySign(values) ?? byWeekStart(values, weekStart);
 }
 
 const day = (value: string, order: DateOrder): string | null => {
@@ -44,14 +45,22 @@ function byWeekday(columns: readonly string[][]): Detected<DateOrder> | null {
   return null;
 }
 
-function bySign(values: readonly string[]): Detected<DateOrder> {
+function bySign(values: readonly string[]): Detected<DateOrder> | null {
   const isDotted = values.every((value) => yearLastParts(value)?.sign === ".");
-  return isDotted ? { value: "dmy", confidence: 0.9, warnings: [] } : { value: "dmy", confidence: 0.5, warnings: [openOrder(values)] };
+  return isDotted ? { value: "dmy", confidence: 0.9, warnings: [] } : null;
 }
 
-const openOrder = ([example = ""]: readonly string[]): LayoutWarning => ({
+/** The order in which the days begin or end weeks of the chain; one day can do so by chance, so it is asked about. */
+function byWeekStart(values: readonly string[], weekStart: number | undefined): Detected<DateOrder> {
+  const bounds = weekStart === undefined ? [] : [weekStart, (weekStart + 6) % 7];
+  const bound = (order: DateOrder) => values.filter((value) => bounds.includes(weekdayOf(day(value, order) ?? "1970-01-01"))).length;
+  const value = bound("mdy") > bound("dmy") ? "mdy" : "dmy";
+  return { value, confidence: 0.5, warnings: [openOrder(values, value)] };
+}
+
+const openOrder = ([example = ""]: readonly string[], order: DateOrder = "dmy"): LayoutWarning => ({
   code: "dates-ambiguous",
-  message: `No date tells whether the day or the month comes first; "${example}" is taken as ${day(example, "dmy") ?? "a day"}.`,
+  message: `No date tells whether the day or the month comes first; "${example}" is taken as ${day(example, order) ?? "a day"}.`,
 });
 
 const mixed = (count: number): LayoutWarning => ({
@@ -59,14 +68,17 @@ const mixed = (count: number): LayoutWarning => ({
 });
 
 /**
- * Whether a file gives the first or the last day of a week: by the column's name, else by the day of the week. A Sunday can be
- * either, so a warning says what is taken.
+ * Whether a file gives the first or the last day of a week: by the days on which the chain's weeks begin and end, where the
+ * values fall on one of them; else by the column's name, else by the day of the week. A Sunday can be either, so a warning
+ * says what is taken.
  *
- * @example detectWeekDay({ ...profile, name: "Week ending" }, "iso").value // "last"
+ * @example detectWeekDay({ ...profile, name: "Week ending" }, { order: "iso" }).value // "last"
  */
-export function detectWeekDay(profile: ColumnProfile | undefined, order: DateOrder): Detected<WeekDay> {
+export function detectWeekDay(profile: ColumnProfile | undefined, { order, weekStart }: { order: DateOrder; weekStart?: number }): Detected<WeekDay> {
   const days = profile?.values.map((value) => day(value, order)).filter((value) => value !== null) ?? [];
   if (!profile || days.length === 0) return { value: "first", confidence: 0.5, warnings: [] };
+  const chains = weekStart === undefined ? null : byChainsWeek(days, weekStart);
+  if (chains) return chains;
   const name = ` ${normalName(profile.name)} `;
   const isNamed = (words: readonly string[]) => words.some((word) => name.includes(` ${word} `));
   if (isNamed(lastDayWords)) return { value: "last", confidence: 0.95, warnings: [] };
@@ -76,6 +88,13 @@ export function detectWeekDay(profile: ColumnProfile | undefined, order: DateOrd
   if (only === saturday) return { value: "last", confidence: 0.7, warnings: [] };
   if (only === sunday) return { value: "last", confidence: 0.5, warnings: [sundays(profile.position)] };
   return { value: "first", confidence: only === monday ? 0.9 : 0.6, warnings: [] };
+}
+
+/** A name may say "week ending" over first days: what fits the chain's weeks is right. */
+function byChainsWeek(days: readonly string[], weekStart: number): Detected<WeekDay> | null {
+  const fallOn = (weekday: number) => shareOf(days, (value) => weekdayOf(value) === weekday) >= most;
+  if (fallOn(weekStart)) return { value: "first", confidence: 1, warnings: [] };
+  return fallOn((weekStart + 6) % 7) ? { value: "last", confidence: 1, warnings: [] } : null;
 }
 
 const [sunday, monday, saturday] = [0, 1, 6];

@@ -13,6 +13,10 @@ export type LayoutWarning = {
 /** How many bytes at a file's beginning are looked at. */
 export const headBytes = 64 * 1024;
 
+/** Of a file's columns and of their names, values and words no more is kept. */
+export const mostColumns = 500;
+export const longestName = 200;
+
 /** The share of a list for which something holds; 0 for an empty list. */
 export function shareOf<Item>(items: readonly Item[], holds: (item: Item) => boolean): number {
   return items.length === 0 ? 0 : items.filter(holds).length / items.length;

@@ -1,13 +1,16 @@
 export { applyLayout } from "./apply-layout";
 export type { FieldProblem, LayoutReader, OurRecord } from "./apply-layout";
 export { defaultWords } from "./default-words";
+export { decodeHead, detectEncoding } from "./detect-encoding";
 export { detectLayout } from "./detect-layout";
-export type { DetectedColumn, DetectedLayout, LayoutConfidence } from "./detect-layout";
+export type { DetectedColumn, DetectedLayout, DetectionOptions, LayoutConfidence } from "./detect-layout";
 export { headBytes } from "./detected";
 export type { LayoutWarning } from "./detected";
 export { isGtin } from "./gtin";
 export { LayoutError } from "./layout-error";
 export type { LayoutErrorCode } from "./layout-error";
-export { recognise } from "./recognise";
+export { missingColumns, ownLayout } from "./own-layout";
+export { readHead, recordsOf } from "./read-head";
+export { recognise, unreadableRows } from "./recognise";
 export type { Recognised } from "./recognise";
 export { decodeWindows1252 } from "./windows-1252";

@@ -22,8 +22,11 @@ export function numberReader({ decimal, thousands }: NumberFormat): NumberReader
   const apart = thousands === "." ? "\\." : thousands;
   const whole = apart ? `(?:\\d+|[1-9]\\d{0,2}(?:${apart}\\d{3})+)` : "\\d+";
   const pattern = new RegExp(`^(${whole})(?:${mark}(\\d*))?$|^${mark}(\\d+)$`);
+  const simple = decimal === "." ? /^-?\d{1,15}\.\d{1,9}$/ : /^-?\d{1,15},\d{1,9}$/;
   return (text) => {
     if (plainWhole.test(text)) return text;
+    // Nearly every number of a file is one of these two.
+    if (simple.test(text)) return decimal === "." ? text : text.replace(",", ".");
     if (text.length > longestNumber) return null;
     const { sign, digits } = withoutSign(plainSigns(text));
     const parts = pattern.exec(digits);

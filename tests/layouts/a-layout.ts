@@ -6,7 +6,7 @@ export function aLayout({ columns = ["week", "store", "units"], ...changes }: Pa
   const { hasHeader = true } = changes;
   const source = (name: string, position: number): ColumnSource => (hasHeader ? { from: "name", name } : { from: "position", position });
   return {
-    kind: "sales", encoding: "utf-8", separator: ",", hasHeader, theirColumns: columns.map((name) => (hasHeader ? name : "")),
+    kind: "sales", encoding: "utf-8", separator: ",", linesAbove: 0, hasHeader, theirColumns: columns.map((name) => (hasHeader ? name : "")),
     decimal: ".", thousands: "", dateOrder: "iso", weekDay: "first", missingMeans: "unknown", tax: "included",
     mapping: Object.fromEntries(columns.map((name, position) => [name, source(name, position)])), words: defaultWords,
     ...changes,

@@ -4,7 +4,7 @@ import { describe, expect, it } from "vitest";
 import { sampleHeads } from "./sample-heads";
 
 const usual = {
-  encoding: "utf-8", separator: ",", hasHeader: true, decimal: ".", thousands: "", dateOrder: "iso", weekDay: "first", tax: "included", missingMeans: "unknown",
+  encoding: "utf-8", separator: ",", linesAbove: 0, hasHeader: true, decimal: ".", thousands: "", dateOrder: "iso", weekDay: "first", tax: "included", missingMeans: "unknown",
 };
 
 const placeOf = (source: ColumnSource) => (source.from === "name" ? source.name : source.from === "position" ? source.position : source.value);

@@ -58,14 +58,14 @@ describe("what is detected", () => {
   it("comes with samples, reasons and how sure it is", () => {
     const text = ["Woche;Filiale;Artikelnr;Absatz;Umsatz;Farbe", ...["01", "08", "15", "22", "29"].map((day, at) => `${day}.06.2026;0${at};4711;${at + 1};${at + 1},50;rot`), "29.06.2026;07;4711;9;9,50;"];
     const { columns, confidence } = detectLayout(utf8(text.join("\n")), "sales");
-    expect(columns[1]).toEqual({ theirName: "Filiale", position: 1, samples: ["00", "01", "02", "03", "04"], proposed: "store", why: '"Filiale" is a usual name for it' });
+    expect(columns[1]).toEqual({ theirName: "Filiale", position: 1, samples: ["00", "01", "02", "03", "04"], proposed: "store", why: '"Filiale" is a usual name for it', confidence: 0.9 });
     expect(columns[5]).toEqual({ theirName: "Farbe", position: 5, samples: ["rot"], proposed: null, why: "Neither its name nor its values say what it is" });
     // Five of the six needed columns by usual names (0.9 each), one not found.
     expect(confidence).toEqual({ encoding: 1, separator: 1, header: 1, numbers: 1, dates: 1, weekDay: 0.9, mapping: 0.75 });
   });
 
   it("proposes only columns that it is told of", () => {
-    expect(Object.keys(detectLayout(utf8("week,units\n2026-06-08,3\n"), "sales", ["week"]).layout.mapping)).toEqual(["week"]);
+    expect(Object.keys(detectLayout(utf8("week,units\n2026-06-08,3\n"), "sales", { knownColumns: ["week"] }).layout.mapping)).toEqual(["week"]);
   });
 
   it("says in words what can be read in two ways", () => {

@@ -2,7 +2,7 @@ import type { ExtractKind } from "@shared/contract/extract-kinds";
 import type { Layout } from "@shared/contract/layouts";
 import { bytesIn } from "./bytes-in";
 
-type Format = Partial<Pick<Layout, "encoding" | "separator" | "hasHeader" | "decimal" | "thousands" | "dateOrder" | "weekDay" | "tax">>;
+type Format = Partial<Pick<Layout, "encoding" | "separator" | "linesAbove" | "hasHeader" | "decimal" | "thousands" | "dateOrder" | "weekDay" | "tax">>;
 
 export type SampleHead = {
   title: string;
@@ -219,7 +219,7 @@ const names: SampleHead[] = [
   },
   {
     title: "a title above the header", head: lines("Sales report", ourHeader, ...ourRows),
-    layout: {}, mapping: {}, warnings: [...Array.from({ length: 6 }, () => "column-not-found"), "header-ambiguous", "lines-above-header", "ragged-rows"],
+    layout: { linesAbove: 1 }, mapping: ourNames, warnings: ["lines-above-header"],
   },
   { title: "empty fields behind the last column", head: lines(ourHeader, ...ourRows.map((row) => `${row},,`)), layout: {}, mapping: ourNames, warnings: ["ragged-rows"] },
   {

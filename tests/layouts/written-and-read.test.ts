@@ -32,7 +32,7 @@ const samples: fc.Arbitrary<Sample> = writings.chain((writing) => {
 function layoutOf({ writing, order, names, hasHeader }: Sample): Layout {
   const { encoding, separator, decimal, thousands, dateOrder, weekDay } = writing;
   return {
-    kind: "sales", encoding, separator, hasHeader, theirColumns: order.map((_, at) => (hasHeader ? (names[at] ?? "") : "")), decimal, thousands, dateOrder, weekDay,
+    kind: "sales", encoding, separator, linesAbove: 0, hasHeader, theirColumns: order.map((_, at) => (hasHeader ? (names[at] ?? "") : "")), decimal, thousands, dateOrder, weekDay,
     mapping: Object.fromEntries(order.map((column, position) => [column, hasHeader ? { from: "name", name: names[position] ?? "" } : { from: "position", position }])),
     words: defaultWords, missingMeans: "zero", tax: "excluded",
   };

@@ -1,4 +1,5 @@
 import Papa from "papaparse";
+import type { Separator } from "@shared/contract/layouts";
 
 /** One record of a CSV file. */
 export type CsvRecord = {
@@ -14,13 +15,24 @@ export type CsvRecord = {
 const longestRecord = 1024 ** 2;
 const shownCharacters = 200;
 
+/** A first line by which spreadsheets are told the separator; it is no record. */
+const separatorLine = /^"?sep=.?"?$/i;
+const longestSeparatorLine = 16;
+
+export type RecordFormat = {
+  separator?: Separator;
+  /** Lines to pass over before the first record. */
+  linesAbove?: number;
+};
+
 /**
- * Records of a CSV text (RFC 4180, comma), a batch for each piece of text. Empty lines are passed over but counted, and
- * line ends inside quotes count as lines of the file. A stray quote costs its own line only: where a record runs over
- * several lines and does not have as many fields as the header, its first line is given up and reading goes on with the next one.
+ * Records of a CSV text (RFC 4180, with any of our separators), a batch for each piece of text. Empty lines are passed over
+ * but counted, as is a first line that names the separator, and line ends inside quotes count as lines of the file. A stray
+ * quote costs its own line only: where a record runs over several lines and does not have as many fields as the first one, its
+ * first line is given up and reading goes on with the next one.
  */
-export async function* readRecords(pieces: AsyncIterable<string>): AsyncGenerator<CsvRecord[]> {
-  const reader = new RecordReader();
+export async function* readRecords(pieces: AsyncIterable<string>, format: RecordFormat = {}): AsyncGenerator<CsvRecord[]> {
+  const reader = new RecordReader(format);
   for await (const piece of pieces) {
     const records = reader.read(piece);
     if (records.length > 0) yield records;
@@ -35,9 +47,19 @@ class RecordReader {
   #width: number | undefined;
   /** Inside a line of which more than `longestRecord` was dropped. */
   #isSkipping = false;
+  /** Lines still to be passed over. */
+  #above: number;
+  #mayNameSeparator = true;
+  readonly #separator: Separator;
+
+  constructor({ separator = ",", linesAbove = 0 }: RecordFormat) {
+    this.#separator = separator;
+    this.#above = linesAbove;
+  }
 
   read(piece: string): CsvRecord[] {
     this.#text += this.#isSkipping ? this.#afterSkippedLine(piece) : piece;
+    if (!this.#isAtRecords()) return [];
     const records = this.#take();
     while (this.#text.length > longestRecord) records.push(...this.#giveUpLine(), ...this.#take());
     return records;
@@ -46,33 +68,49 @@ class RecordReader {
   /** What is left when the file has ended, with or without a last line end. */
   end(): CsvRecord[] {
     if (this.#text !== "") this.#text += "\n";
+    if (!this.#isAtRecords()) return [];
     const records = this.#take();
     while (this.#text !== "") records.push(...this.#giveUpLine(), ...this.#take());
     return records;
   }
 
+  /** Passes over what stands above the records; false where it does not end yet. */
+  #isAtRecords(): boolean {
+    if (this.#mayNameSeparator) {
+      const end = this.#text.indexOf("\n");
+      if (end === -1 && this.#text.length <= longestSeparatorLine) return false;
+      this.#mayNameSeparator = false;
+      if (end !== -1 && separatorLine.test(this.#text.slice(0, end))) this.#passOver(end);
+    }
+    for (; this.#above > 0; this.#above--) {
+      const end = this.#text.indexOf("\n");
+      if (end === -1) return false;
+      this.#passOver(end);
+    }
+    return true;
+  }
+
+  #passOver(end: number): void {
+    this.#text = this.#text.slice(end + 1);
+    this.#line++;
+  }
+
   /** Takes every complete record off the front of the text. */
   #take(): CsvRecord[] {
     const records: CsvRecord[] = [];
-    let isDone = this.#takePlain(records);
-    while (!isDone) {
-      isDone = this.#takeUntilDoubt(records);
-      if (!isDone) records.push(...this.#giveUpLine());
-    }
+    while (!this.#takePlain(records) && !this.#takeUntilDoubt(records)) records.push(...this.#giveUpLine());
     return records;
   }
 
-  /** Most files have no quotes, and then every line is a record: they are taken at once. False where there are some. */
+  /** A line without quotes is a record: those before the first quote are taken at once. False where one is left. */
   #takePlain(records: CsvRecord[]): boolean {
-    if (this.#text.includes('"')) return false;
-    const end = this.#text.lastIndexOf("\n");
-    if (end === -1) return true;
-    const lines = this.#text.slice(0, end);
-    // Of an empty text the package makes no record, of an empty line one.
-    const rows = lines === "" ? [[""]] : Papa.parse<string[]>(lines, { delimiter: ",", newline: "\n" }).data;
-    for (const fields of rows) this.#add(fields, 1, records);
-    this.#text = this.#text.slice(end + 1);
-    return true;
+    const quote = this.#text.indexOf('"');
+    const end = this.#text.lastIndexOf("\n", quote === -1 ? Infinity : quote);
+    if (end !== -1) {
+      for (const line of this.#text.slice(0, end).split("\n")) this.#add(line.split(this.#separator), 1, records);
+      this.#text = this.#text.slice(end + 1);
+    }
+    return quote === -1;
   }
 
   #add(fields: string[], lines: number, records: CsvRecord[]): void {
@@ -90,7 +128,7 @@ class RecordReader {
     const text = this.#text.replace(/^\ufeff+/, "");
     let [start, isSure] = [0, true];
     Papa.parse<string[]>(text, {
-      delimiter: ",",
+      delimiter: this.#separator,
       newline: "\n",
       step: ({ data: fields, errors, meta: { cursor: end } }, parser) => {
         const isComplete = end > start && text.charCodeAt(end - 1) === 10 && !errors.some(({ code }) => code === "MissingQuotes");

@@ -1,3 +1,5 @@
+import { detectEncoding } from "@shared/layouts";
+
 /** Files that are taken for CSV by mistake, by how they begin (each format's own description). */
 const signatures: { what: string; begins: Buffer }[] = [
   { what: "a spreadsheet workbook or a zip archive", begins: Buffer.from("PK\x03\x04", "latin1") },
@@ -22,22 +24,34 @@ export function isGzip(head: Buffer): boolean {
   return head.subarray(0, gzipSignature.length).equals(gzipSignature);
 }
 
-/** Whether these first bytes are the byte order mark of UTF-16, in either order. */
-export function isUtf16(head: Buffer): boolean {
-  return head.length >= 2 && ((head[0] === 0xff && head[1] === 0xfe) || (head[0] === 0xfe && head[1] === 0xff));
+const byteOrderMarks = { "utf-16le": Buffer.from([0xff, 0xfe]), "utf-16be": Buffer.from([0xfe, 0xff]) };
+
+/** The order of the bytes where these can be the first of a UTF-16 text, by its mark or by where its NUL bytes stand. */
+function utf16Of(head: Buffer): keyof typeof byteOrderMarks | undefined {
+  if (head.subarray(0, 2).equals(byteOrderMarks["utf-16le"])) return "utf-16le";
+  if (head.subarray(0, 2).equals(byteOrderMarks["utf-16be"])) return "utf-16be";
+  const encoding = detectEncoding(head).value;
+  return encoding === "utf-16le" || encoding === "utf-16be" ? encoding : undefined;
 }
 
 /**
  * What a file is, told from its first bytes, when it can be no CSV text.
  *
- * @returns words that go after "This is", or undefined where it may be text (gzip and UTF-16 are left to the check).
+ * @returns words that go after "This is", or undefined where it may be text (gzip is left to the check).
  * @example whatInsteadOfText(Buffer.from("%PDF-1.7")) // "a PDF document"
  */
 export function whatInsteadOfText(head: Buffer): string | undefined {
   const known = signatures.find(({ begins }) => head.subarray(0, begins.length).equals(begins));
   if (known) return known.what;
-  if (isGzip(head) || isUtf16(head)) return undefined;
-  if (head.includes(0)) return "a binary file";
-  const controls = head.filter((byte) => byte < 0x09 || (byte > 0x0d && byte < 0x20)).length;
-  return controls > head.length / 50 ? "a binary file" : undefined;
+  if (isGzip(head)) return undefined;
+  const utf16 = utf16Of(head);
+  const codes = utf16 ? utf16Codes(head, utf16) : head;
+  if (codes.includes(0)) return "a binary file";
+  const controls = codes.filter((code) => code < 0x09 || (code > 0x0d && code < 0x20)).length;
+  return controls > codes.length / 50 ? "a binary file" : undefined;
+}
+
+function utf16Codes(head: Buffer, encoding: keyof typeof byteOrderMarks): Uint16Array {
+  const view = new DataView(head.buffer, head.byteOffset, head.length - (head.length % 2));
+  return Uint16Array.from({ length: view.byteLength / 2 }, (_, at) => view.getUint16(2 * at, encoding === "utf-16le"));
 }
