@@ -4,13 +4,14 @@ import { chainRoutes } from "./features/chain";
 import { driversRoutes } from "./features/drivers";
 import { coverageRoutes, extractsRoutes } from "./features/extracts";
 import { jobsRoutes } from "./features/jobs";
+import { noticesRoutes } from "./features/notices";
 import { scenariosRoutes } from "./features/scenarios";
 import { storesRoutes } from "./features/stores";
 import { descriptionRoute } from "./http/description-route";
 import type { Route } from "./http/route";
 
 const features: readonly Route[] = [
-  ...chainRoutes, ...accountsRoutes, ...jobsRoutes, ...catalogueRoutes, ...extractsRoutes, ...coverageRoutes, ...driversRoutes, ...storesRoutes, ...scenariosRoutes,
+  ...chainRoutes, ...accountsRoutes, ...jobsRoutes, ...catalogueRoutes, ...extractsRoutes, ...coverageRoutes, ...driversRoutes, ...storesRoutes, ...scenariosRoutes, ...noticesRoutes,
 ];
 
 /** Every route of the HTTP interface. */

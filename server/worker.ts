@@ -1,7 +1,7 @@
 import { setPriority } from "node:os";
 import { closeServices, createServices } from "./create-services";
 import { readEnvironment } from "./environment";
-import { resumeCoverage } from "./features/extracts";
+import { resumeCoverage, watchSales } from "./features/extracts";
 import { jobDefinitions } from "./job-definitions";
 
 /** The worker process: runs jobs until told to stop, then hands back what it cannot finish in seconds. */
@@ -10,6 +10,7 @@ setPriority(10);
 const services = await createServices(readEnvironment());
 await services.queue.work(jobDefinitions, services);
 await resumeCoverage(services);
+watchSales(services);
 services.logger.info("worker ready");
 
 let stopping = false;

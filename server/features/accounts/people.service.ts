@@ -45,6 +45,11 @@ export async function createPerson(em: EntityManager, person: NewPerson): Promis
   return row;
 }
 
+/** What to call a person in a letter to others. */
+export async function personName(em: EntityManager, id: string): Promise<string> {
+  return (await personById(em, id))?.name ?? "Someone";
+}
+
 /** @throws ProblemError 404 where there is no such person. */
 export async function getPerson(em: EntityManager, id: string): Promise<Person> {
   const person = await personById(em, id);

@@ -3,6 +3,7 @@ import { defineJob, type JobDefinition } from "../../jobs/job-queue";
 import { abandonCheck, checkExtract } from "./check/check-extract.service";
 import { refreshCoverageJob } from "./coverage/coverage.jobs";
 import { abandonLoad, loadExtract } from "./load/load-extract.service";
+import { missingSalesJob } from "./notices/missing-sales.jobs";
 import { abandonWithdrawal, withdrawExtract } from "./load/withdraw-extract.service";
 
 const checkPayload = z.object({ extractId: z.uuid() });
@@ -38,4 +39,4 @@ export const withdrawExtractJob = defineJob({
   onGivenUp: ({ services, payload, error }) => abandonWithdrawal(services, { ...payload, error }),
 });
 
-export const extractsJobs: readonly JobDefinition[] = [checkExtractJob, loadExtractJob, withdrawExtractJob, refreshCoverageJob];
+export const extractsJobs: readonly JobDefinition[] = [checkExtractJob, loadExtractJob, withdrawExtractJob, refreshCoverageJob, missingSalesJob];

@@ -2,6 +2,7 @@ export * from "./extracts.entities";
 export { extractsRoutes } from "./extracts.routes";
 export { extractsJobs } from "./extracts.jobs";
 export { coverageRoutes } from "./coverage/coverage.routes";
+export { watchSales } from "./notices/watch-sales";
 export { resumeCoverage } from "./coverage/count-in-later";
 export { checkExtract } from "./check/check-extract.service";
 export { loadExtract } from "./load/load-extract.service";

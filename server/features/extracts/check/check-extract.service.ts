@@ -5,6 +5,7 @@ import type { Extract } from "../extracts.entities";
 import { findExtract, lockCheck, lockExtract, removeIssues } from "../extracts.repository";
 import { kinds } from "../kinds/kinds";
 import { analyseStaging, countStaged, dropStaging } from "../load/staging.repository";
+import { noticeChecked } from "../notices/extract-notices";
 import { UnreadableFile } from "../read/unreadable-file";
 import { keepIssues, weeksStaged } from "./check.repository";
 import { quietly, type Progress } from "./progress";
@@ -89,6 +90,7 @@ async function check({ em, services, extractId, progress }: Checking): Promise<v
   extract.state = rowsUsable > 0 ? "checked" : "unusable";
   extract.failure = rowsUsable > 0 ? null : noUsableRow(rowsRead);
   extract.checkedAt = services.now();
+  await noticeChecked(em, services, extract);
 }
 
 const reading = (sizeBytes: number, progress: Progress) => ({ readBytes, rowsRead, errors }: StagingProgress) =>
@@ -109,6 +111,7 @@ async function setUnusable({ em, services, extractId, error }: Refusal): Promise
     state: "unusable", failure: { code: error.code, detail: error.message }, checkedAt: services.now(),
     rowsRead: null, rowsUsable: null, errorCount: null, warningCount: null, issueCounts: null, firstWeek: null, lastWeek: null, changes: null,
   } satisfies Partial<Extract>);
+  await noticeChecked(em, services, extract);
 }
 
 /** Puts an extract back to where it was before a check that broke down, with the reason. */

@@ -10,6 +10,7 @@ import { countInLater } from "../coverage/count-in-later";
 import type { Extract } from "../extracts.entities";
 import { changesOf, findExtract, lockCheck, lockExtract } from "../extracts.repository";
 import { kinds } from "../kinds/kinds";
+import { noticeLoaded } from "../notices/extract-notices";
 import { lockLoads } from "./load-lock.repository";
 import { analyseStaging, countStaged, dropStaging, stagingTable } from "./staging.repository";
 
@@ -60,6 +61,7 @@ async function load({ em, services, extract: { id, kind }, actor, step }: Load):
   const by = actor ?? { personId: extract.uploadedBy.id };
   audit(em, { ...by, action: "extract.loaded", subject: { kind: "extract", id }, detail: { fileName: extract.fileName, ...changes.totals } });
   await countInLater(em, { services, extract });
+  await noticeLoaded(em, services, { extract, changes, by });
   // The last moment at which a cancellation or the loss of the job can still undo everything.
   await step(steps, "Loaded");
   return changes;
