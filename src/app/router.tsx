@@ -38,6 +38,20 @@ export const createRouter = (queryClient: QueryClient) =>
               },
             },
             {
+              path: paths.coverage.path,
+              lazy: async () => {
+                const page = await import("./routes/extract-coverage");
+                return { Component: page.ExtractCoverageRoute, loader: page.loaderFor(queryClient) };
+              },
+            },
+            {
+              path: paths.layouts.path,
+              lazy: async () => {
+                const page = await import("./routes/extract-layouts");
+                return { Component: page.ExtractLayoutsRoute, loader: page.loaderFor(queryClient) };
+              },
+            },
+            {
               path: paths.extract.path,
               lazy: async () => {
                 const page = await import("./routes/extract");

@@ -2,6 +2,7 @@ import { addressOf } from "./address";
 
 type DriversView = { product?: string; store?: string; weeks?: string };
 type StoresView = { product?: string; driver?: string; store?: string; anchor?: number };
+type CoverageView = { until?: string; weeks?: string };
 
 /** Each page's path, and the one way to build a link to it. The address holds all that a colleague needs to see the same. */
 export const paths = {
@@ -12,6 +13,8 @@ export const paths = {
   },
   password: { path: "/password", href: () => "/password" },
   extracts: { path: "/extracts", href: () => "/extracts" },
+  coverage: { path: "/extracts/coverage", href: (view: CoverageView = {}) => addressOf("/extracts/coverage", view) },
+  layouts: { path: "/extracts/layouts", href: () => "/extracts/layouts" },
   extract: { path: "/extracts/:extractId", href: (extractId: string) => `/extracts/${encodeURIComponent(extractId)}` },
   drivers: { path: "/drivers", href: (view: DriversView = {}) => addressOf("/drivers", view) },
   stores: { path: "/stores", href: (view: StoresView = {}) => addressOf("/stores", view) },

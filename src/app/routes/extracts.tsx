@@ -11,7 +11,8 @@ import { extractsQuery } from "@/features/extracts/api/list-extracts";
 import { loadedWeeksQuery } from "@/features/extracts/api/loaded-weeks";
 import { ExtractList } from "@/features/extracts/components/extract-list";
 import { LoadedWeeksLine } from "@/features/extracts/components/loaded-weeks-line";
-import { UploadPanel } from "@/features/extracts/components/upload-panel";
+import { ExtractsViews } from "@/features/extracts/components/extracts-views";
+import { UploadPanel } from "@/features/extracts/components/upload/upload-panel";
 import { useChain } from "@/lib/chain";
 import { paths } from "@/lib/paths";
 import { usePermission } from "@/lib/session";
@@ -31,11 +32,12 @@ export const ExtractsRoute = () => {
   return (
     <>
       <PageHeader title="Extracts" facts={["Files as they arrived: stores, products, weekly sales, events and temperatures"]} />
+      <ExtractsViews />
       <div className="flex flex-col gap-5">
         {mayUpload && (
           <UploadPanel
             limitBytes={limitBytes}
-            onUploaded={(extract) => void navigate(paths.extract.href(extract.id))}
+            onArrived={(extract) => void navigate(paths.extract.href(extract.id))}
           />
         )}
         <Sheet flush>

@@ -2,6 +2,7 @@ import { useQueryClient } from "@tanstack/react-query";
 import { useEffect, useMemo, useRef } from "react";
 import { Navigate, Outlet, useLocation, useNavigation } from "react-router-dom";
 import { SkipLink } from "@/components/ui/skip-link";
+import { UploadsProvider } from "@/features/extracts/api/uploads";
 import { useChain } from "@/lib/chain";
 import { ChainFormatContext, createChainFormat, neutralSettings } from "@/lib/format/chain-format";
 import { paths } from "@/lib/paths";
@@ -38,23 +39,25 @@ export const Shell = () => {
   }
   return (
     <ChainFormatContext.Provider value={format}>
-      <SkipLink target={contentId} />
-      <TopBar session={session} chainName={chain?.name} />
-      {navigation.state === "loading" && (
-        <div
-          className="fixed inset-x-0 top-0 z-50 h-0.5 animate-pulse bg-accent"
-          role="status"
-          aria-label="Loading the page"
-        />
-      )}
-      <main
-        ref={content}
-        id={contentId}
-        tabIndex={-1}
-        className="mx-auto w-full max-w-[1560px] px-4 pt-6 pb-16 sm:px-7 print:p-0"
-      >
-        <Outlet />
-      </main>
+      <UploadsProvider>
+        <SkipLink target={contentId} />
+        <TopBar session={session} chainName={chain?.name} />
+        {navigation.state === "loading" && (
+          <div
+            className="fixed inset-x-0 top-0 z-50 h-0.5 animate-pulse bg-accent"
+            role="status"
+            aria-label="Loading the page"
+          />
+        )}
+        <main
+          ref={content}
+          id={contentId}
+          tabIndex={-1}
+          className="mx-auto w-full max-w-[1560px] px-4 pt-6 pb-16 sm:px-7 print:p-0"
+        >
+          <Outlet />
+        </main>
+      </UploadsProvider>
     </ChainFormatContext.Provider>
   );
 };

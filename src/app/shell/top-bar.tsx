@@ -4,6 +4,7 @@ import { Link, NavLink, useLocation, useNavigate } from "react-router-dom";
 import type { Session } from "@shared/contract/accounts";
 import { IconButton } from "@/components/ui/icon-button";
 import { LogoMark } from "@/components/ui/logo";
+import { UploadsUnderWay } from "@/features/extracts/components/upload/uploads-under-way";
 import { PersonMenu } from "@/features/accounts/components/person-menu";
 import { classNames } from "@/lib/class-names";
 import { paths } from "@/lib/paths";
@@ -54,6 +55,7 @@ export const TopBar = ({ session, chainName }: TopBarProps) => {
           </ul>
         </nav>
         <div className="ml-auto flex min-w-0 items-center gap-3">
+          <UploadsUnderWay />
           {chainName && <span className="truncate text-muted max-sm:hidden">{chainName}</span>}
           <PersonMenu person={session.person} onChangePassword={() => void navigate(paths.password.href())} />
         </div>

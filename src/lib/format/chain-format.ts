@@ -43,6 +43,8 @@ export const createChainFormat = (settings: Settings) => {
     /** "week 26" of the week that begins on a day, by the chain's calendar. */
     week: (firstDay: string) => `week ${weekNumber(firstDay)}`,
     weekNumber,
+    /** The same with the year that the calendar counts it in. */
+    weekNumberAndYear: (firstDay: string) => weekNumberOf(calendar, firstDay),
     /** "wk 24" and the year it is counted in, for the foot of a chart. */
     weekName: (firstDay: string) => {
       const { week, year } = weekNumberOf(calendar, firstDay);

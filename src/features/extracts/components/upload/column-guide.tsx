@@ -2,7 +2,7 @@ import { useState } from "react";
 import { extractColumns } from "@shared/contract/extract-columns";
 import type { ExtractKind } from "@shared/contract/extract-kinds";
 import { SegmentedControl } from "@/components/ui/segmented-control";
-import { kindNames } from "../view/extract-state";
+import { kindNames } from "../../view/extract-state";
 
 const kinds = (Object.keys(kindNames) as ExtractKind[]).map((value) => ({ value, label: kindNames[value] }));
 

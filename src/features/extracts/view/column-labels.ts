@@ -1,0 +1,17 @@
+const labels: Record<string, string> = {
+  net_sales: "Net sales",
+  stock_out_days: "Sold-out days",
+  unit_cost: "Unit cost",
+  temperature_c: "Temperature (°C)",
+  gtin: "GTIN",
+  valid_from: "Valid from",
+  tax_rate: "Tax rate",
+  multi_buy: "Multi-buy",
+  promotion: "Promotion in one word",
+};
+
+/** A column of ours as people call it: "net_sales" is "Net sales". */
+export const columnLabel = (column: string): string => {
+  const plain = column.replaceAll("_", " ");
+  return labels[column] ?? `${plain.charAt(0).toUpperCase()}${plain.slice(1)}`;
+};
