@@ -9,11 +9,11 @@ import { salesDue } from "../../server/features/notices";
 import { jobDefinitions } from "../../server/job-definitions";
 import { OutboxMessageEntity, type OutboxMessage } from "../../server/mail";
 import { act, checkedDirectly, loadCatalogueDirectly, loaded, salesFile, startExtractsApp, type ExtractsApp } from "../support/extracts";
-import { addPerson, bearerOf, signedIn, signedInAs } from "../support/people";
+import { addPerson, bearerOf, signedIn } from "../support/people";
 import { expectProblem } from "../support/problems";
 
 let test: ExtractsApp;
-let planner: Awaited<ReturnType<typeof signedInAs>>;
+let planner: Awaited<ReturnType<typeof signedIn>>;
 
 beforeAll(async () => {
   test = await startExtractsApp({ worker: false });
