@@ -6,6 +6,7 @@ import { addRowsTimes } from "../linalg/sparse-rows";
 import type { FittedModel, ModelData } from "../types";
 import { designRows, rowStandardErrors } from "./design-rows";
 import type { DesignRows } from "./design-rows";
+import { pointwiseModel } from "./pointwise-model";
 import { residuals } from "./residuals";
 
 /** One value per row of the data. */
@@ -22,10 +23,10 @@ export type Influence = {
 const leastFreedom = 1e-10;
 
 /**
- * What each row does to the fit: leverage h_i = w_i x_i' C x_i, C = (X'WX + S)^-1 with the working weights w of the last
- * working model, standardised residual r_i = (Pearson residual) / sqrt(dispersion (1 - h_i)), Cook's distance
- * r_i^2 h_i / ((1 - h_i) edf). Exact for a normal response at its penalties, first order at convergence for others. Rows of
- * weight 0 pull at nothing: leverage and distance 0.
+ * What each row does to the fit: leverage h_i = w_i x_i' C x_i, C = (X'WX + S)^-1 (whatever band the model's covariance is
+ * of) with the working weights w of the last working model, standardised residual r_i = (Pearson residual) /
+ * sqrt(dispersion (1 - h_i)), Cook's distance r_i^2 h_i / ((1 - h_i) edf). Exact for a normal response at its penalties,
+ * first order at convergence for others. Rows of weight 0 pull at nothing: leverage and distance 0.
  * Sources: Cook (1977), Technometrics 19, 15-18; McCullagh & Nelder (1989), sections 12.5 to 12.7.
  *
  * @param data the rows fitted to, with the columns of the response, the terms, offset and weights. Not changed.
@@ -51,7 +52,7 @@ export function influence(model: FittedModel, data: ModelData): Influence {
   const design = designRows(model, data);
   const weights = workingWeights(model, data, design);
   const { dispersion, edf } = model;
-  const leverage = rowStandardErrors(model, design.parts, design.count).map((error, row) => Math.min(1, (weights[row] * error * error) / dispersion));
+  const leverage = rowStandardErrors(pointwiseModel(model), design.parts, design.count).map((error, row) => Math.min(1, (weights[row] * error * error) / dispersion));
   const standardisedResidual = pearson.map((value, row) => value / Math.sqrt(dispersion * Math.max(1 - leverage[row], leastFreedom)));
   const cooksDistance = standardisedResidual.map((value, row) => (value * value * leverage[row]) / (Math.max(1 - leverage[row], leastFreedom) * edf));
   return { leverage, standardisedResidual, cooksDistance };
