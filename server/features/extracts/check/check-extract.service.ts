@@ -66,13 +66,13 @@ async function check({ em, services, extractId, progress }: Checking): Promise<v
   const { kind, storageKey, sizeBytes } = await requireExtract(em, extractId);
   const definition = kinds[kind];
   await removeIssues(em, extractId);
-  const { table, rowsRead, log } = await stageRows({
+  const { table, rowsRead, log, notes } = await stageRows({
     em, services, extract: { id: extractId, kind, storageKey }, progress: reading(sizeBytes, progress),
   });
   await progress({ done: sizeBytes, total: sizeBytes, message: `Rows read: ${count.format(rowsRead)}. Comparing them` });
   await keepIssues(em, { extractId, issues: log.kept });
   await analyseStaging(em, table);
-  const together = { em, table, extractId, log, keep: true };
+  const together = { em, table, extractId, log, notes, keep: true };
   await rejectRepeatedRows({ ...together, definition });
   await definition.checkTogether?.(together);
   const weeks = definition.weekColumn ? await weeksStaged(em, { table, column: definition.weekColumn }) : null;
@@ -87,6 +87,7 @@ async function check({ em, services, extractId, progress }: Checking): Promise<v
   extract.firstWeek = weeks?.first ?? null;
   extract.lastWeek = weeks?.last ?? null;
   extract.changes = changes;
+  extract.unknownCodes = notes.unknownCodes();
   extract.state = rowsUsable > 0 ? "checked" : "unusable";
   extract.failure = rowsUsable > 0 ? null : noUsableRow(rowsRead);
   extract.checkedAt = services.now();
@@ -110,6 +111,7 @@ async function setUnusable({ em, services, extractId, error }: Refusal): Promise
   Object.assign(extract, {
     state: "unusable", failure: { code: error.code, detail: error.message }, checkedAt: services.now(),
     rowsRead: null, rowsUsable: null, errorCount: null, warningCount: null, issueCounts: null, firstWeek: null, lastWeek: null, changes: null,
+    unknownCodes: null,
   } satisfies Partial<Extract>);
   await noticeChecked(em, services, extract);
 }

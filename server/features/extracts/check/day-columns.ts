@@ -1,4 +1,4 @@
-import { addDays, CalendarError, isDay, parseWeek, type ChainCalendar, type Day } from "@shared/calendar";
+import { addDays, CalendarError, isDay, lastDayOfWeek, parseWeek, type ChainCalendar, type Day } from "@shared/calendar";
 import type { Column } from "./row";
 import type { RuleName } from "./rules";
 
@@ -10,12 +10,18 @@ const mostReadings = 10_000;
 /** Reads weeks as the chain writes them; a file repeats few weeks many times, so each text is read once. */
 export class WeekReader {
   readonly #calendar: ChainCalendar;
+  readonly #today: Day;
   readonly #latest: Day;
+  /** Weeks that began on this day or before have ended. */
+  readonly #endedFrom: Day;
   readonly #readings = new Map<string, WeekReading>();
 
-  constructor(calendar: ChainCalendar, now: Date) {
+  /** @param today as it is where the chain is. */
+  constructor(calendar: ChainCalendar, today: Day) {
     this.#calendar = calendar;
-    this.#latest = addDays(now.toISOString().slice(0, 10), 366);
+    this.#today = today;
+    this.#latest = addDays(today, 366);
+    this.#endedFrom = addDays(today, -7);
   }
 
   /** The first day of the week that stands in a column; null, and reported, where there is none. */
@@ -24,6 +30,16 @@ export class WeekReader {
     if (text === "") return column.report("missing-value");
     const reading = this.#readings.get(text) ?? this.#understand(text);
     return "week" in reading ? reading.week : column.report(reading.rule, { reason: reading.reason });
+  }
+
+  /** The same, for what has happened: a week that is still to come is an error, and one that is not over is warned about. */
+  readPast(column: Column): Day | null {
+    const week = this.read(column);
+    if (week === null || week <= this.#endedFrom) return week;
+    const more = { reason: `This week begins on ${week} and ends on ${lastDayOfWeek(week)}; today is ${this.#today}` };
+    if (week > this.#today) return column.report("week-in-future", more);
+    column.report("week-not-over", more);
+    return week;
   }
 
   #understand(text: string): WeekReading {

@@ -36,6 +36,9 @@ export const rules = {
   "unknown-store": error("There is no store with this code", "Load the store with a stores file first, or correct the code. Then check again."),
   "unknown-product": error("There is no product with this code or GTIN", "Load the product with a products file first, or correct the code. Then check again."),
   "ambiguous-product": error("Several products have this GTIN", "Give the chain's own code of the product."),
+  "week-in-future": error("The week has not begun yet", "Give weeks that have begun; a plan belongs into a scenario."),
+  "week-not-over": warning("The week is not over yet", "Load it again once it has ended: until then its units are too low."),
+  "missing-weeks": warning("There are rows before and after, but none for these weeks", "Nothing to do where nothing was sold and the source leaves such rows out; otherwise get the rows and load them."),
   "unknown-region": warning("No store is in this region", "Check the region's name against the stores."),
   "store-or-region": error("A temperature is for a region or for a store", "Fill in one of the two."),
   "bad-gtin": error("The value is not a GTIN", "Give its 8, 12, 13 or 14 digits; spreadsheets like to write them as 2.0E+12."),
@@ -44,10 +47,18 @@ export const rules = {
   "sales-without-units": error("There are net sales, but no units", atTheSource),
   "negative-net-sales": error("Units were sold, but net sales are negative", atTheSource),
   "units-without-sales": warning("Units were sold, but net sales are 0: no price was paid", "Nothing to do if they were given away."),
+  "gtin-check-digit": error("The GTIN's last digit does not go with the others", "Correct the digits: one is wrong, or two have changed places."),
   "net-returns": warning("More was returned than sold; the week is modelled as 0 units", "Nothing to do if it is so."),
   "sold-out-too-long": error("It was sold out on more days than the store was open", atTheSource),
   "repeated-row": warning("The same row stands in the file again", "Nothing to do: it is taken once."),
   "contradicting-rows": error("Rows of the file contradict each other", "Leave only the right one in the file."),
 } satisfies Record<string, Rule>;
 
+  "net-sales-off": warning("Net sales do not go with units and price", "Check units, net sales and prices. Nothing to do for a multi-buy or coupon: name it in mechanic."),
+  "cost-above-price": warning("One unit cost more than was paid for it", "Check that the cost is of one unit and net of tax. Nothing to do if it was sold below cost."),
+  "unusual-price": warning("The price is less than a fifth or more than five times what is usual for the product", "Check the unit: a price for a case, in cents, or with a decimal sign lost. Nothing to do if it is right."),
+  "before-opening": error("The store had not opened yet", "Correct the store or the week, or the store's first day in the catalogue."),
+  "after-closing": error("The store had closed for good", "Correct the store or the week, or the store's last day in the catalogue."),
+  "partly-open": warning("The store was open on part of the week only", "Give the days it was open in open_days, so that few units are not taken for little demand."),
+  "outside-listing": warning("The product is not listed in the store in this week", "Correct the row, or enter the listing in the catalogue."),
 export type RuleName = keyof typeof rules;

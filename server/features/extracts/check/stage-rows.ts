@@ -1,6 +1,6 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
 import { catalogueCodes } from "../../catalogue";
-import { getChain } from "../../chain";
+import { dayIn, getChain } from "../../chain";
 import { parseWeekStart } from "@shared/calendar";
 import type { Services } from "../../../services";
 import type { Extract } from "../extracts.entities";
@@ -12,6 +12,7 @@ import { expandBytes } from "../read/expand-bytes";
 import { readHeader, type Header } from "../read/read-header";
 import { readRecords, type CsvRecord } from "../read/read-records";
 import { UnreadableFile } from "../read/unreadable-file";
+import { CheckNotes } from "./check-notes";
 import { CopyWriter } from "./copy-writer";
 import { IssueLog } from "./issue-log";
 import { Row } from "./row";
@@ -19,7 +20,7 @@ import { Row } from "./row";
 /** How far a check is: bytes of the stored file, and rows. */
 export type StagingProgress = { readBytes: number; rowsRead: number; errors: number };
 
-export type StagedFile = { table: string; rowsRead: number; log: IssueLog };
+export type StagedFile = { table: string; rowsRead: number; log: IssueLog; notes: CheckNotes };
 
 /** A compressed file may hold this many times what may be uploaded. */
 const expandedLimitFactor = 4;
@@ -43,6 +44,8 @@ export async function stageRows({ em, services, extract, progress }: Staging): P
   const codes = await catalogueCodes(em);
   const table = await createStaging(em, { extractId: extract.id, columns: definition.staged });
   const log = new IssueLog();
+  const notes = new CheckNotes();
+  const today = dayIn(chain.timeZone, services.now());
   const writer = await CopyWriter.open(em, { table, columns: ["line", ...definition.staged.map(({ name }) => name)] });
   const state = { readBytes: 0, rowsRead: 0, errors: 0 };
   let stager: RowStager | undefined;
@@ -56,7 +59,7 @@ export async function stageRows({ em, services, extract, progress }: Staging): P
       stager ??= startStager({
         record: records[0], definition, log, writer,
         read: (row) => definition.reader({
-          row, codes, now: services.now(), calendar: { kind: chain.calendar, weekStart: parseWeekStart(chain.weekStart) },
+          row, codes, today, notes, calendar: { kind: chain.calendar, weekStart: parseWeekStart(chain.weekStart) },
         }),
       });
       for (const record of rows) stager.stage(record);
@@ -68,7 +71,7 @@ export async function stageRows({ em, services, extract, progress }: Staging): P
     if (!stager) throw new UnreadableFile("no-header", "The file holds no lines. Check the export that made it.");
     if (stager.rowsRead === 0) throw new UnreadableFile("no-rows", "The file has a header, but no rows below it.");
     await writer.end();
-    return { table, rowsRead: stager.rowsRead, log };
+    return { table, rowsRead: stager.rowsRead, log, notes };
   } catch (error) {
     await writer.abandon(error instanceof Error ? error : new Error(String(error)));
     throw error;

@@ -1,15 +1,23 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
-import type { ChainCalendar } from "@shared/calendar";
+import type { ChainCalendar, Day } from "@shared/calendar";
 import type { ExtractKind } from "@shared/contract/extract-kinds";
 import type { ExtractChanges } from "@shared/contract/extracts";
-import type { CatalogueCodes } from "../../catalogue";
+import type { Author, CatalogueCodes } from "../../catalogue";
+import type { CheckNotes } from "../check/check-notes";
 import type { IssueLog } from "../check/issue-log";
 import type { Row } from "../check/row";
 
 /** A column of the table in which a file's usable rows wait; `line` is always there. */
 export type StagedColumn = { name: string; type: string };
 
-export type ReaderContext = { row: Row; codes: CatalogueCodes; calendar: ChainCalendar; now: Date };
+export type ReaderContext = {
+  row: Row;
+  codes: CatalogueCodes;
+  calendar: ChainCalendar;
+  /** As it is where the chain is. */
+  today: Day;
+  notes: CheckNotes;
+};
 
 /** Reads the row at hand: its staged values in COPY's text format, of no use where `row.hasError` is set. */
 export type RowReader = () => string;
@@ -26,7 +34,7 @@ export type KindDefinition = {
   keyText: string;
   reader: (context: ReaderContext) => RowReader;
   /** Rules over several rows, by SQL: reports, and removes the rows that break them. */
-  checkTogether?: (rows: StagedRows & { extractId: string; log: IssueLog; keep: boolean }) => Promise<void>;
+  checkTogether?: (rows: StagedRows & { extractId: string; log: IssueLog; notes: CheckNotes; keep: boolean }) => Promise<void>;
   /** Staged column of the week, where rows have one. */
   weekColumn?: string;
   /** What loading would do to the database as it stands. */
@@ -34,5 +42,5 @@ export type KindDefinition = {
   /** Makes room for the rows, in a short transaction of its own before the load's. */
   prepareLoad?: (rows: StagedRows) => Promise<void>;
   /** Puts the rows in. Called inside the load's transaction, under its lock. */
-  load: (rows: StagedRows & { extractId: string; now: Date; changes: ExtractChanges }) => Promise<void>;
+  load: (rows: StagedRows & { extractId: string; now: Date; changes: ExtractChanges; by: Author }) => Promise<void>;
 };

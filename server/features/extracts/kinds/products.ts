@@ -1,6 +1,7 @@
 import { compareProducts, mergeProducts } from "../../catalogue";
 import { copyRow } from "../check/copy-text";
 import { dayOf } from "../check/day-columns";
+import { gtinOf } from "../check/gtin-column";
 import type { Column } from "../check/row";
 import { rejectContradictingProducts } from "../check/together.repository";
 import type { KindDefinition } from "./kind";
@@ -8,12 +9,6 @@ import { withoutWeeks } from "./without-weeks";
 
 /** From this day on terms hold for which a file gives none. */
 const beginning = "1970-01-01";
-
-function gtinOf(column: Column): string | null {
-  const value = column.raw;
-  if (value === "") return null;
-  return /^(\d{8}|\d{12}|\d{13}|\d{14})$/.test(value) ? value : column.report("bad-gtin");
-}
 
 function taxRateOf(column: Column): string {
   const value = column.number({ limit: 1e6 });
@@ -58,5 +53,5 @@ export const productsKind: KindDefinition = {
   },
   checkTogether: rejectContradictingProducts,
   compare: async ({ em, table }) => withoutWeeks(await compareProducts(em, table)),
-  load: ({ em, table }) => mergeProducts(em, table),
+  load: ({ em, table, by }) => mergeProducts(em, table, by),
 };

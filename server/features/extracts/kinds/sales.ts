@@ -1,31 +1,42 @@
-import type { CatalogueCodes } from "../../catalogue";
+import type { Day } from "@shared/calendar";
 import { gtinKey } from "../../catalogue";
 import { copyText } from "../check/copy-text";
 import { WeekReader } from "../check/day-columns";
+import { isMistypedGtin, reportCheckDigit } from "../check/gtin-column";
 import type { Column, Row } from "../check/row";
+import { checkNetSales, checkTradeDays, checkUnitCost, paidPrice } from "../check/sales-row-rules";
+import { checkSalesTogether } from "../check/sales-together.repository";
 import { compareSales, ensurePartitions, mergeSales } from "../load/sales-merge.repository";
-import type { KindDefinition } from "./kind";
+import type { KindDefinition, ReaderContext } from "./kind";
 import { temperatureOf } from "./temperatures";
 
 const mechanics = new Set(["none", "price_cut", "multi_buy", "coupon", "other"]);
 const mostUnits = 1e9;
 const daysOfAWeek = 7;
 
-function storeReader(column: Column, { storeIds }: CatalogueCodes) {
-  return () => {
+type Naming = Pick<ReaderContext, "codes" | "notes">;
+
+function storeReader(column: Column, { codes: { storeIds }, notes }: Naming) {
+  return (week: Day | null) => {
     const code = column.raw;
     if (code === "") return column.report("missing-value");
-    return storeIds.get(code) ?? column.report("unknown-store");
+    const id = storeIds.get(code);
+    if (id !== undefined) return id;
+    notes.unknownStores.add(code, week);
+    return column.report("unknown-store");
   };
 }
 
 /** By the chain's own code, or else by GTIN. */
-function productReader(column: Column, { productIds, productIdsByGtin }: CatalogueCodes) {
-  return () => {
+function productReader(column: Column, { codes: { productIds, productIdsByGtin }, notes }: Naming) {
+  return (week: Day | null) => {
     const code = column.raw;
     if (code === "") return column.report("missing-value");
     const id = productIds.get(code) ?? productIdsByGtin.get(gtinKey(code));
-    return id ?? column.report(id === null ? "ambiguous-product" : "unknown-product");
+    if (id !== undefined) return id ?? column.report("ambiguous-product");
+    if (isMistypedGtin(code)) return reportCheckDigit(column);
+    notes.unknownProducts.add(code, week);
+    return column.report("unknown-product");
   };
 }
 
@@ -61,6 +72,33 @@ function daysReader(row: Row) {
   };
 }
 
+type ReadCells = {
+  product: number | null; store: number | null; week: Day | null; openDays: string | null; mechanic: string | null;
+} & Record<"units" | "netSales" | "regular" | "shelf" | "unitCost", string | null>;
+
+const numberOf = (value: string | null) => (value === null ? null : Number(value));
+
+/** Checks what the values of a row say together, and takes its price down. */
+function senseChecker({ row, codes: { storeDays }, notes: { prices } }: ReaderContext) {
+  const [week, openDays] = [row.column("week"), row.column("open_days")];
+  const [netSales, shelfPrice, unitCost] = [row.column("net_sales"), row.column("shelf_price"), row.column("unit_cost")];
+  return (cells: ReadCells) => {
+    const days = cells.store === null ? undefined : storeDays.get(cells.store);
+    if (days && cells.week !== null) checkTradeDays({ week: cells.week, openDays: cells.openDays, days, columns: { week, openDays } });
+    if (cells.units === null || cells.netSales === null) return;
+    const money = {
+      units: Number(cells.units), netSales: Number(cells.netSales), shelfPrice: numberOf(cells.shelf),
+      regularPrice: numberOf(cells.regular), unitCost: numberOf(cells.unitCost), mechanic: cells.mechanic,
+    };
+    checkNetSales(netSales, money);
+    checkUnitCost(unitCost, money);
+    const price = money.shelfPrice ?? paidPrice(money);
+    if (price === null || cells.product === null || row.hasError || !prices.of(cells.product).add(price)) return;
+    const column = money.shelfPrice === null ? netSales : shelfPrice;
+    prices.remember({ line: row.line, column: column.name, value: column.raw });
+  };
+}
+
 /** Files of weekly sales, a row a product, store and week. */
 export const salesKind: KindDefinition = {
   kind: "sales",
@@ -85,10 +123,12 @@ export const salesKind: KindDefinition = {
   key: ["product_id", "store_id", "week"],
   keyText: `concat_ws(', ', (select code from products where id = staged.product_id),
     (select code from stores where id = staged.store_id), staged.week)`,
-  reader({ row, codes, calendar, now }) {
-    const weeks = new WeekReader(calendar, now);
-    const readStore = storeReader(row.column("store"), codes);
-    const readProduct = productReader(row.column("product"), codes);
+  reader(context) {
+    const { row, calendar, today } = context;
+    const weeks = new WeekReader(calendar, today);
+    const readStore = storeReader(row.column("store"), context);
+    const readProduct = productReader(row.column("product"), context);
+    const checkSense = senseChecker(context);
     const readSelling = sellingReader(row);
     const readMechanic = mechanicReader(row.column("mechanic"));
     const readDays = daysReader(row);
@@ -98,16 +138,21 @@ export const salesKind: KindDefinition = {
     const [temperature, event] = [row.column("temperature_c"), row.column("event")];
     const orNull = (value: string | null) => value ?? "\\N";
     return () => {
-      const [product, store, { units, netSales }] = [readProduct(), readStore(), readSelling()];
+      const firstDay = weeks.readPast(week);
+      const [product, store] = [readProduct(firstDay), readStore(firstDay)];
+      const { units, netSales } = readSelling();
       const days = readDays();
+      const [regular, shelf, unitCost, mechanic] = [regularPrice.price(), shelfPrice.price(), cost.amount(), readMechanic()];
+      checkSense({ product, store, week: firstDay, units, netSales, regular, shelf, unitCost, mechanic, openDays: days.open });
       // Numbers, days and words of ours need no escaping, and a file has millions of them.
       return [
-        product, store, weeks.read(week), units, netSales, orNull(regularPrice.price()), orNull(shelfPrice.price()),
-        feature.flag(), display.flag(), readMechanic(), orNull(promotionDays.days()), orNull(days.open), orNull(days.soldOut),
-        orNull(cost.amount()), orNull(temperatureOf(temperature)), copyText(event.text({ longest: 64 })),
+        product, store, firstDay, units, netSales, orNull(regular), orNull(shelf),
+        feature.flag(), display.flag(), mechanic, orNull(promotionDays.days()), orNull(days.open), orNull(days.soldOut),
+        orNull(unitCost), orNull(temperatureOf(temperature)), copyText(event.text({ longest: 64 })),
       ].join("\t");
     };
   },
+  checkTogether: checkSalesTogether,
   weekColumn: "week",
   compare: compareSales,
   prepareLoad: ensurePartitions,

@@ -1,8 +1,9 @@
+import type { Day } from "@shared/calendar";
 import { compareTemperatures, mergeTemperatures } from "../../catalogue";
 import { copyRow } from "../check/copy-text";
 import { WeekReader } from "../check/day-columns";
-import type { Column, Row } from "../check/row";
-import type { KindDefinition } from "./kind";
+import type { Column } from "../check/row";
+import type { KindDefinition, ReaderContext } from "./kind";
 import { withoutWeeks } from "./without-weeks";
 
 const mostDegrees = 60;
@@ -14,13 +15,16 @@ export function temperatureOf(column: Column, { needed = false }: { needed?: boo
 }
 
 /** A temperature is for a region or for one store. */
-function placeReader({ row, stores, regions }: { row: Row; stores: ReadonlyMap<string, number>; regions: ReadonlySet<string> }) {
+function placeReader({ row, codes, notes }: Pick<ReaderContext, "row" | "codes" | "notes">) {
   const [region, store] = [row.column("region"), row.column("store")];
-  return () => {
+  return (week: Day | null) => {
     const place = { region: region.text({ longest: 80 }), store: store.text({ longest: 64 }) };
     if ((place.region === null) === (place.store === null)) region.report("store-or-region");
-    if (place.store !== null && !stores.has(place.store)) store.report("unknown-store");
-    if (place.region !== null && !regions.has(place.region)) region.report("unknown-region");
+    if (place.store !== null && !codes.storeIds.has(place.store)) {
+      notes.unknownStores.add(place.store, week);
+      store.report("unknown-store");
+    }
+    if (place.region !== null && !codes.regions.has(place.region)) region.report("unknown-region");
     return place;
   };
 }
@@ -36,16 +40,17 @@ export const temperaturesKind: KindDefinition = {
   ],
   key: ["week", "region", "store_code"],
   keyText: "concat_ws(', ', staged.week, nullif(staged.region, ''), nullif(staged.store_code, ''))",
-  reader({ row, codes, calendar, now }) {
+  reader({ row, codes, calendar, today, notes }) {
     const [week, temperature] = [row.column("week"), row.column("temperature_c")];
-    const weeks = new WeekReader(calendar, now);
-    const readPlace = placeReader({ row, stores: codes.storeIds, regions: codes.regions });
+    const weeks = new WeekReader(calendar, today);
+    const readPlace = placeReader({ row, codes, notes });
     return () => {
-      const place = readPlace();
-      return copyRow([weeks.read(week), place.region ?? "", place.store ?? "", temperatureOf(temperature, { needed: true })]);
+      const firstDay = weeks.read(week);
+      const place = readPlace(firstDay);
+      return copyRow([firstDay, place.region ?? "", place.store ?? "", temperatureOf(temperature, { needed: true })]);
     };
   },
   weekColumn: "week",
   compare: async ({ em, table }) => withoutWeeks(await compareTemperatures(em, table)),
-  load: ({ em, table }) => mergeTemperatures(em, table),
+  load: ({ em, table, by }) => mergeTemperatures(em, table, by),
 };

@@ -91,13 +91,13 @@ async function ensureStaged(services: Services, { extractId, progress }: { extra
 
 async function stageAgain({ em, services, extract, progress }: { em: EntityManager; services: Services; extract: Extract; progress: Progress }): Promise<void> {
   const definition = kinds[extract.kind];
-  const { table, log } = await stageRows({
+  const { table, log, notes } = await stageRows({
     em, services, extract,
     progress: ({ readBytes }) => progress({ done: readBytes / Math.max(1, extract.sizeBytes), total: steps, message: "Reading the file again" }),
   });
   await analyseStaging(em, table);
   // What is wrong with the rows is on record from the check.
-  const together = { em, table, extractId: extract.id, log, keep: false };
+  const together = { em, table, extractId: extract.id, log, notes, keep: false };
   await rejectRepeatedRows({ ...together, definition });
   await definition.checkTogether?.(together);
   const usable = await countStaged(em, extract.id);

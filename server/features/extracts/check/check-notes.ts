@@ -1,0 +1,15 @@
+import type { UnknownCodes } from "@shared/contract/unknown-codes";
+import { CodeTally } from "./code-tally";
+import { PriceTally } from "./price-tally";
+
+/** What is gathered beside the issues while the rows of one file are read. */
+export class CheckNotes {
+  readonly unknownStores = new CodeTally();
+  readonly unknownProducts = new CodeTally();
+  readonly prices = new PriceTally();
+
+  unknownCodes(): UnknownCodes {
+    const [stores, products] = [this.unknownStores, this.unknownProducts];
+    return { stores: stores.listed(), storesTotal: stores.total, products: products.listed(), productsTotal: products.total };
+  }
+}
