@@ -77,6 +77,20 @@ export const createRouter = (queryClient: QueryClient) =>
               lazy: async () => ({ Component: (await import("./routes/password")).PasswordRoute }),
             },
             {
+              path: paths.notices.path,
+              lazy: async () => {
+                const { NoticesRoute, loaderFor } = await import("./routes/notices");
+                return { Component: NoticesRoute, loader: loaderFor(queryClient) };
+              },
+            },
+            {
+              path: paths.settings.path,
+              lazy: async () => {
+                const { SettingsRoute, loaderFor } = await import("./routes/settings");
+                return { Component: SettingsRoute, loader: loaderFor(queryClient) };
+              },
+            },
+            {
               path: paths.scenarios.path,
               lazy: async () => {
                 const { ScenariosRoute, loaderFor } = await import("./routes/scenarios");

@@ -12,6 +12,8 @@ export const paths = {
     href: (returnTo?: string) => addressOf("/sign-in", { returnTo: returnTo === "/" ? undefined : returnTo }),
   },
   password: { path: "/password", href: () => "/password" },
+  notices: { path: "/notices", href: () => "/notices" },
+  settings: { path: "/settings", href: () => "/settings" },
   extracts: { path: "/extracts", href: () => "/extracts" },
   coverage: { path: "/extracts/coverage", href: (view: CoverageView = {}) => addressOf("/extracts/coverage", view) },
   layouts: { path: "/extracts/layouts", href: () => "/extracts/layouts" },

@@ -26,7 +26,7 @@ const session: Session = { person, permissions: ["read"], by: "session" };
 
 const Page = () => {
   const known = useSession();
-  return known ? <PersonMenu person={known.person} onChangePassword={vi.fn()} /> : <p>Nobody is signed in.</p>;
+  return known ? <PersonMenu person={known.person} onChangePassword={vi.fn()} onNotices={vi.fn()} /> : <p>Nobody is signed in.</p>;
 };
 
 /** A page inside what surrounds every page, as someone signed in sees it. */

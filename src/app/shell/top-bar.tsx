@@ -57,7 +57,12 @@ export const TopBar = ({ session, chainName }: TopBarProps) => {
         <div className="ml-auto flex min-w-0 items-center gap-3">
           <UploadsUnderWay />
           {chainName && <span className="truncate text-muted max-sm:hidden">{chainName}</span>}
-          <PersonMenu person={session.person} onChangePassword={() => void navigate(paths.password.href())} />
+          <PersonMenu
+            person={session.person}
+            onChangePassword={() => void navigate(paths.password.href())}
+            onNotices={() => void navigate(paths.notices.href())}
+            onSettings={session.permissions.includes("settings:manage") ? () => void navigate(paths.settings.href()) : undefined}
+          />
         </div>
       </div>
       <nav id="pages" aria-label="Pages" hidden={!isOpen} className="border-t border-hairline px-3 py-2 md:hidden">

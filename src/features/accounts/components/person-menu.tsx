@@ -1,4 +1,4 @@
-import { KeyRound, LogOut } from "lucide-react";
+import { Bell, KeyRound, LogOut, Settings2 } from "lucide-react";
 import type { Session } from "@shared/contract/accounts";
 import { Avatar } from "@/components/ui/avatar";
 import { Menu, MenuChoices, MenuItem, MenuLine, MenuNote } from "@/components/ui/menu";
@@ -13,10 +13,16 @@ const themes = [
   { value: "dark", label: "Dark" },
 ] as const;
 
-type PersonMenuProps = { person: Session["person"]; onChangePassword: () => void };
+type PersonMenuProps = {
+  person: Session["person"];
+  onChangePassword: () => void;
+  onNotices: () => void;
+  /** Absent for who may not change the chain's settings. */
+  onSettings?: () => void;
+};
 
 /** Who is signed in, as what, in which theme; and the way out. */
-export const PersonMenu = ({ person, onChangePassword }: PersonMenuProps) => {
+export const PersonMenu = ({ person, onChangePassword, onNotices, onSettings }: PersonMenuProps) => {
   const theme = useThemeChoice();
   const signOut = useSignOut();
   const status = useStatusLine();
@@ -40,6 +46,14 @@ export const PersonMenu = ({ person, onChangePassword }: PersonMenuProps) => {
       <MenuLine />
       <MenuChoices label="Theme" choices={themes} value={theme} onChange={chooseTheme} />
       <MenuLine />
+      <MenuItem onSelect={onNotices}>
+        <Bell aria-hidden="true" /> Notices
+      </MenuItem>
+      {onSettings && (
+        <MenuItem onSelect={onSettings}>
+          <Settings2 aria-hidden="true" /> Chain settings
+        </MenuItem>
+      )}
       <MenuItem onSelect={onChangePassword}>
         <KeyRound aria-hidden="true" /> Change password
       </MenuItem>
