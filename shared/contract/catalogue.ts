@@ -1,4 +1,5 @@
 import { z } from "zod";
+import { versionSchema } from "./catalogue-values";
 import { codeSchema, daySchema } from "./common";
 import { defineEndpoint } from "./endpoint";
 
@@ -8,6 +9,7 @@ export const storeSchema = z.object({
   region: z.string(),
   opened: daySchema.nullable(),
   closed: daySchema.nullable(),
+  version: versionSchema,
 });
 export type Store = z.infer<typeof storeSchema>;
 
@@ -19,11 +21,16 @@ export const productSchema = z.object({
   category: z.string(),
   categoryName: z.string(),
   soldByWeight: z.boolean(),
+  /** Code of the product that this one took the place of; its units times the ratio continue that product's. */
+  replaces: z.string().nullable(),
+  replacesSizeRatio: z.number().nullable(),
   /** What holds on the day asked for (today unless given); null where the chain has not said. */
   unitCost: z.number().nullable(),
   regularPrice: z.number().nullable(),
   /** Share, for example 0.21. */
   taxRate: z.number(),
+  /** Of what describes the product; its terms have versions of their own. */
+  version: versionSchema,
 });
 export type Product = z.infer<typeof productSchema>;
 

@@ -51,6 +51,19 @@ export const extractColumns: Record<ExtractKind, readonly ExtractColumn[]> = {
     optional("regular_price", "Price of one unit without promotion"),
     optional("tax_rate", "Tax as a share of the net price: 0.21 for 21 %"),
   ],
+  listings: [
+    needed("product", "The chain's code of the product, or its GTIN"),
+    needed("store", "The chain's code of the store"),
+    needed("first_day", "First day on which the store has it, YYYY-MM-DD"),
+    optional("last_day", "Last day, YYYY-MM-DD; empty while it goes on"),
+  ],
+  funding: [
+    needed("product", "The chain's code of the product, or its GTIN"),
+    needed("first_day", "First day of the supplier's contribution, YYYY-MM-DD"),
+    needed("last_day", "Last day, YYYY-MM-DD"),
+    optional("per_unit", "Contribution to each unit sold, net of tax"),
+    optional("lump_sum", "Contribution however many are sold, net of tax"),
+  ],
   events: [
     needed("event", "The chain's code of the event"),
     needed("name", "Its name"),

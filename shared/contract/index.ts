@@ -1,5 +1,12 @@
 export * as accounts from "./accounts";
 export * as catalogue from "./catalogue";
+export * as catalogueEvents from "./catalogue-events";
+export * as catalogueFunding from "./catalogue-funding";
+export * as catalogueHistory from "./catalogue-history";
+export * as catalogueListings from "./catalogue-listings";
+export * as catalogueProducts from "./catalogue-products";
+export * as catalogueStores from "./catalogue-stores";
+export * as catalogueTemperatures from "./catalogue-temperatures";
 export * as chain from "./chain";
 export * as comparisons from "./comparisons";
 export * as coverage from "./coverage";

@@ -1,7 +1,7 @@
 import { describe, expect, it } from "vitest";
 import { addWeeks, weeksBetween } from "@shared/calendar";
 import { contextNotes } from "../../server/features/scenarios/context/context-notes";
-import { normalTemperature } from "../../server/features/scenarios/context/normal-temperature";
+import { normalTemperature } from "../../server/features/catalogue";
 import { storeNormals } from "../../server/features/scenarios/context/store-temperatures";
 import { toldValue } from "../../server/features/scenarios/context/told-value";
 

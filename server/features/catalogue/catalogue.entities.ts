@@ -62,6 +62,7 @@ export type ProductTerms = InferEntity<typeof ProductTermsEntity>;
 export const ProductFundingEntity = defineEntity({
   name: "ProductFunding",
   tableName: "product_funding",
+  uniques: [{ properties: ["product", "firstDay"] }],
   properties: {
     id: p.integer().primary().autoincrement(),
     product: () => p.manyToOne(ProductEntity).deleteRule("cascade"),
@@ -77,6 +78,7 @@ export type ProductFunding = InferEntity<typeof ProductFundingEntity>;
 export const ListingEntity = defineEntity({
   name: "Listing",
   tableName: "listings",
+  indexes: [{ properties: ["store"] }],
   properties: {
     product: () => p.manyToOne(ProductEntity).primary().deleteRule("cascade"),
     store: () => p.manyToOne(StoreEntity).primary().deleteRule("cascade"),
@@ -115,7 +117,7 @@ export const TemperatureEntity = defineEntity({
     region: p.string().length(80).default(""),
     /** Empty where the row is for a region. */
     storeCode: p.string().length(64).default(""),
-    temperatureC: p.double(),
+    temperatureC: p.double().$type<number>(),
   },
 });
 export type Temperature = InferEntity<typeof TemperatureEntity>;

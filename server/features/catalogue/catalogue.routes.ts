@@ -1,16 +1,13 @@
-import * as contract from "@shared/contract/catalogue";
-import { route, type Route } from "../../http/route";
-import { presentProduct, presentStore } from "./catalogue.presenter";
-import { listProducts, listStores } from "./catalogue.service";
+import type { Route } from "../../http/route";
+import { eventsRoutes } from "./events/events.routes";
+import { exportRoutes } from "./export/export.routes";
+import { fundingRoutes } from "./funding/funding.routes";
+import { historyRoutes } from "./history/history.routes";
+import { listingsRoutes } from "./listings/listings.routes";
+import { productsRoutes } from "./products/products.routes";
+import { storesRoutes } from "./stores/stores.routes";
+import { temperaturesRoutes } from "./temperatures/temperatures.routes";
 
-const readStores = route(contract.listStores, async ({ em }) => {
-  const stores = await listStores(em);
-  return { items: stores.map(presentStore) };
-});
-
-const readProducts = route(contract.listProducts, async ({ em, query, now }) => {
-  const products = await listProducts(em, { on: query.on, now });
-  return { items: products.map(presentProduct) };
-});
-
-export const catalogueRoutes: readonly Route[] = [readStores, readProducts];
+export const catalogueRoutes: readonly Route[] = [
+  ...exportRoutes, ...storesRoutes, ...productsRoutes, ...listingsRoutes, ...fundingRoutes, ...eventsRoutes, ...temperaturesRoutes, ...historyRoutes,
+];

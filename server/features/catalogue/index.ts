@@ -1,8 +1,14 @@
 export * from "./catalogue.entities";
 export { catalogueRoutes } from "./catalogue.routes";
 export { catalogueCodes, gtinKey, type CatalogueCodes } from "./catalogue-codes.repository";
+export type { Author } from "./changes/author";
+export { enterProducts, enterStores } from "./enter-codes.service";
 export type { MergeCounts } from "./merge/merge-counts";
 export { compareEvents, mergeEvents } from "./merge/merge-events.repository";
+export { compareFunding, mergeFunding } from "./merge/merge-funding.repository";
+export { compareListings, mergeListings } from "./merge/merge-listings.repository";
 export { compareProducts, mergeProducts } from "./merge/merge-products.repository";
 export { compareStores, mergeStores } from "./merge/merge-stores.repository";
 export { compareTemperatures, mergeTemperatures } from "./merge/merge-temperatures.repository";
+export { sharedDaysSql, type Spans } from "./merge/shared-days.repository";
+export { meanTemperature, normalTemperature, type WeekTemperature } from "./temperatures/normal-temperature";

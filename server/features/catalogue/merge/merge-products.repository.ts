@@ -1,4 +1,5 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
+import type { Author } from "../changes/author";
 import { mergeKeyed, type KeyedMerge } from "./keyed-merge";
 import type { MergeCounts } from "./merge-counts";
 
@@ -11,18 +12,34 @@ const described = ["name", "gtin", "brand", "category_id", "sold_by_weight"];
 const terms = ["unit_cost", "regular_price", "tax_rate"];
 
 /** A category's name, once there, is not the files' business: they have only its code. */
-async function addCategories(em: EntityManager, staged: string): Promise<void> {
-  await em.execute(`
-    insert into categories (code, name) select distinct category, category from ${staged} on conflict (code) do nothing`);
-}
+const categoriesOf = (staged: string): KeyedMerge => ({
+  table: "categories",
+  source: `
+    select distinct given.category as code, coalesce(known.name, given.category) as name
+    from ${staged} given left join categories known on known.code = given.category`,
+  key: ["code"],
+  values: ["name"],
+  history: { what: "category", code: (row) => `${row}.code`, described: (row) => ({ name: `${row}.name` }) },
+});
 
 const productsOf = (staged: string): KeyedMerge => ({
   table: "products",
   source: `
-    select distinct on (given.code) given.code, given.name, given.gtin, given.brand, category.id as category_id, given.sold_by_weight
-    from ${staged} given join categories category on category.code = given.category order by given.code, given.line`,
+    select distinct on (given.code) given.code, given.name, given.gtin, given.brand, category.id as category_id, given.sold_by_weight,
+      known.replaces_id, known.replaces_size_ratio
+    from ${staged} given join categories category on category.code = given.category
+    left join products known on known.code = given.code order by given.code, given.line`,
   key: ["code"],
   values: described,
+  history: {
+    what: "product",
+    code: (row) => `${row}.code`,
+    described: (row) => ({
+      name: `${row}.name`, gtin: `${row}.gtin`, brand: `${row}.brand`, category: `(select code from categories where id = ${row}.category_id)`,
+      soldByWeight: `${row}.sold_by_weight`, replaces: `(select code from products where id = ${row}.replaces_id)`,
+      replacesSizeRatio: `${row}.replaces_size_ratio`,
+    }),
+  },
 });
 
 const termsOf = (staged: string): KeyedMerge => ({
@@ -32,6 +49,13 @@ const termsOf = (staged: string): KeyedMerge => ({
     from ${staged} given join products product on product.code = given.code`,
   key: ["product_id", "valid_from"],
   values: terms,
+  history: {
+    what: "terms",
+    code: (row) => `(select code from products where id = ${row}.product_id)`,
+    described: (row) => ({
+      validFrom: `${row}.valid_from`, unitCost: `${row}.unit_cost`, regularPrice: `${row}.regular_price`, taxRate: `${row}.tax_rate`,
+    }),
+  },
 });
 
 /** What merging staged rows into the products and their terms would do: a row counts as changed where either part does. */
@@ -55,8 +79,8 @@ export async function compareProducts(em: EntityManager, staged: string): Promis
 }
 
 /** Adds and changes products by their code, with their categories and their terms by day; nothing is removed. */
-export async function mergeProducts(em: EntityManager, staged: string): Promise<void> {
-  await addCategories(em, staged);
-  await mergeKeyed(em, productsOf(staged));
-  await mergeKeyed(em, termsOf(staged));
+export async function mergeProducts(em: EntityManager, staged: string, by: Author): Promise<void> {
+  await mergeKeyed(em, categoriesOf(staged), by);
+  await mergeKeyed(em, productsOf(staged), by);
+  await mergeKeyed(em, termsOf(staged), by);
 }

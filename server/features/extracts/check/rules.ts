@@ -9,12 +9,17 @@ const atTheSource = "Correct it in the system the file comes from and upload the
 /** Everything that can be wrong with a row. An error keeps the row out; a warning does not. */
 export const rules = {
   // The row as text
-  "open-quote": error("Quotes in this line do not close, or do not close before a comma", "Write a quote inside a value twice, and close each value that begins with one."),
+  "open-quote": error("Quotes in this line do not close, or do not close before the next column", "Write a quote inside a value twice, and close each value that begins with one."),
   "ragged-row": error("The row has more or fewer fields than the header", "A comma inside a value needs quotes around the value."),
   "unknown-column": warning("Columns that are not ours are passed over", "Nothing to do, unless a column was meant to be one of ours: then correct its name."),
   "control-character": error("The value holds control characters", atTheSource),
   "missing-value": error("The value is missing", "Fill it in, or leave the row out."),
   "too-long": error("The value is longer than can be kept", "Shorten it."),
+  // The row as a layout reads it
+  "unreadable-number": error("The number is not written as set for this file", "Change the decimal sign or the thousands under \"How it is read\", or correct the value."),
+  "unreadable-day": error("The day or week is not written as set for this file", "Change the order of day and month under \"How it is read\", or correct the value."),
+  "unreadable-word": error("The word has no meaning in this file's layout", "Say under \"How it is read\" what the word means, or correct the value."),
+  "unreadable-code": error("A spreadsheet has shortened the code, and its digits are lost", "Format the column as text in the spreadsheet and export the file again."),
   // Numbers
   "not-a-number": error("The value is not a number", "Write numbers like 1234.5: a point for decimals, no thousands separators, no currency sign."),
   "too-many-decimals": error("Units have at most 3 decimals", "Round them to 3 decimals."),
@@ -31,29 +36,26 @@ export const rules = {
   "bad-week": error("The value is not a week", "Write the week's first day as YYYY-MM-DD."),
   "not-week-start": error("The day is not the first of a week", "Give the first day of the week, by the chain's setting."),
   "week-out-of-range": error("The week lies in a year that cannot be meant", "Give a week from 1970 on, at most a year ahead."),
+  "week-in-future": error("The week has not begun yet", "Give weeks that have begun; a plan belongs into a scenario."),
+  "week-not-over": warning("The week is not over yet", "Load it again once it has ended: until then its units are too low."),
+  "missing-weeks": warning("There are rows before and after, but none for these weeks", "Nothing to do where nothing was sold and the source leaves such rows out; otherwise get the rows and load them."),
+  "shared-days": error("The days overlap with others of the same", "Correct the days, or end the earlier ones first."),
+  "no-contribution": error("Neither an amount per unit nor a lump sum is given", "Fill in one of the two, or leave the row out."),
   "last-before-first": error("The last day lies before the first", "Exchange the two days, or correct one."),
   // Codes
   "unknown-store": error("There is no store with this code", "Load the store with a stores file first, or correct the code. Then check again."),
   "unknown-product": error("There is no product with this code or GTIN", "Load the product with a products file first, or correct the code. Then check again."),
   "ambiguous-product": error("Several products have this GTIN", "Give the chain's own code of the product."),
-  "week-in-future": error("The week has not begun yet", "Give weeks that have begun; a plan belongs into a scenario."),
-  "week-not-over": warning("The week is not over yet", "Load it again once it has ended: until then its units are too low."),
-  "missing-weeks": warning("There are rows before and after, but none for these weeks", "Nothing to do where nothing was sold and the source leaves such rows out; otherwise get the rows and load them."),
   "unknown-region": warning("No store is in this region", "Check the region's name against the stores."),
   "store-or-region": error("A temperature is for a region or for a store", "Fill in one of the two."),
   "bad-gtin": error("The value is not a GTIN", "Give its 8, 12, 13 or 14 digits; spreadsheets like to write them as 2.0E+12."),
+  "gtin-check-digit": error("The GTIN's last digit does not go with the others", "Correct the digits: one is wrong, or two have changed places."),
   "unknown-mechanic": error("The mechanic is none of those we know", "Use none, price_cut, multi_buy, coupon or other."),
   // What values say together
   "sales-without-units": error("There are net sales, but no units", atTheSource),
   "negative-net-sales": error("Units were sold, but net sales are negative", atTheSource),
   "units-without-sales": warning("Units were sold, but net sales are 0: no price was paid", "Nothing to do if they were given away."),
-  "gtin-check-digit": error("The GTIN's last digit does not go with the others", "Correct the digits: one is wrong, or two have changed places."),
   "net-returns": warning("More was returned than sold; the week is modelled as 0 units", "Nothing to do if it is so."),
-  "sold-out-too-long": error("It was sold out on more days than the store was open", atTheSource),
-  "repeated-row": warning("The same row stands in the file again", "Nothing to do: it is taken once."),
-  "contradicting-rows": error("Rows of the file contradict each other", "Leave only the right one in the file."),
-} satisfies Record<string, Rule>;
-
   "net-sales-off": warning("Net sales do not go with units and price", "Check units, net sales and prices. Nothing to do for a multi-buy or coupon: name it in mechanic."),
   "cost-above-price": warning("One unit cost more than was paid for it", "Check that the cost is of one unit and net of tax. Nothing to do if it was sold below cost."),
   "unusual-price": warning("The price is less than a fifth or more than five times what is usual for the product", "Check the unit: a price for a case, in cents, or with a decimal sign lost. Nothing to do if it is right."),
@@ -61,4 +63,9 @@ export const rules = {
   "after-closing": error("The store had closed for good", "Correct the store or the week, or the store's last day in the catalogue."),
   "partly-open": warning("The store was open on part of the week only", "Give the days it was open in open_days, so that few units are not taken for little demand."),
   "outside-listing": warning("The product is not listed in the store in this week", "Correct the row, or enter the listing in the catalogue."),
+  "sold-out-too-long": error("It was sold out on more days than the store was open", atTheSource),
+  "repeated-row": warning("The same row stands in the file again", "Nothing to do: it is taken once."),
+  "contradicting-rows": error("Rows of the file contradict each other", "Leave only the right one in the file."),
+} satisfies Record<string, Rule>;
+
 export type RuleName = keyof typeof rules;

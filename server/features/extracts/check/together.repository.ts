@@ -7,7 +7,7 @@ import { rules, type RuleName } from "./rules";
  * a file becomes part of a statement.
  */
 
-type Together = StagedRows & { extractId: string; log: IssueLog; /** Whether to write issues; counts are kept anyway. */ keep: boolean };
+export type Together = StagedRows & { extractId: string; log: IssueLog; /** Whether to write issues; counts are kept anyway. */ keep: boolean };
 
 type Breach = Together & {
   rule: RuleName;
@@ -21,7 +21,7 @@ type Breach = Together & {
 };
 
 /** Writes an issue for each of the lines, counts them, and removes them from the staged rows. */
-async function removeBreaches({ em, table, extractId, log, keep, rule, column, value, reason, lines }: Breach): Promise<void> {
+export async function removeBreaches({ em, table, extractId, log, keep, rule, column, value, reason, lines }: Breach): Promise<void> {
   const { severity, remedy } = rules[rule];
   const room = keep ? log.room(rule) : 0;
   await em.execute(

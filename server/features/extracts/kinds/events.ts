@@ -30,5 +30,5 @@ export const eventsKind: KindDefinition = {
     };
   },
   compare: async ({ em, table }) => withoutWeeks(await compareEvents(em, table)),
-  load: ({ em, table }) => mergeEvents(em, table),
+  load: ({ em, table, by }) => mergeEvents(em, table, by),
 };

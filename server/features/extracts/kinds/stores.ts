@@ -32,5 +32,5 @@ export const storesKind: KindDefinition = {
     };
   },
   compare: async ({ em, table }) => withoutWeeks(await compareStores(em, table)),
-  load: ({ em, table }) => mergeStores(em, table),
+  load: ({ em, table, by }) => mergeStores(em, table, by),
 };

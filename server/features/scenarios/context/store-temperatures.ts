@@ -1,5 +1,5 @@
 import type { Day } from "@shared/calendar";
-import { meanTemperature, normalTemperature, type WeekTemperature } from "./normal-temperature";
+import { meanTemperature, normalTemperature, type WeekTemperature } from "../../catalogue";
 import type { PlaceTemperature } from "./planned-weeks.repository";
 
 /** A normal temperature, and whether for want of other years it is the mean of all weeks known. */

@@ -29,6 +29,8 @@ export const kindNames: Record<ExtractKind, string> = {
   sales: "Sales",
   stores: "Stores",
   products: "Products",
+  listings: "Listings",
+  funding: "Funding",
   events: "Events",
   temperatures: "Temperatures",
 };
