@@ -28,7 +28,7 @@ function seededDraws(seed: number): () => number {
 }
 
 const changesOf = async ({ id }: Extract) => (await read(test, `/api/extracts/${id}/changes`).expect(200)).body;
-const load = (extract: Extract) => act(test, `/api/extracts/${extract.id}/load`);
+const load = (extract: Extract, body?: object) => act(test, `/api/extracts/${extract.id}/load`).send(body);
 const withdraw = (extract: Extract) => act(test, `/api/extracts/${extract.id}/withdraw`);
 const brief = (sales: Awaited<ReturnType<typeof storedSales>>) => sales.map(({ week, store, units, file }) => `${week} ${store} ${units} ${file}`);
 
@@ -38,16 +38,17 @@ describe("a load", () => {
     expect(extract).toMatchObject({ state: "loaded", failure: null, firstWeek: june1, lastWeek: june8, may: { check: false, load: false, withdraw: true } });
     expect(brief(await storedSales(test))).toEqual([`${june1} S1 10 a.csv`, `${june8} S1 12.5 a.csv`]);
     expect(await changesOf(extract)).toEqual({
-      totals: { new: 2, changed: 0, same: 0 },
+      totals: { new: 2, changed: 0, same: 0, missing: 0 },
       weeks: [
-        { week: june1, new: 1, changed: 0, same: 0, unitsBefore: 0, unitsAfter: 10 },
-        { week: june8, new: 1, changed: 0, same: 0, unitsBefore: 0, unitsAfter: 12.5 },
+        { week: june1, new: 1, changed: 0, same: 0, missing: 0, unitsBefore: 0, unitsAfter: 10 },
+        { week: june8, new: 1, changed: 0, same: 0, missing: 0, unitsBefore: 0, unitsAfter: 12.5 },
       ],
+      secondLook: [],
     });
     const { body: job } = await read(test, `/api/jobs/${extract.jobId}`).expect(200);
-    expect(job).toMatchObject({ kind: "load-extract", state: "succeeded", result: { new: 2, changed: 0, same: 0 }, progress: { done: 4, total: 4 } });
+    expect(job).toMatchObject({ kind: "load-extract", state: "succeeded", result: { new: 2, changed: 0, same: 0, missing: 0 }, progress: { done: 4, total: 4 } });
     const { rows: trail } = await test.services.pool.query("select detail, token_id, person_id from audit_entries where action = 'extract.loaded' and subject_id = $1", [extract.id]);
-    expect(trail).toEqual([{ detail: { fileName: "a.csv", new: 2, changed: 0, same: 0 }, token_id: expect.any(String), person_id: extract.uploadedBy.id }]);
+    expect(trail).toEqual([{ detail: { fileName: "a.csv", new: 2, changed: 0, same: 0, missing: 0 }, token_id: expect.any(String), person_id: extract.uploadedBy.id }]);
   });
 
   it("is previewed before: new, changed and same rows by week, with units before and after", async () => {
@@ -55,11 +56,12 @@ describe("a load", () => {
     const next = await checked(test, { file: salesFile(row(june1, "S1", 11), row(june1, "S2", 20), row(june1, "S3", 3), row(june8, "S1", 5)) });
     expect(next.may).toEqual({ check: true, load: true, withdraw: false });
     expect(await changesOf(next)).toEqual({
-      totals: { new: 1, changed: 1, same: 2 },
+      totals: { new: 1, changed: 1, same: 2, missing: 0 },
       weeks: [
-        { week: june1, new: 1, changed: 1, same: 1, unitsBefore: 30, unitsAfter: 34 },
-        { week: june8, new: 0, changed: 0, same: 1, unitsBefore: 5, unitsAfter: 5 },
+        { week: june1, new: 1, changed: 1, same: 1, missing: 0, unitsBefore: 30, unitsAfter: 34 },
+        { week: june8, new: 0, changed: 0, same: 1, missing: 0, unitsBefore: 5, unitsAfter: 5 },
       ],
+      secondLook: [],
     });
   });
 
@@ -68,7 +70,7 @@ describe("a load", () => {
     await loaded(test, { name: "first.csv", file });
     const before = await storedSales(test);
     const again = await loaded(test, { name: "second.csv", file });
-    expect((await changesOf(again)).totals).toEqual({ new: 0, changed: 0, same: 3 });
+    expect((await changesOf(again)).totals).toEqual({ new: 0, changed: 0, same: 3, missing: 0 });
     expect(await storedSales(test)).toEqual(before);
     expect((await test.services.pool.query("select 1 from weekly_sales_history")).rows).toEqual([]);
   });
@@ -123,7 +125,7 @@ describe("the price modelled", () => {
   it("is what planning would say, row by row, of any file", async () => {
     const draw = seededDraws(7);
     const cells = ["S1", "S2", "S3", "S4"].flatMap((store) => Array.from({ length: 25 }, (_, at) => {
-      const week = new Date(Date.UTC(2026, 0, 5 + 7 * at)).toISOString().slice(0, 10);
+      const week = new Date(Date.UTC(2025, 11, 22 + 7 * at)).toISOString().slice(0, 10);
       const units = draw() < 0.4 ? 0 : Math.ceil(draw() * 9);
       const netSales = units === 0 ? 0 : Math.round(units * [1.79, 1.49, 1.33][Math.floor(draw() * 3)]! * 100) / 100;
       return { week, store, units, netSales, shelfPrice: draw() < 0.2 ? 1.59 : null, regularPrice: draw() < 0.7 ? 1.99 : null };
@@ -223,9 +225,9 @@ describe("two loads", () => {
     const weeks = Array.from({ length: 20 }, (_, at) => new Date(Date.UTC(2026, 0, 5 + 7 * at)).toISOString().slice(0, 10));
     const fileOf = (units: number) => salesFile(...weeks.flatMap((week) => stores.map((store) => row(week, store, units))));
     const extracts = await Promise.all([1, 2].map((units) => checked(test, { name: `${units}.csv`, file: fileOf(units) })));
-    const totals = await Promise.all(extracts.map(({ id }) => loadExtract(test.services, { extractId: id })));
-    expect(totals).toContainEqual({ new: 80, changed: 0, same: 0 });
-    expect(totals).toContainEqual({ new: 0, changed: 80, same: 0 });
+    const totals = await Promise.all(extracts.map(({ id }) => loadExtract(test.services, { extractId: id, seen: "everything" })));
+    expect(totals).toContainEqual({ new: 80, changed: 0, same: 0, missing: 0 });
+    expect(totals).toContainEqual({ new: 0, changed: 80, same: 0, missing: 0 });
     expect(new Set((await storedSales(test)).map(({ file }) => file)).size).toBe(1);
   });
 });
@@ -243,8 +245,8 @@ describe("a load that breaks down", () => {
     await expect(breaks).rejects.toThrow("the worker lost its job");
     expect(brief(await storedSales(test))).toEqual([`${june1} S1 10 a.csv`]);
     expect((await test.services.pool.query("select 1 from weekly_sales_history")).rows).toEqual([]);
-    expect(await loadExtract(test.services, { extractId: id })).toEqual({ new: 1, changed: 1, same: 0 });
-    expect(await loadExtract(test.services, { extractId: id })).toEqual({ new: 1, changed: 1, same: 0 });
+    expect(await loadExtract(test.services, { extractId: id })).toEqual({ new: 1, changed: 1, same: 0, missing: 0 });
+    expect(await loadExtract(test.services, { extractId: id })).toEqual({ new: 1, changed: 1, same: 0, missing: 0 });
     expect(brief(await storedSales(test))).toEqual([`${june1} S1 11 b.csv`, `${june8} S1 12 b.csv`]);
   });
 
@@ -252,7 +254,7 @@ describe("a load that breaks down", () => {
     const { id } = await checked(test, { file: salesFile(row(june1, "S1", 10), row(june1, "S9", 1), row(june8, "S1", 3), row(june8, "S1", 3)) });
     // What PostgreSQL does to unlogged tables when it recovers from a crash.
     await test.services.pool.query(`truncate staging."rows_${id.replaceAll("-", "")}"`);
-    expect(await loadExtract(test.services, { extractId: id })).toEqual({ new: 2, changed: 0, same: 0 });
+    expect(await loadExtract(test.services, { extractId: id })).toEqual({ new: 2, changed: 0, same: 0, missing: 0 });
     expect(await storedSales(test)).toHaveLength(2);
   });
 

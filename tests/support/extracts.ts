@@ -62,7 +62,7 @@ export async function checkedDirectly({ services, dataAdminId }: ExtractsApp, { 
 export async function loaded(test: ExtractsApp, file: Upload): Promise<Extract> {
   const { id, state, failure } = await checked(test, file);
   if (state !== "checked") throw new Error(`The file is ${state}: ${JSON.stringify(failure)}`);
-  return afterJob(test, await act(test, `/api/extracts/${id}/load`).expect(202));
+  return afterJob(test, await act(test, `/api/extracts/${id}/load`).send({ secondLook: true }).expect(202));
 }
 
 export const storesFile = [

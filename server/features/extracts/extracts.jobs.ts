@@ -26,7 +26,8 @@ export const checkExtractJob = defineJob({
 /** Loads the usable rows of a checked file, all or none. */
 export const loadExtractJob = defineJob({
   kind: "load-extract",
-  payload: actedPayload,
+  /** `seen`: why it needs a second look, as the one who asked for it has seen it. */
+  payload: actedPayload.extend({ seen: z.array(z.string()).default([]) }),
   run: ({ services, payload, progress }) => loadExtract(services, { ...payload, progress }),
   onGivenUp: ({ services, payload, error }) => abandonLoad(services, { ...payload, error }),
 });

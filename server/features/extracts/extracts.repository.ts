@@ -1,6 +1,8 @@
 import { LockMode } from "@mikro-orm/core";
 import type { EntityManager } from "@mikro-orm/postgresql";
 import type { ExtractChanges, IssueCount } from "@shared/contract/extracts";
+import type { Layout } from "@shared/contract/layouts";
+import type { UnknownCodes } from "@shared/contract/unknown-codes";
 import { ExtractEntity, ExtractIssueEntity, type Extract, type ExtractIssue } from "./extracts.entities";
 
 export function findExtract(em: EntityManager, id: string): Promise<Extract | null> {
@@ -57,6 +59,18 @@ export async function issueCountsOf(em: EntityManager, extract: Extract): Promis
 export async function changesOf(em: EntityManager, extract: Extract): Promise<ExtractChanges | null> {
   await em.populate(extract, ["changes"]);
   return extract.changes ?? null;
+}
+
+/** The layout by which an extract is read; null where it is in our own form, or that is not known yet. */
+export async function layoutInForceOf(em: EntityManager, extract: Extract): Promise<Layout | null> {
+  await em.populate(extract, ["layoutInForce"]);
+  return extract.layoutInForce ?? null;
+}
+
+/** Codes that the catalogue lacked when the file was checked; null before that. */
+export async function unknownCodesOf(em: EntityManager, extract: Extract): Promise<UnknownCodes | null> {
+  await em.populate(extract, ["unknownCodes"]);
+  return extract.unknownCodes ?? null;
 }
 
 /** Removes what an earlier check has found. */

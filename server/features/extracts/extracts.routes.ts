@@ -1,23 +1,12 @@
-import type { Response } from "express";
 import { pipeline } from "node:stream/promises";
 import * as contract from "@shared/contract/extracts";
-import { route, type Route, type SignedInCall } from "../../http/route";
-import type { Endpoint } from "@shared/contract/endpoint";
+import { route, type Route } from "../../http/route";
+import { accepted, actorOf } from "./accepted";
 import { presentExtract, presentIssue } from "./extracts.presenter";
 import { getChanges, getExtract, listExtracts, listIssues, openOriginal, readLoadedWeeks } from "./extracts.service";
-import type { Actor } from "./load/load-extract.service";
 import { requestCheck, requestLoad, requestWithdrawal } from "./requests.service";
 import { registerExtract } from "./upload/receive-extract.service";
 import { receivedFile, receiveUpload } from "./upload/receive-upload";
-
-const actorOf = ({ caller, requestId }: Pick<SignedInCall<Endpoint>, "caller" | "requestId">): Actor =>
-  ({ personId: caller.personId, tokenId: caller.tokenId, requestId });
-
-/** Answers 202 with where the job can be watched. */
-function accepted(response: Response, jobId: string): { jobId: string } {
-  response.location(`/api/jobs/${jobId}`);
-  return { jobId };
-}
 
 const list = route(contract.listExtracts, async ({ em, query, caller }) => {
   const { items, nextCursor } = await listExtracts(em, query);
@@ -61,7 +50,7 @@ const check = route(contract.checkExtract, async (call) =>
   accepted(call.response, await requestCheck(call.em, { services: call.services, extractId: call.params.id, actor: actorOf(call) })));
 
 const load = route(contract.loadExtract, async (call) =>
-  accepted(call.response, await requestLoad(call.em, { services: call.services, extractId: call.params.id, actor: actorOf(call) })));
+  accepted(call.response, await requestLoad(call.em, { services: call.services, extractId: call.params.id, actor: actorOf(call), ...call.body })));
 
 const withdraw = route(contract.withdrawExtract, async (call) =>
   accepted(call.response, await requestWithdrawal(call.em, { services: call.services, extractId: call.params.id, actor: actorOf(call) })));

@@ -3,14 +3,16 @@ import { conflict, notFound } from "../../errors";
 import type { Services } from "../../services";
 import type { Extract } from "./extracts.entities";
 import { checkExtractJob, loadExtractJob, withdrawExtractJob } from "./extracts.jobs";
-import { lockExtract } from "./extracts.repository";
+import { changesOf, lockExtract } from "./extracts.repository";
 import type { Actor } from "./load/load-extract.service";
+import { secondLookNeeded } from "./load/second-look";
 import { requireWithdrawable } from "./load/withdraw-extract.service";
 
 /** Where an extract can be read. */
 export const pathOf = (extractId: string) => `/api/extracts/${extractId}`;
 
 type Asked = { services: Services; extractId: string; actor: Actor };
+type AskedLoad = Asked & { /** Whether the caller has looked at what is unusual about it. */ secondLook?: boolean };
 
 /** The actor as a job's payload keeps it. */
 const kept = ({ personId, tokenId, requestId }: Actor) => ({ personId, tokenId: tokenId ?? null, requestId: requestId ?? null });
@@ -19,6 +21,13 @@ async function locked(em: EntityManager, extractId: string): Promise<Extract> {
   const extract = await lockExtract(em, extractId);
   if (!extract) throw notFound("extract");
   return extract;
+}
+
+/** The extract, its row locked. @throws ProblemError 404, or 409 where it is loaded or being loaded. */
+export async function lockCheckable(em: EntityManager, extractId: string): Promise<Extract> {
+  const extract = await locked(em, extractId);
+  if (["received", "checking", "checked", "unusable"].includes(extract.state)) return extract;
+  throw conflict("not-checkable", `This extract is ${extract.state}, so it cannot be checked again. Upload the file anew.`);
 }
 
 /** Puts a check into the queue, in the context's transaction, and notes its job with the extract. */
@@ -35,10 +44,7 @@ export async function enqueueCheck(em: EntityManager, { services, extract, perso
  */
 export function requestCheck(em: EntityManager, { services, extractId, actor }: Asked): Promise<string> {
   return em.transactional(async (inner) => {
-    const extract = await locked(inner, extractId);
-    if (!["received", "checking", "checked", "unusable"].includes(extract.state)) {
-      throw conflict("not-checkable", `This extract is ${extract.state}, so it cannot be checked again. Upload the file anew.`);
-    }
+    const extract = await lockCheckable(inner, extractId);
     return enqueueCheck(inner, { services, extract, personId: actor.personId });
   });
 }
@@ -46,15 +52,18 @@ export function requestCheck(em: EntityManager, { services, extractId, actor }: 
 /**
  * Has a checked file loaded, in the background; while that waits or runs already, its job is answered.
  *
- * @throws ProblemError 404, or 409 where the file is not checked, or loaded already.
+ * @throws ProblemError 404, or 409 where the file is not checked, loaded already,
+ * or would change so much that it needs a second look.
  */
-export function requestLoad(em: EntityManager, { services, extractId, actor }: Asked): Promise<string> {
+export function requestLoad(em: EntityManager, { services, extractId, actor, secondLook = false }: AskedLoad): Promise<string> {
   return em.transactional(async (inner) => {
     const extract = await locked(inner, extractId);
     if (extract.state === "loading" && extract.jobId != null) return extract.jobId;
     if (extract.state !== "checked") throw notLoadable(extract);
+    const reasons = (await changesOf(inner, extract))?.secondLook ?? [];
+    if (reasons.length > 0 && !secondLook) throw secondLookNeeded(reasons);
     const options = { personId: actor.personId, subject: pathOf(extractId), singletonKey: `load:${extractId}` };
-    extract.jobId = await services.queue.enqueue(inner, loadExtractJob, { extractId, actor: kept(actor) }, options);
+    extract.jobId = await services.queue.enqueue(inner, loadExtractJob, { extractId, actor: kept(actor), seen: reasons }, options);
     extract.state = "loading";
     extract.failure = null;
     return extract.jobId;

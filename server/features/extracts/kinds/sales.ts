@@ -6,7 +6,8 @@ import { isMistypedGtin, reportCheckDigit } from "../check/gtin-column";
 import type { Column, Row } from "../check/row";
 import { checkNetSales, checkTradeDays, checkUnitCost, paidPrice } from "../check/sales-row-rules";
 import { checkSalesTogether } from "../check/sales-together.repository";
-import { compareSales, ensurePartitions, mergeSales } from "../load/sales-merge.repository";
+import { compareSales } from "../load/compare-sales.repository";
+import { ensurePartitions, mergeSales } from "../load/sales-merge.repository";
 import type { KindDefinition, ReaderContext } from "./kind";
 import { temperatureOf } from "./temperatures";
 

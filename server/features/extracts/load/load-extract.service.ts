@@ -12,12 +12,20 @@ import { changesOf, findExtract, lockCheck, lockExtract } from "../extracts.repo
 import { kinds } from "../kinds/kinds";
 import { noticeLoaded } from "../notices/extract-notices";
 import { lockLoads } from "./load-lock.repository";
+import { SecondLookNeeded, secondLookNeeded } from "./second-look";
 import { analyseStaging, countStaged, dropStaging, stagingTable } from "./staging.repository";
 
 /** Who asked for it; the one who uploaded the file, where nobody is named. */
 export type Actor = { personId: string; tokenId?: string | null; requestId?: string | null };
 
-type LoadOptions = { extractId: string; actor?: Actor; progress?: Progress };
+type LoadOptions = {
+  extractId: string;
+  actor?: Actor;
+  /** Why it needs a second look, as a person has seen and confirmed it; "everything" where that was seen to otherwise. */
+  seen?: Seen;
+  progress?: Progress;
+};
+type Seen = readonly string[] | "everything";
 
 const steps = 4;
 
@@ -26,9 +34,26 @@ const steps = 4;
  * installation, so two cannot mix. A file that was loaded already answers what it changed then, and changes nothing.
  *
  * @returns how many rows were new, changed, and there already.
- * @throws ProblemError 404, or 409 where the extract is not checked.
+ * @throws ProblemError 404; 409 where the extract is not checked, or would change more than usual by now and nobody has
+ * seen that: what it would change is then kept with it.
  */
-export async function loadExtract(services: Services, { extractId, actor, progress = quietly }: LoadOptions): Promise<ExtractChanges["totals"]> {
+export async function loadExtract(services: Services, options: LoadOptions): Promise<ExtractChanges["totals"]> {
+  try {
+    return await loadOnce(services, options);
+  } catch (error) {
+    if (!(error instanceof SecondLookNeeded)) throw error;
+    const { changes } = error;
+    await services.orm.em.fork().transactional((em) => keepChanges(em, { extractId: options.extractId, changes }));
+    throw secondLookNeeded(changes.secondLook);
+  }
+}
+
+async function keepChanges(em: EntityManager, { extractId, changes }: { extractId: string; changes: ExtractChanges }): Promise<void> {
+  const extract = await lockExtract(em, extractId);
+  if (extract?.state === "checked" || extract?.state === "loading") extract.changes = changes;
+}
+
+async function loadOnce(services: Services, { extractId, actor, seen = [], progress = quietly }: LoadOptions): Promise<ExtractChanges["totals"]> {
   const step = (done: number, message: string) => progress({ done, total: steps, message });
   await step(0, "Making the rows ready");
   await ensureStaged(services, { extractId, progress });
@@ -37,21 +62,22 @@ export async function loadExtract(services: Services, { extractId, actor, progre
     await lockLoads(em);
     const extract = requireLoadable(await findExtract(em, extractId));
     if (extract.state === "loaded") return changesOf(em, extract);
-    return load({ em, services, extract, actor, step });
+    return load({ em, services, extract, actor, seen, step });
   });
   return changes?.totals ?? { new: 0, changed: 0, same: 0, missing: 0 };
 }
 
-type Load = { em: EntityManager; services: Services; extract: Extract; actor?: Actor; step: (done: number, message: string) => Promise<void> };
+type Load = { em: EntityManager; services: Services; extract: Extract; actor?: Actor; seen: Seen; step: (done: number, message: string) => Promise<void> };
 
-async function load({ em, services, extract: { id, kind }, actor, step }: Load): Promise<ExtractChanges> {
+async function load({ em, services, extract: { id, kind, fileName, uploadedBy }, actor, seen, step }: Load): Promise<ExtractChanges> {
   const { compare, load: loadRows } = kinds[kind];
   const rows = { em, table: stagingTable(id) };
   const now = services.now();
   await step(2, "Comparing with what is there");
   const changes = await compare(rows);
+  if (seen !== "everything" && changes.secondLook.some((reason) => !seen.includes(reason))) throw new SecondLookNeeded(changes);
   await step(3, "Loading");
-  await loadRows({ ...rows, extractId: id, now, changes });
+  await loadRows({ ...rows, extractId: id, now, changes, by: { ...(actor ?? { personId: uploadedBy.id }), file: { id, name: fileName } } });
   await dropStaging(em, id);
   const extract = requireLoadable(await lockExtract(em, id));
   extract.state = "loaded";
@@ -59,13 +85,16 @@ async function load({ em, services, extract: { id, kind }, actor, step }: Load):
   extract.loadedAt = now;
   extract.failure = null;
   const by = actor ?? { personId: extract.uploadedBy.id };
-  audit(em, { ...by, action: "extract.loaded", subject: { kind: "extract", id }, detail: { fileName: extract.fileName, ...changes.totals } });
+  audit(em, { ...by, action: "extract.loaded", subject: { kind: "extract", id }, detail: { fileName: extract.fileName, ...changes.totals, ...confirmed(changes) } });
   await countInLater(em, { services, extract });
   await noticeLoaded(em, services, { extract, changes, by });
   // The last moment at which a cancellation or the loss of the job can still undo everything.
-  await step(steps, "Loaded");
+  await step(steps, changes.totals.new + changes.totals.changed > 0 ? "Loaded" : "Every row is there already: nothing was changed");
   return changes;
 }
+
+/** What was seen and confirmed, for the audit trail. */
+const confirmed = ({ secondLook }: ExtractChanges) => (secondLook.length > 0 ? { secondLookConfirmed: secondLook } : {});
 
 function requireLoadable(extract: Extract | null): Extract {
   if (!extract) throw notFound("extract");

@@ -1,3 +1,5 @@
+import type { StagedRows } from "../kinds/kind";
+
 /** What stands for a store-week. */
 export const key = ["product_id", "store_id", "week"];
 
@@ -17,3 +19,17 @@ export type WeekRange = { first: string; last: string };
  * the weeks come from the database, never from a file's text.
  */
 export const within = ({ first, last }: WeekRange) => `sales.week between date '${first}' and date '${last}'`;
+
+export const columns = (names: readonly string[], alias: string) => names.map((name) => `${alias}.${name}`).join(", ");
+
+/** SQL that `sales` and `staged` stand for the same store-week of a product, and that they say different things of it. */
+export const sameKey = key.map((name) => `sales.${name} = staged.${name}`).join(" and ");
+export const differs = `(${columns(said, "sales")}) is distinct from (${columns(said, "staged")})`;
+
+/** First and last week of staged rows; undefined where there are none. */
+export async function weeksOf({ em, table }: StagedRows): Promise<WeekRange | undefined> {
+  const [row] = await em.execute<[{ first: string | null; last: string | null }]>(
+    `select min(week)::text as first, max(week)::text as last from ${table}`,
+  );
+  return row.first === null || row.last === null ? undefined : { first: row.first, last: row.last };
+}

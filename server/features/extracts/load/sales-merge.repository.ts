@@ -1,11 +1,7 @@
 import type { ExtractChanges } from "@shared/contract/extracts";
 import type { StagedRows } from "../kinds/kind";
 import { derivePrices } from "./derived-prices.repository";
-import { key, said, salesColumns, type WeekRange, within } from "./sales-columns";
-
-const columns = (names: readonly string[], alias: string) => names.map((name) => `${alias}.${name}`).join(", ");
-const sameKey = key.map((name) => `sales.${name} = staged.${name}`).join(" and ");
-const differs = `(${columns(said, "sales")}) is distinct from (${columns(said, "staged")})`;
+import { columns, differs, key, said, salesColumns, sameKey, weeksOf, type WeekRange, within } from "./sales-columns";
 
 /** The price that a row itself tells, and from what; see shared/planning's modelledPrice. */
 const ownPrice = `
@@ -14,32 +10,6 @@ const ownPrice = `
 const ownSource = `
   case when staged.shelf_price > 0 then 'shelf'
     when staged.units > 0 and round(staged.net_sales / staged.units, 4) > 0 then 'paid' else 'unknown' end`;
-
-/** Weeks of the file as SQL literals: the planner then looks into their partitions only. */
-async function weeksOf({ em, table }: StagedRows): Promise<WeekRange | undefined> {
-  const [row] = await em.execute<[{ first: string | null; last: string | null }]>(
-    `select min(week)::text as first, max(week)::text as last from ${table}`,
-  );
-  return row.first === null || row.last === null ? undefined : { first: row.first, last: row.last };
-}
-
-/** What loading would change, by week: rows that are new, that differ from what is there, and that are the same. */
-export async function compareSales({ em, table }: StagedRows): Promise<ExtractChanges> {
-  const range = await weeksOf({ em, table });
-  if (!range) return { totals: { new: 0, changed: 0, same: 0, missing: 0 }, weeks: [], secondLook: [] };
-  const weeks = await em.execute<ExtractChanges["weeks"]>(`
-    select staged.week::text as week,
-      count(*) filter (where sales.product_id is null)::int as new,
-      count(*) filter (where sales.product_id is not null and ${differs})::int as changed,
-      count(*) filter (where sales.product_id is not null and not ${differs})::int as same,
-      0 as missing,
-      coalesce(sum(sales.units), 0)::float8 as "unitsBefore", sum(staged.units)::float8 as "unitsAfter"
-    from ${table} staged
-    left join weekly_sales sales on ${sameKey} and ${within(range)}
-    group by staged.week order by staged.week`);
-  const total = (count: "new" | "changed" | "same" | "missing") => weeks.reduce((sum, week) => sum + week[count], 0);
-  return { totals: { new: total("new"), changed: total("changed"), same: total("same"), missing: total("missing") }, weeks, secondLook: [] };
-}
 
 /**
  * Makes the partitions that staged weeks need. In a transaction of its own: making one shuts readers out until the
