@@ -1,19 +1,20 @@
 import { useQuery } from "@tanstack/react-query";
 import type { QueryClient } from "@tanstack/react-query";
+import { Download } from "lucide-react";
 import { useParams, useSearchParams } from "react-router-dom";
 import type { LoaderFunctionArgs } from "react-router-dom";
+import { getExtractOriginal } from "@shared/contract/extracts";
+import { buttonStyle } from "@/components/ui/button-style";
 import { PageHeader } from "@/components/ui/page-header";
 import { QueryView } from "@/components/ui/query-view";
 import { Tag } from "@/components/ui/tag";
 import { TextLink } from "@/components/ui/text-link";
 import { extractQuery } from "@/features/extracts/api/extract";
-import { ChangesPreview } from "@/features/extracts/components/changes-preview";
-import { ExtractActions } from "@/features/extracts/components/extract-actions";
-import { ExtractFacts } from "@/features/extracts/components/extract-facts";
-import { ExtractWork } from "@/features/extracts/components/extract-work";
-import { IssueList } from "@/features/extracts/components/issue-list";
+import { ExtractPath } from "@/features/extracts/components/path/extract-path";
 import { describeState, kindNames } from "@/features/extracts/view/extract-state";
-import { formatBytes } from "@/lib/format/bytes";
+import { readIssueFilter } from "@/features/extracts/view/issue-filter";
+import type { IssueFilter } from "@/features/extracts/view/issue-filter";
+import { endpointAddress } from "@/lib/api-client";
 import { useChainFormat } from "@/lib/format/chain-format";
 import { paths } from "@/lib/paths";
 
@@ -29,13 +30,13 @@ export const ExtractRoute = () => {
   const [search, setSearch] = useSearchParams();
   const format = useChainFormat();
   const query = useQuery(extractQuery(extractId));
-  const chooseRule = (rule: string | null) =>
-    setSearch(rule ? { rule } : {}, { replace: true, preventScrollReset: true });
+  const choose = ({ rule, severity }: IssueFilter) =>
+    setSearch({ ...(rule && { rule }), ...(severity && { severity }) }, { replace: true, preventScrollReset: true });
   return (
     <QueryView query={query} loading="Reading the extract" failure="The extract could not be read">
       {(extract) => {
         const { word, tone } = describeState(extract);
-        const hasIssues = extract.rows !== null && extract.rows.errors + extract.rows.warnings > 0;
+        const { firstWeek, lastWeek } = extract;
         return (
           <>
             <p className="mb-1 text-sm">
@@ -51,21 +52,20 @@ export const ExtractRoute = () => {
               }
               facts={[
                 kindNames[extract.kind],
-                formatBytes(extract.sizeBytes),
+                firstWeek && lastWeek && format.weekSpan(firstWeek, lastWeek),
                 `uploaded ${format.moment(extract.uploadedAt)} by ${extract.uploadedBy.name}`,
-                extract.loadedAt && `loaded ${format.moment(extract.loadedAt)}`,
-                extract.withdrawnAt && `withdrawn ${format.moment(extract.withdrawnAt)}`,
               ].filter(Boolean)}
-              actions={<ExtractActions extract={extract} />}
+              actions={
+                <a
+                  href={endpointAddress(getExtractOriginal, { params: { id: extract.id } })}
+                  download={extract.fileName}
+                  className={buttonStyle()}
+                >
+                  <Download aria-hidden="true" /> Original
+                </a>
+              }
             />
-            <div className="flex flex-col gap-5">
-              <ExtractWork extract={extract} />
-              <ExtractFacts extract={extract} />
-              {extract.rows !== null && extract.rows.usable > 0 && ["checked", "loaded"].includes(extract.state) && (
-                <ChangesPreview extractId={extract.id} isLoaded={extract.state === "loaded"} />
-              )}
-              {hasIssues && <IssueList extract={extract} rule={search.get("rule")} onRule={chooseRule} />}
-            </div>
+            <ExtractPath key={extract.id} extract={extract} filter={readIssueFilter(search)} onFilter={choose} />
           </>
         );
       }}

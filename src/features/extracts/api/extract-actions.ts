@@ -4,17 +4,27 @@ import { call } from "@/lib/api-client";
 import { extractChangesKey } from "./extract-changes";
 import { extractQuery } from "./extract";
 import { extractIssuesKey } from "./extract-issues";
+import { coverageKey } from "./coverage";
+import { extractLayoutKey } from "./extract-layout";
+import { unknownCodesKey } from "./unknown-codes";
 
-const endpoints = { check: checkExtract, withdraw: withdrawExtract };
-export type ExtractAction = "check" | "load" | "withdraw";
+/** What can be started on an extract; a load that is unusual must say that a person has looked at it. */
+export type ExtractAction = { name: "check" | "withdraw" } | { name: "load"; secondLook: boolean };
+
+const start = (id: string, action: ExtractAction) => {
+  const params = { id };
+  if (action.name === "load") return call(loadExtract, { params, body: { secondLook: action.secondLook } });
+  return call(action.name === "check" ? checkExtract : withdrawExtract, { params });
+};
 
 /** Starts a check, a load or a withdrawal; each goes on in the background. */
 export const useExtractAction = (id: string) => {
   const queryClient = useQueryClient();
   return useMutation({
-    mutationFn: (action: ExtractAction) =>
-      action === "load" ? call(loadExtract, { params: { id }, body: {} }) : call(endpoints[action], { params: { id } }),
+    mutationFn: (action: ExtractAction) => start(id, action),
     onSettled: () => queryClient.invalidateQueries({ queryKey: extractQuery(id).queryKey }),
+    // A refused load may have learnt reasons for a second look since.
+    onError: () => queryClient.invalidateQueries({ queryKey: extractChangesKey(id) }),
   });
 };
 
@@ -27,7 +37,10 @@ export const useRefreshExtract = (id: string) => {
         extractQuery(id).queryKey,
         extractIssuesKey(id),
         extractChangesKey(id),
+        extractLayoutKey(id),
+        unknownCodesKey(id),
         ["extracts"],
+        coverageKey,
         ["loaded-weeks"],
         ["products"],
         ["stores"],

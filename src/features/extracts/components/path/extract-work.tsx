@@ -5,8 +5,8 @@ import { Notice } from "@/components/ui/notice";
 import { Sheet } from "@/components/ui/sheet";
 import { useStatusLine } from "@/components/ui/status-line";
 import { useJob } from "@/lib/use-job";
-import { useRefreshExtract } from "../api/extract-actions";
-import { isInWork } from "../view/extract-state";
+import { useRefreshExtract } from "../../api/extract-actions";
+import { isInWork } from "../../view/extract-state";
 
 const labels = { received: "Checking the rows", checking: "Checking the rows", loading: "Loading, all or nothing" };
 
@@ -27,21 +27,20 @@ export const ExtractWork = ({ extract }: { extract: Extract }) => {
   const isRunning = job !== undefined && (job.state === "queued" || job.state === "running");
   if (isRunning) {
     return (
-      <Sheet>
+      <Sheet className="mb-4">
         <JobProgress key={job.id} job={job} updatedAtMs={updatedAtMs} label={labelOf(extract.state)} />
         <p className="mt-2 text-sm text-muted">You can leave this page: it goes on, and this page finds it again.</p>
       </Sheet>
     );
   }
-  if (!extract.failure) return null;
+  // What made the file unusable stands at its step; a job that broke down is said here.
+  if (!extract.failure || extract.state === "unusable" || extract.state === "received") return null;
   return (
-    <Notice tone="danger" role="alert">
-      <strong className="font-semibold">
-        {extract.state === "unusable"
-          ? "This file cannot be used. "
-          : "The last step broke down; nothing was changed. "}
-      </strong>
-      {extract.failure.detail}
-    </Notice>
+    <div className="mb-4">
+      <Notice tone="danger" role="alert">
+        <strong className="font-semibold">The last step broke down; nothing was changed. </strong>
+        {extract.failure.detail}
+      </Notice>
+    </div>
   );
 };

@@ -1,0 +1,11 @@
+/** A name for the layout of a file's source: its file's name without days, weeks and numbers. */
+export const suggestName = (fileName: string): string => {
+  const plain = fileName
+    .replace(/\.(csv|txt)?(\.gz)?$/i, "")
+    .replace(/\b(week|wk|kw|w|until|to|bis)\b/gi, " ")
+    .replace(/[\d_.-]+/g, " ")
+    .replace(/\s+/g, " ")
+    .trim();
+  const name = plain.length < 3 ? "New source" : plain;
+  return `${name.charAt(0).toUpperCase()}${name.slice(1)}`.slice(0, 80);
+};
