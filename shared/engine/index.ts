@@ -7,7 +7,7 @@ export { autocorrelation } from "./inference/autocorrelation";
 export type { AutocorrelationOptions, LagCorrelation } from "./inference/autocorrelation";
 export { compareModels } from "./inference/compare-models";
 export { modelReport } from "./inference/model-report";
-export { designRows, designTransposeTimes, designTransposeTimesMany, transposeTimes } from "./predict/design-rows";
+export { designRows, designTransposeTimes, designTransposeTimesMany, rowStandardErrors, transposeTimes } from "./predict/design-rows";
 export type { DesignRows } from "./predict/design-rows";
 export { bandModel } from "./predict/band-model";
 export { extendModel } from "./predict/extend-model";

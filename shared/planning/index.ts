@@ -22,6 +22,8 @@ export type { FileMechanic, Mechanic, PriceSource, Promotion, SalesRow } from ".
 export { readFit, SHOWN_BAND, shownModel } from "./shown-model";
 export { sharedValue } from "./shared-value";
 export type { SharedValue } from "./shared-value";
+export { curveWithKnown, varianceOfSum } from "./sum-over-stores";
+export type { PartVariance } from "./sum-over-stores";
 export { exposureOf, toModelData } from "./to-model-data";
 export type { RowCounts, SalesModelData } from "./to-model-data";
 export { describeVariation } from "./variation";

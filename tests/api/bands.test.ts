@@ -3,8 +3,9 @@ import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import type { Comparison } from "@shared/contract/comparisons";
 import type { Curve } from "@shared/contract/drivers";
 import type { Prediction } from "@shared/contract/scenarios";
-import { bandModel, covarianceQuadratic, designTransposeTimes, parseModel, serialiseModel, termCurve } from "@shared/engine";
+import { bandModel, covarianceQuadratic, designTransposeTimes, normalQuantile, parseModel, serialiseModel, termCurve } from "@shared/engine";
 import type { FittedModel } from "@shared/engine";
+import { varianceOfSum } from "@shared/planning";
 import { fitProduct } from "../../server/features/drivers";
 import { addPerson, signedIn } from "../support/people";
 import { loadSample, sample, sampleDraft } from "../support/sample-sales";
@@ -85,6 +86,23 @@ describe("Bands that pages show", () => {
     });
     const { derivative } = termCurve(fitted, "price", { at: [1.6], level: 0.9, band: "averaged", derivative: true });
     expect(compared?.elasticity?.lower).toBeCloseTo(derivative?.lower[0] ?? NaN, 8);
+  });
+});
+
+describe("The chain's elasticity", () => {
+  it("has an interval in which what smoothing may hide is the same in all stores", async () => {
+    const { chain } = await shown();
+    const [{ body }, { body: model }] = await Promise.all([planner.get(`/api/models/${modelId}/fits`), planner.get(`/api/models/${modelId}`)]);
+    const parts = body.items.map(({ fit }: { fit: string }, index: number) => {
+      const weight: number = model.fits[index].meanBaseUnits;
+      const kept = parseModel(fit);
+      const [all, known] = [kept, bandModel(kept, "pointwise")].map((of) => termCurve(of, "price", { at: [1.6], derivative: true }).derivative?.standardError[0] ?? NaN);
+      return { weight, all: (weight * all) ** 2, known: (weight * known) ** 2 };
+    });
+    const total = parts.reduce((sum: number, { weight }: { weight: number }) => sum + weight, 0);
+    const half = (normalQuantile(0.9) * Math.sqrt(varianceOfSum(parts))) / total;
+    expect(parts).toHaveLength(3);
+    expect(chain?.elasticity?.upper).toBeCloseTo((chain?.elasticity?.estimate ?? NaN) + half, 8);
   });
 });
 

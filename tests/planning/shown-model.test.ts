@@ -5,7 +5,8 @@ import { inventedModel, planCells } from "./an-invented-store";
 
 const fitted = inventedModel({ store: "S1", seed: 41 });
 const shown = shownModel(fitted);
-const [stores, level] = [(model: typeof fitted) => [{ store: "S1", model, baseUnits: 400 }], 0.8];
+const stores = (model: typeof fitted) => [{ store: "S1", model, baseUnits: 400 }];
+const level = 0.8;
 
 describe("The model that intervals are shown with", () => {
   it("has the band averaged over penalties; estimates, degrees of freedom and tests stay", () => {

@@ -1,4 +1,5 @@
 import { normalQuantile } from "@shared/engine";
+import { varianceOfSum, type PartVariance } from "@shared/planning";
 import type { Interval, StoreCurve } from "./store-curve";
 
 /** A store that learnt the driver, and how much it counts. */
@@ -14,7 +15,7 @@ export type ChainCurve = {
 /**
  * The chain's curve: what happens to all stores' units together when each follows its own curve, ln of the mean of their
  * multipliers weighted by base units; for a level, over the stores that know it. Where curves are relative to an anchor,
- * its slope there is the weighted mean of the stores' elasticities, whose errors are independent.
+ * its slope there is the weighted mean of the stores' elasticities, whose errors add up as `varianceOfSum` says.
  *
  * @param grid values of the curve; stores' curves of numbers are on the same.
  * @param isLog false for models that add drivers up: then the weighted mean itself.
@@ -56,14 +57,14 @@ function meanAt(
 function meanElasticity(curves: readonly WeightedCurve[], level: number): Interval | null {
   let weight = 0;
   let total = 0;
-  let variance = 0;
+  const parts: PartVariance[] = [];
   for (const { elasticity, baseUnits } of curves) {
     if (elasticity === null) return null;
     weight += baseUnits;
     total += baseUnits * elasticity.estimate;
-    variance += (baseUnits * elasticity.standardError) ** 2;
+    parts.push({ all: (baseUnits * elasticity.standardError) ** 2, known: (baseUnits * elasticity.knownError) ** 2 });
   }
   const estimate = total / weight;
-  const half = (normalQuantile(level) * Math.sqrt(variance)) / weight;
+  const half = (normalQuantile(level) * Math.sqrt(varianceOfSum(parts))) / weight;
   return { estimate, lower: estimate - half, upper: estimate + half };
 }

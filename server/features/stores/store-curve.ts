@@ -1,12 +1,15 @@
 import { termCurve, type FittedModel, type FittedTerm } from "@shared/engine";
-import { driverOfTerm } from "@shared/planning";
+import { curveWithKnown, driverOfTerm } from "@shared/planning";
 import { isPriceTerm, seenWeekByWeek, type DriverCurve } from "../drivers";
 import { relativeCurve } from "./relative-curve";
 
 export type Interval = { estimate: number; lower: number; upper: number };
 
 /** One store's part of a comparison. */
-export type StoreCurve = { curve: DriverCurve; elasticity: (Interval & { standardError: number }) | null };
+export type StoreCurve = { curve: DriverCurve; elasticity: StoreElasticity | null };
+
+/** With its standard error, and the one it would have if penalties were known: for sums over stores. */
+export type StoreElasticity = Interval & { standardError: number; knownError: number };
 
 /**
  * A driver's curve in one store on the grid of all stores, relative to the anchor where there is one; levels are those the
@@ -43,14 +46,14 @@ function knownTo(
 
 function elasticityAt(
   { model, term, anchor, level }: { model: FittedModel; term: FittedTerm; anchor: number; level: number },
-) {
-  const { derivative } = termCurve(model, term.id, { at: [anchor], level, derivative: true });
-  if (!derivative) return null;
+): StoreElasticity | null {
+  const { curve, known } = curveWithKnown(model, term.id, { at: [anchor], level, derivative: true });
+  if (!curve.derivative || !known.derivative) return null;
   const {
     estimate: [estimate],
     standardError: [standardError],
     lower: [lower],
     upper: [upper],
-  } = derivative;
-  return { estimate, standardError, lower, upper };
+  } = curve.derivative;
+  return { estimate, standardError, lower, upper, knownError: known.derivative.standardError[0] };
 }

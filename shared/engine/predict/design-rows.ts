@@ -74,6 +74,9 @@ export function designTransposeTimesMany(model: FittedModel, data: ModelData, ve
 /**
  * Standard error of each row's linear predictor (or of the parts given). O(n x entries^2), entries about 4 a curve; with
  * groups O(n x shared coefficients^2).
+ *
+ * @param parts of `designRows` for the model (extended by the same data, where they hold new weeks or groups), `count` rows each.
+ * @example rowStandardErrors(model, rows.parts, rows.count); // as predict(model, data).standardError
  */
 export function rowStandardErrors(model: FittedModel, parts: DesignRows["parts"], count: number): Float64Array {
   const entries = parts.reduce((sum, part) => sum + entriesPerRow(part.rows), 0);

@@ -1,6 +1,8 @@
 import { normalQuantile, termCurve } from "../../engine";
 import type { FittedTerm, TermCurve } from "../../engine";
 import type { Driver } from "../driver";
+import { curveWithKnown, varianceOfSum } from "../sum-over-stores";
+import type { PartVariance } from "../sum-over-stores";
 import { membersOf } from "./lane-term";
 import type { LaneMember, LaneStore } from "./lane-term";
 
@@ -40,8 +42,9 @@ const FEWEST_WEEKS_SEEN = 5;
 
 /**
  * The curve a lane draws: the base-units-weighted mean of the selected stores' multipliers, ln(sum of w exp(f) / sum of w), as
- * their units add up; with a pointwise band by the delta method, stores' models being independent: each store's variance counts by
- * the square of its share w exp(f) / sum of w exp(f). A level that a store never saw is averaged over the stores that did.
+ * their units add up; with a pointwise band by the delta method: each store's error counts by its share
+ * w exp(f) / sum of w exp(f), and errors add up as `varianceOfSum` does. A level that a store never saw is averaged over the
+ * stores that did.
  *
  * @returns null where no selected store's model has the driver.
  * @throws EngineError for values a term cannot be evaluated at. Cost: stores x points.
@@ -79,7 +82,7 @@ type Sums = Record<"estimate" | "variance" | "supportCount" | "hardlySeen", Floa
 
 /** Means over stores, point by point. A store without a level leaves its weight for that level to the others. */
 function sumsOver(members: readonly LaneMember[], x: Float64Array | string[]): Sums {
-  const curves = members.map((member) => ({ baseUnits: member.baseUnits, curve: knownCurve(member, x) }));
+  const curves = members.map((member) => ({ baseUnits: member.baseUnits, curve: storeCurve(member, x) }));
   const zeros = () => new Float64Array(x.length);
   const sums: Sums = { estimate: zeros(), variance: zeros(), supportCount: zeros(), hardlySeen: zeros() };
   const all = curves.reduce((total, { baseUnits }) => total + baseUnits, 0);
@@ -87,31 +90,36 @@ function sumsOver(members: readonly LaneMember[], x: Float64Array | string[]): S
     const having = curves.filter(({ curve }) => curve.positions[point] >= 0);
     const total = having.reduce((sum, { baseUnits }) => sum + baseUnits, 0);
     let units = 0;
-    let unitsVariance = 0;
+    const parts: PartVariance[] = [];
     sums.hardlySeen[point] = 1 - total / all;
-    for (const { baseUnits, curve: { positions, values } } of having) {
+    for (const { baseUnits, curve: { positions, values, known } } of having) {
       const position = positions[point];
       const own = baseUnits * Math.exp(values.estimate[position]);
       units += own;
-      unitsVariance += (own * values.standardError[position]) ** 2;
+      parts.push({ all: (own * values.standardError[position]) ** 2, known: (own * known.standardError[position]) ** 2 });
       sums.supportCount[point] += (baseUnits / all) * values.supportCount[position];
       const isHardlySeen = values.outside[position] === 1 || values.supportCount[position] < FEWEST_WEEKS_SEEN;
       if (isHardlySeen) sums.hardlySeen[point] += baseUnits / all;
     }
     sums.estimate[point] = Math.log(units / total);
-    sums.variance[point] = unitsVariance / (units * units);
+    sums.variance[point] = varianceOfSum(parts) / (units * units);
   }
   return sums;
 }
 
 /** A store's curve at those of the values its term knows, and where in it each value stands (-1 where it does not). */
-function knownCurve({ model, term }: LaneMember, x: Float64Array | string[]): { values: TermCurve; positions: number[] } {
+type StoreCurve = { values: TermCurve; known: TermCurve; positions: number[] };
+
+function storeCurve({ model, term }: LaneMember, x: Float64Array | string[]): StoreCurve {
   const { basis } = term;
-  if (basis.kind !== "factor") return { values: termCurve(model, term.id, { at: x }), positions: [...x.keys()] };
+  if (basis.kind !== "factor") {
+    const { curve, known } = curveWithKnown(model, term.id, { at: x });
+    return { values: curve, known, positions: [...x.keys()] };
+  }
   const names = typeof x[0] === "string" ? (x as string[]) : [];
-  const known = names.filter((name) => basis.levels.includes(name));
-  const positions = names.map((name) => known.indexOf(name));
-  return { values: termCurve(model, term.id, { at: known }), positions };
+  const levels = names.filter((name) => basis.levels.includes(name));
+  const { curve, known } = curveWithKnown(model, term.id, { at: levels });
+  return { values: curve, known, positions: names.map((name) => levels.indexOf(name)) };
 }
 
 function valuesOf(members: readonly LaneMember[], points: number): Float64Array | string[] {

@@ -1,7 +1,8 @@
-import { designRows, predict, transposeTimes } from "../../engine";
-import type { DesignRows, FittedModel } from "../../engine";
+import { designRows, extendModel, predict, rowStandardErrors, transposeTimes } from "../../engine";
+import type { DesignRows, FittedModel, ModelData } from "../../engine";
 import { modelColumns } from "../model-columns";
 import type { ModelCell } from "../model-columns";
+import { withKnownPenalties } from "../sum-over-stores";
 import { PlanningError } from "../planning-error";
 import type { CellFlag, Limits } from "./limits";
 import { cellInState, isSameInState, placeOf } from "./plan-cells";
@@ -14,6 +15,8 @@ export type CellPredictions = {
   mean: Float64Array;
   /** Of ln(mean), coefficients only. */
   standardError: Float64Array;
+  /** The same as if penalties were known; of the plan alone, else empty: only its weeks are summed one by one. */
+  knownError: Float64Array;
   /** Per term id: parts of the linear predictor. */
   contributions: Record<string, Float64Array>;
   rows: DesignRows;
@@ -59,10 +62,22 @@ function predictCells(
   const data = modelColumns(limited.cells);
   const { mean, standardError, contributions } = predict(model, data);
   const rows = designRows(model, data);
+  const knownError = state === "plan" ? knownErrors(model, data, { rows, standardError }) : new Float64Array(0);
   const total = mean.reduce((sum, value) => sum + value, 0);
   return {
-    mean, standardError, contributions, rows, total, totalGradient: transposeTimes(model, rows, mean), flags: limited.flags,
+    mean, standardError, knownError, contributions, rows, total, totalGradient: transposeTimes(model, rows, mean), flags: limited.flags,
   };
+}
+
+function knownErrors(
+  model: FittedModel, data: ModelData, { rows, standardError }: Pick<CellPredictions, "rows" | "standardError">,
+): Float64Array {
+  const known = withKnownPenalties(model);
+  if (known === model) return standardError;
+  // Weeks that a slowly moving level has not reached are coefficients of their own, as `predict` has them.
+  const extended = extendModel(known, data);
+  const { parts } = extended === known ? rows : designRows(extended, data);
+  return rowStandardErrors(extended, parts, rows.count);
 }
 
 function requireTemperatures(model: FittedModel, cells: readonly ModelCell[]): void {

@@ -1,13 +1,14 @@
 import { covarianceQuadratic } from "../../engine";
 import type { FittedModel } from "../../engine";
+import { varianceOfSum, withKnownPenalties } from "../sum-over-stores";
 import type { Interval } from "./scenario";
 
 /** A factor times a gradient; several of them add up to the gradient of what is estimated. */
 export type GradientPart = { factor: number; gradient: Float64Array | undefined };
 
 /**
- * The variance of a quantity by the delta method, g'Vg, over stores whose models are independent: g is the sum of the
- * parts, V the covariance of the store's coefficients. What two parts share cancels before it is squared.
+ * The variance of a quantity by the delta method: g'Vg of every store, g the sum of the parts, V the covariance of the
+ * store's coefficients, added up over stores as `varianceOfSum` does. What two parts share cancels before it is squared.
  *
  * @param partsOf the parts of each store's gradient; undefined gradients count as zero.
  * @example varianceOver(stores, (store) => [{ factor: 1 / total, gradient: store.plan.totalGradient }])
@@ -15,16 +16,16 @@ export type GradientPart = { factor: number; gradient: Float64Array | undefined 
 export function varianceOver<Store extends { model: FittedModel }>(
   stores: readonly Store[], partsOf: (store: Store) => GradientPart[],
 ): number {
-  let variance = 0;
-  for (const store of stores) {
+  return varianceOfSum(stores.map((store) => {
     const gradient = new Float64Array(store.model.coefficients.length);
     for (const part of partsOf(store)) {
       if (part.gradient === undefined) continue;
       for (let index = 0; index < gradient.length; index++) gradient[index] += part.factor * part.gradient[index];
     }
-    variance += Math.max(0, covarianceQuadratic(store.model, gradient, gradient));
-  }
-  return variance;
+    const all = covarianceQuadratic(store.model, gradient, gradient);
+    const known = withKnownPenalties(store.model);
+    return { all, known: known === store.model ? all : covarianceQuadratic(known, gradient, gradient) };
+  }));
 }
 
 /**
