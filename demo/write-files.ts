@@ -1,4 +1,7 @@
+import { writeFile } from "node:fs/promises";
+import { join } from "node:path";
 import { parseArgs } from "node:util";
+import { dirtyExtract } from "./dirty-extract";
 import { defaultSeed, generateDemo } from "./generate";
 import { writeDemo } from "./write";
 
@@ -14,4 +17,7 @@ if (positionals.length !== 1) {
 
 const demo = generateDemo({ seed: values.seed === undefined ? defaultSeed : Number(values.seed), today: values.today });
 const paths = await writeDemo({ demo, folder: positionals[0], gzipSales: values.gzip });
-console.log(paths.join("\n"));
+const dirty = dirtyExtract(demo);
+const dirtyPath = join(positionals[0], dirty.name);
+await writeFile(dirtyPath, dirty.bytes);
+console.log([...paths, dirtyPath].join("\n"));
