@@ -44,20 +44,25 @@ export const ChainGroup = ({ form, saved }: GroupProps) => {
 };
 
 const calendars = [
-  { value: "iso", label: "ISO 8601: week 1 has the year’s first Thursday" },
-  { value: "4-5-4", label: "4-5-4: the year ends on the Saturday nearest 31 January" },
+  { value: "iso", label: "ISO 8601" },
+  { value: "4-5-4", label: "4-5-4" },
 ];
+
+const calendarHints = {
+  iso: "Week 1 is the one that holds the year’s first Thursday.",
+  "4-5-4": "The year ends on the Saturday nearest 31 January.",
+};
 
 export const WeeksGroup = ({ form, saved }: GroupProps) => {
   const [calendar, weekStart] = useWatch({ control: form.control, name: ["calendar", "weekStart"] });
   const consequences = weekChangeConsequences(saved, { calendar, weekStart });
   return (
-    <SettingsGroup heading="Weeks" intro="Sales, plans and curves all go by these weeks.">
+    <SettingsGroup heading="Weeks" intro="Sales, plans and curves all go by these weeks, which the calendar numbers.">
       <ChoiceSetting
         control={form.control}
         name="calendar"
         label="Calendar"
-        hint="How weeks and years are numbered."
+        hint={calendarHints[calendar]}
         choices={calendars}
         onChosen={(chosen) => chosen === "4-5-4" && form.setValue("weekStart", sunday, { shouldDirty: true })}
       />

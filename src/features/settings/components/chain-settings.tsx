@@ -58,7 +58,7 @@ const ChainForm = ({ saved }: { saved: Chain }) => {
         </Notice>
       )}
       <div className="sticky bottom-0 -mx-4 flex flex-wrap items-center justify-end gap-3 border-t border-hairline bg-paper px-4 py-3">
-        <p className="mr-auto text-muted" aria-live="polite">
+        <p className="mr-auto text-muted max-sm:sr-only" aria-live="polite">
           {isDirty ? "There are changes that are not saved." : "Everything is saved."}
         </p>
         <Button disabled={!isDirty} onClick={discard}>
