@@ -29,7 +29,7 @@ describe("the list of stores", () => {
     const { body } = await read(test, "/api/stores").expect(200);
     const { items } = listStores.response!.parse(body);
     expect(items.map(({ code }) => code)).toEqual(["S1", "S2", "S3", "S4"]);
-    expect(items[0]).toEqual({ code: "S1", name: "Harbour Street", region: "coast", opened: "2015-03-02", closed: null });
+    expect(items[0]).toEqual({ code: "S1", name: "Harbour Street", region: "coast", opened: "2015-03-02", closed: null, version: expect.any(String) });
   });
 
   it("is for people who have signed in", async () => {
@@ -61,20 +61,20 @@ describe("the list of products", () => {
 
 describe("loading the catalogue", () => {
   it("counts a product's row as changed where the product or its terms differ, and the same file as the same", async () => {
-    expect(await load("products", productsFile)).toEqual({ new: 0, changed: 0, same: 3 });
-    expect(await load("products", productsFile.replace("0.90,1.99", "0.95,1.99"))).toEqual({ new: 0, changed: 1, same: 2 });
+    expect(await load("products", productsFile)).toEqual({ new: 0, changed: 0, same: 3, missing: 0 });
+    expect(await load("products", productsFile.replace("0.90,1.99", "0.95,1.99"))).toEqual({ new: 0, changed: 1, same: 2, missing: 0 });
     expect(await load("products", productsFile.replaceAll("Oat bar", "Oat bar, large").replaceAll("P1,Oat bar, large", 'P1,"Oat bar, large"')))
-      .toEqual({ new: 0, changed: 2, same: 1 });
+      .toEqual({ new: 0, changed: 2, same: 1, missing: 0 });
     expect((await productsOn())[0]).toMatchObject({ name: "Oat bar, large", unitCost: 0.9 });
   });
 
   it("takes a product without cost, price, tax or day as one whose terms hold from the beginning", async () => {
-    expect(await load("products", "product,name,category", "P3,Rye bar,snacks")).toEqual({ new: 1, changed: 0, same: 0 });
+    expect(await load("products", "product,name,category", "P3,Rye bar,snacks")).toEqual({ new: 1, changed: 0, same: 0, missing: 0 });
     expect((await productsOn("1990-06-14")).find(({ code }) => code === "P3")).toMatchObject({ unitCost: null, regularPrice: null, taxRate: 0 });
   });
 
   it("changes a store that moved region, and removes none", async () => {
-    expect(await load("stores", "store,name,region,closed", "S4,High Moor,town,2026-12-31", "S5,New Road,town,")).toEqual({ new: 1, changed: 1, same: 0 });
+    expect(await load("stores", "store,name,region,closed", "S4,High Moor,town,2026-12-31", "S5,New Road,town,")).toEqual({ new: 1, changed: 1, same: 0, missing: 0 });
     const { body } = await read(test, "/api/stores");
     expect(body.items.map(({ code, region }: { code: string; region: string }) => `${code} ${region}`)).toEqual(["S1 coast", "S2 coast", "S3 coast", "S4 town", "S5 town"]);
     expect(body.items[3]).toMatchObject({ closed: "2026-12-31" });
@@ -82,15 +82,15 @@ describe("loading the catalogue", () => {
 
   it("keeps an event's occurrences apart by day and region", async () => {
     const header = "event,name,first_day,last_day,region";
-    expect(await load("events", header, "fair,Summer fair,2026-06-05,2026-06-07,", "fair,Summer fair,2025-06-06,2025-06-08,coast")).toEqual({ new: 2, changed: 0, same: 0 });
-    expect(await load("events", header, "fair,Summer fair,2026-06-05,2026-06-08,", "fair,Summer fair,2025-06-06,2025-06-08,coast")).toEqual({ new: 0, changed: 1, same: 1 });
+    expect(await load("events", header, "fair,Summer fair,2026-06-05,2026-06-07,", "fair,Summer fair,2025-06-06,2025-06-08,coast")).toEqual({ new: 2, changed: 0, same: 0, missing: 0 });
+    expect(await load("events", header, "fair,Summer fair,2026-06-05,2026-06-08,", "fair,Summer fair,2025-06-06,2025-06-08,coast")).toEqual({ new: 0, changed: 1, same: 1, missing: 0 });
     const { rows } = await test.services.pool.query("select first_day, last_day, region from events order by first_day");
     expect(rows).toEqual([{ first_day: "2025-06-06", last_day: "2025-06-08", region: "coast" }, { first_day: "2026-06-05", last_day: "2026-06-08", region: "" }]);
   });
 
   it("keeps temperatures by region and by store", async () => {
-    expect(await load("temperatures", "week,region,store,temperature_c", "2026-06-01,coast,,14.5", "2026-W23,,S1,-2")).toEqual({ new: 2, changed: 0, same: 0 });
-    expect(await load("temperatures", "week,region,temperature_c", "2026-06-01,coast,15")).toEqual({ new: 0, changed: 1, same: 0 });
+    expect(await load("temperatures", "week,region,store,temperature_c", "2026-06-01,coast,,14.5", "2026-W23,,S1,-2")).toEqual({ new: 2, changed: 0, same: 0, missing: 0 });
+    expect(await load("temperatures", "week,region,temperature_c", "2026-06-01,coast,15")).toEqual({ new: 0, changed: 1, same: 0, missing: 0 });
     const { rows } = await test.services.pool.query("select week, region, store_code, temperature_c from temperatures order by region");
     expect(rows).toEqual([
       { week: "2026-06-01", region: "", store_code: "S1", temperature_c: -2 }, { week: "2026-06-01", region: "coast", store_code: "", temperature_c: 15 },

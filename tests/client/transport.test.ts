@@ -32,7 +32,7 @@ describe("a request", () => {
   it("gives what the contract says", async () => {
     answerRequests(() => ({
       status: 200,
-      body: { items: [{ code: "S01", name: "Ashgill", region: "coast", opened: null, closed: null }] },
+      body: { items: [{ code: "S01", name: "Ashgill", region: "coast", opened: null, closed: null, version: "v1" }] },
     }));
     expect((await call(listStores, {})).items[0].name).toBe("Ashgill");
   });

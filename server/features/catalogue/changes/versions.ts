@@ -28,12 +28,12 @@ type Standing = {
  */
 export async function requireSeen({ seen, version, what, lastChange }: Standing): Promise<void> {
   if (isSeen(seen, version)) return;
-  if (version === null) throw changed(`${capital(what)} was removed meanwhile. Nothing of yours was stored.`);
+  if (version === null) throw changed(`Someone removed ${what} meanwhile. Nothing of yours was stored.`);
   const last = await lastChange();
   const whose = last === null ? "Someone" : last.name;
   const when = last === null ? "meanwhile" : `at ${last.at.toISOString()}`;
   const ends = "Nothing of yours was stored: read it again, then repeat your change.";
-  if (seen.ifNoneMatch !== undefined) throw changed(`${capital(what)} is there already: ${whose} entered it ${when}. ${ends}`);
+  if (seen.ifNoneMatch !== undefined) throw changed(`${whose} entered ${what} ${when}. ${ends}`);
   throw changed(`${whose} changed ${what} ${when}, after you had read it. ${ends}`);
 }
 
@@ -47,5 +47,3 @@ function isSeen({ ifMatch, ifNoneMatch }: Seen, version: string | null): boolean
 }
 
 const changed = (detail: string) => new ProblemError({ status: 412, code: "changed-meanwhile", detail });
-
-const capital = (text: string) => text.charAt(0).toUpperCase() + text.slice(1);
