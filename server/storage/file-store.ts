@@ -12,12 +12,26 @@ export type FileStore = {
   put: (file: { key: string; body: Readable; contentType: string }) => Promise<void>;
   /** The bytes as they were stored. */
   get: (key: string) => Promise<Readable>;
+  /** The first bytes of a file; fewer where it is shorter. No more than these are asked for. */
+  head: (key: string, bytes: number) => Promise<Buffer>;
   /** Removes a file; one that is not there is no error. */
   remove: (key: string) => Promise<void>;
   /** Throws where the store cannot be reached. */
   check: () => Promise<void>;
   close: () => void;
 };
+
+/** Stores that know no ranges send the whole file: then it is cut off here. */
+async function firstBytes(body: Readable, bytes: number): Promise<Buffer> {
+  const chunks: Buffer[] = [];
+  let length = 0;
+  for await (const chunk of body as AsyncIterable<Buffer>) {
+    chunks.push(chunk);
+    length += chunk.length;
+    if (length >= bytes) break;
+  }
+  return Buffer.concat(chunks).subarray(0, bytes);
+}
 
 /** A file store in an S3 bucket, which exists already. */
 export function createFileStore(environment: Environment): FileStore {
@@ -45,6 +59,11 @@ export function createFileStore(environment: Environment): FileStore {
       const { Body } = await client.send(new GetObjectCommand({ Bucket: bucket, Key: key }));
       if (!Body) throw new Error(`The file store has no body for ${key}.`);
       return Body as Readable;
+    },
+    async head(key, bytes) {
+      const { Body } = await client.send(new GetObjectCommand({ Bucket: bucket, Key: key, Range: `bytes=0-${bytes - 1}` }));
+      if (!Body) throw new Error(`The file store has no body for ${key}.`);
+      return firstBytes(Body as Readable, bytes);
     },
     async remove(key) {
       await client.send(new DeleteObjectCommand({ Bucket: bucket, Key: key }));

@@ -4,7 +4,7 @@ export type ColumnType = "week" | "day" | "number" | "share" | "flag" | "mechani
 const types: Record<string, ColumnType> = {
   week: "week",
   opened: "day", closed: "day", valid_from: "day", first_day: "day", last_day: "day",
-  units: "number", net_sales: "number", regular_price: "number", shelf_price: "number", unit_cost: "number", temperature_c: "number",
+  units: "number", net_sales: "number", regular_price: "number", shelf_price: "number", unit_cost: "number", temperature_c: "number", per_unit: "number", lump_sum: "number",
   promotion_days: "number", open_days: "number", stock_out_days: "number",
   tax_rate: "share",
   feature: "flag", display: "flag", sold_by_weight: "flag",

@@ -42,6 +42,8 @@ export const columnWords: Record<string, readonly string[]> = {
   valid_from: list("valid from|effective date|effective from|from date|price date|gultig ab|gultig von|ab datum|valable des|valable a partir du|date d effet|valido desde|vigente desde|geldig vanaf|ingangsdatum"),
   tax_rate: list("tax rate|tax|vat|vat rate|sales tax|mwst|mwst satz|ust|steuersatz|mehrwertsteuer|tva|taux tva|taux de tva|iva|tipo iva|tipo de iva|btw|btw tarief|btw percentage"),
   first_day: list("first day|start|start date|from|begins|begin|date from|starts|erster tag|beginn|von|ab|startdatum|premier jour|debut|date debut|date de debut|du|primer dia|inicio|fecha inicio|fecha de inicio|desde|eerste dag|van|begindatum"),
+  per_unit: list("per unit|funding per unit|unit funding|contribution per unit|support per unit|rebate per unit|je stuck|pro stuck|zuschuss je stuck|par unite|por unidad|per stuk"),
+  lump_sum: list("lump sum|fixed amount|fixed funding|flat amount|pauschale|pauschalbetrag|werbekostenzuschuss|wkz|forfait|montant forfaitaire|importe fijo|vast bedrag"),
   last_day: list("last day|end|end date|to|until|ends|date to|letzter tag|ende|bis|enddatum|dernier jour|fin|date fin|date de fin|au|ultimo dia|fecha fin|fecha de fin|hasta|laatste dag|tot|einde|einddatum"),
 };
 

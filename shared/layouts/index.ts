@@ -1,5 +1,7 @@
 export { applyLayout } from "./apply-layout";
 export type { FieldProblem, LayoutReader, OurRecord } from "./apply-layout";
+export { columnType } from "./column-types";
+export type { ColumnType } from "./column-types";
 export { defaultWords } from "./default-words";
 export { decodeHead, detectEncoding } from "./detect-encoding";
 export { detectLayout } from "./detect-layout";

@@ -94,14 +94,14 @@ function misplacedShare({ theirColumns, rows }: Fit, layout: Layout, weekStart: 
 }
 
 /**
- * The share of a head's first rows that have a value which a layout cannot read; 1 where it has no rows.
+ * The share of a head's first rows that have a value which a layout cannot read; 0 where it has no rows.
  *
  * @example unreadableRows(layout, bytes) // 0
  */
 export function unreadableRows(layout: Layout, head: Uint8Array): number {
   const text = readHead(head, layout.encoding, layout.linesAbove);
   const rows = text ? recordsOf(text, layout.separator).slice(layout.hasHeader ? 1 : 0) : [];
-  return rows.length === 0 ? 1 : unreadableShare(layout, layout.theirColumns, rows);
+  return unreadableShare(layout, layout.theirColumns, rows);
 }
 
 function unreadableShare(layout: Layout, theirColumns: readonly string[], rows: readonly string[][]): number {

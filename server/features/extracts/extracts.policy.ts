@@ -1,6 +1,10 @@
 import type { Caller } from "../../http/route";
 import type { Extract } from "./extracts.entities";
 
+/** Whether it is read as we worked it out, and no person has looked at that yet. */
+export const awaitsLayout = ({ layoutOrigin, layoutConfirmed }: Pick<Extract, "layoutOrigin" | "layoutConfirmed">): boolean =>
+  layoutOrigin === "proposed" && !layoutConfirmed;
+
 export type ExtractRights = { check: boolean; load: boolean; withdraw: boolean };
 
 /** What a caller may do next with an extract, by permission and by the state it is in. */
@@ -10,7 +14,7 @@ export function extractRights(extract: Extract, caller: Pick<Caller, "permission
   return {
     // A file just received is about to be checked by itself.
     check: state === "checked" || state === "unusable" || (state === "received" && failure != null),
-    load: state === "checked",
+    load: state === "checked" && !awaitsLayout(extract),
     withdraw: state === "loaded" && kind === "sales",
   };
 }

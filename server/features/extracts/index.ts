@@ -5,6 +5,7 @@ export { extractsJobs } from "./extracts.jobs";
 export { coverageRoutes } from "./coverage/coverage.routes";
 export { watchSales } from "./notices/watch-sales";
 export { resumeCoverage } from "./coverage/count-in-later";
+export { layoutsRoutes } from "./layouts/layouts.routes";
 export { checkExtract } from "./check/check-extract.service";
 export { loadExtract } from "./load/load-extract.service";
 export { withdrawExtract } from "./load/withdraw-extract.service";

@@ -3,6 +3,7 @@ import { conflict, notFound } from "../../errors";
 import type { Services } from "../../services";
 import type { Extract } from "./extracts.entities";
 import { checkExtractJob, loadExtractJob, withdrawExtractJob } from "./extracts.jobs";
+import { awaitsLayout } from "./extracts.policy";
 import { changesOf, lockExtract } from "./extracts.repository";
 import type { Actor } from "./load/load-extract.service";
 import { secondLookNeeded } from "./load/second-look";
@@ -52,7 +53,7 @@ export function requestCheck(em: EntityManager, { services, extractId, actor }: 
 /**
  * Has a checked file loaded, in the background; while that waits or runs already, its job is answered.
  *
- * @throws ProblemError 404, or 409 where the file is not checked, loaded already,
+ * @throws ProblemError 404, or 409 where the file is not checked, loaded already, read by a layout that nobody has confirmed,
  * or would change so much that it needs a second look.
  */
 export function requestLoad(em: EntityManager, { services, extractId, actor, secondLook = false }: AskedLoad): Promise<string> {
@@ -60,6 +61,7 @@ export function requestLoad(em: EntityManager, { services, extractId, actor, sec
     const extract = await locked(inner, extractId);
     if (extract.state === "loading" && extract.jobId != null) return extract.jobId;
     if (extract.state !== "checked") throw notLoadable(extract);
+    if (awaitsLayout(extract)) throw layoutUnconfirmed();
     const reasons = (await changesOf(inner, extract))?.secondLook ?? [];
     if (reasons.length > 0 && !secondLook) throw secondLookNeeded(reasons);
     const options = { personId: actor.personId, subject: pathOf(extractId), singletonKey: `load:${extractId}` };
@@ -69,6 +71,12 @@ export function requestLoad(em: EntityManager, { services, extractId, actor, sec
     return extract.jobId;
   });
 }
+
+/** What a load is refused by while nobody has looked at how the file is read. */
+export const layoutUnconfirmed = () => conflict(
+  "layout-unconfirmed",
+  'How this file is read was worked out from its first rows and is not confirmed yet. Look at it under "How it is read", confirm or correct it, and load the file then.',
+);
 
 function notLoadable({ state }: Extract) {
   if (state === "loaded") return conflict("already-loaded", "This extract is loaded already. Nothing was changed.");

@@ -2,8 +2,9 @@ import type { EntityManager } from "@mikro-orm/postgresql";
 import type { Services } from "../../../services";
 import { conflict, notFound } from "../../../errors";
 import type { Extract } from "../extracts.entities";
-import { findExtract, lockCheck, lockExtract, removeIssues } from "../extracts.repository";
+import { findExtract, layoutInForceOf, lockCheck, lockExtract, removeIssues } from "../extracts.repository";
 import { kinds } from "../kinds/kinds";
+import { settleLayout } from "../layouts/settle-layout.service";
 import { analyseStaging, countStaged, dropStaging } from "../load/staging.repository";
 import { noticeChecked } from "../notices/extract-notices";
 import { UnreadableFile } from "../read/unreadable-file";
@@ -27,6 +28,7 @@ const checkable = new Set(["received", "checking", "checked", "unusable"]);
 export async function checkExtract(services: Services, { extractId, progress = quietly }: { extractId: string; progress?: Progress }): Promise<Extract> {
   await begin(services, extractId);
   try {
+    await settleLayout(services, extractId);
     await services.orm.em.fork().transactional((em) => check({ em, services, extractId, progress }));
   } catch (error) {
     if (!(error instanceof UnreadableFile)) throw error;
@@ -63,11 +65,13 @@ type Checking = { em: EntityManager; services: Services; extractId: string; prog
 async function check({ em, services, extractId, progress }: Checking): Promise<void> {
   // A second worker, which took the first for dead, waits for it.
   await lockCheck(em, extractId);
-  const { kind, storageKey, sizeBytes } = await requireExtract(em, extractId);
+  const found = await requireExtract(em, extractId);
+  const { kind, storageKey, sizeBytes } = found;
+  const layout = await layoutInForceOf(em, found);
   const definition = kinds[kind];
   await removeIssues(em, extractId);
   const { table, rowsRead, log, notes } = await stageRows({
-    em, services, extract: { id: extractId, kind, storageKey }, progress: reading(sizeBytes, progress),
+    em, services, extract: { id: extractId, kind, storageKey }, layout, progress: reading(sizeBytes, progress),
   });
   await progress({ done: sizeBytes, total: sizeBytes, message: `Rows read: ${count.format(rowsRead)}. Comparing them` });
   await keepIssues(em, { extractId, issues: log.kept });

@@ -28,6 +28,17 @@ const longestText = 400;
 export class IssueLog {
   readonly kept: LoggedIssue[] = [];
   readonly #counts = new Map<RuleName, number>();
+  #columnNames: ReadonlyMap<string, string> = new Map();
+
+  /** Says what columns of ours are called in the file, where that is something else. */
+  nameColumns(names: ReadonlyMap<string, string>): void {
+    this.#columnNames = names;
+  }
+
+  /** A column of ours as issues name it: with the file's own name before ours, where it has another. */
+  columnName(column: string): string {
+    return this.#columnNames.get(column) ?? column;
+  }
 
   report(finding: Finding): void {
     const count = this.count(finding.rule, 1);
@@ -35,7 +46,7 @@ export class IssueLog {
     const rule = rules[finding.rule];
     this.kept.push({
       line: finding.line,
-      column: cut(finding.column, 80),
+      column: cut(this.columnName(finding.column), 80),
       value: cut(finding.value, longestValue),
       rule: finding.rule,
       severity: rule.severity,

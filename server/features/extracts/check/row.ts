@@ -1,5 +1,6 @@
 import type { Header } from "../read/read-header";
 import type { Finding, IssueLog } from "./issue-log";
+import { columnType, type OurRecord } from "@shared/layouts";
 import { rules, type RuleName } from "./rules";
 
 type More = Pick<Finding, "reason" | "remedy">;
@@ -9,7 +10,11 @@ export class Row {
   line = 0;
   /** Whether an error was found in it: then it is kept out. */
   hasError = false;
+  /** Our columns' values as they are read, and as they stand in the file. */
   #fields: readonly string[] = [];
+  #theirs: readonly string[] | undefined;
+  /** Columns whose values a layout could not read: what follows from their being empty is not reported as well. */
+  #unread: ReadonlySet<string> = noColumns;
   readonly #header: Header;
   readonly #log: IssueLog;
 
@@ -22,6 +27,15 @@ export class Row {
     this.line = line;
     this.hasError = false;
     this.#fields = fields;
+  }
+
+  /** The same for a record that a layout has read. */
+  beginRead(line: number, { values, problems }: OurRecord, theirs: readonly string[]): void {
+    this.begin(line, values);
+    this.#theirs = theirs;
+    this.#unread = noColumns;
+    for (const { column, value, reason } of problems) this.report({ column, value, rule: ruleOfUnread(column), reason });
+    if (problems.length > 0) this.#unread = new Set(problems.map(({ column }) => column));
   }
 
   /** One of our columns; where the file lacks it, it is empty in every row. */
@@ -38,10 +52,31 @@ export class Row {
     return this.#fields[position]?.trim() ?? "";
   }
 
+  /** A value as it stands in the file. */
+  shown(position: number): string {
+    const theirs = this.#header.theirPositions?.[position] ?? null;
+    return this.#theirs && theirs !== null ? (this.#theirs[theirs]?.trim() ?? "") : this.at(position);
+  }
+
+  /** Amounts from here on cannot be kept. */
+  get amountLimit(): number {
+    return this.#header.amountLimit ?? mostAmount;
+  }
+
   report(finding: { column: string; value: string; rule: RuleName } & More): void {
+    if (this.#unread.has(finding.column)) return;
     if (rules[finding.rule].severity === "error") this.hasError = true;
     this.#log.report({ line: this.line, ...finding });
   }
+}
+
+const noColumns: ReadonlySet<string> = new Set();
+
+function ruleOfUnread(column: string): RuleName {
+  const type = columnType(column);
+  if (type === "week" || type === "day") return "unreadable-day";
+  if (type === "number" || type === "share") return "unreadable-number";
+  return type === "text" ? "unreadable-code" : "unreadable-word";
 }
 
 const plainNumber = /^[+-]?(?:\d+\.?\d*|\.\d+)$/;
@@ -76,7 +111,7 @@ export class Column {
   }
 
   report(rule: RuleName, more: More = {}): null {
-    this.#row.report({ column: this.name, value: this.raw, rule, ...more });
+    this.#row.report({ column: this.name, value: this.#row.shown(this.#position), rule, ...more });
     return null;
   }
 
@@ -96,7 +131,7 @@ export class Column {
 
   /** An amount of money; more than 4 decimals are rounded, with a warning. */
   amount({ needed = false, negative = false }: { needed?: boolean; negative?: boolean } = {}): string | null {
-    const value = this.number({ limit: mostAmount, needed });
+    const value = this.number({ limit: this.#row.amountLimit, needed });
     if (value === null) return null;
     if (!negative && Number(value) < 0) return this.report("negative-amount");
     if (hasMoreDecimals(value, amountDecimals)) this.report("rounded");

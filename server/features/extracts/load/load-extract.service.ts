@@ -8,7 +8,7 @@ import { stageRows } from "../check/stage-rows";
 import { rejectRepeatedRows } from "../check/together.repository";
 import { countInLater } from "../coverage/count-in-later";
 import type { Extract } from "../extracts.entities";
-import { changesOf, findExtract, lockCheck, lockExtract } from "../extracts.repository";
+import { changesOf, findExtract, layoutInForceOf, lockCheck, lockExtract } from "../extracts.repository";
 import { kinds } from "../kinds/kinds";
 import { noticeLoaded } from "../notices/extract-notices";
 import { lockLoads } from "./load-lock.repository";
@@ -120,8 +120,10 @@ async function ensureStaged(services: Services, { extractId, progress }: { extra
 
 async function stageAgain({ em, services, extract, progress }: { em: EntityManager; services: Services; extract: Extract; progress: Progress }): Promise<void> {
   const definition = kinds[extract.kind];
+  const managed = await findExtract(em, extract.id);
+  const layout = managed && await layoutInForceOf(em, managed);
   const { table, log, notes } = await stageRows({
-    em, services, extract,
+    em, services, extract, layout,
     progress: ({ readBytes }) => progress({ done: readBytes / Math.max(1, extract.sizeBytes), total: steps, message: "Reading the file again" }),
   });
   await analyseStaging(em, table);

@@ -74,9 +74,11 @@ async function* gunzip(compressed: AsyncIterable<Buffer>): AsyncGenerator<Buffer
   }
 }
 
-const isZlibError = (error: unknown) => error instanceof Error && "code" in error && String(error.code).startsWith("Z_");
+/** Whether unpacking has failed on what it was given. */
+export const isZlibError = (error: unknown) => error instanceof Error && "code" in error && String(error.code).startsWith("Z_");
 
-const brokenGzip = () =>
+/** What a damaged or cut gzip file is answered by. */
+export const brokenGzip = () =>
   new UnreadableFile("broken-gzip", "The compressed file is damaged or ends early. Compress it again, or upload the .csv itself.");
 
 const tooMuch = () =>

@@ -102,9 +102,9 @@ function readMultipart({ request, response, storage }: { request: Request; respo
 async function requireComplete(request: Request, services: Services): Promise<void> {
   if (!received.has(request)) throw missingFile();
   const form = uploadExtract.body?.safeParse(request.body);
-  if (!form || (form.success && !form.data.layout)) return;
+  if (form?.success) return;
   await discard(request, services);
-  if (form.success) throw unknownLayout(form.data.layout ?? "");
+  if (!form) return;
   const errors = form.error.issues.map((issue) => ({ path: issue.path.join("."), message: issue.message }));
   const detail = errors[0]?.path === "kind"
     ? `Say what the file holds in the field "kind": ${uploadExtract.body?.shape.kind.options.join(", ")}.`
@@ -133,11 +133,6 @@ function formProblem(error: MulterError): ProblemError {
   }
   return unusable("invalid-request", `The form cannot be used: ${error.message}.`);
 }
-
-const unknownLayout = (layout: string) => {
-  const detail = `There is no saved layout "${layout}". Send the file with our own columns and without a layout.`;
-  return unusable("unknown-layout", detail, [{ path: "layout", message: detail }]);
-};
 
 const missingFile = () => unusable("missing-file", "There is no file in the field \"file\". Choose a file and send it again.");
 
