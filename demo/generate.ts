@@ -1,6 +1,8 @@
 import { addDays, addWeeks, yearFraction } from "@shared/calendar";
 import { defaultToday, weeksBefore } from "./chain/calendar";
 import { eventsOfYears, type EventCode } from "./chain/events";
+import { fundingFrom } from "./chain/funding";
+import { listingsFrom } from "./chain/listings";
 import { products, type ChainProduct } from "./chain/products";
 import { stores, type ChainStore } from "./chain/stores";
 import { createRandom } from "./random";
@@ -37,6 +39,8 @@ export function generateDemo({ seed = defaultSeed, today = defaultToday }: DemoO
   return {
     stores: stores.map(storeRow),
     products: products.flatMap((product) => productRows(product, weeks[0])),
+    listings: listingsFrom({ products, stores, firstWeek: weeks[0] }),
+    funding: fundingFrom(weeks[0]),
     events,
     temperatures,
     sales: inOrder(products.flatMap((product) => productSales({ product, weeks, settings, seed }))),

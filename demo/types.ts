@@ -18,6 +18,12 @@ export type ProductRow = {
   taxRate: number;
 };
 
+/** A row of `listings.csv`: the days on which a store has a product; `lastDay` is null while it goes on. */
+export type ListingRow = { product: string; store: string; firstDay: string; lastDay: string | null };
+
+/** A row of `funding.csv`: what a supplier gives for some days, net of tax. */
+export type FundingRow = { product: string; firstDay: string; lastDay: string; perUnit: number; lumpSum: number };
+
 /** A row of `events.csv`; `region` is null for an event of the whole chain. */
 export type EventRow = { event: string; name: string; firstDay: string; lastDay: string; region: Region | null };
 
@@ -42,6 +48,8 @@ export type SalesRow = {
 export type Demo = {
   stores: StoreRow[];
   products: ProductRow[];
+  listings: ListingRow[];
+  funding: FundingRow[];
   events: EventRow[];
   temperatures: TemperatureRow[];
   sales: SalesRow[];

@@ -18,6 +18,14 @@ export function demoFiles(demo: Demo): Record<string, string> {
       rows: demo.stores.map((row) => [row.store, row.name, row.region, row.opened, row.closed]),
     }),
     "products.csv": toCsv(productTable(demo)),
+    "listings.csv": toCsv({
+      headings: ["product", "store", "first_day", "last_day"],
+      rows: demo.listings.map((row) => [row.product, row.store, row.firstDay, row.lastDay]),
+    }),
+    "funding.csv": toCsv({
+      headings: ["product", "first_day", "last_day", "per_unit", "lump_sum"],
+      rows: demo.funding.map((row) => [row.product, row.firstDay, row.lastDay, money(row.perUnit), money(row.lumpSum)]),
+    }),
     "events.csv": toCsv({
       headings: ["event", "name", "first_day", "last_day", "region"],
       rows: demo.events.map((row) => [row.event, row.name, row.firstDay, row.lastDay, row.region]),

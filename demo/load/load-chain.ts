@@ -41,6 +41,8 @@ export async function loadChain({ services, url, today, say }: Load): Promise<vo
 const files: [kind: ExtractKind, name: string][] = [
   ["stores", "stores.csv"],
   ["products", "products.csv"],
+  ["listings", "listings.csv"],
+  ["funding", "funding.csv"],
   ["events", "events.csv"],
   ["temperatures", "temperatures.csv"],
   ["sales", "sales.csv.gz"],

@@ -12,6 +12,8 @@ const files = demoFiles(demo);
 const headings: Record<string, string> = {
   "stores.csv": "store,name,region,opened,closed",
   "products.csv": "product,name,gtin,brand,category,sold_by_weight,valid_from,unit_cost,regular_price,tax_rate",
+  "listings.csv": "product,store,first_day,last_day",
+  "funding.csv": "product,first_day,last_day,per_unit,lump_sum",
   "events.csv": "event,name,first_day,last_day,region",
   "temperatures.csv": "week,region,temperature_c",
   "sales.csv": "week,store,product,units,net_sales,regular_price,shelf_price,feature,display,mechanic",
@@ -26,7 +28,7 @@ afterAll(() => rm(folder, { recursive: true }));
 describe("The demo's files", () => {
   it("have our headings, a row a line and nothing left over when read back", () => {
     expect(Object.keys(files)).toEqual(Object.keys(headings));
-    const rowCounts = { "stores.csv": 24, "products.csv": demo.products.length, "events.csv": demo.events.length };
+    const rowCounts = { "stores.csv": 24, "products.csv": demo.products.length, "listings.csv": 18 * 24, "funding.csv": demo.funding.length, "events.csv": demo.events.length };
     for (const [name, text] of Object.entries(files)) {
       const parsed = Papa.parse<string[]>(text, { skipEmptyLines: false });
       expect(parsed.errors).toEqual([]);
@@ -48,7 +50,7 @@ describe("The demo's files", () => {
     const target = join(folder, "new", "extract");
     const paths = await writeDemo({ demo, folder: target, gzipSales: true });
     const written = await readdir(target);
-    expect(written.sort()).toEqual(["events.csv", "products.csv", "sales.csv.gz", "stores.csv", "temperatures.csv"]);
+    expect(written.sort()).toEqual(["events.csv", "funding.csv", "listings.csv", "products.csv", "sales.csv.gz", "stores.csv", "temperatures.csv"]);
     expect(paths).toContain(join(target, "sales.csv.gz"));
     const unzipped = gunzipSync(await readFile(join(target, "sales.csv.gz"))).toString("utf8");
     expect(unzipped).toBe(files["sales.csv"]);

@@ -1,3 +1,4 @@
+import { withoutGuard } from "@shared/csv";
 import type { Header } from "../read/read-header";
 import type { Finding, IssueLog } from "./issue-log";
 import { columnType, type OurRecord } from "@shared/layouts";
@@ -116,7 +117,7 @@ export class Column {
   }
 
   text({ longest, needed = false }: { longest: number; needed?: boolean }): string | null {
-    const value = this.raw;
+    const value = withoutGuard(this.raw);
     if (value === "") return needed ? this.report("missing-value") : null;
     if (value.length > longest) return this.report("too-long", { reason: `The value has ${value.length} characters; at most ${longest} can be kept` });
     return controlCharacters.test(value) ? this.report("control-character") : value;
