@@ -2,7 +2,7 @@ import { accountsRoutes } from "./features/accounts";
 import { catalogueRoutes } from "./features/catalogue";
 import { chainRoutes } from "./features/chain";
 import { driversRoutes } from "./features/drivers";
-import { coverageRoutes, extractsRoutes, layoutsRoutes, unknownCodesRoutes } from "./features/extracts";
+import { coverageRoutes, extractsRoutes, issuesRoutes, layoutsRoutes, unknownCodesRoutes } from "./features/extracts";
 import { jobsRoutes } from "./features/jobs";
 import { noticesRoutes } from "./features/notices";
 import { scenariosRoutes } from "./features/scenarios";
@@ -11,7 +11,7 @@ import { descriptionRoute } from "./http/description-route";
 import type { Route } from "./http/route";
 
 const features: readonly Route[] = [
-  ...chainRoutes, ...accountsRoutes, ...jobsRoutes, ...catalogueRoutes, ...extractsRoutes, ...layoutsRoutes, ...unknownCodesRoutes, ...coverageRoutes, ...driversRoutes, ...storesRoutes, ...scenariosRoutes, ...noticesRoutes,
+  ...chainRoutes, ...accountsRoutes, ...jobsRoutes, ...catalogueRoutes, ...extractsRoutes, ...issuesRoutes, ...layoutsRoutes, ...unknownCodesRoutes, ...coverageRoutes, ...driversRoutes, ...storesRoutes, ...scenariosRoutes, ...noticesRoutes,
 ];
 
 /** Every route of the HTTP interface. */

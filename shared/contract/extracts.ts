@@ -58,15 +58,30 @@ export const extractIssueSchema = z.object({
 });
 export type ExtractIssue = z.infer<typeof extractIssueSchema>;
 
-/** How often each rule was broken: exact, also where the list of issues is cut. */
+/** How often each rule was broken. `count` is exact; of a rule that is broken very often only the first are `listed` as issues. */
 export const issueCountSchema = z.object({
   rule: z.string(),
   severity: z.enum(["error", "warning"]),
   reason: z.string(),
   remedy: z.string(),
   count: z.number(),
+  listed: z.number(),
 });
 export type IssueCount = z.infer<typeof issueCountSchema>;
+
+/** What the list of issues can be narrowed to. `column` is one of the file as issues name it; empty for the whole row. */
+const issueFilter = z.object({
+  severity: z.enum(["error", "warning"]).optional(), rule: z.string().max(60).optional(), column: z.string().max(80).optional(),
+});
+
+/** Everything that a file is checked for. An error keeps its row out; a warning does not. */
+export const checkRuleSchema = z.object({
+  rule: z.string(), severity: z.enum(["error", "warning"]),
+  /** What kind of fault it is; rules of one kind follow each other. */
+  about: z.string(),
+  reason: z.string(), remedy: z.string(),
+});
+export type CheckRule = z.infer<typeof checkRuleSchema>;
 
 /**
  * Rows that loading adds, changes or leaves as they are; `weeks` has those of sales, and is empty for other kinds. Missing
@@ -114,8 +129,15 @@ export const getExtract = defineEndpoint({
 });
 export const listExtractIssues = defineEndpoint({
   method: "GET", path: "/api/extracts/:id/issues", summary: "Rows that cannot be used, or look odd", permission: "read",
-  params: idParams, query: pageQuery.extend({ severity: z.enum(["error", "warning"]).optional(), rule: z.string().max(60).optional() }),
+  params: idParams, query: pageQuery.extend(issueFilter.shape),
   response: pageOf(extractIssueSchema).extend({ byRule: z.array(issueCountSchema) }),
+});
+export const getExtractIssuesCsv = defineEndpoint({
+  method: "GET", path: "/api/extracts/:id/issues.csv", summary: "The same as CSV, for those who keep the system the file comes from", permission: "read",
+  params: idParams, query: issueFilter, produces: "text/csv",
+});
+export const listCheckRules = defineEndpoint({
+  method: "GET", path: "/api/check-rules", summary: "What a file is checked for", permission: "read", response: z.object({ items: z.array(checkRuleSchema) }),
 });
 export const getExtractChanges = defineEndpoint({
   method: "GET", path: "/api/extracts/:id/changes", summary: "What loading would change, or changed", permission: "read",

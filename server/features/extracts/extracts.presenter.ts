@@ -1,6 +1,6 @@
 import type * as contract from "@shared/contract/extracts";
 import type { Caller } from "../../http/route";
-import type { Extract, ExtractIssue } from "./extracts.entities";
+import type { Extract } from "./extracts.entities";
 import { extractRights } from "./extracts.policy";
 
 /** An extract with its `uploadedBy` loaded. */
@@ -31,9 +31,4 @@ function layoutOf({ layoutOrigin, savedLayout, layoutConfirmed }: Extract): cont
 function rowsOf({ rowsRead, rowsUsable, errorCount, warningCount }: Extract): contract.Extract["rows"] {
   if (rowsRead == null) return null;
   return { read: rowsRead, usable: rowsUsable ?? 0, errors: errorCount ?? 0, warnings: warningCount ?? 0 };
-}
-
-export function presentIssue(issue: ExtractIssue): contract.ExtractIssue {
-  const { line, column, value, severity, rule, reason, remedy } = issue;
-  return { line, column, value, severity, rule, reason, remedy };
 }

@@ -38,14 +38,17 @@ export function findExtracts(em: EntityManager, { after, limit }: { after?: Extr
 }
 
 export type IssueCursor = { line: number; id: number };
-export type IssueFilter = { extractId: string; severity?: "error" | "warning"; rule?: string; after?: IssueCursor; limit: number };
+/** `column` as issues name it, empty for the whole row. */
+export type IssueFilter = { severity?: "error" | "warning"; rule?: string; column?: string };
+type IssuePage = IssueFilter & { extractId: string; after?: IssueCursor; limit: number };
 
 /** Issues by line, from after a cursor on; one more than the limit where there are more. */
-export function findIssues(em: EntityManager, { extractId, severity, rule, after, limit }: IssueFilter): Promise<ExtractIssue[]> {
+export function findIssues(em: EntityManager, { extractId, severity, rule, column, after, limit }: IssuePage): Promise<ExtractIssue[]> {
   const where = {
     extract: extractId,
     ...(severity && { severity }),
     ...(rule && { rule }),
+    ...(column !== undefined && { column }),
     ...(after && { $or: [{ line: { $gt: after.line } }, { line: after.line, id: { $gt: after.id } }] }),
   };
   return em.find(ExtractIssueEntity, where, { orderBy: { line: "asc", id: "asc" }, limit: limit + 1 });
@@ -53,7 +56,8 @@ export function findIssues(em: EntityManager, { extractId, severity, rule, after
 
 export async function issueCountsOf(em: EntityManager, extract: Extract): Promise<IssueCount[]> {
   await em.populate(extract, ["issueCounts"]);
-  return extract.issueCounts ?? [];
+  // Checks of before it was counted have no `listed`.
+  return (extract.issueCounts ?? []).map((counted) => ({ ...counted, listed: counted.listed ?? counted.count }));
 }
 
 export async function changesOf(em: EntityManager, extract: Extract): Promise<ExtractChanges | null> {

@@ -2,8 +2,8 @@ import { pipeline } from "node:stream/promises";
 import * as contract from "@shared/contract/extracts";
 import { route, type Route } from "../../http/route";
 import { accepted, actorOf } from "./accepted";
-import { presentExtract, presentIssue } from "./extracts.presenter";
-import { getChanges, getExtract, listExtracts, listIssues, openOriginal, readLoadedWeeks } from "./extracts.service";
+import { presentExtract } from "./extracts.presenter";
+import { getChanges, getExtract, listExtracts, openOriginal, readLoadedWeeks } from "./extracts.service";
 import { requestCheck, requestLoad, requestWithdrawal } from "./requests.service";
 import { registerExtract } from "./upload/receive-extract.service";
 import { receivedFile, receiveUpload } from "./upload/receive-upload";
@@ -21,11 +21,6 @@ const upload = route(contract.uploadExtract, async (call) => {
 }, { throttle: "upload", before: [receiveUpload] });
 
 const read = route(contract.getExtract, async ({ em, params, caller }) => presentExtract(await getExtract(em, params.id), caller));
-
-const readIssues = route(contract.listExtractIssues, async ({ em, params, query }) => {
-  const { items, nextCursor, byRule } = await listIssues(em, params.id, query);
-  return { items: items.map(presentIssue), nextCursor, byRule };
-});
 
 const readChanges = route(contract.getExtractChanges, ({ em, params }) => getChanges(em, params.id));
 
@@ -55,4 +50,4 @@ const load = route(contract.loadExtract, async (call) =>
 const withdraw = route(contract.withdrawExtract, async (call) =>
   accepted(call.response, await requestWithdrawal(call.em, { services: call.services, extractId: call.params.id, actor: actorOf(call) })));
 
-export const extractsRoutes: readonly Route[] = [list, upload, readWeeks, read, readIssues, readChanges, readOriginal, check, load, withdraw];
+export const extractsRoutes: readonly Route[] = [list, upload, readWeeks, read, readChanges, readOriginal, check, load, withdraw];

@@ -2,17 +2,17 @@ import type { EntityManager } from "@mikro-orm/postgresql";
 import type { Readable } from "node:stream";
 import { z } from "zod";
 import type { WeekStart } from "@shared/calendar";
-import type { ExtractChanges, IssueCount, LoadedWeeks } from "@shared/contract/extracts";
+import type { ExtractChanges, LoadedWeeks } from "@shared/contract/extracts";
 import { conflict, notFound, ProblemError } from "../../errors";
 import type { Services } from "../../services";
 import { dayIn, getChain } from "../chain";
-import type { Extract, ExtractIssue } from "./extracts.entities";
-import { changesOf, findExtract, findExtracts, findIssues, findLoadedWeeks, issueCountsOf } from "./extracts.repository";
+import type { Extract } from "./extracts.entities";
+import { changesOf, findExtract, findExtracts, findLoadedWeeks } from "./extracts.repository";
 import { standingOf } from "./loaded-weeks";
 import { readCursor, writeCursor } from "../../http/page-cursor";
 
 export type Page<Item> = { items: Item[]; nextCursor: string | null };
-type PageQuery = { cursor?: string; limit: number };
+export type PageQuery = { cursor?: string; limit: number };
 
 /** The extract with this id. @throws ProblemError 404. */
 export async function getExtract(em: EntityManager, id: string): Promise<Extract> {
@@ -29,21 +29,7 @@ export async function listExtracts(em: EntityManager, { cursor, limit }: PageQue
   return pageOf(found, limit, ({ uploadedAt, id }) => ({ uploadedAt: uploadedAt.toISOString(), id }));
 }
 
-const issueCursor = z.object({ line: z.number().int(), id: z.number().int() });
-
-type IssueQuery = PageQuery & { severity?: "error" | "warning"; rule?: string };
-
-/** What is wrong with rows, by line, with counts by rule. @throws ProblemError 404, or 422 for a cursor that is none. */
-export async function listIssues(
-  em: EntityManager, extractId: string, { cursor, limit, severity, rule }: IssueQuery,
-): Promise<Page<ExtractIssue> & { byRule: IssueCount[] }> {
-  const extract = await getExtract(em, extractId);
-  const found = await findIssues(em, { extractId, severity, rule, after: readCursor(issueCursor, cursor), limit });
-  const page = pageOf(found, limit, ({ line, id }) => ({ line, id }));
-  return { ...page, byRule: await issueCountsOf(em, extract) };
-}
-
-function pageOf<Item>(found: Item[], limit: number, position: (item: Item) => Record<string, string | number>): Page<Item> {
+export function pageOf<Item>(found: Item[], limit: number, position: (item: Item) => Record<string, string | number>): Page<Item> {
   const items = found.slice(0, limit);
   const last = items.at(-1);
   return { items, nextCursor: found.length > limit && last !== undefined ? writeCursor(position(last)) : null };

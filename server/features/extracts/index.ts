@@ -1,5 +1,6 @@
 export * from "./extracts.entities";
 export { extractsRoutes } from "./extracts.routes";
+export { issuesRoutes } from "./issues/issues.routes";
 export { unknownCodesRoutes } from "./unknown-codes/unknown-codes.routes";
 export { extractsJobs } from "./extracts.jobs";
 export { coverageRoutes } from "./coverage/coverage.routes";

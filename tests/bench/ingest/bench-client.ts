@@ -65,7 +65,7 @@ export class BenchClient {
   async load(file: Upload): Promise<void> {
     const { extract } = await this.upload(file);
     await this.ended(extract.jobId ?? "");
-    const { jobId } = await this.call<{ jobId: string }>(`/api/extracts/${extract.id}/load`, { method: "POST" });
+    const { jobId } = await this.call<{ jobId: string }>(`/api/extracts/${extract.id}/load`, { method: "POST", body: { secondLook: true } });
     await this.ended(jobId);
   }
 

@@ -23,7 +23,7 @@ export async function timeLoad({ client, path, rows, queryPath }: Wanted): Promi
   const check = await client.ended(extract.jobId ?? "", follow("check"));
   if ((check.result?.rows as { usable: number } | undefined)?.usable !== rows) throw new Error(`Not all rows are usable: ${JSON.stringify(check.result)}`);
   marks.begin("load: waiting for the worker");
-  const { jobId } = await client.call<{ jobId: string }>(`/api/extracts/${extract.id}/load`, { method: "POST" });
+  const { jobId } = await client.call<{ jobId: string }>(`/api/extracts/${extract.id}/load`, { method: "POST", body: { secondLook: true } });
   await client.ended(jobId, follow("load"));
   marks.begin("query");
   const { items } = await client.call<{ items: unknown[] }>(queryPath);

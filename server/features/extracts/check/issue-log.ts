@@ -28,6 +28,7 @@ const longestText = 400;
 export class IssueLog {
   readonly kept: LoggedIssue[] = [];
   readonly #counts = new Map<RuleName, number>();
+  readonly #listed = new Map<RuleName, number>();
   #columnNames: ReadonlyMap<string, string> = new Map();
 
   /** Says what columns of ours are called in the file, where that is something else. */
@@ -44,6 +45,7 @@ export class IssueLog {
     const count = this.count(finding.rule, 1);
     if (this.kept.length >= mostIssuesKept && count > alwaysKeptOfARule) return;
     const rule = rules[finding.rule];
+    this.list(finding.rule, 1);
     this.kept.push({
       line: finding.line,
       column: cut(this.columnName(finding.column), 80),
@@ -62,6 +64,11 @@ export class IssueLog {
     return count;
   }
 
+  /** Notes that so many issues of a rule were written by other means. */
+  list(rule: RuleName, more: number): void {
+    this.#listed.set(rule, (this.#listed.get(rule) ?? 0) + more);
+  }
+
   /** How many more of a rule may be kept. */
   room(rule: RuleName): number {
     return Math.max(0, mostIssuesKept - this.kept.length, alwaysKeptOfARule - (this.#counts.get(rule) ?? 0));
@@ -73,7 +80,10 @@ export class IssueLog {
 
   /** Counts by rule, errors first, then the most frequent. */
   byRule(): IssueCount[] {
-    const counts = [...this.#counts].map(([rule, count]) => ({ rule, ...rules[rule], count }));
+    const counts = [...this.#counts].map(([rule, count]) => {
+      const { severity, reason, remedy } = rules[rule];
+      return { rule, severity, reason, remedy, count, listed: this.#listed.get(rule) ?? 0 };
+    });
     return counts.sort((a, b) => a.severity.localeCompare(b.severity) || b.count - a.count || a.rule.localeCompare(b.rule));
   }
 }

@@ -28,6 +28,7 @@ export async function reportMissingWeeks({ em, table, extractId, log }: SalesTog
     for (const gap of gaps) {
       log.report({ line: gap.line, column: "week", value: named(gap.weeks), rule: "missing-weeks", reason: reasonOf(gap) });
       log.count("missing-weeks", gap.products * gap.weeks.length - 1);
+      log.list("missing-weeks", gap.products * gap.weeks.length - 1);
     }
     log.count("missing-weeks", (gaps[0]?.rows ?? 0) - gaps.reduce((sum, { products, weeks }) => sum + products * weeks.length, 0));
   }

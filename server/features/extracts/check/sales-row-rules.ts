@@ -5,6 +5,8 @@ import type { Column } from "./row";
 const mostOff = 0.2;
 /** Nobody pays more than the regular price; so much is left for rounding. */
 const mostAboveRegular = 1.05;
+/** Products and quotients of decimals are not exact: what stands just at a limit has not passed it. */
+const slack = 1e-6;
 
 const money = (amount: number) => amount.toFixed(2);
 
@@ -23,9 +25,9 @@ export function checkNetSales(column: Column, row: RowMoney): void {
   const { units, netSales, shelfPrice, regularPrice, mechanic } = row;
   if (units <= 0 || netSales <= 0) return;
   const atShelf = shelfPrice === null ? null : units * shelfPrice;
-  if (atShelf !== null && mechanic !== "multi_buy" && mechanic !== "coupon" && Math.abs(netSales - atShelf) > mostOff * atShelf) {
+  if (atShelf !== null && mechanic !== "multi_buy" && mechanic !== "coupon" && Math.abs(netSales - atShelf) > mostOff * atShelf + slack) {
     column.report("net-sales-off", { reason: `${column.raw} was paid, but ${units} units at the shelf price of ${shelfPrice} come to ${money(atShelf)}` });
-  } else if (regularPrice !== null && netSales > units * regularPrice * mostAboveRegular) {
+  } else if (regularPrice !== null && netSales > units * regularPrice * mostAboveRegular + slack) {
     column.report("net-sales-off", { reason: `${column.raw} was paid, but ${units} units at the regular price of ${regularPrice} come to ${money(units * regularPrice)} only` });
   }
 }
@@ -33,7 +35,7 @@ export function checkNetSales(column: Column, row: RowMoney): void {
 /** Whether a unit cost more than was paid for it. Costs are net of tax and prices include it, so this is on the safe side. */
 export function checkUnitCost(column: Column, row: RowMoney): void {
   const paid = paidPrice(row);
-  if (row.unitCost === null || paid === null || row.unitCost <= paid) return;
+  if (row.unitCost === null || paid === null || row.unitCost <= paid + slack) return;
   column.report("cost-above-price", { reason: `One unit cost ${column.raw}, and ${money(paid)} was paid for it` });
 }
 

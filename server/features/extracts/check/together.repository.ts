@@ -28,10 +28,11 @@ export async function removeBreaches({ em, table, extractId, log, keep, rule, co
     `insert into extract_issues (extract_id, line, column_name, value, severity, rule, reason, remedy)
      select ?, broken.line, ?, left(${value}, ${longestValue}), ?, ?, ${reason}, ?
      from ${lines} broken join ${table} staged on staged.line = broken.line order by broken.line limit ${room}`,
-    [extractId, column, severity, rule, remedy],
+    [extractId, column === "" ? "" : log.columnName(column), severity, rule, remedy],
   );
   const [{ count }] = await em.execute<[{ count: number }]>(`select count(*)::int as count from ${lines}`);
   log.count(rule, count);
+  log.list(rule, Math.min(count, room));
   await em.execute(`delete from ${table} staged using ${lines} broken where staged.line = broken.line`);
 }
 

@@ -2,8 +2,8 @@ import type { EntityManager } from "@mikro-orm/postgresql";
 import type { PriceTally } from "./price-tally";
 import type { SalesTogether } from "./sales-together.repository";
 
-/** A price so many times the median, or less than that part of it, is unusual. */
-const farFromMedian = 5;
+/** A price more than so many times the median, or less than that part of it, is unusual; what stands just at the limit is not. */
+const farFromMedian = 5 * (1 + 1e-9);
 /** So many loaded prices tell what is usual by themselves: a file that is wrong throughout is then seen. */
 const enoughLoaded = 20;
 /** More prices of a product are not looked at; they tell a median well enough to be compared with five times it. */
