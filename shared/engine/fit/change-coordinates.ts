@@ -1,3 +1,4 @@
+import { stridedProduct } from "../linalg/strided-product";
 import type { TermCoordinates } from "../penalty/term-transform";
 
 /** Number of columns a term's transform gives. */
@@ -19,8 +20,10 @@ export function transformColumns(block: Float64Array, rows: number, to: TermCoor
       const from = row * rawWidth;
       for (let k = 0; k < rawWidth; k++) if (k !== transform.leftOut) out[at++] = block[from + k];
     }
-  } else if (transform.form === "dense") rowsTimes(block, out, { rows, length: rawWidth, columns: coordinateWidth(to), matrix: transform.matrix });
-  else {
+  } else if (transform.form === "dense") {
+    const left = { values: block, at: 0, rows, inner: rawWidth, rowStep: rawWidth, innerStep: 1 };
+    stridedProduct(left, { values: transform.matrix, at: 0, columns: coordinateWidth(to) }, { values: out, at: 0, lowerOnly: false });
+  } else {
     const { matrix, rows: length, columns, count } = transform;
     if (length === 1 && columns === 1) scale(block, rows * count, matrix[0], out);
     else rowsTimes(block, out, { rows: rows * count, length, columns, matrix });
@@ -53,13 +56,13 @@ function scale(values: Float64Array, count: number, factor: number, out: Float64
  * out = T' x block: raw rows x columns become coordinates x columns.
  *
  * @param block row-major rawWidth x columns. Not changed.
+ * @param lowerOnly whether the result is known to be symmetric, so that its lower triangle is enough.
  * @example transformRows(half, 11, term.coordinates, raw);
  */
-export function transformRows(block: Float64Array, columns: number, to: TermCoordinates, out: Float64Array): void {
+export function transformRows(block: Float64Array, columns: number, to: TermCoordinates, out: Float64Array, lowerOnly = false): void {
   const { transform, rawWidth } = to;
-  if (transform.form === "scaled") {
-    for (let at = 0; at < columns; at++) out[at] = block[at] * transform.factor;
-  } else if (transform.form === "without") {
+  if (transform.form === "scaled") scale(block, columns, transform.factor, out);
+  else if (transform.form === "without") {
     let row = 0;
     for (let k = 0; k < rawWidth; k++) {
       if (k === transform.leftOut) continue;
@@ -67,33 +70,17 @@ export function transformRows(block: Float64Array, columns: number, to: TermCoor
       row++;
     }
   } else if (transform.form === "dense") {
-    transposeTimes({ block, at: 0 }, { matrix: transform.matrix, rows: rawWidth, width: coordinateWidth(to) }, { out, at: 0, columns });
+    const width = coordinateWidth(to);
+    const left = { values: transform.matrix, at: 0, rows: width, inner: rawWidth, rowStep: 1, innerStep: width };
+    stridedProduct(left, { values: block, at: 0, columns }, { values: out, at: 0, lowerOnly });
   } else {
     const { matrix, rows, columns: width, count } = transform;
     if (rows === 1 && width === 1) scale(block, count * columns, matrix[0], out);
     else {
+      const left = { values: matrix, at: 0, rows: width, inner: rows, rowStep: 1, innerStep: width };
       for (let level = 0; level < count; level++) {
-        transposeTimes({ block, at: level * rows * columns }, { matrix, rows, width }, { out, at: level * width * columns, columns });
+        stridedProduct(left, { values: block, at: level * rows * columns, columns }, { values: out, at: level * width * columns, lowerOnly: false });
       }
-    }
-  }
-}
-
-function transposeTimes(
-  from: { block: Float64Array; at: number }, by: { matrix: Float64Array; rows: number; width: number },
-  to: { out: Float64Array; at: number; columns: number },
-): void {
-  const { block } = from;
-  const { matrix, rows, width } = by;
-  const { out, columns } = to;
-  out.fill(0, to.at, to.at + width * columns);
-  for (let k = 0; k < rows; k++) {
-    const source = from.at + k * columns;
-    for (let row = 0; row < width; row++) {
-      const value = matrix[k * width + row];
-      if (value === 0) continue;
-      const target = to.at + row * columns;
-      for (let column = 0; column < columns; column++) out[target + column] += value * block[source + column];
     }
   }
 }

@@ -113,35 +113,41 @@ export function applyMap(map: CoefficientMap, coordinates: Float64Array): Float6
 }
 
 /**
- * map x covariance x map' x scale, packed lower triangle; the covariance is row-major size x size.
- * A row's product with the covariance is needed only in the columns that this and earlier rows read.
+ * map x covariance x map' x scale, packed lower triangle; the covariance is row-major size x size, both triangles.
  */
 export function mapCovariance(map: CoefficientMap, covariance: Float64Array, size: number, scale: number): Float64Array {
   const { rows, starts, columns, values } = map;
   const packed = new Float64Array((rows * (rows + 1)) / 2);
   const half = new Float64Array(size);
-  const isRead = new Uint8Array(size);
-  const read = new Int32Array(size);
-  let readCount = 0;
   let at = 0;
   for (let row = 0; row < rows; row++) {
-    for (let k = starts[row]; k < starts[row + 1]; k++) {
-      if (isRead[columns[k]] === 1) continue;
-      isRead[columns[k]] = 1;
-      read[readCount++] = columns[k];
-    }
-    for (let r = 0; r < readCount; r++) {
-      const column = read[r];
-      let sum = 0;
-      // Symmetric: down the column's own row, which lies together in memory.
-      for (let k = starts[row]; k < starts[row + 1]; k++) sum += values[k] * covariance[column * size + columns[k]];
-      half[column] = sum * scale;
-    }
+    rowTimes(map, row, { covariance, scale }, half);
     for (let other = 0; other <= row; other++) {
-      let sum = 0;
-      for (let k = starts[other]; k < starts[other + 1]; k++) sum += values[k] * half[columns[k]];
-      packed[at++] = sum;
+      const end = starts[other + 1];
+      let k = starts[other];
+      let even = 0;
+      let odd = 0;
+      for (; k + 1 < end; k += 2) {
+        even += values[k] * half[columns[k]];
+        odd += values[k + 1] * half[columns[k + 1]];
+      }
+      packed[at++] = k < end ? even + odd + values[k] * half[columns[k]] : even + odd;
     }
   }
   return packed;
+}
+
+/** One row of the map times the covariance: the covariance's own rows lie together in memory, and are taken two at a time. */
+function rowTimes({ starts, columns, values }: CoefficientMap, row: number, by: { covariance: Float64Array; scale: number }, out: Float64Array): void {
+  const { covariance, scale } = by;
+  const size = out.length;
+  out.fill(0);
+  const end = starts[row + 1];
+  for (let k = starts[row]; k < end; k += 2) {
+    const first = scale * values[k];
+    const from = columns[k] * size;
+    const second = k + 1 < end ? scale * values[k + 1] : 0;
+    const beside = k + 1 < end ? columns[k + 1] * size : from;
+    for (let column = 0; column < size; column++) out[column] += first * covariance[from + column] + second * covariance[beside + column];
+  }
 }

@@ -102,10 +102,11 @@ function addPair(one: DesignTerm, other: DesignTerm, target: PairTarget): void {
   crossProduct(left.rows, right.rows, target.weights, raw);
   const columns = coordinateWidth(right.coordinates);
   transformColumns(raw, left.coordinates.rawWidth, right.coordinates, half);
-  transformRows(half, columns, left.coordinates, raw);
+  transformRows(half, columns, left.coordinates, raw, one === other);
   for (let i = 0; i < left.positions.length; i++) {
     const row = left.positions[i];
-    for (let j = 0; j < columns; j++) {
+    const end = one === other ? i + 1 : columns;
+    for (let j = 0; j < end; j++) {
       const column = right.positions[j];
       matrix[row >= column ? row * size + column : column * size + row] = raw[i * columns + j];
     }

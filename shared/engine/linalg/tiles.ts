@@ -26,27 +26,43 @@ export function subtractSquare({ values, count, width }: Block, out: Float64Arra
 }
 
 /**
- * Lower triangle of `out` = L'L for a lower-triangular L, as the inverse of a matrix from the inverse of its factor. O(size^3 / 6).
+ * L'L for a lower-triangular L, as the inverse of a matrix from the inverse of its factor; two by two. O(size^3 / 6).
  *
- * @param lower row-major size x size, zero above the diagonal. Not changed.
- * @param out row-major size x size; its lower triangle is overwritten (and entries above it next to the diagonal).
- * @example squareOfLower(Float64Array.of(1, 0, 2, 3), 2, out); // out: 5, ., 6, 9
+ * @param lower row-major size x size; its upper triangle is not read. Not changed.
+ * @param out row-major size x size; both triangles are overwritten.
+ * @example squareOfLower(Float64Array.of(1, 0, 2, 3), 2, out); // out: 5, 6, 6, 9
  */
 export function squareOfLower(lower: Float64Array, size: number, out: Float64Array): void {
-  const whole = size - (size % 4);
-  for (let i = 0; i < whole; i += 4) {
-    out.fill(0, i * size, (i + 4) * size);
-    const below = lower.subarray(i * size);
-    for (let j = 0; j <= i; j += 4) squareTile(below, { count: size - i, width: size, i, j, to: i * size + j }, out);
-    for (let row = i; row < i + 4; row++) for (let column = 0; column <= row; column++) out[row * size + column] *= -1;
-  }
-  for (let i = whole; i < size; i++) {
-    for (let j = 0; j <= i; j++) {
-      let sum = 0;
-      for (let at = i * size; at < size * size; at += size) sum += lower[at + i] * lower[at + j];
-      out[i * size + j] = sum;
+  const even = size - (size % 2);
+  for (let i = 0; i < even; i += 2) {
+    for (let j = 0; j <= i; j += 2) {
+      let at = i * size;
+      let s00 = lower[at + i] * lower[at + j];
+      let s01 = j === i ? 0 : lower[at + i] * lower[at + j + 1];
+      let s10 = 0;
+      let s11 = 0;
+      for (let row = i + 1; row < size; row++) {
+        at += size;
+        const a0 = lower[at + i];
+        const a1 = lower[at + i + 1];
+        const b0 = lower[at + j];
+        const b1 = lower[at + j + 1];
+        s00 += a0 * b0;
+        s01 += a0 * b1;
+        s10 += a1 * b0;
+        s11 += a1 * b1;
+      }
+      const to = i * size + j;
+      const mirrored = j * size + i;
+      out[to] = out[mirrored] = s00;
+      out[to + 1] = out[mirrored + size] = s01;
+      out[to + size] = out[mirrored + 1] = s10;
+      out[to + size + 1] = out[mirrored + size + 1] = s11;
     }
   }
+  if (even === size) return;
+  const last = even * size;
+  for (let k = 0; k < size; k++) out[last + k] = out[k * size + even] = lower[last + even] * lower[last + k];
 }
 
 function squareTile(

@@ -34,7 +34,7 @@ describe.each(shapes)("Products of %i rows by %i columns", (count, width) => {
       const out = new Float64Array(width * width).fill(7);
       squareOfLower(lower, width, out);
       const product = times(transposed(lower, width, width), lower, { rows: width, inner: width, columns: width });
-      expect(unsigned(lowerPart(out, width))).toEqual(unsigned(lowerPart(product, width)));
+      expect(unsigned(out)).toEqual(unsigned(product));
     }), runs);
   });
 });
