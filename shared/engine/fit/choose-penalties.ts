@@ -1,4 +1,5 @@
 import { fellnerSchallStep, newtonSteps } from "./automatic-penalties";
+import type { NewtonOptions, SearchEnd } from "./automatic-penalties";
 import type { Design } from "./design";
 import type { AskedTerm } from "./fixed-degrees";
 import { solveDegrees } from "./fixed-degrees";
@@ -48,31 +49,31 @@ export function startPenalties(search: PenaltySearch, plan: PenaltyPlan, logFact
   return start;
 }
 
-export type RefineOptions = { start: Float64Array; fellnerSchallSteps: number; maxSteps: number; stopNear?: Float64Array };
+export type RefineOptions = NewtonOptions & { start: Float64Array; fellnerSchallSteps: number };
 
 /**
  * Chooses penalties for one working model from one start: Fellner-Schall steps, then Newton; degrees of freedom asked for
  * are solved in turn with it until neither moves.
  *
- * @returns whether the search came to rest; the result is `search.current`.
+ * @returns how the search ended; the result is `search.current`.
  * @example refinePenalties(search, plan, { start, fellnerSchallSteps: 2, maxSteps: 50 });
  */
-export function refinePenalties(search: PenaltySearch, plan: PenaltyPlan, options: RefineOptions): boolean {
+export function refinePenalties(search: PenaltySearch, plan: PenaltyPlan, options: RefineOptions): SearchEnd {
   evaluateAt(search, options.start);
   liftUntilRegular(search, plan, options.start);
   const { automatic, asked } = plan;
   if (asked.length > 0) solveDegrees(search, asked);
-  if (automatic.length === 0) return true;
+  if (automatic.length === 0) return "rested";
   for (let step = 0; step < options.fellnerSchallSteps; step++) fellnerSchallStep(search, automatic);
   if (asked.length === 0) return newtonSteps(search, automatic, options);
   for (let turn = 0; turn < options.maxSteps; turn++) {
     const before = search.current.logPenalties.slice();
     solveDegrees(search, asked);
-    const rested = newtonSteps(search, automatic, options);
+    const end = newtonSteps(search, automatic, options);
     const moved = search.current.logPenalties.some((value, penalty) => Math.abs(value - before[penalty]) > 1e-8);
-    if (rested && !moved) return true;
+    if (end !== "unfinished" && !moved) return end;
   }
-  return false;
+  return "unfinished";
 }
 
 /** Log units beyond the highest penalty to which one is raised where nothing else makes the system regular. */
@@ -106,7 +107,7 @@ function liftUntilRegular(search: PenaltySearch, plan: PenaltyPlan, start: Float
  * @example const rested = bestPenalties(search, plan);
  */
 export function bestPenalties(search: PenaltySearch, plan: PenaltyPlan): boolean {
-  let rested = refinePenalties(search, plan, { fellnerSchallSteps: 2, maxSteps, start: startPenalties(search, plan, 6) });
+  let rested = refinePenalties(search, plan, { fellnerSchallSteps: 2, maxSteps, start: startPenalties(search, plan, 6) }) === "rested";
   if (plan.automatic.length === 0) return rested;
   const loose = startPenalties(search, plan, -6);
   rested = betterOf(search, plan, { start: loose, fellnerSchallSteps: 2, maxSteps }, rested);
@@ -121,8 +122,8 @@ export const maxSteps = 60;
 function betterOf(search: PenaltySearch, plan: PenaltyPlan, options: RefineOptions, knownRested: boolean): boolean {
   const { logPenalties, criterion } = search.current;
   exchangeKept(search);
-  const rested = refinePenalties(search, plan, { ...options, stopNear: logPenalties });
-  if (search.current.criterion < criterion - 1e-9 * Math.abs(criterion)) return rested;
+  const end = refinePenalties(search, plan, { ...options, known: { logPenalties, criterion } });
+  if (search.current.criterion < criterion - 1e-9 * Math.abs(criterion)) return end !== "unfinished";
   exchangeKept(search);
   return knownRested;
 }

@@ -33,6 +33,9 @@ type Problem = WorkingProblem & {
 const movementTolerance = 1e-12;
 const thetaTolerance = 1e-8;
 
+/** Fall of a working model's criterion that is not worth another step in it: the next model's penalties move anyway. */
+const enoughInside = 1e-3;
+
 /** Working models after which a constraint once held is not let go any more. */
 const settlingIterations = 5;
 
@@ -82,15 +85,15 @@ function anotherOptimum(
   problem: Problem, best: WorkingFit, startOf: (search: PenaltySearch, plan: PenaltyPlan) => Float64Array | null,
 ): WorkingFit | null {
   const { plan } = problem;
-  const { solution: { search: { current: { logPenalties: known } }, touched, system: { dropped } } } = best;
+  const { solution: { search: { current: known }, touched, system: { dropped } } } = best;
   const start = startOf(best.solution.search, plan);
   if (start === null) return null;
   const search = searchBeside(best.solution.search);
-  refinePenalties(search, plan, { start, fellnerSchallSteps: startOf === looseStart ? 2 : 0, maxSteps, stopNear: known });
+  if (refinePenalties(search, plan, { start, fellnerSchallSteps: startOf === looseStart ? 2 : 0, maxSteps, known }) === "known") return null;
   const found = search.current.logPenalties;
   const isSame = plan.automatic.every((penalty) => {
-    const bothStraight = isLimit(search, penalty, found[penalty]) && isLimit(search, penalty, known[penalty]);
-    return bothStraight || Math.abs(found[penalty] - known[penalty]) < 0.25;
+    const bothStraight = isLimit(search, penalty, found[penalty]) && isLimit(search, penalty, known.logPenalties[penalty]);
+    return bothStraight || Math.abs(found[penalty] - known.logPenalties[penalty]) < 0.25;
   });
   if (isSame) return null;
   const other = iterate(problem, {
@@ -115,9 +118,9 @@ function iterate(problem: Problem, start: Start): WorkingFit {
     equations = workingEquations(problem, predictor, theta);
     solution = solveWorking(problem, equations, before, (search) => {
       penalties ??= startPenalties(search, plan, start.logFactor ?? 0);
-      const rested = refinePenalties(search, plan, { start: penalties, fellnerSchallSteps: iterations === 1 ? 2 : 0, maxSteps: 4 });
+      const end = refinePenalties(search, plan, { start: penalties, fellnerSchallSteps: iterations === 1 ? 2 : 0, maxSteps: 4, enough: enoughInside });
       penalties = search.current.logPenalties.slice();
-      return rested;
+      return end === "rested";
     });
     before = {
       dropped: solution.system.dropped, search: solution.search,

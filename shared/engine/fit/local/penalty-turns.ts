@@ -52,7 +52,7 @@ export function takeTurn(turns: PenaltyTurns, equations: NormalEquations): Worki
   turns.solution = solveWorking(turns.problem, equations, beforeOf(turns), (search) => {
     if (!isFree || before === null) return stay(search, startPenalties(search, plan, 0));
     if (turns.turn <= lastBroadTurn) return bestPenalties(search, plan);
-    return refinePenalties(search, plan, { start: before, fellnerSchallSteps: 0, maxSteps });
+    return refinePenalties(search, plan, { start: before, fellnerSchallSteps: 0, maxSteps }) === "rested";
   });
   const { logPenalties } = turns.solution.search.current;
   turns.moved = before === null ? Infinity : logPenalties.reduce((most, value, j) => Math.max(most, Math.abs(value - before[j])), 0);
@@ -66,7 +66,7 @@ const beforeOf = ({ solution }: PenaltyTurns): Before =>
 
 /** At given penalties, or, where these leave the system singular, the nearest larger ones. */
 const stay = (search: PenaltySearch, start: Float64Array): boolean =>
-  refinePenalties(search, { automatic: [], asked: [], given: [] }, { start, fellnerSchallSteps: 0, maxSteps: 0 });
+  refinePenalties(search, { automatic: [], asked: [], given: [] }, { start, fellnerSchallSteps: 0, maxSteps: 0 }) === "rested";
 
 /**
  * The terms at the penalties they have, beside the local curves found last: what criterion and warnings are read from.
