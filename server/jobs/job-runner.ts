@@ -5,10 +5,12 @@ import type { Services } from "../services";
 import { JobCancelled, defaultRetryLimit, type JobDefinition, type JobFailure } from "./job-queue";
 import { JobLease, LeaseLost, type TakenJob } from "./job-lease";
 import { JobLocks } from "./job-locks";
+import { JobSignals } from "./job-signals";
 import type { SendInTransaction } from "./pg-boss-queue";
 import { cleanUpJob, rescueJobs } from "./rescue-jobs";
 import { takeJob } from "./take-job";
 
+/** Jobs are signalled; this finds those of which the signal was missed, and those that had to wait. */
 const pollEveryMs = 500;
 /** What was handed back at a stop may take this long to notice. */
 const letGoPatienceMs = 2_000;
@@ -33,7 +35,7 @@ type Parts = {
   timing: JobTiming;
 };
 
-type Repeated = { everyMs: number; services: Services; step: () => Promise<boolean> };
+type Repeated = { services: Services; step: () => Promise<boolean>; pause: (signal: AbortSignal) => Promise<void> };
 type Means = { services: Services; locks: JobLocks };
 type Held = { lease: JobLease; services: Services };
 
@@ -44,6 +46,7 @@ export class JobRunner {
   readonly #stopping = new AbortController();
   #loops: Promise<void>[] = [];
   #locks: JobLocks | undefined;
+  #signals: JobSignals | undefined;
 
   constructor(parts: Parts) {
     this.#parts = parts;
@@ -52,14 +55,20 @@ export class JobRunner {
   async start(definitions: readonly JobDefinition[], services: Services): Promise<void> {
     const locks = new JobLocks(services.pool, services.logger);
     this.#locks = locks;
+    const signals = new JobSignals(services.environment.DATABASE_URL, services.logger);
+    this.#signals = signals;
+    await signals.open();
     for (const definition of definitions) await this.#parts.ensureQueue(definition.kind);
     const kinds = new Map(definitions.map((definition) => [definition.kind, definition]));
     const { rescueEveryMs, silentAfterSeconds } = this.#parts.timing;
     const rescue = () => rescueJobs({ kinds, services, send: this.#parts.send, silentAfterSeconds });
     this.#loops = [
-      this.#repeat({ everyMs: rescueEveryMs, services, step: rescue }),
+      this.#repeat({ services, step: rescue, pause: (signal) => pause(rescueEveryMs, signal) }),
       ...definitions.map((definition) =>
-        this.#repeat({ everyMs: pollEveryMs, services, step: () => this.#takeAndRun(definition, { services, locks }) }),
+        this.#repeat({
+          services, step: () => this.#takeAndRun(definition, { services, locks }),
+          pause: (signal) => signals.wait(definition.kind, pollEveryMs, signal),
+        }),
       ),
     ];
   }
@@ -67,6 +76,7 @@ export class JobRunner {
   /** Takes no further jobs; what still runs after some seconds goes back to the queue. */
   async stop(): Promise<void> {
     this.#stopping.abort();
+    await this.#signals?.close();
     await this.#untilIdle(this.#parts.timing.stopPatienceMs);
     for (const lease of this.#running.values()) {
       lease.lose();
@@ -83,15 +93,14 @@ export class JobRunner {
   }
 
   /** Does a step again and again until the stop; at once where it says there is more to do. */
-  async #repeat({ everyMs, services, step }: Repeated): Promise<void> {
+  async #repeat({ services, step, pause: untilNext }: Repeated): Promise<void> {
     const { signal } = this.#stopping;
     while (!signal.aborted) {
       const more = await step().catch((error: unknown) => {
         services.logger.error({ err: error }, "the job queue could not be worked on");
         return false;
       });
-      // Woken early by the stop, which rejects.
-      if (!more) await sleep(everyMs, undefined, { signal, ref: true }).catch(() => undefined);
+      if (!more) await untilNext(signal);
     }
   }
 
@@ -155,6 +164,9 @@ export class JobRunner {
     await cleanUpJob({ id: job.id, definition, services });
   }
 }
+
+/** Woken early by the stop, which rejects. */
+const pause = (ms: number, signal: AbortSignal): Promise<void> => sleep(ms, undefined, { signal }).catch(() => undefined);
 
 /** A problem we name ourselves will be the same next time. */
 function mayTryAgain(definition: JobDefinition, job: TakenJob, error: unknown): boolean {

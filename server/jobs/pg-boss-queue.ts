@@ -4,6 +4,7 @@ import type { Pool, PoolClient } from "pg";
 import { JobEntity } from "../features/jobs";
 import type { Logger } from "../logger";
 import type { JobQueue } from "./job-queue";
+import { signalJob } from "./job-signals";
 import { JobRunner, defaultTiming, type JobTiming } from "./job-runner";
 
 /** What travels through the queue; everything else is in our own table. */
@@ -47,6 +48,7 @@ export async function createPgBossQueue({ pool, logger, timing = defaultTiming }
     const client = await connectionOf(em);
     const db = { executeSql: (text: string, values: unknown[]) => client.query(text, values) };
     await boss.send(kind, job, { db, startAfter: delaySeconds, retentionDays });
+    if (delaySeconds === 0) await signalJob(em, kind);
   };
 
   const runner = new JobRunner({ boss, send, ensureQueue, timing });
