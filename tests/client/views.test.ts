@@ -4,7 +4,6 @@ import type { Extract } from "@shared/contract/extracts";
 import { ApiError } from "@/lib/api-error";
 import { changesSentence } from "@/features/extracts/view/changes-summary";
 import { describeState, isInWork, kindFromName } from "@/features/extracts/view/extract-state";
-import { issuesCsv } from "@/features/extracts/view/issues-csv";
 import { uploadProblem } from "@/features/extracts/view/upload-problem";
 import { cautionsOf } from "@/features/drivers/view/cautions";
 import { chooseFit, chooseModel, newerCandidate, weeksNotLearnt } from "@/features/drivers/view/choose-model";
@@ -22,12 +21,12 @@ const rows = { read: 100, usable: 90, errors: 10, warnings: 0 };
 
 describe("extracts", () => {
   it("say in a word where they stand, with errors and without usable rows apart", () => {
-    expect(describeState({ state: "checked", rows: { ...rows, errors: 0 } }).word).toBe("Ready to load");
-    expect(describeState({ state: "checked", rows }).word).toBe("Ready, with errors");
-    expect(describeState({ state: "checked", rows: { ...rows, usable: 0 } })).toEqual({
-      word: "No usable rows",
-      tone: "danger",
-    });
+    const word = (part: Partial<Extract>) => describeState({ state: "checked", rows, layout: null, failure: null, ...part });
+    expect(word({ rows: { ...rows, errors: 0 } }).word).toBe("Ready to load");
+    expect(word({}).word).toBe("Ready, with errors");
+    expect(word({ rows: { ...rows, usable: 0 } })).toEqual({ word: "No usable rows", tone: "danger" });
+    expect(word({ layout: { origin: "proposed", id: null, name: null, isConfirmed: false } }).word).toBe("Reading to confirm");
+    expect(word({ state: "unusable", failure: { code: "layout-needed", detail: "x" } }).word).toBe("Columns to match");
   });
 
   it("are watched while a job works on them or soon will, not once a check broke down", () => {
@@ -51,20 +50,7 @@ describe("extracts", () => {
   it("say what a load does in a sentence", () => {
     const changes = (totals: { new: number; changed: number; same: number }) => ({ totals: { ...totals, missing: 0 }, weeks: [], secondLook: [] });
     expect(changesSentence(changes({ new: 1248, changed: 1, same: 0 }), false)).toBe("1,248 new rows, 1 row changed.");
-    expect(changesSentence(changes({ new: 0, changed: 0, same: 0 }), false)).toBe("Loading it would change nothing.");
-  });
-
-  it("give their issues as a list to send on", () => {
-    const issue = {
-      line: 17,
-      column: "store",
-      value: "=X",
-      severity: "error" as const,
-      rule: "unknown-store",
-      reason: "Unknown",
-      remedy: "Load it",
-    };
-    expect(issuesCsv([issue]).rows).toEqual([[17, "store", "=X", "error", "Unknown", "Load it"]]);
+    expect(changesSentence(changes({ new: 0, changed: 0, same: 0 }), false)).toBe("Nothing would change: every row is there already.");
   });
 
   it("that did not arrive say what was kept", () => {

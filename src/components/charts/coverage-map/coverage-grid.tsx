@@ -6,7 +6,7 @@ import { axisHeight, CoverageAxis } from "./coverage-axis";
 import { cellLabel, CellTip } from "./coverage-cell";
 import type { CellFacts } from "./coverage-cell";
 import type { CellPlace, CoverageRow } from "./coverage-data";
-import { cellWidth } from "./coverage-layout";
+import { shareWidth } from "./coverage-layout";
 import type { WeekNumber } from "./coverage-layout";
 import { RowMarks } from "./coverage-marks";
 import { RowName } from "./coverage-row-name";
@@ -35,8 +35,8 @@ export const CoverageGrid = ({ title, rows, numbers, describe, onOpenFile, maxHe
   const [outer, outerWidth] = useElementWidth<HTMLDivElement>(900);
   const scroller = useRef<HTMLDivElement>(null);
   const [scrolled, setScrolled] = useState({ left: 0, top: 0 });
-  const namesWidth = outerWidth < 560 ? 104 : 156;
-  const cell = cellWidth(numbers.length, outerWidth - namesWidth - barWidth);
+  const isTall = rows.length * rowHeight + axisHeight > maxHeight;
+  const { cell, namesWidth } = shareWidth({ weeks: numbers.length, width: outerWidth - 2 - (isTall ? barWidth : 0) });
   const virtualizer = useVirtualizer({
     count: rows.length, getScrollElement: () => scroller.current, estimateSize: () => rowHeight, overscan: 10,
     initialRect: { width: 900, height: maxHeight },

@@ -3,11 +3,22 @@ import type { CellPlace, CellState, CoverageRow } from "./coverage-data";
 export type CellSize = { width: number; height: number };
 
 const narrowest = 13;
-const widest = 26;
+const widest = 40;
 
-/** Cells share the width there is; where that would make them too narrow, the chart scrolls. */
-export const cellWidth = (weeks: number, width: number): number =>
-  Math.max(narrowest, Math.min(widest, Math.floor(width / Math.max(1, weeks))));
+const names = { narrow: 104, wide: 156 };
+/** Below this width names are kept short. */
+const narrowPage = 560;
+
+/**
+ * Cells share the width beside the names; where that would make them too narrow, the chart scrolls. What is left over by whole
+ * pixels goes to the names, as long as it is little.
+ */
+export const shareWidth = ({ weeks, width }: { weeks: number; width: number }): { cell: number; namesWidth: number } => {
+  const least = width < narrowPage ? names.narrow : names.wide;
+  const cell = Math.max(narrowest, Math.min(widest, Math.floor((width - least) / Math.max(1, weeks))));
+  const left = width - least - cell * weeks;
+  return { cell, namesWidth: left > 0 && left < 100 ? least + left : least };
+};
 
 const gap = 1;
 const inset = 3;
@@ -23,25 +34,39 @@ const rectangle = ({ left, right, top, bottom }: Box) => `M${left} ${top}H${righ
 const outline = ({ left, right, top, bottom }: Box) =>
   rectangle({ left: left + 0.75, right: right - 0.75, top: top + 0.75, bottom: bottom - 0.75 });
 
-const notch = 5;
+/** Small enough for the narrowest cell. */
+const arm = 2.5;
 
-/** Each state has a mark of its own, so that none is told by colour alone. */
-const marks: Record<CellState, (box: Box) => string> = {
-  there: rectangle,
-  thin: (box) => rectangle({ ...box, top: box.bottom - Math.round((box.bottom - box.top) * 0.4) }),
-  restated: ({ left, right, top, bottom }) => `M${left} ${top}H${right - notch}L${right} ${top + notch}V${bottom}H${left}Z`,
-  withdrawn: (box) => `${outline(box)}M${box.left + 3} ${(box.top + box.bottom) / 2}H${box.right - 3}`,
-  missing: (box) => {
-    const [x, y] = [(box.left + box.right) / 2, (box.top + box.bottom) / 2];
-    return `${outline(box)}M${x - 2} ${y - 2}L${x + 2} ${y + 2}M${x - 2} ${y + 2}L${x + 2} ${y - 2}`;
-  },
-  closed: rectangle,
+const cross = ({ left, right, top, bottom }: Box): string => {
+  const [x, y] = [(left + right) / 2, (top + bottom) / 2];
+  return `M${x - arm} ${y - arm}L${x + arm} ${y + arm}M${x - arm} ${y + arm}L${x + arm} ${y - arm}`;
 };
 
-/** A store's row as one path a state: a few elements, however many weeks. */
-export const rowPaths = (states: readonly CellState[], size: CellSize): [CellState, string][] => {
-  const paths = new Map<CellState, string>();
-  states.forEach((state, week) => paths.set(state, `${paths.get(state) ?? ""}${marks[state](boxOf(week, size))}`));
+const notch = 5;
+
+/** A mark's filled part and its drawn part; either may be empty. */
+export type MarkPaths = { ground: string; line: string };
+
+const filled = (ground: string): MarkPaths => ({ ground, line: "" });
+
+/** Each state has a mark of its own, so that none is told by colour alone. */
+const marks: Record<CellState, (box: Box) => MarkPaths> = {
+  there: (box) => filled(rectangle(box)),
+  thin: (box) => filled(rectangle({ ...box, top: box.bottom - Math.round((box.bottom - box.top) * 0.4) })),
+  restated: ({ left, right, top, bottom }) => filled(`M${left} ${top}H${right - notch}L${right} ${top + notch}V${bottom}H${left}Z`),
+  withdrawn: (box) => ({ ground: "", line: `${outline(box)}M${box.left + 3} ${(box.top + box.bottom) / 2}H${box.right - 3}` }),
+  missing: (box) => ({ ground: rectangle(box), line: cross(box) }),
+  closed: (box) => filled(rectangle(box)),
+};
+
+/** A store's row as one mark a state: a few elements, however many weeks. */
+export const rowPaths = (states: readonly CellState[], size: CellSize): [CellState, MarkPaths][] => {
+  const paths = new Map<CellState, MarkPaths>();
+  states.forEach((state, week) => {
+    const { ground, line } = marks[state](boxOf(week, size));
+    const before = paths.get(state);
+    paths.set(state, { ground: `${before?.ground ?? ""}${ground}`, line: `${before?.line ?? ""}${line}` });
+  });
   return [...paths];
 };
 

@@ -29,8 +29,8 @@ export const CoverageLegend = ({ counts }: { counts: Record<CellState, number> }
             <defs>
               <HatchPattern id={hatch} />
             </defs>
-            {rowPaths([state], size).map(([, path]) => (
-              <StateMark key={state} state={state} path={path} hatch={hatch} />
+            {rowPaths([state], size).map(([, paths]) => (
+              <StateMark key={state} state={state} paths={paths} hatch={hatch} />
             ))}
           </svg>
           <span>

@@ -1,14 +1,11 @@
 import { infiniteQueryOptions } from "@tanstack/react-query";
-import { listExtractIssues } from "@shared/contract/extracts";
-import type { ExtractIssue } from "@shared/contract/extracts";
-import { call } from "@/lib/api-client";
+import { getExtractIssuesCsv, listExtractIssues } from "@shared/contract/extracts";
+import { call, endpointAddress } from "@/lib/api-client";
 import type { IssueFilter } from "../view/issue-filter";
 
 export const extractIssuesKey = (id: string) => ["extract", id, "issues"];
 
 const pageSize = 200;
-/** As many as one request may ask for. */
-const exportPageSize = 1000;
 
 const queryOf = ({ rule, severity }: IssueFilter) => ({ rule: rule ?? undefined, severity: severity ?? undefined });
 
@@ -26,17 +23,6 @@ export const extractIssuesQuery = (id: string, filter: IssueFilter) =>
     getNextPageParam: (page) => page.nextCursor ?? undefined,
   });
 
-/** The whole list, page after page, for a file to send to whoever keeps the store system. */
-export const readAllIssues = async (id: string, filter: IssueFilter): Promise<ExtractIssue[]> => {
-  const issues: ExtractIssue[] = [];
-  let cursor: string | undefined;
-  do {
-    const page = await call(listExtractIssues, {
-      params: { id },
-      query: { limit: exportPageSize, cursor, ...queryOf(filter) },
-    });
-    issues.push(...page.items);
-    cursor = page.nextCursor ?? undefined;
-  } while (cursor);
-  return issues;
-};
+/** Where the whole list is had as a file, to send to whoever keeps the store system. */
+export const issuesCsvAddress = (id: string, filter: IssueFilter): string =>
+  endpointAddress(getExtractIssuesCsv, { params: { id }, query: queryOf(filter) });

@@ -14,8 +14,18 @@ const stateWords: Record<State, { word: string; tone: TagTone }> = {
   withdrawn: { word: "Withdrawn", tone: "neutral" },
 };
 
+/** Codes of failures that a person mends by saying how the file is read. */
+const layoutFailures = ["layout-needed", "layout-does-not-fit"];
+
+/** Whether the file waits for someone to say which of its columns are ours. */
+export const needsLayout = ({ state, failure }: Pick<Extract, "state" | "failure">): boolean =>
+  state === "unusable" && failure !== null && layoutFailures.includes(failure.code);
+
 /** What to call an extract's state, and how loud. */
-export const describeState = ({ state, rows }: Pick<Extract, "state" | "rows">): { word: string; tone: TagTone } => {
+export const describeState = (extract: Pick<Extract, "state" | "rows" | "failure" | "layout">): { word: string; tone: TagTone } => {
+  const { state, rows, layout } = extract;
+  if (needsLayout(extract)) return { word: "Columns to match", tone: "caution" };
+  if (state === "checked" && layout?.isConfirmed === false) return { word: "Reading to confirm", tone: "caution" };
   if (state === "checked" && rows && rows.usable === 0) return { word: "No usable rows", tone: "danger" };
   if (state === "checked" && rows && rows.errors > 0) return { word: "Ready, with errors", tone: "caution" };
   return stateWords[state];

@@ -1,6 +1,6 @@
 import type { Extract } from "@shared/contract/extracts";
 import { countOf } from "@/lib/format/number";
-import { isInWork } from "./extract-state";
+import { isInWork, needsLayout } from "./extract-state";
 
 /** The way of a file: what it is, how it is read, what is wrong with it, what loading changes, and that it is loaded. */
 export type StepName = "file" | "read" | "wrong" | "changes" | "loaded";
@@ -14,12 +14,6 @@ export type StepMark = "done" | "look" | "now" | "working" | "stopped" | "waitin
 export type PathStep = { name: StepName; title: string; mark: StepMark; line: string; isOpen: boolean };
 
 type Said = Pick<PathStep, "mark" | "line"> & { isOpen?: boolean };
-
-/** Codes of failures that a person mends by saying how the file is read. */
-const layoutFailures = ["layout-needed", "layout-does-not-fit"];
-
-export const needsLayout = ({ state, failure }: Pick<Extract, "state" | "failure">): boolean =>
-  state === "unusable" && failure !== null && layoutFailures.includes(failure.code);
 
 const isUnconfirmed = ({ layout, state }: Extract) => layout?.isConfirmed === false && (state === "checked" || state === "unusable");
 
@@ -63,7 +57,7 @@ const wrong = (extract: Extract): Said => {
   if (needsLayout(extract)) return { mark: "waiting", line: "Known once it is said how the file is read" };
   if (state === "unusable") return { mark: "stopped", line: "This file cannot be used", isOpen: true };
   if (!rows) return { mark: "waiting", line: "Known after the check" };
-  const isOpen = state === "checked" && rows.errors + rows.warnings > 0;
+  const isOpen = state === "checked" && !isUnconfirmed(extract) && rows.errors + rows.warnings > 0;
   const warnings = rows.warnings > 0 ? countOf(rows.warnings, "warning") : "";
   if (rows.errors > 0) {
     const left = `${countOf(rows.errors, "error")}${warnings && `, ${warnings}`}: ${countOf(rows.read - rows.usable, "row")} of ${countOf(rows.read, "row").split(" ")[0]} left out`;
@@ -76,11 +70,11 @@ const wrong = (extract: Extract): Said => {
 const changes = (extract: Extract): Said => {
   const { state, rows, failure } = extract;
   if (state === "loading") return { mark: "working", line: "Loading, all or nothing", isOpen: true };
-  if (state === "loaded") return { mark: "done", line: "Week by week" };
+  if (state === "loaded") return { mark: "done", line: rows ? `${countOf(rows.usable, "row")} taken in` : "Taken in" };
   if (state === "withdrawn") return { mark: "done", line: "Taken back" };
   if (state !== "checked" || !rows) return { mark: "waiting", line: "Known after the check" };
   if (rows.usable === 0) return { mark: "stopped", line: "No row can be used, so there is nothing to load" };
-  if (isUnconfirmed(extract)) return { mark: "waiting", line: "First say how the file is read", isOpen: false };
+  if (isUnconfirmed(extract)) return { mark: "waiting", line: "First say how the file is read" };
   if (failure) return { mark: "stopped", line: "The load broke down; nothing was changed", isOpen: true };
   return { mark: "now", line: `${countOf(rows.usable, "row")} can be loaded`, isOpen: true };
 };

@@ -10,7 +10,7 @@ const line: TableColumn<NumberedIssue> = {
   meaning: "Line in the file; the header is line 1.",
   value: (issue) => issue.line,
   align: "right",
-  width: "5.5rem",
+  width: "min(5.5rem, 16vw)",
 };
 
 const column: TableColumn<NumberedIssue> = {
@@ -28,7 +28,7 @@ const value: TableColumn<NumberedIssue> = {
   value: (issue) => issue.value,
   cell: (issue) =>
     issue.value === "" ? <span className="text-muted">empty</span> : <code className="text-sm break-all">{issue.value}</code>,
-  width: "13rem",
+  width: "min(13rem, 22vw)",
   sortable: false,
 };
 

@@ -60,8 +60,8 @@ export const IssueList = ({ extract, filter, onFilter, actions }: IssueListProps
           </EmptyState>
         ) : (
           <>
-            <div className="flex flex-wrap items-start justify-between gap-3 border-b border-hairline p-3 sm:px-5">
-              <Shown counts={counts} filter={filter} shown={issues.length} hasMore={query.hasNextPage} />
+            <div className="flex items-start justify-between gap-3 border-b max-sm:flex-col border-hairline p-3 sm:px-5">
+              <Shown counts={counts} filter={filter} />
               <div className="flex gap-2">
                 {actions}
                 <SaveIssues extract={extract} filter={filter} />
@@ -89,21 +89,19 @@ export const IssueList = ({ extract, filter, onFilter, actions }: IssueListProps
   );
 };
 
-type ShownProps = { counts: readonly IssueCount[]; filter: IssueFilter; shown: number; hasMore: boolean };
-
 /** What the lines are of, what to do about it, and whether all of them stand here. */
-const Shown = ({ counts, filter, shown, hasMore }: ShownProps) => {
+const Shown = ({ counts, filter }: { counts: readonly IssueCount[]; filter: IssueFilter }) => {
   const format = useChainFormat();
   const chosen = counts.filter(({ rule, severity }) => (filter.rule ?? rule) === rule && (filter.severity ?? severity) === severity);
-  const total = chosen.reduce((sum, { count }) => sum + count, 0);
+  const sum = (of: "count" | "listed") => chosen.reduce((total, count) => total + count[of], 0);
   const only = filter.rule === null ? null : chosen[0];
-  const isCut = !hasMore && shown < total;
+  const isCut = sum("listed") < sum("count");
   return (
     <div className="min-w-0 flex-1">
       <p className="font-medium">{only ? only.reason : "Line by line"}</p>
       <p className="text-sm text-muted">
         {only && `${only.remedy} `}
-        {isCut && `Of ${format.number(total)} the first ${format.number(shown)} are kept as lines; the counts are exact.`}
+        {isCut && `Of ${format.number(sum("count"))} the first ${format.number(sum("listed"))} are kept as lines; the counts are exact.`}
         {!only && !isCut && "Lines are counted as in the file; the header is line 1."}
       </p>
     </div>

@@ -28,7 +28,10 @@ export const ExtractPath = ({ extract, filter, onFilter }: ExtractPathProps) => 
   const steps = pathSteps(extract, arrived);
   const isOpen = (name: StepName, byItself: boolean) =>
     (toggled.stage === stage ? toggled.steps[name] : undefined) ?? (byItself || (name === "wrong" && filter.rule !== null));
+  const reached = useRef(stage);
   useEffect(() => {
+    if (reached.current === stage) return;
+    reached.current = stage;
     // A button that was pressed is gone with its step: the focus goes on to the step that is next.
     if (document.activeElement === document.body) list.current?.querySelector<HTMLElement>("[aria-current] [data-step]")?.focus({ preventScroll: true });
   }, [stage]);

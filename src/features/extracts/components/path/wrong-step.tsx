@@ -2,7 +2,7 @@ import type { ReactNode } from "react";
 import type { Extract } from "@shared/contract/extracts";
 import { Notice } from "@/components/ui/notice";
 import type { IssueFilter } from "../../view/issue-filter";
-import { needsLayout } from "../../view/path-steps";
+import { needsLayout } from "../../view/extract-state";
 import { IssueList } from "../issues/issue-list";
 import { UnknownCodes } from "../unknown/unknown-codes";
 import { CheckAgain } from "./check-again";

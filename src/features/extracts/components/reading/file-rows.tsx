@@ -111,7 +111,7 @@ const ColumnChoice = ({ layout, column, onChange }: ColumnChoiceProps) => {
           ))}
         </optgroup>
       </select>
-      <p className="mt-1 mb-1 line-clamp-2 min-h-10 px-0.5 text-xs text-muted" title={why}>
+      <p className="mt-1 mb-1 line-clamp-2 min-h-8 px-0.5 text-xs text-muted" title={why}>
         {ours !== null && ours === proposed && (
           <>
             <span className="font-medium text-ink">{surenessWord(confidence)}</span>: {why}

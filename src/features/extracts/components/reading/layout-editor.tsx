@@ -28,6 +28,9 @@ export const LayoutEditor = ({ extract, start, onLeave }: LayoutEditorProps) => 
         <Missing columns={preview.missing} />
         <FileRows layout={draft} preview={preview} onChange={change} />
       </Part>
+      <Part title="The same rows as they will be read">
+        <ReadRows preview={preview} isBehind={isBehind} />
+      </Part>
       <Part title="How it is written">
         <LayoutSettings layout={draft} preview={preview} onWriting={editing.rewrite} onPart={changePart} />
       </Part>
@@ -39,9 +42,6 @@ export const LayoutEditor = ({ extract, start, onLeave }: LayoutEditorProps) => 
           <WordLists layout={draft} onChange={(words) => changePart({ words })} />
         </More>
       )}
-      <Part title="The same rows as they will be read">
-        <ReadRows preview={preview} isBehind={isBehind} />
-      </Part>
       {[...new Set(problems)].map((problem) => (
         <Notice key={problem} tone="danger" role="alert">
           {problem}

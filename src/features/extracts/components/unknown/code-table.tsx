@@ -43,7 +43,7 @@ export const CodeTable = (props: CodeTableProps) => {
         ))}
       </datalist>
       <div className="max-h-96 overflow-auto rounded-md border border-hairline" role="region" aria-label={`${title} that are not known`} tabIndex={0}>
-        <table className="w-full min-w-[38rem] border-separate border-spacing-0">
+        <table className="w-full border-separate border-spacing-0">
           <thead className="sticky top-0 z-10 bg-sheet text-left text-sm text-muted">
             <tr>
               <th scope="col" className="w-10 border-b border-hairline py-2 pl-3">
@@ -55,9 +55,9 @@ export const CodeTable = (props: CodeTableProps) => {
                   onChange={() => onChange(chooseAll(codes, entries, !isAll))}
                 />
               </th>
-              <th scope="col" className="border-b border-hairline px-3 font-medium">Code in the file</th>
-              <th scope="col" className="border-b border-hairline px-3 text-right font-medium">Rows</th>
-              <th scope="col" className="border-b border-hairline px-3 font-medium">Weeks</th>
+              <th scope="col" className="border-b border-hairline px-3 font-medium">Code</th>
+              <th scope="col" className="border-b border-hairline px-3 text-right font-medium max-sm:hidden">Rows</th>
+              <th scope="col" className="border-b border-hairline px-3 font-medium max-md:hidden">Weeks</th>
               <th scope="col" className="border-b border-hairline px-3 font-medium">Name</th>
               <th scope="col" className="border-b border-hairline px-3 font-medium">{detail}</th>
             </tr>
@@ -81,8 +81,8 @@ export const CodeTable = (props: CodeTableProps) => {
                   <td className="px-3">
                     <code className="text-sm">{code}</code>
                   </td>
-                  <td className="px-3 text-right">{format.number(rows)}</td>
-                  <td className="px-3 text-sm whitespace-nowrap text-muted">
+                  <td className="px-3 text-right max-sm:hidden">{format.number(rows)}</td>
+                  <td className="px-3 text-sm whitespace-nowrap text-muted max-md:hidden">
                     {firstWeek && lastWeek ? format.weekSpan(firstWeek, lastWeek) : "–"}
                   </td>
                   <td className="px-2 py-1.5">
