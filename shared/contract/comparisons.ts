@@ -1,6 +1,6 @@
 import { z } from "zod";
 import { codeSchema, idSchema, levelSchema } from "./common";
-import { curveSchema } from "./drivers";
+import { bandSchema, curveSchema } from "./drivers";
 import { defineEndpoint } from "./endpoint";
 
 const interval = z.object({ estimate: z.number(), lower: z.number(), upper: z.number() });
@@ -10,6 +10,8 @@ export const comparisonSchema = z.object({
   modelId: idSchema,
   driver: z.string(),
   level: z.number(),
+  /** Of all stores' curves and elasticities. */
+  band: bandSchema,
   /** Price that each store's curve is drawn relative to; null for drivers without an anchor. */
   anchor: z.number().nullable(),
   stores: z.array(z.object({

@@ -139,6 +139,10 @@ export const useModel = defineEndpoint({
   params: idParams, response: modelSchema,
 });
 
+/** What bands allow for: "averaged" the coefficients and how smooth curves are, "pointwise" the coefficients alone. */
+export const bandSchema = z.enum(["averaged", "pointwise"]);
+export type ShownBand = z.infer<typeof bandSchema>;
+
 /** A driver's curve on the link scale, centred; exp() of it is the multiplier. */
 export const curveSchema = z.object({
   term: z.string(),
@@ -168,10 +172,7 @@ export const getModelCurves = defineEndpoint({
   method: "GET", path: "/api/models/:id/curves", summary: "Every driver's curve of one store with its band", permission: "read",
   params: idParams, query: z.object({ store: codeSchema, level: levelSchema, points: z.coerce.number().int().min(10).max(500).default(101) }),
   response: z.object({
-    store: codeSchema, level: z.number(),
-    /** What bands allow for: "averaged" the coefficients and how smooth curves are, "pointwise" the coefficients alone. */
-    band: z.enum(["pointwise", "corrected", "averaged"]),
-    intercept: z.number(), curves: z.array(curveSchema),
+    store: codeSchema, level: z.number(), band: bandSchema, intercept: z.number(), curves: z.array(curveSchema),
   }),
 });
 

@@ -21,3 +21,14 @@ export const shownModel = (model: FittedModel): FittedModel => bandModel(model, 
  * @example readFit(fit).band; // "averaged"
  */
 export const readFit = (fit: string): FittedModel => shownModel(parseModel(fit));
+
+/** The band that intervals have after all: "pointwise" where a model could not have the one they are shown with. */
+export type ShownBand = typeof SHOWN_BAND | "pointwise";
+
+/**
+ * The band that intervals of several models together have.
+ *
+ * @example bandOf([model]) // "averaged"
+ */
+export const bandOf = (models: readonly FittedModel[]): ShownBand =>
+  models.every(({ band }) => band === SHOWN_BAND) ? SHOWN_BAND : "pointwise";

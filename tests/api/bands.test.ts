@@ -39,7 +39,7 @@ async function shown() {
   const { body: compared }: { body: Comparison } = await planner.get("/api/comparisons?product=JAM&anchor=1.6&level=0.9").expect(200);
   const { body: predicted }: { body: Prediction } = await planner.post(`/api/scenarios/${scenarioId}/predict`).send({ level: 0.9 }).expect(200);
   const store = compared.stores.find(({ store: code }) => code === "A1");
-  return { drawn, compared: store, chain: compared.chain, predicted };
+  return { drawn, compared: store, comparedBand: compared.band, chain: compared.chain, predicted };
 }
 
 const near = (found: readonly number[], expected: Iterable<number>) =>
@@ -71,7 +71,8 @@ describe("Bands that pages show", () => {
   });
 
   it("are so of differences between prices, and of elasticities, across stores", async () => {
-    const { compared } = await shown();
+    const { compared, comparedBand } = await shown();
+    expect(comparedBand).toBe("averaged");
     const curve = compared?.curve;
     if (!curve) throw new Error("A1 has no curve.");
     const averaged = bandModel(fitted, "averaged");
@@ -86,6 +87,15 @@ describe("Bands that pages show", () => {
     });
     const { derivative } = termCurve(fitted, "price", { at: [1.6], level: 0.9, band: "averaged", derivative: true });
     expect(compared?.elasticity?.lower).toBeCloseTo(derivative?.lower[0] ?? NaN, 8);
+  });
+});
+
+describe("A model whose bands take smoothness as given", () => {
+  it("says so: local regression has no penalty to average over", async () => {
+    const spec = { response: "units", family: "quasi-poisson", offset: "logExposure", terms: [{ kind: "local-regression", column: "price", span: 0.7 }] };
+    const { body } = await planner.post("/api/models").send({ product: "JAM", stores: ["A1"], spec }).expect(201);
+    expect((await planner.get(`/api/models/${body.id}/curves?store=A1`).expect(200)).body.band).toBe("pointwise");
+    expect((await planner.get(`/api/comparisons?product=JAM&model=${body.id}`).expect(200)).body.band).toBe("pointwise");
   });
 });
 

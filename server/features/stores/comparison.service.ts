@@ -1,7 +1,7 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
 import { setImmediate } from "node:timers/promises";
 import type { FittedModel } from "@shared/engine";
-import { driverOfTerm, readFit } from "@shared/planning";
+import { bandOf, driverOfTerm, readFit, type ShownBand } from "@shared/planning";
 import { hasOneCurve, requireProduct, storesThatSold, type DriverCurve, type SellingStore, type StoredFit } from "../drivers";
 import { anchorPrice } from "./anchor-price";
 import { chainCurve, type ChainCurve, type WeightedCurve } from "./chain-curve";
@@ -31,6 +31,7 @@ export type ComparisonOutcome = {
   modelId: string;
   driver: string;
   level: number;
+  band: ShownBand;
   anchor: number | null;
   stores: ComparedStore[];
   chain: ChainCurve | null;
@@ -64,10 +65,11 @@ export async function compareStores(em: EntityManager, request: ComparisonReques
     await setImmediate();
   }
   const curves = stores.map(({ learnt }) => learnt).filter((learnt) => learnt !== null);
-  const isLog = [...learners.values()].every(({ model }) => model.spec.family !== "gaussian");
+  const models = [...learners.values()].map(({ model }) => model);
+  const isLog = models.every(({ spec }) => spec.family !== "gaussian");
   const { driver, level } = request;
   const chain = chainCurve({ curves, grid, isLog, level });
-  return { product: product.code, modelId: compared.id, driver, level, anchor, stores, chain };
+  return { product: product.code, modelId: compared.id, driver, level, band: bandOf(models), anchor, stores, chain };
 }
 
 /** What each fitted store learnt, by its code. */

@@ -1,13 +1,12 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
-import type { ModelBand } from "@shared/engine";
-import { readFit } from "@shared/planning";
+import { bandOf, readFit, type ShownBand } from "@shared/planning";
 import { ProblemError } from "../../../errors";
 import { requireStores } from "../catalogue-lookup";
 import { findFits } from "../models/models.repository";
 import { requireModel } from "../models/read-models.service";
 import { modelCurves, type DriverCurve } from "./model-curves";
 
-export type StoreCurves = { store: string; level: number; band: ModelBand; intercept: number; curves: DriverCurve[] };
+export type StoreCurves = { store: string; level: number; band: ShownBand; intercept: number; curves: DriverCurve[] };
 
 /**
  * Every driver's curve of a model in one store.
@@ -23,7 +22,7 @@ export async function curvesOfStore(
   const [stored] = await findFits(em, { modelId, stores: [store] });
   if (!stored) throw noFit({ store, reason: model.skipped.find((skipped) => skipped.store === store)?.reason });
   const fit = readFit(stored.fit);
-  return { store, level, band: fit.band, intercept: fit.coefficients[0], curves: modelCurves(fit, { level, points }) };
+  return { store, level, band: bandOf([fit]), intercept: fit.coefficients[0], curves: modelCurves(fit, { level, points }) };
 }
 
 function noFit({ store, reason }: { store: string; reason?: string }): ProblemError {

@@ -1,4 +1,4 @@
-import type { Curve, FitSummary } from "@shared/contract/drivers";
+import type { Curve, FitSummary, ShownBand } from "@shared/contract/drivers";
 import { Lanes } from "@/components/charts/driver-lane/lanes";
 import { isLevelCurve, isNumberCurve } from "../view/curve-points";
 import { driverColour, driverLabel, inLaneOrder } from "../view/driver-words";
@@ -8,11 +8,17 @@ import { PriceLane } from "./price-lane";
 import { SeasonLane } from "./season-lane";
 import { TemperatureLane } from "./temperature-lane";
 
-type DriverLanesProps = { curves: readonly Curve[]; fit: FitSummary; level: number; regularPrice: number | null };
+type DriverLanesProps = {
+  curves: readonly Curve[];
+  fit: FitSummary;
+  level: number;
+  band: ShownBand;
+  regularPrice: number | null;
+};
 
 /** One lane per driver of the store's model, then those that could not be learnt, with the reason. */
-export const DriverLanes = ({ curves, fit, level, regularPrice }: DriverLanesProps) => (
-  <Lanes label="Drivers">
+export const DriverLanes = ({ curves, fit, level, band, regularPrice }: DriverLanesProps) => (
+  <Lanes label="Drivers" level={level} band={band}>
     {inLaneOrder(curves).map((curve) => (
       <LaneFor key={`${fit.store} ${curve.term}`} curve={curve} fit={fit} level={level} regularPrice={regularPrice} />
     ))}

@@ -31,6 +31,7 @@ export const StoreDrivers = ({ model, fit, storeName, level }: StoreDriversProps
               curves={answer.curves}
               fit={fit}
               level={answer.level}
+              band={answer.band}
               regularPrice={regularPrice}
             />
           )}

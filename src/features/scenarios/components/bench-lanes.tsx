@@ -1,4 +1,5 @@
 import type { PlanCell, Scenario } from "@shared/contract/scenarios";
+import { bandOf } from "@shared/planning";
 import { Lanes } from "@/components/charts/driver-lane/lanes";
 import type { ScenarioEditing } from "../hooks/use-scenario-edit";
 import type { ScenarioFigures } from "../hooks/use-prediction";
@@ -37,7 +38,7 @@ export const BenchLanes = ({ editing, ...shared }: BenchLanesProps) => {
     set: (field, value) => editing.change({ cells: changeAll(cells, { places, field, value }) }),
   };
   return (
-    <Lanes label="Drivers">
+    <Lanes label="Drivers" level={shared.level} band={bandOf(figures.laneStores.map(({ model }) => model))}>
       <PriceLane {...props} />
       <WeekLane {...props} />
       <TemperatureLane {...props} />

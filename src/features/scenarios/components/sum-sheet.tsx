@@ -54,7 +54,10 @@ export const SumSheet = ({ scenario, figures, fixedCost, onFixedCost, cautions }
           <span data-testid="lift" data-lift={lift.estimate}>
             {format.percent(lift.estimate, { signed: true })}
           </span>{" "}
-          · {formatPercentInterval(lift.lower, lift.upper)} ({format.percent(level)})
+          · {formatPercentInterval(lift.lower, lift.upper)}{" "}
+          <Term meaning={`The expected lift lies within in about ${Math.round(level * 100)} of 100 plans. That curves may be less smooth than they were learnt is allowed for, as going the same way in all stores.`}>
+            ({format.percent(level)})
+          </Term>
         </Fact>
         <MoneyFacts figures={figures} format={format} />
         <Fact name="Feature or display cost">

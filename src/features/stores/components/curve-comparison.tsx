@@ -1,5 +1,6 @@
 import { useMemo } from "react";
 import type { Comparison } from "@shared/contract/comparisons";
+import { BandLine } from "@/components/charts/band-line";
 import { CurveOverlay } from "@/components/charts/curve-overlay/curve-overlay";
 import { GroupLegend } from "@/components/charts/group-legend";
 import { SmallMultiple } from "@/components/charts/small-multiple";
@@ -78,6 +79,9 @@ export const CurveComparison = ({ comparison, driver, groups, groupOf, selected,
             onHighlight={onSelect}
             legend={<GroupLegend groups={groups} />}
           />
+          <p className="mt-2 text-sm text-muted">
+            Shaded: the chosen store's <BandLine level={level} band={comparison.band} />
+          </p>
         </Sheet>
         <Sheet aria-label="Each store's curve over the chain's">
           <div className="grid grid-cols-[repeat(auto-fill,minmax(6.5rem,1fr))] gap-1">

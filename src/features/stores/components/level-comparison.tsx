@@ -1,4 +1,5 @@
 import { useMemo } from "react";
+import { BandLine } from "@/components/charts/band-line";
 import { GroupLegend } from "@/components/charts/group-legend";
 import { LevelDots } from "@/components/charts/level-dots/level-dots";
 import { Sheet } from "@/components/ui/sheet";
@@ -39,6 +40,9 @@ export const LevelComparison = ({ comparison, driver, groups, groupOf, selected,
           onHighlight={onSelect}
           legend={<GroupLegend groups={groups} />}
         />
+        <p className="mt-2 text-sm text-muted">
+          Beside each store's lift: its <BandLine level={comparison.level} band={comparison.band} word="interval" />
+        </p>
       </Sheet>
       <Sheet flush>
         <LevelTable rows={rows} chain={chainRow} levels={levels} selected={selected} onSelect={onSelect} />
