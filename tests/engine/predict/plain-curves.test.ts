@@ -12,10 +12,11 @@ const isPerUnit = (name: string) => name === "smooth times a number" || name ===
 
 /** A curve's points as rows: its own column, the group named, one unit of what multiplies it. */
 function rowsAt(model: FittedModel, id: string, { x, group }: { x: Float64Array | string[]; group?: string }): ModelData {
-  const fill = (value: number | string) => Array.from(x, () => value);
+  const at = Array.from<number | string>(x);
+  const fill = (value: number | string) => at.map(() => value);
   const common = Object.fromEntries(Object.entries(rows).map(([name, column]) => [name, fill(column[0])]));
   const [column, second] = model.terms.find((term) => term.id === id)?.columns ?? [];
-  return { ...common, ...(second === undefined ? {} : { [second]: fill(group ?? 1) }), [column]: Array.from<number | string>(x) } as ModelData;
+  return { ...common, ...(second === undefined ? {} : { [second]: fill(group ?? 1) }), [column]: at } as ModelData;
 }
 
 describe.each(families)("A curve of a %s model", (family) => {
@@ -117,7 +118,7 @@ describe("Where a curve is drawn", () => {
     const own = fitModel(modelOf("gaussian", terms), rows);
     const { id, columns: [column, by] } = own.terms[own.terms.length - 1];
     const { x, estimate } = termCurve(own, id, column === "price" ? { points: 5 } : {});
-    const data = { ...rowsAt(own, id, { x }), [by]: Array.from(x, () => 2) } as ModelData;
+    const data = { ...rowsAt(own, id, { x }), [by]: Array.from<number | string>(x).map(() => 2) } as ModelData;
     expect(largestDifference(predict(own, data).contributions[id], estimate.map((value) => 2 * value))).toBeLessThan(1e-12);
   });
 });
