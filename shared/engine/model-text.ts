@@ -57,7 +57,7 @@ function isModel(value: unknown): value is StoredModel {
   const grouped = groupCovariance == null ? 0 : groupCovariance.count * groupCovariance.size;
   return candidate.format === 1
     && (band === undefined || bands.includes(band))
-    && typeof candidate.spec === "object"
+    && typeof candidate.spec === "object" && candidate.spec !== null
     && Array.isArray(terms)
     && Array.isArray(candidate.warnings)
     && candidate.fitted instanceof Float64Array
