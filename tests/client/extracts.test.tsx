@@ -34,20 +34,20 @@ const broken = { severity: "error", rule: "unknown-store", reason: "There is no 
 
 describe("what is wrong with an extract", () => {
   it("says that there is no such rule where the address names none of the file, and leads back to all", async () => {
-    answerRequests(() => ({ status: 200, body: { items: [], nextCursor: null, byRule: [{ ...broken, count: 1 }] } }));
+    answerRequests(() => ({ status: 200, body: { items: [], nextCursor: null, byRule: [{ ...broken, count: 1, listed: 1 }] } }));
     const onFilter = vi.fn();
     renderInPage(<IssueList extract={extract} filter={{ rule: "nonsense", severity: null }} onFilter={onFilter} />);
     expect(await screen.findByText("There is no rule “nonsense” here")).toBeTruthy();
-    expect(screen.queryByRole("button", { name: "Save as CSV" })).toBeNull();
+    expect(screen.queryByRole("link", { name: "Save as CSV" })).toBeNull();
     await userEvent.click(screen.getByRole("button", { name: "Show all rules" }));
     expect(onFilter).toHaveBeenCalledWith({ rule: null, severity: null });
   });
 
   it("lists the rows of a rule that the file broke", async () => {
     const row = { ...broken, line: 3, column: "store", value: "Z9" };
-    answerRequests(() => ({ status: 200, body: { items: [row], nextCursor: null, byRule: [{ ...broken, count: 1 }] } }));
+    answerRequests(() => ({ status: 200, body: { items: [row], nextCursor: null, byRule: [{ ...broken, count: 1, listed: 1 }] } }));
     renderInPage(<IssueList extract={extract} filter={{ rule: "unknown-store", severity: null }} onFilter={vi.fn()} />);
-    expect(await screen.findByRole("button", { name: "Save as CSV" })).toBeTruthy();
+    expect(await screen.findByRole("link", { name: "Save as CSV" })).toBeTruthy();
     expect(screen.queryByText(/There is no rule/)).toBeNull();
   });
 });

@@ -10,6 +10,7 @@ import { FileRows } from "./file-rows";
 import { FixedValues } from "./fixed-values";
 import { LayoutSettings } from "./layout-settings";
 import { ReadRows } from "./read-rows";
+import { UnknownWords } from "./unknown-words";
 import { UseLayout } from "./use-layout";
 import { useLayoutDraft } from "./use-layout-draft";
 import { WordLists } from "./word-lists";
@@ -30,6 +31,7 @@ export const LayoutEditor = ({ extract, start, onLeave }: LayoutEditorProps) => 
       </Part>
       <Part title="The same rows as they will be read">
         <ReadRows preview={preview} isBehind={isBehind} />
+        <UnknownWords layout={draft} preview={preview} onChange={(words) => changePart({ words })} />
       </Part>
       <Part title="How it is written">
         <LayoutSettings layout={draft} preview={preview} onWriting={editing.rewrite} onPart={changePart} />
@@ -38,7 +40,7 @@ export const LayoutEditor = ({ extract, start, onLeave }: LayoutEditorProps) => 
         <FixedValues layout={draft} onChange={change} />
       </More>
       {withWords.some((column) => column in draft.mapping) && (
-        <More title="Words for promotions, and for yes and no" isOpen={preview.rows.some((row) => row.problems.some(({ column }) => withWords.includes(column)))}>
+        <More title="Words for promotions, and for yes and no">
           <WordLists layout={draft} onChange={(words) => changePart({ words })} />
         </More>
       )}
@@ -66,7 +68,7 @@ const Part = ({ title, note, children }: { title: string; note?: string; childre
 );
 
 /** Seldom needed, so folded away until it is. */
-const More = ({ title, isOpen, children }: { title: string; isOpen: boolean; children: ReactNode }) => (
+const More = ({ title, isOpen = false, children }: { title: string; isOpen?: boolean; children: ReactNode }) => (
   <details open={isOpen || undefined} className="rounded-md border border-hairline px-4 py-3">
     <summary className="w-fit rounded-xs font-medium text-accent">{title}</summary>
     <div className="mt-3">{children}</div>

@@ -66,7 +66,7 @@ export const UploadPanel = ({ limitBytes, onArrived }: UploadPanelProps) => {
         </div>
       </div>
       {uploads.length > 0 && (
-        <ul aria-label="Files to upload" className="mt-4 divide-y divide-hairline border-y border-hairline">
+        <ul aria-label="Files to upload" className="mt-4 divide-y divide-hairline border-t border-hairline">
           {uploads.map((upload) => (
             <UploadRow key={upload.id} upload={upload} />
           ))}
