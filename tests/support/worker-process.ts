@@ -4,6 +4,7 @@ import { fileURLToPath } from "node:url";
 import type { Services } from "../../server/services";
 
 const script = fileURLToPath(new URL("trial-worker.ts", import.meta.url));
+const wholeWorker = fileURLToPath(new URL("../../server/worker.ts", import.meta.url));
 
 /** Starts a worker in a process of its own on the same database; resolves when it takes jobs. */
 export async function startWorkerProcess({ environment }: Services): Promise<ChildProcess> {
@@ -23,6 +24,15 @@ export async function startWorkerProcess({ environment }: Services): Promise<Chi
   ended.catch(() => undefined);
   await Promise.race([once(child.stdout, "data"), ended]);
   return child;
+}
+
+/** Starts the application's own worker in a process of its own, on the same database. */
+export function startWholeWorker({ environment }: Services): ChildProcess {
+  const variables = Object.entries(environment).map(([name, value]) => [name, String(value)]);
+  return spawn(process.execPath, ["--import", "tsx", wholeWorker], {
+    env: { PATH: process.env.PATH, AWS_SDK_JS_NODE_VERSION_SUPPORT_WARNING_DISABLED: "true", ...Object.fromEntries(variables), LOG_LEVEL: "silent" },
+    stdio: ["ignore", "ignore", "inherit"],
+  });
 }
 
 /** Sends a signal and waits for the process to end. */
