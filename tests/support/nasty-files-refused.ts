@@ -22,7 +22,6 @@ export const nastyRefused: NastyFile[] = [
   refused("a NUL byte in the header", `${salesHeader}\0\n${good("2026-06-01")}`),
   refused("NUL bytes alone", Buffer.alloc(5_000)),
   refused("control characters all over", "\x01\x02\x03\x04 sales \x05\x06"),
-  refused("UTF-16 without a byte order mark", Buffer.from(sales, "utf16le")),
-  refused("UTF-16 with the higher byte first, without a mark", Buffer.from(sales, "utf16le").swap16()),
+  refused("UTF-32 with the lower byte first", Buffer.concat([Buffer.from([0xff, 0xfe, 0, 0]), ...Array.from(sales, (letter) => Buffer.from([letter.charCodeAt(0), 0, 0, 0]))])),
   refused("UTF-32 with the higher byte first", Buffer.concat([Buffer.from([0, 0, 0xfe, 0xff]), ...Array.from(sales, (letter) => Buffer.from([0, 0, 0, letter.charCodeAt(0)]))])),
 ];

@@ -17,6 +17,8 @@ export type NastyFile = {
   /** Code of the reason where no row can be used, and a part of its sentence. */
   unusable?: [code: string, sentence: RegExp];
   rows?: [read: number, usable: number];
+  /** Warnings about how it is read, where that was worked out and waits for a person; absent for our own form. */
+  proposed?: string[];
   issues?: string[];
 };
 
@@ -43,14 +45,8 @@ export const cell = (column: string, value: string, rule: string, isUsable = fal
 /** Files as they are: whole, cut, mis-encoded, mis-quoted. */
 export const nastyForms: NastyFile[] = [
   { what: "a header alone", file: `${salesHeader}\n`, unusable: ["no-rows", /header, but no rows/] },
-  { what: "blank lines alone", file: "\n\n \n\n", unusable: ["missing-columns", /week/] },
-  { what: "a header without units and net sales", file: "week,store,product,regular_price\n2026-06-01,S1,P1,1.79", unusable: ["missing-columns", /the columns units and net_sales/] },
-  { what: "rows without a header", file: `${first}\n${second}\n`, unusable: ["missing-columns", /put a line with the columns' names above it/] },
-  { what: "a file of stores sent as sales", file: storesFile, unusable: ["missing-columns", /looks like a file of stores/] },
-  { what: "a header with units twice", file: `${salesHeader},Units\n${first},3`, unusable: ["repeated-column", /units more than once/] },
-  { what: "semicolons between columns", file: salesFile(first).replaceAll(",", ";"), unusable: ["not-comma-separated", /semicolons/] },
-  { what: "UTF-16", file: Buffer.from(`\ufeff${salesFile(first)}`, "utf16le"), unusable: ["utf-16", /UTF-16/] },
-  { what: "a Windows-1252 letter in line 3", file: utf8(`${salesHeader}\n${first}\n2026-06-08,Caf`, [0xe9], ",P1,1,1,1,1,0,0,none\n"), unusable: ["not-utf-8", /line 3/] },
+  { what: "blank lines alone", file: "\n\n \n\n", unusable: ["no-header", /no lines/] },
+  { what: "a file of stores sent as sales", file: storesFile, proposed: [], unusable: ["layout-needed", /looks like a file of stores/] },
   { what: "a character cut off at the end", file: utf8(salesFile(first), [0xe2, 0x82]), unusable: ["not-utf-8", /line 2/] },
   { what: "a NUL byte far into the file", file: `${salesFile(...Array.from({ length: 200 }, (_, at) => good("2026-06-01", at === 190 ? "P\0" : "P1")))}`, rows: [200, 1] },
   { what: "no line end in the first megabyte", file: "x".repeat(1_500_000), unusable: ["no-header", /no header/] },

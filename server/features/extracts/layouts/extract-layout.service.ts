@@ -28,8 +28,15 @@ export async function getExtractLayout(em: EntityManager, { services, extractId 
   const extract = await requireExtract(em, extractId);
   const head = await headOf(services, extract);
   const { layout, ...how } = await inForce(em, { services, extract, head });
-  return { layout, ...how, preview: await previewLayout(head, { layout, calendar: await calendarOf(em) }) };
+  const preview = await previewLayout(head, { layout, calendar: await calendarOf(em) });
+  // Once a person has looked at it, what was a guess is none any more.
+  return { layout, ...how, preview: how.isConfirmed ? { ...preview, warnings: preview.warnings.filter(({ code }) => !guesses.has(code)) } : preview };
 }
+
+const guesses = new Set([
+  "dates-ambiguous", "numbers-ambiguous", "week-day-ambiguous", "tax-guessed", "encoding-guessed", "separator-ambiguous", "header-ambiguous",
+  "separator-line", "lines-above-header", "column-not-found", "values-do-not-fit",
+]);
 
 type InForce = Omit<ExtractLayout, "preview">;
 

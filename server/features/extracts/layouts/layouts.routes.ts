@@ -1,13 +1,9 @@
-import type { Endpoint } from "@shared/contract/endpoint";
 import * as contract from "@shared/contract/saved-layouts";
-import { route, type Route, type SignedInCall } from "../../../http/route";
-import type { Actor } from "../load/load-extract.service";
+import { route, type Route } from "../../../http/route";
+import { accepted, actorOf } from "../accepted";
 import { getExtractLayout, previewExtractLayout, putExtractLayout } from "./extract-layout.service";
 import { presentSavedLayout } from "./layouts.presenter";
 import { changeSavedLayout, createSavedLayout, deleteSavedLayout, listSavedLayouts } from "./saved-layouts.service";
-
-const actorOf = ({ caller, requestId }: Pick<SignedInCall<Endpoint>, "caller" | "requestId">): Actor =>
-  ({ personId: caller.personId, tokenId: caller.tokenId, requestId });
 
 const list = route(contract.listLayouts, async ({ em, query }) =>
   ({ items: (await listSavedLayouts(em, query.kind)).map(presentSavedLayout) }));
@@ -30,9 +26,7 @@ const preview = route(contract.previewLayout, ({ em, services, params, body }) =
 
 const choose = route(contract.putExtractLayout, async (call) => {
   const { em, services, params, body, response } = call;
-  const jobId = await putExtractLayout(em, { services, extractId: params.id, ...body, actor: actorOf(call) });
-  response.location(`/api/jobs/${jobId}`);
-  return { jobId };
+  return accepted(response, await putExtractLayout(em, { services, extractId: params.id, ...body, actor: actorOf(call) }));
 });
 
 export const layoutsRoutes: readonly Route[] = [list, create, change, remove, read, preview, choose];

@@ -16,7 +16,8 @@ const longestShown = 200;
  */
 export async function previewLayout(head: Uint8Array, { layout, calendar }: { layout: Layout; calendar: ChainCalendar }): Promise<LayoutPreview> {
   const { kind, encoding, separator, linesAbove, hasHeader } = layout;
-  const detected = detectLayout(head, kind, { weekStart: calendar.weekStart, given: { encoding, separator, linesAbove, hasHeader } });
+  const free = detectLayout(head, kind, { weekStart: calendar.weekStart });
+  const detected = isSameTable(free.layout, layout) ? free : detectLayout(head, kind, { weekStart: calendar.weekStart, given: { encoding, separator, linesAbove, hasHeader } });
   const records = await firstRecords(head, layout);
   const rows = records.slice(hasHeader ? 1 : 0).slice(0, rowsShown);
   const { reader, warnings } = readerOf(layout, detected.layout.theirColumns);
@@ -28,6 +29,10 @@ export async function previewLayout(head: Uint8Array, { layout, calendar }: { la
     missing: missingColumns(layout),
   };
 }
+
+/** Whether a layout cuts a file into the same columns and rows as another. */
+const isSameTable = (one: Layout, other: Layout): boolean =>
+  one.encoding === other.encoding && one.separator === other.separator && one.linesAbove === other.linesAbove && one.hasHeader === other.hasHeader;
 
 /** A header and the rows shown; the line at the end of a head that goes on may be half a one. */
 async function firstRecords(head: Uint8Array, { encoding, separator, linesAbove }: Layout): Promise<CsvRecord[]> {
