@@ -1,12 +1,20 @@
 import type { UnknownCodes } from "@shared/contract/unknown-codes";
 import { CodeTally } from "./code-tally";
 import { PriceTally } from "./price-tally";
+import type { SeenKeys } from "./seen-keys";
 
 /** What is gathered beside the issues while the rows of one file are read. */
 export class CheckNotes {
   readonly unknownStores = new CodeTally();
   readonly unknownProducts = new CodeTally();
   readonly prices = new PriceTally();
+  /** Of kinds whose keys are watched while they are read. */
+  keys: SeenKeys | undefined;
+
+  /** Whether rows with the same key may stand in the file. */
+  get mayRepeat(): boolean {
+    return this.keys?.mayRepeat ?? true;
+  }
 
   unknownCodes(): UnknownCodes {
     const [stores, products] = [this.unknownStores, this.unknownProducts];

@@ -1,4 +1,5 @@
 import type { KindDefinition, StagedRows } from "../kinds/kind";
+import type { CheckNotes } from "./check-notes";
 import { longestValue, type IssueLog } from "./issue-log";
 import { rules, type RuleName } from "./rules";
 
@@ -40,7 +41,8 @@ export async function removeBreaches({ em, table, extractId, log, keep, rule, co
  * Rows with the same key: where they say the same the first is taken, with a warning for the others; where they
  * contradict each other none can be trusted, and all are errors.
  */
-export async function rejectRepeatedRows({ definition, ...together }: Together & { definition: KindDefinition }): Promise<void> {
+export async function rejectRepeatedRows({ definition, notes, ...together }: Together & { definition: KindDefinition; notes: CheckNotes }): Promise<void> {
+  if (!notes.mayRepeat) return;
   const { em, table } = together;
   const { key, keyText, staged } = definition;
   const keyColumns = key.join(", ");

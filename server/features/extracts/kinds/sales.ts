@@ -4,6 +4,7 @@ import { copyText } from "../check/copy-text";
 import { WeekReader } from "../check/day-columns";
 import { isMistypedGtin, reportCheckDigit } from "../check/gtin-column";
 import type { Column, Row } from "../check/row";
+import { SeenKeys } from "../check/seen-keys";
 import { checkNetSales, checkTradeDays, checkUnitCost, paidPrice } from "../check/sales-row-rules";
 import { checkSalesTogether } from "../check/sales-together.repository";
 import { compareSales } from "../load/compare-sales.repository";
@@ -100,6 +101,12 @@ function senseChecker({ row, codes: { storeDays }, notes: { prices } }: ReaderCo
   };
 }
 
+/** Watches for rows of the same product, store and week. */
+function watchKeys({ codes, notes }: ReaderContext): SeenKeys {
+  const above = (ids: ReadonlyMap<string, number>) => [...ids.values()].reduce((most, id) => Math.max(most, id), 0) + 1;
+  return (notes.keys = new SeenKeys({ stores: above(codes.storeIds), products: above(codes.productIds) }));
+}
+
 /** Files of weekly sales, a row a product, store and week. */
 export const salesKind: KindDefinition = {
   kind: "sales",
@@ -138,6 +145,7 @@ export const salesKind: KindDefinition = {
     const [feature, display, promotionDays] = [row.column("feature"), row.column("display"), row.column("promotion_days")];
     const [temperature, event] = [row.column("temperature_c"), row.column("event")];
     const orNull = (value: string | null) => value ?? "\\N";
+    const seen = watchKeys(context);
     return () => {
       const firstDay = weeks.readPast(week);
       const [product, store] = [readProduct(firstDay), readStore(firstDay)];
@@ -146,11 +154,13 @@ export const salesKind: KindDefinition = {
       const [regular, shelf, unitCost, mechanic] = [regularPrice.price(), shelfPrice.price(), cost.amount(), readMechanic()];
       checkSense({ product, store, week: firstDay, units, netSales, regular, shelf, unitCost, mechanic, openDays: days.open });
       // Numbers, days and words of ours need no escaping, and a file has millions of them.
-      return [
+      const staged = [
         product, store, firstDay, units, netSales, orNull(regular), orNull(shelf),
         feature.flag(), display.flag(), mechanic, orNull(promotionDays.days()), orNull(days.open), orNull(days.soldOut),
         orNull(unitCost), orNull(temperatureOf(temperature)), copyText(event.text({ longest: 64 })),
       ].join("\t");
+      if (!row.hasError && product !== null && store !== null && firstDay !== null) seen.add(product, store, firstDay);
+      return staged;
     };
   },
   checkTogether: checkSalesTogether,
