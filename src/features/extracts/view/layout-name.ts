@@ -2,8 +2,8 @@
 export const suggestName = (fileName: string): string => {
   const plain = fileName
     .replace(/\.(csv|txt)?(\.gz)?$/i, "")
-    .replace(/\b(week|wk|kw|w|until|to|bis)\b/gi, " ")
     .replace(/[\d_.-]+/g, " ")
+    .replace(/\b(week|wk|kw|w|until|to|bis)\b/gi, " ")
     .replace(/\s+/g, " ")
     .trim();
   const name = plain.length < 3 ? "New source" : plain;

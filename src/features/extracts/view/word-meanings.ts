@@ -30,14 +30,16 @@ const meaningsOf: Record<string, readonly MeaningLabel[]> = {
   sold_by_weight: yesOrNo,
 };
 
+/** A word for the whole promotion is told of at the first of these that it would fill. */
+const partsOfPromotion = ["feature", "display", "mechanic"];
+
 export type UnknownWord = { word: string; column: string; meanings: readonly MeaningLabel[] };
 
 /** Words of the first rows that stand in no list, each once. */
 export const unknownWords = ({ rows }: Pick<LayoutPreview, "rows">, { mapping }: Pick<Layout, "mapping">): UnknownWord[] => {
   const found = new Map<string, UnknownWord>();
   for (const { column, value } of rows.flatMap(({ problems }) => problems)) {
-    // A word for the whole promotion is told of at the first column that it would fill.
-    const source = column in mapping ? column : promotionColumn;
+    const source = column in mapping || !partsOfPromotion.includes(column) ? column : promotionColumn;
     const meanings = meaningsOf[source];
     if (meanings && !found.has(`${source} ${value}`)) found.set(`${source} ${value}`, { word: value, column: source, meanings });
   }
