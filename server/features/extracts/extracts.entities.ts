@@ -55,6 +55,8 @@ export const ExtractEntity = defineEntity({
     firstWeek: p.date().nullable(),
     lastWeek: p.date().nullable(),
     changes: p.json<ExtractChanges>().nullable().lazy(true, false),
+    /** Which sales, and which threshold, they were worked out by; while these stay, they need not be worked out again. */
+    changesAsOf: p.string().length(60).nullable(),
     /** Codes that the catalogue lacked when the file was checked. */
     unknownCodes: p.json<UnknownCodes>().nullable().lazy(true, false),
     /** Whether the picture of what is there has yet to count it in. */
