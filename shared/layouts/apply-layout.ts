@@ -1,9 +1,10 @@
+import { addDays } from "../calendar";
 import type { ColumnSource, Layout } from "../contract/layouts";
-import { promotionColumn } from "../contract/layouts";
+import { mappableColumns, promotionColumn } from "../contract/layouts";
 import { columnType } from "./column-types";
 import { LayoutError } from "./layout-error";
 import { normalName } from "./normal-name";
-import { daysAfter, readDay, readWeek } from "./read-day";
+import { readDay, readWeek } from "./read-day";
 import { numberReader } from "./read-number";
 import { remembered, wordReader, type Promotion, type WordReader } from "./read-words";
 
@@ -30,7 +31,7 @@ type Cell = (fields: readonly string[]) => string | { value: string; reason: str
 type Reading = { text: string } | { reason: string };
 
 /**
- * A reader of a file's records under a layout: from the fields as they stand to our columns as our own extract writes them
+ * A reader of a file's records under a layout: from the fields as they stand to our columns, in our order, as our own extract writes them
  * (numbers with a point, days as YYYY-MM-DD, 0 and 1, our mechanics; codes and names as they are). Last days of weeks become
  * first days; ISO weeks stay weeks; a promotion word becomes feature, display and mechanic, of which a column of its own
  * is preferred. A value that cannot be read is a problem, never a guess.
@@ -41,7 +42,10 @@ type Reading = { text: string } | { reason: string };
  */
 export function applyLayout(layout: Layout, theirColumns: readonly string[] = layout.theirColumns): LayoutReader {
   const words = wordReader(layout.words);
-  const sources = Object.entries(layout.mapping).map(([column, source]) => ({ column, source: located(source, theirColumns) }));
+  const sources = mappableColumns(layout.kind).flatMap((column) => {
+    const source = layout.mapping[column];
+    return source ? [{ column, source: located(source, theirColumns) }] : [];
+  });
   const missing = sources.flatMap(({ source }) => ("missing" in source ? [source.missing] : []));
   if (missing.length > 0) {
     throw new LayoutError("missing-columns", `The file lacks columns that its layout reads: ${missing.join(", ")}.`);
@@ -129,7 +133,7 @@ function weekOf(text: string, layout: Layout): Reading {
   const reading = readWeek(text, layout.dateOrder);
   if ("problem" in reading) return { reason: reading.problem };
   if ("isoWeek" in reading) return { text: reading.isoWeek };
-  return { text: layout.weekDay === "last" ? daysAfter(reading.day, -6) : reading.day };
+  return { text: layout.weekDay === "last" ? addDays(reading.day, -6) : reading.day };
 }
 
 function dayOf(text: string, { dateOrder }: Layout): Reading {

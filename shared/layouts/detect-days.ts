@@ -1,9 +1,10 @@
+import { dayOfWeek } from "../calendar";
 import type { DateOrder, WeekDay } from "../contract/layouts";
 import { most, type ColumnProfile } from "./column-profile";
 import { firstDayWords, lastDayWords } from "./column-words";
 import { shareOf, type Detected, type LayoutWarning } from "./detected";
 import { normalName } from "./normal-name";
-import { readDay, weekdayOf, yearLastParts } from "./read-day";
+import { readDay, yearLastParts } from "./read-day";
 
 /** Columns whose values are days or weeks. */
 export const isDayColumn = ({ days, values }: ColumnProfile) => values.length > 0 && days >= most;
@@ -38,7 +39,7 @@ const countDays = (values: readonly string[], order: DateOrder) => values.filter
 
 function byWeekday(columns: readonly string[][]): Detected<DateOrder> | null {
   for (const values of columns.filter(({ length }) => length > 1)) {
-    const fallOnOneDay = (order: DateOrder) => new Set(values.map((value) => weekdayOf(day(value, order) ?? "1970-01-01"))).size === 1;
+    const fallOnOneDay = (order: DateOrder) => new Set(values.map((value) => dayOfWeek(day(value, order) ?? "1970-01-01"))).size === 1;
     const [dayFirst, monthFirst] = [fallOnOneDay("dmy"), fallOnOneDay("mdy")];
     if (dayFirst !== monthFirst) return { value: dayFirst ? "dmy" : "mdy", confidence: values.length > 2 ? 0.95 : 0.85, warnings: [] };
   }
@@ -53,7 +54,7 @@ function bySign(values: readonly string[]): Detected<DateOrder> | null {
 /** The order in which the days begin or end weeks of the chain; one day can do so by chance, so it is asked about. */
 function byWeekStart(values: readonly string[], weekStart: number | undefined): Detected<DateOrder> {
   const bounds = weekStart === undefined ? [] : [weekStart, (weekStart + 6) % 7];
-  const bound = (order: DateOrder) => values.filter((value) => bounds.includes(weekdayOf(day(value, order) ?? "1970-01-01"))).length;
+  const bound = (order: DateOrder) => values.filter((value) => bounds.includes(dayOfWeek(day(value, order) ?? "1970-01-01"))).length;
   const value = bound("mdy") > bound("dmy") ? "mdy" : "dmy";
   return { value, confidence: 0.5, warnings: [openOrder(values, value)] };
 }
@@ -83,7 +84,7 @@ export function detectWeekDay(profile: ColumnProfile | undefined, { order, weekS
   const isNamed = (words: readonly string[]) => words.some((word) => name.includes(` ${word} `));
   if (isNamed(lastDayWords)) return { value: "last", confidence: 0.95, warnings: [] };
   if (isNamed(firstDayWords)) return { value: "first", confidence: 0.95, warnings: [] };
-  const only = [sunday, monday, 2, 3, 4, 5, saturday].find((weekday) => shareOf(days, (value) => weekdayOf(value) === weekday) >= most);
+  const only = [sunday, monday, 2, 3, 4, 5, saturday].find((weekday) => shareOf(days, (value) => dayOfWeek(value) === weekday) >= most);
   if (only === undefined) return { value: "first", confidence: 0.3, warnings: [severalWeekdays(profile.position)] };
   if (only === saturday) return { value: "last", confidence: 0.7, warnings: [] };
   if (only === sunday) return { value: "last", confidence: 0.5, warnings: [sundays(profile.position)] };
@@ -92,7 +93,7 @@ export function detectWeekDay(profile: ColumnProfile | undefined, { order, weekS
 
 /** A name may say "week ending" over first days: what fits the chain's weeks is right. */
 function byChainsWeek(days: readonly string[], weekStart: number): Detected<WeekDay> | null {
-  const fallOn = (weekday: number) => shareOf(days, (value) => weekdayOf(value) === weekday) >= most;
+  const fallOn = (weekday: number) => shareOf(days, (value) => dayOfWeek(value) === weekday) >= most;
   if (fallOn(weekStart)) return { value: "first", confidence: 1, warnings: [] };
   return fallOn((weekStart + 6) % 7) ? { value: "last", confidence: 1, warnings: [] } : null;
 }

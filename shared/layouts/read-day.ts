@@ -1,4 +1,5 @@
 import type { DateOrder } from "../contract/layouts";
+import { dayFromNumber, isDay } from "../calendar";
 import { monthOf } from "./month-names";
 
 /** A text read as a day: a day "YYYY-MM-DD", an ISO week "YYYY-Www", or why it is neither. */
@@ -15,6 +16,8 @@ const weekThenYear = /^(?:W|KW|WK|S) ?(\d{1,2})[-/. ]{1,2}(\d{4})$/i;
 const serial = /^[2-5]\d{4}(?:\.0+)?$/;
 /** Two digits from here on are meant as years of the last century. */
 const firstOldYear = 70;
+/** No chain has older days, and counting from them stays within the calendar. */
+const earliestYear = 1000;
 
 /** The three numbers of a day whose year stands last; which of the first two is the month, the order says. */
 export type YearLast = { first: number; second: number; year: number; sign: string };
@@ -86,15 +89,12 @@ export const isSerialDay = (text: string): boolean => serial.test(text.trim());
 
 /** Day 25,569 of a spreadsheet is 1970-01-01. */
 function serialDay(value: string): string {
-  return dayText(new Date((Math.trunc(Number(value)) - 25_569) * 86_400_000));
+  return dayFromNumber(Math.trunc(Number(value)) - 25_569);
 }
 
-const dayText = (date: Date) => date.toISOString().slice(0, 10);
-
 function dayOrProblem(year: number, month: number, date: number): DayReading {
-  const day = new Date(Date.UTC(year, month - 1, date));
-  const exists = day.getUTCFullYear() === year && day.getUTCMonth() === month - 1 && day.getUTCDate() === date;
-  return exists ? { day: dayText(day) } : { problem: "There is no such day in the calendar" };
+  const day = [String(year).padStart(4, "0"), ...[month, date].map((part) => String(part).padStart(2, "0"))].join("-");
+  return year >= earliestYear && isDay(day) ? { day } : { problem: "There is no such day in the calendar" };
 }
 
 function isoWeek(year: string, week: string): DayReading {
@@ -113,15 +113,3 @@ function fullYear(text: string): number {
 export function isDayLike(text: string): boolean {
   return (["dmy", "mdy"] as const).some((order) => !("problem" in readDay(text, order)));
 }
-
-/**
- * The day so many days later.
- *
- * @example daysAfter("2026-06-14", -6) // "2026-06-08"
- */
-export function daysAfter(day: string, days: number): string {
-  return dayText(new Date(Date.parse(`${day}T00:00:00Z`) + days * 86_400_000));
-}
-
-/** The day of the week: 0 Sunday to 6 Saturday. */
-export const weekdayOf = (day: string): number => new Date(`${day}T00:00:00Z`).getUTCDay();

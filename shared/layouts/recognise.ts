@@ -1,9 +1,9 @@
+import { dayOfWeek } from "../calendar";
 import type { Encoding, Layout } from "../contract/layouts";
 import { applyLayout } from "./apply-layout";
 import { detectEncoding, isAscii } from "./detect-encoding";
 import { headBytes, shareOf } from "./detected";
 import { normalName } from "./normal-name";
-import { weekdayOf } from "./read-day";
 import { readHead, recordsOf } from "./read-head";
 
 export type Recognised = {
@@ -18,7 +18,7 @@ export type Recognised = {
 
 /** Rows by which it is seen whether values can be read. */
 const rowsTried = 200;
-/** A layout by which half of the rows cannot be read is not the one. */
+/** A layout by which half of the rows cannot be read, or have weeks that are none of the chain, is not the one. */
 const mostUnreadable = 0.5;
 /** Without names only values can tell, so nearly all must do. */
 const mostUnreadableWithoutHeader = 0.1;
@@ -26,7 +26,7 @@ const mostUnreadableWithoutHeader = 0.1;
 /**
  * The saved layout that fits a new file: written in its encoding and separator, with the same names in its header, in the same
  * or another order (without a header: as many columns, whose values can be read). Of several the one by which most rows can
- * be read, then by which most weeks begin on the chain's day, in the same order before another, then the first in the list.
+ * be read, then by which most weeks begin on the chain's day (most must), in the same order before another, then the first in the list.
  *
  * @param weekStart the day on which the chain's weeks begin, 0 Sunday to 6 Saturday
  * @returns null where none fits.
@@ -36,7 +36,8 @@ export function recognise(layouts: readonly Layout[], head: Uint8Array, { weekSt
   const encodings = possibleEncodings(head);
   const fits = layouts.flatMap((layout, index) => {
     const fit = encodings.includes(layout.encoding) ? fitOf(layout, head) : null;
-    return fit ? [{ index, layout, misplaced: misplacedShare(fit, layout, weekStart), ...fit }] : [];
+    const misplaced = fit ? misplacedShare(fit, layout, weekStart) : 0;
+    return fit && misplaced <= mostUnreadable ? [{ index, layout, misplaced, ...fit }] : [];
   });
   const [best] = fits.sort((one, other) =>
     one.unreadable - other.unreadable || one.misplaced - other.misplaced || rank(one.order) - rank(other.order) || one.index - other.index);
@@ -89,7 +90,7 @@ function misplacedShare({ theirColumns, rows }: Fit, layout: Layout, weekStart: 
   if (weekStart === undefined || week === -1) return 0;
   return shareOf(rows.slice(0, rowsTried), (row) => {
     const value = read(row).values[week] ?? "";
-    return /^\d{4}-\d{2}-\d{2}$/.test(value) && weekdayOf(value) !== weekStart;
+    return /^\d{4}-\d{2}-\d{2}$/.test(value) && dayOfWeek(value) !== weekStart;
   });
 }
 

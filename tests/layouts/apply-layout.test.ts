@@ -21,7 +21,7 @@ describe("a record is read", () => {
     const layout = aLayout({ columns: ["store", "units"], hasHeader: false, mapping: {
       units: { from: "position", position: 1 }, store: { from: "value", value: "S9" }, regular_price: { from: "value", value: "" },
     } });
-    expect(applyLayout(layout).read(["x", "5"]).values).toEqual(["5", "S9", ""]);
+    expect(applyLayout(layout).read(["x", "5"]).values).toEqual(["S9", "5", ""]);
   });
 
   it("with a problem for each value that cannot be read, and nothing in its place", () => {

@@ -80,3 +80,18 @@ describe("no layout is recognised", () => {
     expect(recognise([windows], utf8("week,store,units", "2026-06-15,Köln,5"))).toBeNull();
   });
 });
+
+describe("the day on which the chain's weeks begin", () => {
+  const [first, last] = [aLayout({ columns }), aLayout({ columns, weekDay: "last" })];
+  const sundays = utf8("week,store,units", "2026-06-14,S1,5", "2026-06-21,S1,5");
+
+  it("tells layouts apart that read the same names", () => {
+    expect(recognise([first, last], sundays, { weekStart: 1 })?.index).toBe(1);
+    expect(recognise([first, last], sundays, { weekStart: 0 })?.index).toBe(0);
+    expect(recognise([first, last], sundays)?.index).toBe(0);
+  });
+
+  it("keeps a layout from a file whose weeks would be none of the chain", () => {
+    expect(recognise([first], sundays, { weekStart: 1 })).toBeNull();
+  });
+});
