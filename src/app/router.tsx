@@ -1,5 +1,5 @@
 import type { QueryClient } from "@tanstack/react-query";
-import { createBrowserRouter } from "react-router-dom";
+import { createBrowserRouter, redirect } from "react-router-dom";
 import { paths } from "@/lib/paths";
 import { requireSession } from "./require-session";
 import { RouteError } from "./route-error";
@@ -49,6 +49,42 @@ export const createRouter = (queryClient: QueryClient) =>
               lazy: async () => {
                 const page = await import("./routes/extract-layouts");
                 return { Component: page.ExtractLayoutsRoute, loader: page.loaderFor(queryClient) };
+              },
+            },
+            { path: paths.catalogue.path, loader: () => redirect(paths.catalogueStores.href()) },
+            {
+              path: paths.catalogueStores.path,
+              lazy: async () => {
+                const page = await import("./routes/catalogue-stores");
+                return { Component: page.CatalogueStoresRoute, loader: page.loaderFor(queryClient) };
+              },
+            },
+            {
+              path: paths.catalogueProducts.path,
+              lazy: async () => {
+                const page = await import("./routes/catalogue-products");
+                return { Component: page.CatalogueProductsRoute, loader: page.loaderFor(queryClient) };
+              },
+            },
+            {
+              path: paths.catalogueProduct.path,
+              lazy: async () => {
+                const page = await import("./routes/catalogue-product");
+                return { Component: page.CatalogueProductRoute, loader: page.loaderFor(queryClient) };
+              },
+            },
+            {
+              path: paths.catalogueEvents.path,
+              lazy: async () => {
+                const page = await import("./routes/catalogue-events");
+                return { Component: page.CatalogueEventsRoute, loader: page.loaderFor(queryClient) };
+              },
+            },
+            {
+              path: paths.catalogueTemperatures.path,
+              lazy: async () => {
+                const page = await import("./routes/catalogue-temperatures");
+                return { Component: page.CatalogueTemperaturesRoute, loader: page.loaderFor(queryClient) };
               },
             },
             {

@@ -1,0 +1,73 @@
+import type { CatalogueChange } from "@shared/contract/catalogue-history";
+import type { ChainFormat } from "@/lib/format/chain-format";
+
+type Value = string | number | boolean | null;
+type Values = NonNullable<CatalogueChange["after"]>;
+
+const thing: Record<CatalogueChange["what"], string> = {
+  store: "the store", product: "the product", category: "the category", terms: "the terms", funding: "the funding",
+  listing: "the listing", event: "the event", temperature: "the temperature",
+};
+
+const verb = { added: "entered", changed: "changed", removed: "removed" } as const;
+
+const fieldNames: Record<string, string> = {
+  name: "name", region: "region", opened: "first day of trade", closed: "last day of trade", gtin: "GTIN", brand: "brand", category: "category",
+  soldByWeight: "sold by weight", replaces: "product replaced", replacesSizeRatio: "size ratio", validFrom: "valid from", unitCost: "cost",
+  regularPrice: "regular price", taxRate: "tax", store: "store", firstDay: "first day", lastDay: "last day", perUnit: "per unit", lumpSum: "lump sum",
+  week: "week", temperatureC: "temperature",
+};
+
+const amounts = new Set(["unitCost", "regularPrice", "perUnit", "lumpSum"]);
+const days = new Set(["opened", "closed", "firstDay", "lastDay", "validFrom", "week"]);
+
+/** Files that give no day mean from the beginning. */
+export const beginning = "1970-01-01";
+
+/** A value as people write it. */
+const written = (field: string, value: Value | undefined, format: ChainFormat): string => {
+  if (value === null || value === undefined || value === "") return "nothing";
+  if (typeof value === "boolean") return value ? "yes" : "no";
+  if (typeof value === "number") {
+    if (amounts.has(field)) return format.money(value, { digits: decimals(value) });
+    if (field === "taxRate") return format.percent(value, { digits: 1 });
+    if (field === "temperatureC") return format.temperature(value);
+    return String(value);
+  }
+  if (field === "validFrom" && value === beginning) return "the beginning";
+  return days.has(field) ? format.day(value) : value;
+};
+
+/** Money with as many decimals as it has, at least two. */
+const decimals = (value: number): number => Math.max(2, String(value).split(".")[1]?.length ?? 0);
+
+/** What says which of several it was: a listing's store and first day, terms' day, a temperature's week. */
+const which = (what: CatalogueChange["what"], values: Values, format: ChainFormat): string => {
+  const say = (field: string) => written(field, values[field], format);
+  if (what === "terms") return ` from ${say("validFrom")}`;
+  if (what === "listing") return ` in ${say("store")} from ${say("firstDay")}`;
+  if (what === "funding" || what === "event") return ` from ${say("firstDay")}`;
+  return what === "temperature" ? ` of the week of ${say("week")}` : "";
+};
+
+const keys: Record<CatalogueChange["what"], readonly string[]> = {
+  store: [], product: [], category: [], terms: ["validFrom"], funding: ["firstDay"], listing: ["store", "firstDay"], event: [], temperature: ["week", "region", "store"],
+};
+
+/** "changed the terms from 1 June 2026" */
+export const changeSentence = (change: CatalogueChange, format: ChainFormat): string => {
+  const values = change.after ?? change.before;
+  return `${verb[change.change]} ${thing[change.what]}${values ? which(change.what, values, format) : ""}`;
+};
+
+/** What became of each field that changed: "regular price: €1.79 → €1.99". Of a new row what it has, of a removed one what it had. */
+export const changeDetails = ({ what, before, after }: CatalogueChange, format: ChainFormat): string[] => {
+  const fields = Object.keys({ ...before, ...after }).filter((field) => !keys[what].includes(field) || (before && after));
+  return fields.flatMap((field) => {
+    const [was, is] = [before?.[field], after?.[field]];
+    const name = fieldNames[field] ?? field;
+    if (before && after) return was === is ? [] : [`${name}: ${written(field, was, format)} → ${written(field, is, format)}`];
+    const only = after ? is : was;
+    return only === null || only === undefined || only === "" || only === false ? [] : [`${name}: ${written(field, only, format)}`];
+  });
+};
