@@ -27,4 +27,5 @@ export const extractWith = (part: Partial<Extract> = {}): Extract => ({
 export const sessionWith = (permissions: string[]) => ({
   person: { id: "0b7e3a44-3b1b-4a8e-9a0a-000000000002", name: "Ada Kale", email: "ada@larkmoor.example", roles: ["data-admin"], categories: [], mustChangePassword: false },
   permissions,
+  by: "session",
 });

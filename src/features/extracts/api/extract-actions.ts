@@ -22,9 +22,8 @@ export const useExtractAction = (id: string) => {
   const queryClient = useQueryClient();
   return useMutation({
     mutationFn: (action: ExtractAction) => start(id, action),
+    // All of the extract is read anew, also its changes: a refused load may have learnt reasons for a second look since.
     onSettled: () => queryClient.invalidateQueries({ queryKey: extractQuery(id).queryKey }),
-    // A refused load may have learnt reasons for a second look since.
-    onError: () => queryClient.invalidateQueries({ queryKey: extractChangesKey(id) }),
   });
 };
 
