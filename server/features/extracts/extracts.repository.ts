@@ -22,6 +22,16 @@ export async function lockCheck(em: EntityManager, id: string): Promise<void> {
   await em.execute("select pg_advisory_xact_lock(hashtextextended(?, 0))", [`shelftide check ${id}`]);
 }
 
+/** Lets sorting and joining sets of a million rows use memory instead of disk, until the transaction ends. */
+export async function giveMemory(em: EntityManager): Promise<void> {
+  await em.execute("set local work_mem = '64MB'");
+}
+
+/** Has what loading an extract would change worked out anew before it is loaded. */
+export async function forgetStanding(em: EntityManager, id: string): Promise<void> {
+  await em.execute("update extracts set changes_as_of = null where id = ?", [id]);
+}
+
 export type ExtractCursor = { uploadedAt: string; id: string };
 
 /** Extracts, newest first, from after a cursor on; one more than the limit where there are more. */

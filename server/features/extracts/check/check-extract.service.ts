@@ -1,8 +1,10 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
+import type { ExtractChanges } from "@shared/contract/extracts";
 import type { Services } from "../../../services";
 import { conflict, notFound } from "../../../errors";
 import type { Extract } from "../extracts.entities";
-import { findExtract, layoutInForceOf, lockCheck, lockExtract, removeIssues } from "../extracts.repository";
+import { findExtract, giveMemory, layoutInForceOf, lockCheck, lockExtract, removeIssues } from "../extracts.repository";
+import type { KindDefinition } from "../kinds/kind";
 import { kinds } from "../kinds/kinds";
 import { settleLayout } from "../layouts/settle-layout.service";
 import { analyseStaging, countStaged, dropStaging } from "../load/staging.repository";
@@ -65,6 +67,7 @@ type Checking = { em: EntityManager; services: Services; extractId: string; prog
 async function check({ em, services, extractId, progress }: Checking): Promise<void> {
   // A second worker, which took the first for dead, waits for it.
   await lockCheck(em, extractId);
+  await giveMemory(em);
   const found = await requireExtract(em, extractId);
   const { kind, storageKey, sizeBytes } = found;
   const layout = await layoutInForceOf(em, found);
@@ -79,9 +82,11 @@ async function check({ em, services, extractId, progress }: Checking): Promise<v
   const together = { em, table, extractId, log, notes, keep: true };
   await rejectRepeatedRows({ ...together, definition });
   await definition.checkTogether?.(together);
-  const weeks = definition.weekColumn ? await weeksStaged(em, { table, column: definition.weekColumn }) : null;
   const rowsUsable = await countStaged(em, extractId);
+  // Before comparing: what is loaded between the two makes it another.
+  const changesAsOf = (await definition.standing?.(em)) ?? null;
   const changes = await definition.compare({ em, table });
+  const weeks = await weeksOf({ em, table, definition, changes });
   const extract = await lockCheckable(em, extractId);
   extract.rowsRead = rowsRead;
   extract.rowsUsable = rowsUsable;
@@ -91,11 +96,21 @@ async function check({ em, services, extractId, progress }: Checking): Promise<v
   extract.firstWeek = weeks?.first ?? null;
   extract.lastWeek = weeks?.last ?? null;
   extract.changes = changes;
+  extract.changesAsOf = changesAsOf;
   extract.unknownCodes = notes.unknownCodes();
   extract.state = rowsUsable > 0 ? "checked" : "unusable";
   extract.failure = rowsUsable > 0 ? null : noUsableRow(rowsRead);
   extract.checkedAt = services.now();
   await noticeChecked(em, services, extract);
+}
+
+type Staged = { em: EntityManager; table: string; definition: KindDefinition; changes: ExtractChanges };
+
+/** First and last week of the usable rows; null for kinds without weeks. */
+async function weeksOf({ em, table, definition: { weekColumn }, changes: { weeks } }: Staged): Promise<{ first: string | null; last: string | null } | null> {
+  if (weekColumn === undefined) return null;
+  const [first, last] = [weeks[0], weeks.at(-1)];
+  return first && last ? { first: first.week, last: last.week } : weeksStaged(em, { table, column: weekColumn });
 }
 
 const reading = (sizeBytes: number, progress: Progress) => ({ readBytes, rowsRead, errors }: StagingProgress) =>

@@ -39,8 +39,10 @@ export type KindDefinition = {
   weekColumn?: string;
   /** What loading would do to the database as it stands. */
   compare: (rows: StagedRows) => Promise<ExtractChanges>;
-  /** Makes room for the rows, in a short transaction of its own before the load's. */
-  prepareLoad?: (rows: StagedRows) => Promise<void>;
+  /** Names what `compare` depends on besides the rows: while the name is the same, it would answer the same. */
+  standing?: (em: EntityManager) => Promise<string>;
+  /** Makes room for the rows, in a short transaction of its own before the load's; `weeks` are theirs, where known. */
+  prepareLoad?: (rows: StagedRows & { weeks: readonly string[] | null }) => Promise<void>;
   /** Puts the rows in. Called inside the load's transaction, under its lock. */
   load: (rows: StagedRows & { extractId: string; now: Date; changes: ExtractChanges; by: Author }) => Promise<void>;
 };

@@ -9,6 +9,7 @@ import { checkNetSales, checkTradeDays, checkUnitCost, paidPrice } from "../chec
 import { checkSalesTogether } from "../check/sales-together.repository";
 import { compareSales } from "../load/compare-sales.repository";
 import { ensurePartitions, mergeSales } from "../load/sales-merge.repository";
+import { salesStanding } from "../load/sales-standing.repository";
 import type { KindDefinition, ReaderContext } from "./kind";
 import { temperatureOf } from "./temperatures";
 
@@ -166,6 +167,7 @@ export const salesKind: KindDefinition = {
   checkTogether: checkSalesTogether,
   weekColumn: "week",
   compare: compareSales,
+  standing: salesStanding,
   prepareLoad: ensurePartitions,
   load: mergeSales,
 };

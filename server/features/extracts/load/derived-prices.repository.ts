@@ -1,4 +1,5 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
+import { within, type WeekRange } from "./sales-columns";
 
 /**
  * Derives the price of weeks that do not tell it themselves (no shelf price, nothing sold): the commonest price of the
@@ -8,26 +9,33 @@ import type { EntityManager } from "@mikro-orm/postgresql";
  * Prices depend on all rows of a product and week, whichever extract they came from, so they are derived anew for every
  * product and week that a load or a withdrawal touched. Being a function of what is stored, they need no history.
  *
- * @param touched query of `product_id` and `week`, each pair once.
+ * @param touched table with the products and weeks touched, all of them in `range`.
  */
-export async function derivePrices(em: EntityManager, touched: string): Promise<void> {
-  const [{ first, last }] = await em.execute<[{ first: string | null; last: string | null }]>(
-    `select min(week)::text as first, max(week)::text as last from (${touched}) touched`,
-  );
-  if (first === null || last === null) return;
-  const within = (alias: string) => `${alias}.week between date '${first}' and date '${last}'`;
+export async function derivePrices(em: EntityManager, { touched, range }: { touched: string; range: WeekRange }): Promise<void> {
+  // Most weeks tell their price, so the few others are picked out first.
+  await em.execute(`
+    create temporary table untold_rows on commit drop as
+    select product_id, store_id, week, regular_price from weekly_sales sales
+    where ${within(range)} and price_source not in ('shelf', 'paid')`);
+  const [{ any }] = await em.execute<[{ any: boolean }]>("select exists (select from untold_rows) as any");
+  if (any) {
+    await em.execute("analyze untold_rows");
+    await deriveUntold(em, { touched, range });
+  }
+  await em.execute("drop table untold_rows");
+}
+
+async function deriveUntold(em: EntityManager, { touched, range }: { touched: string; range: WeekRange }): Promise<void> {
   await em.execute(`
     with untold as materialized (
-      select sales.product_id, sales.store_id, sales.week, store.region, sales.regular_price
-      from (${touched}) touched
-      join weekly_sales sales on sales.product_id = touched.product_id and sales.week = touched.week and ${within("sales")}
-      join stores store on store.id = sales.store_id
-      where sales.price_source not in ('shelf', 'paid')
+      select wanting.product_id, wanting.store_id, wanting.week, store.region, wanting.regular_price
+      from untold_rows wanting join stores store on store.id = wanting.store_id
+      where exists (select from ${touched} touched where touched.product_id = wanting.product_id and touched.week = wanting.week)
     ),
     counted as (
       select wanted.product_id, wanted.week, wanted.region, sales.price, count(*) as times
       from (select distinct product_id, week, region from untold) wanted
-      join weekly_sales sales on sales.product_id = wanted.product_id and sales.week = wanted.week and ${within("sales")}
+      join weekly_sales sales on sales.product_id = wanted.product_id and sales.week = wanted.week and ${within(range)}
       join stores store on store.id = sales.store_id and store.region = wanted.region
       where sales.price_source in ('shelf', 'paid')
       group by wanted.product_id, wanted.week, wanted.region, sales.price
@@ -52,5 +60,5 @@ export async function derivePrices(em: EntityManager, touched: string): Promise<
     update weekly_sales sales set price = derived.price, price_source = derived.price_source
     from derived
     where sales.product_id = derived.product_id and sales.store_id = derived.store_id and sales.week = derived.week
-      and ${within("sales")} and (sales.price, sales.price_source) is distinct from (derived.price, derived.price_source)`);
+      and ${within(range)} and (sales.price, sales.price_source) is distinct from (derived.price, derived.price_source)`);
 }

@@ -8,12 +8,12 @@ import { stageRows } from "../check/stage-rows";
 import { rejectRepeatedRows } from "../check/together.repository";
 import { countInLater } from "../coverage/count-in-later";
 import type { Extract } from "../extracts.entities";
-import { changesOf, findExtract, layoutInForceOf, lockCheck, lockExtract } from "../extracts.repository";
+import { changesOf, findExtract, forgetStanding, giveMemory, layoutInForceOf, lockCheck, lockExtract } from "../extracts.repository";
 import { kinds } from "../kinds/kinds";
 import { noticeLoaded } from "../notices/extract-notices";
 import { lockLoads } from "./load-lock.repository";
 import { SecondLookNeeded, secondLookNeeded } from "./second-look";
-import { analyseStaging, countStaged, dropStaging, stagingTable } from "./staging.repository";
+import { analyseStaging, countStaged, dropStaging, hasStaged, stagingTable } from "./staging.repository";
 
 /** Who asked for it; the one who uploaded the file, where nobody is named. */
 export type Actor = { personId: string; tokenId?: string | null; requestId?: string | null };
@@ -50,7 +50,9 @@ export async function loadExtract(services: Services, options: LoadOptions): Pro
 
 async function keepChanges(em: EntityManager, { extractId, changes }: { extractId: string; changes: ExtractChanges }): Promise<void> {
   const extract = await lockExtract(em, extractId);
-  if (extract?.state === "checked" || extract?.state === "loading") extract.changes = changes;
+  if (extract?.state !== "checked" && extract?.state !== "loading") return;
+  extract.changes = changes;
+  extract.changesAsOf = null;
 }
 
 async function loadOnce(services: Services, { extractId, actor, seen = [], progress = quietly }: LoadOptions): Promise<ExtractChanges["totals"]> {
@@ -60,6 +62,7 @@ async function loadOnce(services: Services, { extractId, actor, seen = [], progr
   await step(1, "Waiting for other loads to end");
   const changes = await services.orm.em.fork().transactional(async (em) => {
     await lockLoads(em);
+    await giveMemory(em);
     const extract = requireLoadable(await findExtract(em, extractId));
     if (extract.state === "loaded") return changesOf(em, extract);
     return load({ em, services, extract, actor, seen, step });
@@ -69,12 +72,21 @@ async function loadOnce(services: Services, { extractId, actor, seen = [], progr
 
 type Load = { em: EntityManager; services: Services; extract: Extract; actor?: Actor; seen: Seen; step: (done: number, message: string) => Promise<void> };
 
-async function load({ em, services, extract: { id, kind, fileName, uploadedBy }, actor, seen, step }: Load): Promise<ExtractChanges> {
-  const { compare, load: loadRows } = kinds[kind];
+/** What the check found, where nothing was loaded or withdrawn since; else worked out anew. To be called under the load lock. */
+async function changesNow(em: EntityManager, extract: Extract): Promise<ExtractChanges> {
+  const { compare, standing } = kinds[extract.kind];
+  const asOf = extract.changesAsOf ?? null;
+  const known = asOf !== null && asOf === (await standing?.(em)) ? await changesOf(em, extract) : null;
+  return known ?? compare({ em, table: stagingTable(extract.id) });
+}
+
+async function load({ em, services, extract: checked, actor, seen, step }: Load): Promise<ExtractChanges> {
+  const { id, kind, fileName, uploadedBy } = checked;
+  const { load: loadRows } = kinds[kind];
   const rows = { em, table: stagingTable(id) };
   const now = services.now();
   await step(2, "Comparing with what is there");
-  const changes = await compare(rows);
+  const changes = await changesNow(em, checked);
   if (seen !== "everything" && changes.secondLook.some((reason) => !seen.includes(reason))) throw new SecondLookNeeded(changes);
   await step(3, "Loading");
   await loadRows({ ...rows, extractId: id, now, changes, by: { ...(actor ?? { personId: uploadedBy.id }), file: { id, name: fileName } } });
@@ -110,12 +122,18 @@ async function ensureStaged(services: Services, { extractId, progress }: { extra
   const extract = await findExtract(services.orm.em.fork(), extractId);
   if (!extract) throw notFound("extract");
   if (extract.state !== "checked" && extract.state !== "loading") return;
-  await services.orm.em.fork().transactional(async (em) => {
+  const isKept = await services.orm.em.fork().transactional(async (em) => {
     await lockCheck(em, extractId);
-    if ((await countStaged(em, extractId)) !== extract.rowsUsable) await stageAgain({ em, services, extract, progress });
+    if (await hasStaged(em, extractId)) return true;
+    await stageAgain({ em, services, extract, progress });
+    return false;
   });
   const { prepareLoad } = kinds[extract.kind];
-  await services.orm.em.fork().transactional((em) => prepareLoad?.({ em, table: stagingTable(extractId) }) ?? Promise.resolve());
+  await services.orm.em.fork().transactional(async (em) => {
+    const checked = isKept ? await findExtract(em, extractId) : null;
+    const weeks = checked && ((await changesOf(em, checked))?.weeks.map(({ week }) => week) ?? null);
+    await prepareLoad?.({ em, table: stagingTable(extractId), weeks });
+  });
 }
 
 async function stageAgain({ em, services, extract, progress }: { em: EntityManager; services: Services; extract: Extract; progress: Progress }): Promise<void> {
@@ -132,6 +150,7 @@ async function stageAgain({ em, services, extract, progress }: { em: EntityManag
   await rejectRepeatedRows({ ...together, definition });
   await definition.checkTogether?.(together);
   const usable = await countStaged(em, extract.id);
+  await forgetStanding(em, extract.id);
   if (usable === extract.rowsUsable) return;
   const detail = `Since the check the catalogue has changed: ${usable} rows can be used now, not ${extract.rowsUsable ?? 0}. Check the file again, look at the list, and load it then.`;
   throw new ProblemError({ status: 409, code: "check-outdated", detail });

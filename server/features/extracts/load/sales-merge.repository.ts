@@ -1,7 +1,7 @@
 import type { ExtractChanges } from "@shared/contract/extracts";
 import type { StagedRows } from "../kinds/kind";
 import { derivePrices } from "./derived-prices.repository";
-import { columns, differs, key, said, salesColumns, sameKey, weeksOf, type WeekRange, within } from "./sales-columns";
+import { columns, differs, key, said, salesColumns, sameKey, type WeekRange, within } from "./sales-columns";
 
 /** The price that a row itself tells, and from what; see shared/planning's modelledPrice. */
 const ownPrice = `
@@ -15,9 +15,10 @@ const ownSource = `
  * Makes the partitions that staged weeks need. In a transaction of its own: making one shuts readers out until the
  * transaction ends, and a load takes longer than they should wait.
  */
-export async function ensurePartitions({ em, table }: StagedRows): Promise<void> {
-  await em.execute(`
-    select ensure_sales_partition(year) from (select distinct extract(year from week)::integer as year from ${table}) years`);
+export async function ensurePartitions({ em, table, weeks }: StagedRows & { weeks: readonly string[] | null }): Promise<void> {
+  const ofWeeks = weeks && [...new Set(weeks.map((week) => Number(week.slice(0, 4))))].map((year) => `(${year})`).join(", ");
+  const years = ofWeeks ? `(values ${ofWeeks}) years (year)` : `(select distinct extract(year from week)::integer as year from ${table}) years`;
+  await em.execute(`select ensure_sales_partition(year) from ${years}`);
 }
 
 type Merge = StagedRows & { extractId: string; now: Date; changes: ExtractChanges };
@@ -27,12 +28,14 @@ type Merge = StagedRows & { extractId: string; now: Date; changes: ExtractChange
  * alone, and it is noted whose they are. Prices are derived anew wherever the rows bear on them.
  */
 export async function mergeSales({ em, table, extractId, now, changes }: Merge): Promise<void> {
-  const range = await weeksOf({ em, table });
-  if (!range) return;
+  const [first, last] = [changes.weeks[0], changes.weeks.at(-1)];
+  if (!first || !last) return;
+  const range = { first: first.week, last: last.week };
   if (changes.totals.same > 0) await noteConfirmed({ em, table, extractId, range });
   if (changes.totals.changed > 0) await replaceChanged({ em, table, extractId, now, range });
-  if (changes.totals.new > 0) await insertNew({ em, table, extractId, range });
-  await derivePrices(em, `select distinct product_id, week from ${table}`);
+  const areAllNew = changes.totals.same === 0 && changes.totals.changed === 0;
+  if (changes.totals.new > 0) await insertNew({ em, table, extractId, range, areAllNew });
+  await derivePrices(em, { touched: table, range });
 }
 
 type Ranged = Omit<Merge, "now" | "changes"> & { range: WeekRange };
@@ -61,12 +64,12 @@ async function replaceChanged({ em, table, extractId, now, range }: Ranged & { n
   );
 }
 
-async function insertNew({ em, table, extractId, range }: Ranged): Promise<void> {
+async function insertNew({ em, table, extractId, range, areAllNew }: Ranged & { areAllNew: boolean }): Promise<void> {
   await em.execute(
     `insert into weekly_sales (${[...key, ...said].join(", ")}, price, price_source, extract_id)
      select ${columns([...key, ...said], "staged")}, ${ownPrice}, ${ownSource}, ?
      from ${table} staged
-     where not exists (select from weekly_sales sales where ${sameKey} and ${within(range)})`,
+     ${areAllNew ? "" : `where not exists (select from weekly_sales sales where ${sameKey} and ${within(range)})`}`,
     [extractId],
   );
 }

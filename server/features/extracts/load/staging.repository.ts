@@ -19,6 +19,15 @@ export async function dropStaging(em: EntityManager, extractId: string): Promise
   await em.execute(`drop table if exists ${stagingTable(extractId)}`);
 }
 
+/** Whether rows wait. They are all there or none: what a broken database server empties, it empties wholly. */
+export async function hasStaged(em: EntityManager, extractId: string): Promise<boolean> {
+  const table = stagingTable(extractId);
+  const [{ exists }] = await em.execute<[{ exists: boolean }]>("select to_regclass(?) is not null as exists", [table]);
+  if (!exists) return false;
+  const [{ any }] = await em.execute<[{ any: boolean }]>(`select exists (select from ${table}) as any`);
+  return any;
+}
+
 /** How many rows wait; none where the table is gone, or was emptied because the database server broke down. */
 export async function countStaged(em: EntityManager, extractId: string): Promise<number> {
   const table = stagingTable(extractId);

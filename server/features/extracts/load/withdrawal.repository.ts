@@ -44,6 +44,6 @@ export async function restoreBefore(em: EntityManager, { id: extractId, firstWee
   await em.execute(`delete from weekly_sales sales where ${ofExtract}`, [extractId]);
   await em.execute("delete from weekly_sales_history where replaced_by = ?", [extractId]);
   await em.execute("delete from sales_confirmations where extract_id = ?", [extractId]);
-  await derivePrices(em, "select distinct product_id, week from withdrawn_rows");
+  await derivePrices(em, { touched: "withdrawn_rows", range: { first: firstWeek, last: lastWeek } });
   await em.execute("drop table withdrawn_rows");
 }
