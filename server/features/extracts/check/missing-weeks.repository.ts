@@ -1,4 +1,5 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
+import { weeksOf, type WeekRange } from "../load/sales-columns";
 import type { SalesTogether } from "./sales-together.repository";
 
 /** Rows loaded so many days before the file's first week, or after its last, count as before and after a gap. */
@@ -6,7 +7,6 @@ const reachDays = 56;
 /** Weeks named in an issue. */
 const mostNamed = 6;
 
-type Range = { first: string; last: string };
 type Gap = { line: number; store: string; product: string; products: number; weeks: string[]; rows: number };
 
 /**
@@ -14,16 +14,20 @@ type Gap = { line: number; store: string; product: string; products: number; wee
  * the store was open and the product listed. What is missing in the same weeks of a store is told together, and counted in
  * rows. Nothing is said where the source leaves out what was not sold.
  */
-export async function reportMissingWeeks({ em, table, extractId, log }: SalesTogether): Promise<void> {
+export async function reportMissingWeeks({ em, table, extractId, log, notes }: SalesTogether): Promise<void> {
   const [{ skips }] = await em.execute<[{ skips: boolean }]>(
     "select coalesce(layout_in_force->>'missingMeans' = 'zero', false) as skips from extracts where id = ?", [extractId],
   );
   if (skips) return;
+  const range = await weeksOf({ em, table });
+  if (!range) return;
+  const isNear = await hasLoadedNear(em, { range, products: [...notes.prices.products.keys()] });
+  // A file without gaps far from all others has nothing to be looked at, and most large files are such.
+  if (!isNear && notes.keys?.mayHaveGaps() === false) return;
   await em.execute(`
     create temporary table file_pairs on commit drop as
     select product_id, store_id, count(*) as rows, min(week) as first, max(week) as last from ${table} group by product_id, store_id`);
-  const [range] = await em.execute<[Range | { first: null; last: null }]>("select min(first)::text as first, max(last)::text as last from file_pairs");
-  if (range.first !== null && (await findSpans(em, range))) {
+  if (await findSpans(em, { range, isNear })) {
     const gaps = await findGaps(em, { table, range, limit: log.room("missing-weeks") });
     for (const gap of gaps) {
       log.report({ line: gap.line, column: "week", value: named(gap.weeks), rule: "missing-weeks", reason: reasonOf(gap) });
@@ -47,12 +51,23 @@ function reasonOf({ store, product, products, weeks }: Gap): string {
 }
 
 const sameCell = (alias: string) => `${alias}.product_id = span.product_id and ${alias}.store_id = span.store_id`;
-const withinReach = ({ first, last }: Range) => `sales.week between date '${first}' - ${reachDays} and date '${last}' + ${reachDays}`;
+const withinReach = ({ first, last }: WeekRange) => `sales.week between date '${first}' - ${reachDays} and date '${last}' + ${reachDays}`;
+
+/** Whether sales of some of the products are loaded in weeks within reach. */
+async function hasLoadedNear(em: EntityManager, { range, products }: { range: WeekRange; products: readonly number[] }): Promise<boolean> {
+  const [{ near }] = await em.execute<[{ near: boolean }]>(
+    `select exists (
+       select from json_array_elements_text(?::json) product (id)
+       where exists (select from weekly_sales sales where sales.product_id = product.id::integer and ${withinReach(range)})
+     ) as near`,
+    [JSON.stringify(products)],
+  );
+  return near;
+}
 
 /** Notes for each pair whose rows do not follow each other week by week from where to where they reach; answers whether there is any. */
-async function findSpans(em: EntityManager, range: Range): Promise<boolean> {
-  const [{ near }] = await em.execute<[{ near: boolean }]>(`select exists (select from weekly_sales sales where ${withinReach(range)}) as near`);
-  const nearest = (which: "max" | "min", between: string) => (near
+async function findSpans(em: EntityManager, { range, isNear }: { range: WeekRange; isNear: boolean }): Promise<boolean> {
+  const nearest = (which: "max" | "min", between: string) => (isNear
     ? `(select ${which}(week) from weekly_sales sales where ${sameCell("sales")} and ${withinReach(range)} and sales.week between ${between})`
     : "null::date");
   await em.execute(`
@@ -68,7 +83,7 @@ async function findSpans(em: EntityManager, range: Range): Promise<boolean> {
   return any;
 }
 
-function findGaps(em: EntityManager, { table, range, limit }: { table: string; range: Range; limit: number }): Promise<Gap[]> {
+function findGaps(em: EntityManager, { table, range, limit }: { table: string; range: WeekRange; limit: number }): Promise<Gap[]> {
   return em.execute<Gap[]>(`
     with absent as (
       select span.product_id, span.store_id, array_agg(day::date order by day) as weeks

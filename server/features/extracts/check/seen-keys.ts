@@ -1,3 +1,5 @@
+import { addWeeks } from "@shared/calendar";
+
 /** Bits kept in all, which is 32 MB; of a file that needs more it is not known whether keys repeat. */
 const mostBits = 2 ** 28;
 
@@ -23,6 +25,18 @@ export class SeenKeys {
   /** True where a key was added twice, or where that is not known. */
   get mayRepeat(): boolean {
     return this.#mayRepeat;
+  }
+
+  /** Whether some product of a store has weeks before and after one that it lacks; true also where that is not known. */
+  mayHaveGaps(): boolean {
+    if (this.#mayRepeat) return true;
+    const weeks = [...this.#weeks.keys()].sort();
+    const seen = new Uint32Array(Math.ceil(this.#bitsOfWeek / 32));
+    const ended = new Uint32Array(seen.length);
+    return weeks.some((week, at) => {
+      const follows = at === 0 || addWeeks(weeks[at - 1] ?? week, 1) === week;
+      return comesBack({ bits: this.#weeks.get(week) ?? ended, seen, ended, follows });
+    });
   }
 
   add(product: number, store: number, week: string): void {
@@ -55,4 +69,18 @@ export class SeenKeys {
     this.#weeks.clear();
     this.#bits = new Uint32Array(0);
   }
+}
+
+type Turn = { bits: Uint32Array; /** Of any week so far, and those of them that lacked one; both are carried on. */ seen: Uint32Array; ended: Uint32Array; follows: boolean };
+
+/** Whether a bit is set that was set before, but not in the week before this one. */
+function comesBack({ bits, seen, ended, follows }: Turn): boolean {
+  for (let at = 0; at < bits.length; at++) {
+    const [now, before] = [bits[at] ?? 0, seen[at] ?? 0];
+    const gone = follows ? (ended[at] ?? 0) : before;
+    if ((gone & now) !== 0) return true;
+    ended[at] = gone | (before & ~now);
+    seen[at] = before | now;
+  }
+  return false;
 }

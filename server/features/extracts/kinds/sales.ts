@@ -96,7 +96,9 @@ function senseChecker({ row, codes: { storeDays }, notes: { prices } }: ReaderCo
     checkNetSales(netSales, money);
     checkUnitCost(unitCost, money);
     const price = money.shelfPrice ?? paidPrice(money);
-    if (price === null || cells.product === null || row.hasError || !prices.of(cells.product).add(price)) return;
+    if (cells.product === null || row.hasError) return;
+    const ofProduct = prices.of(cells.product);
+    if (price === null || !ofProduct.add(price)) return;
     const column = money.shelfPrice === null ? netSales : shelfPrice;
     prices.remember({ line: row.line, column: column.name, value: column.raw });
   };
