@@ -1,5 +1,5 @@
 /** Distinct values are looked for in a table of this many at most; where there are more, sorting is quicker. */
-const mostDistinct = 4096;
+const mostDistinct = 16_384;
 
 /** Distinct values of a column, ascending, how many rows have each, and per row the position of its own. */
 export type DistinctValues = { values: Float64Array; counts: Float64Array; codes: Int32Array };
@@ -9,7 +9,7 @@ export type DistinctValues = { values: Float64Array; counts: Float64Array; codes
  * then puts them in order. O(n + d log d) for d distinct values.
  *
  * @param values length n. Not changed.
- * @returns null where there are more than 4,096.
+ * @returns null where there are more than 16,384.
  * @example distinctValues(Float64Array.of(2, 1, 2)); // values 1, 2; counts 1, 2; codes 1, 0, 1
  */
 export function distinctValues(values: Float64Array): DistinctValues | null {

@@ -86,6 +86,7 @@ export function knownPositions(of: { column: string; levels: readonly string[] }
  */
 export function splinesPerLevel(rows: SplineRows, index: Int32Array, count: number): SplineRows {
   const values = index.includes(-1) ? rows.values.map((value, at) => (index[at >> 2] < 0 ? 0 : value)) : rows.values;
-  const first = rows.first.map((column, row) => (index[row] < 0 ? 0 : index[row] * rows.width + column));
+  const first = new Int32Array(index.length);
+  for (let row = 0; row < first.length; row++) first[row] = index[row] < 0 ? 0 : index[row] * rows.width + rows.first[row];
   return { storage: "spline", width: count * rows.width, wraps: false, first, values };
 }

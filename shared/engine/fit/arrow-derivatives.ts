@@ -1,4 +1,4 @@
-import { rowProducts } from "../linalg/tiles";
+import { addBetweenGroups, addWeighted, groupedOnly } from "./arrow-between";
 import type { ArrowState, ArrowSystem } from "./arrow-system";
 import { pairProducts } from "./dense-system";
 import type { LikelihoodState } from "./likelihood-state";
@@ -18,7 +18,7 @@ export function crossArrow(system: ArrowSystem, penalties: readonly Penalty[], s
   const count = penalties.length;
   const vectors = penalties.map((penalty) => sharedVector(system, penalty, state));
   for (let j = 0; j < count; j++) {
-    const solved = times(state.inverse, vectors[j], size);
+    const solved = times(state.inverse, vectors[j], rangeOf(system, penalties[j]));
     for (let k = 0; k <= j; k++) {
       const at = j * count + k;
       const [left, right] = [penalties[j], penalties[k]];
@@ -59,12 +59,17 @@ function sharedVector(system: ArrowSystem, penalty: Penalty, state: LikelihoodSt
   return vector;
 }
 
-function times(matrix: Float64Array, vector: Float64Array, size: number): Float64Array {
+/** Shared coordinates where a penalty's vector is not zero. */
+const rangeOf = ({ size, unpenalised }: ArrowSystem, { grouped, start, end }: Penalty): { from: number; to: number } =>
+  (grouped ? { from: 0, to: size } : { from: unpenalised + start, to: unpenalised + end });
+
+/** A symmetric matrix times a vector that is zero outside `from` to `to`. */
+function times(matrix: Float64Array, vector: Float64Array, { from, to }: { from: number; to: number }): Float64Array {
+  const size = vector.length;
   const out = new Float64Array(size);
-  for (let row = 0; row < size; row++) {
-    let sum = 0;
-    for (let column = 0; column < size; column++) sum += matrix[row * size + column] * vector[column];
-    out[row] = sum;
+  for (let k = from; k < to; k++) {
+    const value = vector[k];
+    for (let column = 0; column < size; column++) out[column] += value * matrix[k * size + column];
   }
   return out;
 }
@@ -96,8 +101,6 @@ function mixedNorm(system: ArrowSystem, [shared, grouped]: [Penalty, Penalty], s
   return total;
 }
 
-const groupedOnly = (penalties: readonly Penalty[]): number[] => penalties.flatMap(({ grouped }, j) => (grouped ? [j] : []));
-
 /** Per group (Bi + X)^2 - X^2, X = K_g M^-1 K_g', and the forms' part with Bi = (B_g + S_g)^-1. */
 function addWithinGroups(system: ArrowSystem, penalties: readonly Penalty[], state: LikelihoodState): void {
   const { size: shared, groups: { count, size } } = system;
@@ -119,77 +122,4 @@ function addWithinGroups(system: ArrowSystem, penalties: readonly Penalty[], sta
     }
   }
   addWeighted({ penalties, own, size, norms, forms }, state);
-}
-
-function addWeighted(
-  of: { penalties: readonly Penalty[]; own: readonly number[]; size: number; norms: Float64Array; forms: Float64Array | null },
-  state: LikelihoodState,
-): void {
-  const { penalties, own, size, norms, forms } = of;
-  for (const j of own) {
-    for (const k of own) {
-      if (k > j) continue;
-      const at = j * penalties.length + k;
-      for (let c = 0; c < size; c++) {
-        for (let e = 0; e < size; e++) {
-          const weight = weightAt(penalties[j], c) * weightAt(penalties[k], e);
-          if (weight === 0) continue;
-          state.norms[at] += weight * norms[c * size + e];
-          if (forms !== null) state.forms[at] += weight * forms[c * size + e];
-        }
-      }
-    }
-  }
-}
-
-/** Squares of K_g M^-1 K_h' over all pairs of groups, a group with itself included. */
-function addBetweenGroups(system: ArrowSystem, penalties: readonly Penalty[], state: LikelihoodState): void {
-  const { size: shared, groups: { count, size } } = system;
-  const own = groupedOnly(penalties);
-  const rows = count * size;
-  if (rows < 2 * shared) addWeighted({ penalties, own, size, norms: directSquares(system, state), forms: null }, state);
-  else addBySums({ system, penalties, own }, state);
-}
-
-function directSquares(system: ArrowSystem, state: LikelihoodState): Float64Array {
-  const { size: width, groups: { count, size } } = system;
-  const { link, spread } = state.arrow as ArrowState;
-  const rows = count * size;
-  const between = new Float64Array(rows * rows);
-  rowProducts({ values: spread, count: rows, width }, { values: link, count: rows, width }, between);
-  const squares = new Float64Array(size * size);
-  for (let row = 0; row < rows; row++) {
-    for (let other = 0; other < rows; other++) squares[(row % size) * size + (other % size)] += between[row * rows + other] ** 2;
-  }
-  return squares;
-}
-
-function addBySums(of: { system: ArrowSystem; penalties: readonly Penalty[]; own: readonly number[] }, state: LikelihoodState): void {
-  const { system: { size: shared, groups: { count, size } }, penalties, own } = of;
-  const { link, spread } = state.arrow as ArrowState;
-  // M^-1 T = sum over rows of (K M^-1)' d K: no further product is needed.
-  const products = own.map((j) => {
-    const product = new Float64Array(shared * shared);
-    for (let k = 0; k < size; k++) {
-      const weight = weightAt(penalties[j], k);
-      if (weight === 0) continue;
-      for (let group = 0; group < count; group++) {
-        const from = (group * size + k) * shared;
-        for (let i = 0; i < shared; i++) {
-          const value = weight * spread[from + i];
-          for (let column = 0; column < shared; column++) product[i * shared + column] += value * link[from + column];
-        }
-      }
-    }
-    return product;
-  });
-  own.forEach((j, a) => {
-    for (let b = 0; b <= a; b++) {
-      let trace = 0;
-      for (let row = 0; row < shared; row++) {
-        for (let column = 0; column < shared; column++) trace += products[a][row * shared + column] * products[b][column * shared + row];
-      }
-      state.norms[j * penalties.length + own[b]] += trace;
-    }
-  });
 }

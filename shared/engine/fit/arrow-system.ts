@@ -5,7 +5,8 @@ import type { DroppedColumn } from "../linalg/dropping-cholesky";
 import { addPenalty, factorUnpenalised } from "./dense-system";
 import type { SystemParts } from "./dense-system";
 import type { LikelihoodState } from "./likelihood-state";
-import type { GroupEquations, NormalEquations } from "./normal-equations";
+import type { GroupEquations } from "./group-equations";
+import type { NormalEquations } from "./normal-equations";
 import type { Penalty } from "./penalties";
 import { weightAt } from "./penalties";
 

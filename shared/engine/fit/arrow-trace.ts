@@ -17,7 +17,8 @@ export function traceArrow(system: ArrowSystem, penalties: readonly Penalty[], s
   invertFactored(state.factor, shared, state.inverse);
   const traces = new Float64Array(size);
   const squares = new Float64Array(size);
-  for (let group = 0; group < count; group++) goBack({ state, arrow, group, size, shared });
+  const factor = new Float64Array(size * size);
+  for (let group = 0; group < count; group++) goBack({ state, arrow, group, size, shared, factor });
   const links = { values: arrow.link, count: count * size, width: shared };
   rowProducts(links, { values: state.inverse, count: shared, width: shared }, arrow.spread);
   for (let group = 0; group < count; group++) {
@@ -42,14 +43,14 @@ export function traceArrow(system: ArrowSystem, penalties: readonly Penalty[], s
 }
 
 /** One group: K_g = L^-T (L^-1 C_g), its estimates and (B_g + S_g)^-1. */
-function goBack(of: { state: LikelihoodState; arrow: ArrowState; group: number; size: number; shared: number }): void {
-  const { state: { coefficients }, arrow, group, size, shared } = of;
+function goBack(of: { state: LikelihoodState; arrow: ArrowState; group: number; size: number; shared: number; factor: Float64Array }): void {
+  const { state: { coefficients }, arrow, group, size, shared, factor } = of;
   const block = arrow.inner.subarray(group * size * size, (group + 1) * size * size);
   const rows = arrow.link.subarray(group * size * shared, (group + 1) * size * shared);
   const own = arrow.coefficients.subarray(group * size, (group + 1) * size);
   backwardSolveRows(block, size, rows, shared);
   backwardSolve(block, size, own);
-  const factor = block.slice();
+  factor.set(block);
   invertFactored(factor, size, block);
   for (let k = 0; k < size; k++) {
     for (let i = 0; i < shared; i++) own[k] -= rows[k * shared + i] * coefficients[i];

@@ -1,6 +1,7 @@
 import { isNear, pointsTo } from "./known-optimum";
 import type { KnownOptimum } from "./known-optimum";
 import { newtonDirection } from "./newton-direction";
+import type { EarlierPoint } from "./newton-direction";
 import type { PenaltySearch } from "./penalty-search";
 import { derivatives, tryPenalties, withinBounds } from "./penalty-search";
 
@@ -32,6 +33,10 @@ export function fellnerSchallStep(search: PenaltySearch, automatic: readonly num
  * after it is below the gradient's tolerance.
  */
 const lastFall = 1e-7;
+/** Of a sum over many rows as much is rounding. */
+const lastShare = 2e-12;
+/** And one that promises no more than this is not worth its evaluation. */
+const noFall = 1e-11;
 
 /** Minus gradient x step: twice what a Newton step takes off the criterion. */
 function expectedFall({ current: { gradient } }: PenaltySearch, free: readonly number[], direction: Float64Array): number {
@@ -65,17 +70,21 @@ export type NewtonOptions = { maxSteps: number; enough?: number; known?: KnownOp
  */
 export function newtonSteps(search: PenaltySearch, automatic: readonly number[], options: NewtonOptions): SearchEnd {
   const { maxSteps, enough = 0, known } = options;
+  let earlier: EarlierPoint | null = null;
   for (let step = 0; step <= maxSteps; step++) {
     if (!Number.isFinite(search.current.criterion)) return "unfinished";
     const free = movable(search, automatic);
     if (free.every((penalty) => Math.abs(search.current.gradient[penalty]) < gradientTolerance)) return "rested";
     if (known !== undefined && isNear(search, automatic, known)) return "known";
     if (step === maxSteps) return "unfinished";
-    const direction = newtonDirection(search, free);
+    const direction = newtonDirection(search, free, earlier);
     if (known !== undefined && pointsTo(search, { free, direction, automatic }, known)) return "known";
     const fall = expectedFall(search, free, direction);
-    if (!descend(search, free, direction)) return "unfinished";
-    if (fall < lastFall) return "rested";
+    if (fall < noFall) return "rested";
+    earlier = { logPenalties: search.current.logPenalties.slice(), gradient: search.current.gradient.slice() };
+    const isLast = fall < lastFall + lastShare * Math.abs(search.current.criterion);
+    if (!descend(search, free, direction)) return isLast ? "rested" : "unfinished";
+    if (isLast) return "rested";
     if (fall < enough) return "unfinished";
   }
   return "unfinished";

@@ -1,7 +1,8 @@
 import { bestPenalties, planPenalties } from "./choose-penalties";
 import type { CoefficientMap } from "./coefficient-map";
 import type { Design } from "./design";
-import { createScratch, normalEquations } from "./normal-equations";
+import { createScratch } from "./equation-scratch";
+import { normalEquations } from "./normal-equations";
 import { layOutPenalties } from "./penalties";
 import { coefficientsAt, predictorOf } from "./predictor";
 import { shapeConstraints } from "./shape-constraints";

@@ -3,8 +3,10 @@ import { freedPenalties, isLimit, maxSteps, planPenalties, refinePenalties, star
 import type { PenaltyPlan } from "./choose-penalties";
 import type { CoefficientMap } from "./coefficient-map";
 import type { Design } from "./design";
-import { createScratch, normalEquations } from "./normal-equations";
-import type { NormalEquations, Scratch } from "./normal-equations";
+import { createScratch } from "./equation-scratch";
+import type { Scratch } from "./equation-scratch";
+import { normalEquations } from "./normal-equations";
+import type { NormalEquations } from "./normal-equations";
 import { layOutPenalties } from "./penalties";
 import { searchBeside } from "./penalty-search";
 import type { PenaltySearch } from "./penalty-search";

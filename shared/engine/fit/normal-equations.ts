@@ -1,7 +1,10 @@
-import { crossProduct, groupSquare, isSwapped } from "../linalg/cross-products";
-import { addTransposeTimes, paddedWidth } from "../linalg/sparse-rows";
+import { crossProduct, isSwapped } from "../linalg/cross-products";
 import { coordinateWidth, transformColumns, transformRows } from "./change-coordinates";
-import type { Design, DesignGroups, DesignTerm } from "./design";
+import type { Design, DesignTerm } from "./design";
+import { transformedVector } from "./equation-scratch";
+import type { Scratch } from "./equation-scratch";
+import { groupEquations } from "./group-equations";
+import type { GroupEquations } from "./group-equations";
 
 /** X'WX and X'Wz in fitting coordinates. z is taken less its weighted mean `shift`, which keeps digits. */
 export type NormalEquations = {
@@ -13,34 +16,6 @@ export type NormalEquations = {
   total: number;
   shift: number;
 };
-
-/** The same for groups: per group X_g'WX_g (both triangles), X_g'WX_shared and X_g'Wz, one after the other. */
-export type GroupEquations = { count: number; size: number; own: Float64Array; cross: Float64Array; vector: Float64Array };
-
-/** Arrays reused from one working model to the next; what they hold is overwritten by each call. */
-export type Scratch = { raw: Float64Array; half: Float64Array; weighted: Float64Array; rawVector: Float64Array };
-
-/** @example const scratch = createScratch(design); */
-export function createScratch(design: Design): Scratch {
-  const widths = [...design.parts, ...(design.groups?.parts ?? [])].map(({ rows }) => paddedWidth(rows));
-  const widest = Math.max(...widths);
-  const square = Math.max(design.widest * widest, squareOfGroups(design.groups));
-  return {
-    raw: new Float64Array(square),
-    half: new Float64Array(square),
-    weighted: new Float64Array(design.rowCount),
-    rawVector: new Float64Array(widest),
-  };
-}
-
-function squareOfGroups(groups: DesignGroups | null): number {
-  if (groups === null) return 0;
-  const widest = Math.max(...groups.parts.map(ownWidth));
-  return Math.max(groups.count, 2) * widest * widest;
-}
-
-/** Raw columns of one group of a grouped term. */
-const ownWidth = ({ coordinates }: DesignTerm): number => (coordinates.transform.form === "blocks" ? coordinates.transform.rows : 1);
 
 type Rows = { response: Float64Array; weights: Float64Array };
 
@@ -56,10 +31,7 @@ export function normalEquations(design: Design, rows: Rows, scratch: Scratch): N
   const { parts, size } = design;
   const { response, weights } = rows;
   const matrix = new Float64Array(size * size);
-  const target = { weights, scratch, matrix, size };
-  for (let a = 0; a < parts.length; a++) {
-    for (let b = 0; b <= a; b++) addPair(parts[a], parts[b], target);
-  }
+  addSharedPairs(parts, { weights, scratch, matrix, size, partition: parts.find(isPartition) ?? null });
   const shift = weightedMean(response, weights);
   const total = centredResponse({ response, weights, shift }, scratch.weighted);
   const vector = new Float64Array(size);
@@ -93,13 +65,24 @@ function weightedMean(values: Float64Array, weights: Float64Array): number {
   return sum / weight;
 }
 
-type PairTarget = { weights: Float64Array; scratch: Scratch; matrix: Float64Array; size: number };
+/** Whether every row lies in one of a term's columns, with value 1: the columns then sum to the intercept's. */
+const isPartition = ({ rows }: DesignTerm): boolean => rows.storage === "index" && rows.values === null;
+
+type PairTarget = { weights: Float64Array; scratch: Scratch; matrix: Float64Array; size: number; partition: DesignTerm | null };
+
+/** The intercept comes first. Beside a partition its products need no pass over the rows: they are sums of the partition's. */
+function addSharedPairs(parts: readonly DesignTerm[], target: PairTarget): void {
+  for (let a = 0; a < parts.length; a++) {
+    for (let b = target.partition === null ? 0 : 1; b <= a; b++) addPair(parts[a], parts[b], target);
+  }
+}
 
 function addPair(one: DesignTerm, other: DesignTerm, target: PairTarget): void {
   const [left, right] = isSwapped(one.rows, other.rows) ? [other, one] : [one, other];
   const { raw, half } = target.scratch;
   const { matrix, size } = target;
   crossProduct(left.rows, right.rows, target.weights, raw);
+  if (left === target.partition || right === target.partition) addToIntercept(left, right, target);
   const columns = coordinateWidth(right.coordinates);
   transformColumns(raw, left.coordinates.rawWidth, right.coordinates, half);
   transformRows(half, columns, left.coordinates, raw, one === other);
@@ -113,86 +96,22 @@ function addPair(one: DesignTerm, other: DesignTerm, target: PairTarget): void {
   }
 }
 
-/** T'X'W(z - shift) of one term, left in `scratch.half`. */
-function transformedVector(part: DesignTerm, { rawVector, half, weighted }: Scratch): Float64Array {
+/** Products of the intercept with a term from those of the partition with it, which `scratch.raw` holds. */
+function addToIntercept(left: DesignTerm, right: DesignTerm, { scratch, matrix, size, partition }: PairTarget): void {
+  const { raw, half, rawVector } = scratch;
+  const isLeft = left === partition;
+  const columns = right.rows.width;
   rawVector.fill(0);
-  addTransposeTimes(part.rows, weighted, rawVector, 0);
-  transformRows(rawVector, 1, part.coordinates, half);
-  return half;
-}
-
-function groupEquations(
-  design: Design, groups: DesignGroups, rows: { weights: Float64Array; scratch: Scratch },
-): GroupEquations {
-  const { count, size, parts } = groups;
-  const out: GroupEquations = {
-    count, size,
-    own: new Float64Array(count * size * size),
-    cross: new Float64Array(count * size * design.size),
-    vector: new Float64Array(count * size),
-  };
-  for (let a = 0; a < parts.length; a++) {
-    for (let b = 0; b <= a; b++) addOwnPair(parts[a], parts[b], { ...rows, out });
-    for (const shared of design.parts) addCrossPair(parts[a], shared, { ...rows, out, sharedSize: design.size });
-    const vector = transformedVector(parts[a], rows.scratch);
-    const { positions } = parts[a];
-    for (let group = 0; group < count; group++) {
-      for (let k = 0; k < positions.length; k++) out.vector[group * size + positions[k]] = vector[group * positions.length + k];
+  let total = 0;
+  for (let i = 0; i < left.rows.width; i++) {
+    for (let j = 0; j < columns; j++) {
+      const value = raw[i * columns + j];
+      rawVector[isLeft ? j : i] += value;
+      total += value;
     }
   }
-  return out;
-}
-
-type GroupTarget = { weights: Float64Array; scratch: Scratch; out: GroupEquations };
-
-/** Diagonal blocks of two terms on the same groups. */
-function addOwnPair(left: DesignTerm, right: DesignTerm, target: GroupTarget): void {
-  const { raw, half } = target.scratch;
-  const { count, size, own } = target.out;
-  groupSquare({ rows: left.rows, width: ownWidth(left) }, { rows: right.rows, width: ownWidth(right) }, { count, weights: target.weights }, raw);
-  const leftWidth = ownWidth(left);
-  const columns = right.positions.length;
-  const [ofLeft, ofRight] = [oneGroupOf(left), oneGroupOf(right)];
-  const square = leftWidth * ownWidth(right);
-  for (let group = 0; group < count; group++) {
-    const block = raw.subarray(group * square, (group + 1) * square);
-    transformColumns(block, leftWidth, ofRight, half);
-    const result = half.subarray(leftWidth * columns);
-    transformRows(half, columns, ofLeft, result);
-    for (let i = 0; i < left.positions.length; i++) {
-      for (let j = 0; j < columns; j++) {
-        const value = result[i * columns + j];
-        own[(group * size + left.positions[i]) * size + right.positions[j]] = value;
-        own[(group * size + right.positions[j]) * size + left.positions[i]] = value;
-      }
-    }
-  }
-}
-
-/** A grouped term's coordinates as if it had one group only. */
-function oneGroupOf(part: DesignTerm): DesignTerm["coordinates"] {
-  const { transform } = part.coordinates;
-  if (transform.form !== "blocks") return part.coordinates;
-  return { ...part.coordinates, transform: { ...transform, count: 1 }, rawWidth: transform.rows, penalised: transform.columns };
-}
-
-function addCrossPair(grouped: DesignTerm, shared: DesignTerm, target: GroupTarget & { sharedSize: number }): void {
-  const swapped = isSwapped(grouped.rows, shared.rows);
-  const [left, right] = swapped ? [shared, grouped] : [grouped, shared];
-  const { raw, half } = target.scratch;
-  crossProduct(left.rows, right.rows, target.weights, raw);
-  const columns = coordinateWidth(right.coordinates);
-  transformColumns(raw, left.coordinates.rawWidth, right.coordinates, half);
-  transformRows(half, columns, left.coordinates, raw);
-  const { size, count, cross } = target.out;
-  const own = grouped.positions.length;
-  for (let group = 0; group < count; group++) {
-    for (let i = 0; i < own; i++) {
-      const at = (group * size + grouped.positions[i]) * target.sharedSize;
-      const from = group * own + i;
-      for (let j = 0; j < shared.positions.length; j++) {
-        cross[at + shared.positions[j]] = swapped ? raw[j * columns + from] : raw[from * columns + j];
-      }
-    }
-  }
+  const { coordinates, positions } = isLeft ? right : left;
+  transformRows(rawVector, 1, coordinates, half);
+  for (let k = 0; k < positions.length; k++) matrix[positions[k] * size] = half[k];
+  if (left === right) matrix[0] = total;
 }

@@ -100,17 +100,20 @@ function squareTile(
  *
  * @param left row-major count x width. right likewise, of the same width. Neither is changed.
  * @param out receives left.count x right.count. Must be neither of them.
+ * @param lowerOnly whether the product is known to be symmetric: only its lower triangle (and some entries above it) is written.
  * @example rowProducts({ values: Float64Array.of(1, 2), count: 1, width: 2 }, { values: Float64Array.of(3, 4), count: 1, width: 2 }, out); // 11
  */
-export function rowProducts(left: Block, right: Block, out: Float64Array): void {
+export function rowProducts(left: Block, right: Block, out: Float64Array, lowerOnly = false): void {
   const { width } = left;
   const rows = left.count - (left.count % 4);
   const columns = right.count - (right.count % 4);
   for (let row = 0; row < rows; row += 4) {
-    for (let column = 0; column < columns; column += 4) productTile(left, right, { row, column }, out);
+    const end = lowerOnly ? Math.min(columns, row + 4) : columns;
+    for (let column = 0; column < end; column += 4) productTile(left, right, { row, column }, out);
   }
   for (let row = 0; row < left.count; row++) {
-    for (let column = row < rows ? columns : 0; column < right.count; column++) {
+    const end = lowerOnly ? Math.min(right.count, row + 1) : right.count;
+    for (let column = row < rows ? columns : 0; column < end; column++) {
       let sum = 0;
       for (let k = 0; k < width; k++) sum += left.values[row * width + k] * right.values[column * width + k];
       out[row * right.count + column] = sum;

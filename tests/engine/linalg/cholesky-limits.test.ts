@@ -47,14 +47,14 @@ describe("The Cholesky factor", () => {
     expect([...factor]).toEqual([2, 91, 1, 2]);
   });
 
-  it("becomes its own inverse when the matrix is inverted, zeros above", () => {
+  it("becomes its own inverse when the matrix is inverted, both triangles of which are given", () => {
     const matrix = crossOf(columnsOf(20, 5));
     const factor = matrix.slice();
     choleskyInPlace(factor, 5);
     const lower = Matrix.from1DArray(5, 5, lowerPart(factor, 5));
     const inverse = new Float64Array(25);
     invertFactored(factor, 5, inverse);
-    expect(largestDifference(factor, inverseOf(lower).to1DArray())).toBeLessThan(1e-12);
+    expect(largestDifference(lowerPart(factor, 5), inverseOf(lower).to1DArray())).toBeLessThan(1e-12);
     expect(largestDifference(inverse, inverseOf(Matrix.from1DArray(5, 5, matrix)).to1DArray())).toBeLessThan(1e-12);
     for (let row = 0; row < 5; row++) for (let column = 0; column < row; column++) expect(inverse[row * 5 + column]).toBe(inverse[column * 5 + row]);
   });

@@ -28,6 +28,15 @@ describe.each(shapes)("Products of %i rows by %i columns", (count, width) => {
     }), runs);
   });
 
+  it("row by row with themselves are known by their lower triangle", () => {
+    fc.assert(fc.property(matrixOf(count, width), (values) => {
+      const out = new Float64Array(count * count).fill(7);
+      rowProducts({ values, count, width }, { values, count, width }, out, true);
+      const product = times(values, transposed(values, count, width), { rows: count, inner: width, columns: count });
+      expect(unsigned(lowerPart(out, count))).toEqual(unsigned(lowerPart(product, count)));
+    }), runs);
+  });
+
   it("of a lower triangle's transpose with it are those of three plain loops", () => {
     fc.assert(fc.property(matrixOf(width, width), (matrix) => {
       const lower = lowerPart(matrix, width);
