@@ -1,7 +1,8 @@
-import { parseISO, format as formatDate } from "date-fns";
+import { format as formatDate, parseISO } from "date-fns";
+import { addDays } from "@shared/calendar";
 import type { Layout } from "@shared/contract/layouts";
 import type { LayoutPreview } from "@shared/contract/saved-layouts";
-import { daysAfter, readWeek } from "@shared/layouts/read-day";
+import { readWeek } from "@shared/layouts/read-day";
 import { numberReader } from "@shared/layouts/read-number";
 import { oursAt } from "./layout-mapping";
 
@@ -36,8 +37,8 @@ export const weekExample = (layout: Layout, columns: FileColumns): string | null
   if (sample === null) return null;
   const reading = readWeek(sample, layout.dateOrder);
   if (!("day" in reading)) return null;
-  const first = layout.weekDay === "last" ? daysAfter(reading.day, -6) : reading.day;
-  return `“${sample}” is the week from ${longDay(first)} to ${longDay(daysAfter(first, 6))}`;
+  const first = layout.weekDay === "last" ? addDays(reading.day, -6) : reading.day;
+  return `“${sample}” is the week from ${longDay(first)} to ${longDay(addDays(first, 6))}`;
 };
 
 /** "“1.234,50” is 1234.50", by a number of the file's own that shows the signs. */
