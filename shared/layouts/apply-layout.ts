@@ -119,9 +119,9 @@ function valueReader(column: string, layout: Layout, words: WordReader): (text: 
     case "share":
       return (text) => orReason(shareOf(text, number), notNumber);
     case "flag":
-      return (text) => orReason(words.flag(text), "The word is in neither of the layout's lists for yes and no");
+      return remembered((text) => orReason(words.flag(text), "The word is in neither of the layout's lists for yes and no"));
     case "mechanic":
-      return (text) => orReason(words.mechanic(text), unknownWord);
+      return remembered((text) => orReason(words.mechanic(text), unknownWord));
     default:
       return codeOf;
   }

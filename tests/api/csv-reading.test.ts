@@ -2,9 +2,11 @@ import fc from "fast-check";
 import Papa from "papaparse";
 import { gzipSync } from "node:zlib";
 import { describe, expect, it } from "vitest";
+import { encodingSchema, separatorSchema, type Encoding } from "@shared/contract/layouts";
 import { decodeText } from "../../server/features/extracts/read/decode-text";
 import { expandBytes } from "../../server/features/extracts/read/expand-bytes";
-import { readRecords, type CsvRecord } from "../../server/features/extracts/read/read-records";
+import { readRecords, type CsvRecord, type RecordFormat } from "../../server/features/extracts/read/read-records";
+import { bytesIn } from "../layouts/bytes-in";
 
 /** The bytes in pieces, cut where the numbers say. */
 async function* inPieces(bytes: Buffer, cuts: number[]): AsyncGenerator<Buffer> {
@@ -12,10 +14,12 @@ async function* inPieces(bytes: Buffer, cuts: number[]): AsyncGenerator<Buffer> 
   for (let at = 1; at < places.length; at++) yield bytes.subarray(places[at - 1], places[at]);
 }
 
-async function recordsOf(bytes: Buffer, cuts: number[] = []): Promise<CsvRecord[]> {
+type Form = RecordFormat & { encoding?: Encoding };
+
+async function recordsOf(bytes: Buffer, cuts: number[] = [], { encoding, ...format }: Form = {}): Promise<CsvRecord[]> {
   const records: CsvRecord[] = [];
   const expanded = expandBytes(inPieces(bytes, cuts), { onRead: () => undefined, limitBytes: 1e9 });
-  for await (const batch of readRecords(decodeText(expanded))) records.push(...batch);
+  for await (const batch of readRecords(decodeText(expanded, encoding), format)) records.push(...batch);
   return records;
 }
 
@@ -66,5 +70,44 @@ describe("reading CSV", () => {
   it("names the line of the first byte that is no UTF-8", async () => {
     const bytes = Buffer.concat([Buffer.from("größe,🍎\r\n1,2\r\n3,"), Buffer.from([0xf0, 0x9f]), Buffer.from(",\r\n")]);
     for (const at of [1, 3, 12, 18, 21]) await expect(recordsOf(bytes, [at])).rejects.toThrow(/line 3 holds bytes/);
+  });
+});
+
+describe("reading other forms", () => {
+  const forms = fc.record({ encoding: fc.constantFrom(...encodingSchema.options), separator: fc.constantFrom(...separatorSchema.options), mark: fc.boolean(), linesAbove: fc.nat({ max: 3 }) });
+  const cells = fc.oneof(fc.constantFrom("", "1,5", "a;b|c\td", 'say "x"', "two\nlines", "caf\u00e9 \u20ac"), fc.string({ unit: fc.constantFrom("a", "\u00fc", " ", "\u0160"), maxLength: 5 }));
+
+  it("gives every field and line number back in every encoding and separator, however the bytes are cut", async () => {
+    await fc.assert(fc.asyncProperty(tableOf(cells), cuts, forms, fc.boolean(), async (table, places, { encoding, separator, mark, linesAbove }, namesSeparator) => {
+      const above = [...(namesSeparator ? [`sep=${separator}`] : []), ...Array.from({ length: linesAbove }, (_, at) => `Title "${at}`)];
+      const text = [...above, Papa.unparse(table, { newline: "\n", delimiter: separator, quotes: (value: unknown) => /["\n,;|\t]/.test(String(value)) })].join("\n");
+      const bytes = Buffer.from(bytesIn(encoding, text, { mark: mark && encoding !== "windows-1252" }));
+      let line = above.length + 1;
+      const expected = table.map((fields) => {
+        const record = { line, fields };
+        line += fields.join("").split("\n").length;
+        return record;
+      });
+      expect(await recordsOf(bytes, places, { encoding, separator, linesAbove })).toEqual(expected);
+    }), { numRuns: 400 });
+  });
+
+  it("turns what Windows-1252 has between 0x80 and 0x9F into its own signs", async () => {
+    expect(await recordsOf(Buffer.from([0x80, 0x35, 0x3b, 0x93, 0x94]), [], { encoding: "windows-1252", separator: ";" })).toEqual([{ line: 1, fields: ["\u20ac5", "\u201c\u201d"] }]);
+  });
+
+  it("says in which line a UTF-16 file ends within a character", async () => {
+    await expect(recordsOf(Buffer.from("a\nb\nc", "utf16le").subarray(0, -1), [3], { encoding: "utf-16le" })).rejects.toThrow(/ends within a character in line 3/);
+  });
+
+  it("takes a first line for a separator's name only where it is nothing else", async () => {
+    expect(await recordsOf(Buffer.from("sep=;\na;b"), [2], { separator: ";" })).toEqual([{ line: 2, fields: ["a", "b"] }]);
+    expect(await recordsOf(Buffer.from('"sep=,"\na,b'))).toEqual([{ line: 2, fields: ["a", "b"] }]);
+    expect(await recordsOf(Buffer.from("sep=,x\na,b"))).toEqual([{ line: 1, fields: ["sep=", "x"] }, { line: 2, fields: ["a", "b"] }]);
+    expect(await recordsOf(Buffer.from("a,b\nsep=;\n"))).toEqual([{ line: 1, fields: ["a", "b"] }, { line: 2, fields: ["sep=;"] }]);
+  });
+
+  it("ends where more lines are to be passed over than there are", async () => {
+    expect(await recordsOf(Buffer.from("a,b\n1,2"), [], { linesAbove: 5 })).toEqual([]);
   });
 });

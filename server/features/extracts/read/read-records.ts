@@ -98,19 +98,28 @@ class RecordReader {
   /** Takes every complete record off the front of the text. */
   #take(): CsvRecord[] {
     const records: CsvRecord[] = [];
-    while (!this.#takePlain(records) && !this.#takeUntilDoubt(records)) records.push(...this.#giveUpLine());
+    while (!this.#takeLines(records)) {
+      const outcome = this.#takeRecord(records);
+      if (outcome === "open") break;
+      if (outcome === "wrong") records.push(...this.#giveUpLine());
+    }
     return records;
   }
 
-  /** A line without quotes is a record: those before the first quote are taken at once. False where one is left. */
-  #takePlain(records: CsvRecord[]): boolean {
-    const quote = this.#text.indexOf('"');
-    const end = this.#text.lastIndexOf("\n", quote === -1 ? Infinity : quote);
-    if (end !== -1) {
-      for (const line of this.#text.slice(0, end).split("\n")) this.#add(line.split(this.#separator), 1, records);
-      this.#text = this.#text.slice(end + 1);
+  /** Takes the lines that are records by themselves, as nearly all are. False where one is left that may not be. */
+  #takeLines(records: CsvRecord[]): boolean {
+    const text = this.#text;
+    const hasQuotes = text.includes('"');
+    let start = 0;
+    for (let end = text.indexOf("\n"); end !== -1; end = text.indexOf("\n", start)) {
+      const line = text.slice(start, end);
+      const fields = hasQuotes && line.includes('"') ? splitQuotedLine(line, this.#separator) : line.split(this.#separator);
+      if (!fields) break;
+      this.#add(fields, 1, records);
+      start = end + 1;
     }
-    return quote === -1;
+    this.#text = text.slice(start);
+    return !this.#text.includes("\n");
   }
 
   #add(fields: string[], lines: number, records: CsvRecord[]): void {
@@ -122,32 +131,27 @@ class RecordReader {
     this.#line += lines;
   }
 
-  /** False where it stopped before a record that cannot be right. */
-  #takeUntilDoubt(records: CsvRecord[]): boolean {
+  /** Takes one record that runs over several lines; "open" where its end is still to come, "wrong" where it cannot be right. */
+  #takeRecord(records: CsvRecord[]): "taken" | "open" | "wrong" {
     // The package drops a byte order mark at the start of any text, and its positions would be one off.
     const text = this.#text.replace(/^\ufeff+/, "");
-    let [start, isSure] = [0, true];
+    let outcome: "taken" | "open" | "wrong" = "open";
     Papa.parse<string[]>(text, {
       delimiter: this.#separator,
       newline: "\n",
       step: ({ data: fields, errors, meta: { cursor: end } }, parser) => {
-        const isComplete = end > start && text.charCodeAt(end - 1) === 10 && !errors.some(({ code }) => code === "MissingQuotes");
-        if (!isComplete) {
-          parser.abort();
-          return;
-        }
-        const lines = countLines(text, start, end);
-        isSure = errors.length === 0 && (lines === 1 || this.#width === undefined || fields.length === this.#width);
-        if (!isSure) {
-          parser.abort();
-          return;
-        }
+        parser.abort();
+        const isComplete = end > 0 && text.charCodeAt(end - 1) === 10 && !errors.some(({ code }) => code === "MissingQuotes");
+        if (!isComplete) return;
+        const lines = countLines(text, 0, end);
+        const isSure = errors.length === 0 && (lines === 1 || this.#width === undefined || fields.length === this.#width);
+        outcome = isSure ? "taken" : "wrong";
+        if (!isSure) return;
         this.#add(fields, lines, records);
-        start = end;
+        this.#text = text.slice(end);
       },
     });
-    this.#text = text.slice(start);
-    return isSure;
+    return outcome;
   }
 
   #giveUpLine(): CsvRecord[] {
@@ -172,4 +176,32 @@ function countLines(text: string, start: number, end: number): number {
   let lines = 0;
   for (let at = text.indexOf("\n", start); at !== -1 && at < end; at = text.indexOf("\n", at + 1)) lines++;
   return lines;
+}
+
+const quoteCode = 34;
+
+/** Fields of a line whose quotes open and close within it, each around a whole field; null where that is not so. */
+function splitQuotedLine(line: string, separator: Separator): string[] | null {
+  const fields: string[] = [];
+  let at = 0;
+  for (;;) {
+    const end = line.charCodeAt(at) === quoteCode ? closingQuote(line, at + 1) + 1 : line.indexOf(separator, at);
+    if (line.charCodeAt(at) === quoteCode) {
+      if (end === 0 || (end < line.length && line[end] !== separator)) return null;
+      const inner = line.slice(at + 1, end - 1);
+      fields.push(inner.includes('"') ? inner.replaceAll('""', '"') : inner);
+      if (end === line.length) return fields;
+    } else {
+      fields.push(end === -1 ? line.slice(at) : line.slice(at, end));
+      if (end === -1) return fields;
+    }
+    at = end + 1;
+  }
+}
+
+/** Where a field's quote closes; -1 where it does not. */
+function closingQuote(line: string, from: number): number {
+  let at = line.indexOf('"', from);
+  while (at !== -1 && line.charCodeAt(at + 1) === quoteCode) at = line.indexOf('"', at + 2);
+  return at;
 }
