@@ -204,9 +204,14 @@ describe("weeks without a row between others", () => {
     expect(issues).toEqual([]);
   });
 
-  it("are not named one by one where they are many, and not at all where the source leaves out what was not sold", async () => {
+  it("are none where a product comes back after more than a year", async () => {
+    const rows = (weeksAway: number) => salesFile(row(new Date(Date.parse("2026-06-08") - 7 * 86_400_000 * weeksAway).toISOString().slice(0, 10)), row("2026-06-08"));
+    expect((await issuesOf(rows(54))).counts).toEqual({});
+    expect((await issuesOf(rows(53))).counts).toEqual({ "missing-weeks": 52 });
+  });
+
+  it("are not named one by one where they are many", async () => {
     const [first = "", last = ""] = [mondays(11)[0], mondays(1)[0]];
-    const file = salesFile(row(first), row(last));
-    expect((await issuesOf(file)).issues.map(({ value }) => value)).toEqual([`${mondays(11).slice(1, 7).join(", ")} and 3 more`]);
+    expect((await issuesOf(salesFile(row(first), row(last)))).issues.map(({ value }) => value)).toEqual([`${mondays(11).slice(1, 7).join(", ")} and 3 more`]);
   });
 });

@@ -4,6 +4,8 @@ import type { SalesTogether } from "./sales-together.repository";
 
 /** Rows loaded so many days before the file's first week, or after its last, count as before and after a gap. */
 const reachDays = 56;
+/** Rows further apart are not before and after a gap. */
+const mostWeeksAway = 53;
 /** Weeks named in an issue. */
 const mostNamed = 6;
 
@@ -51,6 +53,13 @@ function reasonOf({ store, product, products, weeks }: Gap): string {
 }
 
 const sameCell = (alias: string) => `${alias}.product_id = span.product_id and ${alias}.store_id = span.store_id`;
+/** SQL that the product of a `step` is listed in the store in the week of `day`, or never was. */
+const ofStep = "listing.product_id = step.product_id and listing.store_id = step.store_id";
+const isListed = `(
+  not exists (select from listings listing where ${ofStep})
+  or exists (select from listings listing where ${ofStep} and listing.first_day <= day::date + 6 and coalesce(listing.last_day, 'infinity') >= day::date)
+)`;
+
 const withinReach = ({ first, last }: WeekRange) => `sales.week between date '${first}' - ${reachDays} and date '${last}' + ${reachDays}`;
 
 /** Whether sales of some of the products are loaded in weeks within reach. */
@@ -80,36 +89,40 @@ async function findSpans(em: EntityManager, { range, isNear }: { range: WeekRang
     ) reached
     where (coalesce(after, last) - coalesce(before, first)) / 7 + 1 > rows + (before is not null)::int + (after is not null)::int`);
   const [{ any }] = await em.execute<[{ any: boolean }]>("select exists (select from file_spans) as any");
+  if (any) await em.execute("analyze file_spans");
   return any;
 }
 
+/**
+ * What is missing between rows that follow each other, in the file or loaded, where at least one of the two is the file's. What
+ * comes back after more than a year is taken for another season's.
+ */
 function findGaps(em: EntityManager, { table, range, limit }: { table: string; range: WeekRange; limit: number }): Promise<Gap[]> {
   return em.execute<Gap[]>(`
-    with absent as (
-      select span.product_id, span.store_id, array_agg(day::date order by day) as weeks
-      from file_spans span
-      join stores store on store.id = span.store_id
-      cross join lateral generate_series(span.first + 7, span.last - 7, interval '7 days') day
-      where coalesce(store.opened, '-infinity') <= day::date + 6 and coalesce(store.closed, 'infinity') >= day::date
-        and not exists (select from ${table} staged where ${sameCell("staged")} and staged.week = day::date)
-        and not exists (select from weekly_sales sales where ${sameCell("sales")} and sales.week = day::date and ${withinReach(range)})
-        and (
-          not exists (select from listings listing where ${sameCell("listing")})
-          or exists (select from listings listing where ${sameCell("listing")}
-            and listing.first_day <= day::date + 6 and coalesce(listing.last_day, 'infinity') >= day::date)
-        )
-      group by span.product_id, span.store_id
+    with known as (
+      select staged.product_id, staged.store_id, staged.week, staged.line
+      from file_spans span join ${table} staged on ${sameCell("staged")}
+      union all
+      select sales.product_id, sales.store_id, sales.week, null
+      from file_spans span join weekly_sales sales on ${sameCell("sales")} and sales.week between span.first and span.last and ${withinReach(range)}
     ),
-    placed as (
-      -- The row of the file behind the first absent week, else the last before it.
-      select distinct on (span.product_id, span.store_id) span.*, staged.line
-      from absent span join ${table} staged on ${sameCell("staged")}
-      order by span.product_id, span.store_id, staged.week > span.weeks[1] desc, abs(staged.week - span.weeks[1])
+    steps as (
+      select *, lag(week) over pair as week_before, lag(line) over pair as line_before
+      from (select product_id, store_id, week, min(line) as line from known group by product_id, store_id, week) once
+      window pair as (partition by product_id, store_id order by week)
+    ),
+    absent as (
+      select step.product_id, step.store_id, array_agg(day::date order by day) as weeks, (array_agg(coalesce(step.line, step.line_before) order by day))[1] as line
+      from (select * from steps where week - week_before between 14 and ${7 * mostWeeksAway} and coalesce(line, line_before) is not null) step
+      join stores store on store.id = step.store_id
+      cross join lateral generate_series(step.week_before + 7, step.week - 7, interval '7 days') day
+      where coalesce(store.opened, '-infinity') <= day::date + 6 and coalesce(store.closed, 'infinity') >= day::date and ${isListed}
+      group by step.product_id, step.store_id
     )
-    select min(placed.line) as line, store.code as store, (array_agg(product.code order by placed.line))[1] as product,
-      count(*)::int as products, array_to_json(placed.weeks) as weeks,
-      (sum(count(*) * cardinality(placed.weeks)) over ())::int as rows
-    from placed join products product on product.id = placed.product_id join stores store on store.id = placed.store_id
-    group by store.code, placed.weeks
+    select min(absent.line) as line, store.code as store, (array_agg(product.code order by absent.line))[1] as product,
+      count(*)::int as products, array_to_json(absent.weeks) as weeks,
+      (sum(count(*) * cardinality(absent.weeks)) over ())::int as rows
+    from absent join products product on product.id = absent.product_id join stores store on store.id = absent.store_id
+    group by store.code, absent.weeks
     order by line limit ${limit}`);
 }
