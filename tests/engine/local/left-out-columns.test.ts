@@ -68,6 +68,26 @@ describe("What cannot stand beside a local regression", () => {
   });
 });
 
+describe("A line of a local regression's own", () => {
+  const far = (away: number) => ({ ...rows, temperature: rows.temperature.map((value) => value + away), again: rows.temperature.map((value) => 3 - 2 * (value + away)) });
+
+  it.each([0, 1e4, -1e6])("is refused in any unit, however far from zero the column lies: %d", (away) => {
+    expect(() => fitModel(modelOf("gaussian", [{ kind: "linear", column: "again" }, local]), far(away))).toThrow(
+      'Terms "again" and "temperature" cannot be told apart: a local regression of degree 1 draws straight lines itself. Leave one of them out, or give the local regression degree 0.',
+    );
+  });
+
+  it.each([0, 1e4])("and its parabola, of one of degree 2: %d", (away) => {
+    const data = { ...far(away), bent: rows.temperature.map((value) => (value - 12) ** 2) };
+    const two: TermSpec = { ...local, degree: 2 } as TermSpec;
+    expect(() => fitModel(modelOf("gaussian", [two, promotion, { kind: "linear", column: "again" }, { kind: "linear", column: "bent" }]), data)).toThrow(
+      'Terms "again" and "temperature" cannot be told apart: a local regression of degree 2 draws straight lines and parabolas itself. Leave one of them out, or give the local regression degree 0.',
+    );
+    expect(() => fitModel(modelOf("gaussian", [two, promotion, { kind: "linear", column: "bent" }]), data)).toThrow('Terms "bent" and "temperature" cannot be told apart');
+    expect(fitModel(modelOf("gaussian", [local, promotion, { kind: "linear", column: "bent" }]), data).converged).toBe(true);
+  });
+});
+
 describe("The sum of weighted variances", () => {
   it("is the sum over rows of weight times variance, each by prediction", () => {
     const model = fitModel(modelOf("gaussian", [local, price, promotion]), rows);
