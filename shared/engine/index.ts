@@ -9,6 +9,8 @@ export { compareModels } from "./inference/compare-models";
 export { modelReport } from "./inference/model-report";
 export { designRows, designTransposeTimes, designTransposeTimesMany, rowStandardErrors, transposeTimes } from "./predict/design-rows";
 export type { DesignRows } from "./predict/design-rows";
+export { curveDifference } from "./predict/curve-difference";
+export type { CurveDifferenceOptions } from "./predict/curve-difference";
 export { bandModel } from "./predict/band-model";
 export { extendModel } from "./predict/extend-model";
 export { covarianceQuadratic } from "./predict/model-covariance";

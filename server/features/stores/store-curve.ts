@@ -1,7 +1,6 @@
-import { termCurve, type FittedModel, type FittedTerm } from "@shared/engine";
+import { curveDifference, termCurve, type FittedModel, type FittedTerm } from "@shared/engine";
 import { curveWithKnown, driverOfTerm } from "@shared/planning";
 import { isPriceTerm, seenWeekByWeek, type DriverCurve } from "../drivers";
-import { relativeCurve } from "./relative-curve";
 
 export type Interval = { estimate: number; lower: number; upper: number };
 
@@ -29,7 +28,7 @@ export function storeCurve(
   const centred = termCurve(model, term.id, { at: own, level, derivative: isPrice });
   const numbers = own.filter((value) => typeof value === "number");
   const isRelative = anchor !== null && numbers.length > 0;
-  const curve = isRelative ? { ...centred, ...relativeCurve({ model, term, x: numbers, anchor, level }) } : centred;
+  const curve = isRelative ? { ...centred, ...curveDifference(model, term.id, { at: numbers, from: anchor, level }) } : centred;
   return {
     curve: { term, driver: driverOfTerm(term), curve, seen: seenWeekByWeek(term) },
     elasticity: isPrice && anchor !== null ? elasticityAt({ model, term, anchor, level }) : null,

@@ -64,8 +64,12 @@ export function findTerm(model: FittedModel, termId: string): FittedTerm {
   throw new EngineError("term-unknown", `The model has no term "${termId}"; it has ${quoted(model.terms.map(({ id }) => id)) || "none"}.`);
 }
 
-/** The basis drawn, with the groups or weeks the model was extended by. */
-function withNewLevels(drawn: TermBasis, extended: TermBasis): TermBasis {
+/**
+ * The basis drawn, with the groups or weeks the model was extended by.
+ *
+ * @example withNewLevels(basis, findTerm(extended, term.id).basis);
+ */
+export function withNewLevels(drawn: TermBasis, extended: TermBasis): TermBasis {
   if (drawn.kind === "random-effect" && extended.kind === "random-effect") return { ...extended, by: drawn.by };
   return drawn.kind === extended.kind ? extended : drawn;
 }

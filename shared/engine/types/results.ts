@@ -73,6 +73,13 @@ export type TermCurve = {
   derivative?: CurveDerivative;
 };
 
+/** A term's contribution relative to that at one value of its column, on the link scale. */
+export type CurveDifference = CurveDerivative & {
+  termId: string;
+  /** In the column's own unit; names for a factor or random effect. */
+  x: Float64Array | string[];
+};
+
 export type TermSurfaceOptions = {
   /** Evenly spaced points over each column's observed range (default 30). */
   points?: number;

@@ -1,10 +1,11 @@
 import { normalQuantile, termCurve } from "../../engine";
-import type { FittedTerm, TermCurve } from "../../engine";
+import type { FittedTerm } from "../../engine";
 import type { Driver } from "../driver";
-import { curveWithKnown, varianceOfSum } from "../sum-over-stores";
-import type { PartVariance } from "../sum-over-stores";
+import { varianceOfSum } from "../sum-over-stores";
 import { membersOf } from "./lane-term";
 import type { LaneMember, LaneStore } from "./lane-term";
+import { partAt, storeLane } from "./store-lane";
+import type { StoreLane } from "./store-lane";
 
 /** One driver's curve for several stores together, on the link scale: exp() of it is a multiplier. */
 export type LaneCurve = {
@@ -35,6 +36,8 @@ export type LaneCurveRequest = {
   points?: number;
   /** Values to evaluate at instead; level names for a factor. */
   at?: readonly number[] | readonly string[];
+  /** Of a driver of numbers: the value at which the multiplier is one, without doubt. Centred over the weeks seen unless given. */
+  relativeTo?: number;
 };
 
 const DEFAULT_POINTS = 101;
@@ -44,17 +47,18 @@ const FEWEST_WEEKS_SEEN = 5;
  * The curve a lane draws: the base-units-weighted mean of the selected stores' multipliers, ln(sum of w exp(f) / sum of w), as
  * their units add up; with a pointwise band by the delta method: each store's error counts by its share
  * w exp(f) / sum of w exp(f), and errors add up as `varianceOfSum` does. A level that a store never saw is averaged over the
- * stores that did.
+ * stores that did. Relative to a value, it is ln(sum of w exp(f(x)) / sum of w exp(f(value))), in whose band what both share
+ * cancels.
  *
  * @returns null where no selected store's model has the driver.
  * @throws EngineError for values a term cannot be evaluated at. Cost: stores x points.
  * @example laneCurve({ stores: [{ store: "S1", model, baseUnits: 420 }], driver: "price", level: 0.8 })?.x
  */
-export function laneCurve({ stores, driver, level, points = DEFAULT_POINTS, at }: LaneCurveRequest): LaneCurve | null {
+export function laneCurve({ stores, driver, level, points = DEFAULT_POINTS, at, relativeTo }: LaneCurveRequest): LaneCurve | null {
   const { members, without } = membersOf(stores, driver);
   if (members.length === 0) return null;
   const x = at === undefined ? valuesOf(members, points) : asValues(at);
-  const sums = sumsOver(members, x);
+  const sums = sumsOver(members.map((member) => storeLane(member, { x, relativeTo })), x.length);
   const standardError = sums.variance.map(Math.sqrt);
   const half = normalQuantile(level);
   const ranges = members.flatMap(({ term }) => (term.observedRange === null ? [] : [term.observedRange]));
@@ -81,45 +85,29 @@ function unionOf(ranges: readonly [number, number][]): [number, number] | null {
 type Sums = Record<"estimate" | "variance" | "supportCount" | "hardlySeen", Float64Array>;
 
 /** Means over stores, point by point. A store without a level leaves its weight for that level to the others. */
-function sumsOver(members: readonly LaneMember[], x: Float64Array | string[]): Sums {
-  const curves = members.map((member) => ({ baseUnits: member.baseUnits, curve: storeCurve(member, x) }));
-  const zeros = () => new Float64Array(x.length);
+function sumsOver(lanes: readonly StoreLane[], count: number): Sums {
+  const zeros = () => new Float64Array(count);
   const sums: Sums = { estimate: zeros(), variance: zeros(), supportCount: zeros(), hardlySeen: zeros() };
-  const all = curves.reduce((total, { baseUnits }) => total + baseUnits, 0);
-  for (let point = 0; point < x.length; point++) {
-    const having = curves.filter(({ curve }) => curve.positions[point] >= 0);
+  const all = lanes.reduce((total, { baseUnits }) => total + baseUnits, 0);
+  for (let point = 0; point < count; point++) {
+    const having = lanes.filter(({ positions }) => positions[point] >= 0);
     const total = having.reduce((sum, { baseUnits }) => sum + baseUnits, 0);
-    let units = 0;
-    const parts: PartVariance[] = [];
+    const unitsOf = ({ baseUnits, values, positions }: StoreLane) => baseUnits * Math.exp(values.estimate[positions[point]]);
+    const referenceOf = ({ baseUnits, reference }: StoreLane) => baseUnits * Math.exp(reference?.estimate ?? 0);
+    const units = having.reduce((sum, lane) => sum + unitsOf(lane), 0);
+    const reference = having.reduce((sum, lane) => sum + referenceOf(lane), 0);
+    sums.estimate[point] = Math.log(units / reference);
+    sums.variance[point] = varianceOfSum(having.map((lane) =>
+      partAt(lane, lane.positions[point], { share: unitsOf(lane) / units, referenceShare: referenceOf(lane) / reference })));
     sums.hardlySeen[point] = 1 - total / all;
-    for (const { baseUnits, curve: { positions, values, known } } of having) {
+    for (const { baseUnits, positions, values } of having) {
       const position = positions[point];
-      const own = baseUnits * Math.exp(values.estimate[position]);
-      units += own;
-      parts.push({ all: (own * values.standardError[position]) ** 2, known: (own * known.standardError[position]) ** 2 });
       sums.supportCount[point] += (baseUnits / all) * values.supportCount[position];
       const isHardlySeen = values.outside[position] === 1 || values.supportCount[position] < FEWEST_WEEKS_SEEN;
       if (isHardlySeen) sums.hardlySeen[point] += baseUnits / all;
     }
-    sums.estimate[point] = Math.log(units / total);
-    sums.variance[point] = varianceOfSum(parts) / (units * units);
   }
   return sums;
-}
-
-/** A store's curve at those of the values its term knows, and where in it each value stands (-1 where it does not). */
-type StoreCurve = { values: TermCurve; known: TermCurve; positions: number[] };
-
-function storeCurve({ model, term }: LaneMember, x: Float64Array | string[]): StoreCurve {
-  const { basis } = term;
-  if (basis.kind !== "factor") {
-    const { curve, known } = curveWithKnown(model, term.id, { at: x });
-    return { values: curve, known, positions: [...x.keys()] };
-  }
-  const names = typeof x[0] === "string" ? (x as string[]) : [];
-  const levels = names.filter((name) => basis.levels.includes(name));
-  const { curve, known } = curveWithKnown(model, term.id, { at: levels });
-  return { values: curve, known, positions: names.map((name) => levels.indexOf(name)) };
 }
 
 function valuesOf(members: readonly LaneMember[], points: number): Float64Array | string[] {

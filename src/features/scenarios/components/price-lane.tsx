@@ -29,12 +29,11 @@ export const PriceLane = ({ figures, level, readOnly, preview, set }: BenchProps
     if (!seen) return null;
     const steps = priceAxis({ seen, prices: regularPricesOf(baseCells), digits });
     const x = axisValues(steps.min, steps.max);
-    const curve = laneCurve({ stores: laneStores, driver: "price", level, at: x });
-    const reference = laneCurve({ stores: laneStores, driver: "price", level, at: [regular] });
-    if (!curve || !reference) return null;
+    const curve = laneCurve({ stores: laneStores, driver: "price", level, at: x, relativeTo: regular });
+    if (!curve) return null;
     return {
       steps,
-      points: lanePoints(curve, reference.estimate[0]),
+      points: lanePoints(curve),
       unseen: unseenRanges(x, supportFor(curve)),
       seen: seenValues(laneStores, "price"),
     };

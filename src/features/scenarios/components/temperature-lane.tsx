@@ -28,12 +28,11 @@ export const TemperatureLane = ({ figures, level, readOnly, preview, set }: Benc
     if (!seen || reference === null) return null;
     const steps = { min: Math.floor(Math.min(seen[0], reference)) - 1, max: Math.ceil(Math.max(seen[1], reference)) + 1, step: 0.5 };
     const x = axisValues(steps.min, steps.max);
-    const curve = laneCurve({ stores: laneStores, driver: "temperature", level, at: x });
-    const atNormal = laneCurve({ stores: laneStores, driver: "temperature", level, at: [reference] });
-    if (!curve || !atNormal) return null;
+    const curve = laneCurve({ stores: laneStores, driver: "temperature", level, at: x, relativeTo: reference });
+    if (!curve) return null;
     return {
       steps,
-      points: lanePoints(curve, atNormal.estimate[0]),
+      points: lanePoints(curve),
       unseen: unseenRanges(x, supportFor(curve)),
       seen: seenValues(laneStores, "temperature"),
     };

@@ -22,7 +22,7 @@ export const WeekLane = ({ figures, level, week, onWeek }: BenchProps) => {
     const x = axisValues(0, 1);
     const curve = laneCurve({ stores: laneStores, driver: "season", level, at: x });
     if (!curve) return null;
-    return { points: lanePoints(curve, 0), unseen: unseenRanges(x, supportFor(curve)), seen: seenValues(laneStores, "season") };
+    return { points: lanePoints(curve), unseen: unseenRanges(x, supportFor(curve)), seen: seenValues(laneStores, "season") };
   }, [laneStores, level]);
   if (!still) return <UnlearntLane driver="week" label="Week of year" />;
 

@@ -1,13 +1,13 @@
 import type { LaneCurve } from "@shared/planning";
 import type { CurvePoint } from "@/components/charts/scale/curve-height";
 
-/** Where on the axis the curve is one: multipliers are read against the base. */
-export function lanePoints(curve: LaneCurve, reference: number): CurvePoint[] {
+/** From the link scale to multipliers: of the base, where the curve is relative to it, else of an average week. */
+export function lanePoints(curve: LaneCurve): CurvePoint[] {
   return Array.from<number | string, CurvePoint>(curve.x, (x, index) => ({
     x: Number(x),
-    estimate: Math.exp(curve.estimate[index] - reference),
-    lower: Math.exp(curve.lower[index] - reference),
-    upper: Math.exp(curve.upper[index] - reference),
+    estimate: Math.exp(curve.estimate[index]),
+    lower: Math.exp(curve.lower[index]),
+    upper: Math.exp(curve.upper[index]),
   }));
 }
 
