@@ -1,41 +1,53 @@
 import { bandModel, fitModel, termCurve } from "@shared/engine";
-import type { FittedModel, ModelBand } from "@shared/engine";
-import { defaultSpec, describeVariation, elasticityAt, predictScenario, toModelData } from "@shared/planning";
-import type { Interval, PlanCell, StoreModel } from "@shared/planning";
+import type { FittedModel } from "@shared/engine";
+import { defaultSpec, describeVariation, elasticityAt, predictScenario, shownModel, toModelData } from "@shared/planning";
+import type { Interval, PlanCell } from "@shared/planning";
 import { cutPlan, lastRegularPrice, simulatedStore } from "./simulated-chain";
 import type { ChainShape, SimulatedStore } from "./simulated-chain";
 
-export type LiftStudy = { shape: ChainShape; sets: number; stores: number; level: number; seed: number };
+export type LiftStudy = { shape: ChainShape; sets: number; stores: number; levels: readonly number[]; seed: number };
 
-/** Shares of intervals that held the truth, over all sets (and stores, where it is of one store). */
-export type LiftCoverage = {
-  /** The price curve of one store between the deepest cut and the regular price, relative to nothing: as its lane is drawn. */
-  curve: number;
-  /** Of one store: elasticity in the middle of the cut, expected lift of a cut by a fifth, and what is sold under it. */
-  elasticity: number;
-  lift: number;
-  units: number;
-  /** The same of all stores together. */
-  chainLift: number;
-  chainUnits: number;
-  /** Mean width of the lift's interval, of one store and of all together. */
-  liftWidth: number;
-  chainLiftWidth: number;
-};
+/**
+ * Ways to make intervals of one fit: as fitted, with penalties taken as known; averaged over penalties with stores taken as
+ * independent; as pages show them.
+ */
+export const bandings = {
+  "penalties known": (model) => bandModel(model, "pointwise"),
+  // Called pointwise, so that sums over stores find nothing in it that stores have in common.
+  "stores independent": (model) => ({ ...shownModel(model), band: "pointwise" }),
+  shown: shownModel,
+} as const satisfies Record<string, (model: FittedModel) => FittedModel>;
+
+export type Banding = keyof typeof bandings;
+const bandingNames = Object.keys(bandings) as Banding[];
+
+/** Shares of intervals that held the truth, and mean widths of the lift's; of one store (all its places, for the curve) and of all together. */
+const figureNames = ["curve", "elasticity", "lift", "units", "lift of all", "units of all", "width of lift", "width of lift of all"] as const;
+export type LiftCoverage = Record<(typeof figureNames)[number], number>;
 
 type Simulated = SimulatedStore & { model: FittedModel };
 
-/** How often the intervals a scenario shows hold the truth of simulated stores, by the band their models have. */
-export function liftStudy({ shape, sets, stores, level, seed }: LiftStudy, bands: readonly ModelBand[]): Record<string, LiftCoverage> {
-  const held = Object.fromEntries(bands.map((band) => [band, [] as LiftCoverage[]]));
-  for (let set = 0; set < sets; set++) {
-    const chain = Array.from({ length: stores }, (_, index) => simulated({ store: `S${index + 1}`, seed: seed + 1000 * set + index, shape }));
+/**
+ * How often the intervals that pages show hold the truth of simulated stores whose price is cut by a fifth for 12 weeks.
+ *
+ * @returns per level and banding. O(sets x stores) fits.
+ */
+export function liftStudy({ shape, sets, stores, levels, seed }: LiftStudy): Map<number, Record<Banding, LiftCoverage>> {
+  const judged = Array.from({ length: sets }, (_, set) => {
+    const chain = Array.from({ length: stores }, (_store, index) => simulated({ store: `S${index + 1}`, seed: seed + 1000 * set + index, shape }));
     const cells = cutPlan(chain.map(({ store }) => store));
-    const sold = cells.map((cell) => chain.find(({ store }) => store === cell.store)?.draw(meanOf(chain, cell)) ?? 0);
-    for (const band of bands) held[band].push(judge(chain.map((store) => ({ ...store, model: bandModel(store.model, band) })), { cells, sold, level }));
-  }
-  return Object.fromEntries(bands.map((band) => [band, averageOf(held[band])]));
+    const sold = cells.map((cell) => storeOf(chain, cell).draw(storeOf(chain, cell).mean(cell)));
+    const banded = perBanding((banding) => chain.map((store) => ({ ...store, model: bandings[banding](store.model) })));
+    return levels.map((level) => perBanding((banding) => judge(banded[banding], { cells, sold, level })));
+  });
+  return new Map(levels.map((level, at) => [level, perBanding((banding) => meanOf(judged.map((set) => set[at][banding])))]));
 }
+
+const perBanding = <Value>(of: (banding: Banding) => Value): Record<Banding, Value> =>
+  Object.fromEntries(bandingNames.map((banding) => [banding, of(banding)])) as Record<Banding, Value>;
+
+const meanOf = (all: readonly LiftCoverage[]): LiftCoverage =>
+  Object.fromEntries(figureNames.map((name) => [name, all.reduce((sum, one) => sum + one[name], 0) / all.length])) as LiftCoverage;
 
 function simulated(of: { store: string; seed: number; shape: ChainShape }): Simulated {
   const store = simulatedStore(of);
@@ -43,63 +55,56 @@ function simulated(of: { store: string; seed: number; shape: ChainShape }): Simu
   return { ...store, model: fitModel(defaultSpec(describeVariation(data)).spec, data) };
 }
 
-const meanOf = (chain: readonly SimulatedStore[], cell: PlanCell) => chain.find(({ store }) => store === cell.store)?.mean(cell) ?? NaN;
+function storeOf<Store extends SimulatedStore>(chain: readonly Store[], { store }: PlanCell): Store {
+  const found = chain.find((one) => one.store === store);
+  if (found === undefined) throw new Error(`There is no store ${store}.`);
+  return found;
+}
 
+/** Cells, what each of them sold, and the level of the intervals. */
 type Plan = { cells: readonly PlanCell[]; sold: readonly number[]; level: number };
 
 function judge(chain: readonly Simulated[], plan: Plan): LiftCoverage {
-  const all = heldBy(chain, plan);
-  const each = chain.map((one) => {
+  const together = heldBy(chain, plan);
+  return meanOf(chain.map((one): LiftCoverage => {
     const own = plan.cells.flatMap((cell, index) => (cell.store === one.store ? [index] : []));
     const alone = heldBy([one], { level: plan.level, cells: own.map((index) => plan.cells[index]), sold: own.map((index) => plan.sold[index]) });
-    return { ...alone, elasticity: elasticityHeld(one, plan.level), curve: curveHeld(one, plan.level) };
-  });
-  const mean = (of: (one: (typeof each)[number]) => number) => each.reduce((sum, one) => sum + of(one), 0) / each.length;
-  return {
-    curve: mean(({ curve }) => curve), elasticity: mean(({ elasticity }) => elasticity), lift: mean(({ lift }) => lift), units: mean(({ units }) => units),
-    chainLift: all.lift, chainUnits: all.units, liftWidth: mean(({ width }) => width), chainLiftWidth: all.width,
-  };
+    return {
+      curve: curveHeld(one, plan.level), elasticity: elasticityHeld(one, plan.level),
+      lift: alone.lift, units: alone.units, "lift of all": together.lift, "units of all": together.units,
+      "width of lift": alone.width, "width of lift of all": together.width,
+    };
+  }));
 }
 
 const holds = ({ lower, upper }: { lower: number; upper: number }, value: number) => Number(lower <= value && value <= upper);
 
 function heldBy(chain: readonly Simulated[], { cells, sold, level }: Plan): { lift: number; units: number; width: number } {
-  const stores: StoreModel[] = chain.map(({ store, model }) => ({ store, model }));
-  const { lift, units } = predictScenario({ stores, cells, level });
-  const totals = { plan: 0, base: 0 };
+  const { lift, units } = predictScenario({ stores: chain.map(({ store, model }) => ({ store, model })), cells, level });
+  let [plan, base] = [0, 0];
   for (const cell of cells) {
-    totals.plan += meanOf(chain, cell);
-    totals.base += meanOf(chain, { ...cell, price: cell.regularPrice });
+    plan += storeOf(chain, cell).mean(cell);
+    base += storeOf(chain, cell).mean({ ...cell, price: cell.regularPrice });
   }
-  return {
-    lift: holds(lift, totals.plan / totals.base - 1),
-    units: holds(units, sold.reduce((sum, value) => sum + value, 0)),
-    width: lift.upper - lift.lower,
-  };
+  return { lift: holds(lift, plan / base - 1), units: holds(units, sold.reduce((sum, value) => sum + value, 0)), width: lift.upper - lift.lower };
 }
 
-function elasticityHeld({ store, model, mean }: Simulated, level: number): number {
-  const price = 0.9 * lastRegularPrice;
-  const at = (value: number) => Math.log(mean({ week: "2026-01-05", price: value, promotion: "none", temperatureC: 10 }));
-  const step = 1e-4;
-  const truth = (at(price * Math.exp(step)) - at(price * Math.exp(-step))) / (2 * step);
-  const interval: Interval | null = elasticityAt({ stores: [{ store, model, baseUnits: 1 }], price, level });
+/** A store's true effect of a price, but for a constant. */
+const effectOf = ({ mean }: SimulatedStore) => (price: number) =>
+  Math.log(mean({ week: "2026-01-05", price, promotion: "none", temperatureC: 10 }));
+
+/** The elasticity in the middle of the cut. */
+function elasticityHeld(one: Simulated, level: number): number {
+  const [price, step, effect] = [0.9 * lastRegularPrice, 1e-4, effectOf(one)];
+  const truth = (effect(price * Math.exp(step)) - effect(price * Math.exp(-step))) / (2 * step);
+  const interval: Interval | null = elasticityAt({ stores: [{ store: one.store, model: one.model, baseUnits: 1 }], price, level });
   return interval === null ? NaN : holds(interval, truth);
 }
 
 /** Share of the price curve inside its band, both centred over the weeks learnt from. */
-function curveHeld({ model, mean, rows }: Simulated, level: number): number {
-  const truth = (price: number) => Math.log(mean({ week: "2026-01-05", price, promotion: "none", temperatureC: 10 }));
-  const middle = rows.reduce((sum, { price }) => sum + truth(price ?? NaN), 0) / rows.length;
-  const { x, lower, upper } = termCurve(model, "price", { points: 60, level });
-  return Array.from(x, Number).reduce((sum, price, k) => sum + holds({ lower: lower[k], upper: upper[k] }, truth(price) - middle), 0) / x.length;
-}
-
-function averageOf(all: readonly LiftCoverage[]): LiftCoverage {
-  const mean = (of: (one: LiftCoverage) => number) => all.reduce((sum, one) => sum + of(one), 0) / all.length;
-  return {
-    curve: mean(({ curve }) => curve), elasticity: mean(({ elasticity }) => elasticity), lift: mean(({ lift }) => lift), units: mean(({ units }) => units),
-    chainLift: mean(({ chainLift }) => chainLift), chainUnits: mean(({ chainUnits }) => chainUnits),
-    liftWidth: mean(({ liftWidth }) => liftWidth), chainLiftWidth: mean(({ chainLiftWidth }) => chainLiftWidth),
-  };
+function curveHeld(one: Simulated, level: number): number {
+  const effect = effectOf(one);
+  const middle = one.rows.reduce((sum, { price }) => sum + effect(price ?? NaN), 0) / one.rows.length;
+  const { x, lower, upper } = termCurve(one.model, "price", { points: 60, level });
+  return Array.from(x, Number).reduce((sum, price, k) => sum + holds({ lower: lower[k], upper: upper[k] }, effect(price) - middle), 0) / x.length;
 }
