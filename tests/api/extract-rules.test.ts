@@ -1,7 +1,10 @@
+import { Readable } from "node:stream";
 import { afterAll, beforeAll, beforeEach, describe, expect, it } from "vitest";
 import type { ExtractKind } from "@shared/contract/extract-kinds";
-import { loadExtract } from "../../server/features/extracts";
-import { checkedDirectly, loadCatalogueDirectly, read, salesFile, startExtractsApp, type ExtractsApp } from "../support/extracts";
+import type { Layout } from "@shared/contract/layouts";
+import { defaultWords } from "@shared/layouts";
+import { checkExtract, loadExtract, receiveExtract, SavedLayoutEntity } from "../../server/features/extracts";
+import { checkedDirectly, loadCatalogueDirectly, read, salesFile, salesHeader, startExtractsApp, type ExtractsApp } from "../support/extracts";
 
 let test: ExtractsApp;
 
@@ -213,5 +216,20 @@ describe("weeks without a row between others", () => {
   it("are not named one by one where they are many", async () => {
     const [first = "", last = ""] = [mondays(11)[0], mondays(1)[0]];
     expect((await issuesOf(salesFile(row(first), row(last)))).issues.map(({ value }) => value)).toEqual([`${mondays(11).slice(1, 7).join(", ")} and 3 more`]);
+  });
+
+  it("are none where the source leaves out what was not sold", async () => {
+    const columns = salesHeader.split(",");
+    const layout: Layout = {
+      kind: "sales", encoding: "utf-8", separator: ",", linesAbove: 0, hasHeader: true, theirColumns: columns, decimal: ".", thousands: "",
+      dateOrder: "iso", weekDay: "first", mapping: Object.fromEntries(columns.map((name) => [name, { from: "name", name }])), words: defaultWords,
+      missingMeans: "zero", tax: "included",
+    };
+    const em = test.services.orm.em.fork();
+    await em.persist(em.create(SavedLayoutEntity, { name: "Tills", kind: "sales", layout, updatedBy: test.dataAdminId, updatedAt: new Date() })).flush();
+    const received = await receiveExtract(test.services, {
+      body: Readable.from([Buffer.from(salesFile(row("2026-05-25"), row("2026-06-08")))]), fileName: "a.csv", kind: "sales", personId: test.dataAdminId, layout: "Tills", inBackground: false,
+    });
+    expect(await checkExtract(test.services, { extractId: received.id })).toMatchObject({ state: "checked", rowsUsable: 2, warningCount: 0, layoutOrigin: "saved" });
   });
 });
