@@ -2,7 +2,7 @@ import { infiniteQueryOptions } from "@tanstack/react-query";
 import { listCatalogueHistory, type HistoryKind } from "@shared/contract/catalogue-history";
 import { call } from "@/lib/api-client";
 
-const pageSize = 20;
+const pageSize = 50;
 
 /** Who changed what, newest first: of one code, or of everything of a kind. */
 export const historyQuery = (kind: HistoryKind, code?: string) =>

@@ -7,7 +7,8 @@ import { TextLink } from "@/components/ui/text-link";
 import { useChainFormat } from "@/lib/format/chain-format";
 import { paths } from "@/lib/paths";
 import { historyQuery } from "../api/history";
-import { changeDetails, changeSentence } from "../view/change-words";
+import { changeDetails, changeSentence, manySentence } from "../view/change-words";
+import { groupChanges } from "../view/group-changes";
 
 type ChangeHistoryProps = { kind: HistoryKind; code?: string };
 
@@ -21,9 +22,12 @@ export const ChangeHistory = ({ kind, code }: ChangeHistoryProps) => {
   return (
     <>
       <ol className="flex flex-col">
-        {changes.map((change) => (
-          <Change key={change.id} change={change} namesCode={code === undefined} />
-        ))}
+        {groupChanges(changes).map((group) => {
+          const [change] = group;
+          return group.length === 1
+            ? <Change key={change.id} change={change} namesCode={code === undefined} />
+            : <Together key={change.id} group={group} namesCode={code === undefined} />;
+        })}
       </ol>
       {query.hasNextPage && (
         <Button size="small" className="mt-3" busy={query.isFetchingNextPage} onClick={() => void query.fetchNextPage()}>
@@ -34,27 +38,73 @@ export const ChangeHistory = ({ kind, code }: ChangeHistoryProps) => {
   );
 };
 
-const Change = ({ change, namesCode }: { change: CatalogueChange; namesCode: boolean }) => {
+type ChangeProps = { change: CatalogueChange; namesCode: boolean };
+
+const entryStyle = "border-l-2 border-hairline py-1.5 pl-3.5";
+
+const Change = ({ change, namesCode }: ChangeProps) => {
   const format = useChainFormat();
   const details = changeDetails(change, format);
   return (
-    <li className="border-l-2 border-hairline py-1.5 pl-3.5">
+    <li className={entryStyle}>
       <p>
-        <span className="font-medium">{change.person?.name ?? "Shelftide"}</span> {changeSentence(change, format)}
+        <Person change={change} /> {changeSentence(change, format)}
         {namesCode && <span className="text-muted"> ({change.code})</span>}
-        {change.file && (
-          <>
-            {" by the file "}
-            <TextLink to={paths.extract.href(change.file.id)}>{change.file.name}</TextLink>
-          </>
-        )}
-        {!change.file && change.byToken && " by a script"}
-        <span className="text-muted"> · {format.moment(change.at)}</span>
+        <Origin change={change} />
       </p>
       {details.length > 0 && <p className="text-sm text-muted">{details.join(" · ")}</p>}
     </li>
   );
 };
+
+/** Many that came at once: how many, and each on demand. */
+const Together = ({ group, namesCode }: { group: readonly CatalogueChange[]; namesCode: boolean }) => {
+  const format = useChainFormat();
+  const [change] = group;
+  return (
+    <li className={entryStyle}>
+      <p>
+        <Person change={change} /> {manySentence(change, group.length)}
+        <Origin change={change} />
+      </p>
+      <details className="text-sm text-muted">
+        <summary className="w-fit rounded-xs">Each of them</summary>
+        <ul className="mt-1 list-disc pl-5">
+          {group.map((each) => (
+            <li key={each.id}>{[changeSentence(each, format) + (namesCode ? ` (${each.code})` : ""), ...changeDetails(each, format)].join(" · ")}</li>
+          ))}
+        </ul>
+      </details>
+    </li>
+  );
+};
+
+const Person = ({ change }: { change: CatalogueChange }) => <span className="font-medium">{change.person?.name ?? "Shelftide"}</span>;
+
+/** By which file or script, and when. */
+const Origin = ({ change }: { change: CatalogueChange }) => {
+  const format = useChainFormat();
+  return (
+    <>
+      {change.file && (
+        <>
+          {" by the file "}
+          <TextLink to={paths.extract.href(change.file.id)}>{change.file.name}</TextLink>
+        </>
+      )}
+      {!change.file && change.byToken && " by a script"}
+      <span className="text-muted"> · {format.moment(change.at)}</span>
+    </>
+  );
+};
+
+/** The history of everything of a kind, folded away below a list: also of what was removed. */
+export const KindHistory = ({ kind }: { kind: HistoryKind }) => (
+  <details className="mt-4 rounded-lg border border-hairline bg-sheet px-4 py-3 sm:px-5 print:hidden">
+    <summary className="w-fit rounded-xs font-medium">Who changed what</summary>
+    <div className="mt-3"><ChangeHistory kind={kind} /></div>
+  </details>
+);
 
 /** The history folded away, below a form. */
 export const FoldedHistory = (props: ChangeHistoryProps) => (

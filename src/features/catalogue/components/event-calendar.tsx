@@ -49,7 +49,7 @@ const Row = ({ row, columns, thisWeek, onOpen }: RowProps) => {
           </div>
         ))}
       </div>
-      <div className="relative mt-1" style={{ height: row.lanes * laneHeight + 4, width: share(row.weeks.length) }}>
+      <div className="relative" style={{ height: row.lanes * laneHeight + 6, width: share(row.weeks.length) }}>
         {row.weeks.map((week, index) => (
           <div
             key={week} aria-hidden="true" style={{ left: `${(index / row.weeks.length) * 100}%`, width: `${100 / row.weeks.length}%` }}
@@ -57,14 +57,14 @@ const Row = ({ row, columns, thisWeek, onOpen }: RowProps) => {
           />
         ))}
         {row.bars.map((bar) => (
-          <Bar key={bar.event.id} bar={bar} scale={columns / row.weeks.length} onOpen={onOpen} />
+          <Bar key={bar.event.id} bar={bar} onOpen={onOpen} />
         ))}
       </div>
     </div>
   );
 };
 
-const Bar = ({ bar, scale, onOpen }: { bar: EventBar; scale: number; onOpen: (id: number) => void }) => {
+const Bar = ({ bar, onOpen }: { bar: EventBar; onOpen: (id: number) => void }) => {
   const format = useChainFormat();
   const { event } = bar;
   const where = event.region ?? "whole chain";
@@ -73,15 +73,15 @@ const Bar = ({ bar, scale, onOpen }: { bar: EventBar; scale: number; onOpen: (id
       type="button" data-driver="event" onClick={() => onOpen(event.id)}
       aria-label={`${event.name}, ${where}, ${format.day(event.firstDay)} to ${format.day(event.lastDay)}`}
       title={`${event.name} · ${where}`}
-      style={{ left: `${bar.left * scale * 100}%`, width: `${bar.width * scale * 100}%`, top: bar.lane * laneHeight + 2, height: laneHeight - 4 }}
+      style={{ left: `${bar.left * 100}%`, width: `${bar.width * 100}%`, top: bar.lane * laneHeight + 4, height: laneHeight - 4 }}
       className={classNames(
-        "group/bar absolute flex items-center border border-driver bg-driver-soft text-left text-xs hover:z-10 focus-visible:z-10",
+        "absolute flex items-center border border-driver bg-driver-soft text-left text-xs hover:z-10 focus-visible:z-10",
         event.region !== null && "border-dashed",
         !bar.continuesBefore && "rounded-l-sm", !bar.continuesAfter && "rounded-r-sm",
         bar.continuesBefore && "border-l-0", bar.continuesAfter && "border-r-0",
       )}
     >
-      <span className="pointer-events-none truncate px-1.5 font-medium text-driver-text">
+      <span className="absolute left-0 truncate px-1.5 font-medium text-driver-text" style={{ width: `${(bar.room / bar.width) * 100}%` }}>
         {event.name}
         {event.region !== null && <span className="font-normal"> · {event.region}</span>}
       </span>

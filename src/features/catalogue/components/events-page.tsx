@@ -21,6 +21,7 @@ import { holdsWords } from "../view/search";
 import { weeksOfYear, yearOfDay } from "../view/year-weeks";
 import { CatalogueActions } from "./catalogue-actions";
 import { CatalogueViews } from "./catalogue-views";
+import { KindHistory } from "./change-history";
 import { EventCalendar } from "./event-calendar";
 import { EventDialog } from "./event-dialog";
 import { RowButton } from "./row-button";
@@ -46,7 +47,7 @@ export const EventsPage = ({ calendar, today }: EventsPageProps) => {
       <PageHeader
         title="Events in the catalogue" heading="Catalogue"
         facts={query.data ? [countOf(codes.length, "event"), countOf(events.length, "occurrence")] : []}
-        actions={<CatalogueActions file={{ href: exportEvents.path, name: "events.csv" }} enter={mayWrite ? { label: "Enter an event", onEnter: () => setOpen({ id: null }) } : undefined} />}
+        actions={<CatalogueActions file={{ href: exportEvents.path, name: "events.csv" }} mayWrite={mayWrite} enter={{ label: "Enter an event", onEnter: () => setOpen({ id: null }) }} />}
       />
       <CatalogueViews />
       <Sheet flush>
@@ -66,6 +67,7 @@ export const EventsPage = ({ calendar, today }: EventsPageProps) => {
             : <YearOfEvents calendar={calendar} today={today} year={yearFrom(values.year, calendar, today)} events={all} onOpen={(id) => setOpen({ id })} />}
         </QueryView>
       </Sheet>
+      <KindHistory kind="event" />
       {open && (
         <EventDialog event={events.find(({ id }) => id === open.id) ?? null} codes={codes} regions={regions} isReadOnly={!mayWrite} onClose={() => setOpen(null)} />
       )}

@@ -66,7 +66,9 @@ const ProductSheets = ({ product, products, today, onRemoved }: ProductSheetsPro
         </div>
         <div className="flex min-w-0 flex-col gap-4">
           <ListingsSheet product={product.code} mayWrite={mayWrite} />
-          <Sheet heading="Who changed what"><ChangeHistory kind="product" code={product.code} /></Sheet>
+          <Sheet heading="Who changed what">
+            <div className="max-h-[420px] overflow-y-auto" role="region" aria-label="Who changed what" tabIndex={0}><ChangeHistory kind="product" code={product.code} /></div>
+          </Sheet>
         </div>
       </div>
       {isChanging && <ProductDialog product={product} products={products} onClose={() => setIsChanging(false)} onRemoved={onRemoved} />}

@@ -16,10 +16,12 @@ import { useChainFormat, type ChainFormat } from "@/lib/format/chain-format";
 import { countOf } from "@/lib/format/number";
 import { paths } from "@/lib/paths";
 import { usePermission } from "@/lib/session";
-import { exactMoney } from "../view/product-words";
+import { exactMoney, taxWords } from "../view/product-words";
 import { holdsWords } from "../view/search";
 import { CatalogueActions } from "./catalogue-actions";
 import { CatalogueViews } from "./catalogue-views";
+import { CategoryName } from "./category-name";
+import { KindHistory } from "./change-history";
 import { ProductDialog } from "./product-dialog";
 import { useFilters } from "./use-filters";
 
@@ -31,7 +33,7 @@ const columnsOf = (format: ChainFormat): TableColumn<Product>[] => [
   { id: "gtin", header: "GTIN", value: ({ gtin }) => gtin, from: "lg" },
   { id: "unitCost", header: "Cost", meaning: "What one unit costs the chain today, net of tax.", align: "right", value: ({ unitCost }) => unitCost, cell: ({ unitCost }) => exactMoney(unitCost, format), from: "sm" },
   { id: "regularPrice", header: "Regular price", meaning: "The price today without any reduction, tax included.", align: "right", value: ({ regularPrice }) => regularPrice, cell: ({ regularPrice }) => exactMoney(regularPrice, format) },
-  { id: "taxRate", header: "Tax", align: "right", value: ({ taxRate }) => taxRate, cell: ({ taxRate }) => format.percent(taxRate, { digits: taxRate * 100 % 1 === 0 ? 0 : 1 }), from: "md" },
+  { id: "taxRate", header: "Tax", align: "right", value: ({ taxRate }) => taxRate, cell: ({ taxRate }) => taxWords(taxRate, format), from: "md" },
 ];
 
 /** Every product, to be found and entered; each has a page of its own. */
@@ -46,7 +48,7 @@ export const ProductsPage = () => {
       <PageHeader
         title="Products in the catalogue" heading="Catalogue"
         facts={query.data ? [countOf(products.length, "product"), countOf(categories.size, "category", "categories")] : []}
-        actions={<CatalogueActions file={{ href: exportProducts.path, name: "products.csv" }} enter={mayWrite ? { label: "Enter a product", onEnter: () => setIsEntering(true) } : undefined} />}
+        actions={<CatalogueActions file={{ href: exportProducts.path, name: "products.csv" }} mayWrite={mayWrite} enter={{ label: "Enter a product", onEnter: () => setIsEntering(true) }} />}
       />
       <CatalogueViews />
       <Sheet flush>
@@ -58,6 +60,7 @@ export const ProductsPage = () => {
           {(all) => <ProductTable products={all} />}
         </QueryView>
       </Sheet>
+      <KindHistory kind="product" />
       {isEntering && <ProductDialog product={null} products={products} onClose={() => setIsEntering(false)} />}
     </>
   );
@@ -74,9 +77,10 @@ const ProductTable = ({ products }: { products: readonly Product[] }) => {
   );
   return (
     <>
-      <div className="grid gap-3 border-b border-hairline p-4 sm:grid-cols-[minmax(12rem,20rem)_14rem] sm:px-5">
+      <div className="grid gap-3 border-b border-hairline p-4 items-end sm:grid-cols-[minmax(12rem,20rem)_14rem_auto] sm:px-5">
         <TextField type="search" label="Code, name, brand or GTIN" value={values.q} onChange={({ target }) => set({ q: target.value })} />
         <SelectField label="Category" value={values.category} onChange={(category) => set({ category })} choices={[{ value: "", label: "All" }, ...categories.map(([value, label]) => ({ value, label }))]} />
+        {values.category !== "" && <CategoryName key={values.category} code={values.category} />}
       </div>
       {shown.length === 0 ? (
         <EmptyState title="No product is like that">Change the filters above.</EmptyState>

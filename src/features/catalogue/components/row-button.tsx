@@ -5,7 +5,7 @@ export const RowButton = ({ onPress, children }: { onPress: () => void; children
   <button
     type="button"
     onClick={onPress}
-    className="rounded-xs text-left font-medium text-accent underline decoration-accent/30 underline-offset-3 hover:decoration-accent"
+    className="rounded-xs text-left font-medium sm:whitespace-nowrap text-accent underline decoration-accent/30 underline-offset-3 hover:decoration-accent"
   >
     {children}
   </button>

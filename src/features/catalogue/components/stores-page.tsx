@@ -18,6 +18,7 @@ import { usePermission } from "@/lib/session";
 import { holdsWords } from "../view/search";
 import { CatalogueActions } from "./catalogue-actions";
 import { CatalogueViews } from "./catalogue-views";
+import { KindHistory } from "./change-history";
 import { RowButton } from "./row-button";
 import { StoreDialog } from "./store-dialog";
 import { useFilters } from "./use-filters";
@@ -44,7 +45,7 @@ export const StoresPage = () => {
       <PageHeader
         title="Stores in the catalogue" heading="Catalogue"
         facts={query.data ? [countOf(stores.length, "store"), countOf(regions.length, "region")] : []}
-        actions={<CatalogueActions file={{ href: exportStores.path, name: "stores.csv" }} enter={mayWrite ? { label: "Enter a store", onEnter: () => setOpen({ code: null }) } : undefined} />}
+        actions={<CatalogueActions file={{ href: exportStores.path, name: "stores.csv" }} mayWrite={mayWrite} enter={{ label: "Enter a store", onEnter: () => setOpen({ code: null }) }} />}
       />
       <CatalogueViews />
       <Sheet flush>
@@ -56,6 +57,7 @@ export const StoresPage = () => {
           {(all) => <StoreTable stores={all} regions={regions} onOpen={(code) => setOpen({ code })} />}
         </QueryView>
       </Sheet>
+      <KindHistory kind="store" />
       {open !== null && (
         <StoreDialog
           store={stores.find(({ code }) => code === open.code) ?? null} regions={regions} isReadOnly={!mayWrite} onClose={() => setOpen(null)}

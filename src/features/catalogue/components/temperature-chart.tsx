@@ -7,7 +7,7 @@ import { useChainFormat } from "@/lib/format/chain-format";
 import { useElementWidth } from "@/lib/use-element-width";
 import { extentOf, runsOf } from "../view/temperature-lines";
 
-const margin = { top: 10, right: 10, bottom: 26, left: 40 };
+const margin = { top: 10, right: 20, bottom: 26, left: 40 };
 const height = 260;
 const labelEvery = 4;
 

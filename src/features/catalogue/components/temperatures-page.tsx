@@ -31,11 +31,12 @@ type TemperaturesPageProps = { calendar: ChainCalendar; unit: TemperatureUnit; t
 /** Weekly mean temperatures by region and by store, against what is usual. */
 export const TemperaturesPage = (props: TemperaturesPageProps) => {
   const query = useQuery(storesQuery());
+  const mayWrite = usePermission("catalogue:write");
   return (
     <>
       <PageHeader
         title="Temperatures in the catalogue" heading="Catalogue" facts={["Weekly means, by region or for one store"]}
-        actions={<CatalogueActions file={{ href: exportTemperatures.path, name: "temperatures.csv" }} />}
+        actions={<CatalogueActions file={{ href: exportTemperatures.path, name: "temperatures.csv" }} mayWrite={mayWrite} />}
       />
       <CatalogueViews />
       <QueryView

@@ -7,9 +7,9 @@ import { linearScale } from "@/components/charts/scale/scale";
 import { useChainFormat } from "@/lib/format/chain-format";
 import { useElementWidth } from "@/lib/use-element-width";
 import { stepPath } from "../view/step-path";
-import { beginning } from "../view/change-words";
+import { beginning } from "../view/product-words";
 
-const margin = { top: 10, right: 8, bottom: 26, left: 52 };
+const margin = { top: 20, right: 8, bottom: 26, left: 52 };
 const height = 190;
 const monthDays = 30;
 
@@ -53,7 +53,7 @@ export const TermsChart = ({ terms, today, name }: TermsChartProps) => {
           <LeftAxis scale={y} ticks={roundTicks(0, top, 4).map((value) => ({ value, label: format.price(value) }))} left={margin.left - 4} right={width - margin.right} />
           <BottomAxis scale={x} ticks={quarterTicks(from, until)} y={height - margin.bottom} />
           <line className="chart-reference" x1={x.toPixel(now)} x2={x.toPixel(now)} y1={margin.top} y2={height - margin.bottom} />
-          <text className="chart-text" x={x.toPixel(now) + 5} y={margin.top + 10}>today</text>
+          <text className="chart-text" x={x.toPixel(now)} y={margin.top - 7} textAnchor="middle">today</text>
           <path d={steps((row) => row.regularPrice)} fill="none" strokeWidth={2} className="stroke-[var(--driver-price)]" />
           <path d={steps((row) => row.unitCost)} fill="none" strokeWidth={2} strokeDasharray="5 3" className="stroke-[var(--muted)]" />
         </svg>

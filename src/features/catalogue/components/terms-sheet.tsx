@@ -15,8 +15,7 @@ import { Sheet } from "@/components/ui/sheet";
 import { useChainFormat, type ChainFormat } from "@/lib/format/chain-format";
 import { useRefresh } from "../api/refresh";
 import { removeTerms, saveTerms, termsQuery } from "../api/terms";
-import { beginning } from "../view/change-words";
-import { exactMoney, fromWords } from "../view/product-words";
+import { beginning, exactMoney, fromWords, taxWords } from "../view/product-words";
 import { FormDialog } from "./form-dialog";
 import { FormDay, FormNumber } from "./form-fields";
 import { RowButton } from "./row-button";
@@ -26,7 +25,7 @@ const columnsOf = (format: ChainFormat, open?: (validFrom: string) => void): Tab
   { id: "validFrom", header: "Valid from", value: ({ validFrom }) => validFrom, cell: (row) => (open ? <RowButton onPress={() => open(row.validFrom)}>{fromWords(row, format)}</RowButton> : fromWords(row, format)) },
   { id: "regularPrice", header: "Regular price", align: "right", value: ({ regularPrice }) => regularPrice, cell: ({ regularPrice }) => exactMoney(regularPrice, format) },
   { id: "unitCost", header: "Cost", align: "right", value: ({ unitCost }) => unitCost, cell: ({ unitCost }) => exactMoney(unitCost, format) },
-  { id: "taxRate", header: "Tax", align: "right", value: ({ taxRate }) => taxRate, cell: ({ taxRate }) => format.percent(taxRate, { digits: taxRate * 100 % 1 === 0 ? 0 : 1 }) },
+  { id: "taxRate", header: "Tax", align: "right", value: ({ taxRate }) => taxRate, from: "sm", cell: ({ taxRate }) => taxWords(taxRate, format) },
 ];
 
 type TermsSheetProps = { product: Product; today: string; mayWrite: boolean };

@@ -1,5 +1,6 @@
 import type { CatalogueChange } from "@shared/contract/catalogue-history";
 import type { ChainFormat } from "@/lib/format/chain-format";
+import { beginning, taxWords } from "./product-words";
 
 type Value = string | number | boolean | null;
 type Values = NonNullable<CatalogueChange["after"]>;
@@ -21,16 +22,13 @@ const fieldNames: Record<string, string> = {
 const amounts = new Set(["unitCost", "regularPrice", "perUnit", "lumpSum"]);
 const days = new Set(["opened", "closed", "firstDay", "lastDay", "validFrom", "week"]);
 
-/** Files that give no day mean from the beginning. */
-export const beginning = "1970-01-01";
-
 /** A value as people write it. */
 const written = (field: string, value: Value | undefined, format: ChainFormat): string => {
   if (value === null || value === undefined || value === "") return "nothing";
   if (typeof value === "boolean") return value ? "yes" : "no";
   if (typeof value === "number") {
     if (amounts.has(field)) return format.money(value, { digits: decimals(value) });
-    if (field === "taxRate") return format.percent(value, { digits: 1 });
+    if (field === "taxRate") return taxWords(value, format);
     if (field === "temperatureC") return format.temperature(value);
     return String(value);
   }
@@ -59,6 +57,13 @@ export const changeSentence = (change: CatalogueChange, format: ChainFormat): st
   const values = change.after ?? change.before;
   return `${verb[change.change]} ${thing[change.what]}${values ? which(change.what, values, format) : ""}`;
 };
+
+const things: Record<CatalogueChange["what"], string> = {
+  store: "stores", product: "products", category: "categories", terms: "terms", funding: "contributions", listing: "listings", event: "events", temperature: "temperatures",
+};
+
+/** "entered 24 listings" */
+export const manySentence = ({ what, change }: CatalogueChange, count: number): string => `${verb[change]} ${count} ${things[what]}`;
 
 /** What became of each field that changed: "regular price: €1.79 → €1.99". Of a new row what it has, of a removed one what it had. */
 export const changeDetails = ({ what, before, after }: CatalogueChange, format: ChainFormat): string[] => {

@@ -4,9 +4,11 @@ import type { CatalogueEvent } from "@shared/contract/catalogue-events";
 /** A part of an event within a row of weeks. */
 export type EventBar = {
   event: CatalogueEvent;
-  /** Shares of the row's width. */
+  /** Shares of the width of the row's weeks. */
   left: number;
   width: number;
+  /** The same, for its name: to the next bar of the lane, or to the row's end. */
+  room: number;
   /** Bars that share days lie in different lanes. */
   lane: number;
   /** Whether it goes on in the row before or after. */
@@ -29,15 +31,16 @@ export const weekRows = ({ weeks, events, weeksInRow }: Calendar): WeekRow[] => 
   const starts = Array.from({ length: isJoined ? rowCount : Math.ceil(weeks.length / weeksInRow) }, (_, row) => row * weeksInRow);
   return starts.map((start, row) => {
     const own = weeks.slice(start, row === starts.length - 1 ? weeks.length : start + weeksInRow);
-    return rowOf(own, events, Math.max(weeksInRow, own.length));
+    return rowOf(own, events);
   });
 };
 
 /** How many columns the widest row has: all rows share it, so that a week is as wide everywhere. */
 export const columnsOfRows = (rows: readonly WeekRow[]): number => Math.max(1, ...rows.map(({ weeks }) => weeks.length));
 
-const rowOf = (weeks: Day[], events: readonly CatalogueEvent[], columns: number): WeekRow => {
+const rowOf = (weeks: Day[], events: readonly CatalogueEvent[]): WeekRow => {
   const [first, end] = [dayNumber(weeks[0]), dayNumber(addDays(weeks[weeks.length - 1], 7))];
+  const days = end - first;
   const laneEnds: number[] = [];
   const bars = events
     .filter(({ firstDay, lastDay }) => dayNumber(firstDay) < end && dayNumber(lastDay) >= first)
@@ -47,11 +50,11 @@ const rowOf = (weeks: Day[], events: readonly CatalogueEvent[], columns: number)
       const free = laneEnds.findIndex((taken) => taken <= from);
       const lane = free === -1 ? laneEnds.length : free;
       laneEnds[lane] = to;
-      const days = columns * 7;
       return {
-        event, lane, left: (from - first) / days, width: (to - from) / days,
+        event, lane, left: (from - first) / days, width: (to - from) / days, room: 0,
         continuesBefore: dayNumber(event.firstDay) < first, continuesAfter: dayNumber(event.lastDay) >= end,
       };
     });
-  return { weeks, bars, lanes: Math.max(1, laneEnds.length) };
+  const roomOf = ({ left, lane }: EventBar) => Math.min(1, ...bars.filter((other) => other.lane === lane && other.left > left).map((other) => other.left)) - left;
+  return { weeks, bars: bars.map((bar) => ({ ...bar, room: roomOf(bar) })), lanes: Math.max(1, laneEnds.length) };
 };
