@@ -5,6 +5,7 @@ import { afterAll, beforeAll, describe, expect, it, vi } from "vitest";
 import type { Extract, ExtractIssue } from "@shared/contract/extracts";
 import type { Layout } from "@shared/contract/layouts";
 import type { ExtractLayout, LayoutPreview, SavedLayout } from "@shared/contract/saved-layouts";
+import { missingMeansIn, weeksWhereMissingMeansZero } from "../../server/features/extracts";
 import { act, afterJob, checked, loadCatalogue, loaded, read, salesFile, startExtractsApp, storedSales, upload, type ExtractsApp } from "../support/extracts";
 import { bearerOf } from "../support/people";
 import { expectProblem } from "../support/problems";
@@ -177,6 +178,14 @@ describe("a saved layout", () => {
     expect(next).toMatchObject({ state: "checked", rows: { usable: 1 }, layout: { origin: "saved", name: "Shop tills", isConfirmed: true }, may: { load: true } });
     expect((await layoutOf(next)).preview.rows[0]?.values.slice().sort()).toEqual(["1.5", "1.79", "2.69", "2026-05-18", "P1", "S1"]);
     expect(await load(next)).toMatchObject({ state: "loaded" });
+    await vi.waitFor(async () => {
+      const { rows } = await test.services.pool.query("select 1 from extracts where id = $1 and not coverage_pending", [next.id]);
+      expect(rows).toHaveLength(1);
+    }, { timeout: 15_000, interval: 100 });
+    const em = test.services.orm.em.fork();
+    const [{ id: storeId }] = (await test.services.pool.query<{ id: number }>("select id from stores where code = 'S1'")).rows;
+    expect(await weeksWhereMissingMeansZero(em, { storeIds: [storeId], first: "2026-05-01", last: "2026-06-30" })).toEqual([{ storeId, week: "2026-05-18" }]);
+    expect([await missingMeansIn(em, { storeId, week: "2026-05-18" }), await missingMeansIn(em, { storeId, week: "2026-05-25" })]).toEqual(["zero", "unknown"]);
     const { body } = await read(test, "/api/layouts?kind=sales").expect(200);
     expect(body.items.find(({ name }: SavedLayout) => name === "Shop tills")).toMatchObject({ lastUsedAt: expect.any(String), updatedBy: { name: "Test Person" } });
   });

@@ -35,6 +35,16 @@ describe("the file store", () => {
     await expect(files.get(key)).rejects.toThrow(/not exist/);
   });
 
+  it("gives a file's first bytes, or all of a shorter one", async () => {
+    const { files } = test.services;
+    const key = `test/${randomUUID()}`;
+    const content = randomBytes(200_000);
+    await files.put({ key, body: Readable.from([content]), contentType });
+    for (const bytes of [1, 65_536, 200_000, 300_000]) expect(Buffer.compare(await files.head(key, bytes), content.subarray(0, bytes))).toBe(0);
+    await files.remove(key);
+    await expect(files.head(key, 10)).rejects.toThrow(/not exist/);
+  });
+
   it("removes what is not there without complaint, and says that it can be reached", async () => {
     await test.services.files.remove(`test/${randomUUID()}`);
     await test.services.files.check();

@@ -6,6 +6,7 @@ export { extractsJobs } from "./extracts.jobs";
 export { coverageRoutes } from "./coverage/coverage.routes";
 export { watchSales } from "./notices/watch-sales";
 export { resumeCoverage } from "./coverage/count-in-later";
+export { missingMeansIn, weeksWhereMissingMeansZero, type MissingMeans } from "./layouts/missing-rows.repository";
 export { layoutsRoutes } from "./layouts/layouts.routes";
 export { checkExtract } from "./check/check-extract.service";
 export { loadExtract } from "./load/load-extract.service";

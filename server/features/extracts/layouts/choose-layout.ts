@@ -29,7 +29,13 @@ export function chooseLayout(head: Uint8Array, { kind, saved, weekStart }: Known
   const recognised = recognise(saved, head, { weekStart });
   if (recognised) return { origin: "saved", layout: recognised.layout, index: recognised.index };
   const { layout } = detectLayout(head, kind, { weekStart });
-  return own && unreadableRows(layout, head) >= ownUnreadable ? { origin: "own", layout: own } : { origin: "proposed", layout };
+  return own && !readsMore(layout, own, head) ? { origin: "own", layout: own } : { origin: "proposed", layout };
+}
+
+/** Whether more rows can be read by a layout, of all the columns that our own form has. */
+function readsMore(layout: Layout, own: Layout, head: Uint8Array): boolean {
+  const hasAll = Object.keys(own.mapping).every((column) => Object.hasOwn(layout.mapping, column));
+  return hasAll && unreadableRows(layout, head) < unreadableRows(own, head);
 }
 
 /** The layout of our own form, where the file is in it. */
