@@ -65,7 +65,7 @@ describe("events over weeks", () => {
     expect(row.bars.map(({ event: { id }, lane }) => [id, lane])).toEqual([[1, 0], [2, 1], [3, 0]]);
     expect(row.lanes).toBe(2);
     // A name has room to the next bar of its lane, or to the row's end.
-    expect(row.bars.map(({ room }) => Math.round(room * 91))).toEqual([7, 15, 20]);
+    expect(row.bars.map(({ room }) => Math.round(room * 91))).toEqual([7, 15, 14]);
   });
 
   it("have the 53rd week in the fourth row, and as few rows as hold all weeks", () => {
@@ -92,7 +92,7 @@ describe("a change in words", () => {
       after: { validFrom: "2026-06-01", unitCost: 0.8765, regularPrice: 1.79, taxRate: 0.055 },
     });
     expect(changeSentence(terms, format)).toBe("changed the terms from 1 June 2026");
-    expect(changeDetails(terms, format)).toEqual(["cost: €0.80 → €0.8765", `tax: ${format.percent(0.21, { digits: 1 })} → ${format.percent(0.055, { digits: 1 })}`]);
+    expect(changeDetails(terms, format)).toEqual(["cost: €0.80 → €0.8765", `tax: ${format.percent(0.21)} → ${format.percent(0.055, { digits: 1 })}`]);
   });
 
   it("says of a new row what it has, and leaves out what it has not", () => {
