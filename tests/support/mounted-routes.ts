@@ -5,9 +5,11 @@ import { contractEndpoints, nameOf } from "./contract-endpoints";
 /** What the router really holds under /api, as "METHOD path", read from the router itself. */
 export function mountedNames(app: Express): string[] {
   return app.router.stack.flatMap(({ route }) => {
-    if (!route?.path.startsWith("/api")) return [];
+    if (!route) return [];
     const methods = new Set(route.stack.map((step) => step.method.toUpperCase()));
-    return [...methods].map((method) => `${method} ${route.path}`);
+    // The built client, where there is one, is served at several paths by one route.
+    const paths = [route.path].flat().filter((path) => path.startsWith("/api"));
+    return paths.flatMap((path) => [...methods].map((method) => `${method} ${path}`));
   });
 }
 
