@@ -7,7 +7,7 @@ import { useChainFormat } from "@/lib/format/chain-format";
 import { useElementWidth } from "@/lib/use-element-width";
 import { columnsOfRows, weekRows, type EventBar, type WeekRow } from "../view/event-bars";
 
-const laneHeight = 26;
+const laneHeight = 34;
 const narrowBelow = 560;
 const wideFrom = 900;
 
@@ -74,16 +74,21 @@ const Bar = ({ bar, onOpen }: { bar: EventBar; onOpen: (id: number) => void }) =
       aria-label={`${event.name}, ${where}, ${format.day(event.firstDay)} to ${format.day(event.lastDay)}`}
       title={`${event.name} · ${where}`}
       style={{ left: `${bar.left * 100}%`, width: `${bar.width * 100}%`, top: bar.lane * laneHeight + 4, height: laneHeight - 4 }}
-      className={classNames(
-        "absolute flex items-center border border-driver bg-driver-soft text-left text-xs hover:z-10 focus-visible:z-10",
-        event.region !== null && "border-dashed",
-        !bar.continuesBefore && "rounded-l-sm", !bar.continuesAfter && "rounded-r-sm",
-        bar.continuesBefore && "border-l-0", bar.continuesAfter && "border-r-0",
-      )}
+      className="absolute text-left text-xs leading-4 hover:z-10 focus-visible:z-10"
     >
-      <span className="absolute left-0 truncate px-1.5 font-medium text-driver-text" style={{ width: `${(bar.room / bar.width) * 100}%` }}>
-        {event.name}
-        {event.region !== null && <span className="font-normal"> · {event.region}</span>}
+      <span
+        className={classNames(
+          "absolute inset-x-0 top-0 h-2.5 border border-driver",
+          event.region === null ? "bg-driver" : "border-dashed bg-driver-soft",
+          !bar.continuesBefore && "rounded-l-sm", !bar.continuesAfter && "rounded-r-sm",
+          bar.continuesBefore && "border-l-0", bar.continuesAfter && "border-r-0",
+        )}
+      />
+      <span className="absolute top-3 left-0 truncate" style={{ width: `${(bar.room / bar.width) * 100}%` }}>
+        <span className="bg-sheet pr-1 font-medium text-driver-text">
+          {event.name}
+          {event.region !== null && <span className="font-normal"> · {event.region}</span>}
+        </span>
       </span>
     </button>
   );

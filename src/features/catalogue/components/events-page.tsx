@@ -95,7 +95,7 @@ const YearOfEvents = ({ calendar, today, year, events, onOpen }: YearOfEventsPro
   return (
     <div className="p-4 sm:p-5">
       <p className="mb-3 text-muted">
-        {countOf(weeks.length, "week")}, {own.length === 0 ? "no event" : countOf(own.length, "event")}. A dashed edge: held in one region only.
+        {countOf(weeks.length, "week")}, {own.length === 0 ? "no event" : countOf(own.length, "event")}. A dashed bar: held in one region only.
       </p>
       <EventCalendar weeks={weeks} events={own} thisWeek={firstDayOfWeek(today, calendar.weekStart)} onOpen={onOpen} />
     </div>

@@ -2,7 +2,7 @@ import { dayFromNumber, dayNumber } from "@shared/calendar";
 import type { ProductTerms } from "@shared/contract/catalogue-products";
 import { ChartFrame } from "@/components/charts/frame/chart-frame";
 import { BottomAxis, LeftAxis } from "@/components/charts/parts/axes";
-import { roundTicks } from "@/components/charts/scale/round-ticks";
+import { roundStep, ticksByStep } from "@/components/charts/scale/round-ticks";
 import { linearScale } from "@/components/charts/scale/scale";
 import { useChainFormat } from "@/lib/format/chain-format";
 import { useElementWidth } from "@/lib/use-element-width";
@@ -35,7 +35,9 @@ export const TermsChart = ({ terms, today, name }: TermsChartProps) => {
   const from = Math.min(now - 12 * monthDays, ...dated.map((day) => day - monthDays));
   const until = Math.max(now, ...dated) + 3 * monthDays;
   const values = terms.flatMap(({ unitCost, regularPrice }) => [unitCost, regularPrice]).filter((value) => value !== null);
-  const top = Math.max(...values, 0) * 1.08 || 1;
+  const most = Math.max(...values, 0) || 1;
+  const step = roundStep(0, most, 4);
+  const top = Math.ceil(most / step + 0.05) * step;
   const x = linearScale({ domain: [from, until], range: [margin.left, width - margin.right] });
   const y = linearScale({ domain: [0, top], range: [height - margin.bottom, margin.top] });
   const at = ({ validFrom }: ProductTerms) => Math.max(from, dayNumber(validFrom));
@@ -50,7 +52,7 @@ export const TermsChart = ({ terms, today, name }: TermsChartProps) => {
     <ChartFrame title={title} heading="Regular price, tax included, and cost, net of tax" table={table} height={height} legend={<Legend />}>
       <div ref={plot} style={{ height }}>
         <svg width={width} height={height} role="img" aria-label={title}>
-          <LeftAxis scale={y} ticks={roundTicks(0, top, 4).map((value) => ({ value, label: format.price(value) }))} left={margin.left - 4} right={width - margin.right} />
+          <LeftAxis scale={y} ticks={ticksByStep(0, top, step).map((value) => ({ value, label: format.price(value) }))} left={margin.left - 4} right={width - margin.right} />
           <BottomAxis scale={x} ticks={quarterTicks(from, until)} y={height - margin.bottom} />
           <line className="chart-reference" x1={x.toPixel(now)} x2={x.toPixel(now)} y1={margin.top} y2={height - margin.bottom} />
           <text className="chart-text" x={x.toPixel(now)} y={margin.top - 7} textAnchor="middle">today</text>
