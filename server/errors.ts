@@ -5,6 +5,8 @@ export class ProblemError extends Error {
   readonly errors?: { path: string; message: string }[];
   /** Extra response headers, for example Retry-After. */
   readonly headers?: Record<string, string>;
+  /** Whether it may be gone at the next try, so that a job is worth one. */
+  readonly isPassing: boolean;
 
   constructor(problem: {
     status: number;
@@ -14,6 +16,7 @@ export class ProblemError extends Error {
     detail: string;
     errors?: { path: string; message: string }[];
     headers?: Record<string, string>;
+    isPassing?: boolean;
   }) {
     super(problem.detail);
     this.name = "ProblemError";
@@ -21,6 +24,7 @@ export class ProblemError extends Error {
     this.code = problem.code;
     this.errors = problem.errors;
     this.headers = problem.headers;
+    this.isPassing = problem.isPassing ?? false;
   }
 }
 

@@ -6,6 +6,8 @@ import type { SendInTransaction } from "./pg-boss-queue";
 const heartbeatEveryMs = 2_000;
 const progressEveryMs = 250;
 
+type Standing = { done: number; total: number | null; message: string };
+
 /** Thrown by `progress` where the job is no longer this worker's. */
 export class LeaseLost extends Error {}
 
@@ -28,6 +30,8 @@ export class JobLease {
   readonly #heartbeat: NodeJS.Timeout;
   readonly #abort = new AbortController();
   #lastProgress = 0;
+  /** How far it is, where that was not written because the last time was just before. */
+  #unwritten: Standing | undefined;
   #lost = false;
   #cancelRequested = false;
 
@@ -53,8 +57,12 @@ export class JobLease {
     if (this.#lost) throw new LeaseLost();
     if (this.#cancelRequested) throw new JobCancelled();
     const now = Date.now();
-    if (now - this.#lastProgress < progressEveryMs && done !== total) return;
+    if (now - this.#lastProgress < progressEveryMs && done !== total) {
+      this.#unwritten = { done, total, message };
+      return;
+    }
     this.#lastProgress = now;
+    this.#unwritten = undefined;
     const { rows } = await this.#services.pool.query<{ cancel_requested: boolean }>(
       `update jobs set done = $3, total = $4, message = $5, heartbeat_at = now()
        where id = $1 and attempt = $2 and state = 'running' returning cancel_requested`,
@@ -101,9 +109,12 @@ export class JobLease {
 
   async #beat(): Promise<void> {
     try {
+      const { done, total, message } = this.#unwritten ?? {};
+      this.#unwritten = undefined;
       const { rows } = await this.#services.pool.query<{ cancel_requested: boolean }>(
-        `update jobs set heartbeat_at = now() where id = $1 and attempt = $2 and state = 'running' returning cancel_requested`,
-        [this.job.id, this.job.attempt],
+        `update jobs set heartbeat_at = now(), done = coalesce($3, done), total = coalesce($4, total), message = coalesce($5, message)
+         where id = $1 and attempt = $2 and state = 'running' returning cancel_requested`,
+        [this.job.id, this.job.attempt, done, total, message?.slice(0, 200)],
       );
       if (rows.length === 0) this.lose();
       if (!rows[0]?.cancel_requested || this.#cancelRequested) return;

@@ -168,9 +168,10 @@ export class JobRunner {
 /** Woken early by the stop, which rejects. */
 const pause = (ms: number, signal: AbortSignal): Promise<void> => sleep(ms, undefined, { signal }).catch(() => undefined);
 
-/** A problem we name ourselves will be the same next time. */
+/** A problem we name ourselves will be the same next time, unless it says that it passes. */
 function mayTryAgain(definition: JobDefinition, job: TakenJob, error: unknown): boolean {
-  return !(error instanceof ProblemError) && job.failures < (definition.retryLimit ?? defaultRetryLimit);
+  const mayPass = !(error instanceof ProblemError) || error.isPassing;
+  return mayPass && job.failures < (definition.retryLimit ?? defaultRetryLimit);
 }
 
 function delaySecondsOf(definition: JobDefinition, job: TakenJob): number {

@@ -1,7 +1,8 @@
-import { DeleteObjectCommand, GetObjectCommand, HeadBucketCommand, S3Client } from "@aws-sdk/client-s3";
+import { DeleteObjectCommand, GetObjectCommand, HeadBucketCommand, S3Client, S3ServiceException } from "@aws-sdk/client-s3";
 import { Upload } from "@aws-sdk/lib-storage";
 import type { Readable } from "node:stream";
 import type { Environment } from "../environment";
+import { ProblemError } from "../errors";
 
 /** Keeps files unchanged under a key. */
 export type FileStore = {
@@ -10,9 +11,9 @@ export type FileStore = {
    * body with an error: nothing is kept, and the promise is rejected with that error once what was sent is removed.
    */
   put: (file: { key: string; body: Readable; contentType: string }) => Promise<void>;
-  /** The bytes as they were stored. */
+  /** The bytes as they were stored. @throws ProblemError 503 where the store cannot be reached. */
   get: (key: string) => Promise<Readable>;
-  /** The first bytes of a file; fewer where it is shorter. No more than these are asked for. */
+  /** The first bytes of a file; fewer where it is shorter. No more than these are asked for. @throws ProblemError as `get`. */
   head: (key: string, bytes: number) => Promise<Buffer>;
   /** Removes a file; one that is not there is no error. */
   remove: (key: string) => Promise<void>;
@@ -45,6 +46,10 @@ export function createFileStore(environment: Environment): FileStore {
     requestChecksumCalculation: "WHEN_REQUIRED",
     responseChecksumValidation: "WHEN_REQUIRED",
   });
+  const read = (key: string, range?: string) =>
+    client.send(new GetObjectCommand({ Bucket: bucket, Key: key, Range: range })).catch((error: unknown) => {
+      throw isAnswer(error) ? error : unreachable();
+    });
   return {
     async put({ key, body, contentType }) {
       const upload = new Upload({ client, params: { Bucket: bucket, Key: key, Body: body, ContentType: contentType } });
@@ -56,12 +61,12 @@ export function createFileStore(environment: Environment): FileStore {
       }
     },
     async get(key) {
-      const { Body } = await client.send(new GetObjectCommand({ Bucket: bucket, Key: key }));
+      const { Body } = await read(key);
       if (!Body) throw new Error(`The file store has no body for ${key}.`);
       return Body as Readable;
     },
     async head(key, bytes) {
-      const { Body } = await client.send(new GetObjectCommand({ Bucket: bucket, Key: key, Range: `bytes=0-${bytes - 1}` }));
+      const { Body } = await read(key, `bytes=0-${bytes - 1}`);
       if (!Body) throw new Error(`The file store has no body for ${key}.`);
       return firstBytes(Body as Readable, bytes);
     },
@@ -74,3 +79,13 @@ export function createFileStore(environment: Environment): FileStore {
     close: () => client.destroy(),
   };
 }
+
+/** Whether the store itself said no, for example because there is no such file. */
+const isAnswer = (error: unknown) =>
+  error instanceof S3ServiceException && error.$metadata.httpStatusCode !== undefined && error.$metadata.httpStatusCode < 500;
+
+const unreachable = () =>
+  new ProblemError({
+    status: 503, code: "file-store-unavailable", isPassing: true,
+    detail: "The file store does not answer, so the file cannot be read. Nothing was changed; try again in a minute.",
+  });
