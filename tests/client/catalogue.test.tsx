@@ -146,9 +146,9 @@ describe("the stores of the catalogue", () => {
     const sent = serving({ refuse: ({ method }) => (method === "DELETE" ? refusal(409, "S1 cannot be removed: sales of it are loaded.") : undefined) });
     renderRouted(<StoresPage />);
     await userEvent.click(await screen.findByRole("button", { name: "Harbour Street" }));
-    await userEvent.click(dialog().getByRole("button", { name: "Remove the store" }));
+    await userEvent.click(dialog().getByRole("button", { name: "Remove" }));
     expect(sent).toEqual([]);
-    await userEvent.click(dialog().getByRole("button", { name: "Remove the store" }));
+    await userEvent.click(dialog().getByRole("button", { name: "Remove" }));
     expect(await dialog().findByText(/sales of it are loaded/)).toBeTruthy();
     expect(sent).toMatchObject([{ method: "DELETE", address: "/api/stores/S1", headers: { "If-Match": '"one"' } }]);
   });
