@@ -10,7 +10,7 @@ import { detectLinesAbove } from "./detect-lines-above";
 import { detectNumbers } from "./detect-numbers";
 import { commonest, detectSeparator } from "./detect-separator";
 import { detectTax } from "./detect-tax";
-import { longestName, mostColumns, shareOf, type Detected, type LayoutWarning } from "./detected";
+import { longestName, mostColumns, namesIn, shareOf, type Detected, type LayoutWarning } from "./detected";
 import { mappingWarnings } from "./mapping-warnings";
 import { proposeByValues } from "./propose-by-values";
 import { knownNames, proposeByName, type Proposal } from "./propose-mapping";
@@ -106,7 +106,7 @@ function readTable(head: Uint8Array, given: NonNullable<DetectionOptions["given"
 function namesOf(records: readonly string[][], hasHeader: boolean): string[] {
   const [first = []] = records;
   const width = commonest(records.map(({ length }) => length));
-  const names = hasHeader ? first.map((name) => name.trim().slice(0, longestName)) : Array.from({ length: width }, () => "");
+  const names = hasHeader ? namesIn(first) : Array.from({ length: width }, () => "");
   return names.length > 0 ? names.slice(0, mostColumns) : [""];
 }
 

@@ -17,6 +17,11 @@ export const headBytes = 64 * 1024;
 export const mostColumns = 500;
 export const longestName = 200;
 
+/** A header's fields as the names that layouts keep. */
+export function namesIn(header: readonly string[]): string[] {
+  return header.slice(0, mostColumns).map((name) => name.trim().slice(0, longestName));
+}
+
 /** The share of a list for which something holds; 0 for an empty list. */
 export function shareOf<Item>(items: readonly Item[], holds: (item: Item) => boolean): number {
   return items.length === 0 ? 0 : items.filter(holds).length / items.length;

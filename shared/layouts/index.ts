@@ -6,7 +6,7 @@ export { defaultWords } from "./default-words";
 export { decodeHead, detectEncoding } from "./detect-encoding";
 export { detectLayout } from "./detect-layout";
 export type { DetectedColumn, DetectedLayout, DetectionOptions, LayoutConfidence } from "./detect-layout";
-export { headBytes } from "./detected";
+export { headBytes, namesIn } from "./detected";
 export type { LayoutWarning } from "./detected";
 export { isGtin } from "./gtin";
 export { LayoutError } from "./layout-error";

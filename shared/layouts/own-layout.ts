@@ -1,7 +1,7 @@
 import { extractColumns } from "../contract/extract-columns";
 import type { ExtractKind } from "../contract/extract-kinds";
 import type { Layout, WordLists } from "../contract/layouts";
-import { longestName, mostColumns } from "./detected";
+import { namesIn } from "./detected";
 
 const noWords: WordLists = { yes: [], no: [], none: [], feature: [], display: [], feature_and_display: [], price_cut: [], multi_buy: [], coupon: [], other: [] };
 
@@ -13,7 +13,7 @@ const noWords: WordLists = { yes: [], no: [], none: [], feature: [], display: []
  * @example ownLayout("stores", ["Name", "store", "region"])?.mapping.name // { from: "name", name: "Name" }
  */
 export function ownLayout(kind: ExtractKind, names: readonly string[]): Layout | null {
-  const theirColumns = names.slice(0, mostColumns).map((name) => name.trim().slice(0, longestName));
+  const theirColumns = namesIn(names);
   const mapping: Layout["mapping"] = {};
   for (const { name: column, needed } of extractColumns[kind]) {
     const [found, again] = theirColumns.filter((name) => name.toLowerCase() === column);

@@ -2,7 +2,7 @@ import { dayOfWeek } from "../calendar";
 import type { Encoding, Layout } from "../contract/layouts";
 import { applyLayout } from "./apply-layout";
 import { detectEncoding, isAscii } from "./detect-encoding";
-import { headBytes, shareOf } from "./detected";
+import { headBytes, namesIn, shareOf } from "./detected";
 import { normalName } from "./normal-name";
 import { readHead, recordsOf } from "./read-head";
 
@@ -58,7 +58,7 @@ function fitOf(layout: Layout, head: Uint8Array): Fit | null {
   const [first, ...below] = text ? recordsOf(text, layout.separator) : [];
   if (!first) return null;
   if (!layout.hasHeader) return fitByValues(layout, [first, ...below]);
-  const theirColumns = first.map((name) => name.trim());
+  const theirColumns = namesIn(first);
   const order = orderOf(theirColumns, layout);
   if (!order) return null;
   const unreadable = unreadableShare(layout, theirColumns, below);

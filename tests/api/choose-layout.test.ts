@@ -1,8 +1,12 @@
+import fc from "fast-check";
 import { describe, expect, it } from "vitest";
 import type { Layout } from "@shared/contract/layouts";
 import { detectLayout } from "@shared/layouts";
 import { chooseLayout } from "../../server/features/extracts/layouts/choose-layout";
+import { UnreadableFile } from "../../server/features/extracts/read/unreadable-file";
 import { layoutNeeded } from "../../server/features/extracts/layouts/layout-needed";
+import { previewLayout } from "../../server/features/extracts/layouts/preview-layout";
+import { bytesIn } from "../layouts/bytes-in";
 import { good } from "../support/nasty-files";
 import { salesFile, salesHeader, storesFile } from "../support/extracts";
 
@@ -67,5 +71,29 @@ describe("columns that a layout lacks are named", () => {
 
   it("and none where all are there", () => {
     expect(needed(salesFile(good("2026-06-01")))).toBeUndefined();
+  });
+});
+
+describe("whatever a file's head holds", () => {
+  const piece = fc.constantFrom("week", "store", "units", "\ud83c\udf4e", "\u05d7", "01/06/2026", "2026-06-01", "0100-01-03", "9999-12-31", "46174", "1.234,5", "-", "\"", "sep=;", ";", ";", ",", "\t", "|", "\n", "\n", "\r\n", " ", "\0", "=", "E+12");
+  const heads = fc.oneof(
+    fc.tuple(fc.constantFrom("utf-8" as const, "utf-16le" as const, "utf-16be" as const), fc.array(piece, { maxLength: 60 })).map(([encoding, pieces]) => bytesIn(encoding, pieces.join(""))),
+    fc.uint8Array({ maxLength: 200 }),
+  );
+
+  it("it is chosen how to read it, and shown, or said why it cannot be read", async () => {
+    await fc.assert(fc.asyncProperty(heads, fc.constantFrom("first" as const, "last" as const), async (head, weekDay) => {
+      let layout: Layout;
+      try {
+        ({ layout } = chooseLayout(head, { kind: "sales", saved: [], weekStart: 1 }));
+      } catch (error) {
+        expect(error).toBeInstanceOf(UnreadableFile);
+        return;
+      }
+      layoutNeeded(head, layout);
+      const preview = await previewLayout(head, { layout: { ...layout, weekDay }, calendar: { kind: "iso", weekStart: 1 } });
+      expect(preview.fileColumns).toHaveLength(layout.theirColumns.length);
+      for (const { values } of preview.rows) expect(values).toHaveLength(preview.columns.length);
+    }), { numRuns: 1_500 });
   });
 });

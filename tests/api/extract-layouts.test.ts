@@ -6,7 +6,7 @@ import type { Extract, ExtractIssue } from "@shared/contract/extracts";
 import type { Layout } from "@shared/contract/layouts";
 import type { ExtractLayout, LayoutPreview, SavedLayout } from "@shared/contract/saved-layouts";
 import { missingMeansIn, weeksWhereMissingMeansZero } from "../../server/features/extracts";
-import { act, afterJob, checked, loadCatalogue, loaded, read, salesFile, startExtractsApp, storedSales, upload, type ExtractsApp } from "../support/extracts";
+import { act, afterJob, checked, checkedDirectly, loadCatalogue, loadCatalogueDirectly, loaded, read, salesFile, startExtractsApp, storedSales, upload, type ExtractsApp } from "../support/extracts";
 import { bearerOf } from "../support/people";
 import { expectProblem } from "../support/problems";
 
@@ -159,6 +159,14 @@ describe("tax that a file leaves out", () => {
       { code: "P1", net_sales: "21.6590", regular_price: "2.1659", price: "2.1659" },
       { code: "P2", net_sales: "6.7853", regular_price: "2.7141", price: "2.7141" },
     ]);
+  });
+
+  it("is added to the regular price of a product by the rate in its row", async () => {
+    const file = "product;name;category;regular price;tax rate\nT1;Tea;drinks;2,0001;21 %\nT2;Salt;pantry;1,10;\n";
+    const extract = await checked(test, { kind: "products", file });
+    await load(await confirmed(extract, { changes: { tax: "excluded" } }));
+    const { rows } = await test.services.pool.query("select code, regular_price::text, tax_rate::text from product_terms join products p on p.id = product_id where code like 'T%' order by code");
+    expect(rows).toEqual([{ code: "T1", regular_price: "2.4201", tax_rate: "0.2100" }, { code: "T2", regular_price: "1.1000", tax_rate: "0.0000" }]);
   });
 
   it("leaves no room for amounts that could not be kept with it", async () => {
@@ -332,5 +340,24 @@ describe("routes of layouts", () => {
     const own = await loaded(test, { file: salesFile("2026-03-02,S4,P2,12,29.88,2.49,,0,0,none") });
     const { layout } = await layoutOf(own);
     expectProblem(await put(`/api/extracts/${own.id}/layout`, { layout }), 409, "layout-fixed");
+  });
+});
+
+describe("between a new layout and the check by it", () => {
+  it("there is nothing to load, and the layout can be changed again", async () => {
+    const idle = await startExtractsApp({ worker: false });
+    try {
+      await loadCatalogueDirectly(idle);
+      const { id } = await checkedDirectly(idle, { file: german("31.05.2026;S3;P1;1,5;2,69;1,79") });
+      const { body } = await read(idle, `/api/extracts/${id}/layout`).expect(200);
+      const choose = (layout: Layout) => request(idle.app).put(`/api/extracts/${id}/layout`).set("Authorization", idle.dataAdmin).send({ layout });
+      const { body: first } = await choose(body.layout).expect(202);
+      expect((await read(idle, `/api/extracts/${id}`)).body).toMatchObject({ state: "received", rows: null, layout: { origin: "chosen", isConfirmed: true }, may: { load: false } });
+      expectProblem(await act(idle, `/api/extracts/${id}/load`), 409, "not-checked");
+      const { body: second } = await choose({ ...body.layout, weekDay: "first" }).expect(202);
+      expect(second.jobId).toBe(first.jobId);
+    } finally {
+      await idle.stop();
+    }
   });
 });

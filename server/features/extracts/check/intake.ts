@@ -1,6 +1,6 @@
 import type { ExtractKind } from "@shared/contract/extract-kinds";
 import type { Layout, Separator } from "@shared/contract/layouts";
-import { applyLayout, LayoutError, type OurRecord } from "@shared/layouts";
+import { applyLayout, LayoutError, namesIn, type OurRecord } from "@shared/layouts";
 import type { Header } from "../read/read-header";
 import { readHeader } from "../read/read-header";
 import { UnreadableFile } from "../read/unreadable-file";
@@ -34,7 +34,7 @@ export function intakeOf({ kind, layout, first }: { kind: ExtractKind; layout: L
 }
 
 function intakeByLayout(layout: Layout, first: readonly string[]): Intake {
-  const names = layout.hasHeader ? first.map((name) => name.trim()) : layout.theirColumns;
+  const names = layout.hasHeader ? namesIn(first) : layout.theirColumns;
   const { columns, positions, read } = applied(layout, names);
   const columnNames = columns.flatMap((column, at): [string, string][] => {
     const position = positions[at] ?? null;
@@ -43,7 +43,7 @@ function intakeByLayout(layout: Layout, first: readonly string[]): Intake {
   });
   return {
     header: {
-      positions: new Map(columns.map((column, at) => [column, at])), width: names.length, theirPositions: positions,
+      positions: new Map(columns.map((column, at) => [column, at])), width: layout.hasHeader ? first.length : names.length, theirPositions: positions,
       amountLimit: layout.tax === "excluded" ? mostWithoutTax : undefined,
     },
     columnNames: new Map(columnNames), unknown: [], separator: layout.separator, read,

@@ -83,6 +83,8 @@ export async function putExtractLayout(em: EntityManager, { services, extractId,
     await layoutInForceOf(inner, locked);
     const saved = saveAs === undefined ? null : await saveLayoutAs(inner, { name: saveAs, layout: complete, actor, now: services.now() });
     inner.assign(locked, { layoutOrigin: saved ? "saved" : "chosen", layoutInForce: complete, savedLayout: saved, layoutConfirmed: true }, { mergeObjectProperties: false });
+    // What was found by another layout counts no more: until the new check has ended there is nothing to load.
+    Object.assign(locked, { state: "received", failure: null, rowsRead: null, rowsUsable: null, errorCount: null, warningCount: null, checkedAt: null } satisfies Partial<Extract>);
     audit(inner, { ...actor, action: "extract.layout-chosen", subject: { kind: "extract", id: extractId }, detail: { fileName: locked.fileName, savedAs: saveAs ?? null, layout: complete } });
     return enqueueCheck(inner, { services, extract: locked, personId: actor.personId });
   });
