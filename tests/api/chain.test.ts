@@ -36,6 +36,9 @@ describe("the chain's settings", () => {
       temperatureUnit: "celsius",
       intervalLevel: 0.8,
       uploadLimitBytes: 2_147_483_648,
+      secondLookShare: 0.25,
+      salesDueDay: 1,
+      salesDueHour: 12,
     });
     expectProblem(await request(test.app).get("/api/chain"), 401, "not-signed-in");
   });
@@ -99,6 +102,9 @@ describe("the chain's settings", () => {
     [{ weekStart: 7 }],
     [{ intervalLevel: 1 }],
     [{ uploadLimitBytes: 0 }],
+    [{ secondLookShare: 1.1 }],
+    [{ salesDueDay: 7 }],
+    [{ salesDueHour: 24 }],
     [{ name: "" }],
     [{ calendar: "weekly" }],
     [{ temperatureUnit: "kelvin" }],

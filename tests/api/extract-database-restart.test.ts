@@ -25,7 +25,6 @@ afterAll(async () => {
 afterEach(() => store.recover());
 
 const patience = { timeout: 90_000, interval: 100 };
-const environment = () => ({ ...test.services.environment, LOG_LEVEL: "silent" as const });
 /** Right after a restart a connection of before may be tried once more. */
 const extractOf = (id: string): Promise<Extract> => vi.waitFor(async () => (await read(test, `/api/extracts/${id}`).expect(200)).body as Extract, patience);
 const becomes = (id: string, state: Extract["state"]) => vi.waitFor(async () => expect(await extractOf(id)).toMatchObject({ state, failure: null }), patience);
@@ -37,7 +36,7 @@ describe("a database server that breaks down", { timeout: 240_000 }, () => {
     const rows = Array.from({ length: 4_000 }, (_, at) => sale("2026-06-01", at < 4 ? `S${at + 1}` : "S9"));
     const { body } = await upload(test, { file: salesFile(...rows) }).expect(202);
     store.stallAfter(100_000);
-    await whileWorking(environment(), async () => {
+    await whileWorking(test.services, async () => {
       await vi.waitFor(() => expect(store.isStalling()).toBe(true), patience);
       await cluster.breakDown();
       expect(await extractOf(body.id)).toMatchObject({ state: "checking", rows: null });
@@ -51,8 +50,8 @@ describe("a database server that breaks down", { timeout: 240_000 }, () => {
     const { id } = await checkedDirectly(test, { name: "a.csv", file: salesFile(sale("2026-06-01", "S1"), sale("2026-06-08", "S1"), sale("2026-06-08", "S9")) });
     const before = await storedSales(test);
     await act(test, `/api/extracts/${id}/load`).expect(202);
-    const wall = await barrierAt(environment().DATABASE_URL, { table: "audit_entries", mode: "access exclusive" });
-    await whileWorking(environment(), async () => {
+    const wall = await barrierAt(test.services.environment.DATABASE_URL, { table: "audit_entries", mode: "access exclusive" });
+    await whileWorking(test.services, async () => {
       await vi.waitFor(async () => expect(await wall.someoneWaits()).toBe(true), patience);
       await cluster.breakDown();
       expect(await extractOf(id)).toMatchObject({ state: "loading", loadedAt: null });

@@ -1,26 +1,23 @@
 import type { ChildProcess } from "node:child_process";
 import { afterAll, afterEach, beforeAll, beforeEach, describe, expect, it, vi } from "vitest";
 import type { Extract } from "@shared/contract/extracts";
-import type { Environment } from "../../server/environment";
 import { loadExtract } from "../../server/features/extracts";
 import { JobEntity } from "../../server/features/jobs";
 import { barrierAt, barrierAtSuccess, type Barrier } from "../support/faults/barrier";
 import { startFaultyStore, type FaultyStore } from "../support/faults/faulty-store";
 import { whileWorking, withSuccessor } from "../support/faults/real-worker";
-import { act, checkedDirectly, loadCatalogueDirectly, read, salesFile, startExtractsApp, storedSales, testToday, upload, type ExtractsApp } from "../support/extracts";
+import { act, checkedDirectly, loadCatalogueDirectly, read, salesFile, startExtractsApp, storedSales, upload, type ExtractsApp } from "../support/extracts";
 import { hasEnded, waitForJob } from "../support/jobs";
 import { endProcess } from "../support/worker-process";
 
 let test: ExtractsApp;
 let store: FaultyStore;
-let environment: Environment;
 
 beforeAll(async () => {
   const storeUrl = process.env.TEST_S3_ENDPOINT ?? "";
   store = await startFaultyStore(storeUrl);
   vi.stubEnv("TEST_S3_ENDPOINT", store.url);
   test = await startExtractsApp({ worker: false });
-  environment = { ...test.services.environment, LOG_LEVEL: "silent" };
   await loadCatalogueDirectly(test);
 });
 afterAll(async () => {
@@ -42,7 +39,7 @@ afterEach(async () => {
 });
 
 const barrier = async (table: string, mode: "share" | "access exclusive") => {
-  const made = await barrierAt(environment.DATABASE_URL, { table, mode });
+  const made = await barrierAt(test.services.environment.DATABASE_URL, { table, mode });
   barriers.push(made);
   return made;
 };
@@ -50,7 +47,7 @@ const patience = { timeout: 60_000, interval: 50 };
 const extractOf = async (id: string): Promise<Extract> => (await read(test, `/api/extracts/${id}`).expect(200)).body;
 const jobOf = (id: string) => test.services.orm.em.fork().findOneOrFail(JobEntity, { id });
 const ended = (jobId: string) => waitForJob(test.services, jobId, (job) => hasEnded(job) && !job.cleanupPending, 60_000);
-const succeed = (run: () => Promise<void>) => withSuccessor(environment, { now: () => testToday, run });
+const succeed = (run: () => Promise<void>) => withSuccessor(test.services, run);
 
 const sale = (week: string, store: string, units = 10) => `${week},${store},P1,${units},${(units * 1.79).toFixed(2)},1.79,,0,0,none`;
 const weeks = ["2026-05-25", "2026-06-01", "2026-06-08"];
@@ -81,7 +78,7 @@ describe("a worker that is killed (kill -9)", { timeout: 150_000 }, () => {
   it("in the middle of reading a file leaves it being checked, with no row staged, and another checks it wholly", async () => {
     const { body } = await upload(test, { file: longFile }).expect(202);
     store.stallAfter(100_000);
-    await whileWorking(environment, (worker) => killAt(worker, async () => store.isStalling()));
+    await whileWorking(test.services, (worker) => killAt(worker, async () => store.isStalling()));
     expect(await extractOf(body.id)).toMatchObject({ state: "checking", rows: null, may: { load: false } });
     expect((await test.services.pool.query("select 1 from pg_tables where schemaname = 'staging'")).rows).toEqual([]);
     await store.recover();
@@ -94,7 +91,7 @@ describe("a worker that is killed (kill -9)", { timeout: 150_000 }, () => {
   it("when it compares rows with what is there leaves the file being checked, and another checks it", async () => {
     const { body } = await upload(test, { file }).expect(202);
     const wall = await barrier("weekly_sales", "access exclusive");
-    await whileWorking(environment, (worker) => killAt(worker, wall.someoneWaits));
+    await whileWorking(test.services, (worker) => killAt(worker, wall.someoneWaits));
     expect(await extractOf(body.id)).toMatchObject({ state: "checking", rows: null });
     await wall.lift();
     await succeed(async () => {
@@ -111,7 +108,7 @@ describe("a worker that is killed (kill -9)", { timeout: 150_000 }, () => {
     const { id } = await checkedDirectly(test, { name: "a.csv", file });
     const { body } = await act(test, `/api/extracts/${id}/load`).expect(202);
     const wall = await barrier(table, mode);
-    await whileWorking(environment, (worker) => killAt(worker, wall.someoneWaits));
+    await whileWorking(test.services, (worker) => killAt(worker, wall.someoneWaits));
     expect(await extractOf(id)).toMatchObject({ state: "loading", loadedAt: null });
     await wall.lift();
     expect(await loadedSales()).toEqual([]);
@@ -126,9 +123,9 @@ describe("a worker that is killed (kill -9)", { timeout: 150_000 }, () => {
   it("when a load counts, but its job does not say so yet, has it said by another, which changes nothing", async () => {
     const { id } = await checkedDirectly(test, { name: "a.csv", file });
     const { body } = await act(test, `/api/extracts/${id}/load`).expect(202);
-    const wall = await barrierAtSuccess(environment.DATABASE_URL, "load-extract");
+    const wall = await barrierAtSuccess(test.services.environment.DATABASE_URL, "load-extract");
     barriers.push(wall);
-    await whileWorking(environment, (worker) => killAt(worker, wall.someoneWaits));
+    await whileWorking(test.services, (worker) => killAt(worker, wall.someoneWaits));
     await wall.lift();
     expect(await extractOf(id)).toMatchObject({ state: "loaded" });
     expect(await jobOf(body.jobId)).toMatchObject({ state: "running" });
@@ -151,7 +148,7 @@ describe("a worker that is killed (kill -9)", { timeout: 150_000 }, () => {
     const loaded = await loadedSales();
     const { body } = await act(test, `/api/extracts/${id}/withdraw`).expect(202);
     const wall = await barrier("audit_entries", "access exclusive");
-    await whileWorking(environment, (worker) => killAt(worker, wall.someoneWaits));
+    await whileWorking(test.services, (worker) => killAt(worker, wall.someoneWaits));
     await wall.lift();
     expect(await extractOf(id)).toMatchObject({ state: "loaded" });
     expect(await loadedSales()).toEqual(loaded);
@@ -167,7 +164,7 @@ describe("a worker that is killed (kill -9)", { timeout: 150_000 }, () => {
     const { id } = await checkedDirectly(test, { name: "a.csv", file });
     await loadExtract(test.services, { extractId: id });
     const wall = await barrier("store_weeks", "share");
-    await whileWorking(environment, (worker) => killAt(worker, wall.someoneWaits));
+    await whileWorking(test.services, (worker) => killAt(worker, wall.someoneWaits));
     await wall.lift();
     expect((await read(test, "/api/coverage").expect(200)).body.isBehind).toBe(true);
     await succeed(expectCounted);
