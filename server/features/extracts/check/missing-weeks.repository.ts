@@ -1,5 +1,5 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
-import { weeksOf, type WeekRange } from "../load/sales-columns";
+import type { WeekRange } from "../load/sales-columns";
 import type { SalesTogether } from "./sales-together.repository";
 
 /** Rows loaded so many days before the file's first week, or after its last, count as before and after a gap. */
@@ -21,7 +21,7 @@ export async function reportMissingWeeks({ em, table, extractId, log, notes }: S
     "select coalesce(layout_in_force->>'missingMeans' = 'zero', false) as skips from extracts where id = ?", [extractId],
   );
   if (skips) return;
-  const range = await weeksOf({ em, table });
+  const range = notes.weeks;
   if (!range) return;
   const isNear = await hasLoadedNear(em, { range, products: [...notes.prices.products.keys()] });
   // A file without gaps far from all others has nothing to be looked at, and most large files are such.

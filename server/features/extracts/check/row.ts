@@ -106,13 +106,18 @@ export class Column {
     this.#position = row.position(name);
   }
 
-  /** The value as it stands in the file, without blanks around it. */
+  /** The value as it is read, without blanks around it. */
   get raw(): string {
     return this.#row.at(this.#position);
   }
 
+  /** The value as it stands in the file. */
+  get shown(): string {
+    return this.#row.shown(this.#position);
+  }
+
   report(rule: RuleName, more: More = {}): null {
-    this.#row.report({ column: this.name, value: this.#row.shown(this.#position), rule, ...more });
+    this.#row.report({ column: this.name, value: this.shown, rule, ...more });
     return null;
   }
 

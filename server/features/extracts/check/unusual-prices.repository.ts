@@ -1,4 +1,5 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
+import type { WeekRange } from "../load/sales-columns";
 import type { PriceTally } from "./price-tally";
 import type { SalesTogether } from "./sales-together.repository";
 
@@ -17,7 +18,8 @@ type Unusual = { line: number; product: string; column: string; value: string; p
 
 /** Warns of prices far from the product's median, of the loaded ones or, where they are few, of those and the file's. */
 export async function reportUnusualPrices({ em, table, log, notes }: SalesTogether): Promise<void> {
-  const loaded = await loadedPrices(em, { table, products: [...notes.prices.products.keys()] });
+  if (!notes.weeks) return;
+  const loaded = await loadedPrices(em, { range: notes.weeks, products: [...notes.prices.products.keys()] });
   const suspects = suspectsOf(notes.prices, new Map(loaded.map((prices) => [prices.product, prices])));
   if (suspects.length === 0) return;
   const found = await em.execute<Unusual[]>(`
@@ -42,12 +44,7 @@ export async function reportUnusualPrices({ em, table, log, notes }: SalesTogeth
 
 const amount = (value: number) => String(Number(value.toFixed(4)));
 
-async function loadedPrices(em: EntityManager, { table, products }: { table: string; products: number[] }): Promise<Loaded[]> {
-  if (products.length === 0) return [];
-  const [{ first, last }] = await em.execute<[{ first: string | null; last: string | null }]>(
-    `select (min(week) - ${reachDays})::text as first, (max(week) + ${reachDays})::text as last from ${table}`,
-  );
-  if (first === null || last === null) return [];
+function loadedPrices(em: EntityManager, { range: { first, last }, products }: { range: WeekRange; products: number[] }): Promise<Loaded[]> {
   return em.execute<Loaded[]>(
     `select product.id as product, percentile_cont(0.5) within group (order by loaded.price)::float8 as median,
        case when count(*) < ${enoughLoaded} then json_agg(loaded.price::float8) end as prices
@@ -55,7 +52,7 @@ async function loadedPrices(em: EntityManager, { table, products }: { table: str
      cross join lateral (
        select price from weekly_sales sales
        where sales.product_id = product.id and sales.price_source in ('shelf', 'paid')
-         and sales.week between date '${first}' and date '${last}'
+         and sales.week between date '${first}' - ${reachDays} and date '${last}' + ${reachDays}
        limit ${mostLoaded}
      ) loaded
      group by product.id`,

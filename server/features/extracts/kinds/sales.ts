@@ -82,7 +82,8 @@ type ReadCells = {
 const numberOf = (value: string | null) => (value === null ? null : Number(value));
 
 /** Checks what the values of a row say together, and takes its price down. */
-function senseChecker({ row, codes: { storeDays }, notes: { prices } }: ReaderContext) {
+function senseChecker({ row, codes: { storeDays }, notes }: ReaderContext) {
+  const { prices } = notes;
   const [week, openDays] = [row.column("week"), row.column("open_days")];
   const [netSales, shelfPrice, unitCost] = [row.column("net_sales"), row.column("shelf_price"), row.column("unit_cost")];
   return (cells: ReadCells) => {
@@ -96,11 +97,12 @@ function senseChecker({ row, codes: { storeDays }, notes: { prices } }: ReaderCo
     checkNetSales(netSales, money);
     checkUnitCost(unitCost, money);
     const price = money.shelfPrice ?? paidPrice(money);
-    if (cells.product === null || row.hasError) return;
+    if (cells.product === null || cells.week === null || row.hasError) return;
+    notes.addWeek(cells.week);
     const ofProduct = prices.of(cells.product);
     if (price === null || !ofProduct.add(price)) return;
     const column = money.shelfPrice === null ? netSales : shelfPrice;
-    prices.remember({ line: row.line, column: column.name, value: column.raw });
+    prices.remember({ line: row.line, column: column.name, value: column.shown });
   };
 }
 

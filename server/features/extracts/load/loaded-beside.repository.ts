@@ -17,7 +17,8 @@ export async function newWeeksBeside({ em, table }: StagedRows, newWeeks: readon
   const loaded = await unitsBefore(em, { first, last });
   if (new Set(loaded.map(({ week }) => week)).size < fewestWeeks) return [];
   const ofFile = await em.execute<StoreWeek[]>(
-    `select week::text as week, store_id as "storeId", sum(units)::float8 as units from ${table} group by week, store_id`,
+    `select week::text as week, store_id as "storeId", sum(units)::float8 as units from ${table}
+     where week between date '${first}' and date '${last}' group by week, store_id`,
   );
   return besideMeans({ newWeeks, ofFile, loaded });
 }
