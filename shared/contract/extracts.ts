@@ -121,7 +121,8 @@ export const listExtracts = defineEndpoint({
 });
 export const uploadExtract = defineEndpoint({
   method: "POST", path: "/api/extracts", summary: "Upload a file; it is kept unchanged and checked in the background", permission: "extracts:write",
-  multipart: true, body: z.object({ kind: extractKindSchema, layout: z.string().max(80).optional() }),
+  multipart: true,
+  body: z.object({ kind: extractKindSchema, layout: z.string().max(80).optional().describe("Name of the saved layout to read the file by; else its first rows tell how.") }),
   response: extractSchema, status: 202,
 });
 export const getExtract = defineEndpoint({
