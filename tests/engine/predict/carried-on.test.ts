@@ -1,4 +1,4 @@
-import { fitModel, predict } from "@shared/engine";
+import { covarianceQuadratic, designRows, designTransposeTimes, extendModel, fitModel, predict } from "@shared/engine";
 import type { Family, FittedModel, ModelData, TermSpec } from "@shared/engine";
 import { describe, expect, it } from "vitest";
 import { everyKind, everyKindRows, families, inOrder, modelOf } from "../support/every-kind-rows";
@@ -36,12 +36,23 @@ const cases: { name: string; terms: TermSpec[]; copies: ModelData; at: ModelData
 /** Standard errors per unit of the dispersion's root: with more rows there is another dispersion. */
 const unitErrors = (model: FittedModel, at: ModelData) => predict(model, at).standardError.map((error) => error / Math.sqrt(model.dispersion));
 
+/** Variances of sums over all rows but one, which pairs of rows enter. */
+function unitCovariances(model: FittedModel, at: ModelData): number[] {
+  const extended = extendModel(model, at);
+  const { count } = designRows(extended, at);
+  return Array.from({ length: count }, (_, out) => {
+    const gradient = designTransposeTimes(extended, at, Float64Array.from({ length: count }, (__, row) => Number(row !== out) * (row + 1)));
+    return covarianceQuadratic(extended, gradient, gradient) / model.dispersion;
+  });
+}
+
 describe.each(families)("Of a %s model", (family) => {
   it.each(cases)("$name are predicted as if they had been there, and as unsurely", ({ terms, copies, at }) => {
     const model = fitModel(modelOf(family, terms), rows);
     const there = fitModel(modelOf(family, terms, { weights: "weight" }), copies);
     expect(largestDifference(predict(model, at).linearPredictor, predict(there, at).linearPredictor)).toBeLessThan(1e-5);
     expect(largestRelativeDifference(unitErrors(model, at), unitErrors(there, at))).toBeLessThan(1e-4);
+    expect(largestRelativeDifference(unitCovariances(model, at), unitCovariances(there, at))).toBeLessThan(1e-3);
   });
 });
 
