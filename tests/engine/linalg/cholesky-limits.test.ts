@@ -102,6 +102,11 @@ describe("The factorisation that drops columns", () => {
     }
   });
 
+  it("tells a column apart that has a ten thousand millionth of its squares to itself, and not one with a hundredth of that", () => {
+    expect(choleskyDropping(Float64Array.of(1, 0, 1, 1 + 1e-10), 2, null)).toEqual([]);
+    expect(choleskyDropping(Float64Array.of(1, 0, 1, 1 + 1e-12), 2, null)).toEqual([{ column: 1, dependsOn: [0] }]);
+  });
+
   it("names the columns that have a part in one that goes, and no dropped one among them", () => {
     const columns = columnsOf(30, 3);
     const [a, b, c] = [0, 1, 2].map((k) => columns.getColumn(k));
