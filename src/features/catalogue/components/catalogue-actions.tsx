@@ -1,24 +1,25 @@
-import { Download, Plus, Upload } from "lucide-react";
+import { Download, FileDown, Plus, Upload } from "lucide-react";
 import { buttonStyle } from "@/components/ui/button-style";
 import { Button } from "@/components/ui/button";
 import { LinkButton } from "@/components/ui/link-button";
+import { Menu, MenuItem } from "@/components/ui/menu";
 import { paths } from "@/lib/paths";
 
+/** A file in our own form, by its address. */
+type CatalogueFile = { label: string; href: string; name: string };
+
 type CatalogueActionsProps = {
-  /** Address and name of the file in our own form. */
-  file: { href: string; name: string };
+  files: readonly CatalogueFile[];
   /** Whether the person may bring a file in and enter things by hand. */
   mayWrite: boolean;
   /** "Enter a store" */
   enter?: { label: string; onEnter: () => void };
 };
 
-/** What every part of the catalogue offers: its file out, a file in, and a new entry by hand. */
-export const CatalogueActions = ({ file, mayWrite, enter }: CatalogueActionsProps) => (
+/** What every part of the catalogue offers: its files out, a file in, and a new entry by hand. */
+export const CatalogueActions = ({ files, mayWrite, enter }: CatalogueActionsProps) => (
   <>
-    <a href={file.href} download={file.name} className={buttonStyle()}>
-      <Download aria-hidden="true" /> Save as CSV
-    </a>
+    <SaveFiles files={files} />
     {mayWrite && (
       <LinkButton to={paths.extracts.href()}>
         <Upload aria-hidden="true" /> Upload a file
@@ -31,3 +32,31 @@ export const CatalogueActions = ({ file, mayWrite, enter }: CatalogueActionsProp
     )}
   </>
 );
+
+const SaveFiles = ({ files }: { files: readonly CatalogueFile[] }) => {
+  const [first, ...more] = files;
+  if (more.length === 0) {
+    return (
+      <a href={first.href} download={first.name} className={buttonStyle()}>
+        <Download aria-hidden="true" /> Save as CSV
+      </a>
+    );
+  }
+  return (
+    <Menu trigger={<Button><Download aria-hidden="true" /> Save as CSV</Button>}>
+      {files.map((file) => (
+        <MenuItem key={file.name} onSelect={() => fetchFile(file)}>
+          <FileDown aria-hidden="true" /> {file.label}
+        </MenuItem>
+      ))}
+    </Menu>
+  );
+};
+
+/** A menu holds no links, so one is pressed for it. */
+const fetchFile = ({ href, name }: CatalogueFile): void => {
+  const link = document.createElement("a");
+  link.href = href;
+  link.download = name;
+  link.click();
+};

@@ -47,7 +47,7 @@ export const EventsPage = ({ calendar, today }: EventsPageProps) => {
       <PageHeader
         title="Events in the catalogue" heading="Catalogue"
         facts={query.data ? [countOf(codes.length, "event"), countOf(events.length, "occurrence")] : []}
-        actions={<CatalogueActions file={{ href: exportEvents.path, name: "events.csv" }} mayWrite={mayWrite} enter={{ label: "Enter an event", onEnter: () => setOpen({ id: null }) }} />}
+        actions={<CatalogueActions files={[{ label: "Events", href: exportEvents.path, name: "events.csv" }]} mayWrite={mayWrite} enter={{ label: "Enter an event", onEnter: () => setOpen({ id: null }) }} />}
       />
       <CatalogueViews />
       <Sheet flush>

@@ -1,6 +1,8 @@
 import { useQuery } from "@tanstack/react-query";
 import { useMemo, useState } from "react";
 import type { Product } from "@shared/contract/catalogue";
+import { exportFunding } from "@shared/contract/catalogue-funding";
+import { exportListings } from "@shared/contract/catalogue-listings";
 import { exportProducts } from "@shared/contract/catalogue-products";
 import { DataTable } from "@/components/ui/data-table";
 import type { TableColumn } from "@/components/ui/data-table-columns";
@@ -36,6 +38,12 @@ const columnsOf = (format: ChainFormat): TableColumn<Product>[] => [
   { id: "taxRate", header: "Tax", align: "right", value: ({ taxRate }) => taxRate, cell: ({ taxRate }) => taxWords(taxRate, format), from: "md" },
 ];
 
+const files = [
+  { label: "Products and their terms", href: exportProducts.path, name: "products.csv" },
+  { label: "Listings", href: exportListings.path, name: "listings.csv" },
+  { label: "Funding", href: exportFunding.path, name: "funding.csv" },
+];
+
 /** Every product, to be found and entered; each has a page of its own. */
 export const ProductsPage = () => {
   const query = useQuery(productsQuery());
@@ -48,7 +56,7 @@ export const ProductsPage = () => {
       <PageHeader
         title="Products in the catalogue" heading="Catalogue"
         facts={query.data ? [countOf(products.length, "product"), countOf(categories.size, "category", "categories")] : []}
-        actions={<CatalogueActions file={{ href: exportProducts.path, name: "products.csv" }} mayWrite={mayWrite} enter={{ label: "Enter a product", onEnter: () => setIsEntering(true) }} />}
+        actions={<CatalogueActions files={files} mayWrite={mayWrite} enter={{ label: "Enter a product", onEnter: () => setIsEntering(true) }} />}
       />
       <CatalogueViews />
       <Sheet flush>

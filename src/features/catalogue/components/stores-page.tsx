@@ -45,7 +45,7 @@ export const StoresPage = () => {
       <PageHeader
         title="Stores in the catalogue" heading="Catalogue"
         facts={query.data ? [countOf(stores.length, "store"), countOf(regions.length, "region")] : []}
-        actions={<CatalogueActions file={{ href: exportStores.path, name: "stores.csv" }} mayWrite={mayWrite} enter={{ label: "Enter a store", onEnter: () => setOpen({ code: null }) }} />}
+        actions={<CatalogueActions files={[{ label: "Stores", href: exportStores.path, name: "stores.csv" }]} mayWrite={mayWrite} enter={{ label: "Enter a store", onEnter: () => setOpen({ code: null }) }} />}
       />
       <CatalogueViews />
       <Sheet flush>

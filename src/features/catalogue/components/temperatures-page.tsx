@@ -36,7 +36,7 @@ export const TemperaturesPage = (props: TemperaturesPageProps) => {
     <>
       <PageHeader
         title="Temperatures in the catalogue" heading="Catalogue" facts={["Weekly means, by region or for one store"]}
-        actions={<CatalogueActions file={{ href: exportTemperatures.path, name: "temperatures.csv" }} mayWrite={mayWrite} />}
+        actions={<CatalogueActions files={[{ label: "Temperatures", href: exportTemperatures.path, name: "temperatures.csv" }]} mayWrite={mayWrite} />}
       />
       <CatalogueViews />
       <QueryView
