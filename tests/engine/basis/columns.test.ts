@@ -4,7 +4,8 @@ import { checkDistinct, checkSize, fewValuesWarning } from "@shared/engine/basis
 import { learnLevels } from "@shared/engine/basis/levels";
 import { outsideRange, rangeOf } from "@shared/engine/basis/ranges";
 import { columnsOf, termId } from "@shared/engine/basis/term-basis";
-import type { ModelData } from "@shared/engine";
+import { fitModel } from "@shared/engine";
+import type { ModelData, ModelSpec } from "@shared/engine";
 import { seededUniform } from "../support/generator";
 
 const data: ModelData = { price: [1, 2.5, 4], store: ["a", "b", "a"], weekly: Float64Array.of(1, 2, 3) };
@@ -98,6 +99,23 @@ describe("Levels stand in one order however their rows come", () => {
       const learnt = learnLevels({ store: order }, "store", "factor");
       expect(learnt.levels).toEqual(levels);
       expect(order.map((_value, row) => learnt.levels[learnt.index[row]])).toEqual(order.map(String));
+    }
+  });
+});
+
+describe("A factor whose names mix numbers and words", () => {
+  const promotion = ["9", "10", "1a", "100", "99x", "1a", "9", "100", "10", "99x", "9", "1a"];
+  const y = promotion.map((_level, row) => (row * 7) % 5);
+
+  it("has the same reference and coefficients whatever row comes first", () => {
+    const spec: ModelSpec = { response: "y", family: "gaussian", terms: [{ kind: "factor", column: "promotion" }] };
+    const first = fitModel(spec, { promotion, y });
+    expect(first.coefficientNames).toEqual(["intercept", "promotion[9]", "promotion[10]", "promotion[100]", "promotion[1a]", "promotion[99x]"]);
+    for (let start = 1; start < 12; start++) {
+      const turned = <Value>(column: Value[]) => [...column.slice(start), ...column.slice(0, start)];
+      const model = fitModel(spec, { promotion: turned(promotion), y: turned(y) });
+      expect(model.coefficientNames).toEqual(first.coefficientNames);
+      model.coefficients.forEach((value, k) => expect(value).toBeCloseTo(first.coefficients[k], 10));
     }
   });
 });
