@@ -21,7 +21,7 @@ export const defaultFactorSmoothSize = 6;
  */
 export const factorSmooth: BasisKind<FactorSmoothTerm, FactorSmoothBasis> = {
   learn(term, id, data) {
-    const learnt = learnGrid({ ...term, size: term.size ?? defaultFactorSmoothSize, id, role }, data);
+    const learnt = learnGrid({ column: term.column, log: term.log, size: term.size ?? defaultFactorSmoothSize, id, role, coded: true }, data);
     const { levels, index } = learnLevels(data, term.group, groupRole);
     return {
       basis: { kind: "factor-smooth", ...learnt.grid, group: term.group, levels, toCoefficients: partsOf(learnt.grid, learnt.rows, learnt.x) },

@@ -16,7 +16,7 @@ const byRole = "smooth's by";
 /** A smooth per level of the column `by`, all on the knots of the whole column; each is centred over its level's rows. */
 export const levelledSmooth: BasisKind<ScaledSmoothTerm, LevelledSmoothBasis> = {
   learn(term, id, data) {
-    const learnt = learnGrid({ ...term, size: term.size ?? defaultSmoothSize, id, role }, data);
+    const learnt = learnGrid({ column: term.column, log: term.log, size: term.size ?? defaultSmoothSize, id, role, coded: true }, data);
     const { levels, index } = learnLevels(data, term.by, byRole);
     const rows = splinesPerLevel(learnt.rows, index, levels.length);
     const basis: LevelledSmoothBasis = { kind: "levelled-smooth", ...learnt.grid, by: term.by, levels, centring: levelMeans(rows, index, levels.length) };

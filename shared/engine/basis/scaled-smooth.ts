@@ -17,7 +17,7 @@ export type ScaledSmoothTerm = SmoothTerm & { by: string };
  */
 export const scaledSmooth: BasisKind<ScaledSmoothTerm, ScaledSmoothBasis> = {
   learn(term, id, data) {
-    const { grid, rows, seen, observedRange, warnings } = learnGrid({ ...term, size: term.size ?? defaultSmoothSize, id, role }, data);
+    const { grid, rows, seen, observedRange, warnings } = learnGrid({ column: term.column, log: term.log, size: term.size ?? defaultSmoothSize, id, role }, data);
     const basis: ScaledSmoothBasis = { kind: "scaled-smooth", ...grid, by: term.by };
     return { basis, rows: scaleSplines(rows, numberColumn(data, term.by, byRole)), seen, observedRange, warnings };
   },

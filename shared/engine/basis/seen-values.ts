@@ -5,11 +5,45 @@ import type { DistinctValues } from "./distinct-values";
 /**
  * Distinct values of a column, ascending, and how many rows have each. O(n) for few distinct values, else O(n log n).
  *
- * @param values length n. Not changed.
+ * @param values length n. Not changed. known the column's distinct values where they were looked for; null: too many to tell.
  * @example seenNumbers(Float64Array.of(2, 1, 2)); // values 1, 2; counts 1, 2
  */
-export function seenNumbers(values: Float64Array, found = distinctValues(values)): { values: Float64Array; counts: Float64Array } {
+export function seenNumbers(values: Float64Array, known?: DistinctValues | null): { values: Float64Array; counts: Float64Array } {
+  const inserted = known === undefined && values.length <= fewRows ? seenByInsertion(values) : null;
+  if (inserted !== null) return inserted;
+  const found = known === undefined ? distinctValues(values) : known;
   return found === null ? seenBySorting(values) : { values: found.values, counts: found.counts };
+}
+
+/** Up to so many rows, and distinct values among them, a value is soonest put in its place by halving. */
+const fewRows = 1_000;
+const fewValues = 64;
+
+/** Null where there are more distinct values. */
+function seenByInsertion(values: Float64Array): { values: Float64Array; counts: Float64Array } | null {
+  const known = new Float64Array(fewValues);
+  const counts = new Float64Array(fewValues);
+  let used = 0;
+  for (let row = 0; row < values.length; row++) {
+    const value = values[row];
+    let place = 0;
+    for (let end = used; place < end;) {
+      const middle = (place + end) >> 1;
+      if (known[middle] < value) place = middle + 1;
+      else end = middle;
+    }
+    if (place === used || known[place] !== value) {
+      if (used === fewValues) return null;
+      for (let k = used++; k > place; k--) {
+        known[k] = known[k - 1];
+        counts[k] = counts[k - 1];
+      }
+      known[place] = value;
+      counts[place] = 0;
+    }
+    counts[place]++;
+  }
+  return { values: known.slice(0, used), counts: counts.slice(0, used) };
 }
 
 function seenBySorting(values: Float64Array): { values: Float64Array; counts: Float64Array } {

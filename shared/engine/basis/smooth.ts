@@ -11,8 +11,9 @@ export const defaultSmoothSize = 10;
 /** Cubic B-splines on equally spaced knots over the observed range, a little widened (Eilers & Marx 1996). */
 export const smooth: BasisKind<SmoothTerm, SmoothBasis> = {
   learn(term, id, data) {
-    const { grid, rows, seen, observedRange, warnings } = learnGrid({ ...term, size: term.size ?? defaultSmoothSize, id, role }, data);
-    return { basis: { kind: "smooth", ...grid, centring: new Float64Array(grid.size) }, rows, seen, observedRange, warnings };
+    const { grid, rows, seen, observedRange, warnings } = learnGrid({ column: term.column, log: term.log, size: term.size ?? defaultSmoothSize, id, role }, data);
+    const { column, log, size, lower, upper } = grid;
+    return { basis: { kind: "smooth", column, log, size, lower, upper, centring: new Float64Array(size) }, rows, seen, observedRange, warnings };
   },
   rows: (basis, data) => gridRows(basis, data, role),
   logSlopeRows: (basis, data) => gridLogSlopes(basis, data, role),

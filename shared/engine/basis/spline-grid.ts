@@ -17,8 +17,8 @@ export type LearntGrid = {
   rows: SplineRows;
   x: Float64Array;
   seen: { values: Float64Array; counts: Float64Array };
-  /** With each row's code; null where there are too many to tell. */
-  distinct: DistinctValues | null;
+  /** With each row's code, where asked for; null where there are too many to tell. */
+  distinct: DistinctValues | null | undefined;
   observedRange: [number, number];
   warnings: ModelWarning[];
 };
@@ -31,18 +31,18 @@ const intervalsOf = (grid: SplineGrid) => ({ lower: grid.lower, upper: grid.uppe
 /**
  * Lays knots over a column's range, a little widened (Eilers & Marx 1996). O(n log n).
  *
- * @param from.size number of splines. from.role what the column is for, for messages.
+ * @param from.size number of splines. from.role what the column is for, for messages. from.coded whether `distinct` is wanted.
  * @throws EngineError as `covariate`; spec-invalid, column-constant, column-few-values.
  * @example learnGrid({ column: "price", log: true, size: 8, id: "price", role: "smooth" }, data).grid.lower;
  */
 export function learnGrid(
-  from: { column: string; log?: boolean; size: number; id: string; role: string }, data: ModelData,
+  from: { column: string; log?: boolean; size: number; id: string; role: string; coded?: boolean }, data: ModelData,
 ): LearntGrid {
   const size = checkSize(from.size, from.id);
   const x = covariate(data, from, from.role);
   const isLog = from.log === true;
   const own = isLog ? numberColumn(data, from.column, from.role) : x;
-  const distinct = distinctValues(own);
+  const distinct = from.coded === true ? distinctValues(own) : undefined;
   const seen = seenNumbers(own, distinct);
   checkDistinct(seen.values, from.column, from.id);
   const observedRange = rangeOf(seen.values);

@@ -107,14 +107,16 @@ function liftUntilRegular(search: PenaltySearch, plan: PenaltyPlan, start: Float
  * @example const rested = bestPenalties(search, plan);
  */
 export function bestPenalties(search: PenaltySearch, plan: PenaltyPlan): boolean {
-  let rested = refinePenalties(search, plan, { fellnerSchallSteps: 2, maxSteps, start: startPenalties(search, plan, 6) }) === "rested";
+  let rested = refinePenalties(search, plan, { fellnerSchallSteps: sureSteps, maxSteps, start: startPenalties(search, plan, 6) }) === "rested";
   if (plan.automatic.length === 0) return rested;
   const loose = startPenalties(search, plan, -6);
-  rested = betterOf(search, plan, { start: loose, fellnerSchallSteps: 2, maxSteps }, rested);
+  rested = betterOf(search, plan, { start: loose, fellnerSchallSteps: sureSteps, maxSteps }, rested);
   const freed = freedPenalties(search, plan);
   return freed === null ? rested : betterOf(search, plan, { start: freed, fellnerSchallSteps: 0, maxSteps }, rested);
 }
 
+/** Fellner-Schall steps from one start where the equations are final: the first shows the direction, more are slower than Newton's. */
+const sureSteps = 1;
 /** Newton steps allowed from one start. */
 export const maxSteps = 60;
 

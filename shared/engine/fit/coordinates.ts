@@ -1,4 +1,5 @@
 import { backwardSolve, invertFactored } from "../linalg/cholesky";
+import { stridedProduct } from "../linalg/strided-product";
 import type { DenseSystem } from "./dense-system";
 import type { LikelihoodState } from "./likelihood-state";
 import type { PenalisedSystem } from "./restricted-likelihood";
@@ -48,25 +49,24 @@ function denseCovariance(system: DenseSystem, state: LikelihoodState): Float64Ar
   invertFactored(factor.slice(), unpenalised, inverse);
   for (const { column } of dropped) inverse[column * unpenalised + column] = 0;
   const back = backSolvedCross(system);
-  const spread = new Float64Array(size);
+  const spread = new Float64Array(unpenalised * size);
+  const left = { values: back, at: 0, rows: unpenalised, inner: size, rowStep: size, innerStep: 1 };
+  stridedProduct(left, { values: state.inverse, at: 0, columns: size }, { values: spread, at: 0, lowerOnly: false });
   for (let row = 0; row < unpenalised; row++) {
-    spread.fill(0);
-    for (let k = 0; k < size; k++) {
-      const weight = back[row * size + k];
-      for (let column = 0; column < size; column++) spread[column] += weight * state.inverse[k * size + column];
-    }
     for (let column = 0; column < unpenalised; column++) {
       let sum = inverse[row * unpenalised + column];
-      for (let k = 0; k < size; k++) sum += spread[k] * back[column * size + k];
+      for (let k = 0; k < size; k++) sum += spread[row * size + k] * back[column * size + k];
       covariance[row * all + column] = sum;
     }
     for (let column = 0; column < size; column++) {
-      covariance[row * all + unpenalised + column] = -spread[column];
-      covariance[(unpenalised + column) * all + row] = -spread[column];
+      const value = -spread[row * size + column];
+      covariance[row * all + unpenalised + column] = value;
+      covariance[(unpenalised + column) * all + row] = value;
     }
   }
   for (let row = 0; row < size; row++) {
-    covariance.set(state.inverse.subarray(row * size, (row + 1) * size), (unpenalised + row) * all + unpenalised);
+    const to = (unpenalised + row) * all + unpenalised;
+    for (let column = 0; column < size; column++) covariance[to + column] = state.inverse[row * size + column];
   }
   return covariance;
 }

@@ -169,21 +169,22 @@ type Step = { from: Coordinates | null; to: Coordinates; predictor: Float64Array
 
 /** Halves a step that raises the penalised deviance beyond reason: far from the answer a full step can overshoot. */
 function acceptableStep(problem: Problem, step: Step): { predictor: Float64Array; coordinates: Coordinates } {
-  const { design, map, rows } = problem;
-  const predict = (at: Coordinates) => predictorOf(design, coefficientsAt(design, map, at), rows.offset);
   const { from, theta, share } = step;
   let coordinates = from === null || share === 1 ? step.to : between(from, step.to, share);
-  let predictor = predict(coordinates);
+  let predictor = predictorAt(problem, coordinates);
   if (from === null) return { predictor, coordinates };
   const before = devianceOf(problem, step.predictor, theta) + step.penalty;
   for (let halving = 0; halving < 20; halving++) {
     const deviance = devianceOf(problem, predictor, theta);
     if (Number.isFinite(deviance) && deviance <= 2 * before + 1e-8 && farthest(predictor, step.predictor) <= longestMove) break;
     coordinates = between(from, coordinates, 0.5);
-    predictor = predict(coordinates);
+    predictor = predictorAt(problem, coordinates);
   }
   return { predictor, coordinates };
 }
+
+const predictorAt = ({ design, map, rows }: Problem, at: Coordinates): Float64Array =>
+  predictorOf(design, coefficientsAt(design, map, at), rows.offset);
 
 /** Factor exp(6) of a mean in one step: a deviance that rises with its logarithm only would not stop it. */
 const longestMove = 6;
@@ -195,6 +196,11 @@ function farthest(next: Float64Array, before: Float64Array): number {
 }
 
 function between(from: Coordinates, to: Coordinates, share: number): Coordinates {
-  const part = (left: Float64Array, right: Float64Array) => left.map((value, k) => value + share * (right[k] - value));
-  return { shared: part(from.shared, to.shared), groups: to.groups && from.groups && part(from.groups, to.groups) };
+  return {
+    shared: partWay(from.shared, to.shared, share),
+    groups: to.groups && from.groups && partWay(from.groups, to.groups, share),
+  };
 }
+
+const partWay = (from: Float64Array, to: Float64Array, share: number): Float64Array =>
+  from.map((value, k) => value + share * (to[k] - value));

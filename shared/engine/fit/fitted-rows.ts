@@ -30,7 +30,7 @@ export function fittedRows(spec: ModelSpec, data: ModelData): FittedRows {
     response: numberColumn(data, spec.response, "response"),
     offset: spec.offset === undefined ? new Float64Array(all) : numberColumn(data, spec.offset, "offset"),
   };
-  const kept = weights.reduce((sum, weight) => sum + (weight > 0 ? 1 : 0), 0);
+  const kept = spec.weights === undefined ? all : weights.reduce((sum, weight) => sum + (weight > 0 ? 1 : 0), 0);
   if (kept < 2) {
     throw new EngineError("too-few-rows", `The data has ${kept} rows of weight above 0; a fit needs at least 2.`);
   }

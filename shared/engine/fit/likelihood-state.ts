@@ -40,14 +40,15 @@ export type LikelihoodState = {
 /** @example const state = createState({ size: 17, penalties: 2, arrow: null }); */
 export function createState(of: { size: number; penalties: number; arrow: ArrowState | null }): LikelihoodState {
   const { size, penalties } = of;
-  const vector = () => new Float64Array(penalties);
-  const square = () => new Float64Array(penalties * penalties);
+  const pairs = penalties * penalties;
   return {
     level: "criterion",
-    logPenalties: vector(), multipliers: vector(), criterion: Infinity, penalisedResidual: 0, logDeterminant: 0,
+    logPenalties: new Float64Array(penalties), multipliers: new Float64Array(penalties),
+    criterion: Infinity, penalisedResidual: 0, logDeterminant: 0,
     determinant: createDeterminant(penalties),
-    gradient: vector(), hessian: square(), determinantHessian: square(), edf: vector(),
-    squares: vector(), traces: vector(), forms: square(), norms: square(),
+    gradient: new Float64Array(penalties), hessian: new Float64Array(pairs), determinantHessian: new Float64Array(pairs),
+    edf: new Float64Array(penalties), squares: new Float64Array(penalties), traces: new Float64Array(penalties),
+    forms: new Float64Array(pairs), norms: new Float64Array(pairs),
     coefficients: new Float64Array(size), factor: new Float64Array(size * size), inverse: new Float64Array(size * size),
     arrow: of.arrow,
   };

@@ -61,9 +61,10 @@ function copySpec(spec: ModelSpec): ModelSpec {
 }
 
 function structuredCopy<Term extends TermSpec>(term: Term): Term {
-  const copy: Record<string, unknown> = {};
-  for (const [key, value] of Object.entries(term)) {
-    copy[key] = Array.isArray(value) ? [...(value as unknown[])] : typeof value === "object" ? { ...(value as object) } : value;
+  const copy: Record<string, unknown> = { ...term };
+  for (const key of Object.keys(copy)) {
+    const value = copy[key];
+    if (typeof value === "object") copy[key] = Array.isArray(value) ? [...(value as unknown[])] : { ...value };
   }
   return copy as Term;
 }

@@ -29,13 +29,14 @@ export type PenaltySearch = {
 /** @example const search = createSearch({ system, layout, scale: "unknown" }); */
 export function createSearch(problem: LikelihoodProblem): PenaltySearch {
   const { system, layout: { penalties } } = problem;
-  const state = () => createState({
-    size: system.size,
-    penalties: penalties.length,
-    arrow: system.form === "arrow" ? createArrowState(system.groups, system.size) : null,
-  });
   const { defaults, lowest, highest } = boundsOf(system, penalties);
-  return { problem, penalties, defaults, lowest, highest, current: state(), trial: state(), kept: state() };
+  const [current, trial, kept] = [stateOf(system, penalties.length), stateOf(system, penalties.length), stateOf(system, penalties.length)];
+  return { problem, penalties, defaults, lowest, highest, current, trial, kept };
+}
+
+function stateOf(system: PenalisedSystem, penalties: number): LikelihoodState {
+  const arrow = system.form === "arrow" ? createArrowState(system.groups, system.size) : null;
+  return createState({ size: system.size, penalties, arrow });
 }
 
 /**
