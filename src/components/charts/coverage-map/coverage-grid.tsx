@@ -35,10 +35,12 @@ export const CoverageGrid = ({ title, rows, numbers, describe, onOpenFile, maxHe
   const [outer, outerWidth] = useElementWidth<HTMLDivElement>(900);
   const scroller = useRef<HTMLDivElement>(null);
   const [scrolled, setScrolled] = useState({ left: 0, top: 0 });
+  // Where the picture is scrolled to matters only beside a cell that is looked at.
+  const noteScroll = () => scroller.current && setScrolled({ left: scroller.current.scrollLeft, top: scroller.current.scrollTop });
   const isTall = rows.length * rowHeight + axisHeight > maxHeight;
   const { cell, namesWidth } = shareWidth({ weeks: numbers.length, width: outerWidth - 2 - (isTall ? barWidth : 0) });
   const virtualizer = useVirtualizer({
-    count: rows.length, getScrollElement: () => scroller.current, estimateSize: () => rowHeight, overscan: 10,
+    count: rows.length, getScrollElement: () => scroller.current, estimateSize: () => rowHeight, overscan: 4,
     initialRect: { width: 900, height: maxHeight },
   });
   useLayoutEffect(() => {
@@ -49,7 +51,7 @@ export const CoverageGrid = ({ title, rows, numbers, describe, onOpenFile, maxHe
     const file = describe(at)?.file ?? null;
     if (file !== null) onOpenFile(file);
   };
-  const cursor = useCellCursor({ scroller, rows, weeks: numbers.length, cell, rowHeight, namesWidth, onOpen });
+  const cursor = useCellCursor({ scroller, rows, weeks: numbers.length, cell, rowHeight, namesWidth, onOpen, onLook: noteScroll });
   const { place } = cursor;
   const facts = place && describe(place);
   const tipX = place ? namesWidth + (place.week + 0.5) * cell - scrolled.left : 0;
@@ -65,7 +67,7 @@ export const CoverageGrid = ({ title, rows, numbers, describe, onOpenFile, maxHe
         aria-colcount={numbers.length}
         aria-activedescendant={facts ? `${id}-cell` : undefined}
         tabIndex={0}
-        onScroll={({ currentTarget }) => setScrolled({ left: currentTarget.scrollLeft, top: currentTarget.scrollTop })}
+        onScroll={() => place && noteScroll()}
         style={{ maxHeight }}
         className="relative overflow-auto rounded-sm border border-hairline focus-visible:-outline-offset-2"
       >

@@ -3,7 +3,7 @@ import type { CellPlace, CellState, CoverageRow } from "./coverage-data";
 export type CellSize = { width: number; height: number };
 
 const narrowest = 13;
-const widest = 40;
+const widest = 56;
 
 const names = { narrow: 104, wide: 156 };
 /** Below this width names are kept short. */

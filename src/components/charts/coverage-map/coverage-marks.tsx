@@ -19,7 +19,7 @@ type MarkProps = { state: CellState; paths: MarkPaths; /** Id of the drawing's p
 export const StateMark = ({ state, paths: { ground, line }, hatch }: MarkProps) => (
   <>
     {ground && <path d={ground} className={grounds[state]} fill={state === "closed" ? `url(#${hatch})` : undefined} />}
-    {line && <path d={line} className={lines[state]} strokeWidth={1.5} />}
+    {line && <path d={line} className={lines[state]} strokeWidth={1.5} shapeRendering="auto" />}
   </>
 );
 
@@ -27,7 +27,7 @@ type RowMarksProps = { store: CoverageStore; cell: number; height: number; hatch
 
 /** A store's weeks. Drawn anew only when the store or the size changes, not while a pointer moves over them. */
 export const RowMarks = memo(({ store, cell, height, hatch }: RowMarksProps) => (
-  <svg width={store.states.length * cell} height={height} className="block shrink-0" aria-hidden="true">
+  <svg width={store.states.length * cell} height={height} shapeRendering="crispEdges" className="block shrink-0" aria-hidden="true">
     {rowPaths(store.states, { width: cell, height }).map(([state, paths]) => (
       <StateMark key={state} state={state} paths={paths} hatch={hatch} />
     ))}

@@ -13,12 +13,18 @@ type CellCursorOptions = {
   rowHeight: number;
   namesWidth: number;
   onOpen: (place: CellPlace) => void;
+  /** Another cell is looked at. */
+  onLook: () => void;
 };
 
 /** Which cell is looked at, by pointer, finger or keyboard. */
 export const useCellCursor = (options: CellCursorOptions) => {
-  const { scroller, rows, weeks, cell, rowHeight, namesWidth, onOpen } = options;
-  const [place, setPlace] = useState<CellPlace | null>(null);
+  const { scroller, rows, weeks, cell, rowHeight, namesWidth, onOpen, onLook } = options;
+  const [place, setOwnPlace] = useState<CellPlace | null>(null);
+  const setPlace = (next: CellPlace | null) => {
+    setOwnPlace(next);
+    if (next) onLook();
+  };
   const isAt = (other: CellPlace | null) => other?.row === place?.row && other?.week === place?.week;
 
   const bringIntoView = ({ row, week }: CellPlace) => {
@@ -38,8 +44,8 @@ export const useCellCursor = (options: CellCursorOptions) => {
     if (!moved) return;
     event.preventDefault();
     const next = place ? moved : from;
-    setPlace(next);
     bringIntoView(next);
+    setPlace(next);
   };
   const placeUnder = ({ clientX, clientY, currentTarget }: PointerEvent): CellPlace | null => {
     const box = currentTarget.getBoundingClientRect();

@@ -12,9 +12,10 @@ const problemAt = ({ problems }: Row, column: string) =>
   problems.find((problem) => problem.column === column) ??
   (column === "feature" ? problems.find((problem) => problem.column === promotionColumn) : undefined);
 
-const sentenceOf = ({ rows }: LayoutPreview): string => {
+const sentenceOf = ({ rows, missing }: LayoutPreview): string => {
   const bad = rows.filter(({ problems }) => problems.length > 0).length;
   const all = formatNumber(rows.length);
+  if (bad === 0 && missing.length > 0) return `What has been found so far can be read in all of the first ${all} rows.`;
   if (bad === 0) return `All of the first ${all} rows can be read.`;
   return `In ${formatNumber(bad)} of the first ${all} rows a value cannot be read so; it is marked.`;
 };
