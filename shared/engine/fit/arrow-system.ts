@@ -2,8 +2,9 @@ import { backwardSolve, choleskyInPlace, forwardSolve, logDeterminant } from "..
 import { subtractSquare } from "../linalg/tiles";
 import { ownShareNeeded } from "../linalg/dropping-cholesky";
 import type { DroppedColumn } from "../linalg/dropping-cholesky";
-import { addPenalty, factorUnpenalised } from "./dense-system";
+import { addPenalty } from "./dense-system";
 import type { SystemParts } from "./dense-system";
+import { factorUnpenalised } from "./eliminate-unpenalised";
 import type { LikelihoodState } from "./likelihood-state";
 import type { GroupEquations } from "./group-equations";
 import type { NormalEquations } from "./normal-equations";

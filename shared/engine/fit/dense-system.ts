@@ -1,8 +1,6 @@
 import { backwardSolve, choleskyInPlace, forwardSolve, invertFactored, logDeterminant } from "../linalg/cholesky";
-import { choleskyDropping } from "../linalg/dropping-cholesky";
 import type { DroppedColumn } from "../linalg/dropping-cholesky";
 import type { LikelihoodState } from "./likelihood-state";
-import type { NormalEquations } from "./normal-equations";
 import type { Penalty } from "./penalties";
 
 /** What every penalised least-squares problem has, whatever was eliminated from it before. */
@@ -35,57 +33,6 @@ export type DenseSystem = SystemParts & {
   cross: Float64Array;
   solved: Float64Array;
 };
-
-/**
- * Eliminates the unpenalised columns once, so that each trial of the penalties costs only the penalised ones:
- * M = A_qq - A_q0 A_00^-1 A_0q. Columns that earlier ones reproduce are dropped.
- *
- * @param known columns dropped before on the same design, or null to decide.
- * @example const system = eliminateUnpenalised(equations, { unpenalised: 3, size: 20, rowCount: 110 }, null);
- */
-export function eliminateUnpenalised(
-  equations: NormalEquations, layout: { unpenalised: number; size: number; rowCount: number }, known: DroppedColumn[] | null,
-): DenseSystem {
-  const { unpenalised, size, rowCount } = layout;
-  const penalised = size - unpenalised;
-  const { factor, dropped } = factorUnpenalised(equations, layout, known);
-  const solved = equations.vector.slice(0, unpenalised);
-  const cross = new Float64Array(unpenalised * penalised);
-  for (let row = 0; row < penalised; row++) {
-    for (let k = 0; k < unpenalised; k++) cross[k * penalised + row] = equations.matrix[(unpenalised + row) * size + k];
-  }
-  for (const { column } of dropped) {
-    solved[column] = 0;
-    cross.fill(0, column * penalised, (column + 1) * penalised);
-  }
-  forwardSolve(factor, unpenalised, solved);
-  forwardSolveMany(factor, unpenalised, cross, penalised);
-  let { total } = equations;
-  for (let k = 0; k < unpenalised; k++) total -= solved[k] * solved[k];
-  const diagonal = new Float64Array(penalised);
-  for (let k = 0; k < penalised; k++) diagonal[k] = equations.matrix[(unpenalised + k) * (size + 1)];
-  const { matrix, vector } = schurComplement(equations, { cross, solved, unpenalised, size });
-  return {
-    form: "dense",
-    size: penalised,
-    diagonal, matrix, vector,
-    total, factor, cross, solved, unpenalised, dropped, rowCount,
-    yardstick: equations.total,
-    logDeterminant: logDeterminant(factor, unpenalised),
-    unpenalisedKept: unpenalised - dropped.length,
-  };
-}
-
-/** Factor of the unpenalised block, and which of its columns earlier ones reproduce. */
-export function factorUnpenalised(
-  equations: NormalEquations, { unpenalised, size }: { unpenalised: number; size: number }, known: DroppedColumn[] | null,
-): { factor: Float64Array; dropped: DroppedColumn[] } {
-  const factor = new Float64Array(unpenalised * unpenalised);
-  for (let row = 0; row < unpenalised; row++) {
-    for (let column = 0; column <= row; column++) factor[row * unpenalised + column] = equations.matrix[row * size + column];
-  }
-  return { factor, dropped: choleskyDropping(factor, unpenalised, known) };
-}
 
 /**
  * Estimates, log-determinant and penalised residual at the state's multipliers: H = M + S, b = H^-1 v. O(size^3 / 6).
@@ -172,40 +119,4 @@ export function pairProducts(
   }
   forms[at] = form;
   norms[at] = norm;
-}
-
-/** Solves L X = B in place for a row-major B of `columns` columns. */
-function forwardSolveMany(factor: Float64Array, size: number, block: Float64Array, columns: number): void {
-  for (let row = 0; row < size; row++) {
-    const start = row * columns;
-    for (let k = 0; k < row; k++) {
-      const weight = factor[row * size + k];
-      if (weight === 0) continue;
-      for (let column = 0; column < columns; column++) block[start + column] -= weight * block[k * columns + column];
-    }
-    const reciprocal = 1 / factor[row * size + row];
-    for (let column = 0; column < columns; column++) block[start + column] *= reciprocal;
-  }
-}
-
-function schurComplement(
-  equations: NormalEquations, parts: { cross: Float64Array; solved: Float64Array; unpenalised: number; size: number },
-): { matrix: Float64Array; vector: Float64Array } {
-  const { cross, solved, unpenalised, size } = parts;
-  const penalised = size - unpenalised;
-  const matrix = new Float64Array(penalised * penalised);
-  const vector = new Float64Array(penalised);
-  for (let row = 0; row < penalised; row++) {
-    const source = (unpenalised + row) * size + unpenalised;
-    let value = equations.vector[unpenalised + row];
-    for (let k = 0; k < unpenalised; k++) value -= cross[k * penalised + row] * solved[k];
-    vector[row] = value;
-    for (let column = 0; column <= row; column++) {
-      let entry = equations.matrix[source + column];
-      for (let k = 0; k < unpenalised; k++) entry -= cross[k * penalised + row] * cross[k * penalised + column];
-      matrix[row * penalised + column] = entry;
-      matrix[column * penalised + row] = entry;
-    }
-  }
-  return { matrix, vector };
 }

@@ -1,4 +1,5 @@
 import type { IterativeRules } from "../family/family-rules";
+import { acceptableStep, shareOfStep } from "./accepted-step";
 import { freedPenalties, isLimit, maxSteps, planPenalties, refinePenalties, startPenalties } from "./choose-penalties";
 import type { PenaltyPlan } from "./choose-penalties";
 import type { CoefficientMap } from "./coefficient-map";
@@ -11,8 +12,7 @@ import { layOutPenalties } from "./penalties";
 import { searchBeside } from "./penalty-search";
 import type { PenaltySearch } from "./penalty-search";
 import type { Coordinates } from "./predictor";
-import { coefficientsAt, predictorOf } from "./predictor";
-import { criterionAtRest, devianceOf, movement } from "./rest";
+import { criterionAtRest, movement } from "./rest";
 import type { IterativeRows } from "./rest";
 import { shapeConstraints } from "./shape-constraints";
 import { penaltyValue, shiftedCoordinates } from "./working-fit";
@@ -111,6 +111,7 @@ function iterate(problem: Problem, start: Start): WorkingFit {
   let { predictor, theta, before } = start;
   let penalties = start.penalties ?? null;
   let coordinates: Coordinates | null = null;
+  let deviance: number | null = null;
   let converged: boolean;
   let iterations = 0;
   let equations: NormalEquations;
@@ -130,12 +131,13 @@ function iterate(problem: Problem, start: Start): WorkingFit {
     };
     const accepted = acceptableStep(problem, {
       from: coordinates, to: shiftedCoordinates(solution, equations), predictor, theta, penalty: penaltyValue(solution.search),
-      share: shareOfStep(iterations),
+      share: shareOfStep(iterations), deviance,
     });
     const nextTheta = nextThetaOf(problem, accepted.predictor, theta);
     const rests = movement(accepted.predictor, predictor, problem.workingWeights) < movementTolerance
       && Math.abs(nextTheta / theta - 1) < thetaTolerance;
     converged = solution.rested && iterations > 1 && rests;
+    deviance = nextTheta === theta ? accepted.deviance : null;
     theta = nextTheta;
     ({ predictor, coordinates } = accepted);
   } while (!converged && iterations < problem.maxIterations);
@@ -158,49 +160,3 @@ function workingEquations(problem: Problem, predictor: Float64Array, theta: numb
   family.working({ ...rows, linearPredictor: predictor, mean, theta, workingResponse, workingWeights });
   return normalEquations(problem.design, { response: workingResponse, weights: workingWeights }, problem.scratch);
 }
-
-/** Few fits take as many working models; those that do swing between two, and come to rest by shorter steps. */
-const patience = 40;
-
-/** Share of the way to a working model's estimates that is gone: a half after `patience` working models, then a quarter. */
-const shareOfStep = (iterations: number): number => (iterations <= patience ? 1 : iterations <= 2 * patience ? 0.5 : 0.25);
-
-type Step = { from: Coordinates | null; to: Coordinates; predictor: Float64Array; theta: number; penalty: number; share: number };
-
-/** Halves a step that raises the penalised deviance beyond reason: far from the answer a full step can overshoot. */
-function acceptableStep(problem: Problem, step: Step): { predictor: Float64Array; coordinates: Coordinates } {
-  const { from, theta, share } = step;
-  let coordinates = from === null || share === 1 ? step.to : between(from, step.to, share);
-  let predictor = predictorAt(problem, coordinates);
-  if (from === null) return { predictor, coordinates };
-  const before = devianceOf(problem, step.predictor, theta) + step.penalty;
-  for (let halving = 0; halving < 20; halving++) {
-    const deviance = devianceOf(problem, predictor, theta);
-    if (Number.isFinite(deviance) && deviance <= 2 * before + 1e-8 && farthest(predictor, step.predictor) <= longestMove) break;
-    coordinates = between(from, coordinates, 0.5);
-    predictor = predictorAt(problem, coordinates);
-  }
-  return { predictor, coordinates };
-}
-
-const predictorAt = ({ design, map, rows }: Problem, at: Coordinates): Float64Array =>
-  predictorOf(design, coefficientsAt(design, map, at), rows.offset);
-
-/** Factor exp(6) of a mean in one step: a deviance that rises with its logarithm only would not stop it. */
-const longestMove = 6;
-
-function farthest(next: Float64Array, before: Float64Array): number {
-  let most = 0;
-  for (let row = 0; row < next.length; row++) most = Math.max(most, Math.abs(next[row] - before[row]));
-  return most;
-}
-
-function between(from: Coordinates, to: Coordinates, share: number): Coordinates {
-  return {
-    shared: partWay(from.shared, to.shared, share),
-    groups: to.groups && from.groups && partWay(from.groups, to.groups, share),
-  };
-}
-
-const partWay = (from: Float64Array, to: Float64Array, share: number): Float64Array =>
-  from.map((value, k) => value + share * (to[k] - value));

@@ -1,6 +1,6 @@
 import { arrowSystem, createArrowState } from "@shared/engine/fit/arrow-system";
 import { sharedCoordinates } from "@shared/engine/fit/coordinates";
-import { eliminateUnpenalised } from "@shared/engine/fit/dense-system";
+import { eliminateUnpenalised } from "@shared/engine/fit/eliminate-unpenalised";
 import { createState } from "@shared/engine/fit/likelihood-state";
 import type { NormalEquations } from "@shared/engine/fit/normal-equations";
 import { layOutPenalties } from "@shared/engine/fit/penalties";
