@@ -7,7 +7,7 @@ const mostBytes = 25 * 2 ** 20;
  * @param {import("./mailbox.mjs").Mailbox} mailbox
  */
 export function createMailListener(mailbox) {
-  return new SMTPServer({
+  const listener = new SMTPServer({
     authOptional: true,
     // There is no certificate to offer, and nothing leaves the machine.
     disabledCommands: ["STARTTLS"],
@@ -25,4 +25,7 @@ export function createMailListener(mailbox) {
       });
     },
   });
+  // A sender that was killed in the middle is no reason to end.
+  listener.on("error", (error) => console.error(`A connection broke: ${error.message}`));
+  return listener;
 }

@@ -1,5 +1,7 @@
 import { createTransport } from "nodemailer";
 import { mkdtempSync, rmSync } from "node:fs";
+import { once } from "node:events";
+import { connect } from "node:net";
 import { tmpdir } from "node:os";
 import { join, resolve } from "node:path";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
@@ -59,6 +61,16 @@ describe("the mail catcher", () => {
     expect(html).toContain('<a href="http://127.0.0.1:4310/sign-in?a=1&amp;b=2">');
     expect(response.headers.get("content-security-policy")).toContain("default-src 'none'");
     expect(await (await fetch(page)).text()).toContain("&lt;script&gt;alert(1)&lt;/script&gt;");
+  });
+
+  it("goes on where a sender is cut off in the middle of a mail", async () => {
+    const sender = connect(smtpPort, "127.0.0.1");
+    await once(sender, "data");
+    sender.write("EHLO x\r\nMAIL FROM:<a@larkmoor.example>\r\nRCPT TO:<dora@larkmoor.example>\r\nDATA\r\n");
+    await once(sender, "data");
+    sender.resetAndDestroy();
+    await send({ to: "dora@larkmoor.example", subject: "Whole", text: "1" });
+    expect((await messagesTo("dora@larkmoor.example")).map(({ subject }) => subject)).toEqual(["Whole"]);
   });
 
   it("answers 404 for a mail that it does not have, and for paths out of its folder", async () => {
