@@ -93,6 +93,15 @@ describe("entering them", () => {
     expect(body.code).toBe("not-checkable");
   });
 
+  it("is refused while the file is being checked, since that check would not know them", async () => {
+    const { id } = await checked(test, { file: salesFile(row("2026-06-08", "S85", "P1"), row("2026-06-08", "S1", "P1")) });
+    await test.services.pool.query("update extracts set state = 'checking' where id = $1", [id]);
+    const { body } = await enter(id, { stores: [{ code: "S85", name: "New Road", region: "moor" }] }).expect(409);
+    expect(body.code).toBe("being-checked");
+    const { rows } = await test.services.pool.query("select 1 from stores where code = 'S85'");
+    expect(rows).toEqual([]);
+  });
+
   it("is refused for nothing, for a code twice, for one the file does not name, and without a name", async () => {
     const { id } = await checked(test, { file: salesFile(row("2026-06-08", "S83", "P1"), row("2026-06-08", "S1", "P1")) });
     const store = { code: "S83", name: "New Road", region: "moor" };

@@ -1,7 +1,7 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
 import type { Day } from "@shared/calendar";
 import type { UnknownCodes } from "@shared/contract/unknown-codes";
-import { unusable } from "../../../errors";
+import { conflict, unusable } from "../../../errors";
 import type { Services } from "../../../services";
 import { enterProducts, enterStores } from "../../catalogue";
 import { unknownCodesOf } from "../extracts.repository";
@@ -28,11 +28,13 @@ type Entry = NewCodes & { services: Services; extractId: string; actor: Actor };
  * What somebody else has entered meanwhile is left as it is.
  *
  * @returns the check's job.
- * @throws ProblemError 404; 409 where the file is loaded or being loaded; 422 for nothing, a code given twice, or one that the file does not name.
+ * @throws ProblemError 404; 409 where the file is loaded, being loaded or being checked; 422 for nothing, a code given twice, or one that the file does not name.
  */
 export function enterUnknownCodes(em: EntityManager, { services, extractId, actor, stores, products }: Entry): Promise<string> {
   return em.transactional(async (inner) => {
     const extract = await lockCheckable(inner, extractId);
+    // That check has read the catalogue already, and would not know what is entered now.
+    if (extract.state === "checking") throw conflict("being-checked", "This file is being checked just now. Wait for its check to end, and try again.");
     const known = (await unknownCodesOf(inner, extract)) ?? none;
     requireSome({ stores, products });
     requireNamed(stores, { part: "stores", named: known.stores, total: known.storesTotal });
