@@ -43,7 +43,13 @@ const Row = ({ row, columns, thisWeek, onOpen }: RowProps) => {
     <div className="border-t border-hairline pt-1.5">
       <div className="flex" aria-hidden="true">
         {row.weeks.map((week) => (
-          <div key={week} style={{ width: share(1) }} className={classNames("min-w-0 border-l border-hairline pl-1.5 text-xs leading-4", week === thisWeek ? "font-semibold text-accent" : "text-muted")}>
+          <div
+            key={week} style={{ width: share(1) }}
+            className={classNames(
+              "min-w-0 border-l border-hairline pl-1.5 text-xs leading-4",
+              week === thisWeek ? "font-semibold text-accent" : "text-muted",
+            )}
+          >
             <span className="block truncate">wk {format.weekNumber(week)}</span>
             <span className="block truncate">{formatDate(parseISO(week), "d MMM")}</span>
           </div>

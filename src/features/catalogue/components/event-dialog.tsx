@@ -53,7 +53,10 @@ export const EventDialog = ({ event, like, codes, regions, isReadOnly, onClose }
         <FormText control={control} name="name" label="Name" />
         <FormDay control={control} name="firstDay" label="First day" />
         <FormDay control={control} name="lastDay" label="Last day" />
-        <FormSelect control={control} name="region" label="Held in" choices={[{ value: "", label: "The whole chain" }, ...regions.map((region) => ({ value: region, label: region }))]} />
+        <FormSelect
+          control={control} name="region" label="Held in"
+          choices={[{ value: "", label: "The whole chain" }, ...regions.map((region) => ({ value: region, label: region }))]}
+        />
       </div>
     </FormDialog>
   );

@@ -52,7 +52,10 @@ export const EventsPage = ({ calendar, today }: EventsPageProps) => {
       <CatalogueViews />
       <Sheet flush>
         <div className="flex flex-wrap items-end gap-3 border-b border-hairline p-4 sm:px-5">
-          <SegmentedControl label="View" segments={views} value={isList ? "list" : "calendar"} onChange={(view) => set({ view: view === "list" ? view : null })} />
+          <SegmentedControl
+            label="View" segments={views} value={isList ? "list" : "calendar"}
+            onChange={(view) => set({ view: view === "list" ? view : null })}
+          />
           {isList
             ? <TextField fieldClassName="min-w-56" type="search" label="Code or name" value={values.q} onChange={({ target }) => set({ q: target.value })} />
             : <YearSteps year={yearFrom(values.year, calendar, today)} onYear={(year) => set({ year: String(year) })} />}
@@ -60,7 +63,11 @@ export const EventsPage = ({ calendar, today }: EventsPageProps) => {
         <QueryView
           query={query} loading="Reading the events" failure="The events could not be read"
           isEmpty={(all) => all.length === 0 && isList}
-          empty={<EmptyState title="There is no event yet">{mayWrite ? "Upload an events file under Files, or enter the first one by hand." : "Your data admin enters the events."}</EmptyState>}
+          empty={
+            <EmptyState title="There is no event yet">
+              {mayWrite ? "Upload an events file under Files, or enter the first one by hand." : "Your data admin enters the events."}
+            </EmptyState>
+          }
         >
           {(all) => isList
             ? <EventTable events={all} words={values.q} onOpen={(id) => setOpen({ id })} />
@@ -69,7 +76,10 @@ export const EventsPage = ({ calendar, today }: EventsPageProps) => {
       </Sheet>
       <KindHistory kind="event" />
       {open && (
-        <EventDialog event={events.find(({ id }) => id === open.id) ?? null} codes={codes} regions={regions} isReadOnly={!mayWrite} onClose={() => setOpen(null)} />
+        <EventDialog
+          event={events.find(({ id }) => id === open.id) ?? null} codes={codes} regions={regions} isReadOnly={!mayWrite}
+          onClose={() => setOpen(null)}
+        />
       )}
     </>
   );

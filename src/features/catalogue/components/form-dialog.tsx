@@ -73,7 +73,10 @@ export const FormDialog = <Input extends FieldValues, Output extends FieldValues
             <Question sentence="The changes are not saved." no="Go on editing" yes="Lose the changes" onNo={() => setAsking(null)} onYes={onClose} />
           )}
           {!isReadOnly && asking === "remove" && remove && (
-            <Question sentence={remove.sentence} no="Keep it" yes={remove.label} isBusy={isBusy} onNo={() => setAsking(null)} onYes={() => void act(remove.act)} />
+            <Question
+              sentence={remove.sentence} no="Keep it" yes={remove.label} isBusy={isBusy} onNo={() => setAsking(null)}
+              onYes={() => void act(remove.act)}
+            />
           )}
           {!isReadOnly && asking === null && (
             <>

@@ -20,7 +20,10 @@ import { FormDay, FormNumber } from "./form-fields";
 import { RowButton } from "./row-button";
 
 const columnsOf = (format: ChainFormat, open?: (firstDay: string) => void): TableColumn<Funding>[] => [
-  { id: "firstDay", header: "First day", value: ({ firstDay }) => firstDay, cell: ({ firstDay }) => (open ? <RowButton onPress={() => open(firstDay)}>{format.day(firstDay)}</RowButton> : format.day(firstDay)) },
+  {
+    id: "firstDay", header: "First day", value: ({ firstDay }) => firstDay,
+    cell: ({ firstDay }) => (open ? <RowButton onPress={() => open(firstDay)}>{format.day(firstDay)}</RowButton> : format.day(firstDay)),
+  },
   { id: "lastDay", header: "Last day", value: ({ lastDay }) => lastDay, cell: ({ lastDay }) => format.day(lastDay) },
   { id: "perUnit", header: "Per unit", align: "right", value: ({ perUnit }) => perUnit, cell: ({ perUnit }) => exactMoney(perUnit, format) },
   { id: "lumpSum", header: "Lump sum", align: "right", value: ({ lumpSum }) => lumpSum, cell: ({ lumpSum }) => format.money(lumpSum) },

@@ -27,10 +27,16 @@ type Named = Listing & { name: string; region: string };
 const keyOf = ({ store, firstDay }: Listing) => `${store} ${firstDay}`;
 
 const columnsOf = (format: ChainFormat, open?: (key: string) => void): TableColumn<Named>[] => [
-  { id: "store", header: "Store", value: ({ store }) => store, cell: (row) => (open ? <RowButton onPress={() => open(keyOf(row))}>{row.store} {row.name}</RowButton> : `${row.store} ${row.name}`) },
+  {
+    id: "store", header: "Store", value: ({ store }) => store,
+    cell: (row) => (open ? <RowButton onPress={() => open(keyOf(row))}>{row.store} {row.name}</RowButton> : `${row.store} ${row.name}`),
+  },
   { id: "region", header: "Region", value: ({ region }) => region, from: "sm" },
   { id: "firstDay", header: "First day", value: ({ firstDay }) => firstDay, cell: ({ firstDay }) => format.day(firstDay) },
-  { id: "lastDay", header: "Last day", value: ({ lastDay }) => lastDay, cell: ({ lastDay }) => (lastDay === null ? <span className="text-muted">goes on</span> : format.day(lastDay)) },
+  {
+    id: "lastDay", header: "Last day", value: ({ lastDay }) => lastDay,
+    cell: ({ lastDay }) => (lastDay === null ? <span className="text-muted">goes on</span> : format.day(lastDay)),
+  },
 ];
 
 /** In which stores a product is, and when. */

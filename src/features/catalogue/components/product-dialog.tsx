@@ -50,7 +50,10 @@ export const ProductDialog = ({ product, products, onClose, onRemoved }: Product
       {!product && <FormText control={control} name="code" label="Code" hint="As files name it; it cannot be changed later." />}
       <FormText control={control} name="name" label="Name" />
       <div className="grid items-start gap-4 sm:grid-cols-2">
-        <FormText control={control} name="category" label="Category" choices={categories.map(({ code }) => code)} hint="A new one is entered with it." />
+        <FormText
+          control={control} name="category" label="Category" choices={categories.map(({ code }) => code)}
+          hint="A new one is entered with it."
+        />
         <FormText control={control} name="brand" label="Brand" optional />
         <FormText control={control} name="gtin" label="GTIN" optional hint="8, 12, 13 or 14 digits." />
         <div className="self-center"><Checkbox label="Sold by weight" {...register("soldByWeight")} /></div>

@@ -29,12 +29,21 @@ import { useFilters } from "./use-filters";
 
 const columnsOf = (format: ChainFormat): TableColumn<Product>[] => [
   { id: "code", header: "Code", value: ({ code }) => code, width: "6rem" },
-  { id: "name", header: "Name", value: ({ name }) => name, cell: ({ code, name }) => <TextLink to={paths.catalogueProduct.href(code)}>{name}</TextLink> },
+  {
+    id: "name", header: "Name", value: ({ name }) => name,
+    cell: ({ code, name }) => <TextLink to={paths.catalogueProduct.href(code)}>{name}</TextLink>,
+  },
   { id: "category", header: "Category", value: ({ categoryName }) => categoryName, from: "sm" },
   { id: "brand", header: "Brand", value: ({ brand }) => brand, from: "md" },
   { id: "gtin", header: "GTIN", value: ({ gtin }) => gtin, from: "lg" },
-  { id: "unitCost", header: "Cost", meaning: "What one unit costs the chain today, net of tax.", align: "right", value: ({ unitCost }) => unitCost, cell: ({ unitCost }) => exactMoney(unitCost, format), from: "sm" },
-  { id: "regularPrice", header: "Regular price", meaning: "The price today without any reduction, tax included.", align: "right", value: ({ regularPrice }) => regularPrice, cell: ({ regularPrice }) => exactMoney(regularPrice, format) },
+  {
+    id: "unitCost", header: "Cost", meaning: "What one unit costs the chain today, net of tax.", align: "right",
+    value: ({ unitCost }) => unitCost, cell: ({ unitCost }) => exactMoney(unitCost, format), from: "sm",
+  },
+  {
+    id: "regularPrice", header: "Regular price", meaning: "The price today without any reduction, tax included.", align: "right",
+    value: ({ regularPrice }) => regularPrice, cell: ({ regularPrice }) => exactMoney(regularPrice, format),
+  },
   { id: "taxRate", header: "Tax", align: "right", value: ({ taxRate }) => taxRate, cell: ({ taxRate }) => taxWords(taxRate, format), from: "md" },
 ];
 
@@ -63,7 +72,11 @@ export const ProductsPage = () => {
         <QueryView
           query={query} loading="Reading the products" failure="The products could not be read"
           isEmpty={(all) => all.length === 0}
-          empty={<EmptyState title="There is no product yet">{mayWrite ? "Upload a products file under Files, or enter the first one by hand." : "Your data admin enters the products."}</EmptyState>}
+          empty={
+            <EmptyState title="There is no product yet">
+              {mayWrite ? "Upload a products file under Files, or enter the first one by hand." : "Your data admin enters the products."}
+            </EmptyState>
+          }
         >
           {(all) => <ProductTable products={all} />}
         </QueryView>
@@ -87,13 +100,18 @@ const ProductTable = ({ products }: { products: readonly Product[] }) => {
     <>
       <div className="grid gap-3 border-b border-hairline p-4 items-end sm:grid-cols-[minmax(12rem,20rem)_14rem_auto] sm:px-5">
         <TextField type="search" label="Code, name, brand or GTIN" value={values.q} onChange={({ target }) => set({ q: target.value })} />
-        <SelectField label="Category" value={values.category} onChange={(category) => set({ category })} choices={[{ value: "", label: "All" }, ...categories.map(([value, label]) => ({ value, label }))]} />
+        <SelectField
+          label="Category" value={values.category} onChange={(category) => set({ category })}
+          choices={[{ value: "", label: "All" }, ...categories.map(([value, label]) => ({ value, label }))]}
+        />
         {values.category !== "" && <CategoryName key={values.category} code={values.category} />}
       </div>
       {shown.length === 0 ? (
         <EmptyState title="No product is like that">Change the filters above.</EmptyState>
       ) : (
-        <DataTable caption="Products" rows={shown} columns={columns} rowKey={({ code }) => code} initialSort={{ column: "code", descending: false }} />
+        <DataTable
+          caption="Products" rows={shown} columns={columns} rowKey={({ code }) => code} initialSort={{ column: "code", descending: false }}
+        />
       )}
     </>
   );

@@ -30,7 +30,10 @@ const columnsOf = (format: ChainFormat, open: (code: string) => void): TableColu
   { id: "name", header: "Name", value: ({ name }) => name, cell: ({ code, name }) => <RowButton onPress={() => open(code)}>{name}</RowButton> },
   { id: "region", header: "Region", value: ({ region }) => region },
   { id: "opened", header: "First day of trade", value: ({ opened }) => opened, cell: ({ opened }) => format.day(opened), from: "sm" },
-  { id: "closed", header: "Last day of trade", value: ({ closed }) => closed, cell: ({ closed }) => (closed === null ? "" : <Tag tone="caution">{format.day(closed)}</Tag>) },
+  {
+    id: "closed", header: "Last day of trade", value: ({ closed }) => closed,
+    cell: ({ closed }) => (closed === null ? "" : <Tag tone="caution">{format.day(closed)}</Tag>),
+  },
 ];
 
 /** Every store, to be found, entered and changed. */
@@ -52,7 +55,11 @@ export const StoresPage = () => {
         <QueryView
           query={query} loading="Reading the stores" failure="The stores could not be read"
           isEmpty={(all) => all.length === 0}
-          empty={<EmptyState title="There is no store yet">{mayWrite ? "Upload a stores file under Files, or enter the first one by hand." : "Your data admin enters the stores."}</EmptyState>}
+          empty={
+            <EmptyState title="There is no store yet">
+              {mayWrite ? "Upload a stores file under Files, or enter the first one by hand." : "Your data admin enters the stores."}
+            </EmptyState>
+          }
         >
           {(all) => <StoreTable stores={all} regions={regions} onOpen={(code) => setOpen({ code })} />}
         </QueryView>
@@ -82,8 +89,14 @@ const StoreTable = ({ stores, regions, onOpen }: StoreTableProps) => {
     <>
       <div className="grid gap-3 border-b border-hairline p-4 sm:grid-cols-[minmax(12rem,20rem)_12rem_12rem] sm:px-5">
         <TextField type="search" label="Code or name" value={values.q} onChange={({ target }) => set({ q: target.value })} />
-        <SelectField label="Region" value={values.region} onChange={(region) => set({ region })} choices={[{ value: "", label: "All" }, ...regions.map((region) => ({ value: region, label: region }))]} />
-        <SelectField label="Trade" value={values.trade} onChange={(trade) => set({ trade })} choices={[{ value: "", label: "All" }, { value: "open", label: "Without a last day" }, { value: "closed", label: "With a last day" }]} />
+        <SelectField
+          label="Region" value={values.region} onChange={(region) => set({ region })}
+          choices={[{ value: "", label: "All" }, ...regions.map((region) => ({ value: region, label: region }))]}
+        />
+        <SelectField
+          label="Trade" value={values.trade} onChange={(trade) => set({ trade })}
+          choices={[{ value: "", label: "All" }, { value: "open", label: "Without a last day" }, { value: "closed", label: "With a last day" }]}
+        />
       </div>
       {shown.length === 0 ? (
         <EmptyState title="No store is like that">Change the filters above.</EmptyState>

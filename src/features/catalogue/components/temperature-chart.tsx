@@ -6,6 +6,7 @@ import { linearScale } from "@/components/charts/scale/scale";
 import { useChainFormat } from "@/lib/format/chain-format";
 import { useElementWidth } from "@/lib/use-element-width";
 import { extentOf, runsOf } from "../view/temperature-lines";
+import { LineKey } from "./line-key";
 
 const margin = { top: 10, right: 20, bottom: 26, left: 40 };
 const height = 260;
@@ -33,7 +34,10 @@ export const TemperatureChart = ({ place, year, weeks }: TemperatureChartProps) 
     <ChartFrame title={title} table={table} height={height} legend={<Legend year={year} />}>
       <div ref={plot} style={{ height }} data-driver="temperature">
         <svg width={width} height={height} role="img" aria-label={title}>
-          <LeftAxis scale={y} ticks={roundTicks(y.domain[0], y.domain[1], 6).map((value) => ({ value, label: format.degrees(value) }))} left={margin.left - 4} right={width - margin.right} />
+          <LeftAxis
+            scale={y} ticks={roundTicks(y.domain[0], y.domain[1], 6).map((value) => ({ value, label: format.degrees(value) }))}
+            left={margin.left - 4} right={width - margin.right}
+          />
           <BottomAxis scale={x} ticks={ticks} y={height - margin.bottom} />
           {runsOf(weeks, ({ lowC }) => lowC).map((run) => (
             <path
@@ -43,7 +47,9 @@ export const TemperatureChart = ({ place, year, weeks }: TemperatureChartProps) 
           ))}
           <path d={lines(({ normalC }) => normalC)} fill="none" strokeWidth={1.5} strokeDasharray="5 4" className="stroke-[var(--driver-text)]" />
           <path d={lines(({ temperatureC }) => temperatureC)} fill="none" strokeWidth={2.25} className="stroke-[var(--driver)]" strokeLinejoin="round" />
-          {weeks.map(({ week, temperatureC }, index) => temperatureC !== null && <circle key={week} cx={x.toPixel(index)} cy={y.toPixel(temperatureC)} r={2.5} className="fill-[var(--driver)]" />)}
+          {runsOf(weeks, ({ temperatureC }) => temperatureC).flat().map(({ index, value }) => (
+            <circle key={index} cx={x.toPixel(index)} cy={y.toPixel(value)} r={2.5} className="fill-[var(--driver)]" />
+          ))}
         </svg>
       </div>
     </ChartFrame>
@@ -52,8 +58,8 @@ export const TemperatureChart = ({ place, year, weeks }: TemperatureChartProps) 
 
 const Legend = ({ year }: { year: number }) => (
   <p className="flex flex-wrap gap-x-5 gap-y-1 text-sm text-muted" data-driver="temperature">
-    <span className="inline-flex items-center gap-2"><svg width="22" height="8" aria-hidden="true"><line x1="0" x2="22" y1="4" y2="4" strokeWidth="2.25" className="stroke-[var(--driver)]" /></svg>{year}</span>
-    <span className="inline-flex items-center gap-2"><svg width="22" height="8" aria-hidden="true"><line x1="0" x2="22" y1="4" y2="4" strokeWidth="1.5" strokeDasharray="5 4" className="stroke-[var(--driver-text)]" /></svg>usual: mean of the other years at this time</span>
-    <span className="inline-flex items-center gap-2"><svg width="22" height="12" aria-hidden="true"><rect width="22" height="12" className="fill-[var(--driver-soft)]" /></svg>coldest to warmest of the other years, a week to either side</span>
+    <LineKey colour="--driver" looks="line">{year}</LineKey>
+    <LineKey colour="--driver-text" looks="dashed">usual: mean of the other years at this time</LineKey>
+    <LineKey colour="--driver-soft" looks="band">coldest to warmest of the other years, a week to either side</LineKey>
   </p>
 );

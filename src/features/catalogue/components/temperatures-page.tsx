@@ -64,7 +64,10 @@ const PlaceTemperatures = ({ calendar, unit, today, stores }: TemperaturesPagePr
   return (
     <Sheet flush>
       <div className="grid items-end gap-3 border-b border-hairline p-4 sm:grid-cols-[14rem_18rem_auto] sm:px-5">
-        <SelectField label="Region" value={region} onChange={(chosen) => set({ region: chosen, store: null })} choices={regionsOf(stores).map((each) => ({ value: each, label: each }))} />
+        <SelectField
+          label="Region" value={region} onChange={(chosen) => set({ region: chosen, store: null })}
+          choices={regionsOf(stores).map((each) => ({ value: each, label: each }))}
+        />
         <SelectField
           label="Store" value={place.scope === "store" ? place.place : ""} onChange={(store) => set({ store, region })}
           choices={[{ value: "", label: "The region's own" }, ...stores.filter((store) => store.region === region).map(({ code, name }) => ({ value: code, label: `${code} ${name}` }))]}
@@ -107,14 +110,26 @@ const columnsOf = ({ format, unit, scope, mayWrite, open }: Columns): TableColum
   const perDegree = unit === "fahrenheit" ? 1.8 : 1;
   const degrees = (celsius: number | null) => (celsius === null ? "–" : `${format.number(unit === "fahrenheit" ? celsius * 1.8 + 32 : celsius, { digits: 1 })}°`);
   return [
-    { id: "week", header: "Week", value: ({ week }) => week, cell: ({ week }) => <>{format.week(week)} <span className="text-muted max-sm:hidden">· {format.weekDays(week)}</span></> },
+    {
+      id: "week", header: "Week", value: ({ week }) => week,
+      cell: ({ week }) => <>{format.week(week)} <span className="text-muted max-sm:hidden">· {format.weekDays(week)}</span></>,
+    },
     {
       id: "mean", header: "Mean", align: "right", value: ({ temperatureC }) => temperatureC,
       cell: ({ week, temperatureC }) => <RowButton onPress={() => open(week)}>{temperatureC === null ? (mayWrite ? "Enter" : "–") : degrees(temperatureC)}</RowButton>,
     },
-    { id: "usual", header: "Usual", meaning: "Mean of the other years at this time of year, smoothed over three weeks to either side.", align: "right", value: ({ normalC }) => normalC, cell: ({ normalC }) => degrees(normalC) },
-    { id: "difference", header: "Difference", align: "right", value: differenceOf, from: "sm", cell: (row) => differenceCell(differenceOf(row), perDegree, format) },
-    { id: "band", header: "Other years", align: "right", value: ({ lowC }) => lowC, from: "md", sortable: false, cell: ({ lowC, highC }) => (lowC === null ? "–" : `${degrees(lowC)} to ${degrees(highC)}`) },
+    {
+      id: "usual", header: "Usual", meaning: "Mean of the other years at this time of year, smoothed over three weeks to either side.",
+      align: "right", value: ({ normalC }) => normalC, cell: ({ normalC }) => degrees(normalC),
+    },
+    {
+      id: "difference", header: "Difference", align: "right", value: differenceOf, from: "sm",
+      cell: (row) => differenceCell(differenceOf(row), perDegree, format),
+    },
+    {
+      id: "band", header: "Other years", align: "right", value: ({ lowC }) => lowC, from: "md", sortable: false,
+      cell: ({ lowC, highC }) => (lowC === null ? "–" : `${degrees(lowC)} to ${degrees(highC)}`),
+    },
     ...(scope === "store" ? [{ id: "source", header: "Measured for", value: ({ source }: TemperatureWeek) => (source === null ? null : source === "store" ? "the store" : "its region"), from: "sm" as const }] : []),
   ];
 };

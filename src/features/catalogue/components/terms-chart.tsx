@@ -8,6 +8,7 @@ import { useChainFormat } from "@/lib/format/chain-format";
 import { useElementWidth } from "@/lib/use-element-width";
 import { stepPath } from "../view/step-path";
 import { beginning } from "../view/product-words";
+import { LineKey } from "./line-key";
 
 const margin = { top: 20, right: 8, bottom: 26, left: 52 };
 const height = 190;
@@ -41,7 +42,8 @@ export const TermsChart = ({ terms, today, name }: TermsChartProps) => {
   const x = linearScale({ domain: [from, until], range: [margin.left, width - margin.right] });
   const y = linearScale({ domain: [0, top], range: [height - margin.bottom, margin.top] });
   const at = ({ validFrom }: ProductTerms) => Math.max(from, dayNumber(validFrom));
-  const steps = (value: (row: ProductTerms) => number | null) => stepPath(terms.map((row) => ({ x: at(row), value: value(row) })), { x: x.toPixel, y: y.toPixel }, until);
+  const steps = (value: (row: ProductTerms) => number | null) =>
+    stepPath(terms.map((row) => ({ x: at(row), value: value(row) })), { x: x.toPixel, y: y.toPixel }, until);
   const title = `Regular price and cost of ${name} by date`;
   const table = () => ({
     columns: ["Valid from", "Regular price", "Cost", "Tax"],
@@ -52,7 +54,10 @@ export const TermsChart = ({ terms, today, name }: TermsChartProps) => {
     <ChartFrame title={title} heading="Regular price, tax included, and cost, net of tax" table={table} height={height} legend={<Legend />}>
       <div ref={plot} style={{ height }}>
         <svg width={width} height={height} role="img" aria-label={title}>
-          <LeftAxis scale={y} ticks={ticksByStep(0, top, step).map((value) => ({ value, label: format.price(value) }))} left={margin.left - 4} right={width - margin.right} />
+          <LeftAxis
+            scale={y} ticks={ticksByStep(0, top, step).map((value) => ({ value, label: format.price(value) }))} left={margin.left - 4}
+            right={width - margin.right}
+          />
           <BottomAxis scale={x} ticks={quarterTicks(from, until)} y={height - margin.bottom} />
           <line className="chart-reference" x1={x.toPixel(now)} x2={x.toPixel(now)} y1={margin.top} y2={height - margin.bottom} />
           <text className="chart-text" x={x.toPixel(now)} y={margin.top - 7} textAnchor="middle">today</text>
@@ -66,7 +71,7 @@ export const TermsChart = ({ terms, today, name }: TermsChartProps) => {
 
 const Legend = () => (
   <p className="flex flex-wrap gap-x-5 gap-y-1 text-sm text-muted">
-    <span className="inline-flex items-center gap-2"><svg width="22" height="8" aria-hidden="true"><line x1="0" x2="22" y1="4" y2="4" strokeWidth="2" className="stroke-[var(--driver-price)]" /></svg>Regular price</span>
-    <span className="inline-flex items-center gap-2"><svg width="22" height="8" aria-hidden="true"><line x1="0" x2="22" y1="4" y2="4" strokeWidth="2" strokeDasharray="5 3" className="stroke-[var(--muted)]" /></svg>Cost</span>
+    <LineKey colour="--driver-price" looks="line">Regular price</LineKey>
+    <LineKey colour="--muted" looks="dashed">Cost</LineKey>
   </p>
 );

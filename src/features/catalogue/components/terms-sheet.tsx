@@ -22,8 +22,14 @@ import { RowButton } from "./row-button";
 import { TermsChart } from "./terms-chart";
 
 const columnsOf = (format: ChainFormat, open?: (validFrom: string) => void): TableColumn<ProductTerms>[] => [
-  { id: "validFrom", header: "Valid from", value: ({ validFrom }) => validFrom, cell: (row) => (open ? <RowButton onPress={() => open(row.validFrom)}>{fromWords(row, format)}</RowButton> : fromWords(row, format)) },
-  { id: "regularPrice", header: "Regular price", align: "right", value: ({ regularPrice }) => regularPrice, cell: ({ regularPrice }) => exactMoney(regularPrice, format) },
+  {
+    id: "validFrom", header: "Valid from", value: ({ validFrom }) => validFrom,
+    cell: (row) => (open ? <RowButton onPress={() => open(row.validFrom)}>{fromWords(row, format)}</RowButton> : fromWords(row, format)),
+  },
+  {
+    id: "regularPrice", header: "Regular price", align: "right", value: ({ regularPrice }) => regularPrice,
+    cell: ({ regularPrice }) => exactMoney(regularPrice, format),
+  },
   { id: "unitCost", header: "Cost", align: "right", value: ({ unitCost }) => unitCost, cell: ({ unitCost }) => exactMoney(unitCost, format) },
   { id: "taxRate", header: "Tax", align: "right", value: ({ taxRate }) => taxRate, from: "sm", cell: ({ taxRate }) => taxWords(taxRate, format) },
 ];
@@ -46,7 +52,10 @@ export const TermsSheet = ({ product, today, mayWrite }: TermsSheetProps) => {
           <>
             <div className="px-4 pb-4 sm:px-5"><TermsChart terms={terms} today={today} name={product.name} /></div>
             <div className="border-t border-hairline">
-              <DataTable caption="Cost, price and tax by date" rows={terms} columns={columns} rowKey={({ validFrom }) => validFrom} initialSort={{ column: "validFrom", descending: true }} />
+              <DataTable
+                caption="Cost, price and tax by date" rows={terms} columns={columns} rowKey={({ validFrom }) => validFrom}
+                initialSort={{ column: "validFrom", descending: true }}
+              />
             </div>
             {open && <TermsDialog code={product.code} terms={terms.find(({ validFrom }) => validFrom === open.validFrom) ?? null} newest={terms.at(-1)} isOnly={terms.length === 1} onClose={() => setOpen(null)} />}
           </>
