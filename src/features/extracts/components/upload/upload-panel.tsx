@@ -9,6 +9,7 @@ import { countOf } from "@/lib/format/number";
 import { inspectFiles } from "../../api/choose-files";
 import type { QueuedUpload } from "../../api/upload-queue";
 import { useUploadQueue, useUploads } from "../../api/uploads";
+import { CheckGuide } from "./check-guide";
 import { ColumnGuide } from "./column-guide";
 import { PageDrop } from "./page-drop";
 import { UploadRow } from "./upload-row";
@@ -73,6 +74,7 @@ export const UploadPanel = ({ limitBytes, onArrived }: UploadPanelProps) => {
         </ul>
       )}
       <ColumnGuide key={kind} kind={kind} />
+      <CheckGuide />
     </Sheet>
   );
 };
