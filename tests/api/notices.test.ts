@@ -93,6 +93,13 @@ describe("a check that finds errors", () => {
     expect(await outbox()).toMatchObject([{ subject: "stores.csv cannot be used", text: expect.stringContaining("Nothing was loaded.") }]);
   });
 
+  it("is told where nobody has confirmed yet how the file is read", async () => {
+    const file = ["Woche;Filiale;Artikel;Menge;Umsatz;Normalpreis", "01.06.2026;S1;P1;10;17,90;1,79", "01.06.2026;S2;P1;3;5,37;1,79"].join("\n");
+    const { layoutOrigin, state, errorCount } = await checkedDirectly(test, { name: "other.csv", file });
+    expect({ layoutOrigin, state, errorCount }).toEqual({ layoutOrigin: "proposed", state: "checked", errorCount: 0 });
+    expect(await outbox()).toMatchObject([{ subject: "other.csv: confirm how it is read", text: expect.stringContaining("Someone must look at that and confirm it") }]);
+  });
+
   it("is not told where there are warnings only, and once where the file is checked again", async () => {
     await checkedDirectly(test, { file: salesFile("2026-06-01,S1,P1,-1,-1.79,1.79,,0,0,none") });
     expect(await outbox()).toEqual([]);

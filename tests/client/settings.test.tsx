@@ -54,9 +54,9 @@ describe("the notices page", () => {
   it("puts a choice back that the server did not take, and says so", async () => {
     keeping(everything, () => refusal(503, "The service is away."));
     renderInPage(<NoticeChoices email="data@larkmoor.example" roles={["data-admin"]} />);
-    await userEvent.click(await screen.findByRole("checkbox", { name: "A file has errors" }));
+    await userEvent.click(await screen.findByRole("checkbox", { name: /A file has errors/ }));
     expect(await screen.findByText(/Your choice was not kept/)).toBeTruthy();
-    await waitFor(() => expect(screen.getByRole("checkbox", { name: "A file has errors" })).toHaveProperty("checked", true));
+    await waitFor(() => expect(screen.getByRole("checkbox", { name: /A file has errors/ })).toHaveProperty("checked", true));
   });
 
   it("offers a planner what can reach a planner", async () => {

@@ -6,26 +6,29 @@ import { personName } from "../../accounts";
 import { getChain } from "../../chain";
 import { addressOf, sendNotice } from "../../notices";
 import type { Extract } from "../extracts.entities";
-import { letterOfErrors, letterOfLoad, writingOf } from "./letters";
+import { letterOfCheck, letterOfLoad, writingOf } from "./letters";
 
 /** Who plans with the sales, and who brings them. */
 const readersOfSales: Role[] = ["data-admin", "planner", "category-manager"];
 const keepersOfData: Role[] = ["data-admin"];
 
 /**
- * Tells who uploaded a file, and the data admins, that its check found errors; in the transaction in which the check ends.
+ * Tells who uploaded a file, and the data admins, that its check found errors, or that someone must confirm how it is read
+ * (a script's file would wait for ever); in the transaction in which the check ends.
  * Once a file: who checks it again sees the outcome.
  */
 export async function noticeChecked(em: EntityManager, services: Services, extract: Extract): Promise<void> {
+  const isProposal = extract.layoutOrigin === "proposed" && !extract.layoutConfirmed;
   const hasErrors = extract.state === "unusable" || (extract.errorCount ?? 0) > 0;
-  if (!hasErrors) return;
+  if (!hasErrors && !isProposal) return;
   const { rowsRead, rowsUsable, errorCount, failure } = extract;
-  const letter = letterOfErrors({
+  const letter = letterOfCheck({
     fileName: extract.fileName, kind: extract.kind, uploadedAt: extract.uploadedAt,
     uploadedBy: await personName(em, extract.uploadedBy.id),
     rows: rowsRead == null ? null : { read: rowsRead, usable: rowsUsable ?? 0, errors: errorCount ?? 0 },
     failure: failure?.detail ?? null,
     reasons: extract.issueCounts ?? [],
+    isProposal,
     address: pageOf(services, extract),
   }, writingOf(await getChain(em)));
   const to = { roles: keepersOfData, personId: extract.uploadedBy.id };

@@ -31,13 +31,15 @@ export type CheckedFacts = {
   rows: { read: number; usable: number; errors: number } | null;
   failure: string | null;
   reasons: readonly IssueCount[];
+  /** Whether a person must confirm how the file is read before it is loaded. */
+  isProposal: boolean;
   /** Of the file's page. */
   address: string | null;
 };
 
-/** Says that a check found errors, which, and what to do. */
-export function letterOfErrors(facts: CheckedFacts, writing: Writing): Letter {
-  const { fileName, kind, uploadedBy, uploadedAt, rows, failure, address } = facts;
+/** Says what a check found that someone must see to, and what to do. */
+export function letterOfCheck(facts: CheckedFacts, writing: Writing): Letter {
+  const { fileName, kind, uploadedBy, uploadedAt, rows, failure, isProposal, address } = facts;
   const counted = countedBy(writing);
   const arrived = `The file ${fileName} (${kind}), which ${uploadedBy} uploaded on ${writing.moment(uploadedAt)}, has been checked.`;
   const page = pageOf("The file's page", address);
@@ -45,9 +47,15 @@ export function letterOfErrors(facts: CheckedFacts, writing: Writing): Letter {
     const paragraphs = [`${arrived} It cannot be used as it is:`, failure ?? "None of its rows can be used.", ...reasonsOf(facts, writing)];
     return { subject: `${fileName} cannot be used`, paragraphs: [...paragraphs, `Nothing was loaded. ${page}`] };
   }
+  const toConfirm = isProposal
+    ? ["Its columns are not those of any layout that is saved, so how it is read was worked out from the file itself. Someone must look at that and confirm it before the file can be loaded; saved as a layout, the next file of this source is recognised."]
+    : [];
+  if (rows.errors === 0) {
+    return { subject: `${fileName}: confirm how it is read`, paragraphs: [arrived, ...toConfirm, `Nothing is loaded until someone does so. ${page}`] };
+  }
   const lacking = `${writing.number(rows.usable)} of its ${counted(rows.read, "row", "rows")} can be used; ${counted(rows.errors, "error was", "errors were")} found in the others.`;
   const toDo = `What to do: look at the lines on the file's page, have them corrected in the system the file comes from and upload it again, or load the rows that can be used. Nothing is loaded until someone does so. ${page}`;
-  return { subject: `${fileName}: ${counted(rows.errors, "error", "errors")} found`, paragraphs: [`${arrived} ${lacking}`, ...reasonsOf(facts, writing), toDo] };
+  return { subject: `${fileName}: ${counted(rows.errors, "error", "errors")} found`, paragraphs: [`${arrived} ${lacking}`, ...reasonsOf(facts, writing), ...toConfirm, toDo] };
 }
 
 function reasonsOf({ reasons }: CheckedFacts, writing: Writing): string[] {

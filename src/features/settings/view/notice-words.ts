@@ -7,8 +7,8 @@ type NoticeWords = { notice: Notice; label: string; hint: string; roles: readonl
 const notices: readonly NoticeWords[] = [
   {
     notice: "extract-has-errors",
-    label: "A file has errors",
-    hint: "After its check, with the reasons and what to do. For files you uploaded, and for data admins.",
+    label: "A file has errors, or waits for someone to confirm how it is read",
+    hint: "After its check, with the reasons and what to do: to who uploaded it, and to data admins.",
     roles: ["data-admin"],
   },
   {
