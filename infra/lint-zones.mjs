@@ -13,6 +13,7 @@ const sides = [
   { target: "./shared", from: ["./src", "./server", "./tests", "./demo", "./infra"], message: "shared/ is imported by both sides and imports neither." },
   { target: "./shared/engine", from: ["./shared/contract", "./shared/planning", "./shared/calendar"], message: "The engine imports nothing of ours outside itself." },
   { target: "./shared/calendar", from: ["./shared/contract", "./shared/planning", "./shared/engine"], message: "The calendar stands alone." },
+  { target: "./shared/csv", from: ["./shared/contract", "./shared/planning", "./shared/engine", "./shared/calendar", "./shared/layouts"], message: "The text of tables stands alone." },
   { target: "./shared/planning", from: "./shared/contract", message: "Planning may import engine and calendar only." },
   { target: "./shared/layouts", from: ["./shared/engine", "./shared/planning"], message: "Layouts import the contract and the calendar only." },
   { target: ["./shared/engine", "./shared/calendar", "./shared/planning", "./shared/contract"], from: "./shared/layouts", message: "Only what reads files knows layouts." },
