@@ -125,8 +125,8 @@ describe("a load", () => {
     const id = await loadDirectly("a.csv", row(june1), row(june8));
     const mails = await outbox();
     expect(mails.map(({ recipient }) => recipient)).toEqual(["category-manager@chain.example", "data-admin@chain.example", "planner@chain.example"]);
-    expect(new Set(mails.map(({ subject }) => subject))).toEqual(new Set(["Sales of 2 weeks, 1 June 2026 to 14 June 2026, loaded"]));
-    expect(mails[0]?.text).toContain("Test Person loaded the file a.csv (sales).");
+    expect(new Set(mails.map(({ subject }) => subject))).toEqual(new Set(["Sales of 2 weeks (1 June 2026 to 14 June 2026) loaded"]));
+    expect(mails[0]?.text).toContain("Test Person loaded the file a.csv (sales). It holds sales of 2 weeks (1 June 2026 to 14 June 2026).\n");
     expect(mails[0]?.text).toContain("New rows: 2\nChanged rows: 0\nRows that were there already: 0");
     expect(mails[0]?.text).toContain(`http://127.0.0.1:4310/extracts/${id}`);
     expect(mails[0]?.text).toContain("http://127.0.0.1:4310/drivers");

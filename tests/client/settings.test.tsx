@@ -152,7 +152,8 @@ describe("the chain's settings", () => {
     await openSettings();
     await userEvent.clear(screen.getByRole("textbox", { name: "Name" }));
     await save();
-    await waitFor(() => expect(screen.getByRole("textbox", { name: "Name" }).getAttribute("aria-invalid")).toBe("true"));
+    expect(await screen.findByText("Give the chain a name.")).toBeTruthy();
+    expect(screen.getByRole("textbox", { name: "Name" }).getAttribute("aria-invalid")).toBe("true");
     expect(sent).toEqual([]);
   });
 

@@ -103,7 +103,7 @@ function weeksIn(weeks: readonly Day[], { number, day }: Writing): string {
   const [first, last] = [weeks[0], weeks.at(-1)];
   if (first === undefined || last === undefined) return "no week";
   if (first === last) return `the week of ${day(first)}`;
-  return `${number(weeks.length)} weeks, ${day(first)} to ${day(addDays(last, 6))},`;
+  return `${number(weeks.length)} weeks (${day(first)} to ${day(addDays(last, 6))})`;
 }
 
 export type MissingFacts = {
@@ -128,7 +128,7 @@ export function letterOfMissingSales({ week, dueOn, dueHour, lastLoaded, waiting
     paragraphs: [
       `The sales of ${day(week)} to ${day(addDays(week, 6))} were due by ${due}, and are not loaded.${last}`,
       `${toDo} ${pageOf("Extracts", address)}`,
-      "Until they are there, scenarios and the scorecard know nothing of that week. This reminder comes once a week.",
+      "Until they are there, curves and scenarios know nothing of that week. This reminder comes once a week.",
     ],
   };
 }
