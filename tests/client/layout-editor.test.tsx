@@ -34,6 +34,8 @@ const previewOf = (part: Partial<LayoutPreview> = {}): LayoutPreview => ({
 const start: ExtractLayout = { layout, origin: "proposed", saved: null, isConfirmed: false, preview: previewOf() };
 const extract = extractWith({ fileName: "north-tills.csv", layout: { origin: "proposed", id: null, name: null, isConfirmed: false } });
 
+/** The editor waits for a pause before it asks. */
+const patience = { timeout: 5000 };
 const bodyOf = (options: RequestInit | undefined) => JSON.parse(String(options?.body)) as { layout: Layout; saveAs?: string };
 
 describe("the mapping editor", () => {
@@ -60,7 +62,7 @@ describe("the mapping editor", () => {
     const asked = answerRequests((address, { method }) => ({ status: method === "PUT" ? 202 : 200, body: address.endsWith("/preview") ? whole : method === "PUT" ? { jobId: extract.id } : {} }));
     renderInPage(<LayoutEditor extract={extract} start={start} />);
     await userEvent.selectOptions(screen.getByLabelText("What Shop becomes"), "store");
-    await screen.findByText("All of the first 1 rows can be read.");
+    await screen.findByText("All of the first 1 rows can be read.", {}, patience);
     const preview = asked.mock.calls.find(([address]) => String(address).endsWith("/layout/preview"));
     expect(bodyOf(preview?.[1]).layout.mapping.store).toEqual({ from: "name", name: "Shop" });
     const use = await screen.findByRole("button", { name: "Use this and save it as \u201cNorth tills\u201d" });
@@ -77,7 +79,7 @@ describe("the mapping editor", () => {
     const asked = answerRequests(() => ({ status: 200, body: commas }));
     renderInPage(<LayoutEditor extract={extract} start={start} />);
     await userEvent.selectOptions(screen.getByLabelText("Values are set apart by"), ",");
-    await screen.findByLabelText("What Date;Shop;Takings becomes");
+    await screen.findByLabelText("What Date;Shop;Takings becomes", {}, patience);
     expect(bodyOf(asked.mock.calls[0]?.[1]).layout).toMatchObject({ separator: ",", mapping: {}, theirColumns: [""] });
     await userEvent.click(screen.getByRole("button", { name: "Back to how it was" }));
     expect(screen.getByLabelText("What Shop becomes")).toBeTruthy();

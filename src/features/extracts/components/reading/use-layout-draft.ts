@@ -1,4 +1,4 @@
-import { useMutation, useQuery } from "@tanstack/react-query";
+import { useMutation, useQuery, useQueryClient } from "@tanstack/react-query";
 import { useEffect, useState } from "react";
 import { layoutSchema } from "@shared/contract/layouts";
 import type { Layout } from "@shared/contract/layouts";
@@ -28,7 +28,11 @@ export const useLayoutDraft = (extractId: string, start: ExtractLayout) => {
   const [draft, setDraft] = useState<Layout>(start.layout);
   const isChanged = !isSame(draft, start.layout);
   const problems = layoutSchema.safeParse(draft).error?.issues.map(({ message }) => message) ?? [];
-  const settled = useSettled(draft);
+  const queryClient = useQueryClient();
+  const rested = useSettled(draft);
+  // What has been read before is shown at once; anything else waits until the person pauses.
+  const isKnown = queryClient.getQueryData(layoutPreviewQuery(extractId, draft).queryKey) !== undefined;
+  const settled = isKnown ? draft : rested;
   const query = useQuery({
     ...layoutPreviewQuery(extractId, settled),
     enabled: !isSame(settled, start.layout) && layoutSchema.safeParse(settled).success,
@@ -37,7 +41,9 @@ export const useLayoutDraft = (extractId: string, start: ExtractLayout) => {
   const rewrite = useMutation({
     mutationFn: async (writing: Writing) => {
       const bare: Layout = { ...draft, ...writing, theirColumns: [""], mapping: {} };
-      return adoptColumns(bare, (await askPreview(extractId, bare)).fileColumns);
+      const adopted = adoptColumns(bare, (await askPreview(extractId, bare)).fileColumns);
+      await queryClient.prefetchQuery(layoutPreviewQuery(extractId, adopted));
+      return adopted;
     },
     onSuccess: setDraft,
   });
