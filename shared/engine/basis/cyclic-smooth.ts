@@ -1,8 +1,10 @@
 import { EngineError } from "../errors";
 import type { CyclicSmoothBasis, CyclicSmoothTerm } from "../types";
+import { areAlike, isLong, repeatRows } from "./alike-rows";
 import type { BasisKind } from "./basis-kind";
 import { numberColumn } from "./columns";
 import { checkDistinct, checkSize, fewValuesWarning } from "./curve-checks";
+import { distinctValues } from "./distinct-values";
 import { rangeOf } from "./ranges";
 import { seenNumbers } from "./seen-values";
 import { scaleSplines } from "./spline-grid";
@@ -18,12 +20,13 @@ export const cyclicSmooth: BasisKind<CyclicSmoothTerm, CyclicSmoothBasis> = {
     const size = checkSize(term.size ?? defaultCyclicSize, id);
     const [lower, upper] = checkPeriod(term.period, id);
     const x = numberColumn(data, term.column, role);
-    const seen = seenNumbers(x);
+    const distinct = isLong(x.length) ? distinctValues(x) : undefined;
+    const seen = seenNumbers(x, distinct);
     checkDistinct(seen.values, term.column, id);
     const basis: CyclicSmoothBasis = { kind: "cyclic-smooth", column: term.column, size, lower, upper, centring: new Float64Array(size) };
     return {
       basis,
-      rows: splineRows(x, gridOf(basis)),
+      rows: areAlike(distinct, x.length) ? repeatRows(splineRows(distinct.values, gridOf(basis)), distinct.codes) : splineRows(x, gridOf(basis)),
       seen,
       observedRange: rangeOf(seen.values),
       warnings: fewValuesWarning(seen.values.length, size, id),

@@ -1,5 +1,6 @@
 import type { SplineRows } from "../linalg/sparse-rows";
 import type { ModelData, ModelWarning } from "../types";
+import { areAlike, isLong, repeatRows } from "./alike-rows";
 import { covariate, numberColumn } from "./columns";
 import { checkDistinct, checkSize, fewValuesWarning } from "./curve-checks";
 import { distinctValues } from "./distinct-values";
@@ -17,7 +18,7 @@ export type LearntGrid = {
   rows: SplineRows;
   x: Float64Array;
   seen: { values: Float64Array; counts: Float64Array };
-  /** With each row's code, where asked for; null where there are too many to tell. */
+  /** With each row's code, where asked for or worth while; null where there are too many to tell. */
   distinct: DistinctValues | null | undefined;
   observedRange: [number, number];
   warnings: ModelWarning[];
@@ -42,7 +43,7 @@ export function learnGrid(
   const x = covariate(data, from, from.role);
   const isLog = from.log === true;
   const own = isLog ? numberColumn(data, from.column, from.role) : x;
-  const distinct = from.coded === true ? distinctValues(own) : undefined;
+  const distinct = from.coded === true || isLong(own.length) ? distinctValues(own) : undefined;
   const seen = seenNumbers(own, distinct);
   checkDistinct(seen.values, from.column, from.id);
   const observedRange = rangeOf(seen.values);
@@ -51,7 +52,9 @@ export function learnGrid(
   const grid: SplineGrid = { column: from.column, log: isLog, size, lower: smallest - margin, upper: largest + margin };
   return {
     grid, x, seen, distinct, observedRange,
-    rows: splineRows(x, intervalsOf(grid)),
+    rows: areAlike(distinct, x.length)
+      ? repeatRows(splineRows(isLog ? distinct.values.map(Math.log) : distinct.values, intervalsOf(grid)), distinct.codes)
+      : splineRows(x, intervalsOf(grid)),
     warnings: fewValuesWarning(seen.values.length, size, from.id),
   };
 }
@@ -77,7 +80,7 @@ export function gridLogSlopes(grid: SplineGrid, data: ModelData, role: string): 
  * @returns new rows; those given stay as they are.
  */
 export const scaleSplines = (rows: SplineRows, by: Float64Array): SplineRows =>
-  ({ ...rows, values: rows.values.map((value, at) => value * by[at >> 2]) });
+  ({ ...rows, values: rows.values.map((value, at) => value * by[at >> 2]), alike: undefined });
 
 /** Values of `size` evenly spaced points from one end of a range to the other, ends included. */
 export const evenlySpaced = ([from, to]: readonly [number, number], size: number): Float64Array =>

@@ -1,6 +1,8 @@
 import { crossEntries, crossTensor } from "./cross-entries";
+import { crossAlike } from "./cross-alike";
+import { crossKernel } from "./cross-kernels";
 import { paddedWidth } from "./sparse-rows";
-import type { IndexRows as Index, SingleRows as Single, SparseRows, SplineRows as Spline } from "./sparse-rows";
+import type { SparseRows } from "./sparse-rows";
 
 export { groupSquare } from "./group-square";
 
@@ -30,10 +32,7 @@ export function crossProduct(left: SparseRows, right: SparseRows, weights: Float
     return;
   }
   const scaled = withValues(right, withValues(left, weights));
-  if (left.storage === "single") crossSingle(left, right, scaled, out);
-  else if (left.storage === "index") crossIndex(left, right as Index | Spline, scaled, out);
-  else if (left === right) squareSpline(left, scaled, out);
-  else crossSplines(left, right as Spline, scaled, out);
+  if (!crossAlike(left, right, scaled, out)) crossKernel(left, right, scaled, out);
   closeCircles(left, right, out);
 }
 
@@ -47,101 +46,6 @@ function withValues(rows: SparseRows, weights: Float64Array): Float64Array {
   const scaled = new Float64Array(weights.length);
   for (let row = 0; row < scaled.length; row++) scaled[row] = weights[row] * values[row];
   return scaled;
-}
-
-function crossSingle(left: Single, right: Single | Index | Spline, weights: Float64Array, out: Float64Array): void {
-  const count = weights.length;
-  const own = left.values;
-  if (right.storage === "single") {
-    let sum = 0;
-    for (let row = 0; row < count; row++) sum += weights[row] * own[row] * right.values[row];
-    out[0] = sum;
-  } else if (right.storage === "index") {
-    for (let row = 0; row < count; row++) out[right.index[row]] += weights[row] * own[row];
-  } else {
-    const { first, values } = right;
-    for (let row = 0; row < count; row++) {
-      const scaled = weights[row] * own[row];
-      const at = 4 * row;
-      const from = first[row];
-      out[from] += scaled * values[at];
-      out[from + 1] += scaled * values[at + 1];
-      out[from + 2] += scaled * values[at + 2];
-      out[from + 3] += scaled * values[at + 3];
-    }
-  }
-}
-
-function crossIndex(left: Index, right: Index | Spline, weights: Float64Array, out: Float64Array): void {
-  const count = weights.length;
-  const own = left.index;
-  if (right.storage === "index") {
-    for (let row = 0; row < count; row++) out[own[row] * right.width + right.index[row]] += weights[row];
-  } else {
-    const { first, values } = right;
-    const stride = paddedWidth(right);
-    for (let row = 0; row < count; row++) {
-      const weight = weights[row];
-      const at = 4 * row;
-      const from = own[row] * stride + first[row];
-      out[from] += weight * values[at];
-      out[from + 1] += weight * values[at + 1];
-      out[from + 2] += weight * values[at + 2];
-      out[from + 3] += weight * values[at + 3];
-    }
-  }
-}
-
-function crossSplines(left: Spline, right: Spline, weights: Float64Array, out: Float64Array): void {
-  const stride = paddedWidth(right);
-  const own = left.values;
-  const other = right.values;
-  for (let row = 0; row < weights.length; row++) {
-    const at = 4 * row;
-    const r0 = other[at];
-    const r1 = other[at + 1];
-    const r2 = other[at + 2];
-    const r3 = other[at + 3];
-    let to = left.first[row] * stride + right.first[row];
-    for (let k = 0; k < 4; k++, to += stride) {
-      const scaled = weights[row] * own[at + k];
-      out[to] += scaled * r0;
-      out[to + 1] += scaled * r1;
-      out[to + 2] += scaled * r2;
-      out[to + 3] += scaled * r3;
-    }
-  }
-}
-
-/** A spline with itself: the upper triangle only, mirrored at the end. */
-function squareSpline(rows: Spline, weights: Float64Array, out: Float64Array): void {
-  const stride = paddedWidth(rows);
-  const { first, values } = rows;
-  for (let row = 0; row < weights.length; row++) {
-    const weight = weights[row];
-    const at = 4 * row;
-    const v0 = values[at];
-    const v1 = values[at + 1];
-    const v2 = values[at + 2];
-    const v3 = values[at + 3];
-    const to = first[row] * (stride + 1);
-    const w0 = weight * v0;
-    const w1 = weight * v1;
-    const w2 = weight * v2;
-    out[to] += w0 * v0;
-    out[to + 1] += w0 * v1;
-    out[to + 2] += w0 * v2;
-    out[to + 3] += w0 * v3;
-    out[to + stride + 1] += w1 * v1;
-    out[to + stride + 2] += w1 * v2;
-    out[to + stride + 3] += w1 * v3;
-    out[to + 2 * stride + 2] += w2 * v2;
-    out[to + 2 * stride + 3] += w2 * v3;
-    out[to + 3 * stride + 3] += weight * v3 * v3;
-  }
-  for (let row = 0; row < stride; row++) {
-    for (let column = 0; column < row; column++) out[row * stride + column] = out[column * stride + row];
-  }
 }
 
 /** Adds the three padded rows and columns of a circle to the ones they stand for, and closes the gaps in `out`. */

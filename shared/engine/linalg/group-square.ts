@@ -1,5 +1,5 @@
 import { gatherRow, roomForRow } from "./sparse-rows";
-import type { SparseRows, SplineRows } from "./sparse-rows";
+import type { IndexRows, SparseRows, SplineRows } from "./sparse-rows";
 
 /** A term on groups: column of group g is g x width + k. */
 type GroupedRows = { rows: SparseRows; width: number };
@@ -20,6 +20,8 @@ export function groupSquare(
   out.fill(0, 0, by.count * left.width * right.width);
   if (left.rows.storage === "spline" && right.rows.storage === "spline") {
     splineBlocks({ rows: left.rows, width: left.width }, { rows: right.rows, width: right.width }, weights, out);
+  } else if (left.rows.storage === "index" && left.rows === right.rows && left.width === 1) {
+    indexSquares(left.rows, weights, out);
   } else {
     entryBlocks(left, right, weights, out);
   }
@@ -51,6 +53,12 @@ function splineBlocks(left: GroupedSplines, right: GroupedSplines, weights: Floa
       out[to + 3] += scaled * r3;
     }
   }
+}
+
+/** A column a group: its square is the group's sum of weights (times squared values). */
+function indexSquares({ index, values }: IndexRows, weights: Float64Array, out: Float64Array): void {
+  if (values === null) for (let row = 0; row < weights.length; row++) out[index[row]] += weights[row];
+  else for (let row = 0; row < weights.length; row++) out[index[row]] += weights[row] * values[row] * values[row];
 }
 
 /** Any pair: block row (left column) of group g starts at (left column) x right.width, since left columns are group by group. */

@@ -9,7 +9,9 @@ export type SparseRows = SingleRows | IndexRows | SplineRows | DenseRows | Tenso
 
 export type SingleRows = { storage: "single"; width: 1; values: Float64Array };
 export type IndexRows = { storage: "index"; width: number; index: Int32Array; values: Float64Array | null };
-export type SplineRows = { storage: "spline"; width: number; wraps: boolean; first: Int32Array; values: Float64Array };
+export type SplineRows = { storage: "spline"; width: number; wraps: boolean; first: Int32Array; values: Float64Array; alike?: AlikeRows };
+/** Where many rows are alike, each distinct one once, and per row which it is. */
+export type AlikeRows = { codes: Int32Array; rows: SplineRows };
 export type DenseRows = { storage: "dense"; width: number; values: Float64Array };
 export type TensorRows = { storage: "tensor"; width: number; left: SplineRows; right: SplineRows };
 
@@ -58,6 +60,13 @@ export function addRowsTimes(rows: SparseRows, coefficients: Float64Array, first
 }
 
 function addSplineTimes(rows: SplineRows, coefficients: Float64Array, first: number, out: Float64Array): void {
+  if (rows.alike !== undefined) {
+    const { codes, rows: distinct } = rows.alike;
+    const products = new Float64Array(distinct.first.length);
+    addSplineTimes(distinct, coefficients, first, products);
+    for (let row = 0; row < out.length; row++) out[row] += products[codes[row]];
+    return;
+  }
   const unwrapped = unwrap(coefficients.subarray(first, first + rows.width), rows.wraps);
   const { values } = rows;
   for (let row = 0; row < out.length; row++) {
@@ -123,6 +132,13 @@ export function addTransposeTimes(rows: SparseRows, vector: Float64Array, out: F
 
 /** Summed over the padded columns first, so that no row asks for the circle. */
 function addSplineTranspose(rows: SplineRows, vector: Float64Array, out: Float64Array, first: number): void {
+  if (rows.alike !== undefined) {
+    const { codes, rows: distinct } = rows.alike;
+    const totals = new Float64Array(distinct.first.length);
+    for (let row = 0; row < codes.length; row++) totals[codes[row]] += vector[row];
+    addSplineTranspose(distinct, totals, out, first);
+    return;
+  }
   const { width, values, first: columns } = rows;
   const sums = new Float64Array(width + 3);
   for (let row = 0, at = 0; row < vector.length; row++, at += 4) {
