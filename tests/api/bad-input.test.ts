@@ -54,6 +54,7 @@ describe("a body that cannot be used", () => {
   it("is refused at every route where it is a list or has other types, with the parts that are wrong", async () => {
     for (const endpoint of withJson()) {
       const response = await send(endpoint).send([1, 2]);
+      expect(response.status, nameOf(endpoint)).toBe(422);
       expectProblem(response, 422, "invalid-request");
       expect(response.body.errors.length, nameOf(endpoint)).toBeGreaterThan(0);
     }
@@ -99,7 +100,8 @@ describe("a body that cannot be used", () => {
 describe("an address that cannot be used", () => {
   it("answers that there is no such thing for an unknown or impossible identifier", async () => {
     for (const endpoint of endpoints.filter(({ params }) => params)) {
-      expectProblem(await send(endpoint, pathOf(endpoint, "no-identifier")), 404, "not-found");
+      // Codes are the chain's own: there is no impossible one.
+      if (endpoint.path.includes(":id")) expectProblem(await send(endpoint, pathOf(endpoint, "no-identifier")), 404, "not-found");
       // What else the route needs is looked at before it looks for the thing.
       const needsMore = [endpoint.body, endpoint.query].some((schema) => schema && !schema.safeParse({}).success);
       if (!needsMore) expectProblem(await send(endpoint).send(endpoint.body ? {} : undefined), 404, "not-found");

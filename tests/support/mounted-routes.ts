@@ -23,7 +23,10 @@ export function mountedEndpoints(app: Express): Endpoint[] {
   });
 }
 
-/** The endpoint's path with an identifier that nothing has. */
-export function pathOf({ path }: Endpoint, id = "00000000-0000-4000-8000-000000000000"): string {
-  return path.replace(/:\w+/g, id);
+/** Parameters that are neither identifiers nor codes, and a value that is right for each. */
+const others: Record<string, string> = { ":firstDay": "2026-06-01", ":validFrom": "2026-06-01", ":week": "2026-06-01", ":scope": "store" };
+
+/** The endpoint's path with an identifier that nothing has: a number for occurrences of events, else a UUID. */
+export function pathOf({ path }: Endpoint, id = path.startsWith("/api/events/") ? "999999999" : "00000000-0000-4000-8000-000000000000"): string {
+  return path.replace(/:\w+/g, (name) => others[name] ?? id);
 }
