@@ -1,5 +1,6 @@
-import type { SplineRows } from "../linalg/sparse-rows";
+import type { AlikeRows, SplineRows } from "../linalg/sparse-rows";
 import type { DistinctValues } from "./distinct-values";
+import { splinesPerLevel } from "./levels";
 
 /** Rows from which on it pays to look after those that are alike, and how many must share a distinct one on average. */
 const manyRows = 4_000;
@@ -19,56 +20,54 @@ export const isLong = (rows: number): boolean => rows >= manyRows;
 const isMany = (distinct: number, rows: number): boolean => isLong(rows) && fewestAlike * distinct <= rows;
 
 /**
- * Every row from its distinct one.
+ * Every row from its distinct one; written out per row only when something asks for that, as many sums never do.
  *
  * @param distinct splines of the distinct values. codes per row, which of them.
  * @example repeatRows(splineRows(values, grid), codes);
  */
 export function repeatRows(distinct: SplineRows, codes: Int32Array): SplineRows {
+  let whole: Pick<SplineRows, "first" | "values"> | null = null;
+  const written = () => (whole ??= writeRows(distinct, codes));
+  return {
+    storage: "spline", width: distinct.width, wraps: distinct.wraps, alike: { codes, rows: distinct },
+    get first() { return written().first; },
+    get values() { return written().values; },
+  };
+}
+
+function writeRows(distinct: SplineRows, codes: Int32Array): Pick<SplineRows, "first" | "values"> {
   const first = new Int32Array(codes.length);
   const values = new Float64Array(4 * codes.length);
   for (let row = 0; row < codes.length; row++) {
-    const own = codes[row];
-    const from = 4 * own;
-    const to = 4 * row;
-    first[row] = distinct.first[own];
-    values[to] = distinct.values[from];
-    values[to + 1] = distinct.values[from + 1];
-    values[to + 2] = distinct.values[from + 2];
-    values[to + 3] = distinct.values[from + 3];
+    first[row] = distinct.first[codes[row]];
+    for (let k = 0; k < 4; k++) values[4 * row + k] = distinct.values[4 * codes[row] + k];
   }
-  return { ...distinct, first, values, alike: { codes, rows: distinct } };
+  return { first, values };
 }
 
 /** Distinct values times levels up to which a table of their codes is made. */
 const mostCells = 1_000_000;
 
 /**
- * The same for a curve per level, whose rows are alike where value and level are.
+ * Splines of a curve per level, whose rows are alike where value and level are.
  *
- * @param rows of all levels' splines. Not changed.
- * @param of.values per row, the code of its value, one of `distinct`; of.levels its level, one of `count`.
- * @example withAlikeLevels(splinesPerLevel(rows, index, 11), { values: codes, distinct: 5258, levels: index, count: 11 });
+ * @param alike rows of one curve. index per row, the position of its level, of which there are `count`.
+ * @returns null where too few are alike.
+ * @example repeatPerLevel(rows.alike, index, 11)?.width; // 11 times that of the one curve
  */
-export function withAlikeLevels(
-  rows: SplineRows, of: { values: Int32Array; distinct: number; levels: Int32Array; count: number },
-): SplineRows {
-  const { values, distinct, levels, count } = of;
-  if (distinct * count > mostCells) return rows;
-  const codeOf = new Int32Array(distinct * count).fill(-1);
+export function repeatPerLevel({ codes: values, rows }: AlikeRows, index: Int32Array, count: number): SplineRows | null {
+  const distinct = rows.first.length;
+  if (distinct * count > mostCells) return null;
+  const codeOf = new Int32Array(distinct * count);
   const codes = new Int32Array(values.length);
-  const examples: number[] = [];
+  const cells: number[] = [];
   for (let row = 0; row < codes.length; row++) {
-    const cell = levels[row] * distinct + values[row];
-    if (codeOf[cell] < 0) codeOf[cell] = examples.push(row) - 1;
-    codes[row] = codeOf[cell];
+    const cell = index[row] * distinct + values[row];
+    if (codeOf[cell] === 0) codeOf[cell] = cells.push(cell);
+    codes[row] = codeOf[cell] - 1;
   }
-  if (!isMany(examples.length, codes.length)) return rows;
-  const alike: SplineRows = {
-    storage: "spline", width: rows.width, wraps: false,
-    first: Int32Array.from(examples, (row) => rows.first[row]),
-    values: new Float64Array(4 * examples.length),
-  };
-  examples.forEach((row, own) => alike.values.set(rows.values.subarray(4 * row, 4 * row + 4), 4 * own));
-  return { ...rows, alike: { codes, rows: alike } };
+  if (!isMany(cells.length, codes.length)) return null;
+  const own = Int32Array.from(cells, (cell) => cell % distinct);
+  const levels = Int32Array.from(cells, (cell) => Math.floor(cell / distinct));
+  return repeatRows(splinesPerLevel({ ...rows, ...writeRows(rows, own) }, levels, count), codes);
 }

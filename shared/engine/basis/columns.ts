@@ -37,6 +37,11 @@ export function rowCount(data: ModelData, columns: readonly (readonly [name: str
 /** Products of three values must stay finite. */
 const largestMagnitude = 1e50;
 
+function isWithin(values: Float64Array): boolean {
+  for (let row = 0; row < values.length; row++) if (!(Math.abs(values[row]) <= largestMagnitude)) return false;
+  return true;
+}
+
 /**
  * A column of finite numbers, of magnitude up to 1e50.
  *
@@ -46,7 +51,8 @@ const largestMagnitude = 1e50;
  */
 export function numberColumn(data: ModelData, name: string, role: string): Float64Array {
   const raw = rawColumn(data, name, role);
-  const values = raw instanceof Float64Array ? raw : new Float64Array(raw.length);
+  if (raw instanceof Float64Array && isWithin(raw)) return raw;
+  const values = new Float64Array(raw.length);
   for (let row = 0; row < raw.length; row++) {
     const value = raw[row];
     if (typeof value !== "number") {

@@ -1,7 +1,7 @@
 import { addTransposeTimes } from "../linalg/sparse-rows";
 import type { SplineRows } from "../linalg/sparse-rows";
 import type { LevelledSmoothBasis, ModelData } from "../types";
-import { areAlike, withAlikeLevels } from "./alike-rows";
+import { repeatPerLevel } from "./alike-rows";
 import type { BasisKind } from "./basis-kind";
 import { levelColumn, numberColumn } from "./columns";
 import { knownPositions, learnLevels, splinesPerLevel } from "./levels";
@@ -19,10 +19,8 @@ export const levelledSmooth: BasisKind<ScaledSmoothTerm, LevelledSmoothBasis> = 
   learn(term, id, data) {
     const learnt = learnGrid({ column: term.column, log: term.log, size: term.size ?? defaultSmoothSize, id, role, coded: true }, data);
     const { levels, index } = learnLevels(data, term.by, byRole);
-    const plain = splinesPerLevel(learnt.rows, index, levels.length);
-    const rows = areAlike(learnt.distinct, index.length)
-      ? withAlikeLevels(plain, { values: learnt.distinct.codes, distinct: learnt.distinct.values.length, levels: index, count: levels.length })
-      : plain;
+    const repeated = learnt.rows.alike === undefined ? null : repeatPerLevel(learnt.rows.alike, index, levels.length);
+    const rows = repeated ?? splinesPerLevel(learnt.rows, index, levels.length);
     const basis: LevelledSmoothBasis = { kind: "levelled-smooth", ...learnt.grid, by: term.by, levels, centring: levelMeans(rows, index, levels.length) };
     const seen = { ...learnt.seen, byLevel: seenPerLevel(numberColumn(data, term.column, role), index, levels.length, learnt.distinct) };
     return { basis, rows, seen, observedRange: learnt.observedRange, warnings: learnt.warnings };

@@ -31,7 +31,7 @@ export function learnLevels(data: ModelData, column: string, role: string): { le
   // A number and its text are the same level.
   const levels = [...new Set(met)].sort(byNumberThenText);
   const positions = levelPositions(levels, met);
-  for (let row = 0; row < index.length; row++) index[row] = positions[index[row]];
+  if (positions.some((position, order) => position !== order)) for (let row = 0; row < index.length; row++) index[row] = positions[index[row]];
   return { levels, index };
 }
 

@@ -67,7 +67,12 @@ function seenBySorting(values: Float64Array): { values: Float64Array; counts: Fl
  */
 export function seenLevels(levels: readonly string[], index: Int32Array): SeenValues {
   const counts = new Float64Array(levels.length);
-  for (let row = 0; row < index.length; row++) counts[index[row]]++;
+  let start = 0;
+  for (let row = 1; row <= index.length; row++) {
+    if (row < index.length && index[row] === index[start]) continue;
+    counts[index[start]] += row - start;
+    start = row;
+  }
   return { values: [...levels], counts };
 }
 

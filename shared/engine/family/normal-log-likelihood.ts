@@ -13,7 +13,7 @@ export function normalLogLikelihood({ values, around, weights }: Record<"values"
   for (let row = 0; row < count; row++) {
     const residual = values[row] - around[row];
     squares += weights[row] * residual * residual;
-    logWeights += Math.log(weights[row]);
+    if (weights[row] !== 1) logWeights += Math.log(weights[row]);
   }
   const variance = Math.max(squares / count, Number.MIN_VALUE);
   return -0.5 * count * (Math.log(2 * Math.PI) + Math.log(variance) + 1) + 0.5 * logWeights;

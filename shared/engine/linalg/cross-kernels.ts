@@ -45,7 +45,21 @@ function crossIndex(left: Index, right: Index | Spline, weights: Float64Array, o
   const count = weights.length;
   const own = left.index;
   if (right.storage === "index") {
-    for (let row = 0; row < count; row++) out[own[row] * right.width + right.index[row]] += weights[row];
+    const { index, width } = right;
+    for (let row = 0; row < count; row++) out[own[row] * width + index[row]] += weights[row];
+  } else if (right.alike !== undefined) {
+    const { codes, rows: { first, values } } = right.alike;
+    const stride = paddedWidth(right);
+    for (let row = 0; row < count; row++) {
+      const weight = weights[row];
+      const code = codes[row];
+      const at = 4 * code;
+      const from = own[row] * stride + first[code];
+      out[from] += weight * values[at];
+      out[from + 1] += weight * values[at + 1];
+      out[from + 2] += weight * values[at + 2];
+      out[from + 3] += weight * values[at + 3];
+    }
   } else {
     const { first, values } = right;
     const stride = paddedWidth(right);

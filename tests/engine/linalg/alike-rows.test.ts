@@ -2,7 +2,7 @@ import { describe, expect, it } from "vitest";
 import { crossProduct } from "@shared/engine/linalg/cross-products";
 import { addRowsTimes, addTransposeTimes, paddedWidth } from "@shared/engine/linalg/sparse-rows";
 import type { SparseRows, SplineRows } from "@shared/engine/linalg/sparse-rows";
-import { areAlike, repeatRows, withAlikeLevels } from "@shared/engine/basis/alike-rows";
+import { areAlike, repeatPerLevel, repeatRows } from "@shared/engine/basis/alike-rows";
 import { distinctValues } from "@shared/engine/basis/distinct-values";
 import { splinesPerLevel } from "@shared/engine/basis/levels";
 import { splineRows } from "@shared/engine/basis/uniform-spline";
@@ -24,8 +24,10 @@ function alikeOf(values: Float64Array, grid: typeof line): SplineRows {
 }
 
 function perLevelAlike(): SplineRows {
-  const { values, codes } = distinctValues(prices) ?? { values: new Float64Array(), codes: new Int32Array() };
-  return withAlikeLevels(splinesPerLevel(alikeOf(prices, line), levels, 3), { values: codes, distinct: values.length, levels, count: 3 });
+  const { alike } = alikeOf(prices, line);
+  const rows = alike === undefined ? null : repeatPerLevel(alike, levels, 3);
+  if (rows === null) throw new Error("These values do repeat within levels.");
+  return rows;
 }
 
 const plain = (rows: SparseRows): SparseRows => (rows.storage === "spline" ? { ...rows, alike: undefined } : rows);
@@ -82,6 +84,9 @@ describe("rows that are alike", () => {
   it("hold the very values that splines of the whole column have", () => {
     expect(price.values).toEqual(splineRows(prices, line).values);
     expect(price.first).toEqual(splineRows(prices, line).first);
+    const own = splinesPerLevel(splineRows(prices, line), levels, 3);
+    expect(perLevel.values).toEqual(own.values);
+    expect(perLevel.first).toEqual(own.first);
     expect(season.values).toEqual(splineRows(weeks, circle).values);
   });
 
