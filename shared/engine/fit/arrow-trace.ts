@@ -19,13 +19,14 @@ export function traceArrow(system: ArrowSystem, penalties: readonly Penalty[], s
   const squares = new Float64Array(size);
   const factor = new Float64Array(size * size);
   for (let group = 0; group < count; group++) goBack({ state, arrow, group, size, shared, factor });
-  const links = { values: arrow.link, count: count * size, width: shared };
-  rowProducts(links, { values: state.inverse, count: shared, width: shared }, arrow.spread);
+  const { link, spread } = arrow;
+  const links = { values: link, count: count * size, width: shared };
+  rowProducts(links, { values: state.inverse, count: shared, width: shared }, spread);
   for (let group = 0; group < count; group++) {
     for (let k = 0; k < size; k++) {
       const at = (group * size + k) * shared;
       let variance = arrow.inner[(group * size + k) * size + k];
-      for (let i = 0; i < shared; i++) variance += arrow.link[at + i] * arrow.spread[at + i];
+      for (let i = 0; i < shared; i++) variance += link[at + i] * spread[at + i];
       traces[k] += variance;
       squares[k] += arrow.coefficients[group * size + k] ** 2;
     }
@@ -53,7 +54,9 @@ function goBack(of: { state: LikelihoodState; arrow: ArrowState; group: number; 
   factor.set(block);
   invertFactored(factor, size, block);
   for (let k = 0; k < size; k++) {
-    for (let i = 0; i < shared; i++) own[k] -= rows[k * shared + i] * coefficients[i];
+    let estimate = own[k];
+    for (let i = 0; i < shared; i++) estimate -= rows[k * shared + i] * coefficients[i];
+    own[k] = estimate;
   }
 }
 
