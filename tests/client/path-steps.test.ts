@@ -32,6 +32,13 @@ describe("the way of a file", () => {
     expect(line(part, "read")).toBe("Not every column that is needed has been found");
   });
 
+  it("leads to how the file is read first where, read as proposed, no row can be used", () => {
+    const rows = { read: 60, usable: 0, errors: 60, warnings: 0 };
+    const part: Partial<Extract> = { state: "unusable", rows, layout: proposed, failure: { code: "no-usable-rows", detail: "x" } };
+    expect(marks(part)).toEqual(["done", "now", "look", "waiting", "waiting"]);
+    expect(line(part, "wrong")).toBe("Read as above, no row can be used: look there first");
+  });
+
   it("says why a file cannot be used at all", () => {
     const part: Partial<Extract> = { state: "unusable", rows: null, layout: null, failure: { code: "no-rows", detail: "x" } };
     expect(marks(part)).toEqual(["done", "waiting", "stopped", "waiting", "waiting"]);
@@ -40,7 +47,7 @@ describe("the way of a file", () => {
   it("opens what is wrong and what loading changes where a person decides, in counts", () => {
     const rows = { read: 1200, usable: 1198, errors: 3, warnings: 1 };
     expect(open({ rows })).toEqual(["wrong", "changes"]);
-    expect(line({ rows }, "wrong")).toBe("3 errors, 1 warning: 2 rows of 1,200 left out");
+    expect(line({ rows }, "wrong")).toBe("3 errors, 1 warning: 1,198 of 1,200 rows can be used");
     expect(line({ rows }, "changes")).toBe("1,198 rows can be loaded");
     expect(open({})).toEqual(["changes"]);
     expect(line({}, "wrong")).toBe("Nothing: all 10 rows can be used");

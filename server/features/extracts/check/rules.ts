@@ -51,8 +51,8 @@ export const rules = {
     "last-before-first": error("The last day lies before the first", "Exchange the two days, or correct one."),
   }),
   ...about("Codes", {
-    "unknown-store": error("There is no store with this code", "Load the store with a stores file first, or correct the code. Then check again."),
-    "unknown-product": error("There is no product with this code or GTIN", "Load the product with a products file first, or correct the code. Then check again."),
+    "unknown-store": error("There is no store with this code", "If it is new, enter it in the catalogue and check again. If it is mistyped, correct it in the system the file comes from."),
+    "unknown-product": error("There is no product with this code or GTIN", "If it is new, enter it in the catalogue and check again. If it is mistyped, correct it in the system the file comes from."),
     "ambiguous-product": error("Several products have this GTIN", "Give the chain's own code of the product."),
     "unknown-region": warning("No store is in this region", "Check the region's name against the stores."),
     "store-or-region": error("A temperature is for a region or for a store", "Fill in one of the two."),

@@ -25,7 +25,7 @@ export const needsLayout = ({ state, failure }: Pick<Extract, "state" | "failure
 export const describeState = (extract: Pick<Extract, "state" | "rows" | "failure" | "layout">): { word: string; tone: TagTone } => {
   const { state, rows, layout } = extract;
   if (needsLayout(extract)) return { word: "Columns to match", tone: "caution" };
-  if (state === "checked" && layout?.isConfirmed === false) return { word: "Reading to confirm", tone: "caution" };
+  if ((state === "checked" || (state === "unusable" && rows)) && layout?.isConfirmed === false) return { word: "Reading to confirm", tone: "caution" };
   if (state === "checked" && rows && rows.usable === 0) return { word: "No usable rows", tone: "danger" };
   if (state === "checked" && rows && rows.errors > 0) return { word: "Ready, with errors", tone: "caution" };
   return stateWords[state];

@@ -55,13 +55,16 @@ const wrong = (extract: Extract): Said => {
   if (state === "received" && failure) return { mark: "stopped", line: "The check broke down", isOpen: true };
   if (state === "received" || state === "checking") return { mark: "working", line: "Checking the rows", isOpen: true };
   if (needsLayout(extract)) return { mark: "waiting", line: "Known once it is said how the file is read" };
+  if (state === "unusable" && rows && isUnconfirmed(extract)) {
+    return { mark: "look", line: "Read as above, no row can be used: look there first", isOpen: true };
+  }
   if (state === "unusable") return { mark: "stopped", line: "This file cannot be used", isOpen: true };
   if (!rows) return { mark: "waiting", line: "Known after the check" };
   const isOpen = state === "checked" && !isUnconfirmed(extract) && rows.errors + rows.warnings > 0;
   const warnings = rows.warnings > 0 ? countOf(rows.warnings, "warning") : "";
   if (rows.errors > 0) {
-    const left = `${countOf(rows.errors, "error")}${warnings && `, ${warnings}`}: ${countOf(rows.read - rows.usable, "row")} of ${countOf(rows.read, "row").split(" ")[0]} left out`;
-    return { mark: "look", line: left, isOpen };
+    const usable = `${countOf(rows.usable, "row").split(" ")[0]} of ${countOf(rows.read, "row")} can be used`;
+    return { mark: "look", line: `${countOf(rows.errors, "error")}${warnings && `, ${warnings}`}: ${usable}`, isOpen };
   }
   if (warnings) return { mark: "done", line: `${warnings}; every row can be used`, isOpen };
   return { mark: "done", line: `Nothing: all ${countOf(rows.read, "row")} can be used` };

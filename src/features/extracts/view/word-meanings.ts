@@ -35,13 +35,16 @@ const partsOfPromotion = ["feature", "display", "mechanic"];
 
 export type UnknownWord = { word: string; column: string; meanings: readonly MeaningLabel[] };
 
+/** What is longer is no word, but a row that was not cut into columns. */
+const longestWord = 40;
+
 /** Words of the first rows that stand in no list, each once. */
 export const unknownWords = ({ rows }: Pick<LayoutPreview, "rows">, { mapping }: Pick<Layout, "mapping">): UnknownWord[] => {
   const found = new Map<string, UnknownWord>();
   for (const { column, value } of rows.flatMap(({ problems }) => problems)) {
     const source = column in mapping || !partsOfPromotion.includes(column) ? column : promotionColumn;
     const meanings = meaningsOf[source];
-    if (meanings && !found.has(`${source} ${value}`)) found.set(`${source} ${value}`, { word: value, column: source, meanings });
+    if (meanings && value.length <= longestWord && !found.has(`${source} ${value}`)) found.set(`${source} ${value}`, { word: value, column: source, meanings });
   }
   return [...found.values()];
 };

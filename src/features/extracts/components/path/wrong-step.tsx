@@ -11,20 +11,26 @@ type WrongStepProps = { extract: Extract; filter: IssueFilter; onFilter: (filter
 
 /** What the check found: why the file cannot be used, or what is wrong with its rows and what can be done. */
 export const WrongStep = ({ extract, filter, onFilter }: WrongStepProps) => {
-  const { state, rows, failure } = extract;
+  const { state, rows, failure, layout } = extract;
   if (failure && !needsLayout(extract) && (state === "unusable" || state === "received")) {
+    const isReadWrongly = state === "unusable" && rows !== null && layout?.isConfirmed === false;
+    const said = isReadWrongly ? "Read so, no row can be used. " : "This file cannot be used. ";
+    const hasList = state === "unusable" && rows !== null && rows.errors > 0;
     return (
-      <Padded>
-        <Notice tone="danger" role="alert">
-          <strong className="font-semibold">
-            {state === "unusable" ? "This file cannot be used. " : "The check broke down; nothing was changed. "}
-          </strong>
-          {failure.detail}
-        </Notice>
-        <div className="mt-4">
-          <CheckAgain extract={extract} />
-        </div>
-      </Padded>
+      <>
+        <Padded>
+          <Notice tone={isReadWrongly ? "caution" : "danger"} role="alert">
+            <strong className="font-semibold">{state === "unusable" ? said : "The check broke down; nothing was changed. "}</strong>
+            {failure.detail}
+          </Notice>
+          {!hasList && (
+            <div className="mt-4">
+              <CheckAgain extract={extract} />
+            </div>
+          )}
+        </Padded>
+        {hasList && <IssueList extract={extract} filter={filter} onFilter={onFilter} actions={<CheckAgain extract={extract} />} />}
+      </>
     );
   }
   if (!rows) return <Padded>Every row is checked before anything is loaded.</Padded>;
