@@ -27,6 +27,6 @@ function check(caller: Caller, { permission, beforePasswordChange }: Endpoint): 
   const detail =
     caller.tokenId === null
       ? "Your roles do not allow this. Ask an administrator of the chain if you need it."
-      : "This access token, or its maker's roles today, do not allow this.";
+      : `This access token, or its maker's roles today, do not allow this: it needs "${permission}".`;
   throw new ProblemError({ status: 403, code: "not-allowed", detail });
 }

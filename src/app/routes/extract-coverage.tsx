@@ -47,8 +47,8 @@ export const ExtractCoverageRoute = () => {
     );
   return (
     <>
-      <PageHeader title="Coverage" facts={["Which weeks of which stores are loaded; a cell leads to its file"]} />
       <ExtractsViews />
+      <PageHeader title="Coverage" facts={["Which weeks of which stores are loaded; a cell leads to its file"]} />
       <Sheet>
         <QueryView
           query={query}

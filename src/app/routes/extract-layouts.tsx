@@ -20,8 +20,8 @@ export const ExtractLayoutsRoute = () => {
   const mayChange = usePermission("extracts:write");
   return (
     <>
-      <PageHeader title="Saved layouts" facts={["How the files of each source are read; a file that fits one is recognised by itself"]} />
       <ExtractsViews />
+      <PageHeader title="Saved layouts" facts={["How the files of each source are read; a file that fits one is recognised by itself"]} />
       <Sheet flush>
         <QueryView
           query={query}

@@ -31,8 +31,8 @@ export const ExtractsRoute = () => {
   const extracts = query.data?.pages.flatMap((page) => page.items) ?? [];
   return (
     <>
-      <PageHeader title="Extracts" facts={["Files as they arrived: stores, products, weekly sales, events and temperatures"]} />
       <ExtractsViews />
+      <PageHeader title="Extracts" facts={["Files as they arrived: stores, products, weekly sales, events and temperatures"]} />
       <div className="flex flex-col gap-5">
         {mayUpload && (
           <UploadPanel

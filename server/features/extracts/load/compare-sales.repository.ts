@@ -13,10 +13,12 @@ export async function compareSales({ em, table }: StagedRows): Promise<ExtractCh
   const newWeeks = await newWeeksBeside({ em, table }, weeks.filter(({ loadedRows }) => loadedRows === 0).map(({ week }) => week));
   const { secondLookShare: share } = await getChain(em);
   const total = (count: "new" | "changed" | "same" | "missing") => weeks.reduce((sum, week) => sum + week[count], 0);
+  const totals = { new: total("new"), changed: total("changed"), same: total("same"), missing: total("missing") };
   return {
-    totals: { new: total("new"), changed: total("changed"), same: total("same"), missing: total("missing") },
+    totals,
     weeks: weeks.map(({ loadedRows: _, loadedUnits: __, ...week }) => week),
-    secondLook: secondLookReasons({ weeks, newWeeks, share }),
+    // What a file lacks is no news where the file changes nothing.
+    secondLook: totals.new + totals.changed === 0 ? [] : secondLookReasons({ weeks, newWeeks, share }),
   };
 }
 
