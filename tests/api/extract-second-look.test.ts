@@ -108,10 +108,13 @@ describe("a load that changes more than usual", () => {
 
   it("counts rows of its weeks and stores that the file lacks, and leaves them where they are", async () => {
     await loadDirectly(salesFile(row(june1, "S1", 10), row(june1, "S1", 10).replace("P1", "P2"), row(june1, "S2", 20), row("2026-06-08", "S1", 5)));
-    const { id } = await check(salesFile(row(june1, "S1", 10)));
+    const unchanged = await changesOf((await check(salesFile(row(june1, "S1", 10)))).id);
+    expect(unchanged.totals).toEqual({ new: 0, changed: 0, same: 1, missing: 1 });
+    expect(unchanged.secondLook).toEqual([]);
+    const { id } = await check(salesFile(row(june1, "S1", 11)));
     const changes = await changesOf(id);
-    expect(changes.totals).toEqual({ new: 0, changed: 0, same: 1, missing: 1 });
-    expect(changes.weeks).toEqual([{ week: june1, new: 0, changed: 0, same: 1, missing: 1, unitsBefore: 10, unitsAfter: 10 }]);
+    expect(changes.totals).toEqual({ new: 0, changed: 1, same: 0, missing: 1 });
+    expect(changes.weeks).toEqual([{ week: june1, new: 0, changed: 1, same: 0, missing: 1, unitsBefore: 10, unitsAfter: 11 }]);
     expect(changes.secondLook).toEqual(["Week 2026-06-01: 1 of 2 rows loaded (50%) is not in the file."]);
     await afterJob(test, await request(id, { secondLook: true }).expect(202));
     expect(await storedSales(test)).toHaveLength(4);
