@@ -39,7 +39,7 @@ export async function createPgBossQueue({ pool, logger, timing = defaultTiming }
 
   const ensureQueue = async (kind: string) => {
     if (known.has(kind)) return;
-    await boss.createQueue(kind);
+    await oneAtATime(pool, () => boss.createQueue(kind));
     known.add(kind);
   };
 
@@ -81,6 +81,18 @@ export async function createPgBossQueue({ pool, logger, timing = defaultTiming }
       await boss.stop({ graceful: false, wait: true });
     },
   };
+}
+
+/** Processes that start together would lock each other out for good where each makes its queues at the same moment. */
+async function oneAtATime(pool: Pool, work: () => Promise<void>): Promise<void> {
+  const client = await pool.connect();
+  try {
+    await client.query("select pg_advisory_lock(hashtext('shelftide queues'))");
+    await work();
+  } finally {
+    // Ending the connection gives the lock back whatever happened.
+    client.release(true);
+  }
 }
 
 async function connectionOf(em: EntityManager): Promise<PoolClient> {
