@@ -46,11 +46,16 @@ export class JobSignals {
   /** Waits until a job of the kind is signalled, or so long at most; not at all where one was since the last time. */
   async wait(kind: string, mostMs: number, stopping: AbortSignal): Promise<void> {
     if (this.#missed.delete(kind)) return;
+    if (stopping.aborted) return;
     const woken = new AbortController();
+    const stop = () => woken.abort();
+    // Not AbortSignal.any: `stopping` lives as long as the worker and would keep a trace of each wait.
+    stopping.addEventListener("abort", stop);
     this.#waiting.set(kind, woken);
     // Ended early by a signal or the stop, which reject.
-    await sleep(mostMs, undefined, { signal: AbortSignal.any([woken.signal, stopping]) }).catch(() => undefined);
+    await sleep(mostMs, undefined, { signal: woken.signal }).catch(() => undefined);
     this.#waiting.delete(kind);
+    stopping.removeEventListener("abort", stop);
   }
 
   async close(): Promise<void> {
