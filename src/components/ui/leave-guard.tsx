@@ -4,10 +4,15 @@ import { useBlocker } from "react-router-dom";
 import { Button } from "./button";
 import { Dialog } from "./dialog";
 
-type LeaveGuardProps = { isUnsaved: boolean; children: ReactNode };
+type LeaveGuardProps = {
+  isUnsaved: boolean;
+  /** What leaving loses, as its button names it. */
+  lost?: string;
+  children: ReactNode;
+};
 
 /** Asks before unsaved work is left behind, by a link, the back button or closing the tab; the children say what would be lost. */
-export const LeaveGuard = ({ isUnsaved, children }: LeaveGuardProps) => {
+export const LeaveGuard = ({ isUnsaved, lost = "the changes", children }: LeaveGuardProps) => {
   const blocker = useBlocker(
     ({ currentLocation, nextLocation }) => isUnsaved && currentLocation.pathname !== nextLocation.pathname,
   );
@@ -24,7 +29,7 @@ export const LeaveGuard = ({ isUnsaved, children }: LeaveGuardProps) => {
       title="Leave without saving?"
       actions={
         <>
-          <Button onClick={() => blocker.proceed?.()}>Leave, lose the changes</Button>
+          <Button onClick={() => blocker.proceed?.()}>Leave, lose {lost}</Button>
           <Button tone="primary" onClick={() => blocker.reset?.()}>
             Stay
           </Button>

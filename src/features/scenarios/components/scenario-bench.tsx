@@ -2,11 +2,11 @@ import { useQuery } from "@tanstack/react-query";
 import { useMemo, useState } from "react";
 import type { Scenario } from "@shared/contract/scenarios";
 import { EmptyState } from "@/components/ui/empty-state";
+import { LeaveGuard } from "@/components/ui/leave-guard";
 import { productsQuery } from "@/lib/catalogue";
 import { useChain } from "@/lib/chain";
 import type { PlanningContext } from "../api/planning-context";
 import { useAutosave } from "../hooks/use-autosave";
-import { useLeaveGuard } from "../hooks/use-leave-guard";
 import { usePrediction } from "../hooks/use-prediction";
 import { useScenarioEdit } from "../hooks/use-scenario-edit";
 import { useUndoKeys } from "../hooks/use-undo-keys";
@@ -14,7 +14,6 @@ import { editOf } from "../view/scenario-draft";
 import { BenchLanes } from "./bench-lanes";
 import { Cautions } from "./cautions";
 import { ConflictDialog } from "./conflict-dialog";
-import { LeaveDialog } from "./leave-dialog";
 import { ScenarioHead } from "./scenario-head";
 import { SumSheet } from "./sum-sheet";
 import { WeekSheet } from "./week-sheet";
@@ -28,22 +27,26 @@ export const ScenarioBench = ({ scenario, context }: { scenario: Scenario; conte
   const editing = useScenarioEdit(scenario);
   const { edit } = editing;
   const saving = useAutosave({ scenario, edit, enabled: scenario.may.edit });
-  const blocker = useLeaveGuard(saving.state.kind !== "saved");
   useUndoKeys({ undo: editing.undo, redo: editing.redo });
   const figures = usePrediction({ context, changes: editing.cells, fixedCost: edit.fixedCost, level });
   const products = useQuery(productsQuery());
   const product = useMemo(() => products.data?.find((one) => one.code === scenario.product), [products.data, scenario.product]);
 
   const head = (
-    <ScenarioHead
-      scenario={scenario}
-      product={product}
-      editing={editing}
-      saving={{ state: saving.state, retry: () => void saving.retry() }}
-      level={level}
-      levels={[...new Set([chainLevel, 0.8, 0.95])].sort()}
-      onLevel={setLevel}
-    />
+    <>
+      <ScenarioHead
+        scenario={scenario}
+        product={product}
+        editing={editing}
+        saving={{ state: saving.state, retry: () => void saving.retry() }}
+        level={level}
+        levels={[...new Set([chainLevel, 0.8, 0.95])].sort()}
+        onLevel={setLevel}
+      />
+      <LeaveGuard isUnsaved={saving.state.kind !== "saved"} lost="the last changes">
+        The last changes to this scenario are not saved yet. It saves itself within a second, unless the server cannot be reached.
+      </LeaveGuard>
+    </>
   );
   if (!figures) {
     return (
@@ -82,7 +85,6 @@ export const ScenarioBench = ({ scenario, context }: { scenario: Scenario; conte
           }}
         />
       )}
-      <LeaveDialog blocker={blocker} />
     </>
   );
 };
