@@ -1,35 +1,16 @@
 import { screen } from "@testing-library/react";
 import userEvent from "@testing-library/user-event";
 import { afterEach, describe, expect, it, vi } from "vitest";
-import type { Extract } from "@shared/contract/extracts";
 import { IssueList } from "@/features/extracts/components/issues/issue-list";
 import { loadedWeeksLine } from "@/features/extracts/view/loaded-weeks";
 import { createChainFormat, neutralSettings } from "@/lib/format/chain-format";
 import { answerRequests } from "./support/answer";
+import { extractWith } from "./support/extract";
 import { renderInPage } from "./support/render";
 
 afterEach(() => vi.unstubAllGlobals());
 
-const extract: Extract = {
-  id: "0b7e3a44-3b1b-4a8e-9a0a-000000000001",
-  kind: "sales",
-  fileName: "week 24.csv",
-  sizeBytes: 100,
-  sha256: "0",
-  state: "checked",
-  rows: { read: 2, usable: 1, errors: 1, warnings: 0 },
-  firstWeek: "2026-06-08",
-  lastWeek: "2026-06-08",
-  uploadedBy: { id: "0b7e3a44-3b1b-4a8e-9a0a-000000000002", name: "Ada Kale" },
-  uploadedAt: "2026-06-15T08:00:00.000Z",
-  checkedAt: "2026-06-15T08:00:01.000Z",
-  loadedAt: null,
-  withdrawnAt: null,
-  jobId: null,
-  layout: null,
-  failure: null,
-  may: { check: true, load: true, withdraw: false },
-};
+const extract = extractWith({ rows: { read: 2, usable: 1, errors: 1, warnings: 0 }, layout: null });
 const broken = { severity: "error", rule: "unknown-store", reason: "There is no store with this code", remedy: "Load it." };
 
 describe("what is wrong with an extract", () => {

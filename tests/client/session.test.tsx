@@ -1,16 +1,15 @@
-import { QueryClientProvider } from "@tanstack/react-query";
-import { act, render, screen } from "@testing-library/react";
+import { act, screen } from "@testing-library/react";
 import userEvent from "@testing-library/user-event";
-import { createMemoryRouter, RouterProvider } from "react-router-dom";
+import type { createMemoryRouter } from "react-router-dom";
 import { afterEach, describe, expect, it, vi } from "vitest";
 import type { Session } from "@shared/contract/accounts";
 import { Shell } from "@/app/shell/shell";
-import { StatusLineProvider } from "@/components/ui/status-line";
 import { PersonMenu } from "@/features/accounts/components/person-menu";
 import { createQueryClient } from "@/lib/query-client";
 import { forgetOthersData, sessionQuery, signedOutKey, useSession } from "@/lib/session";
 import { answerRequests } from "./support/answer";
 import { renderInPage } from "./support/render";
+import { renderRoutes } from "./support/routed";
 
 afterEach(() => vi.unstubAllGlobals());
 
@@ -37,20 +36,11 @@ const openPlan = () => {
   });
   const queryClient = createQueryClient();
   queryClient.setQueryData(sessionQuery().queryKey, session);
-  const router = createMemoryRouter(
-    [
-      { element: <Shell />, children: [{ path: "/scenarios/:id", element: <p>A plan</p> }] },
-      { path: "/sign-in", element: <p>Who are you?</p> },
-    ],
-    { initialEntries: ["/scenarios/7?week=3"] },
-  );
-  render(
-    <QueryClientProvider client={queryClient}>
-      <StatusLineProvider>
-        <RouterProvider router={router} />
-      </StatusLineProvider>
-    </QueryClientProvider>,
-  );
+  const routes = [
+    { element: <Shell />, children: [{ path: "/scenarios/:id", element: <p>A plan</p> }] },
+    { path: "/sign-in", element: <p>Who are you?</p> },
+  ];
+  const { router } = renderRoutes(routes, { at: "/scenarios/7?week=3", queryClient });
   return { queryClient, router };
 };
 

@@ -1,18 +1,16 @@
-import { QueryClientProvider } from "@tanstack/react-query";
-import { render, screen, waitFor, within } from "@testing-library/react";
+import { screen, waitFor, within } from "@testing-library/react";
 import userEvent from "@testing-library/user-event";
-import { createMemoryRouter, Link, Outlet, RouterProvider } from "react-router-dom";
+import { Link, Outlet } from "react-router-dom";
 import { afterEach, beforeAll, describe, expect, it, vi } from "vitest";
 import type { Chain } from "@shared/contract/chain";
 import type { NoticeChoices as Choices } from "@shared/contract/notices";
-import { StatusLineProvider } from "@/components/ui/status-line";
 import { ChainSettings } from "@/features/settings/components/chain-settings";
 import { NoticeChoices } from "@/features/settings/components/notice-choices";
 import { currencyOptions, localeExample, localeOptions, timeZoneOptions } from "@/features/settings/view/chain-options";
 import { weekChangeConsequences } from "@/features/settings/view/week-change";
-import { createQueryClient } from "@/lib/query-client";
 import { answerRequests, refusal } from "./support/answer";
 import { renderInPage } from "./support/render";
+import { renderRoutes } from "./support/routed";
 
 afterEach(() => vi.unstubAllGlobals());
 
@@ -78,19 +76,8 @@ const openSettings = async () => {
       <Outlet />
     </>
   );
-  const router = createMemoryRouter(
-    [{ element: <Frame />, children: [{ path: "/settings", element: <ChainSettings /> }, { path: "/elsewhere", element: <p>Another page</p> }] }],
-    { initialEntries: ["/settings"] },
-  );
-  const queryClient = createQueryClient();
-  queryClient.setDefaultOptions({ queries: { retry: false } });
-  render(
-    <QueryClientProvider client={queryClient}>
-      <StatusLineProvider>
-        <RouterProvider router={router} />
-      </StatusLineProvider>
-    </QueryClientProvider>,
-  );
+  const pages = [{ path: "/settings", element: <ChainSettings /> }, { path: "/elsewhere", element: <p>Another page</p> }];
+  renderRoutes([{ element: <Frame />, children: pages }], { at: "/settings" });
   await screen.findByRole("textbox", { name: "Name" });
 };
 
