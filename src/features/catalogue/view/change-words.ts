@@ -1,6 +1,6 @@
 import type { CatalogueChange } from "@shared/contract/catalogue-history";
 import type { ChainFormat } from "@/lib/format/chain-format";
-import { beginning, taxWords } from "./product-words";
+import { exactMoney, fromWords, taxWords } from "./product-words";
 
 type Value = string | number | boolean | null;
 type Values = NonNullable<CatalogueChange["after"]>;
@@ -20,24 +20,21 @@ const fieldNames: Record<string, string> = {
 };
 
 const amounts = new Set(["unitCost", "regularPrice", "perUnit", "lumpSum"]);
-const days = new Set(["opened", "closed", "firstDay", "lastDay", "validFrom", "week"]);
+const days = new Set(["opened", "closed", "firstDay", "lastDay", "week"]);
 
 /** A value as people write it. */
 const written = (field: string, value: Value | undefined, format: ChainFormat): string => {
   if (value === null || value === undefined || value === "") return "nothing";
   if (typeof value === "boolean") return value ? "yes" : "no";
   if (typeof value === "number") {
-    if (amounts.has(field)) return format.money(value, { digits: decimals(value) });
+    if (amounts.has(field)) return exactMoney(value, format);
     if (field === "taxRate") return taxWords(value, format);
     if (field === "temperatureC") return format.temperature(value);
     return String(value);
   }
-  if (field === "validFrom" && value === beginning) return "the beginning";
+  if (field === "validFrom") return fromWords({ validFrom: value }, format);
   return days.has(field) ? format.day(value) : value;
 };
-
-/** Money with as many decimals as it has, at least two. */
-const decimals = (value: number): number => Math.max(2, String(value).split(".")[1]?.length ?? 0);
 
 /** What says which of several it was: a listing's store and first day, terms' day, a temperature's week. */
 const which = (what: CatalogueChange["what"], values: Values, format: ChainFormat): string => {

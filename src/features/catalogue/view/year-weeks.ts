@@ -1,5 +1,6 @@
-import { addWeeks, isoWeeksInYear, parseWeek, retailWeekSunday, retailWeeksInYear, weekNumberOf, type ChainCalendar, type Day } from "@shared/calendar";
-import { firstDayOfWeek } from "@shared/calendar";
+import {
+  addWeeks, firstDayOfWeek, isoWeeksInYear, parseWeek, retailWeekSunday, retailWeeksInYear, weekNumberOf, type ChainCalendar, type Day,
+} from "@shared/calendar";
 
 /** First days of the weeks of a year by the chain's calendar: 52, or 53 where the year has them. */
 export const weeksOfYear = (calendar: ChainCalendar, year: number): Day[] => {

@@ -3,6 +3,7 @@ import { createContext, useContext, useEffect, useState, useSyncExternalStore } 
 import type { ReactNode } from "react";
 import { uploadExtract } from "@shared/contract/extracts";
 import { upload } from "@/lib/upload";
+import { isUnderWay } from "../view/uploads-summary";
 import { extractQuery } from "./extract";
 import { extractsQuery } from "./list-extracts";
 import { UploadQueue } from "./upload-queue";
@@ -17,8 +18,6 @@ const sendFile: SendFile = ({ file, kind, signal, onProgress }) => {
 };
 
 const UploadsContext = createContext<UploadQueue | null>(null);
-
-const isUnderWay = ({ state }: QueuedUpload) => state === "waiting" || state === "sending";
 
 /** Keeps uploads going above the pages; ends them when its person leaves. Closing the tab meanwhile asks first. */
 export const UploadsProvider = ({ children }: { children: ReactNode }) => {

@@ -43,6 +43,8 @@ export const ChainGroup = ({ form, saved }: GroupProps) => {
   );
 };
 
+const sunday = 0;
+
 const calendars = [
   { value: "iso", label: "ISO 8601" },
   { value: "4-5-4", label: "4-5-4" },
@@ -88,8 +90,6 @@ export const WeeksGroup = ({ form, saved }: GroupProps) => {
     </SettingsGroup>
   );
 };
-
-const sunday = 0;
 
 const temperatureUnits = [
   { value: "celsius", label: "Celsius" },
