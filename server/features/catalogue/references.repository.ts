@@ -1,4 +1,5 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
+import { exists } from "../../database/exists";
 import type { Product, Store } from "./catalogue.entities";
 
 /** Something that may refer to a row, and how that is said. */
@@ -35,8 +36,7 @@ export async function referencesToProduct(em: EntityManager, { id }: Product): P
 
 async function firstReference(em: EntityManager, references: readonly Reference[]): Promise<string | null> {
   for (const { says, sql, values } of references) {
-    const [{ any }] = await em.execute<[{ any: boolean }]>(`select exists (${sql}) as any`, values);
-    if (any) return says;
+    if (await exists(em, sql, values)) return says;
   }
   return null;
 }

@@ -1,6 +1,7 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
 import type { Notice } from "@shared/contract/notices";
 import type { Role } from "@shared/contract/permissions";
+import { exists } from "../../database/exists";
 import { PersonEntity, type Person } from "../accounts";
 
 export function findReader(em: EntityManager, personId: string): Promise<Person | null> {
@@ -25,9 +26,6 @@ export async function noteSent(em: EntityManager, { notice, about, now }: { noti
   return rows.length > 0;
 }
 
-export async function wasSent(em: EntityManager, { notice, about }: { notice: Notice; about: string }): Promise<boolean> {
-  const [{ sent }] = await em.execute<[{ sent: boolean }]>(
-    "select exists (select from sent_notices where notice = ? and subject = ?) as sent", [notice, about],
-  );
-  return sent;
+export function wasSent(em: EntityManager, { notice, about }: { notice: Notice; about: string }): Promise<boolean> {
+  return exists(em, "select from sent_notices where notice = ? and subject = ?", [notice, about]);
 }

@@ -1,4 +1,5 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
+import { exists } from "../../../database/exists";
 import { EventEntity, type Event } from "../catalogue.entities";
 
 export const findEvent = (em: EntityManager, id: number): Promise<Event | null> => em.findOne(EventEntity, { id });
@@ -20,7 +21,4 @@ export function findOccurrence(em: EntityManager, { code, firstDay, region }: Pi
 }
 
 /** Whether a store is in a region. */
-export async function isRegion(em: EntityManager, region: string): Promise<boolean> {
-  const [{ any }] = await em.execute<[{ any: boolean }]>("select exists (select from stores where region = ?) as any", [region]);
-  return any;
-}
+export const isRegion = (em: EntityManager, region: string): Promise<boolean> => exists(em, "select from stores where region = ?", [region]);

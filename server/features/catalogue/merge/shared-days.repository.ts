@@ -1,4 +1,5 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
+import { exists } from "../../../database/exists";
 import { conflict } from "../../../errors";
 
 /** A table of spans of days, and the columns of what must not have two that share a day. */
@@ -34,7 +35,6 @@ export function sharedDaysSql({ table, of, staged }: Spans): string {
  * @throws ProblemError 409.
  */
 export async function refuseSharedDays(em: EntityManager, spans: Spans): Promise<void> {
-  const [{ any }] = await em.execute<[{ any: boolean }]>(`select exists (${sharedDaysSql(spans)}) as any`);
-  if (!any) return;
+  if (!(await exists(em, sharedDaysSql(spans)))) return;
   throw conflict("check-outdated", "Since the check the catalogue has changed: rows of the file share days with others now. Check the file again, look at the list, and load it then.");
 }

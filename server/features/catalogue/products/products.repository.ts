@@ -1,4 +1,5 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
+import { exists } from "../../../database/exists";
 import { CategoryEntity, ProductTermsEntity, type Category, type ProductTerms } from "../catalogue.entities";
 
 /** Files that give no day mean from the beginning; so do products entered by hand. */
@@ -21,13 +22,13 @@ export async function findCategories(em: EntityManager): Promise<{ code: string;
 }
 
 /** Whether a product is, directly or by others, what another one replaced. */
-export async function replacesInTurn(em: EntityManager, { productId, earlierId }: { productId: number; earlierId: number }): Promise<boolean> {
-  const [{ any }] = await em.execute<[{ any: boolean }]>(
+export function replacesInTurn(em: EntityManager, { productId, earlierId }: { productId: number; earlierId: number }): Promise<boolean> {
+  return exists(
+    em,
     `with recursive earlier as (
        select ?::int as id
        union select product.replaces_id from products product join earlier on earlier.id = product.id where product.replaces_id is not null
-     ) select exists (select from earlier where id = ?) as any`,
+     ) select from earlier where id = ?`,
     [earlierId, productId],
   );
-  return any;
 }

@@ -61,6 +61,15 @@ export class WeekReader {
   }
 }
 
+type Days = { first: Column; last: Column; needed?: "first" | "both" };
+
+/** The first and last day of something, as their columns have them; a last one before the first is reported. */
+export function daysOf({ first, last, needed }: Days): [first: Day | null, last: Day | null] {
+  const [firstDay, lastDay] = [dayOf(first, { needed: needed !== undefined }), dayOf(last, { needed: needed === "both" })];
+  if (firstDay !== null && lastDay !== null && lastDay < firstDay) last.report("last-before-first");
+  return [firstDay, lastDay];
+}
+
 /** The day that stands in a column; null where it is empty, or reported where it is none. */
 export function dayOf(column: Column, { needed = false }: { needed?: boolean } = {}): Day | null {
   const text = column.raw;

@@ -1,4 +1,5 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
+import { exists } from "../../../database/exists";
 import type { WeekRange } from "../load/sales-columns";
 import type { SalesTogether } from "./sales-together.repository";
 
@@ -63,15 +64,13 @@ const isListed = `(
 const withinReach = ({ first, last }: WeekRange) => `sales.week between date '${first}' - ${reachDays} and date '${last}' + ${reachDays}`;
 
 /** Whether sales of some of the products are loaded in weeks within reach. */
-async function hasLoadedNear(em: EntityManager, { range, products }: { range: WeekRange; products: readonly number[] }): Promise<boolean> {
-  const [{ near }] = await em.execute<[{ near: boolean }]>(
-    `select exists (
-       select from json_array_elements_text(?::json) product (id)
-       where exists (select from weekly_sales sales where sales.product_id = product.id::integer and ${withinReach(range)})
-     ) as near`,
+function hasLoadedNear(em: EntityManager, { range, products }: { range: WeekRange; products: readonly number[] }): Promise<boolean> {
+  return exists(
+    em,
+    `select from json_array_elements_text(?::json) product (id)
+     where exists (select from weekly_sales sales where sales.product_id = product.id::integer and ${withinReach(range)})`,
     [JSON.stringify(products)],
   );
-  return near;
 }
 
 /** Notes for each pair whose rows do not follow each other week by week from where to where they reach; answers whether there is any. */
@@ -88,7 +87,7 @@ async function findSpans(em: EntityManager, { range, isNear }: { range: WeekRang
       from file_pairs span
     ) reached
     where (coalesce(after, last) - coalesce(before, first)) / 7 + 1 > rows + (before is not null)::int + (after is not null)::int`);
-  const [{ any }] = await em.execute<[{ any: boolean }]>("select exists (select from file_spans) as any");
+  const any = await exists(em, "select from file_spans");
   if (any) await em.execute("analyze file_spans");
   return any;
 }

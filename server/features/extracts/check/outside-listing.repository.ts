@@ -1,11 +1,11 @@
+import { exists } from "../../../database/exists";
 import type { SalesTogether } from "./sales-together.repository";
 
 type Unlisted = { line: number; product: string; store: string; week: string; first: string; last: string | null; total: number };
 
 /** Warns of rows of products that are listed in the store, but not in that week. Where nothing is listed nothing is said. */
 export async function reportUnlisted({ em, table, log }: SalesTogether): Promise<void> {
-  const [{ any }] = await em.execute<[{ any: boolean }]>("select exists (select from listings) as any");
-  if (!any) return;
+  if (!(await exists(em, "select from listings"))) return;
   const found = await em.execute<Unlisted[]>(`
     select staged.line, product.code as product, store.code as store, staged.week::text as week,
       known.first::text as first, known.last::text as last, (count(*) over ())::int as total

@@ -1,3 +1,4 @@
+import { exists } from "../../../database/exists";
 import type { KindDefinition, StagedRows } from "../kinds/kind";
 import type { CheckNotes } from "./check-notes";
 import { longestValue, type IssueLog } from "./issue-log";
@@ -49,8 +50,7 @@ export async function rejectRepeatedRows({ definition, notes, ...together }: Tog
   await em.execute(`
     create temporary table repeated_keys on commit drop as
     select ${keyColumns}, min(line) as first_line from ${table} group by ${keyColumns} having count(*) > 1`);
-  const [{ any }] = await em.execute<[{ any: boolean }]>("select exists (select from repeated_keys) as any");
-  if (any) {
+  if (await exists(em, "select from repeated_keys")) {
     const everything = staged.map(({ name }) => `staged.${name}`).join(", ");
     const sameKey = key.map((column) => `staged.${column} = repeated.${column}`).join(" and ");
     await em.execute(`

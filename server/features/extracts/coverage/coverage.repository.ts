@@ -1,5 +1,6 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
 import type { Day } from "@shared/calendar";
+import { exists } from "../../../database/exists";
 import { within, type WeekRange } from "../load/sales-columns";
 
 /** Waits until nobody else counts, and keeps others out until the transaction ends. */
@@ -23,10 +24,7 @@ export async function takePending(em: EntityManager): Promise<PendingExtract | u
   return extract;
 }
 
-export async function hasPending(em: EntityManager): Promise<boolean> {
-  const [{ any }] = await em.execute<[{ any: boolean }]>("select exists (select from extracts where coverage_pending) as any");
-  return any;
-}
+export const hasPending = (em: EntityManager): Promise<boolean> => exists(em, "select from extracts where coverage_pending");
 
 /**
  * Counts anew what is loaded of each store in these weeks, whoever brought it. A store and week of which nothing is left

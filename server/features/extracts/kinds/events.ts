@@ -1,6 +1,6 @@
 import { compareEvents, mergeEvents } from "../../catalogue";
 import { copyRow } from "../check/copy-text";
-import { dayOf } from "../check/day-columns";
+import { daysOf } from "../check/day-columns";
 import type { KindDefinition } from "./kind";
 import { withoutWeeks } from "./without-weeks";
 
@@ -20,8 +20,7 @@ export const eventsKind: KindDefinition = {
     const [event, name, region] = [row.column("event"), row.column("name"), row.column("region")];
     const [first, last] = [row.column("first_day"), row.column("last_day")];
     return () => {
-      const [firstDay, lastDay] = [dayOf(first, { needed: true }), dayOf(last, { needed: true })];
-      if (firstDay !== null && lastDay !== null && lastDay < firstDay) last.report("last-before-first");
+      const [firstDay, lastDay] = daysOf({ first, last, needed: "both" });
       const heldIn = region.text({ longest: 80 });
       if (heldIn !== null && !codes.regions.has(heldIn)) region.report("unknown-region");
       return copyRow([

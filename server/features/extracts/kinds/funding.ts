@@ -1,7 +1,7 @@
 import { compareFunding, mergeFunding } from "../../catalogue";
 import { productIdOf } from "../check/code-columns";
 import { copyRow } from "../check/copy-text";
-import { dayOf } from "../check/day-columns";
+import { daysOf } from "../check/day-columns";
 import { rejectSharedDays } from "../check/shared-days.repository";
 import type { KindDefinition } from "./kind";
 import { withoutWeeks } from "./without-weeks";
@@ -23,8 +23,7 @@ export const fundingKind: KindDefinition = {
     const [first, last] = [context.row.column("first_day"), context.row.column("last_day")];
     const [perUnit, lumpSum] = [context.row.column("per_unit"), context.row.column("lump_sum")];
     return () => {
-      const [firstDay, lastDay] = [dayOf(first, { needed: true }), dayOf(last, { needed: true })];
-      if (firstDay !== null && lastDay !== null && lastDay < firstDay) last.report("last-before-first");
+      const [firstDay, lastDay] = daysOf({ first, last, needed: "both" });
       const [unit, lump] = [perUnit.amount() ?? "0", lumpSum.amount() ?? "0"];
       if (Number(unit) === 0 && Number(lump) === 0 && !context.row.hasError) perUnit.report("no-contribution");
       const id = productIdOf(product, context);

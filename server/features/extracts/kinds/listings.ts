@@ -1,7 +1,7 @@
 import { compareListings, mergeListings } from "../../catalogue";
 import { productIdOf, storeIdOf } from "../check/code-columns";
 import { copyRow } from "../check/copy-text";
-import { dayOf } from "../check/day-columns";
+import { daysOf } from "../check/day-columns";
 import { rejectSharedDays } from "../check/shared-days.repository";
 import type { KindDefinition } from "./kind";
 import { withoutWeeks } from "./without-weeks";
@@ -24,8 +24,7 @@ export const listingsKind: KindDefinition = {
     const [product, store] = [context.row.column("product"), context.row.column("store")];
     const [first, last] = [context.row.column("first_day"), context.row.column("last_day")];
     return () => {
-      const [firstDay, lastDay] = [dayOf(first, { needed: true }), dayOf(last)];
-      if (firstDay !== null && lastDay !== null && lastDay < firstDay) last.report("last-before-first");
+      const [firstDay, lastDay] = daysOf({ first, last, needed: "first" });
       return copyRow([textOf(productIdOf(product, context)), textOf(storeIdOf(store, context)), firstDay, lastDay]);
     };
   },

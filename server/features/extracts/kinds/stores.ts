@@ -1,6 +1,6 @@
 import { compareStores, mergeStores } from "../../catalogue";
 import { copyRow } from "../check/copy-text";
-import { dayOf } from "../check/day-columns";
+import { daysOf } from "../check/day-columns";
 import type { KindDefinition } from "./kind";
 import { withoutWeeks } from "./without-weeks";
 
@@ -20,8 +20,7 @@ export const storesKind: KindDefinition = {
     const [store, name, region] = [row.column("store"), row.column("name"), row.column("region")];
     const [opened, closed] = [row.column("opened"), row.column("closed")];
     return () => {
-      const [firstDay, lastDay] = [dayOf(opened), dayOf(closed)];
-      if (firstDay !== null && lastDay !== null && lastDay < firstDay) closed.report("last-before-first");
+      const [firstDay, lastDay] = daysOf({ first: opened, last: closed });
       return copyRow([
         store.text({ longest: 64, needed: true }),
         name.text({ longest: 120, needed: true }),

@@ -1,4 +1,5 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
+import { exists } from "../../../database/exists";
 import { within, type WeekRange } from "./sales-columns";
 
 /**
@@ -17,8 +18,7 @@ export async function derivePrices(em: EntityManager, { touched, range }: { touc
     create temporary table untold_rows on commit drop as
     select product_id, store_id, week, regular_price from weekly_sales sales
     where ${within(range)} and price_source not in ('shelf', 'paid')`);
-  const [{ any }] = await em.execute<[{ any: boolean }]>("select exists (select from untold_rows) as any");
-  if (any) {
+  if (await exists(em, "select from untold_rows")) {
     await em.execute("analyze untold_rows");
     await deriveUntold(em, { touched, range });
   }

@@ -1,4 +1,5 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
+import { exists } from "../../../database/exists";
 import type { StagedColumn } from "../kinds/kind";
 
 /** The table in which an extract's usable rows wait between check and load. */
@@ -22,20 +23,18 @@ export async function dropStaging(em: EntityManager, extractId: string): Promise
 /** Whether rows wait. They are all there or none: what a broken database server empties, it empties wholly. */
 export async function hasStaged(em: EntityManager, extractId: string): Promise<boolean> {
   const table = stagingTable(extractId);
-  const [{ exists }] = await em.execute<[{ exists: boolean }]>("select to_regclass(?) is not null as exists", [table]);
-  if (!exists) return false;
-  const [{ any }] = await em.execute<[{ any: boolean }]>(`select exists (select from ${table}) as any`);
-  return any;
+  return (await isThere(em, table)) && exists(em, `select from ${table}`);
 }
 
 /** How many rows wait; none where the table is gone, or was emptied because the database server broke down. */
 export async function countStaged(em: EntityManager, extractId: string): Promise<number> {
   const table = stagingTable(extractId);
-  const [{ exists }] = await em.execute<[{ exists: boolean }]>("select to_regclass(?) is not null as exists", [table]);
-  if (!exists) return 0;
+  if (!(await isThere(em, table))) return 0;
   const [{ count }] = await em.execute<[{ count: number }]>(`select count(*)::int as count from ${table}`);
   return count;
 }
+
+const isThere = (em: EntityManager, table: string): Promise<boolean> => exists(em, "select where to_regclass(?) is not null", [table]);
 
 /** Tells the planner what is in the table, which it would else take for nearly empty. */
 export async function analyseStaging(em: EntityManager, table: string): Promise<void> {
