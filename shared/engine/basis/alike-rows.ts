@@ -1,4 +1,5 @@
 import type { AlikeRows, SplineRows } from "../linalg/sparse-rows";
+import { mostCells } from "./distinct-values";
 import type { DistinctValues } from "./distinct-values";
 import { splinesPerLevel } from "./levels";
 
@@ -44,9 +45,6 @@ function writeRows(distinct: SplineRows, codes: Int32Array): Pick<SplineRows, "f
   }
   return { first, values };
 }
-
-/** Distinct values times levels up to which a table of their codes is made. */
-const mostCells = 1_000_000;
 
 /**
  * Splines of a curve per level, whose rows are alike where value and level are.

@@ -1,6 +1,9 @@
 /** Distinct values are looked for in a table of this many at most; where there are more, sorting is quicker. */
 const mostDistinct = 16_384;
 
+/** Distinct values times levels up to which a table of both is made. */
+export const mostCells = 1_000_000;
+
 /** Distinct values of a column, ascending, how many rows have each, and per row the position of its own. */
 export type DistinctValues = { values: Float64Array; counts: Float64Array; codes: Int32Array };
 

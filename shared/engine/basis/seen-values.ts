@@ -1,5 +1,5 @@
 import type { SeenValues } from "../types";
-import { distinctValues } from "./distinct-values";
+import { distinctValues, mostCells } from "./distinct-values";
 import type { DistinctValues } from "./distinct-values";
 
 /**
@@ -94,9 +94,6 @@ export function seenPerLevel(
   for (let row = 0; row < index.length; row++) perLevel[index[row]][used[index[row]]++] = values[row];
   return perLevel.map((own) => seenNumbers(own));
 }
-
-/** Levels times distinct values up to which a table of their counts is made. */
-const mostCells = 1_000_000;
 
 function fromTable({ values, codes }: DistinctValues, index: Int32Array, count: number): { values: Float64Array; counts: Float64Array }[] {
   const width = values.length;

@@ -1,22 +1,28 @@
 import { entriesPerRow, gatherRow, roomForRow } from "./sparse-rows";
 import type { SparseRows, TensorRows } from "./sparse-rows";
 
+/** A term on groups: column of group g is g x width + k. All of a term's columns are one group of its width. */
+export type GroupedRows = { rows: SparseRows; width: number };
+
 /**
- * X_left' diag(weights) X_right of any two terms by their rows' entries. O(n x entries x entries).
+ * Diagonal blocks X_g' diag(weights) X_g of any two terms by their rows' entries. O(n x entries x entries).
  *
- * @param out added to: left.width x right.width values, row-major.
- * @example crossEntries(dense, spline, weights, out);
+ * @param left both terms' rows are in the same group. right likewise.
+ * @param out added to: left.width x right.width values a group, row-major. A block row (left column) of group g starts at
+ * (left column) x right.width, since left columns are group by group.
+ * @example crossEntries({ rows: dense, width: dense.width }, { rows: spline, width: spline.width }, weights, out);
  */
-export function crossEntries(left: SparseRows, right: SparseRows, weights: Float64Array, out: Float64Array): void {
-  const { width } = right;
-  const own = roomForRow(left);
-  const other = roomForRow(right);
+export function crossEntries(left: GroupedRows, right: GroupedRows, weights: Float64Array, out: Float64Array): void {
+  const own = roomForRow(left.rows);
+  const other = roomForRow(right.rows);
+  const stride = right.width;
   for (let row = 0; row < weights.length; row++) {
-    const rows = gatherRow(left, row, 0, own);
-    const columns = gatherRow(right, row, 0, other);
+    const rows = gatherRow(left.rows, row, 0, own);
+    const columns = gatherRow(right.rows, row, 0, other);
+    const group = Math.floor(own.indices[0] / left.width);
     for (let i = 0; i < rows; i++) {
       const scaled = weights[row] * own.values[i];
-      const start = own.indices[i] * width;
+      const start = (own.indices[i] - group) * stride;
       for (let j = 0; j < columns; j++) out[start + other.indices[j]] += scaled * other.values[j];
     }
   }

@@ -1,4 +1,5 @@
 import { crossEntries, crossTensor } from "./cross-entries";
+import type { GroupedRows } from "./cross-entries";
 import { crossAlike } from "./cross-alike";
 import { crossKernel } from "./cross-kernels";
 import { paddedWidth } from "./sparse-rows";
@@ -28,13 +29,15 @@ export function crossProduct(left: SparseRows, right: SparseRows, weights: Float
     return;
   }
   if (isGeneral(left) || isGeneral(right)) {
-    crossEntries(left, right, weights, out);
+    crossEntries(asOneGroup(left), asOneGroup(right), weights, out);
     return;
   }
   const scaled = withValues(right, withValues(left, weights));
   if (!crossAlike(left, right, scaled, out)) crossKernel(left, right, scaled, out);
   closeCircles(left, right, out);
 }
+
+const asOneGroup = (rows: SparseRows): GroupedRows => ({ rows, width: rows.width });
 
 const isGeneral = (rows: SparseRows): rows is Extract<SparseRows, { storage: "dense" | "tensor" }> =>
   rows.storage === "dense" || rows.storage === "tensor";

@@ -1,8 +1,6 @@
-import { gatherRow, roomForRow } from "./sparse-rows";
-import type { IndexRows, SparseRows, SplineRows } from "./sparse-rows";
-
-/** A term on groups: column of group g is g x width + k. */
-type GroupedRows = { rows: SparseRows; width: number };
+import { crossEntries } from "./cross-entries";
+import type { GroupedRows } from "./cross-entries";
+import type { IndexRows, SplineRows } from "./sparse-rows";
 
 /**
  * Diagonal blocks X_g'W X_g of two terms on the same groups: only what rows of one group have in common, O(n x 16) for two
@@ -23,7 +21,7 @@ export function groupSquare(
   } else if (left.rows.storage === "index" && left.rows === right.rows && left.width === 1) {
     indexSquares(left.rows, weights, out);
   } else {
-    entryBlocks(left, right, weights, out);
+    crossEntries(left, right, weights, out);
   }
 }
 
@@ -59,21 +57,4 @@ function splineBlocks(left: GroupedSplines, right: GroupedSplines, weights: Floa
 function indexSquares({ index, values }: IndexRows, weights: Float64Array, out: Float64Array): void {
   if (values === null) for (let row = 0; row < weights.length; row++) out[index[row]] += weights[row];
   else for (let row = 0; row < weights.length; row++) out[index[row]] += weights[row] * values[row] * values[row];
-}
-
-/** Any pair: block row (left column) of group g starts at (left column) x right.width, since left columns are group by group. */
-function entryBlocks(left: GroupedRows, right: GroupedRows, weights: Float64Array, out: Float64Array): void {
-  const own = roomForRow(left.rows);
-  const other = roomForRow(right.rows);
-  const stride = right.width;
-  for (let row = 0; row < weights.length; row++) {
-    const rows = gatherRow(left.rows, row, 0, own);
-    const columns = gatherRow(right.rows, row, 0, other);
-    const group = Math.floor(own.indices[0] / left.width);
-    for (let i = 0; i < rows; i++) {
-      const scaled = weights[row] * own.values[i];
-      const start = (own.indices[i] - group) * stride;
-      for (let j = 0; j < columns; j++) out[start + other.indices[j]] += scaled * other.values[j];
-    }
-  }
 }
