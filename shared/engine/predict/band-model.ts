@@ -22,17 +22,17 @@ const kinds: readonly string[] = ["pointwise", "with-mean", "corrected", "averag
  */
 export function bandModel(model: FittedModel, band: BandKind = model.band): FittedModel {
   if (!kinds.includes(band)) throw new EngineError("option-invalid", `band is ${JSON.stringify(band)}; it must be one of ${quoted(kinds)}.`);
-  if (model.band !== (hasOwnCovariance(band) ? band : "pointwise") && isExtended(model)) {
+  // The level's error is added where a curve is drawn, to the covariance as fitted.
+  const wanted = band === "with-mean" ? "pointwise" : band;
+  if (model.band !== wanted && isExtended(model)) {
     throw new EngineError(
       "option-invalid",
       `band is "${band}", the model's is "${model.band}", and it has been carried on to new weeks or groups; ask for its band before that.`,
     );
   }
-  if (band === "averaged") return averagedModel(model);
-  return band === "corrected" ? correctedModel(model) : pointwiseModel(model);
+  if (wanted === "averaged") return averagedModel(model);
+  return wanted === "corrected" ? correctedModel(model) : pointwiseModel(model);
 }
-
-const hasOwnCovariance = (band: BandKind): boolean => band !== "with-mean";
 
 /** Whether a kind of band has the error of the curve's level in it. */
 export const hasMean = (band?: BandKind): boolean => band === "with-mean" || band === "corrected";

@@ -2,12 +2,11 @@ import { basisRows } from "../basis/term-basis";
 import { gatherRow, roomForRow } from "../linalg/sparse-rows";
 import type { DenseRows, SparseRows } from "../linalg/sparse-rows";
 import type { BandKind, CurveDifference, FittedModel } from "../types";
-import { bandModel } from "./band-model";
-import { curveData } from "./curve-data";
 import { curvePoints } from "./curve-points";
-import { extendModel } from "./extend-model";
+import { drawnCurve } from "./drawn-curve";
+import { findTerm } from "./find-term";
 import { normalQuantile } from "./level";
-import { bandOver, findTerm, withNewLevels } from "./term-curve";
+import { bandOver } from "./term-curve";
 
 export type CurveDifferenceOptions = {
   /** Values in the column's own unit, or names. */
@@ -34,13 +33,10 @@ export function curveDifference(model: FittedModel, termId: string, options: Cur
   const term = findTerm(model, termId);
   const asked: (number | string)[] = [...at, from];
   const x = curvePoints(term, { at: asked as number[] | string[] });
-  const { basis, data } = curveData(model, term, { x, group });
-  const extended = extendModel(bandModel(model, band), data);
-  const found = findTerm(extended, termId);
-  const drawn = found === term ? basis : withNewLevels(basis, found.basis);
+  const drawn = drawnCurve(model, term, { x, group, band });
   const count = x.length - 1;
-  const rows = lessLast(basisRows(drawn, data), count);
-  return { termId, x: x.slice(0, count), ...bandOver(extended, { rows, first: found.first, count, quantile: normalQuantile(level) }) };
+  const rows = lessLast(basisRows(drawn.basis, drawn.data), count);
+  return { termId, x: x.slice(0, count), ...bandOver(drawn.model, { rows, first: drawn.term.first, count, quantile: normalQuantile(level) }) };
 }
 
 /** Each of the first rows less the one after them. */

@@ -9,10 +9,11 @@ import { bandModel, hasMean } from "./band-model";
 import { curveData } from "./curve-data";
 import { curvePoints } from "./curve-points";
 import { extendModel } from "./extend-model";
+import { findTerm } from "./find-term";
 import { normalQuantile } from "./level";
 import { levelParts } from "./level-parts";
 import { covarianceQuadratic, sharedCount } from "./model-covariance";
-import { findTerm, termCurve } from "./term-curve";
+import { termCurve } from "./term-curve";
 
 export type SimultaneousOptions = Omit<TermCurveOptions, "derivative"> & {
   /** Curves drawn from the posterior (default 10,000). */

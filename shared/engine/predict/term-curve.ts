@@ -1,15 +1,13 @@
 import { basisLogSlopeRows, basisRows, outsideRows } from "../basis/term-basis";
-import { quoted } from "../basis/columns";
-import { EngineError } from "../errors";
 import { addRowsTimes } from "../linalg/sparse-rows";
 import type { SparseRows } from "../linalg/sparse-rows";
-import type { CurveDerivative, FittedModel, FittedTerm, TermBasis, TermCurve, TermCurveOptions } from "../types";
-import { bandModel, hasMean } from "./band-model";
-import { curveData } from "./curve-data";
+import type { CurveDerivative, FittedModel, TermCurve, TermCurveOptions } from "../types";
+import { hasMean } from "./band-model";
 import { curvePoints } from "./curve-points";
 import { rowStandardErrors } from "./design-rows";
 import type { DesignRows } from "./design-rows";
-import { extendModel } from "./extend-model";
+import { drawnCurve } from "./drawn-curve";
+import { findTerm } from "./find-term";
 import { normalQuantile } from "./level";
 import { levelParts } from "./level-parts";
 import { supportCounts } from "./support";
@@ -36,42 +34,19 @@ export function termCurve(model: FittedModel, termId: string, options: TermCurve
   const term = findTerm(model, termId);
   const quantile = normalQuantile(options.level ?? defaultLevel);
   const x = curvePoints(term, options);
-  const { basis, data } = curveData(model, term, { x, group: options.group });
-  const extended = extendModel(bandModel(model, options.band), data);
-  const at = findTerm(extended, termId);
-  const drawn = at === term ? basis : withNewLevels(basis, at.basis);
-  const bandOf = (rows: SparseRows, beside: DesignRows["parts"]) => bandOver(extended, { rows, first: at.first, count: x.length, quantile, beside });
-  const level = hasMean(options.band) ? levelParts(extended, at, { count: x.length, group: options.group }) : [];
-  const slopes = options.derivative === true ? basisLogSlopeRows(drawn, data) : null;
+  const drawn = drawnCurve(model, term, { x, group: options.group, band: options.band });
+  const { basis, data } = drawn;
+  const bandOf = (rows: SparseRows, beside: DesignRows["parts"]) =>
+    bandOver(drawn.model, { rows, first: drawn.term.first, count: x.length, quantile, beside });
+  const level = hasMean(options.band) ? levelParts(drawn.model, drawn.term, { count: x.length, group: options.group }) : [];
+  const slopes = options.derivative === true ? basisLogSlopeRows(basis, data) : null;
   return {
-    termId, x, ...bandOf(basisRows(drawn, data), level),
+    termId, x, ...bandOf(basisRows(basis, data), level),
     observedRange: term.observedRange,
     supportCount: supportCounts(term, x, options.group),
     outside: outsideRows(term, data),
     ...(slopes === null ? {} : { derivative: bandOf(slopes, []) }),
   };
-}
-
-/**
- * A model's term by its id.
- *
- * @throws EngineError term-unknown, naming those it has.
- * @example findTerm(model, "price").edf;
- */
-export function findTerm(model: FittedModel, termId: string): FittedTerm {
-  const term = model.terms.find((candidate) => candidate.id === termId);
-  if (term !== undefined) return term;
-  throw new EngineError("term-unknown", `The model has no term "${termId}"; it has ${quoted(model.terms.map(({ id }) => id)) || "none"}.`);
-}
-
-/**
- * The basis drawn, with the groups or weeks the model was extended by.
- *
- * @example withNewLevels(basis, findTerm(extended, term.id).basis);
- */
-export function withNewLevels(drawn: TermBasis, extended: TermBasis): TermBasis {
-  if (drawn.kind === "random-effect" && extended.kind === "random-effect") return { ...extended, by: drawn.by };
-  return drawn.kind === extended.kind ? extended : drawn;
 }
 
 /**

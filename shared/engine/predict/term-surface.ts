@@ -3,9 +3,10 @@ import { basisRows } from "../basis/term-basis";
 import { EngineError } from "../errors";
 import type { FittedModel, TermSurface, TermSurfaceOptions } from "../types";
 import { checkPoints } from "./curve-points";
+import { findTerm } from "./find-term";
 import { normalQuantile } from "./level";
 import { surfaceSupport } from "./support";
-import { bandOver, findTerm } from "./term-curve";
+import { bandOver } from "./term-curve";
 
 const defaultLevel = 0.95;
 const defaultPoints = 30;
