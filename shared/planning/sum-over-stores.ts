@@ -22,6 +22,18 @@ export function withKnownPenalties(model: FittedModel): FittedModel {
 }
 
 /**
+ * A figure of one store's model, and the same as if penalties were known.
+ *
+ * @param of the figure of a model; called once where both are the same.
+ * @example withKnown(model, (own) => covarianceQuadratic(own, gradient, gradient)) // a PartVariance
+ */
+export function withKnown<Figure>(model: FittedModel, of: (model: FittedModel) => Figure): { all: Figure; known: Figure } {
+  const all = of(model);
+  const known = withKnownPenalties(model);
+  return { all, known: known === model ? all : of(known) };
+}
+
+/**
  * The variance of a sum over stores whose models were fitted apart. What the weeks leave open of a curve's coefficients is
  * each store's own, and adds up by squares. What smoothing may hide (`all` beyond `known`) is the same bend of one product
  * in every store, so it is taken to go the same way and adds up as it is: sum of known + (sum of sqrt(all - known))^2. That is
@@ -49,7 +61,6 @@ export function varianceOfSum(parts: Iterable<PartVariance>): number {
 export function curveWithKnown(
   model: FittedModel, termId: string, options: Omit<TermCurveOptions, "band">,
 ): { curve: TermCurve; known: TermCurve } {
-  const curve = termCurve(model, termId, options);
-  const knownModel = withKnownPenalties(model);
-  return { curve, known: knownModel === model ? curve : termCurve(knownModel, termId, options) };
+  const { all: curve, known } = withKnown(model, (own) => termCurve(own, termId, options));
+  return { curve, known };
 }

@@ -1,6 +1,6 @@
 import { curveDifference, termCurve } from "../../engine";
 import type { TermCurve } from "../../engine";
-import { curveWithKnown, withKnownPenalties } from "../sum-over-stores";
+import { curveWithKnown, withKnown } from "../sum-over-stores";
 import type { PartVariance } from "../sum-over-stores";
 import type { LaneMember } from "./lane-term";
 
@@ -38,9 +38,9 @@ export function storeLane(member: LaneMember, { x, relativeTo }: { x: Float64Arr
 }
 
 function referenceOf({ model, term }: LaneMember, x: Float64Array | string[], from: number): StoreLane["reference"] {
-  const [all, known] = [model, withKnownPenalties(model)].map((of) => ({
-    at: termCurve(of, term.id, { at: [from] }),
-    differences: curveDifference(of, term.id, { at: x, from }).standardError,
+  const { all, known } = withKnown(model, (own) => ({
+    at: termCurve(own, term.id, { at: [from] }),
+    differences: curveDifference(own, term.id, { at: x, from }).standardError,
   }));
   return {
     estimate: all.at.estimate[0],

@@ -1,6 +1,6 @@
 import { covarianceQuadratic } from "../../engine";
 import type { FittedModel } from "../../engine";
-import { varianceOfSum, withKnownPenalties } from "../sum-over-stores";
+import { varianceOfSum, withKnown } from "../sum-over-stores";
 import type { Interval } from "./scenario";
 
 /** A factor times a gradient; several of them add up to the gradient of what is estimated. */
@@ -22,9 +22,7 @@ export function varianceOver<Store extends { model: FittedModel }>(
       if (part.gradient === undefined) continue;
       for (let index = 0; index < gradient.length; index++) gradient[index] += part.factor * part.gradient[index];
     }
-    const all = covarianceQuadratic(store.model, gradient, gradient);
-    const known = withKnownPenalties(store.model);
-    return { all, known: known === store.model ? all : covarianceQuadratic(known, gradient, gradient) };
+    return withKnown(store.model, (model) => covarianceQuadratic(model, gradient, gradient));
   }));
 }
 
