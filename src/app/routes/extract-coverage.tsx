@@ -14,6 +14,7 @@ import { ExtractsViews } from "@/features/extracts/components/extracts-views";
 import { coverageSpans } from "@/features/extracts/view/coverage-sentence";
 import type { CoverageSpan } from "@/features/extracts/view/coverage-sentence";
 import { paths } from "@/lib/paths";
+import { useFilters } from "@/lib/use-filters";
 
 /** The address holds the weeks and the choice of stores. */
 const readView = (search: URLSearchParams): { until: string | null; span: CoverageSpan; wantsLooksOnly: boolean } => ({
@@ -31,20 +32,11 @@ export const loaderFor =
   };
 
 export const ExtractCoverageRoute = () => {
-  const [search, setSearch] = useSearchParams();
+  const [search] = useSearchParams();
+  const { set } = useFilters(["until", "weeks", "show"]);
   const navigate = useNavigate();
   const { until, span, wantsLooksOnly } = readView(search);
   const query = useQuery(coverageQuery({ until, weeks: Number(span) }));
-  const change = (name: string, value: string | null) =>
-    setSearch(
-      (before) => {
-        const next = new URLSearchParams(before);
-        if (value === null) next.delete(name);
-        else next.set(name, value);
-        return next;
-      },
-      { replace: true, preventScrollReset: true },
-    );
   return (
     <>
       <ExtractsViews />
@@ -66,11 +58,11 @@ export const ExtractCoverageRoute = () => {
             <CoverageView
               coverage={coverage}
               span={span}
-              onSpan={(next) => change("weeks", next)}
-              onUntil={(week) => change("until", week)}
+              onSpan={(next) => set({ weeks: next })}
+              onUntil={(week) => set({ until: week })}
               isNewest={until === null}
               wantsLooksOnly={wantsLooksOnly}
-              onLooksOnly={(only) => change("show", only ? "looks" : null)}
+              onLooksOnly={(only) => set({ show: only ? "looks" : null })}
               onOpenExtract={(id) => void navigate(paths.extract.href(id))}
             />
           )}

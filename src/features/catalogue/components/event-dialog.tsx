@@ -40,7 +40,7 @@ export const EventDialog = ({ event, like, codes, regions, isReadOnly, onClose }
         return `${values.name} is saved.`;
       }}
       remove={event ? {
-        label: "Remove", sentence: "Its other occurrences stay.",
+        sentence: "Its other occurrences stay.",
         act: async () => {
           await removeEvent(event);
           return `${event.name} is removed.`;

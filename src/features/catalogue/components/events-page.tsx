@@ -16,6 +16,7 @@ import { storesQuery } from "@/lib/catalogue";
 import { useChainFormat, type ChainFormat } from "@/lib/format/chain-format";
 import { countOf } from "@/lib/format/number";
 import { usePermission } from "@/lib/session";
+import { useFilters } from "@/lib/use-filters";
 import { eventsQuery } from "../api/events";
 import { holdsWords } from "../view/search";
 import { weeksOfYear, yearOfDay } from "../view/year-weeks";
@@ -25,7 +26,6 @@ import { KindHistory } from "./change-history";
 import { EventCalendar } from "./event-calendar";
 import { EventDialog } from "./event-dialog";
 import { RowButton } from "./row-button";
-import { useFilters } from "./use-filters";
 
 type EventsPageProps = { calendar: ChainCalendar; today: string };
 

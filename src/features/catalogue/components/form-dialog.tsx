@@ -19,7 +19,7 @@ type FormDialogProps<Input extends FieldValues, Output extends FieldValues> = {
   onClose: () => void;
   /** Nothing can be changed by this person: the fields are to be read. */
   isReadOnly?: boolean;
-  remove?: { label: string; sentence: string; act: () => Promise<string> };
+  remove?: { sentence: string; act: () => Promise<string> };
   children: ReactNode;
   /** Below the form: the history. */
   after?: ReactNode;
@@ -74,7 +74,7 @@ export const FormDialog = <Input extends FieldValues, Output extends FieldValues
           )}
           {!isReadOnly && asking === "remove" && remove && (
             <Question
-              sentence={remove.sentence} no="Keep it" yes={remove.label} isBusy={isBusy} onNo={() => setAsking(null)}
+              sentence={remove.sentence} no="Keep it" yes="Remove" isBusy={isBusy} onNo={() => setAsking(null)}
               onYes={() => void act(remove.act)}
             />
           )}
@@ -82,7 +82,7 @@ export const FormDialog = <Input extends FieldValues, Output extends FieldValues
             <>
               {remove && (
                 <Button tone="quiet" className="mr-auto text-danger" onClick={() => setAsking("remove")}>
-                  {remove.label}
+                  Remove
                 </Button>
               )}
               <Button onClick={close}>Cancel</Button>

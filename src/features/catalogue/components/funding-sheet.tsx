@@ -75,7 +75,7 @@ const FundingDialog = ({ product, funding, onClose }: { product: string; funding
         return "The funding is saved.";
       }}
       remove={funding ? {
-        label: "Remove", sentence: "Plans in these days are without it then.",
+        sentence: "Plans in these days are without it then.",
         act: async () => {
           await removeFunding(funding);
           return "The funding is removed.";

@@ -82,7 +82,7 @@ const ListingDialog = ({ listing, onClose }: { listing: Listing; onClose: () => 
         return "The listing is saved.";
       }}
       remove={{
-        label: "Remove", sentence: "As if the store had never had it.",
+        sentence: "As if the store had never had it.",
         act: async () => {
           await removeListing(listing);
           return "The listing is removed.";

@@ -39,7 +39,7 @@ export const ProductDialog = ({ product, products, onClose, onRemoved }: Product
       title={product ? `Change ${product.name}` : "Enter a product"} form={form} fields={fields} save={save} onClose={onClose}
       refresh={() => refresh("products", "categories", "terms")}
       remove={product ? {
-        label: "Remove", sentence: "Only a product that nothing refers to can be removed.",
+        sentence: "Only a product that nothing refers to can be removed.",
         act: async () => {
           await removeProduct(product);
           onRemoved?.();

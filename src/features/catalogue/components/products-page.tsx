@@ -18,6 +18,7 @@ import { useChainFormat, type ChainFormat } from "@/lib/format/chain-format";
 import { countOf } from "@/lib/format/number";
 import { paths } from "@/lib/paths";
 import { usePermission } from "@/lib/session";
+import { useFilters } from "@/lib/use-filters";
 import { exactMoney, taxWords } from "../view/product-words";
 import { holdsWords } from "../view/search";
 import { CatalogueActions } from "./catalogue-actions";
@@ -25,7 +26,6 @@ import { CatalogueViews } from "./catalogue-views";
 import { CategoryName } from "./category-name";
 import { KindHistory } from "./change-history";
 import { ProductDialog } from "./product-dialog";
-import { useFilters } from "./use-filters";
 
 const columnsOf = (format: ChainFormat): TableColumn<Product>[] => [
   { id: "code", header: "Code", value: ({ code }) => code, width: "6rem" },

@@ -32,7 +32,7 @@ export const StoreDialog = ({ store, regions, isReadOnly, onClose }: StoreDialog
       title={store ? `${store.name} (${store.code})` : "Enter a store"}
       form={{ control, ...rest }} fields={fields} save={save} refresh={() => refresh("stores")} onClose={onClose} isReadOnly={isReadOnly}
       remove={store ? {
-        label: "Remove", sentence: "Only a store that nothing refers to can be removed.",
+        sentence: "Only a store that nothing refers to can be removed.",
         act: async () => {
           await removeStore(store);
           return `${store.name} is removed.`;

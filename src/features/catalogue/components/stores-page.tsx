@@ -15,13 +15,13 @@ import { storesQuery } from "@/lib/catalogue";
 import { useChainFormat, type ChainFormat } from "@/lib/format/chain-format";
 import { countOf } from "@/lib/format/number";
 import { usePermission } from "@/lib/session";
+import { useFilters } from "@/lib/use-filters";
 import { holdsWords } from "../view/search";
 import { CatalogueActions } from "./catalogue-actions";
 import { CatalogueViews } from "./catalogue-views";
 import { KindHistory } from "./change-history";
 import { RowButton } from "./row-button";
 import { StoreDialog } from "./store-dialog";
-import { useFilters } from "./use-filters";
 
 const regionsOf = (stores: readonly Store[]) => [...new Set(stores.map(({ region }) => region))].sort();
 

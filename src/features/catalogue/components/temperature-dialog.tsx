@@ -32,7 +32,7 @@ export const TemperatureDialog = ({ place, week, unit, isReadOnly, onClose }: Te
         return "The temperature is saved.";
       }}
       remove={week.version !== null ? {
-        label: "Remove", sentence: place.scope === "store" ? "The store has its region's again then." : "The week has none then, and is left out of the curves.",
+        sentence: place.scope === "store" ? "The store has its region's again then." : "The week has none then, and is left out of the curves.",
         act: async () => {
           await removeTemperature({ ...place, week: week.week, version: week.version });
           return "The temperature is removed.";

@@ -16,6 +16,7 @@ import { storesQuery } from "@/lib/catalogue";
 import { useChainFormat, type ChainFormat } from "@/lib/format/chain-format";
 import type { TemperatureUnit } from "@/lib/format/temperature";
 import { usePermission } from "@/lib/session";
+import { useFilters } from "@/lib/use-filters";
 import { temperaturesQuery, type Place } from "../api/temperatures";
 import { differenceOf } from "../view/temperature-lines";
 import { weeksOfYear, yearOfDay } from "../view/year-weeks";
@@ -24,7 +25,6 @@ import { CatalogueViews } from "./catalogue-views";
 import { RowButton } from "./row-button";
 import { TemperatureChart } from "./temperature-chart";
 import { TemperatureDialog } from "./temperature-dialog";
-import { useFilters } from "./use-filters";
 
 type TemperaturesPageProps = { calendar: ChainCalendar; unit: TemperatureUnit; today: string };
 

@@ -89,7 +89,7 @@ const TermsDialog = ({ code, terms, newest, isOnly, onClose }: TermsDialogProps)
         return "The terms are saved.";
       }}
       remove={terms && !isOnly ? {
-        label: "Remove", sentence: terms.validFrom === beginning ? "Before the next day nothing is known then." : "What held before goes on then.",
+        sentence: terms.validFrom === beginning ? "Before the next day nothing is known then." : "What held before goes on then.",
         act: async () => {
           await removeTerms({ code, ...terms });
           return "The terms are removed.";
