@@ -1,6 +1,7 @@
 import type { Curve } from "@shared/contract/drivers";
 import type { CurvePoint } from "@/components/charts/scale/curve-height";
 import type { FactorLevel } from "@/components/charts/factor-lane/factor-level";
+import { capitalised } from "@/lib/format/capitalised";
 
 type NumberCurve = Curve & { x: number[] };
 type LevelCurve = Curve & { x: string[] };
@@ -21,10 +22,8 @@ export const curvePoints = (curve: NumberCurve): CurvePoint[] =>
   }));
 
 /** A level's words: "multi_buy" is "Multi-buy". */
-export const levelLabel = (level: string): string => {
-  const words = level === "multi_buy" ? "multi-buy" : level.replaceAll("_", " ");
-  return words.charAt(0).toUpperCase() + words.slice(1);
-};
+export const levelLabel = (level: string): string =>
+  capitalised(level === "multi_buy" ? "multi-buy" : level.replaceAll("_", " "));
 
 /** Levels people know come in their usual order, others by name after them. */
 const usualOrder = ["none", "feature", "display", "both", "multi_buy", "coupon", "other"];

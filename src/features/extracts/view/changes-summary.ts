@@ -1,14 +1,13 @@
 import type { ExtractChanges } from "@shared/contract/extracts";
+import { capitalised } from "@/lib/format/capitalised";
 import { countOf } from "@/lib/format/number";
 
-const isWhole = ({ totals }: Pick<ExtractChanges, "totals">) => totals.new + totals.changed === 0;
-
 /** Whether a load would leave everything as it is. */
-export const changesNothing = isWhole;
+export const changesNothing = ({ totals }: Pick<ExtractChanges, "totals">): boolean => totals.new + totals.changed === 0;
 
 /** What a load does, in a sentence: "1,248 new rows, 12 changed, 36 already there as they are." */
 export const changesSentence = ({ totals }: Pick<ExtractChanges, "totals">, isLoaded: boolean): string => {
-  if (isWhole({ totals })) {
+  if (changesNothing({ totals })) {
     return isLoaded ? "It changed nothing: every row was there already." : "Nothing would change: every row is there already.";
   }
   const parts = [
@@ -34,6 +33,5 @@ export const withdrawalSentence = (changes: Pick<ExtractChanges, "totals"> | und
     totals.changed > 0 && `the ${countOf(totals.changed, "row")} it changed ${totals.changed === 1 ? "gets" : "get"} back what stood there before`,
   ].filter((part) => part !== false);
   if (parts.length === 0) return "It changed nothing, so nothing goes back; it is only marked as withdrawn.";
-  const text = parts.join(", and ");
-  return `${text.charAt(0).toUpperCase()}${text.slice(1)}.`;
+  return `${capitalised(parts.join(", and "))}.`;
 };

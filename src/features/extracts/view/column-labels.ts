@@ -1,3 +1,5 @@
+import { capitalised } from "@/lib/format/capitalised";
+
 const labels: Record<string, string> = {
   net_sales: "Net sales",
   stock_out_days: "Sold-out days",
@@ -11,7 +13,4 @@ const labels: Record<string, string> = {
 };
 
 /** A column of ours as people call it: "net_sales" is "Net sales". */
-export const columnLabel = (column: string): string => {
-  const plain = column.replaceAll("_", " ");
-  return labels[column] ?? `${plain.charAt(0).toUpperCase()}${plain.slice(1)}`;
-};
+export const columnLabel = (column: string): string => labels[column] ?? capitalised(column.replaceAll("_", " "));

@@ -3,26 +3,28 @@ import type { ChainFormat } from "@/lib/format/chain-format";
 import { countOf } from "@/lib/format/number";
 
 type Stores = Coverage["stores"];
+type State = Stores[number]["states"][number];
 
-const count = (stores: Stores, state: string) =>
+/** States that are to be looked at. */
+const wantingStates: readonly State[] = ["missing", "thin", "withdrawn"];
+
+const count = (stores: Stores, state: State) =>
   stores.reduce((sum, { states }) => sum + states.filter((one) => one === state).length, 0);
 
 /** What the picture says, in a line: how many store-weeks there are, and what is wanting. */
 export const coverageSentence = ({ stores, weeks }: Pick<Coverage, "stores" | "weeks">, format: ChainFormat): string => {
   const open = stores.length * weeks.length - count(stores, "closed");
-  const wanting = [
-    [count(stores, "missing"), "missing"],
-    [count(stores, "thin"), "thin"],
-    [count(stores, "withdrawn"), "withdrawn"],
-  ] as const;
-  const parts = wanting.filter(([number]) => number > 0).map(([number, word]) => `${format.number(number)} ${word}`);
+  const parts = wantingStates
+    .map((state) => ({ state, number: count(stores, state) }))
+    .filter(({ number }) => number > 0)
+    .map(({ state, number }) => `${format.number(number)} ${state}`);
   const all = `${countOf(stores.length, "store")} in ${countOf(weeks.length, "week")}: ${countOf(open, "store-week")}`;
   return parts.length === 0 ? `${all}, and all are there.` : `${all}, of which ${parts.join(", ")}.`;
 };
 
 /** Whether something of a store is to be looked at. */
 export const needsALook = ({ states }: Stores[number]): boolean =>
-  states.some((state) => state === "missing" || state === "thin" || state === "withdrawn");
+  states.some((state) => wantingStates.includes(state));
 
 export const coverageSpans = [
   { value: "26", label: "26 weeks" },

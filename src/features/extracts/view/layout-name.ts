@@ -1,3 +1,5 @@
+import { capitalised } from "@/lib/format/capitalised";
+
 /** A name for the layout of a file's source: its file's name without days, weeks and numbers. */
 export const suggestName = (fileName: string): string => {
   const plain = fileName
@@ -7,5 +9,5 @@ export const suggestName = (fileName: string): string => {
     .replace(/\s+/g, " ")
     .trim();
   const name = plain.length < 3 ? "New source" : plain;
-  return `${name.charAt(0).toUpperCase()}${name.slice(1)}`.slice(0, 80);
+  return capitalised(name).slice(0, 80);
 };

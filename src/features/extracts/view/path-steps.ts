@@ -1,5 +1,5 @@
 import type { Extract } from "@shared/contract/extracts";
-import { countOf } from "@/lib/format/number";
+import { countOf, formatNumber } from "@/lib/format/number";
 import { isInWork, needsLayout } from "./extract-state";
 
 /** The way of a file: what it is, how it is read, what is wrong with it, what loading changes, and that it is loaded. */
@@ -63,7 +63,7 @@ const wrong = (extract: Extract): Said => {
   const isOpen = state === "checked" && !isUnconfirmed(extract) && rows.errors + rows.warnings > 0;
   const warnings = rows.warnings > 0 ? countOf(rows.warnings, "warning") : "";
   if (rows.errors > 0) {
-    const usable = `${countOf(rows.usable, "row").split(" ")[0]} of ${countOf(rows.read, "row")} can be used`;
+    const usable = `${formatNumber(rows.usable)} of ${countOf(rows.read, "row")} can be used`;
     return { mark: "look", line: `${countOf(rows.errors, "error")}${warnings && `, ${warnings}`}: ${usable}`, isOpen };
   }
   if (warnings) return { mark: "done", line: `${warnings}; every row can be used`, isOpen };

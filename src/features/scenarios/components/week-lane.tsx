@@ -4,6 +4,7 @@ import { yearFraction } from "@shared/calendar";
 import { DriverLane } from "@/components/charts/driver-lane/driver-lane";
 import { monthTicks } from "@/components/charts/scale/month-ticks";
 import { unseenRanges } from "@/components/charts/scale/unseen-ranges";
+import { capitalised } from "@/lib/format/capitalised";
 import { useChainFormat } from "@/lib/format/chain-format";
 import { lanePoints, supportFor, axisValues } from "../view/lane-points";
 import { nearestWeek } from "../view/nearest-week";
@@ -42,7 +43,7 @@ export const WeekLane = ({ figures, level, week, onWeek }: BenchProps) => {
       value={here}
       baseline={null}
       onChange={(fraction) => onWeek(nearestWeek(weeks, { fraction, from: week }))}
-      format={() => `${label.charAt(0).toUpperCase()}${label.slice(1)}`}
+      format={() => capitalised(label)}
       effect={{ multiplier: "as base", note: "same weeks" }}
       detail={
         <>

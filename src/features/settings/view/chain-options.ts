@@ -1,5 +1,6 @@
 import { weekdayNames } from "@shared/calendar";
 import type { ComboboxOption } from "@/components/ui/combobox-options";
+import { capitalised } from "@/lib/format/capitalised";
 
 const languageTags = (
   "bg-BG cs-CZ da-DK de-AT de-CH de-DE el-GR en-AU en-CA en-GB en-IE en-IN en-NZ en-US en-ZA es-ES es-MX et-EE fi-FI fr-BE fr-CA " +
@@ -28,8 +29,6 @@ export const localeOptions = (value: string): ComboboxOption[] => {
 
 export const timeZoneOptions = (value: string): ComboboxOption[] =>
   withValue(Intl.supportedValuesOf("timeZone").map((zone) => ({ value: zone, label: zone.replaceAll("_", " ") })), value);
-
-const capitalised = (word: string) => word.charAt(0).toUpperCase() + word.slice(1);
 
 /** Days of the week by their number, Monday first. */
 export const weekdayChoices = [1, 2, 3, 4, 5, 6, 0].map((day) => ({ value: String(day), label: capitalised(weekdayNames[day] ?? "") }));

@@ -1,12 +1,10 @@
 import { weekdayNames } from "@shared/calendar";
 import type { Chain } from "@shared/contract/chain";
+import { capitalised } from "@/lib/format/capitalised";
 
 type Weeks = Pick<Chain, "calendar" | "weekStart">;
 
-const dayName = (day: number) => {
-  const name = weekdayNames[day] ?? "";
-  return name.charAt(0).toUpperCase() + name.slice(1);
-};
+const dayName = (day: number) => capitalised(weekdayNames[day] ?? "");
 
 /** What follows from other weeks than the chain has now; empty where they stay. */
 export const weekChangeConsequences = (now: Weeks, next: Weeks): string[] => {

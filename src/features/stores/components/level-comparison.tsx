@@ -3,13 +3,14 @@ import { BandLine } from "@/components/charts/band-line";
 import { GroupLegend } from "@/components/charts/group-legend";
 import { LevelDots } from "@/components/charts/level-dots/level-dots";
 import { Sheet } from "@/components/ui/sheet";
+import { capitalised } from "@/lib/format/capitalised";
 import { dotLevels } from "../view/dot-levels";
 import { pictureTitles } from "../view/drivers";
 import { isLearnt } from "../view/store-curves";
 import type { ComparisonViewProps } from "./curve-comparison";
 import { LevelTable } from "./level-table";
 
-const labelOf = (level: string) => level.charAt(0).toUpperCase() + level.slice(1).replaceAll("_", " ");
+const labelOf = (level: string) => capitalised(level.replaceAll("_", " "));
 
 /** A driver of a few levels: what each does in each store. */
 export const LevelComparison = ({ comparison, driver, groups, groupOf, selected, onSelect }: ComparisonViewProps) => {
