@@ -1,12 +1,8 @@
 import { useMutation, useQueryClient } from "@tanstack/react-query";
 import { checkExtract, loadExtract, withdrawExtract } from "@shared/contract/extracts";
 import { call } from "@/lib/api-client";
-import { extractChangesKey } from "./extract-changes";
-import { extractQuery } from "./extract";
-import { extractIssuesKey } from "./extract-issues";
 import { coverageKey } from "./coverage";
-import { extractLayoutKey } from "./extract-layout";
-import { unknownCodesKey } from "./unknown-codes";
+import { extractQuery } from "./extract";
 
 /** What can be started on an extract; a load that is unusual must say that a person has looked at it. */
 export type ExtractAction = { name: "check" | "withdraw" } | { name: "load"; secondLook: boolean };
@@ -32,17 +28,8 @@ export const useRefreshExtract = (id: string) => {
   const queryClient = useQueryClient();
   return () =>
     Promise.all(
-      [
-        extractQuery(id).queryKey,
-        extractIssuesKey(id),
-        extractChangesKey(id),
-        extractLayoutKey(id),
-        unknownCodesKey(id),
-        ["extracts"],
-        coverageKey,
-        ["loaded-weeks"],
-        ["products"],
-        ["stores"],
-      ].map((queryKey) => queryClient.invalidateQueries({ queryKey })),
+      [extractQuery(id).queryKey, ["extracts"], coverageKey, ["loaded-weeks"], ["products"], ["stores"]].map((queryKey) =>
+        queryClient.invalidateQueries({ queryKey }),
+      ),
     );
 };

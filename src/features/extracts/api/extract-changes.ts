@@ -1,11 +1,10 @@
 import { queryOptions } from "@tanstack/react-query";
 import { getExtractChanges } from "@shared/contract/extracts";
 import { call } from "@/lib/api-client";
-
-export const extractChangesKey = (id: string) => ["extract", id, "changes"];
+import { extractQuery } from "./extract";
 
 export const extractChangesQuery = (id: string) =>
   queryOptions({
-    queryKey: extractChangesKey(id),
+    queryKey: [...extractQuery(id).queryKey, "changes"],
     queryFn: ({ signal }) => call(getExtractChanges, { params: { id }, signal }),
   });

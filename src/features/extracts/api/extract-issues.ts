@@ -2,8 +2,7 @@ import { infiniteQueryOptions } from "@tanstack/react-query";
 import { getExtractIssuesCsv, listExtractIssues } from "@shared/contract/extracts";
 import { call, endpointAddress } from "@/lib/api-client";
 import type { IssueFilter } from "../view/issue-filter";
-
-export const extractIssuesKey = (id: string) => ["extract", id, "issues"];
+import { extractQuery } from "./extract";
 
 const pageSize = 200;
 
@@ -12,7 +11,7 @@ const queryOf = ({ rule, severity }: IssueFilter) => ({ rule: rule ?? undefined,
 /** What is wrong with the rows; of one rule or severity where one is chosen. */
 export const extractIssuesQuery = (id: string, filter: IssueFilter) =>
   infiniteQueryOptions({
-    queryKey: [...extractIssuesKey(id), filter],
+    queryKey: [...extractQuery(id).queryKey, "issues", filter],
     queryFn: ({ pageParam, signal }) =>
       call(listExtractIssues, {
         params: { id },

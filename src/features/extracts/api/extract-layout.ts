@@ -6,7 +6,7 @@ import { call } from "@/lib/api-client";
 import { extractQuery } from "./extract";
 import { layoutsQuery } from "./layouts";
 
-export const extractLayoutKey = (id: string) => ["extract", id, "layout"];
+const extractLayoutKey = (id: string) => [...extractQuery(id).queryKey, "layout"];
 
 /** How the file is read, with its first rows. */
 export const extractLayoutQuery = (id: string) =>

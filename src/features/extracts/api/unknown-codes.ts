@@ -4,12 +4,10 @@ import { createUnknownCodes, getUnknownCodes } from "@shared/contract/unknown-co
 import { call } from "@/lib/api-client";
 import { extractQuery } from "./extract";
 
-export const unknownCodesKey = (id: string) => ["extract", id, "unknown-codes"];
-
 /** Stores and products of the file that the catalogue lacks. */
 export const unknownCodesQuery = (id: string) =>
   queryOptions({
-    queryKey: unknownCodesKey(id),
+    queryKey: [...extractQuery(id).queryKey, "unknown-codes"],
     queryFn: ({ signal }) => call(getUnknownCodes, { params: { id }, signal }),
   });
 
