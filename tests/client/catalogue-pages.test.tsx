@@ -1,21 +1,14 @@
 import { screen, waitFor, within } from "@testing-library/react";
 import userEvent from "@testing-library/user-event";
-import { afterEach, beforeAll, describe, expect, it, vi } from "vitest";
+import { afterEach, describe, expect, it, vi } from "vitest";
 import { EventsPage } from "@/features/catalogue/components/events-page";
 import { ProductPage } from "@/features/catalogue/components/product-page";
 import { ProductsPage } from "@/features/catalogue/components/products-page";
 import { TemperaturesPage } from "@/features/catalogue/components/temperatures-page";
 import { serving } from "./support/catalogue-server";
 import { renderRouted } from "./support/routed";
-import "./support/render";
 
 afterEach(() => vi.unstubAllGlobals());
-
-beforeAll(() => {
-  // jsdom knows no modal dialogs.
-  HTMLDialogElement.prototype.showModal = function () { this.open = true; };
-  HTMLDialogElement.prototype.close = function () { this.open = false; };
-});
 
 const iso = { kind: "iso", weekStart: 1 } as const;
 const dialog = () => within(screen.getByRole("dialog"));

@@ -1,19 +1,12 @@
 import { screen, waitFor, within } from "@testing-library/react";
 import userEvent from "@testing-library/user-event";
-import { afterEach, beforeAll, describe, expect, it, vi } from "vitest";
+import { afterEach, describe, expect, it, vi } from "vitest";
 import { StoresPage } from "@/features/catalogue/components/stores-page";
 import { refusal } from "./support/answer";
 import { serving, stores } from "./support/catalogue-server";
 import { renderRouted } from "./support/routed";
-import "./support/render";
 
 afterEach(() => vi.unstubAllGlobals());
-
-beforeAll(() => {
-  // jsdom knows no modal dialogs.
-  HTMLDialogElement.prototype.showModal = function () { this.open = true; };
-  HTMLDialogElement.prototype.close = function () { this.open = false; };
-});
 
 const dialog = () => within(screen.getByRole("dialog"));
 

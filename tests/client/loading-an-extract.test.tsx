@@ -11,10 +11,6 @@ import { renderInPage } from "./support/render";
 
 afterEach(() => vi.unstubAllGlobals());
 
-// jsdom has the dialog element, but cannot open it.
-HTMLDialogElement.prototype.showModal = function () { this.open = true; };
-HTMLDialogElement.prototype.close = function () { this.open = false; };
-
 const week = { week: "2026-06-08", new: 10, changed: 0, same: 0, missing: 0, unitsBefore: 0, unitsAfter: 120 };
 const changes: ExtractChanges = { totals: { new: 10, changed: 0, same: 0, missing: 0 }, weeks: [week], secondLook: [] };
 const jobId = "0b7e3a44-3b1b-4a8e-9a0a-000000000009";

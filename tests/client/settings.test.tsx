@@ -1,7 +1,7 @@
 import { screen, waitFor, within } from "@testing-library/react";
 import userEvent from "@testing-library/user-event";
 import { Link, Outlet } from "react-router-dom";
-import { afterEach, beforeAll, describe, expect, it, vi } from "vitest";
+import { afterEach, describe, expect, it, vi } from "vitest";
 import type { Chain } from "@shared/contract/chain";
 import type { NoticeChoices as Choices } from "@shared/contract/notices";
 import { ChainSettings } from "@/features/settings/components/chain-settings";
@@ -13,12 +13,6 @@ import { renderInPage } from "./support/render";
 import { renderRoutes } from "./support/routed";
 
 afterEach(() => vi.unstubAllGlobals());
-
-beforeAll(() => {
-  // jsdom knows no modal dialogs.
-  HTMLDialogElement.prototype.showModal = function () { this.open = true; };
-  HTMLDialogElement.prototype.close = function () { this.open = false; };
-});
 
 const everything: Choices = { "extract-has-errors": true, "extract-loaded": true, "sales-missing": true };
 

@@ -11,6 +11,10 @@ afterEach(cleanup);
 // jsdom has no CSS.escape, which the keyboard stand-in needs to walk radio buttons.
 vi.stubGlobal("CSS", { escape: (text: string) => text.replace(/[^\w-]/g, "\\$&") });
 
+// jsdom has the dialog element, but cannot open it.
+HTMLDialogElement.prototype.showModal = function () { this.open = true; };
+HTMLDialogElement.prototype.close = function () { this.open = false; };
+
 /** Draws a part of the interface inside what surrounds every page. */
 export const renderInPage = (part: ReactNode, { at = "/" }: { at?: string } = {}) => {
   const queryClient = createQueryClient();

@@ -6,6 +6,7 @@ import { createMemoryRouter, RouterProvider } from "react-router-dom";
 import type { RouteObject } from "react-router-dom";
 import { StatusLineProvider } from "@/components/ui/status-line";
 import { createQueryClient } from "@/lib/query-client";
+import "./render";
 
 type Options = { at?: string; queryClient?: QueryClient };
 
