@@ -1,8 +1,5 @@
 import { entriesPerRow, gatherRow, roomForRow } from "./sparse-rows";
-import type { SparseRows, TensorRows } from "./sparse-rows";
-
-/** A term on groups: column of group g is g x width + k. All of a term's columns are one group of its width. */
-export type GroupedRows = { rows: SparseRows; width: number };
+import type { GroupedRows, SparseRows, TensorRows } from "./sparse-rows";
 
 /**
  * Diagonal blocks X_g' diag(weights) X_g of any two terms by their rows' entries. O(n x entries x entries).

@@ -1,5 +1,5 @@
 import { paddedWidth } from "./sparse-rows";
-import type { IndexRows as Index, SingleRows as Single, SplineRows as Spline } from "./sparse-rows";
+import type { GroupedRows, IndexRows as Index, SingleRows as Single, SplineRows as Spline } from "./sparse-rows";
 
 /** Rows that have a kernel of their own. */
 export type PlainRows = Single | Index | Spline;
@@ -15,7 +15,7 @@ export function crossKernel(left: PlainRows, right: PlainRows, weights: Float64A
   if (left.storage === "single") crossSingle(left, right, weights, out);
   else if (left.storage === "index") crossIndex(left, right as Index | Spline, weights, out);
   else if (left === right) squareSpline(left, weights, out);
-  else crossSplines(left, right as Spline, weights, out);
+  else crossSplines({ rows: left, width: left.width }, { rows: right as Spline, width: paddedWidth(right) }, weights, out);
 }
 
 function crossSingle(left: Single, right: Single | Index | Spline, weights: Float64Array, out: Float64Array): void {
@@ -75,17 +75,28 @@ function crossIndex(left: Index, right: Index | Spline, weights: Float64Array, o
   }
 }
 
-function crossSplines(left: Spline, right: Spline, weights: Float64Array, out: Float64Array): void {
-  const stride = paddedWidth(right);
-  const own = left.values;
-  const other = right.values;
+/**
+ * Diagonal blocks X_g' diag(weights) X_g of two splines.
+ *
+ * @param left both terms' rows are in the same group. right likewise; on a circle, one group of the padded width.
+ * @param out added to: left.width x right.width values a group, row-major.
+ * @example crossSplines({ rows: price, width: price.width }, { rows: season, width: paddedWidth(season) }, weights, out);
+ */
+export function crossSplines(left: GroupedRows<Spline>, right: GroupedRows<Spline>, weights: Float64Array, out: Float64Array): void {
+  const { width } = left;
+  const isOneGroup = left.rows.width === width;
+  const stride = right.width;
+  const { first, values: own } = left.rows;
+  const { first: otherFirst, values: other } = right.rows;
   for (let row = 0; row < weights.length; row++) {
     const at = 4 * row;
     const r0 = other[at];
     const r1 = other[at + 1];
     const r2 = other[at + 2];
     const r3 = other[at + 3];
-    let to = left.first[row] * stride + right.first[row];
+    const from = first[row];
+    const group = isOneGroup ? 0 : (from / width) | 0;
+    let to = (from - group) * stride + otherFirst[row];
     for (let k = 0; k < 4; k++, to += stride) {
       const scaled = weights[row] * own[at + k];
       out[to] += scaled * r0;

@@ -1,9 +1,8 @@
 import { crossEntries, crossTensor } from "./cross-entries";
-import type { GroupedRows } from "./cross-entries";
 import { crossAlike } from "./cross-alike";
 import { crossKernel } from "./cross-kernels";
 import { paddedWidth } from "./sparse-rows";
-import type { SparseRows } from "./sparse-rows";
+import type { GroupedRows, SparseRows } from "./sparse-rows";
 
 export { groupSquare } from "./group-square";
 

@@ -1,6 +1,6 @@
 import { crossEntries } from "./cross-entries";
-import type { GroupedRows } from "./cross-entries";
-import type { IndexRows, SplineRows } from "./sparse-rows";
+import { crossSplines } from "./cross-kernels";
+import type { GroupedRows, IndexRows } from "./sparse-rows";
 
 /**
  * Diagonal blocks X_g'W X_g of two terms on the same groups: only what rows of one group have in common, O(n x 16) for two
@@ -17,39 +17,11 @@ export function groupSquare(
   const { weights } = by;
   out.fill(0, 0, by.count * left.width * right.width);
   if (left.rows.storage === "spline" && right.rows.storage === "spline") {
-    splineBlocks({ rows: left.rows, width: left.width }, { rows: right.rows, width: right.width }, weights, out);
+    crossSplines({ rows: left.rows, width: left.width }, { rows: right.rows, width: right.width }, weights, out);
   } else if (left.rows.storage === "index" && left.rows === right.rows && left.width === 1) {
     indexSquares(left.rows, weights, out);
   } else {
     crossEntries(left, right, weights, out);
-  }
-}
-
-type GroupedSplines = { rows: SplineRows; width: number };
-
-function splineBlocks(left: GroupedSplines, right: GroupedSplines, weights: Float64Array, out: Float64Array): void {
-  const { width } = left;
-  const stride = right.width;
-  const starts = left.rows.first;
-  const otherStarts = right.rows.first;
-  const own = left.rows.values;
-  const other = right.rows.values;
-  for (let row = 0; row < weights.length; row++) {
-    const at = 4 * row;
-    const r0 = other[at];
-    const r1 = other[at + 1];
-    const r2 = other[at + 2];
-    const r3 = other[at + 3];
-    const first = starts[row];
-    const group = (first / width) | 0;
-    let to = (first - group) * stride + otherStarts[row];
-    for (let k = 0; k < 4; k++, to += stride) {
-      const scaled = weights[row] * own[at + k];
-      out[to] += scaled * r0;
-      out[to + 1] += scaled * r1;
-      out[to + 2] += scaled * r2;
-      out[to + 3] += scaled * r3;
-    }
   }
 }
 

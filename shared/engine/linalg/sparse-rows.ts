@@ -15,6 +15,9 @@ export type AlikeRows = { codes: Int32Array; rows: SplineRows };
 export type DenseRows = { storage: "dense"; width: number; values: Float64Array };
 export type TensorRows = { storage: "tensor"; width: number; left: SplineRows; right: SplineRows };
 
+/** A term on groups: column of group g is g x width + k. All columns of a term are one group of its width. */
+export type GroupedRows<Rows extends SparseRows = SparseRows> = { rows: Rows; width: number };
+
 /** Columns a kernel writes before the circle is closed. */
 export const paddedWidth = (rows: SparseRows): number => (rows.storage === "spline" && rows.wraps ? rows.width + 3 : rows.width);
 
