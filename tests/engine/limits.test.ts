@@ -1,7 +1,7 @@
 import { fitModel, modelReport, predict } from "@shared/engine";
 import type { Family, ModelData, ModelSpec, TermSpec } from "@shared/engine";
 import { describe, expect, it } from "vitest";
-import { everyKind, everyKindRows, families, inOrder, modelOf, withAuto } from "./support/every-kind-rows";
+import { everyKind, everyKindRows, families, inOrder, modelOf, withAuto, withPenalty } from "./support/every-kind-rows";
 import { largestDifference } from "./support/measures";
 
 /** Weights, units, offsets and numbers of rows at the ends of what is taken. */
@@ -10,9 +10,6 @@ const numbers = rows.y.map((_, row) => row);
 const kinds = Object.entries(everyKind);
 const predictorOf = (spec: ModelSpec, data: ModelData) => predict(fitModel(spec, data), rows).linearPredictor;
 
-/** The same terms under another penalty. */
-const penalised = (terms: readonly TermSpec[], penalty: number): TermSpec[] =>
-  terms.map((term) => ("smoothness" in term ? { ...term, smoothness: { penalty } } : term));
 
 describe.each(families)("A row of a weight near zero says nothing, however wrong it is: %s", (family) => {
   const column = modelOf(family, []).response as "y";
@@ -48,7 +45,7 @@ describe("Units of responses and columns, powers of ten up and down", () => {
     const plain = predictorOf(spec, rows);
     for (const unit of [1e-10, 1e10]) {
       // Counts are weights of working models too: penalties given are in their unit.
-      const own = family === "quasi-poisson" ? { ...spec, terms: penalised(terms, 3 * unit) } : spec;
+      const own = family === "quasi-poisson" ? { ...spec, terms: withPenalty(terms, 3 * unit) } : spec;
       const changed = predictorOf(own, { ...rows, [column]: rows[column].map((value) => value * unit) });
       const size = family === "gaussian" ? unit : 1;
       expect(largestDifference(changed.map((value) => value / size), plain.map((value) => (moved[family]?.(value, unit) ?? Number.NaN) / size))).toBeLessThan(1e-6);

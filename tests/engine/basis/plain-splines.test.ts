@@ -5,16 +5,9 @@ import { splineRows, splineSlopeRows } from "@shared/engine/basis/uniform-spline
 import { denseOf } from "../linalg/storages";
 import { seededUniform } from "../support/generator";
 import { largestDifference } from "../support/measures";
+import { spline } from "../support/plain-columns";
 
-/** Value at x of the B-spline of a degree on knots k to k + degree + 1, by Cox and de Boor's recursion; 0 / 0 is 0. */
-function spline(x: number, knots: readonly number[], k: number, degree: number): number {
-  if (degree === 0) return x >= knots[k] && x < knots[k + 1] ? 1 : 0;
-  const part = (above: number, width: number) => (width === 0 ? 0 : above / width);
-  return part(x - knots[k], knots[k + degree] - knots[k]) * spline(x, knots, k, degree - 1)
-    + part(knots[k + degree + 1] - x, knots[k + degree + 1] - knots[k + 1]) * spline(x, knots, k + 1, degree - 1);
-}
-
-/** Its derivative of an order (de Boor 1978, X.8). */
+/** A B-spline's derivative of an order (de Boor 1978, X.8). */
 function splineSlope(x: number, of: { knots: readonly number[]; k: number; degree: number; order: number }): number {
   const { knots, k, degree, order } = of;
   if (order === 0) return spline(x, knots, k, degree);

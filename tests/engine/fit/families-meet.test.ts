@@ -1,7 +1,7 @@
 import { fitModel, predict } from "@shared/engine";
-import type { FittedModel, ModelData, TermSpec } from "@shared/engine";
+import type { FittedModel, ModelData } from "@shared/engine";
 import { describe, expect, it } from "vitest";
-import { everyKind, everyKindRows, inOrder, modelOf } from "../support/every-kind-rows";
+import { everyKind, everyKindRows, inOrder, modelOf, withPenalty } from "../support/every-kind-rows";
 import { largestDifference, largestRelativeDifference } from "../support/measures";
 
 /** Families where one is another's special case or limit, for every kind of term, penalties given. */
@@ -9,8 +9,6 @@ const rows = everyKindRows(97, 90);
 const numbers = rows.y.map((_, row) => row);
 const kinds = Object.entries(everyKind);
 const predictorOf = (model: FittedModel, data: ModelData = rows) => predict(model, data).linearPredictor;
-const penalised = (terms: readonly TermSpec[], penalty: number): TermSpec[] =>
-  terms.map((term) => ("smoothness" in term ? { ...term, smoothness: { penalty } } : term));
 
 describe("A lognormal model", () => {
   it.each(kinds)("is the normal model of the logarithm, its mean half a dispersion above: %s", (_name, terms) => {
@@ -67,7 +65,7 @@ describe("A binomial model", () => {
 describe("A quasi-Poisson model", () => {
   it.each(kinds)("of counts by the dozen is that of counts under a penalty a dozenth: %s", (_name, terms) => {
     const dozens = { ...rows, counts: rows.counts.map((count) => 12 * count) };
-    const [one, other] = [fitModel(modelOf("quasi-poisson", penalised(terms, 3)), rows), fitModel(modelOf("quasi-poisson", penalised(terms, 36)), dozens)];
+    const [one, other] = [fitModel(modelOf("quasi-poisson", withPenalty(terms, 3)), rows), fitModel(modelOf("quasi-poisson", withPenalty(terms, 36)), dozens)];
     expect(largestDifference(predictorOf(other, dozens).map((value) => value - Math.log(12)), predictorOf(one))).toBeLessThan(1e-6);
     expect(other.dispersion / one.dispersion).toBeCloseTo(12, 4);
     expect(largestRelativeDifference(predict(other, rows).standardError, predict(one, rows).standardError)).toBeLessThan(1e-5);

@@ -1,7 +1,7 @@
 import { fitModel, predict } from "@shared/engine";
 import type { Family, ModelSpec, TermSpec } from "@shared/engine";
 import { describe, expect, it } from "vitest";
-import { everyKind, everyKindRows, families, modelOf } from "../support/every-kind-rows";
+import { everyKind, everyKindRows, families, modelOf, withPenalty } from "../support/every-kind-rows";
 import { largestDifference, largestRelativeDifference } from "../support/measures";
 import { plainFit } from "../support/plain-fit";
 
@@ -11,9 +11,6 @@ const kinds = Object.entries(everyKind).filter(([name]) => name !== "local regre
 const specOf = (family: Family, terms: readonly TermSpec[], change: Partial<ModelSpec> = {}): ModelSpec =>
   modelOf(family, terms, { offset: "exposure", weights: family === "binomial" ? "trials" : "w", ...change });
 
-/** The same terms under another penalty. */
-const penalised = (terms: readonly TermSpec[], penalty: number): TermSpec[] =>
-  terms.map((term) => ("smoothness" in term ? { ...term, smoothness: { penalty } } : term));
 const meanOf = (values: ArrayLike<number>) => Array.from(values).reduce((sum, value) => sum + value, 0) / values.length;
 
 /** Working models rest when the predictor moves by less than 3e-7. */
@@ -61,7 +58,7 @@ const unpenalisedOf: Record<string, number> = {
 describe("The criterion compares penalties as the restricted likelihood does that is written out", () => {
   it.each(kinds)("of a normal model with %s: 1/2 [(n - Mp) ln(D + b'Sb) + ln|X'X + S| - rank ln(penalty)]", (name, terms) => {
     const at = (penalty: number) => {
-      const spec = specOf("gaussian", penalised(terms, penalty));
+      const spec = specOf("gaussian", withPenalty(terms, penalty));
       return { own: fitModel(spec, rows).criterion, ...plainFit(spec, rows) };
     };
     const [loose, stiff] = [at(0.4), at(60)];

@@ -1,7 +1,7 @@
 import { fitModel, predict } from "@shared/engine";
 import type { Family, FittedModel, ModelData } from "@shared/engine";
 import { describe, expect, it } from "vitest";
-import { gammaDraw, poissonDraw } from "../support/draws";
+import { gammaDraw, negativeBinomialDraw, poissonDraw } from "../support/draws";
 import { seededNormal, seededUniform } from "../support/generator";
 
 /** Rows of a driver and a response whose scatter is the family's; the same for the same seed. */
@@ -10,8 +10,6 @@ function simulated(seed: number, level: number, draw: (mean: number, uniform: ()
   const price = Array.from({ length: 60 }, () => Math.round(100 * (1 + uniform())) / 100);
   return { price, y: price.map((value) => draw(Math.exp(level - Math.log(value)), uniform)) };
 }
-
-const negativeBinomial = (mean: number, size: number, uniform: () => number) => poissonDraw(uniform, (mean / size) * gammaDraw(uniform, size));
 
 /** Per family: how the response scatters, and how the family says that a new row does at a linear predictor. */
 type Case = {
@@ -30,8 +28,8 @@ const cases: Case[] = [
     draw: ({ dispersion }, eta, { normal }) => Math.exp(eta + Math.sqrt(dispersion) * normal()),
   },
   {
-    name: "counts scattered three times as much as Poisson's", family: "quasi-poisson", rows: simulated(3, 3, (mean, uniform) => negativeBinomial(mean, mean / 2, uniform)),
-    draw: ({ dispersion }, eta, { uniform }) => negativeBinomial(Math.exp(eta), Math.exp(eta) / (dispersion - 1), uniform),
+    name: "counts scattered three times as much as Poisson's", family: "quasi-poisson", rows: simulated(3, 3, (mean, uniform) => negativeBinomialDraw(uniform, mean, mean / 2)),
+    draw: ({ dispersion }, eta, { uniform }) => negativeBinomialDraw(uniform, Math.exp(eta), Math.exp(eta) / (dispersion - 1)),
   },
   {
     name: "counts scattered less than Poisson's", family: "quasi-poisson", rows: simulated(4, 3, (mean, uniform) => Math.round(mean + uniform())),
@@ -42,8 +40,8 @@ const cases: Case[] = [
     draw: ({ dispersion }, eta, { uniform }) => amount(Math.exp(eta), dispersion, uniform),
   },
   {
-    name: "negative binomial counts", family: "negative-binomial", rows: simulated(6, 4, (mean, uniform) => negativeBinomial(mean, 6, uniform)),
-    draw: ({ theta }, eta, { uniform }) => negativeBinomial(Math.exp(eta), theta ?? Number.NaN, uniform),
+    name: "negative binomial counts", family: "negative-binomial", rows: simulated(6, 4, (mean, uniform) => negativeBinomialDraw(uniform, mean, 6)),
+    draw: ({ theta }, eta, { uniform }) => negativeBinomialDraw(uniform, Math.exp(eta), theta ?? Number.NaN),
   },
 ];
 const draws = 8000;

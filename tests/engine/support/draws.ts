@@ -15,6 +15,10 @@ export function poissonDraw(uniform: () => number, mean: number): number {
   return count;
 }
 
+/** A negative binomial draw of variance mean + mean^2 / size: Poisson about a gamma mean. */
+export const negativeBinomialDraw = (uniform: () => number, mean: number, size: number): number =>
+  poissonDraw(uniform, (mean / size) * gammaDraw(uniform, size));
+
 /** A gamma draw of scale 1 (Marsaglia & Tsang 2000), shapes below one by a power of a uniform. */
 export function gammaDraw(uniform: () => number, shape: number): number {
   if (shape < 1) return gammaDraw(uniform, shape + 1) * (1 - uniform()) ** (1 / shape);

@@ -57,6 +57,10 @@ export const everyKind: Record<string, TermSpec[]> = {
 export const withAuto = (terms: readonly TermSpec[]): TermSpec[] =>
   terms.map((term) => ("smoothness" in term ? { ...term, smoothness: "auto" } : term));
 
+/** As asked, but under another penalty. */
+export const withPenalty = (terms: readonly TermSpec[], penalty: number): TermSpec[] =>
+  terms.map((term) => ("smoothness" in term ? { ...term, smoothness: { penalty } } : term));
+
 export const modelOf = (family: Family, terms: readonly TermSpec[], change: Partial<ModelSpec> = {}): ModelSpec =>
   ({ response: responses[family], family, terms: [...terms], ...change });
 

@@ -8,12 +8,12 @@ type Rows = Record<string, readonly (number | string)[]>;
 const numbersOf = (rows: Rows, name: string): number[] => rows[name].map(Number);
 const levelsOf = (values: readonly (string | number)[]): string[] => [...new Set(values.map(String))].sort();
 
-/** Value at x of the cubic B-spline on knots k to k + 4, by Cox and de Boor's recursion. */
-function spline(x: number, knots: readonly number[], k: number, degree = 3): number {
+/** Value at x of the B-spline of a degree on knots k to k + degree + 1, by Cox and de Boor's recursion; 0 / 0 is 0. */
+export function spline(x: number, knots: readonly number[], k: number, degree = 3): number {
   if (degree === 0) return x >= knots[k] && x < knots[k + 1] ? 1 : 0;
-  const rise = (x - knots[k]) / (knots[k + degree] - knots[k]);
-  const fall = (knots[k + degree + 1] - x) / (knots[k + degree + 1] - knots[k + 1]);
-  return rise * spline(x, knots, k, degree - 1) + fall * spline(x, knots, k + 1, degree - 1);
+  const part = (above: number, width: number) => (width === 0 ? 0 : above / width);
+  return part(x - knots[k], knots[k + degree] - knots[k]) * spline(x, knots, k, degree - 1)
+    + part(knots[k + degree + 1] - x, knots[k + degree + 1] - knots[k + 1]) * spline(x, knots, k + 1, degree - 1);
 }
 
 /** Splines on equally spaced knots over the range of `over`, widened by a thousandth at each end. */

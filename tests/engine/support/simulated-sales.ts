@@ -1,5 +1,5 @@
 import type { Family, ModelData, ModelSpec } from "@shared/engine";
-import { gammaDraw, poissonDraw } from "./draws";
+import { negativeBinomialDraw } from "./draws";
 import { seededUniform } from "./generator";
 
 /** Prices that units fall with: gently bent, with a threshold that shoppers mind, straight, and steep before it levels off. */
@@ -52,13 +52,12 @@ export function simulatedSales(family: Family, { seed, count, shape }: { seed: n
 function draw(family: Family, predictor: number, uniform: () => number): number {
   const normal = () => Math.sqrt(-2 * Math.log(1 - uniform())) * Math.cos(2 * Math.PI * uniform());
   const mean = Math.exp(predictor);
-  const mixed = (size: number) => poissonDraw(uniform, (mean / size) * gammaDraw(uniform, size));
   switch (family) {
     case "gaussian": return predictor + noise.gaussian * normal();
     case "log-gaussian": return Math.exp(predictor + noise["log-gaussian"] * normal());
     // Negative binomial with variance dispersion x mean, as it predicts new rows.
-    case "quasi-poisson": return mixed(mean / (noise["quasi-poisson"] - 1));
-    case "negative-binomial": return mixed(noise["negative-binomial"]);
+    case "quasi-poisson": return negativeBinomialDraw(uniform, mean, mean / (noise["quasi-poisson"] - 1));
+    case "negative-binomial": return negativeBinomialDraw(uniform, mean, noise["negative-binomial"]);
     case "binomial": {
       let successes = 0;
       for (let trial = 0; trial < noise.binomial; trial++) if (uniform() < 1 / (1 + Math.exp(-predictor))) successes++;
