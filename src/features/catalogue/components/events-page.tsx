@@ -1,12 +1,10 @@
 import { useQuery } from "@tanstack/react-query";
-import { ChevronLeft, ChevronRight } from "lucide-react";
 import { useMemo, useState } from "react";
 import { addDays, firstDayOfWeek, type ChainCalendar } from "@shared/calendar";
 import { exportEvents, type CatalogueEvent } from "@shared/contract/catalogue-events";
 import { DataTable } from "@/components/ui/data-table";
 import type { TableColumn } from "@/components/ui/data-table-columns";
 import { EmptyState } from "@/components/ui/empty-state";
-import { IconButton } from "@/components/ui/icon-button";
 import { PageHeader } from "@/components/ui/page-header";
 import { QueryView } from "@/components/ui/query-view";
 import { SegmentedControl } from "@/components/ui/segmented-control";
@@ -18,14 +16,16 @@ import { countOf } from "@/lib/format/number";
 import { usePermission } from "@/lib/session";
 import { useFilters } from "@/lib/use-filters";
 import { eventsQuery } from "../api/events";
+import { regionsOf } from "../view/regions";
 import { holdsWords } from "../view/search";
-import { weeksOfYear, yearOfDay } from "../view/year-weeks";
+import { weeksOfYear, yearFrom } from "../view/year-weeks";
 import { CatalogueActions } from "./catalogue-actions";
 import { CatalogueViews } from "./catalogue-views";
 import { KindHistory } from "./change-history";
 import { EventCalendar } from "./event-calendar";
 import { EventDialog } from "./event-dialog";
 import { RowButton } from "./row-button";
+import { YearSteps } from "./year-steps";
 
 type EventsPageProps = { calendar: ChainCalendar; today: string };
 
@@ -39,7 +39,7 @@ export const EventsPage = ({ calendar, today }: EventsPageProps) => {
   const { values, set } = useFilters(["view", "year", "q"]);
   const [open, setOpen] = useState<{ id: number | null } | null>(null);
   const events = query.data ?? [];
-  const regions = [...new Set(stores.map(({ region }) => region))].sort();
+  const regions = regionsOf(stores);
   const codes = [...new Set(events.map(({ code }) => code))].sort();
   const isList = values.view === "list";
   return (
@@ -84,17 +84,6 @@ export const EventsPage = ({ calendar, today }: EventsPageProps) => {
     </>
   );
 };
-
-const yearFrom = (text: string, calendar: ChainCalendar, today: string): number =>
-  /^(19|20|21)\d\d$/.test(text) ? Number(text) : yearOfDay(calendar, today);
-
-const YearSteps = ({ year, onYear }: { year: number; onYear: (year: number) => void }) => (
-  <div className="flex items-center gap-1">
-    <IconButton label={`Show ${year - 1}`} onClick={() => onYear(year - 1)}><ChevronLeft /></IconButton>
-    <span className="min-w-14 text-center text-base font-semibold" aria-live="polite">{year}</span>
-    <IconButton label={`Show ${year + 1}`} onClick={() => onYear(year + 1)}><ChevronRight /></IconButton>
-  </div>
-);
 
 type YearOfEventsProps = EventsPageProps & { year: number; events: readonly CatalogueEvent[]; onOpen: (id: number) => void };
 

@@ -1,12 +1,13 @@
 import type { Store } from "@shared/contract/catalogue";
 import { Button } from "@/components/ui/button";
 import { Checkbox } from "@/components/ui/checkbox";
+import { regionsOf } from "../view/regions";
 
 type StorePicksProps = { stores: readonly Store[]; chosen: readonly string[]; onChange: (codes: string[]) => void; error?: string };
 
 /** Some of the stores, by region. */
 export const StorePicks = ({ stores, chosen, onChange, error }: StorePicksProps) => {
-  const regions = [...new Set(stores.map(({ region }) => region))].sort();
+  const regions = regionsOf(stores);
   const picked = new Set(chosen);
   const set = (codes: readonly string[], isIn: boolean) => {
     const next = new Set(picked);

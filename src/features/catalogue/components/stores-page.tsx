@@ -16,14 +16,13 @@ import { useChainFormat, type ChainFormat } from "@/lib/format/chain-format";
 import { countOf } from "@/lib/format/number";
 import { usePermission } from "@/lib/session";
 import { useFilters } from "@/lib/use-filters";
+import { regionsOf } from "../view/regions";
 import { holdsWords } from "../view/search";
 import { CatalogueActions } from "./catalogue-actions";
 import { CatalogueViews } from "./catalogue-views";
 import { KindHistory } from "./change-history";
 import { RowButton } from "./row-button";
 import { StoreDialog } from "./store-dialog";
-
-const regionsOf = (stores: readonly Store[]) => [...new Set(stores.map(({ region }) => region))].sort();
 
 const columnsOf = (format: ChainFormat, open: (code: string) => void): TableColumn<Store>[] => [
   { id: "code", header: "Code", value: ({ code }) => code, width: "8rem" },

@@ -1,5 +1,4 @@
 import { useQuery } from "@tanstack/react-query";
-import { ChevronLeft, ChevronRight } from "lucide-react";
 import { useMemo, useState } from "react";
 import type { ChainCalendar } from "@shared/calendar";
 import type { Store } from "@shared/contract/catalogue";
@@ -7,24 +6,25 @@ import { exportTemperatures, type TemperatureWeek } from "@shared/contract/catal
 import { DataTable } from "@/components/ui/data-table";
 import type { TableColumn } from "@/components/ui/data-table-columns";
 import { EmptyState } from "@/components/ui/empty-state";
-import { IconButton } from "@/components/ui/icon-button";
 import { PageHeader } from "@/components/ui/page-header";
 import { QueryView } from "@/components/ui/query-view";
 import { SelectField } from "@/components/ui/select-field";
 import { Sheet } from "@/components/ui/sheet";
 import { storesQuery } from "@/lib/catalogue";
 import { useChainFormat, type ChainFormat } from "@/lib/format/chain-format";
-import type { TemperatureUnit } from "@/lib/format/temperature";
+import { toFahrenheit, type TemperatureUnit } from "@/lib/format/temperature";
 import { usePermission } from "@/lib/session";
 import { useFilters } from "@/lib/use-filters";
 import { temperaturesQuery, type Place } from "../api/temperatures";
+import { regionsOf } from "../view/regions";
 import { differenceOf } from "../view/temperature-lines";
-import { weeksOfYear, yearOfDay } from "../view/year-weeks";
+import { weeksOfYear, yearFrom } from "../view/year-weeks";
 import { CatalogueActions } from "./catalogue-actions";
 import { CatalogueViews } from "./catalogue-views";
 import { RowButton } from "./row-button";
 import { TemperatureChart } from "./temperature-chart";
 import { TemperatureDialog } from "./temperature-dialog";
+import { YearSteps } from "./year-steps";
 
 type TemperaturesPageProps = { calendar: ChainCalendar; unit: TemperatureUnit; today: string };
 
@@ -52,12 +52,10 @@ export const TemperaturesPage = (props: TemperaturesPageProps) => {
 const placeFrom = (values: { region: string; store: string }, stores: readonly Store[]): Place =>
   values.store === "" ? { scope: "region", place: values.region || regionsOf(stores)[0] } : { scope: "store", place: values.store };
 
-const regionsOf = (stores: readonly Store[]) => [...new Set(stores.map(({ region }) => region))].sort();
-
 const PlaceTemperatures = ({ calendar, unit, today, stores }: TemperaturesPageProps & { stores: readonly Store[] }) => {
   const { values, set } = useFilters(["region", "store", "year"]);
   const place = placeFrom(values, stores);
-  const year = /^(19|20|21)\d\d$/.test(values.year) ? Number(values.year) : yearOfDay(calendar, today);
+  const year = yearFrom(values.year, calendar, today);
   const weeks = useMemo(() => weeksOfYear(calendar, year), [calendar, year]);
   const query = useQuery(temperaturesQuery({ ...place, first: weeks[0], last: weeks[weeks.length - 1] }));
   const region = place.scope === "region" ? place.place : (stores.find(({ code }) => code === place.place)?.region ?? "");
@@ -72,10 +70,8 @@ const PlaceTemperatures = ({ calendar, unit, today, stores }: TemperaturesPagePr
           label="Store" value={place.scope === "store" ? place.place : ""} onChange={(store) => set({ store, region })}
           choices={[{ value: "", label: "The region's own" }, ...stores.filter((store) => store.region === region).map(({ code, name }) => ({ value: code, label: `${code} ${name}` }))]}
         />
-        <div className="flex h-9 items-center gap-1">
-          <IconButton label={`Show ${year - 1}`} onClick={() => set({ year: String(year - 1) })}><ChevronLeft /></IconButton>
-          <span className="min-w-14 text-center text-base font-semibold" aria-live="polite">{year}</span>
-          <IconButton label={`Show ${year + 1}`} onClick={() => set({ year: String(year + 1) })}><ChevronRight /></IconButton>
+        <div className="flex h-9 items-center">
+          <YearSteps year={year} onYear={(shown) => set({ year: String(shown) })} />
         </div>
       </div>
       <QueryView query={query} loading="Reading the temperatures" failure="The temperatures could not be read">
@@ -108,7 +104,7 @@ type Columns = { format: ChainFormat; unit: TemperatureUnit; scope: Place["scope
 
 const columnsOf = ({ format, unit, scope, mayWrite, open }: Columns): TableColumn<TemperatureWeek>[] => {
   const perDegree = unit === "fahrenheit" ? 1.8 : 1;
-  const degrees = (celsius: number | null) => (celsius === null ? "–" : `${format.number(unit === "fahrenheit" ? celsius * 1.8 + 32 : celsius, { digits: 1 })}°`);
+  const degrees = (celsius: number | null) => (celsius === null ? "–" : `${format.number(unit === "fahrenheit" ? toFahrenheit(celsius) : celsius, { digits: 1 })}°`);
   return [
     {
       id: "week", header: "Week", value: ({ week }) => week,

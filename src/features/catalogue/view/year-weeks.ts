@@ -13,3 +13,7 @@ export const weeksOfYear = (calendar: ChainCalendar, year: number): Day[] => {
 /** The year that a day's week is counted in. */
 export const yearOfDay = (calendar: ChainCalendar, day: Day): number =>
   weekNumberOf(calendar, firstDayOfWeek(day, calendar.weekStart)).year;
+
+/** The year an address asks for; where it names none, the one that today's week is counted in. */
+export const yearFrom = (text: string, calendar: ChainCalendar, today: Day): number =>
+  /^(19|20|21)\d\d$/.test(text) ? Number(text) : yearOfDay(calendar, today);
