@@ -1,3 +1,4 @@
+import { AsyncLocalStorage } from "node:async_hooks";
 import type { EntityManager } from "@mikro-orm/postgresql";
 import PgBoss from "pg-boss";
 import type { Pool, PoolClient } from "pg";
@@ -29,8 +30,10 @@ type Means = { pool: Pool; logger: Logger; timing?: JobTiming };
  * pg-boss knows no sign of life and would either wait for its expiry or give a long job away while it still runs.
  */
 export async function createPgBossQueue({ pool, logger, timing = defaultTiming }: Means): Promise<JobQueue> {
+  /** The connection under whose lock pg-boss works just now. */
+  const locked = new AsyncLocalStorage<PoolClient>();
   const boss = new PgBoss({
-    db: { executeSql: (text, values) => pool.query(text, values) },
+    db: { executeSql: (text, values) => (locked.getStore() ?? pool).query(text, values) },
     schedule: false,
   });
   boss.on("error", (error) => logger.error({ err: error }, "queue error"));
@@ -39,7 +42,7 @@ export async function createPgBossQueue({ pool, logger, timing = defaultTiming }
 
   const ensureQueue = async (kind: string) => {
     if (known.has(kind)) return;
-    await oneAtATime(pool, () => boss.createQueue(kind));
+    await oneAtATime(pool, (client) => locked.run(client, () => boss.createQueue(kind)));
     known.add(kind);
   };
 
@@ -83,12 +86,15 @@ export async function createPgBossQueue({ pool, logger, timing = defaultTiming }
   };
 }
 
-/** Processes that start together would lock each other out for good where each makes its queues at the same moment. */
-async function oneAtATime(pool: Pool, work: () => Promise<void>): Promise<void> {
+/**
+ * Processes that start together would lock each other out for good where each makes its queues at the same moment. The work
+ * is done by the connection that has the lock: a second one might have to wait for those that wait for the lock.
+ */
+async function oneAtATime(pool: Pool, work: (client: PoolClient) => Promise<void>): Promise<void> {
   const client = await pool.connect();
   try {
     await client.query("select pg_advisory_lock(hashtext('shelftide queues'))");
-    await work();
+    await work(client);
   } finally {
     // Ending the connection gives the lock back whatever happened.
     client.release(true);

@@ -135,3 +135,17 @@ describe("several workers", () => {
     expect(await marksOf(test.services, id)).not.toContain("two at once");
   });
 });
+
+describe("a process with few connections", () => {
+  it("makes a queue by the only one that is free", { timeout: 30_000 }, async () => {
+    const services = await createServices({ ...test.services.environment, DATABASE_POOL_SIZE: 2 });
+    workersHere.push(services);
+    const held = await services.pool.connect();
+    try {
+      const id = await enqueue(services, countingJob, { steps: 1, stepMs: 1 });
+      expect(await waitForJob(services, id, () => true)).toMatchObject({ state: "queued" });
+    } finally {
+      held.release();
+    }
+  });
+});
