@@ -1,4 +1,5 @@
 export * from "./chain.entities";
+export { calendarOf } from "./calendar-of";
 export { chainRoutes } from "./chain.routes";
 export { findChain } from "./chain.repository";
 export { defaultChain, ensureChain, getChain } from "./chain.service";

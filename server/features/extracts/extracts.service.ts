@@ -1,11 +1,10 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
 import type { Readable } from "node:stream";
 import { z } from "zod";
-import type { WeekStart } from "@shared/calendar";
 import type { ExtractChanges, LoadedWeeks } from "@shared/contract/extracts";
 import { conflict, notFound, ProblemError } from "../../errors";
 import type { Services } from "../../services";
-import { dayIn, getChain } from "../chain";
+import { calendarOf, dayIn, getChain } from "../chain";
 import type { Extract } from "./extracts.entities";
 import { changesOf, findExtract, findExtracts, findLoadedWeeks } from "./extracts.repository";
 import { standingOf } from "./loaded-weeks";
@@ -45,8 +44,8 @@ export async function getChanges(em: EntityManager, extractId: string): Promise<
 
 /** Which weeks of sales are loaded, missing and expected next, at a moment. */
 export async function readLoadedWeeks(em: EntityManager, now: Date): Promise<LoadedWeeks> {
-  const { timeZone, weekStart } = await getChain(em);
-  return standingOf(await findLoadedWeeks(em), { today: dayIn(timeZone, now), weekStart: weekStart as WeekStart });
+  const chain = await getChain(em);
+  return standingOf(await findLoadedWeeks(em), { today: dayIn(chain.timeZone, now), weekStart: calendarOf(chain).weekStart });
 }
 
 /** The file as it arrived. @throws ProblemError 404, or 503 where the file store does not give it out. */

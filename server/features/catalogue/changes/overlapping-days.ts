@@ -1,4 +1,4 @@
-import { unusable } from "../../../errors";
+import { unusable, type ProblemError } from "../../../errors";
 
 /** Days from one to another; an open end goes on. */
 export type Days = { firstDay: string; lastDay?: string | null };
@@ -10,6 +10,12 @@ export function overlap(one: Days, other: Days): boolean {
 
 /** Some days in words: "from 2026-01-05 to 2026-03-01". */
 export const daysInWords = ({ firstDay, lastDay }: Days) => (lastDay == null ? `from ${firstDay} on` : `from ${firstDay} to ${lastDay}`);
+
+/** What whoever ends something before it begins is told. */
+export function lastBeforeFirst(): ProblemError {
+  const message = "The last day lies before the first.";
+  return unusable("last-before-first", message, [{ path: "lastDay", message }]);
+}
 
 type Wanted = { days: Days; others: readonly Days[]; path: string; says: (days: string) => string };
 

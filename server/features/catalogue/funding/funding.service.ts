@@ -1,11 +1,11 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
 import type { changedFundingSchema, newFundingSchema } from "@shared/contract/catalogue-funding";
 import type { z } from "zod";
-import { notFound, unusable } from "../../../errors";
+import { notFound } from "../../../errors";
 import { ProductFundingEntity, type ProductFunding } from "../catalogue.entities";
 import type { Write } from "../changes/author";
 import { changing } from "../changes/catalogue-lock.repository";
-import { requireNoOverlap } from "../changes/overlapping-days";
+import { lastBeforeFirst, requireNoOverlap } from "../changes/overlapping-days";
 import { recordChange } from "../changes/record-change";
 import { requireSeen } from "../changes/versions";
 import { requireNamedProduct, requireProductAt } from "../codes-named.repository";
@@ -74,8 +74,3 @@ type Own = { code: string; days: { firstDay: string; lastDay: string }; others: 
 function requireOwnDays({ code, days, others, path }: Own): void {
   requireNoOverlap({ days, others, path, says: (taken) => `${code} has funding ${taken} already: two contributions cannot share a day.` });
 }
-
-const lastBeforeFirst = () => {
-  const message = "The last day lies before the first.";
-  return unusable("last-before-first", message, [{ path: "lastDay", message }]);
-};

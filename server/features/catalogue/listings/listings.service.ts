@@ -1,12 +1,12 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
 import type { newListingsSchema } from "@shared/contract/catalogue-listings";
 import { z } from "zod";
-import { notFound, unusable } from "../../../errors";
+import { notFound } from "../../../errors";
 import { readCursor, writeCursor } from "../../../http/page-cursor";
 import { ListingEntity, type Listing } from "../catalogue.entities";
 import type { Write } from "../changes/author";
 import { changing } from "../changes/catalogue-lock.repository";
-import { requireNoOverlap } from "../changes/overlapping-days";
+import { lastBeforeFirst, requireNoOverlap } from "../changes/overlapping-days";
 import { recordChange } from "../changes/record-change";
 import { requireSeen } from "../changes/versions";
 import { requireNamedProduct, requireNamedStores, requireProductAt, requireStoreAt } from "../codes-named.repository";
@@ -92,8 +92,3 @@ type Own = { product: string; store: string; days: { firstDay: string; lastDay: 
 function requireOwnDays({ product, store, days, others, path }: Own): void {
   requireNoOverlap({ days, others, path, says: (taken) => `${store} lists ${product} ${taken} already: two listings cannot share a day.` });
 }
-
-const lastBeforeFirst = () => {
-  const message = "The last day lies before the first.";
-  return unusable("last-before-first", message, [{ path: "lastDay", message }]);
-};

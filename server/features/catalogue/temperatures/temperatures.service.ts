@@ -1,8 +1,8 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
-import { addWeeks, CalendarError, parseWeek, parseWeekStart, weeksBetween, type Day } from "@shared/calendar";
+import { addWeeks, CalendarError, parseWeek, weeksBetween, type Day } from "@shared/calendar";
 import type { TemperatureWeek } from "@shared/contract/catalogue-temperatures";
 import { notFound, unusable } from "../../../errors";
-import { getChain } from "../../chain";
+import { calendarOf, getChain } from "../../chain";
 import { TemperatureEntity, type Temperature } from "../catalogue.entities";
 import type { Write } from "../changes/author";
 import { changing } from "../changes/catalogue-lock.repository";
@@ -98,10 +98,10 @@ async function placeOf(em: EntityManager, { scope, place }: Named): Promise<{ pl
 }
 
 async function requireWeeks(em: EntityManager, { first, last }: { first: Day; last: Day }): Promise<void> {
-  const { calendar, weekStart } = await getChain(em);
+  const calendar = calendarOf(await getChain(em));
   for (const [path, week] of [["first", first], ["last", last]] as const) {
     try {
-      parseWeek({ kind: calendar, weekStart: parseWeekStart(weekStart) }, week);
+      parseWeek(calendar, week);
     } catch (error) {
       if (error instanceof CalendarError) throw field(first === last ? "week" : path, error.message);
       throw error;

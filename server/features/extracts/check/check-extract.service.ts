@@ -3,17 +3,18 @@ import type { ExtractChanges } from "@shared/contract/extracts";
 import type { Services } from "../../../services";
 import { conflict, notFound } from "../../../errors";
 import type { Extract } from "../extracts.entities";
-import { findExtract, giveMemory, layoutInForceOf, lockCheck, lockExtract, removeIssues } from "../extracts.repository";
+import { giveMemory, layoutInForceOf, lockCheck, lockExtract, removeIssues } from "../extracts.repository";
+import { getExtract } from "../extracts.service";
 import type { KindDefinition } from "../kinds/kind";
 import { kinds } from "../kinds/kinds";
 import { settleLayout } from "../layouts/settle-layout.service";
-import { analyseStaging, countStaged, dropStaging } from "../load/staging.repository";
+import { dropStaging } from "../load/staging.repository";
 import { noticeChecked } from "../notices/extract-notices";
 import { UnreadableFile } from "../read/unreadable-file";
+import { checkTogether } from "./check-together";
 import { keepIssues, weeksStaged } from "./check.repository";
 import { quietly, type Progress } from "./progress";
 import { stageRows, type StagingProgress } from "./stage-rows";
-import { rejectRepeatedRows } from "./together.repository";
 
 const count = new Intl.NumberFormat("en-GB");
 
@@ -36,13 +37,7 @@ export async function checkExtract(services: Services, { extractId, progress = q
     if (!(error instanceof UnreadableFile)) throw error;
     await services.orm.em.fork().transactional((em) => setUnusable({ em, services, extractId, error }));
   }
-  return requireExtract(services.orm.em.fork(), extractId);
-}
-
-async function requireExtract(em: EntityManager, extractId: string): Promise<Extract> {
-  const extract = await findExtract(em, extractId);
-  if (!extract) throw notFound("extract");
-  return extract;
+  return getExtract(services.orm.em.fork(), extractId);
 }
 
 function begin(services: Services, extractId: string): Promise<void> {
@@ -68,7 +63,7 @@ async function check({ em, services, extractId, progress }: Checking): Promise<v
   // A second worker, which took the first for dead, waits for it.
   await lockCheck(em, extractId);
   await giveMemory(em);
-  const found = await requireExtract(em, extractId);
+  const found = await getExtract(em, extractId);
   const { kind, storageKey, sizeBytes } = found;
   const layout = await layoutInForceOf(em, found);
   const definition = kinds[kind];
@@ -78,11 +73,7 @@ async function check({ em, services, extractId, progress }: Checking): Promise<v
   });
   await progress({ done: sizeBytes, total: sizeBytes, message: `Rows read: ${count.format(rowsRead)}. Comparing them` });
   await keepIssues(em, { extractId, issues: log.kept });
-  await analyseStaging(em, table);
-  const together = { em, table, extractId, log, notes, keep: true };
-  await rejectRepeatedRows({ ...together, definition });
-  await definition.checkTogether?.(together);
-  const rowsUsable = await countStaged(em, extractId);
+  const rowsUsable = await checkTogether({ em, table, extractId, log, notes, keep: true, definition });
   // Before comparing: what is loaded between the two makes it another.
   const changesAsOf = (await definition.standing?.(em)) ?? null;
   const changes = await definition.compare({ em, table });

@@ -1,7 +1,6 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
 import { catalogueCodes } from "../../catalogue";
-import { dayIn, getChain } from "../../chain";
-import { parseWeekStart } from "@shared/calendar";
+import { calendarOf, dayIn, getChain } from "../../chain";
 import type { Layout, Separator } from "@shared/contract/layouts";
 import type { Services } from "../../../services";
 import type { Extract } from "../extracts.entities";
@@ -62,9 +61,7 @@ export async function stageRows({ em, services, extract, layout, progress }: Sta
       const rows = stager || layout?.hasHeader === false ? records : records.slice(1);
       stager ??= startStager({
         record: records[0], layout, definition, log, writer,
-        read: (row) => definition.reader({
-          row, codes, today, notes, calendar: { kind: chain.calendar, weekStart: parseWeekStart(chain.weekStart) },
-        }),
+        read: (row) => definition.reader({ row, codes, today, notes, calendar: calendarOf(chain) }),
       });
       for (const record of rows) stager.stage(record);
       await writer.flush();

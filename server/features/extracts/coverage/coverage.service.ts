@@ -1,6 +1,6 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
-import { addDays, addWeeks, firstDayOfWeek, weeksBetween, type Day, type WeekStart } from "@shared/calendar";
-import { dayIn, getChain } from "../../chain";
+import { addWeeks, firstDayOfWeek, lastDayOfWeek, weeksBetween, type Day, type WeekStart } from "@shared/calendar";
+import { calendarOf, dayIn, getChain } from "../../chain";
 import {
   findCountedWeeks, findCoveredStores, findFileNames, hasPending, lastCountedWeek, type CountedWeek, type CoveredStore,
 } from "./coverage.repository";
@@ -25,16 +25,16 @@ export type CoverageRead = {
  * @param asked.until a day of the last week, by default of the last that has ended; never later than that or the last loaded.
  */
 export async function readCoverage(em: EntityManager, { until, weeks: count, now }: { until?: Day; weeks: number; now: Date }): Promise<CoverageRead> {
-  const { timeZone, weekStart: start } = await getChain(em);
-  const weekStart = start as WeekStart;
+  const chain = await getChain(em);
+  const { weekStart } = calendarOf(chain);
   const week = (day: Day) => firstDayOfWeek(day, weekStart);
-  const ended = addWeeks(week(dayIn(timeZone, now)), -1);
+  const ended = addWeeks(week(dayIn(chain.timeZone, now)), -1);
   const loaded = week((await lastCountedWeek(em)) ?? ended);
   const latest = loaded > ended ? loaded : ended;
   const asked = week(until ?? ended);
   const last = asked < latest ? asked : latest;
   const first = addWeeks(last, 1 - count);
-  const counted = await findCountedWeeks(em, { first: addWeeks(last, 1 - Math.max(count, fewestWeeksForUsual)), last: addDays(last, 6) });
+  const counted = await findCountedWeeks(em, { first: addWeeks(last, 1 - Math.max(count, fewestWeeksForUsual)), last: lastDayOfWeek(last) });
   const ids = new Set(counted.flatMap(({ extractId, week: day }) => (extractId !== null && day >= first ? [extractId] : [])));
   return {
     weeks: weeksBetween(first, last), counted, weekStart,

@@ -1,14 +1,14 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
-import { parseWeekStart, type ChainCalendar } from "@shared/calendar";
 import type { Layout } from "@shared/contract/layouts";
 import type { ExtractLayout, LayoutPreview } from "@shared/contract/saved-layouts";
 import { detectLayout } from "@shared/layouts";
 import { conflict, notFound, ProblemError, unusable } from "../../../errors";
 import type { Services } from "../../../services";
 import { audit } from "../../accounts";
-import { getChain } from "../../chain";
+import { calendarOf, getChain } from "../../chain";
 import type { Extract } from "../extracts.entities";
-import { findExtract, layoutInForceOf, lockExtract } from "../extracts.repository";
+import { layoutInForceOf, lockExtract } from "../extracts.repository";
+import { getExtract } from "../extracts.service";
 import type { Actor } from "../load/load-extract.service";
 import { UnreadableFile } from "../read/unreadable-file";
 import { enqueueCheck } from "../requests.service";
@@ -25,10 +25,10 @@ import { chooseFor } from "./settle-layout.service";
  * @throws ProblemError 404; 409 where the file can be read by no layout; 503 where the file store does not give it out.
  */
 export async function getExtractLayout(em: EntityManager, { services, extractId }: { services: Services; extractId: string }): Promise<ExtractLayout> {
-  const extract = await requireExtract(em, extractId);
+  const extract = await getExtract(em, extractId);
   const head = await headOf(services, extract);
   const { layout, ...how } = await inForce(em, { services, extract, head });
-  const preview = await previewLayout(head, { layout, calendar: await calendarOf(em) });
+  const preview = await previewLayout(head, { layout, calendar: calendarOf(await getChain(em)) });
   // Once a person has looked at it, what was a guess is none any more.
   return { layout, ...how, preview: how.isConfirmed ? { ...preview, warnings: preview.warnings.filter(({ code }) => !guesses.has(code)) } : preview };
 }
@@ -56,9 +56,9 @@ type Trial = { services: Services; extractId: string; layout: Layout };
 
 /** The file's first rows as another layout would read them. @throws ProblemError as `getExtractLayout`, and 422 for a layout of another kind. */
 export async function previewExtractLayout(em: EntityManager, { services, extractId, layout }: Trial): Promise<LayoutPreview> {
-  const extract = await requireExtract(em, extractId);
+  const extract = await getExtract(em, extractId);
   requireKind(extract, layout);
-  return previewLayout(await headOf(services, extract), { layout, calendar: await calendarOf(em) });
+  return previewLayout(await headOf(services, extract), { layout, calendar: calendarOf(await getChain(em)) });
 }
 
 type Choosing = Trial & { saveAs?: string; actor: Actor };
@@ -71,7 +71,7 @@ type Choosing = Trial & { saveAs?: string; actor: Actor };
  * of file or lacks needed columns.
  */
 export async function putExtractLayout(em: EntityManager, { services, extractId, layout, saveAs, actor }: Choosing): Promise<string> {
-  const extract = await requireExtract(em, extractId);
+  const extract = await getExtract(em, extractId);
   requireSettable(extract);
   requireKind(extract, layout);
   requireComplete(layout);
@@ -97,12 +97,6 @@ function withTheirColumns(layout: Layout, head: Uint8Array): Layout {
   return { ...layout, theirColumns };
 }
 
-async function requireExtract(em: EntityManager, id: string): Promise<Extract> {
-  const extract = await findExtract(em, id);
-  if (!extract) throw notFound("extract");
-  return extract;
-}
-
 function requireKind({ kind }: Extract, layout: Layout): void {
   if (layout.kind === kind) return;
   const detail = `The layout is for a ${layout.kind} file, and this is a ${kind} file.`;
@@ -114,11 +108,6 @@ function requireSettable({ state }: Extract): void {
   const words = state === "checking" || state === "loading" ? `being ${state === "checking" ? "checked" : "loaded"} just now` : `${state} already`;
   const instead = state === "checking" ? "Wait for the check to end." : "Upload the file anew to read it otherwise.";
   throw conflict("layout-fixed", `This extract is ${words}: how it is read cannot be changed. ${instead}`);
-}
-
-async function calendarOf(em: EntityManager): Promise<ChainCalendar> {
-  const { calendar, weekStart } = await getChain(em);
-  return { kind: calendar, weekStart: parseWeekStart(weekStart) };
 }
 
 async function headOf({ files, logger }: Services, { id, storageKey }: Extract): Promise<Buffer> {

@@ -1,9 +1,8 @@
-import { parseWeekStart } from "@shared/calendar";
-import { notFound } from "../../../errors";
 import type { Services } from "../../../services";
-import { getChain } from "../../chain";
+import { calendarOf, getChain } from "../../chain";
 import type { Extract, SavedLayout } from "../extracts.entities";
-import { findExtract, layoutInForceOf, lockExtract } from "../extracts.repository";
+import { layoutInForceOf, lockExtract } from "../extracts.repository";
+import { getExtract } from "../extracts.service";
 import { chooseLayout, type Choice } from "./choose-layout";
 import { layoutNeeded } from "./layout-needed";
 import { readFileHead } from "./read-file-head";
@@ -18,8 +17,7 @@ import { findLayoutsToRecognise, findSavedLayout } from "./saved-layouts.reposit
  */
 export async function settleLayout(services: Services, extractId: string): Promise<void> {
   const em = services.orm.em.fork();
-  const extract = await findExtract(em, extractId);
-  if (!extract) throw notFound("extract");
+  const extract = await getExtract(em, extractId);
   if (isSet(extract)) return noteUse(services, extract.savedLayout?.id);
   const head = await readFileHead(services.files, extract.storageKey);
   const { choice, saved } = await chooseFor(services, { extract, head });
@@ -36,9 +34,9 @@ export async function chooseFor(
   services: Services, { extract, head }: { extract: Pick<Extract, "kind">; head: Uint8Array },
 ): Promise<{ choice: Choice; saved: SavedLayout | null }> {
   const em = services.orm.em.fork();
-  const { weekStart } = await getChain(em);
+  const { weekStart } = calendarOf(await getChain(em));
   const saved = await findLayoutsToRecognise(em, extract.kind);
-  const choice = chooseLayout(head, { kind: extract.kind, saved: saved.map(({ layout }) => layout), weekStart: parseWeekStart(weekStart) });
+  const choice = chooseLayout(head, { kind: extract.kind, saved: saved.map(({ layout }) => layout), weekStart });
   return { choice, saved: choice.origin === "saved" ? (saved[choice.index] ?? null) : null };
 }
 

@@ -3,17 +3,18 @@ import type { ExtractChanges } from "@shared/contract/extracts";
 import { conflict, notFound, ProblemError } from "../../../errors";
 import type { Services } from "../../../services";
 import { audit } from "../../accounts";
+import { checkTogether } from "../check/check-together";
 import { quietly, type Progress } from "../check/progress";
 import { stageRows } from "../check/stage-rows";
-import { rejectRepeatedRows } from "../check/together.repository";
 import { countInLater } from "../coverage/count-in-later";
 import type { Extract } from "../extracts.entities";
 import { changesOf, findExtract, forgetStanding, giveMemory, layoutInForceOf, lockCheck, lockExtract } from "../extracts.repository";
+import { getExtract } from "../extracts.service";
 import { kinds } from "../kinds/kinds";
 import { noticeLoaded } from "../notices/extract-notices";
 import { lockLoads } from "./load-lock.repository";
 import { SecondLookNeeded, secondLookNeeded } from "./second-look";
-import { analyseStaging, countStaged, dropStaging, hasStaged, stagingTable } from "./staging.repository";
+import { dropStaging, hasStaged, stagingTable } from "./staging.repository";
 
 /** Who asked for it; the one who uploaded the file, where nobody is named. */
 export type Actor = { personId: string; tokenId?: string | null; requestId?: string | null };
@@ -83,21 +84,20 @@ async function changesNow(em: EntityManager, extract: Extract): Promise<ExtractC
 async function load({ em, services, extract: checked, actor, seen, step }: Load): Promise<ExtractChanges> {
   const { id, kind, fileName, uploadedBy } = checked;
   const { load: loadRows } = kinds[kind];
-  const rows = { em, table: stagingTable(id) };
+  const by = actor ?? { personId: uploadedBy.id };
   const now = services.now();
   await step(2, "Comparing with what is there");
   const changes = await changesNow(em, checked);
   if (seen !== "everything" && changes.secondLook.some((reason) => !seen.includes(reason))) throw new SecondLookNeeded(changes);
   await step(3, "Loading");
-  await loadRows({ ...rows, extractId: id, now, changes, by: { ...(actor ?? { personId: uploadedBy.id }), file: { id, name: fileName } } });
+  await loadRows({ em, table: stagingTable(id), extractId: id, now, changes, by: { ...by, file: { id, name: fileName } } });
   await dropStaging(em, id);
   const extract = requireLoadable(await lockExtract(em, id));
   extract.state = "loaded";
   extract.changes = changes;
   extract.loadedAt = now;
   extract.failure = null;
-  const by = actor ?? { personId: extract.uploadedBy.id };
-  audit(em, { ...by, action: "extract.loaded", subject: { kind: "extract", id }, detail: { fileName: extract.fileName, ...changes.totals, ...confirmed(changes) } });
+  audit(em, { ...by, action: "extract.loaded", subject: { kind: "extract", id }, detail: { fileName, ...changes.totals, ...confirmed(changes) } });
   await countInLater(em, { services, extract });
   await noticeLoaded(em, services, { extract, changes, by });
   // The last moment at which a cancellation or the loss of the job can still undo everything.
@@ -119,8 +119,7 @@ function requireLoadable(extract: Extract | null): Extract {
  * broke down meanwhile, since that table is not logged; the file is then read again, by the same rules.
  */
 async function ensureStaged(services: Services, { extractId, progress }: { extractId: string; progress: Progress }): Promise<void> {
-  const extract = await findExtract(services.orm.em.fork(), extractId);
-  if (!extract) throw notFound("extract");
+  const extract = await getExtract(services.orm.em.fork(), extractId);
   if (extract.state !== "checked" && extract.state !== "loading") return;
   const isKept = await services.orm.em.fork().transactional(async (em) => {
     await lockCheck(em, extractId);
@@ -137,19 +136,14 @@ async function ensureStaged(services: Services, { extractId, progress }: { extra
 }
 
 async function stageAgain({ em, services, extract, progress }: { em: EntityManager; services: Services; extract: Extract; progress: Progress }): Promise<void> {
-  const definition = kinds[extract.kind];
   const managed = await findExtract(em, extract.id);
   const layout = managed && await layoutInForceOf(em, managed);
   const { table, log, notes } = await stageRows({
     em, services, extract, layout,
     progress: ({ readBytes }) => progress({ done: readBytes / Math.max(1, extract.sizeBytes), total: steps, message: "Reading the file again" }),
   });
-  await analyseStaging(em, table);
   // What is wrong with the rows is on record from the check.
-  const together = { em, table, extractId: extract.id, log, notes, keep: false };
-  await rejectRepeatedRows({ ...together, definition });
-  await definition.checkTogether?.(together);
-  const usable = await countStaged(em, extract.id);
+  const usable = await checkTogether({ em, table, extractId: extract.id, log, notes, keep: false, definition: kinds[extract.kind] });
   await forgetStanding(em, extract.id);
   if (usable === extract.rowsUsable) return;
   const detail = `Since the check the catalogue has changed: ${usable} rows can be used now, not ${extract.rowsUsable ?? 0}. Check the file again, look at the list, and load it then.`;

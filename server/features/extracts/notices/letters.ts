@@ -1,4 +1,4 @@
-import { addDays, type Day } from "@shared/calendar";
+import { lastDayOfWeek, type Day } from "@shared/calendar";
 import type { ExtractChanges, IssueCount } from "@shared/contract/extracts";
 import type { Letter } from "../../notices";
 
@@ -103,7 +103,7 @@ function weeksIn(weeks: readonly Day[], { number, day }: Writing): string {
   const [first, last] = [weeks[0], weeks.at(-1)];
   if (first === undefined || last === undefined) return "no week";
   if (first === last) return `the week of ${day(first)}`;
-  return `${number(weeks.length)} weeks (${day(first)} to ${day(addDays(last, 6))})`;
+  return `${number(weeks.length)} weeks (${day(first)} to ${day(lastDayOfWeek(last))})`;
 }
 
 export type MissingFacts = {
@@ -126,7 +126,7 @@ export function letterOfMissingSales({ week, dueOn, dueHour, lastLoaded, waiting
   return {
     subject: `Sales of the week of ${day(week)} are missing`,
     paragraphs: [
-      `The sales of ${day(week)} to ${day(addDays(week, 6))} were due by ${due}, and are not loaded.${last}`,
+      `The sales of ${day(week)} to ${day(lastDayOfWeek(week))} were due by ${due}, and are not loaded.${last}`,
       `${toDo} ${pageOf("Extracts", address)}`,
       "Until they are there, curves and scenarios know nothing of that week. This reminder comes once a week.",
     ],

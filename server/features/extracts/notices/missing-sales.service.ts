@@ -1,7 +1,7 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
-import { firstDayOfWeek, type Day, type WeekStart } from "@shared/calendar";
+import { firstDayOfWeek, type Day } from "@shared/calendar";
 import type { Services } from "../../../services";
-import { findChain } from "../../chain";
+import { calendarOf, findChain } from "../../chain";
 import { addressOf, salesDue, sendNotice, wasSent } from "../../notices";
 import { findLoadedWeeks } from "../extracts.repository";
 import { letterOfMissingSales, writingOf } from "./letters";
@@ -19,7 +19,8 @@ export async function findMissingSales(em: EntityManager, now: Date): Promise<Mi
   if (!chain) return null;
   const { week, dueOn, isOver } = salesDue(chain, now);
   if (!isOver) return null;
-  const loaded = (await findLoadedWeeks(em)).map((day) => firstDayOfWeek(day, chain.weekStart as WeekStart)).sort();
+  const { weekStart } = calendarOf(chain);
+  const loaded = (await findLoadedWeeks(em)).map((day) => firstDayOfWeek(day, weekStart)).sort();
   const lastLoaded = loaded.at(-1);
   if (lastLoaded === undefined || loaded.includes(week)) return null;
   return { week, dueOn, lastLoaded };
