@@ -6,6 +6,7 @@ import type { CoefficientMap } from "./coefficient-map";
 import type { Design } from "./design";
 import { createScratch } from "./equation-scratch";
 import type { Scratch } from "./equation-scratch";
+import { near } from "./known-optimum";
 import { normalEquations } from "./normal-equations";
 import type { NormalEquations } from "./normal-equations";
 import { layOutPenalties } from "./penalties";
@@ -95,7 +96,7 @@ function anotherOptimum(
   const found = search.current.logPenalties;
   const isSame = plan.automatic.every((penalty) => {
     const bothStraight = isLimit(search, penalty, found[penalty]) && isLimit(search, penalty, known.logPenalties[penalty]);
-    return bothStraight || Math.abs(found[penalty] - known.logPenalties[penalty]) < 0.25;
+    return bothStraight || Math.abs(found[penalty] - known.logPenalties[penalty]) < near;
   });
   if (isSame) return null;
   const other = iterate(problem, {

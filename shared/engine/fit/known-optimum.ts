@@ -4,8 +4,9 @@ import { derivatives } from "./penalty-search";
 /** An optimum found before, so that a search from another start can stop once it is drawn to it. */
 export type KnownOptimum = { logPenalties: Float64Array; criterion: number };
 
-/** Log units within which two points belong to one optimum, and the longest Newton step whose end is trusted for that. */
-const near = 0.25;
+/** Log units within which two points belong to one optimum. */
+export const near = 0.25;
+/** The longest Newton step whose end is trusted for that. */
 const trusted = 2.5;
 /** What a penalty's way to the known optimum may change of the criterion, by its slope and bend here, to be of no account. */
 const flat = 1e-3;

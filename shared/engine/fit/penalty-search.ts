@@ -30,13 +30,10 @@ export type PenaltySearch = {
 export function createSearch(problem: LikelihoodProblem): PenaltySearch {
   const { system, layout: { penalties } } = problem;
   const { defaults, lowest, highest } = boundsOf(system, penalties);
-  const [current, trial, kept] = [stateOf(system, penalties.length), stateOf(system, penalties.length), stateOf(system, penalties.length)];
-  return { problem, penalties, defaults, lowest, highest, current, trial, kept };
-}
-
-function stateOf(system: PenalisedSystem, penalties: number): LikelihoodState {
-  const arrow = system.form === "arrow" ? createArrowState(system.groups, system.size) : null;
-  return createState({ size: system.size, penalties, arrow });
+  const state = (): LikelihoodState => createState({
+    size: system.size, penalties: penalties.length, arrow: system.form === "arrow" ? createArrowState(system.groups, system.size) : null,
+  });
+  return { problem, penalties, defaults, lowest, highest, current: state(), trial: state(), kept: state() };
 }
 
 /**
@@ -123,6 +120,3 @@ export function exchangeKept(search: PenaltySearch): void {
 /** Keeps a log penalty within its bounds. */
 export const withinBounds = (search: PenaltySearch, penalty: number, logPenalty: number): number =>
   Math.min(search.highest[penalty], Math.max(search.lowest[penalty], logPenalty));
-
-/** Whether a penalty went to its limit: the curve is the penalty's straight line (a circle: no curve). */
-export const isAtLimit = (search: PenaltySearch, penalty: number): boolean => search.current.edf[penalty] < 1e-3;

@@ -14,7 +14,7 @@ const single: Record<string, TermSpec[]> = {
   "random effect": [everyKind.line[0], everyKind["random effect"][1]], "random slope": [everyKind.line[0], everyKind["random slope"][1]],
   "smooth beside a factor": [...everyKind.factor, ...everyKind.smooth],
 };
-const withPenalty = (terms: readonly TermSpec[], penalties: readonly (number | "auto")[]): TermSpec[] => {
+const withPenalties = (terms: readonly TermSpec[], penalties: readonly (number | "auto")[]): TermSpec[] => {
   let next = 0;
   return terms.map((term) => {
     if (!("smoothness" in term)) return term;
@@ -27,16 +27,16 @@ const penaltiesOf = (model: FittedModel) => model.terms.flatMap(({ penalties }) 
 
 describe.each(exact)("Of a %s model with one penalty", (family) => {
   it.each(Object.entries(single))("none of 60 penalties from e^-14 to e^16 has a lower criterion than the chosen one: %s", (_name, terms) => {
-    const chosen = fitModel(modelOf(family, withPenalty(terms, ["auto"])), rows);
+    const chosen = fitModel(modelOf(family, withPenalties(terms, ["auto"])), rows);
     for (let k = 0; k < 60; k++) {
-      const given = fitModel(modelOf(family, withPenalty(terms, [within(Math.exp(-14 + k / 2))])), rows);
+      const given = fitModel(modelOf(family, withPenalties(terms, [within(Math.exp(-14 + k / 2))])), rows);
       expect(given.criterion).toBeGreaterThan(chosen.criterion - 1e-6);
     }
   });
 
   it.each(Object.entries(single))("given the chosen penalty it is the same fit: %s", (_name, terms) => {
-    const chosen = fitModel(modelOf(family, withPenalty(terms, ["auto"])), rows);
-    const given = fitModel(modelOf(family, withPenalty(terms, [within(penaltiesOf(chosen)[0])])), rows);
+    const chosen = fitModel(modelOf(family, withPenalties(terms, ["auto"])), rows);
+    const given = fitModel(modelOf(family, withPenalties(terms, [within(penaltiesOf(chosen)[0])])), rows);
     expect(largestRelativeDifference(given.fitted, chosen.fitted)).toBeLessThan(1e-8);
     expect(given.criterion).toBeCloseTo(chosen.criterion, 7);
     expect(given.edf).toBeCloseTo(chosen.edf, 6);
@@ -53,9 +53,9 @@ describe.each(exact)("Of a %s model with two penalties", (family) => {
   ];
 
   it.each(pairs)("the criterion's second derivatives are those of differences, its first ones nothing: %s", (_name, terms) => {
-    const chosen = fitModel(modelOf(family, withPenalty(terms, ["auto", "auto"])), rows);
+    const chosen = fitModel(modelOf(family, withPenalties(terms, ["auto", "auto"])), rows);
     const [first, second] = penaltiesOf(chosen).map(Math.log);
-    const at = (left: number, right: number) => fitModel(modelOf(family, withPenalty(terms, [within(Math.exp(first + left)), within(Math.exp(second + right))])), rows).criterion;
+    const at = (left: number, right: number) => fitModel(modelOf(family, withPenalties(terms, [within(Math.exp(first + left)), within(Math.exp(second + right))])), rows).criterion;
     const step = 0.02;
     const middle = at(0, 0);
     const hessian = chosen.information?.criterionHessian ?? new Float64Array(4);
@@ -88,7 +88,7 @@ describe.each(families.filter((family) => family !== "negative-binomial" && fami
 
 describe("Rows given twice, penalties chosen", () => {
   it.each(exact)("are not rows of weight two: %s models have more of them to choose by", (family) => {
-    const spec = modelOf(family, withPenalty(everyKind.smooth, ["auto"]));
+    const spec = modelOf(family, withPenalties(everyKind.smooth, ["auto"]));
     const twice = fitModel(spec, inOrder(rows, [...numbers, ...numbers]));
     const heavy = fitModel({ ...spec, weights: "weight" }, { ...rows, weight: numbers.map(() => 2) });
     expect(twice.rowCount).toBe(200);
