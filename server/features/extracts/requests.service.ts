@@ -1,6 +1,7 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
 import { conflict, notFound } from "../../errors";
 import type { Services } from "../../services";
+import { lockCheckable } from "./check/lock-checkable";
 import type { Extract } from "./extracts.entities";
 import { checkExtractJob, loadExtractJob, withdrawExtractJob } from "./extracts.jobs";
 import { awaitsLayout } from "./extracts.policy";
@@ -22,13 +23,6 @@ async function locked(em: EntityManager, extractId: string): Promise<Extract> {
   const extract = await lockExtract(em, extractId);
   if (!extract) throw notFound("extract");
   return extract;
-}
-
-/** The extract, its row locked. @throws ProblemError 404, or 409 where it is loaded or being loaded. */
-export async function lockCheckable(em: EntityManager, extractId: string): Promise<Extract> {
-  const extract = await locked(em, extractId);
-  if (["received", "checking", "checked", "unusable"].includes(extract.state)) return extract;
-  throw conflict("not-checkable", `This extract is ${extract.state}, so it cannot be checked again. Upload the file anew.`);
 }
 
 /** Puts a check into the queue, in the context's transaction, and notes its job with the extract. */

@@ -1,7 +1,6 @@
 import type { EntityManager } from "@mikro-orm/postgresql";
 import type { ExtractChanges } from "@shared/contract/extracts";
 import type { Services } from "../../../services";
-import { conflict, notFound } from "../../../errors";
 import type { Extract } from "../extracts.entities";
 import { giveMemory, layoutInForceOf, lockCheck, lockExtract, removeIssues } from "../extracts.repository";
 import { getExtract } from "../extracts.service";
@@ -13,13 +12,11 @@ import { noticeChecked } from "../notices/extract-notices";
 import { UnreadableFile } from "../read/unreadable-file";
 import { checkTogether } from "./check-together";
 import { keepIssues, weeksStaged } from "./check.repository";
+import { lockCheckable } from "./lock-checkable";
 import { quietly, type Progress } from "./progress";
 import { stageRows, type StagingProgress } from "./stage-rows";
 
 const count = new Intl.NumberFormat("en-GB");
-
-/** States from which a file can be checked, again or for the first time. */
-const checkable = new Set(["received", "checking", "checked", "unusable"]);
 
 /**
  * Checks an extract's file against the columns of its kind and against the catalogue, keeps what is wrong with its rows,
@@ -46,15 +43,6 @@ function begin(services: Services, extractId: string): Promise<void> {
     extract.state = "checking";
     extract.failure = null;
   });
-}
-
-async function lockCheckable(em: EntityManager, extractId: string): Promise<Extract> {
-  const extract = await lockExtract(em, extractId);
-  if (!extract) throw notFound("extract");
-  if (!checkable.has(extract.state)) {
-    throw conflict("not-checkable", `This extract is ${extract.state}, so it cannot be checked again. Upload the file anew.`);
-  }
-  return extract;
 }
 
 type Checking = { em: EntityManager; services: Services; extractId: string; progress: Progress };

@@ -6,6 +6,7 @@ import { personName } from "../../accounts";
 import { getChain } from "../../chain";
 import { addressOf, sendNotice } from "../../notices";
 import type { Extract } from "../extracts.entities";
+import { awaitsLayout } from "../extracts.policy";
 import { letterOfCheck, letterOfLoad, writingOf } from "./letters";
 
 /** Who plans with the sales, and who brings them. */
@@ -18,7 +19,7 @@ const keepersOfData: Role[] = ["data-admin"];
  * Once a file: who checks it again sees the outcome.
  */
 export async function noticeChecked(em: EntityManager, services: Services, extract: Extract): Promise<void> {
-  const isProposal = extract.layoutOrigin === "proposed" && !extract.layoutConfirmed;
+  const isProposal = awaitsLayout(extract);
   const hasErrors = extract.state === "unusable" || (extract.errorCount ?? 0) > 0;
   if (!hasErrors && !isProposal) return;
   const { rowsRead, rowsUsable, errorCount, failure } = extract;

@@ -4,10 +4,11 @@ import type { UnknownCodes } from "@shared/contract/unknown-codes";
 import { conflict, unusable } from "../../../errors";
 import type { Services } from "../../../services";
 import { enterProducts, enterStores } from "../../catalogue";
+import { lockCheckable } from "../check/lock-checkable";
 import { unknownCodesOf } from "../extracts.repository";
 import { getExtract } from "../extracts.service";
 import type { Actor } from "../load/load-extract.service";
-import { enqueueCheck, lockCheckable } from "../requests.service";
+import { enqueueCheck } from "../requests.service";
 
 export type NewCodes = {
   stores: { code: string; name: string; region: string; opened: Day | null }[];
